@@ -1,0 +1,38 @@
+// Package choose makes the line-up from the facts and ranks what was run.
+// It is pure: candidates come to it as values.
+package choose
+
+// Candidate is a pairing that could be run, as the catalogues describe it.
+type Candidate struct {
+	Pairing   string // canonical
+	Solver    string // bare names
+	Precond   string
+	Preps     []string
+	Memory    int64  // bytes of solver, preconditioner and preparations
+	Refused   string // why it cannot run here; empty if it can
+	Symmetric bool   // the solver assumes A symmetric
+	Definite  bool   // the solver assumes A positive definite
+	SPDM      bool   // the solver assumes M symmetric positive definite
+	Baseline  bool   // naive, kept for comparison only
+	Summary   string // one line for lists
+}
+
+// Ranked is one trial in the ranking.
+type Ranked struct {
+	Pairing    string
+	Seconds    float64 // own seconds to tolerance, set-up included
+	Setup      float64 // of which set-up
+	Iterations int
+	Memory     int64
+	Reached    bool    // it converged; otherwise Seconds is NaN
+	BreakEven  float64 // right-hand sides from which it beats the cheapest set-up; NaN if never or not needed
+}
+
+// Choice is the recommendation.
+type Choice struct {
+	Pairing string // empty: none
+	Ranked  []Ranked
+	Reasons []string
+	Doubts  []string
+	Gain    float64 // today's seconds over the choice's; NaN without today's
+}

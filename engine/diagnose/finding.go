@@ -1,0 +1,57 @@
+// Package diagnose turns facts and histories into findings. Each rule is one
+// pure function in one file; it sees values only and cannot touch a solver.
+package diagnose
+
+import (
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+// Weight of a finding.
+type Weight string
+
+// The weights.
+const (
+	Blocker Weight = "blocker" // no answer can be trusted
+	Drag    Weight = "drag"    // costs iterations, time or digits
+	Note    Weight = "note"
+)
+
+// OnSystem is the subject of findings that concern no single pairing.
+const OnSystem = "system"
+
+// Evidence is one number behind a finding.
+type Evidence struct {
+	Quantity  string
+	Value     float64
+	Unit      string
+	Iteration int   // -1 if it belongs to none
+	Rows      []int // from 0
+}
+
+// Finding is something established about a trial or the system.
+type Finding struct {
+	Rule      string
+	Weight    Weight
+	Certainty inspect.Certainty
+	Subject   string // OnSystem or a canonical pairing
+	Claim     string // one sentence with its numbers
+	Advice    string
+	Try       []string // pairings this finding offers to start
+	Evidence  []Evidence
+}
+
+// Case is what the rules judge.
+type Case struct {
+	Facts  *inspect.Facts
+	Trials []trace.History
+	Tol    float64
+	StopBy string  // the stopping rule of the session
+	Guess  float64 // ‖b−Ax₀‖/‖b‖ when a guess was given; NaN otherwise
+}
+
+// Rule is one entry of the catalogue.
+type Rule struct {
+	Name  string
+	Judge func(Case) []Finding
+}

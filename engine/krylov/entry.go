@@ -1,0 +1,53 @@
+// Package krylov holds the iterative solvers, one file each, and their
+// catalogue. Solvers only iterate: the runner owns convergence, limits,
+// statistics and time, and counts products through wrappers.
+package krylov
+
+import (
+	"dwindle/engine/linear"
+	"dwindle/engine/trace"
+)
+
+// Problem is what a solver works on. All vectors have length n.
+type Problem struct {
+	A linear.Operator
+	M linear.Applier // applies M⁻¹; never nil (identity for none)
+	B []float64      // right-hand side, not changed
+	X []float64      // starting guess, not changed; nil is zero
+}
+
+// Solver iterates. Its fields are exactly the state between two calls.
+type Solver interface {
+	// Begin allocates everything and measures the first residual.
+	Begin(Problem) (trace.Reading, error)
+	// Step makes one iteration and allocates nothing. It must not be called
+	// after a reading with Done.
+	Step() (trace.Reading, error)
+	// Solution writes the current iterate to dst (length n) and changes
+	// nothing.
+	Solution(dst []float64)
+}
+
+// Curver is the ability of a solver that divides by a curvature to show the
+// direction p and q = A p of its last step (views, not to be changed).
+type Curver interface {
+	Curvature() (p, q []float64)
+}
+
+// Entry is one solver of the catalogue.
+type Entry struct {
+	Name, Title string
+	Source      string // the paper or book the recurrence is taken from
+	Params      []linear.Param
+	Needs       linear.Has
+	Assumes     linear.Assume
+	Norm        trace.Norm                         // what Reading.Residual measures
+	Products    string                             // per step, for display
+	Restarted   bool                               // works in cycles
+	Monotone    bool                               // ‖r‖ cannot grow
+	Energy      bool                               // ‖e‖_A cannot grow when A is definite
+	Lanczos     bool                               // Alpha, Beta give the Lanczos matrix of M⁻¹A
+	NoGuarantee bool                               // the residual may grow without bound (may be judged diverged)
+	Memory      func(n int, v linear.Values) int64 // bytes of work vectors
+	New         func(linear.Values) Solver
+}

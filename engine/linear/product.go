@@ -1,0 +1,59 @@
+package linear
+
+// Apply computes dst = A x on the thread team.
+func (a *CSR) Apply(dst, x []float64) {
+	j := begin(applyKernel, a.NRows)
+	j.m, j.x, j.w = a, x[:a.NCols], dst[:a.NRows]
+	j.finish()
+}
+
+func applyKernel(j *job, lo, hi, _ int) { j.m.rows(j.w, j.x, lo, hi) }
+
+// rows computes dst[lo:hi] of A x.
+func (a *CSR) rows(dst, x []float64, lo, hi int) {
+	ptr := a.Ptr[lo : hi+1]
+	dst = dst[lo:hi]
+	start := ptr[0]
+	for i := range dst {
+		end := ptr[i+1]
+		cols, vals := a.Col[start:end], a.Val[start:end]
+		vals = vals[:len(cols)]
+		s := 0.0
+		for k, c := range cols {
+			s += vals[k] * x[uint32(c)]
+		}
+		dst[i] = s
+		start = end
+	}
+}
+
+// ApplyDot computes dst = A x and returns xᵀ dst; A is square.
+func (a *CSR) ApplyDot(dst, x []float64) float64 {
+	j := begin(applyDotKernel, a.NRows)
+	j.m, j.x, j.w = a, x[:a.NCols], dst[:a.NRows]
+	return j.finishSum()
+}
+
+func applyDotKernel(j *job, lo, hi, block int) {
+	j.m.rows(j.w, j.x, lo, hi)
+	j.part[block] = dot(j.x[lo:hi], j.w[lo:hi])
+}
+
+// ApplyT computes dst = Aᵀ x, on the calling thread: rows are scattered in
+// order, so the result does not depend on the number of threads.
+func (a *CSR) ApplyT(dst, x []float64) {
+	clear(dst)
+	for i, xi := range x {
+		cols, vals := a.Row(i)
+		for k, c := range cols {
+			dst[c] += vals[k] * xi
+		}
+	}
+}
+
+// Residual computes dst = b − A x and returns ‖dst‖₂.
+func Residual(dst []float64, a Applier, x, b []float64) float64 {
+	a.Apply(dst, x)
+	Lin(dst, 1, b, -1, dst)
+	return Norm2(dst)
+}

@@ -1,0 +1,36 @@
+// Package precond holds the preconditioners, one file each, and their
+// catalogue. Each is built once, can be cancelled, and reports on itself.
+package precond
+
+import (
+	"context"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/trace"
+)
+
+// Entry is one preconditioner of the catalogue.
+type Entry struct {
+	Name, Title string
+	Source      string // the paper or book
+	Params      []linear.Param
+	Needs       linear.Has
+	Assumes     linear.Assume // of A
+	Fixed       bool          // one linear operator; false: only flexible solvers may use it
+	Symmetric   bool          // M is symmetric if A is
+	Exact       bool          // a direct solve
+	// Estimate returns the memory M takes before anything is allocated, and
+	// whether that is exact or an upper estimate.
+	Estimate func(a *linear.CSR, v linear.Values) (bytes int64, exact bool)
+	// Build builds M. It returns early with ctx.Err() when cancelled, and a
+	// *Breakdown when M cannot be built; the notes are filled in either case.
+	Build func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error)
+}
+
+// Breakdown is the error of a factorisation that cannot go on.
+type Breakdown struct {
+	Method string  // such as "ilu:0"
+	Row    int     // from 0
+	Pivot  float64 // its value
+	Why    string  // such as "zero pivot" or "missing diagonal entry"
+}
