@@ -1,0 +1,159 @@
+package prepare
+
+import (
+	"context"
+	"math"
+	"math/rand/v2"
+	"slices"
+	"testing"
+
+	"dwindle/engine/linear"
+)
+
+// badlyScaled is a random sparse matrix with rows and columns in very
+// different units; with symmetric it equals its transpose.
+func badlyScaled(rng *rand.Rand, n int, symmetric bool) *linear.CSR {
+	unit := make([]float64, n)
+	for i := range unit {
+		unit[i] = math.Pow(10, 16*rng.Float64()-8)
+	}
+	var e []linear.Entry
+	for i := range n {
+		e = append(e, linear.Entry{I: i, J: i, V: (1 + rng.Float64()) * unit[i] * unit[i]})
+		for range 3 {
+			j, v := rng.IntN(n), rng.NormFloat64()
+			if j == i {
+				continue
+			}
+			e = append(e, linear.Entry{I: i, J: j, V: v * unit[i] * unit[j]})
+			if symmetric {
+				e = append(e, linear.Entry{I: j, J: i, V: v * unit[i] * unit[j]})
+			}
+		}
+	}
+	return linear.FromEntries(n, n, e)
+}
+
+func systemOf(rng *rand.Rand, a *linear.CSR) linear.System {
+	n := a.NRows
+	s := linear.System{A: a, B: make([]float64, n), Guess: make([]float64, n), Exact: make([]float64, n), Digits: 17}
+	for i := range n {
+		s.Exact[i], s.Guess[i] = rng.NormFloat64(), rng.NormFloat64()
+	}
+	a.Apply(s.B, s.Exact)
+	return s
+}
+
+func TestScaleIsExactAndLeadsBack(t *testing.T) {
+	rng := rand.New(rand.NewPCG(1, 1))
+	for trial := range 20 {
+		symmetric := trial%2 == 0
+		a := badlyScaled(rng, 40, symmetric)
+		s := systemOf(rng, a)
+		p, back, err := scaleEntry.Apply(context.Background(), s, linear.Values{})
+		if err != nil {
+			t.Fatal(err)
+		}
+		m := p.Matrix()
+		for k := range m.Val {
+			if f1, _ := math.Frexp(m.Val[k]); f1 != first(math.Frexp(a.Val[k])) {
+				t.Fatalf("entry %g became %g: its digits changed", a.Val[k], m.Val[k])
+			}
+		}
+		if symmetric && !m.ExactlySymmetric() {
+			t.Error("a symmetric matrix lost its symmetry")
+		}
+		for _, q := range []*linear.CSR{m, m.Transpose()} {
+			for i := range q.NRows {
+				if _, v := q.Row(i); linear.NormInf(v) < 0.25 || linear.NormInf(v) > 4 {
+					t.Errorf("row or column %d has norm %g", i, linear.NormInf(v))
+				}
+			}
+		}
+		residualsAgree(t, s, p, back)
+	}
+}
+
+// residualsAgree checks Dr (b − A x) = b̃ − Ã x̃ bit for bit with x = Dc x̃: all
+// factors are powers of two, so every rounding is the same.
+func residualsAgree(t *testing.T, s, p linear.System, back Back) {
+	n := s.N()
+	x, r, q := make([]float64, n), make([]float64, n), make([]float64, n)
+	for _, y := range [][]float64{p.Guess, p.Exact} {
+		back.Solution(x, y)
+		linear.Residual(r, s.A, x, s.B)
+		linear.Residual(q, p.A, y, p.B)
+		for i := range r {
+			if f := back.(scaling).row[back.Row(i)]; f*r[i] != q[i] {
+				t.Fatalf("row %d: scaled residual %g, expected %g", i, q[i], f*r[i])
+			}
+		}
+	}
+	if back.Solution(x, p.Exact); !slices.Equal(x, s.Exact) {
+		t.Error("the way back does not give the solution")
+	}
+}
+
+func first(f float64, _ int) float64 { return f }
+
+func TestScaleLeavesEmptyRowsAlone(t *testing.T) {
+	a := linear.FromEntries(3, 3, []linear.Entry{{I: 0, J: 0, V: 1e8}, {I: 2, J: 0, V: 0}})
+	p, _, err := scaleEntry.Apply(context.Background(), linear.System{A: a, B: []float64{1, 2, 3}}, linear.Values{})
+	if err != nil || p.B[1] != 2 || p.B[2] != 3 || p.Matrix().At(0, 0) > 2 || p.Guess != nil {
+		t.Errorf("b = %v, A = %v, err = %v", p.B, p.Matrix().Val, err)
+	}
+}
+
+func TestScaleCanBeCancelled(t *testing.T) {
+	ctx, cancel := context.WithCancel(context.Background())
+	cancel()
+	a := linear.FromEntries(1, 1, []linear.Entry{{V: 4}})
+	if _, _, err := scaleEntry.Apply(ctx, linear.System{A: a, B: []float64{1}}, linear.Values{}); err == nil {
+		t.Error("no error after cancellation")
+	}
+}
+
+// Seepage on a ring of cells without a fixed head: constants are the null
+// vectors, so b = e₁ has the part 1/n that no flow can carry away.
+func TestProject(t *testing.T) {
+	n := 8
+	var e []linear.Entry
+	for i := range n {
+		e = append(e, linear.Entry{I: i, J: i, V: 2}, linear.Entry{I: i, J: (i + 1) % n, V: -1}, linear.Entry{I: (i + 1) % n, J: i, V: -1})
+	}
+	s := linear.System{A: linear.FromEntries(n, n, e), B: make([]float64, n)}
+	s.B[0] = 1
+	p, back, err := projectEntry.Apply(context.Background(), s, linear.Values{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	want := []float64{0.875, -0.125, -0.125, -0.125, -0.125, -0.125, -0.125, -0.125}
+	if !slices.Equal(p.B, want) || s.B[0] != 1 {
+		t.Errorf("projected b = %v, b = %v", p.B, s.B)
+	}
+	x := make([]float64, n)
+	if back.Solution(x, want); !slices.Equal(x, want) || back.Row(3) != 3 {
+		t.Error("the projection must leave x as it is")
+	}
+}
+
+func TestProjectRefusesRegular(t *testing.T) {
+	s := linear.System{A: linear.FromEntries(1, 1, []linear.Entry{{V: 4}}), B: []float64{1}}
+	if _, _, err := projectEntry.Apply(context.Background(), s, linear.Values{}); err == nil {
+		t.Error("a regular system was projected")
+	}
+}
+
+func TestCatalogue(t *testing.T) {
+	for _, e := range Catalogue {
+		if got, ok := Lookup(e.Name); !ok || got.Title != e.Title || e.Source == "" || e.Apply == nil || e.Estimate == nil {
+			t.Errorf("entry %q is incomplete", e.Name)
+		}
+		if _, _, err := e.Apply(context.Background(), linear.System{A: linear.Func{N: 1}, B: []float64{1}}, linear.Values{}); err == nil {
+			t.Errorf("%s took a matrix without entries", e.Name)
+		}
+	}
+	if _, ok := Lookup("nothing"); ok {
+		t.Error("found what is not there")
+	}
+}
