@@ -2,64 +2,320 @@ package engine
 
 import (
 	"context"
-	"errors"
+	"fmt"
+	"sync"
+	"time"
 
 	"dwindle/engine/choose"
+	"dwindle/engine/inspect"
+	"dwindle/engine/linear"
 	"dwindle/engine/report"
+	"dwindle/engine/run"
+	"dwindle/engine/trace"
 )
 
 // Session is one system with its trials: the one object behind the interface
 // and the headless command. Its methods stand in the order of the flow. All
 // may be called from any goroutine.
-type Session struct{}
+type Session struct {
+	opt    Options
+	source string
+	clock  run.Clock
+	ctx    context.Context
+	cancel context.CancelFunc
+	ready  chan struct{} // closed when the bench stands, or the session broke
+	done   chan struct{} // closed when the flow has returned
+	openAt time.Duration
+
+	mu        sync.Mutex
+	phase     Phase
+	progress  float64
+	err       error
+	sys       linear.System
+	facts     *inspect.Facts
+	print     string // fingerprint
+	bench     *run.Bench
+	lineup    []string
+	waiting   string
+	suspended time.Duration // total
+	haltedAt  time.Duration // when the present suspension began; negative if none
+	judged    verdict
+	changes   int64
+}
 
 // Open starts a session on source (a file, "-", or sample:NAME[:ARGS]) in the
-// background: it loads, inspects, makes the line-up and, where the estimated
-// work is small enough, starts it. It returns at once.
-func Open(ctx context.Context, source string, opt Options) *Session { return &Session{} }
+// background: it loads, inspects, makes the line-up and starts it; in the
+// interface only where the estimated work is small enough. It returns at
+// once; what goes wrong is in Snapshot().Err.
+func Open(ctx context.Context, source string, opt Options) *Session {
+	s := &Session{opt: opt.withDefaults(), source: source, phase: Loading, haltedAt: -1,
+		ready: make(chan struct{}), done: make(chan struct{})}
+	s.clock = s.opt.Clock
+	if s.clock == nil {
+		s.clock = run.MachineClock()
+	}
+	s.openAt = s.clock()
+	s.ctx, s.cancel = context.WithCancel(ctx)
+	go s.flow()
+	return s
+}
 
-// Snapshot returns what there is to see now.
-func (s *Session) Snapshot() Snapshot { return Snapshot{} }
+// flow runs the stages up to the trials, then moves the trials.
+func (s *Session) flow() {
+	defer close(s.done)
+	if err := s.loadAndInspect(); err != nil {
+		s.set(func() { s.phase, s.err = Broken, err })
+		close(s.ready)
+		return
+	}
+	b := s.setBench()
+	close(s.ready)
+	b.Run(s.ctx)
+}
+
+func (s *Session) loadAndInspect() (err error) {
+	defer func() {
+		if p := recover(); p != nil {
+			err = fmt.Errorf("internal fault: %v", p)
+		}
+	}()
+	if err := s.opt.Check(); err != nil {
+		return err
+	}
+	linear.SetThreads(s.opt.Threads)
+	sys, err := read(s.ctx, s.source, s.opt.Stdin, func(p float64) { s.set(func() { s.progress = p }) })
+	if err != nil {
+		return err
+	}
+	if err := complete(&sys, s.opt); err != nil {
+		return err
+	}
+	sys.Name = shown(s.source, sys, s.opt.Identify)
+	s.set(func() { s.sys, s.phase, s.progress = sys, Inspecting, -1 })
+	facts, err := inspect.Inspect(s.ctx, sys, func(f *inspect.Facts) { s.set(func() { s.facts = f }) })
+	if err != nil {
+		return err
+	}
+	print := fingerprint(sys)
+	s.set(func() { s.facts, s.print = facts, print })
+	return nil
+}
+
+// setBench makes the bench and the line-up, and starts it or says why not.
+func (s *Session) setBench() *run.Bench {
+	b := run.NewBench(s.sys, s.limits(), s.opt.Memory, s.clock)
+	cands := candidates(b.Have(), s.opt.Memory)
+	lineup := s.opt.Pairs
+	if len(lineup) == 0 {
+		lineup = choose.LineUp(s.facts, cands, s.opt.Today)
+	}
+	if s.opt.Today != "" {
+		lineup = append([]string{s.opt.Today}, lineup...)
+	}
+	s.set(func() { s.bench, s.lineup, s.phase = b, lineup, Ready })
+	if s.opt.Interactive {
+		if t := estimate(s.facts, len(lineup)); t > soonEnough {
+			s.set(func() { s.waiting = fmt.Sprintf("about %.0f s of work estimated", t.Seconds()) })
+			return b
+		}
+	}
+	s.Start()
+	return b
+}
+
+// soonEnough is the estimated work up to which a line-up starts by itself.
+const soonEnough = 30 * time.Second
+
+// estimate guesses the time of a line-up: a thousand iterations a pairing at
+// four nanoseconds an entry and ten an unknown.
+func estimate(f *inspect.Facts, pairings int) time.Duration {
+	return time.Duration(pairings) * 1000 * time.Duration(4*f.Entries+10*f.N)
+}
+
+func (s *Session) limits() run.Limits {
+	l := run.Limits{Target: run.Target{Rule: run.StopRule(s.opt.StopRule), Tol: s.opt.Tol},
+		Iterations: s.opt.Iterations, Seconds: s.opt.TrialSeconds, Delta: s.sys.Delta()}
+	if l.Iterations == 0 {
+		l.Iterations = min(10*s.sys.N(), 100_000)
+	}
+	if u := s.facts.Unreachable; u.Answer == inspect.Yes {
+		l.Unreachable = u.Value
+	}
+	return l
+}
 
 // Candidates lists the pairings that could be added, the refused ones with
 // their reason, admissible first.
-func (s *Session) Candidates() []choose.Candidate { return nil }
+func (s *Session) Candidates() []choose.Candidate {
+	b := s.theBench()
+	if b == nil {
+		return nil
+	}
+	return candidates(b.Have(), s.opt.Memory)
+}
 
-// Start starts the waiting line-up.
-func (s *Session) Start() {}
+// Start starts the waiting line-up. It does nothing before the line-up is
+// known or after it was started.
+func (s *Session) Start() {
+	s.mu.Lock()
+	lineup, b := s.lineup, s.bench
+	if s.phase != Ready || b == nil {
+		s.mu.Unlock()
+		return
+	}
+	s.phase, s.waiting = Running, ""
+	s.changes++
+	s.mu.Unlock()
+	seen := map[string]bool{}
+	for i, text := range lineup {
+		m, err := run.Parse(text)
+		if err != nil || seen[m.Name] { // checked before; today's may be named twice
+			continue
+		}
+		seen[m.Name] = true
+		t := b.Add(m)
+		if i == 0 && s.opt.Today != "" {
+			b.MarkToday(t)
+		}
+	}
+	if s.opt.Seconds > 0 {
+		go s.timeUp(b)
+	}
+}
+
+// timeUp ends the trials when the wall time of the run is used up.
+func (s *Session) timeUp(b *run.Bench) {
+	select {
+	case <-time.After(time.Duration(s.opt.Seconds * 1e9)):
+		b.CancelAll(trace.TimeLimit, fmt.Sprintf("the %g s of the run were used up", s.opt.Seconds))
+	case <-s.ctx.Done():
+	}
+}
 
 // Add adds a pairing as a new trial, or one for each value of a range, and
 // starts it. It returns the id of the first.
-func (s *Session) Add(pairing string) (id int, err error) { return 0, errors.New("not yet") }
+func (s *Session) Add(pairing string) (id int, err error) {
+	b := s.theBench()
+	if b == nil {
+		return 0, fmt.Errorf("the system is still being read")
+	}
+	list, err := linear.Expand(pairing)
+	if err != nil {
+		return 0, err
+	}
+	methods := make([]run.Method, len(list))
+	for i, p := range list {
+		if methods[i], err = run.Parse(p); err != nil {
+			return 0, err
+		}
+	}
+	s.Start()
+	for i, m := range methods {
+		if t := b.Add(m); i == 0 {
+			id = t.ID
+		}
+	}
+	return id, nil
+}
 
 // Hold lets a running trial wait; Resume lets it go on.
-func (s *Session) Hold(id int) {}
+func (s *Session) Hold(id int) { s.on(id, func(b *run.Bench, t *run.Trial) { b.Hold(t, true) }) }
 
 // Resume lets a held trial go on.
-func (s *Session) Resume(id int) {}
+func (s *Session) Resume(id int) { s.on(id, func(b *run.Bench, t *run.Trial) { b.Hold(t, false) }) }
 
 // Cancel ends a trial and keeps its curve.
-func (s *Session) Cancel(id int) {}
+func (s *Session) Cancel(id int) {
+	s.on(id, func(b *run.Bench, t *run.Trial) { b.Cancel(t, trace.Cancelled, "stopped by the user") })
+}
 
 // Drop removes a trial and its curve.
-func (s *Session) Drop(id int) {}
+func (s *Session) Drop(id int) { s.on(id, func(b *run.Bench, t *run.Trial) { b.Drop(id) }) }
 
 // MarkToday says that this trial is what the user's code runs now; id 0 takes
 // the mark back.
-func (s *Session) MarkToday(id int) {}
+func (s *Session) MarkToday(id int) {
+	if b := s.theBench(); b != nil {
+		b.MarkToday(b.Find(id))
+	}
+}
+
+func (s *Session) on(id int, do func(*run.Bench, *run.Trial)) {
+	b := s.theBench()
+	if b == nil {
+		return
+	}
+	if t := b.Find(id); t != nil {
+		do(b, t)
+		s.set(func() {})
+	}
+}
 
 // Suspend returns when no trial moves any more; clocks stand still until
 // Continue.
-func (s *Session) Suspend() {}
+func (s *Session) Suspend() {
+	if b := s.theBench(); b != nil {
+		b.Pause()
+	}
+	s.set(func() { s.haltedAt = s.clock() })
+}
 
 // Continue lets the trials move again after Suspend.
-func (s *Session) Continue() {}
+func (s *Session) Continue() {
+	s.set(func() {
+		if s.haltedAt >= 0 {
+			s.suspended += s.clock() - s.haltedAt
+			s.haltedAt = -1
+		}
+	})
+	if b := s.theBench(); b != nil {
+		b.Continue()
+	}
+}
 
-// Wait returns when every trial has ended, or the context has.
-func (s *Session) Wait(ctx context.Context) error { return nil }
+// Wait returns when every trial has ended or the session broke (its error),
+// or when ctx is done (its error).
+func (s *Session) Wait(ctx context.Context) error {
+	select {
+	case <-s.ready:
+	case <-ctx.Done():
+		return ctx.Err()
+	}
+	b := s.theBench()
+	if b == nil {
+		return s.Snapshot().Err
+	}
+	b.WaitEnded(ctx)
+	return ctx.Err()
+}
 
-// Document returns everything a report can say at this moment.
-func (s *Session) Document() report.Document { return report.Document{} }
+// Interrupt ends every trial that has not ended, because of reason.
+func (s *Session) Interrupt(reason string) {
+	if b := s.theBench(); b != nil {
+		b.CancelAll(trace.Cancelled, reason)
+	}
+}
 
 // Close ends every trial and gives the memory back. Document still works.
-func (s *Session) Close() {}
+func (s *Session) Close() {
+	s.Interrupt("the session was closed")
+	s.cancel()
+	<-s.done
+}
+
+// Document returns everything a report can say at this moment.
+func (s *Session) Document() report.Document { return s.document() }
+
+func (s *Session) theBench() *run.Bench {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	return s.bench
+}
+
+// set changes the session under its lock and counts the change.
+func (s *Session) set(change func()) {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	change()
+	s.changes++
+}

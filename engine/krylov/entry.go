@@ -20,11 +20,14 @@ type Problem struct {
 type Solver interface {
 	// Begin allocates everything and measures the first residual.
 	Begin(Problem) (trace.Reading, error)
-	// Step makes one iteration and allocates nothing. It must not be called
-	// after a reading with Done.
+	// Step makes one iteration and allocates nothing, unless an event names
+	// rows. It must not be called after a reading with Done. A step that
+	// finds it cannot be made leaves the iterate as it was and says so with
+	// Done; Residual is always that of the iterate which Solution gives.
+	// The slice Reading.Events is overwritten by the next call.
 	Step() (trace.Reading, error)
 	// Solution writes the current iterate to dst (length n) and changes
-	// nothing.
+	// nothing. In the middle of a cycle a restarted method applies M⁻¹ once.
 	Solution(dst []float64)
 }
 
@@ -46,7 +49,9 @@ type Entry struct {
 	Restarted   bool                               // works in cycles
 	Monotone    bool                               // ‖r‖ cannot grow
 	Energy      bool                               // ‖e‖_A cannot grow when A is definite
-	Lanczos     bool                               // Alpha, Beta give the Lanczos matrix of M⁻¹A
+	Lanczos     bool                               // Alpha, Beta are those of CG and give the Lanczos matrix of M⁻¹A
+	Tridiagonal bool                               // Alpha, Beta are the entries of the Lanczos matrix themselves: α_k on its diagonal, β_{k+1} beside it
+	Baseline    bool                               // kept for comparison, never recommended
 	NoGuarantee bool                               // the residual may grow without bound (may be judged diverged)
 	Memory      func(n int, v linear.Values) int64 // bytes of work vectors
 	New         func(linear.Values) Solver

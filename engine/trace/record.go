@@ -71,9 +71,10 @@ const (
 type Event struct {
 	Iter     uint32
 	Kind     Kind
-	Quantity string  // such as "pᵀAp/pᵀp" or "rho"
+	Quantity string  // such as "p'Ap/p'p" or "rho"
 	Value    float64 // the quantity
 	Scale    float64 // what it is held against
+	Slack    float64 // how far the printed digits of the file could move Value
 	Rows     []RowShare
 }
 
@@ -85,7 +86,7 @@ func (e Event) Proved() bool {
 // MaxRows is how many of the largest shares an event carries.
 const MaxRows = 16
 
-// Breakdown of a factorisation: where and with what pivot.
+// Pivot is where a factorisation broke down, and with what.
 type Pivot struct {
 	Row   int     // from 0
 	Value float64 // the pivot

@@ -1,0 +1,49 @@
+package engine
+
+import (
+	"fmt"
+	"sort"
+
+	"dwindle/engine/choose"
+	"dwindle/engine/krylov"
+	"dwindle/engine/linear"
+	"dwindle/engine/precond"
+	"dwindle/engine/run"
+)
+
+// candidates describes every solver with every preconditioner, at default
+// parameters, for a system that offers h within the memory limit.
+func candidates(h run.Have, memory int64) []choose.Candidate {
+	var list []choose.Candidate
+	for _, e := range krylov.Catalogue {
+		for _, p := range precond.Catalogue {
+			m, err := run.Parse(e.Name + "+" + p.Name)
+			if err != nil {
+				panic("engine: " + err.Error()) // a mistake in a catalogue
+			}
+			list = append(list, candidate(m, h, memory))
+		}
+	}
+	sort.SliceStable(list, func(i, j int) bool { return list[i].Refused == "" && list[j].Refused != "" })
+	return list
+}
+
+func candidate(m run.Method, h run.Have, memory int64) choose.Candidate {
+	c := choose.Candidate{Pairing: m.Name, Solver: m.Solver.Name, Precond: m.Precond.Name,
+		Memory: m.Memory(h), Refused: m.Refuse(h),
+		Symmetric: m.Solver.Assumes&linear.AssumesSymmetric != 0,
+		Definite:  m.Solver.Assumes&linear.AssumesDefinite != 0,
+		SPDM:      m.Solver.Assumes&linear.AssumesSymmetricM != 0,
+		Baseline:  m.Solver.Baseline, Summary: m.Solver.Title + ", " + m.Precond.Title}
+	for _, p := range m.Preps {
+		c.Preps = append(c.Preps, p.Entry.Name)
+	}
+	switch {
+	case c.Refused != "":
+	case c.SPDM && !m.Precond.Symmetric:
+		c.Refused = fmt.Sprintf("%s needs a symmetric preconditioner; %s is not", c.Solver, c.Precond)
+	case memory > 0 && c.Memory > memory:
+		c.Refused = fmt.Sprintf("needs %s, more than the limit %s", run.Bytes(c.Memory), run.Bytes(memory))
+	}
+	return c
+}

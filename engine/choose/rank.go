@@ -1,0 +1,161 @@
+package choose
+
+import (
+	"fmt"
+	"math"
+	"slices"
+
+	"dwindle/engine/diagnose"
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+const (
+	busyShare = 0.9   // CPU time over own time below which the machine was busy
+	tooShort  = 0.005 // seconds below which the clock cannot rank
+	near      = 1.1   // two times closer than this factor are not told apart
+)
+
+// Rank orders the trials by own time to the target and recommends the first,
+// with what it rests on and what could overturn it.
+func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding) Choice {
+	c := Choice{Gain: math.NaN()}
+	for _, h := range trials {
+		if h.Stop == trace.Refused {
+			continue
+		}
+		c.Ranked = append(c.Ranked, ranked(h))
+	}
+	slices.SortStableFunc(c.Ranked, func(a, b Ranked) int { return order(a, b, findings) })
+	breakEven(c.Ranked)
+	if len(c.Ranked) == 0 || !c.Ranked[0].Reached {
+		c.Doubts = doubts(f, trials, c)
+		return c
+	}
+	first := c.Ranked[0]
+	c.Pairing = first.Pairing
+	c.Reasons = reasons(trials, c)
+	for _, h := range trials {
+		if h.Today && reached(h) {
+			c.Gain = h.OwnTime.Seconds() / first.Seconds
+		}
+	}
+	c.Doubts = doubts(f, trials, c)
+	return c
+}
+
+func reached(h trace.History) bool { return h.Stop == trace.Converged || h.Stop == trace.LeastSquares }
+
+func ranked(h trace.History) Ranked {
+	r := Ranked{Pairing: h.Pairing, Seconds: math.NaN(), Setup: h.SetupTime.Seconds(), Iterations: h.Iterations,
+		Memory: h.MemoryBytes, Reached: reached(h), BreakEven: math.NaN()}
+	if r.Reached {
+		r.Seconds = h.OwnTime.Seconds()
+	}
+	return r
+}
+
+// order puts those that reached the target first, of these the ones without
+// unsolved rows, then the faster.
+func order(a, b Ranked, findings []diagnose.Finding) int {
+	ka, kb := class(a, findings), class(b, findings)
+	switch {
+	case ka != kb:
+		return ka - kb
+	case ka == 2 || a.Seconds == b.Seconds:
+		return 0
+	case a.Seconds < b.Seconds:
+		return -1
+	}
+	return 1
+}
+
+func class(r Ranked, findings []diagnose.Finding) int {
+	if !r.Reached {
+		return 2
+	}
+	for _, f := range findings {
+		if f.Subject == r.Pairing && f.Rule == "unsolved-rows" {
+			return 1
+		}
+	}
+	return 0
+}
+
+// breakEven fills in from how many right-hand sides each pairing beats the
+// one with the cheapest set-up.
+func breakEven(list []Ranked) {
+	cheap := -1
+	for i, r := range list {
+		if r.Reached && (cheap < 0 || r.Setup < list[cheap].Setup) {
+			cheap = i
+		}
+	}
+	for i := range list {
+		r := &list[i]
+		if cheap < 0 || !r.Reached || i == cheap {
+			continue
+		}
+		q := list[cheap]
+		gain := (q.Seconds - q.Setup) - (r.Seconds - r.Setup)
+		if gain > 0 {
+			r.BreakEven = math.Max(1, math.Ceil((r.Setup-q.Setup)/gain))
+		}
+	}
+}
+
+func reasons(trials []trace.History, c Choice) []string {
+	first := c.Ranked[0]
+	out := []string{fmt.Sprintf("%d iterations, %s to the target, of which %s set-up", first.Iterations, took(first.Seconds), took(first.Setup))}
+	if len(c.Ranked) > 1 && c.Ranked[1].Reached {
+		second := c.Ranked[1]
+		out = append(out, fmt.Sprintf("next is %s with %d iterations and %s", second.Pairing, second.Iterations, took(second.Seconds)))
+	}
+	missed := 0
+	for _, r := range c.Ranked {
+		if !r.Reached {
+			missed++
+		}
+	}
+	if missed > 0 {
+		out = append(out, fmt.Sprintf("%d of %d pairings did not reach the target", missed, len(c.Ranked)))
+	}
+	return out
+}
+
+func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
+	var out []string
+	switch f.RHS {
+	case "ones", "made", "unit":
+		out = append(out, "counts on your own b may differ several-fold: give --rhs")
+	}
+	for _, h := range trials {
+		if h.CPUShare < busyShare && h.OwnTime.Seconds() > 0.1 {
+			out = append(out, "the machine was busy: rank by products")
+			break
+		}
+	}
+	if c.Pairing == "" {
+		return out
+	}
+	if c.Ranked[0].Seconds < tooShort {
+		out = append(out, "the times are too short for the clock: rank by products")
+	} else if len(c.Ranked) > 1 && c.Ranked[1].Reached && c.Ranked[1].Seconds < near*c.Ranked[0].Seconds {
+		out = append(out, fmt.Sprintf("%s is within %.0f %%: the two are not told apart", c.Ranked[1].Pairing,
+			100*(c.Ranked[1].Seconds/c.Ranked[0].Seconds-1)))
+	}
+	for _, h := range trials {
+		if !h.Stop.Ended() {
+			out = append(out, "trials are still going")
+			break
+		}
+	}
+	return out
+}
+
+func took(s float64) string {
+	if s < 1 {
+		return fmt.Sprintf("%.3g ms", 1000*s)
+	}
+	return fmt.Sprintf("%.3g s", s)
+}

@@ -1,0 +1,49 @@
+package diagnose
+
+import (
+	"fmt"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+const (
+	beatFactor = 1.25  // faster by this factor
+	beatLeast  = 0.005 // and by so many seconds: below, the clock decides nothing
+)
+
+// beaten: today's pairing is slower than another, or misses where another
+// reaches.
+var beaten = Rule{"today-beaten", func(c Case) []Finding {
+	var today, best *trace.History
+	for i := range c.Trials {
+		h := &c.Trials[i]
+		switch {
+		case h.Today:
+			today = h
+		case solved(*h) && (best == nil || h.OwnTime < best.OwnTime):
+			best = h
+		}
+	}
+	if today == nil || best == nil || !today.Stop.Ended() {
+		return nil
+	}
+	f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: today.Pairing, Try: []string{best.Pairing},
+		Advice: "use " + best.Pairing,
+		Evidence: []Evidence{number("own time today", today.OwnTime.Seconds(), "s"),
+			number("own time of "+best.Pairing, best.OwnTime.Seconds(), "s"),
+			number("iterations today", float64(today.Iterations), ""),
+			number("iterations of "+best.Pairing, float64(best.Iterations), "")}}
+	if !solved(*today) {
+		f.Claim = fmt.Sprintf("today's pairing ends %s at %s; %s reaches the target in %d iterations and %s",
+			today.Stop, num(today.TrueResidual), best.Pairing, best.Iterations, seconds(best.OwnTime.Seconds()))
+		return []Finding{f}
+	}
+	t, b := today.OwnTime.Seconds(), best.OwnTime.Seconds()
+	if t < beatFactor*b || t-b < beatLeast {
+		return nil
+	}
+	f.Claim = fmt.Sprintf("today's pairing takes %d iterations and %s; %s takes %d and %s: %.1f times faster",
+		today.Iterations, seconds(t), best.Pairing, best.Iterations, seconds(b), t/b)
+	return []Finding{f}
+}}

@@ -1,0 +1,78 @@
+package diagnose
+
+import (
+	"fmt"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+// lostDefiniteness: a direction of negative curvature was met, and its
+// Rayleigh quotient lies below its rounding bound.
+var lostDefiniteness = Rule{"negative-curvature", func(c Case) (out []Finding) {
+	if c.Facts.NegativeDefinite.Answer == inspect.Yes {
+		return nil
+	}
+	for _, h := range c.Trials {
+		for _, e := range events(h, trace.NegativeCurvature) {
+			if !e.Proved() {
+				continue
+			}
+			out = append(out, curvature(c.Facts, h, e))
+			break
+		}
+	}
+	return out
+}}
+
+func curvature(f *inspect.Facts, h trace.History, e trace.Event) Finding {
+	rows, part := carriers(e.Rows)
+	g := Finding{Weight: Blocker, Certainty: inspect.Proved, Subject: h.Pairing,
+		Claim: fmt.Sprintf("A has a negative eigenvalue, at most %s: met at iteration %d, carried %.0f %% by %s",
+			num(e.Value), e.Iter, 100*part, list(rows, 6)),
+		Advice: "look at these rows for a wrong sign, a missing support or a load past its limit; until then minres applies, cg does not",
+		Try:    instead(f),
+		Evidence: []Evidence{
+			{Quantity: "p'Ap/p'p", Value: e.Value, Iteration: int(e.Iter), Rows: rows},
+			{Quantity: "rounding bound", Value: e.Scale, Iteration: int(e.Iter)},
+		}}
+	if -e.Value <= e.Scale+e.Slack {
+		g.Certainty = inspect.Measured
+		g.Claim += fmt.Sprintf("; the file has %d digits, and what they leave open is %s", f.Digits, num(e.Slack))
+		g.Advice = "yours may not be indefinite: write 17 digits and run again"
+	}
+	return g
+}
+
+// notDefinite: a symmetric A whose diagonal is positive is not positive
+// definite all the same.
+var notDefinite = Rule{"not-definite", func(c Case) []Finding {
+	f := c.Facts
+	if f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer != inspect.No || semidefinite(f) ||
+		f.DiagNegative+f.DiagZero+f.DiagMissing > 0 {
+		return nil
+	}
+	g := Finding{Weight: Drag, Certainty: f.PositiveDefinite.Certainty, Subject: OnSystem,
+		Claim:  "A is symmetric with a positive diagonal, yet not positive definite: " + f.PositiveDefinite.Why,
+		Advice: "if it should be definite, look at the rows named; if not, use minres, and no ic or ssor",
+		Try:    instead(f),
+		Evidence: []Evidence{{Quantity: "value behind it", Value: f.PositiveDefinite.Value, Iteration: none,
+			Rows: f.PositiveDefinite.Rows}}}
+	if f.PositiveDefinite.Certainty != inspect.Proved && f.Delta > 0 {
+		g.Advice = fmt.Sprintf("the file has %d digits; yours may not be indefinite: write 17 digits and run again", f.Digits)
+	}
+	return []Finding{g}
+}}
+
+// oppositeSign: −A is positive definite.
+var oppositeSign = Rule{"opposite-sign", func(c Case) []Finding {
+	f := c.Facts
+	if f.NegativeDefinite.Answer != inspect.Yes {
+		return nil
+	}
+	return []Finding{{Weight: Drag, Certainty: f.NegativeDefinite.Certainty, Subject: OnSystem,
+		Claim:  "A is negative definite, the opposite sign convention: " + f.NegativeDefinite.Why,
+		Advice: "solve -A x = -b: then cg, ic and ssor apply as they are",
+		Evidence: []Evidence{{Quantity: "diagonal entries below zero", Value: float64(f.DiagNegative),
+			Iteration: none}}}}
+}}

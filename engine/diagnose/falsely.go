@@ -1,0 +1,69 @@
+package diagnose
+
+import (
+	"fmt"
+	"math"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+// falseFactor is how far the true residual must miss the target before a stop
+// on the method's own number is called false.
+const falseFactor = 10
+
+// falseConvergence: the method's own number met the target while b−Ax was far
+// from it.
+var falseConvergence = Rule{"false-convergence", func(c Case) (out []Finding) {
+	if outOfReach(c) || c.Facts.ZeroRHS {
+		return nil
+	}
+	for _, h := range c.Trials {
+		for _, e := range events(h, trace.FalseStop) {
+			if !(e.Value > falseFactor*c.Tol) || h.FloorHits > 0 && !solved(h) {
+				continue
+			}
+			f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
+				Claim: fmt.Sprintf("a code that stops on its %s norm stops at iteration %d with %s; the true relative residual there is %s",
+					h.Norm, e.Iter, num(e.Scale), num(e.Value)),
+				Advice: fmt.Sprintf("test ||b-Ax||/||b||, or ask for %.0e in this norm", c.Tol*c.Tol/e.Value),
+				Evidence: []Evidence{
+					{Quantity: "own number", Value: e.Scale, Unit: string(h.Norm), Iteration: int(e.Iter)},
+					{Quantity: "true relative residual", Value: e.Value, Iteration: int(e.Iter)}}}
+			if h.Stop.Ended() && !solved(h) {
+				f.Weight = Blocker
+				f.Claim += fmt.Sprintf("; it never came below %s", num(h.BestTrue))
+			}
+			out = append(out, f)
+			break
+		}
+	}
+	return out
+}}
+
+// unsolvedRows: converged in the norm, but single rows are not.
+var unsolvedRows = Rule{"unsolved-rows", func(c Case) (out []Finding) {
+	for _, h := range c.Trials {
+		if h.Stop != trace.Converged || !(h.Componentwise > math.Sqrt(c.Tol)) || h.UnsolvedRows == 0 {
+			continue
+		}
+		rows, _ := rowsOf(h.WorstRows)
+		_, solver, precond := cut(h.Pairing)
+		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
+			Claim: fmt.Sprintf("converged in the norm, but %d rows are unsolved: componentwise error %s, worst in %s",
+				h.UnsolvedRows, num(h.Componentwise), list(rows, 4)),
+			Advice: "these rows are in small units: scale the rows, or tighten the tolerance",
+			Try:    []string{"scale/" + solver + "+" + precond},
+			Evidence: []Evidence{{Quantity: "componentwise backward error", Value: h.Componentwise,
+				Iteration: h.Iterations, Rows: rows}}})
+	}
+	return out
+}}
+
+func rowsOf(s []trace.RowShare) (rows []int, worst float64) {
+	for _, r := range s {
+		rows = append(rows, r.Row)
+		worst = math.Max(worst, r.Share)
+	}
+	return rows, worst
+}

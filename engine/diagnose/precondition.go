@@ -1,0 +1,118 @@
+package diagnose
+
+import (
+	"fmt"
+	"strings"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+const (
+	asymmetryLimit  = 1e-6 // of the symmetry probe; rounding stays far below
+	indefiniteLimit = 1e-8 // of rᵀM⁻¹r over ‖r‖‖M⁻¹r‖
+)
+
+// preconditioner: a method that needs a symmetric positive definite M was
+// given one that is not.
+var preconditioner = Rule{"preconditioner-not-spd", func(c Case) (out []Finding) {
+	for _, h := range c.Trials {
+		if !h.SPDM {
+			continue
+		}
+		_, solver, m := cut(h.Pairing)
+		f := Finding{Weight: Blocker, Certainty: inspect.Measured, Subject: h.Pairing}
+		if h.PrecondAsymmetry > asymmetryLimit {
+			f.Claim = fmt.Sprintf("%s is not symmetric: u'inv(M)v and v'inv(M)u differ by %s of their size; %s needs a symmetric positive definite M",
+				m, num(h.PrecondAsymmetry), solver)
+			f.Evidence = []Evidence{number("asymmetry of inv(M)", h.PrecondAsymmetry, "relative")}
+		} else if e, ok := indefinite(h); ok {
+			f.Claim = fmt.Sprintf("%s is not positive definite: %s = %s at iteration %d; %s needs a symmetric positive definite M",
+				m, e.Quantity, num(e.Value), e.Iter, solver)
+			f.Evidence = []Evidence{{Quantity: e.Quantity, Value: e.Value, Unit: "relative", Iteration: int(e.Iter)}}
+		} else {
+			continue
+		}
+		f.Advice = "use a preconditioner that is positive definite, or a method that does not need one"
+		f.Try = []string{solver + "+none", "gmres:30+" + m}
+		if solved(h) {
+			f.Weight = Drag
+		}
+		out = append(out, f)
+	}
+	return out
+}}
+
+func indefinite(h trace.History) (trace.Event, bool) {
+	for _, e := range events(h, trace.PrecondIndefinite) {
+		if e.Value < -indefiniteLimit {
+			return e, true
+		}
+	}
+	return trace.Event{}, false
+}
+
+// pivots: a factorisation broke down on the way, with or without a repair.
+var pivots = Rule{"pivot", func(c Case) (out []Finding) {
+	for _, h := range c.Trials {
+		if len(h.Notes.Broke) == 0 {
+			continue
+		}
+		b := h.Notes.Broke[0]
+		_, solver, m := cut(h.Pairing)
+		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
+			Claim:    fmt.Sprintf("%s broke down in %s with pivot %s", m, name(b.Row), num(b.Value)),
+			Evidence: []Evidence{{Quantity: "pivot", Value: b.Value, Iteration: none, Rows: []int{b.Row}}}}
+		if h.Notes.Shift > 0 {
+			f.Claim += fmt.Sprintf("; it stands with A + %s diag(A), the smallest shift found in %d attempts",
+				num(h.Notes.Shift), len(h.Notes.Broke)+1)
+			f.Advice = "a positive definite A can do this: keep the shift, or use jacobi or ssor"
+			f.Evidence = append(f.Evidence, number("shift", h.Notes.Shift, "of the diagonal"))
+			f.Weight = Note
+		} else {
+			f.Advice = "permute A to a diagonal without zeros, or use a preconditioner without pivots"
+		}
+		if !strings.HasPrefix(m, "jacobi") && c.Facts.DiagZero+c.Facts.DiagMissing == 0 {
+			f.Try = []string{solver + "+jacobi"}
+		}
+		out = append(out, f)
+	}
+	return out
+}}
+
+const (
+	costFactor = 1.3  // slower than without by this factor,
+	costLeast  = 0.05 // and by at least so many seconds
+)
+
+// costly: a preconditioner costs more time than its iterations save.
+var costly = Rule{"preconditioner-costs-more", func(c Case) (out []Finding) {
+	for _, h := range c.Trials {
+		prep, solver, m := cut(h.Pairing)
+		plain, ok := find(c, prep+solver+"+none")
+		if m == "none" || !ok || !solved(h) || !solved(plain) {
+			continue
+		}
+		with, without := h.OwnTime.Seconds(), plain.OwnTime.Seconds()
+		if with < costFactor*without || with-without < costLeast {
+			continue
+		}
+		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
+			Claim: fmt.Sprintf("%s takes %s (set-up %s) where %s without it takes %s: %d iterations instead of %d do not pay for it",
+				m, seconds(with), seconds(h.SetupTime.Seconds()), solver, seconds(without), h.Iterations, plain.Iterations),
+			Advice: "leave it out for one right-hand side",
+			Try:    []string{plain.Pairing},
+			Evidence: []Evidence{number("own time", with, "s"), number("own time without", without, "s"),
+				number("set-up", h.SetupTime.Seconds(), "s")}})
+	}
+	return out
+}}
+
+func find(c Case, pairing string) (trace.History, bool) {
+	for _, h := range c.Trials {
+		if h.Pairing == pairing {
+			return h, true
+		}
+	}
+	return trace.History{}, false
+}

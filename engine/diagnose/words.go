@@ -1,0 +1,101 @@
+package diagnose
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"dwindle/engine/trace"
+)
+
+// none is the iteration of evidence that belongs to none.
+const none = -1
+
+// num prints a number in three digits.
+func num(x float64) string { return fmt.Sprintf("%.3g", x) }
+
+// name prints a row as the file counts it.
+func name(row int) string { return fmt.Sprintf("row %d", row+1) }
+
+// list prints at most k rows, as the file counts them.
+func list(rows []int, k int) string {
+	if len(rows) == 1 {
+		return name(rows[0])
+	}
+	var b strings.Builder
+	b.WriteString("rows ")
+	for i, r := range rows {
+		if i == k {
+			b.WriteString(", ...")
+			break
+		}
+		if i > 0 {
+			b.WriteString(", ")
+		}
+		fmt.Fprintf(&b, "%d", r+1)
+	}
+	return b.String()
+}
+
+// carriers are the rows that together carry at least half of the shares that
+// are known, the largest first, and how much they carry.
+func carriers(shares []trace.RowShare) (rows []int, part float64) {
+	for _, s := range shares {
+		if part >= 0.5 && s.Share < 0.1 {
+			break
+		}
+		rows = append(rows, s.Row)
+		part += s.Share
+	}
+	return rows, part
+}
+
+// number is one piece of evidence that belongs to no iteration.
+func number(quantity string, value float64, unit string) Evidence {
+	return Evidence{Quantity: quantity, Value: value, Unit: unit, Iteration: none}
+}
+
+// seconds prints a time.
+func seconds(s float64) string {
+	if s < 1 {
+		return fmt.Sprintf("%.3g ms", 1000*s)
+	}
+	return fmt.Sprintf("%.3g s", s)
+}
+
+// ratio is a/b, NaN where it says nothing.
+func ratio(a, b float64) float64 {
+	if b == 0 {
+		return math.NaN()
+	}
+	return a / b
+}
+
+// solved says whether a trial ended with an answer.
+func solved(h trace.History) bool {
+	return h.Stop == trace.Converged || h.Stop == trace.LeastSquares
+}
+
+// solver and precond cut a canonical pairing.
+func cut(pairing string) (prep, solver, precond string) {
+	rest := pairing
+	if i := strings.IndexByte(rest, '/'); i >= 0 {
+		prep, rest = rest[:i+1], rest[i+1:]
+	}
+	i := strings.LastIndexByte(rest, '+')
+	if i < 0 {
+		return prep, rest, "none"
+	}
+	return prep, rest[:i], rest[i+1:]
+}
+
+// events returns the events of one kind.
+func events(h trace.History, k trace.Kind) []trace.Event {
+	var out []trace.Event
+	for _, e := range h.Events {
+		if e.Kind == k {
+			out = append(out, e)
+		}
+	}
+	return out
+}

@@ -1,0 +1,146 @@
+package engine
+
+import (
+	"math"
+	"time"
+
+	"dwindle/engine/choose"
+	"dwindle/engine/diagnose"
+	"dwindle/engine/inspect"
+	"dwindle/engine/report"
+	"dwindle/engine/run"
+	"dwindle/engine/trace"
+)
+
+// verdict is the last judgement, kept while nothing that matters has changed.
+type verdict struct {
+	key      verdictKey
+	at       time.Duration
+	findings []diagnose.Finding
+	choice   choose.Choice
+}
+
+// verdictKey changes when a trial begins, ends, or has an event, and when the
+// facts grow.
+type verdictKey struct {
+	facts                  *inspect.Facts
+	trials, events, states int
+	today                  string
+}
+
+// judgeAgain is how long a judgement stands while trials merely run on.
+const judgeAgain = 2 * time.Second
+
+// Snapshot returns what there is to see now.
+func (s *Session) Snapshot() Snapshot {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	return s.look()
+}
+
+// look makes a snapshot; s.mu is held.
+func (s *Session) look() Snapshot {
+	v := Snapshot{Phase: s.phase, Progress: s.progress, Err: s.err, Facts: s.facts, Waiting: s.waiting,
+		Elapsed: s.elapsed(), Machine: thisMachine(s.opt.Threads, s.opt.Memory), Settings: s.settings(),
+		Version: s.changes}
+	v.System = report.System{Name: s.sys.Name, RHS: string(s.sys.RHS), Digits: s.sys.Digits, Fingerprint: s.print}
+	if s.sys.A != nil {
+		v.System.Unknowns = s.sys.N()
+		if m := s.sys.Matrix(); m != nil {
+			v.System.Entries = m.Entries()
+		}
+	}
+	if s.bench == nil {
+		return v
+	}
+	v.Version += s.bench.Version()
+	ended := true
+	for _, t := range s.bench.Trials() {
+		h := t.History()
+		if h.Stop == trace.SettingUp {
+			v.Progress = t.Progress()
+		}
+		ended = ended && h.Stop.Ended()
+		v.Trials = append(v.Trials, Trial{ID: t.ID, History: h})
+	}
+	if v.Phase == Running && ended {
+		v.Phase = Ended
+	}
+	s.judge(&v)
+	return v
+}
+
+// judge diagnoses and chooses, anew only where something has changed.
+func (s *Session) judge(v *Snapshot) {
+	key := verdictKey{facts: s.facts, trials: len(v.Trials)}
+	histories := make([]trace.History, len(v.Trials))
+	for i, t := range v.Trials {
+		histories[i] = t.History
+		key.events += len(t.History.Events)
+		key.states = key.states*17 + int(t.History.Stop)
+		if t.History.Today {
+			key.today = t.History.Pairing
+		}
+	}
+	now := s.clock()
+	if key != s.judged.key || now-s.judged.at > judgeAgain && v.Phase == Running {
+		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule, Guess: math.NaN()}
+		if s.sys.Guess != nil && len(histories) > 0 && len(histories[0].Records) > 0 {
+			c.Guess = histories[0].Records[0].Audit
+		}
+		f := diagnose.Judge(c)
+		s.judged = verdict{key: key, at: now, findings: f, choice: choose.Rank(s.facts, histories, f)}
+	}
+	v.Findings, v.Choice = s.judged.findings, s.judged.choice
+}
+
+// elapsed is the time since the session was opened, suspensions left out;
+// s.mu is held.
+func (s *Session) elapsed() time.Duration {
+	d := s.clock() - s.openAt - s.suspended
+	if s.haltedAt >= 0 {
+		d -= s.clock() - s.haltedAt
+	}
+	return d
+}
+
+func (s *Session) settings() report.Settings {
+	return report.Settings{Tol: s.opt.Tol, StopRule: s.opt.StopRule, Iterations: s.opt.Iterations,
+		Seconds: s.opt.Seconds, Seed: madeStart}
+}
+
+func (s *Session) document() report.Document {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	v := s.look()
+	d := report.Document{Version: s.opt.Version, Command: s.opt.Command, Machine: v.Machine, Settings: v.Settings,
+		System: v.System, Facts: v.Facts, Findings: v.Findings, Choice: v.Choice, Elapsed: v.Elapsed}
+	for _, t := range v.Trials {
+		d.Trials = append(d.Trials, t.History)
+	}
+	if s.bench != nil {
+		d.Solution = solution(s.bench.Trials(), v.Choice.Pairing)
+	}
+	return d
+}
+
+// solution returns the answer of the chosen trial, else of the ended one with
+// the smallest true residual.
+func solution(trials []*run.Trial, chosen string) []float64 {
+	var best []float64
+	least := math.Inf(1)
+	for _, t := range trials {
+		h := t.History()
+		x := t.Answer()
+		if x == nil {
+			continue
+		}
+		if h.Pairing == chosen {
+			return x
+		}
+		if h.TrueResidual < least {
+			best, least = x, h.TrueResidual
+		}
+	}
+	return best
+}

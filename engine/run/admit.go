@@ -1,0 +1,82 @@
+package run
+
+import (
+	"fmt"
+
+	"dwindle/engine/linear"
+)
+
+// Have is what a system offers to methods; found once.
+type Have struct {
+	n        int
+	matrix   *linear.CSR
+	transpo  bool
+	zeroDiag int // rows whose diagonal entry is zero or missing
+	zeroRow  int // the first of them
+}
+
+// Offers finds what the system offers.
+func Offers(s linear.System) Have {
+	h := Have{n: s.N(), matrix: s.Matrix()}
+	_, h.transpo = linear.As[linear.Transposer](s.A)
+	if h.matrix == nil {
+		return h
+	}
+	d := make([]float64, h.n)
+	h.matrix.Diagonal(d)
+	for i := h.n - 1; i >= 0; i-- {
+		if d[i] == 0 {
+			h.zeroDiag++
+			h.zeroRow = i
+		}
+	}
+	return h
+}
+
+// Refuse returns why the method cannot run on such a system, empty if it can.
+func (m Method) Refuse(h Have) string {
+	for _, p := range m.Preps {
+		if why := lacking(p.Entry.Name, p.Entry.Needs, h); why != "" {
+			return why
+		}
+	}
+	if why := lacking(m.Solver.Name, m.Solver.Needs, h); why != "" {
+		return why
+	}
+	return lacking(m.Precond.Name, m.Precond.Needs, h)
+}
+
+func lacking(name string, needs linear.Has, h Have) string {
+	switch {
+	case needs&linear.NeedsEntries != 0 && h.matrix == nil:
+		return name + " needs the entries of A; only products are given"
+	case needs&linear.NeedsTranspose != 0 && !h.transpo:
+		return name + " needs products with the transpose"
+	case needs&linear.NeedsDiagonal != 0 && h.zeroDiag > 0:
+		return fmt.Sprintf("%s needs a nonzero diagonal: %d of %d entries are zero, the first in row %d",
+			name, h.zeroDiag, h.n, h.zeroRow+1)
+	}
+	return ""
+}
+
+// Memory returns the bytes the method takes beyond the system itself, known
+// before anything is allocated.
+func (m Method) Memory(h Have) int64 {
+	total := int64(0)
+	if m.Solver.Memory != nil {
+		total += m.Solver.Memory(h.n, m.SolverValues)
+	}
+	if h.matrix == nil {
+		return total
+	}
+	if m.Precond.Estimate != nil {
+		b, _ := m.Precond.Estimate(h.matrix, m.PrecondValues)
+		total += b
+	}
+	for _, p := range m.Preps {
+		if p.Entry.Estimate != nil {
+			total += p.Entry.Estimate(h.matrix, p.Values)
+		}
+	}
+	return total
+}

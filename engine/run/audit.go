@@ -1,0 +1,152 @@
+package run
+
+import (
+	"math"
+	"sort"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/trace"
+)
+
+// schedule decides from the readings alone where audits fall: whenever the
+// method's own number first meets the target, at each further halving of it
+// or 5 % more iterations, and at iterations ⌈1.2^k⌉.
+type schedule struct {
+	next     int     // the next of ⌈1.2^k⌉
+	power    float64 // 1.2^k
+	metAt    int     // iteration of the last audit at or below the target; -1 before
+	metValue float64
+}
+
+func newSchedule() schedule { return schedule{next: 1, power: 1, metAt: -1} }
+
+// due says whether the iteration with this own number (held against the
+// tolerance) is audited.
+func (s *schedule) due(iter int, own, tol float64) bool {
+	due := iter == 0
+	for iter >= s.next {
+		due = true
+		s.power *= 1.2
+		s.next = max(s.next+1, int(math.Ceil(s.power)))
+	}
+	if own <= tol && (s.metAt < 0 || own <= s.metValue/2 || float64(iter) >= 1.05*float64(s.metAt)) {
+		s.metAt, s.metValue = iter, own
+		due = true
+	}
+	return due
+}
+
+// scratch is the memory audits work in, shared by all trials of a bench: one
+// trial moves at a time.
+type scratch struct {
+	x, r, w, own []float64 // length n each
+}
+
+func newScratch(n int) *scratch {
+	v := make([]float64, 4*n)
+	return &scratch{v[:n:n], v[n : 2*n : 2*n], v[2*n : 3*n : 3*n], v[3*n:]}
+}
+
+// audit is what one fresh look at b−Ax found.
+type audit struct {
+	true2    float64 // ‖b−Ax‖₂
+	ownTrue  float64 // the same in the method's own norm
+	xInf, x2 float64
+	rInf     float64
+	normal   float64 // ‖Aᵀr‖₂/(‖A‖_F‖r‖₂); NaN where not asked
+}
+
+// audit measures b−Ax in the user's own units and ordering.
+func (t *Trial) audit(normal bool) audit {
+	s := t.scratch
+	t.iterate(s.x)
+	var a audit
+	a.true2 = linear.Residual(s.r, t.sys.A, s.x, t.sys.B)
+	a.rInf, a.xInf, a.x2 = linear.NormInf(s.r), linear.NormInf(s.x), linear.Norm2(s.x)
+	a.ownTrue = t.inOwnNorm(a.true2)
+	a.normal = math.NaN()
+	if normal {
+		a.normal = t.normalResidual(a.true2)
+	}
+	return a
+}
+
+// iterate writes the current iterate in the user's units to dst.
+func (t *Trial) iterate(dst []float64) {
+	if t.back == nil {
+		t.solver.Solution(dst)
+		return
+	}
+	t.solver.Solution(t.scratch.w)
+	t.back.Solution(dst, t.scratch.w)
+}
+
+// inOwnNorm returns the true residual of the prepared system in the norm that
+// the method watches.
+func (t *Trial) inOwnNorm(true2 float64) float64 {
+	s := t.scratch
+	r := s.r
+	if t.back != nil {
+		t.solver.Solution(s.w)
+		true2 = linear.Residual(s.own, t.prepared.A, s.w, t.prepared.B)
+		r = s.own
+	}
+	if t.method.Solver.Norm != trace.PrecondNorm || t.method.Precond.Name == "none" {
+		return true2
+	}
+	t.m.Apply(s.w, r)
+	return math.Sqrt(math.Max(0, linear.Dot(r, s.w)))
+}
+
+// normalResidual returns ‖Aᵀr‖₂/(‖A‖_F‖r‖₂) for the residual in the scratch.
+func (t *Trial) normalResidual(true2 float64) float64 {
+	op, ok := linear.As[linear.Transposer](t.sys.A)
+	if !ok || true2 == 0 {
+		return math.NaN()
+	}
+	op.ApplyT(t.scratch.w, t.scratch.r)
+	return over(linear.Norm2(t.scratch.w), t.sizes.fro*true2)
+}
+
+// componentwise returns max |r_i|/(|A||x|+|b|)_i (Oettli and Prager 1964) for
+// the residual and iterate in the scratch, with the rows that exceed limit:
+// how many, and the worst.
+func (t *Trial) componentwise(limit float64) (worst float64, over int, rows []trace.RowShare) {
+	m := t.sys.Matrix()
+	if m == nil {
+		return math.NaN(), 0, nil
+	}
+	s := t.scratch
+	for i := range s.r {
+		cols, vals := m.Row(i)
+		size := math.Abs(t.sys.B[i])
+		for k, c := range cols {
+			size += math.Abs(vals[k] * s.x[c])
+		}
+		e := 0.0
+		if r := math.Abs(s.r[i]); r != 0 {
+			e = math.Min(r/size, 1)
+		}
+		worst = math.Max(worst, e)
+		if e > limit {
+			over++
+			rows = keepLargest(rows, trace.RowShare{Row: i, Share: e})
+		}
+	}
+	return worst, over, rows
+}
+
+// keepLargest inserts s into rows, which stay the largest shares in falling
+// order, at most trace.MaxRows of them.
+func keepLargest(rows []trace.RowShare, s trace.RowShare) []trace.RowShare {
+	at := sort.Search(len(rows), func(k int) bool { return rows[k].Share < s.Share })
+	if at == trace.MaxRows {
+		return rows
+	}
+	if len(rows) < trace.MaxRows {
+		rows = append(rows, s)
+	}
+	copy(rows[at+1:], rows[at:])
+	rows[at] = s
+	return rows
+}

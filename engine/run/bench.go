@@ -1,0 +1,380 @@
+package run
+
+import (
+	"context"
+	"fmt"
+	"math"
+	"runtime"
+	"sync"
+	"sync/atomic"
+	"time"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/trace"
+)
+
+const (
+	minQuantum   = 50 * time.Millisecond
+	maxQuantum   = time.Second // slow steps do not make the others wait longer
+	quantumSteps = 20
+)
+
+// Bench lets trials advance side by side, one at a time, each with the whole
+// thread team: deficit round robin. Each round credits one quantum to every
+// live trial, overshoot is carried as debt, a late trial starts level.
+type Bench struct {
+	sys     linear.System
+	limits  Limits
+	memory  int64 // for all live trials together
+	clock   Clock
+	have    Have
+	sizes   sizes
+	scratch *scratch
+
+	mu      sync.Mutex
+	wake    *sync.Cond
+	trials  []*Trial
+	nextID  int
+	paused  bool
+	moving  bool // the goroutine of Run is inside a trial
+	stopped bool
+	version atomic.Int64
+}
+
+// NewBench makes a bench for a system. memory bounds all live trials
+// together, in bytes.
+func NewBench(s linear.System, l Limits, memory int64, clock Clock) *Bench {
+	if clock == nil {
+		clock = MachineClock()
+	}
+	b := &Bench{sys: s, limits: l, memory: memory, clock: clock, have: Offers(s), sizes: measure(s), nextID: 1}
+	b.wake = sync.NewCond(&b.mu)
+	return b
+}
+
+// measure finds the norms that audits are held against.
+func measure(s linear.System) sizes {
+	z := sizes{b: linear.Norm2(s.B), bInf: linear.NormInf(s.B)}
+	if z.b == 0 {
+		z.b = 1 // a zero right-hand side: residuals are absolute
+	}
+	m := s.Matrix()
+	if m == nil {
+		z.aInf, z.fro, z.a2 = math.NaN(), math.NaN(), math.NaN()
+		return z
+	}
+	colSum := make([]float64, m.NCols)
+	for i := 0; i < m.NRows; i++ {
+		cols, vals := m.Row(i)
+		row := 0.0
+		for k, c := range cols {
+			v := math.Abs(vals[k])
+			row += v
+			colSum[c] += v
+		}
+		z.aInf = math.Max(z.aInf, row)
+	}
+	z.fro = linear.Norm2(m.Val)
+	z.a2 = math.Sqrt(z.aInf * linear.NormInf(colSum))
+	return z
+}
+
+// Have returns what the system offers to methods.
+func (b *Bench) Have() Have { return b.have }
+
+// Add adds a trial. A pairing that cannot run here, or would not fit the
+// memory limit beside the live ones, is added as refused.
+func (b *Bench) Add(m Method) *Trial {
+	need := m.Memory(b.have)
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	if b.scratch == nil {
+		b.scratch = newScratch(b.sys.N())
+	}
+	t := newTrial(b.nextID, m, b.sys, b.sizes, b.limits, b.clock, b.scratch, need)
+	b.nextID++
+	if why := m.Refuse(b.have); why != "" {
+		t.end(trace.Refused, why)
+	} else if used := b.used(); b.memory > 0 && used+need > b.memory {
+		t.end(trace.Refused, fmt.Sprintf("needs %s; %s of the limit %s are in use", Bytes(need), Bytes(used), Bytes(b.memory)))
+	}
+	b.trials = append(b.trials, t)
+	b.changed()
+	b.wake.Broadcast()
+	return t
+}
+
+// used returns the memory of the trials that hold any; b.mu is held.
+func (b *Bench) used() int64 {
+	total := int64(0)
+	for _, t := range b.trials {
+		if h := t.History(); !h.Stop.Ended() {
+			total += h.MemoryBytes
+		} else if h.Stop != trace.Refused {
+			total += 8 * int64(b.have.n) // the answer is kept
+		}
+	}
+	return total
+}
+
+// Bytes prints a size of memory.
+func Bytes(n int64) string {
+	switch {
+	case n >= 1<<30:
+		return fmt.Sprintf("%.1f GB", float64(n)/(1<<30))
+	case n >= 1<<20:
+		return fmt.Sprintf("%.0f MB", float64(n)/(1<<20))
+	}
+	return fmt.Sprintf("%.0f kB", math.Ceil(float64(n)/(1<<10)))
+}
+
+// Trials returns the trials in the order they were added.
+func (b *Bench) Trials() []*Trial {
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	return append([]*Trial(nil), b.trials...)
+}
+
+// Version changes whenever a trial moves or the list of trials changes.
+func (b *Bench) Version() int64 { return b.version.Load() }
+
+func (b *Bench) changed() { b.version.Add(1) }
+
+// Run moves the trials until ctx is done. It runs on one goroutine, bound to
+// its thread, so that the thread's CPU time tells how busy the machine was.
+func (b *Bench) Run(ctx context.Context) {
+	runtime.LockOSThread()
+	defer runtime.UnlockOSThread()
+	go func() {
+		<-ctx.Done()
+		b.mu.Lock()
+		b.stopped = true
+		b.wake.Broadcast()
+		b.mu.Unlock()
+	}()
+	for {
+		live := b.await()
+		if live == nil {
+			return
+		}
+		q := quantum(live)
+		for _, t := range live {
+			if !b.enter() {
+				break
+			}
+			t.budget += q
+			t.advance(ctx)
+			t.release()
+			b.leave()
+		}
+	}
+}
+
+// await returns the trials that can move, waiting until there are any; nil
+// when the bench is stopped.
+func (b *Bench) await() []*Trial {
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	for {
+		if b.stopped {
+			return nil
+		}
+		if !b.paused {
+			if live := b.live(); len(live) > 0 {
+				return live
+			}
+		}
+		b.wake.Wait()
+	}
+}
+
+// live returns the trials that can move; b.mu is held.
+func (b *Bench) live() []*Trial {
+	var live []*Trial
+	for _, t := range b.trials {
+		if t.canMove() {
+			live = append(live, t)
+		}
+	}
+	return live
+}
+
+// quantum is the credit of one round: at least minQuantum and, up to
+// maxQuantum, long enough for quantumSteps steps of the slowest live trial.
+func quantum(live []*Trial) time.Duration {
+	q := minQuantum
+	for _, t := range live {
+		h := t.History()
+		if h.Iterations > 0 {
+			q = max(q, quantumSteps*(h.OwnTime-h.SetupTime)/time.Duration(h.Iterations))
+		}
+	}
+	return min(q, maxQuantum)
+}
+
+func (b *Bench) enter() bool {
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	if b.paused || b.stopped {
+		return false
+	}
+	b.moving = true
+	return true
+}
+
+func (b *Bench) leave() {
+	b.mu.Lock()
+	b.moving = false
+	b.changed()
+	b.wake.Broadcast()
+	b.mu.Unlock()
+}
+
+// Pause returns when no trial moves any more; Continue lets them go on.
+func (b *Bench) Pause() {
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	b.paused = true
+	for b.moving {
+		b.wake.Wait()
+	}
+}
+
+// Continue takes Pause back.
+func (b *Bench) Continue() {
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	b.paused = false
+	b.wake.Broadcast()
+}
+
+// Find returns the trial with this id, or nil.
+func (b *Bench) Find(id int) *Trial {
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	for _, t := range b.trials {
+		if t.ID == id {
+			return t
+		}
+	}
+	return nil
+}
+
+// Drop ends the trial and takes it off the list.
+func (b *Bench) Drop(id int) {
+	t := b.Find(id)
+	if t == nil {
+		return
+	}
+	b.Cancel(t, trace.Cancelled, "dropped")
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	for i, u := range b.trials {
+		if u == t {
+			b.trials = append(b.trials[:i:i], b.trials[i+1:]...)
+			break
+		}
+	}
+	b.changed()
+}
+
+// Cancel ends one trial with the given ending, as soon as its step is done.
+func (b *Bench) Cancel(t *Trial, stop trace.Stop, reason string) {
+	t.interrupt()
+	b.withStill(func() {
+		t.end(stop, reason)
+		t.release()
+	})
+}
+
+// CancelAll ends every live trial.
+func (b *Bench) CancelAll(stop trace.Stop, reason string) {
+	for _, t := range b.Trials() {
+		if !t.ended() {
+			t.interrupt()
+		}
+	}
+	b.withStill(func() {
+		for _, t := range b.Trials() {
+			t.end(stop, reason)
+			t.release()
+		}
+	})
+}
+
+// withStill runs f while no trial moves.
+func (b *Bench) withStill(f func()) {
+	b.mu.Lock()
+	was := b.paused
+	b.mu.Unlock()
+	b.Pause()
+	f()
+	b.mu.Lock()
+	b.paused = was
+	b.changed()
+	b.wake.Broadcast()
+	b.mu.Unlock()
+}
+
+// Hold lets a trial wait, or go on.
+func (b *Bench) Hold(t *Trial, hold bool) {
+	t.mu.Lock()
+	t.held = hold
+	switch {
+	case t.hist.Stop.Ended():
+	case hold && t.hist.Stop != trace.SettingUp:
+		t.hist.Stop = trace.Held
+	case !hold && t.hist.Stop == trace.Held:
+		t.hist.Stop = trace.Running
+		if len(t.hist.Records) == 0 {
+			t.hist.Stop = trace.Waiting
+		}
+	}
+	t.mu.Unlock()
+	b.mu.Lock()
+	b.changed()
+	b.wake.Broadcast()
+	b.mu.Unlock()
+}
+
+// MarkToday marks the trial, and no other; nil marks none.
+func (b *Bench) MarkToday(t *Trial) {
+	for _, u := range b.Trials() {
+		u.mu.Lock()
+		u.hist.Today = u == t
+		u.mu.Unlock()
+	}
+	b.changed()
+}
+
+// Live says whether any trial has not ended.
+func (b *Bench) Live() bool {
+	for _, t := range b.Trials() {
+		if !t.ended() {
+			return true
+		}
+	}
+	return false
+}
+
+// WaitEnded returns when every trial has ended or ctx is done.
+func (b *Bench) WaitEnded(ctx context.Context) {
+	stop := context.AfterFunc(ctx, func() {
+		b.mu.Lock()
+		b.wake.Broadcast()
+		b.mu.Unlock()
+	})
+	defer stop()
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	for ctx.Err() == nil {
+		ended := true
+		for _, t := range b.trials {
+			ended = ended && t.ended()
+		}
+		if ended {
+			return
+		}
+		b.wake.Wait()
+	}
+}

@@ -1,0 +1,43 @@
+package run
+
+import "dwindle/engine/linear"
+
+// counted counts the uses of what it wraps and keeps its abilities.
+type counted struct {
+	inner linear.Applier
+	n     int // order
+	uses  uint32
+}
+
+func (c *counted) Apply(dst, x []float64) { c.uses++; c.inner.Apply(dst, x) }
+
+func (c *counted) Dims() (rows, cols int) { return c.n, c.n }
+
+func (c *counted) Unwrap() any { return c.inner }
+
+// ApplyDot counts and passes on; As finds it only where inner has it.
+func (c *counted) ApplyDot(dst, x []float64) float64 {
+	c.uses++
+	return linear.ApplyDot(c.inner, dst, x)
+}
+
+// ApplyT counts and passes on; As finds it only where inner has it.
+func (c *counted) ApplyT(dst, x []float64) {
+	c.uses++
+	t, _ := linear.As[linear.Transposer](c.inner)
+	t.ApplyT(dst, x)
+}
+
+// Lacks answers linear.As for the abilities that count.
+func (c *counted) Lacks(want any) bool {
+	var has bool
+	switch want.(type) {
+	case *linear.DotApplier:
+		_, has = linear.As[linear.DotApplier](c.inner)
+	case *linear.Transposer:
+		_, has = linear.As[linear.Transposer](c.inner)
+	default:
+		return false
+	}
+	return !has
+}

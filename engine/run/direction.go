@@ -1,0 +1,108 @@
+package run
+
+import (
+	"context"
+	"math"
+
+	"dwindle/engine/krylov"
+	"dwindle/engine/linear"
+	"dwindle/engine/spectrum"
+	"dwindle/engine/trace"
+)
+
+// refineSteps is how many products, off the clock, may go into making a
+// direction of negative curvature show the rows that carry it.
+const refineSteps = 80
+
+// judgeEvents stamps the events of a step with the iteration and holds a
+// negative curvature against its rounding bound, once a trial.
+func (t *Trial) judgeEvents(events []trace.Event, iter int) []trace.Event {
+	for i := range events {
+		e := &events[i]
+		e.Iter = uint32(iter)
+		for k := range e.Rows {
+			e.Rows[k].Row = t.fileRow(e.Rows[k].Row)
+		}
+		if (e.Kind == trace.NegativeCurvature || e.Kind == trace.ZeroCurvature) && !t.turned {
+			t.judgeCurvature(e)
+		}
+	}
+	return events
+}
+
+func (t *Trial) fileRow(i int) int {
+	if t.back == nil {
+		return i
+	}
+	return t.back.Row(i)
+}
+
+// judgeCurvature evaluates pᵀAp in the user's units with a rigorous rounding
+// bound. Proved, the direction is improved towards the smallest eigenvalue,
+// so that the rows that carry it stand out, and judged again.
+func (t *Trial) judgeCurvature(e *trace.Event) {
+	c, ok := t.solver.(krylov.Curver)
+	m := t.sys.Matrix()
+	if !ok || m == nil {
+		return
+	}
+	p, _ := c.Curvature()
+	v := make([]float64, len(p))
+	if t.back == nil {
+		copy(v, p)
+	} else {
+		t.back.Solution(v, p)
+	}
+	t.weigh(e, m, v)
+	if !e.Proved() {
+		return
+	}
+	t.turned = true
+	better, _ := spectrum.RefineNegative(context.Background(), m, v, refineSteps)
+	sharper := *e
+	t.weigh(&sharper, m, better)
+	if sharper.Proved() && sharper.Value < e.Value {
+		*e = sharper
+	}
+}
+
+// weigh sets the event's Rayleigh quotient, bounds and rows for direction v.
+func (t *Trial) weigh(e *trace.Event, m *linear.CSR, v []float64) {
+	size := linear.Dot(v, v)
+	value, bound, slack := linear.Curvature(m, v, t.limits.Delta)
+	e.Quantity, e.Value, e.Scale, e.Slack = "p'Ap/p'p", value/size, bound/size, slack/size
+	e.Kind = trace.NegativeCurvature
+	if !e.Proved() {
+		e.Kind = trace.ZeroCurvature
+	}
+	e.Rows = nil
+	for i, x := range v {
+		if share := x * x / size; share > 1e-6 {
+			e.Rows = keepLargest(e.Rows, trace.RowShare{Row: i, Share: share})
+		}
+	}
+}
+
+// probe tests off the clock whether M⁻¹ is symmetric and positive on two
+// random vectors, for solvers that assume so.
+func (t *Trial) probe() {
+	n := t.sys.N()
+	buf := make([]float64, 4*n)
+	u, v, mu, mv := buf[:n], buf[n:2*n], buf[2*n:3*n], buf[3*n:]
+	linear.Uniform(u, 1)
+	linear.Uniform(v, 2)
+	t.m.inner.Apply(mu, u)
+	t.m.inner.Apply(mv, v)
+	uMv, vMu := linear.Dot(u, mv), linear.Dot(v, mu)
+	asym := over(math.Abs(uMv-vMu), linear.Norm2(u)*linear.Norm2(mv))
+	t.mu.Lock()
+	t.hist.PrecondAsymmetry = asym
+	t.mu.Unlock()
+	for _, q := range [][2][]float64{{u, mu}, {v, mv}} {
+		if d := linear.Dot(q[0], q[1]); d < 0 {
+			t.event(trace.Event{Kind: trace.PrecondIndefinite, Quantity: "v'inv(M)v of a random v",
+				Value: d / (linear.Norm2(q[0]) * linear.Norm2(q[1]))})
+			return
+		}
+	}
+}

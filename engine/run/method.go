@@ -1,0 +1,96 @@
+package run
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"dwindle/engine/krylov"
+	"dwindle/engine/linear"
+	"dwindle/engine/precond"
+	"dwindle/engine/prepare"
+	"dwindle/engine/trace"
+)
+
+// Prep is one preparation with its parameters.
+type Prep struct {
+	Entry  prepare.Entry
+	Values linear.Values
+}
+
+// Method is a pairing resolved against the catalogues.
+type Method struct {
+	Name          string // canonical
+	Preps         []Prep
+	Solver        krylov.Entry
+	SolverValues  linear.Values
+	Precond       precond.Entry
+	PrecondValues linear.Values
+}
+
+// Parse reads one pairing (without ranges) and resolves it. The error names
+// what is not known, with what is.
+func Parse(text string) (Method, error) {
+	var m Method
+	p, err := linear.ParsePairing(text)
+	if err != nil {
+		return m, err
+	}
+	canon := linear.Pairing{}
+	for _, q := range p.Preps {
+		e, ok := prepare.Lookup(q.Name)
+		if !ok {
+			return m, unknown("preparation", q.Name, names(prepare.Catalogue, func(e prepare.Entry) string { return e.Name }))
+		}
+		v, err := linear.Resolve(q.Name, e.Params, q.Args)
+		if err != nil {
+			return m, err
+		}
+		m.Preps = append(m.Preps, Prep{e, v})
+		canon.Preps = append(canon.Preps, linear.Part{Name: q.Name, Args: v.Args()})
+	}
+	var ok bool
+	if m.Solver, ok = krylov.Lookup(p.Solver.Name); !ok {
+		return m, unknown("solver", p.Solver.Name, names(krylov.Catalogue, func(e krylov.Entry) string { return e.Name }))
+	}
+	if m.SolverValues, err = linear.Resolve(p.Solver.Name, m.Solver.Params, p.Solver.Args); err != nil {
+		return m, err
+	}
+	if m.Precond, ok = precond.Lookup(p.Precond.Name); !ok {
+		return m, unknown("preconditioner", p.Precond.Name, names(precond.Catalogue, func(e precond.Entry) string { return e.Name }))
+	}
+	if m.PrecondValues, err = linear.Resolve(p.Precond.Name, m.Precond.Params, p.Precond.Args); err != nil {
+		return m, err
+	}
+	canon.Solver = linear.Part{Name: p.Solver.Name, Args: m.SolverValues.Args()}
+	canon.Precond = linear.Part{Name: p.Precond.Name, Args: m.PrecondValues.Args()}
+	m.Name = canon.String()
+	return m, nil
+}
+
+func names[E any](list []E, name func(E) string) []string {
+	out := make([]string, len(list))
+	for i, e := range list {
+		out[i] = name(e)
+	}
+	return out
+}
+
+func unknown(what, name string, known []string) error {
+	return fmt.Errorf("no %s is called %q; there are %s", what, name, strings.Join(known, ", "))
+}
+
+// norm returns the norm the method's own number is in.
+func (m Method) norm() trace.Norm {
+	scales := slices.ContainsFunc(m.Preps, func(p Prep) bool { return p.Entry.Scales })
+	if scales && m.Solver.Norm == trace.TwoNorm {
+		return trace.ScaledNorm
+	}
+	if m.Solver.Norm == trace.PrecondNorm && m.Precond.Name == "none" {
+		if scales {
+			return trace.ScaledNorm
+		}
+		return trace.TwoNorm
+	}
+	return m.Solver.Norm
+}

@@ -1,0 +1,286 @@
+package run
+
+import (
+	"context"
+	"fmt"
+	"math"
+	"runtime/debug"
+	"sync"
+	"time"
+
+	"dwindle/engine/krylov"
+	"dwindle/engine/linear"
+	"dwindle/engine/prepare"
+	"dwindle/engine/spectrum"
+	"dwindle/engine/trace"
+)
+
+// sizes are norms of the system that audits are held against.
+type sizes struct {
+	b, bInf       float64 // ‖b‖₂, ‖b‖∞
+	aInf, fro, a2 float64 // ‖A‖∞, ‖A‖_F, and √(‖A‖₁‖A‖∞) ≥ ‖A‖₂; NaN for a matrix-free A
+}
+
+// Trial is one pairing on the system. The bench moves it; History may be
+// read from any goroutine.
+type Trial struct {
+	ID     int
+	method Method
+	sys    linear.System // the user's
+	limits Limits
+	sizes  sizes
+	clock  Clock
+
+	prepared linear.System
+	back     prepare.Back // nil without preparations
+	a, m     *counted
+	solver   krylov.Solver
+	scratch  *scratch
+
+	ownB, own0 float64 // own norm of b and of the first residual
+	sched      schedule
+	marks      marks
+	lanczos    *spectrum.Tridiagonal
+	lanczosAt  int // order at the last look
+	ending     ending
+	turned     bool // a negative curvature has been judged
+
+	budget time.Duration // own time it may still use; negative is debt
+	cpu    time.Duration
+
+	mu       sync.Mutex
+	hist     trace.History
+	progress float64 // of the set-up
+	cancel   context.CancelFunc
+	held     bool
+	answer   []float64 // the last iterate, once ended
+}
+
+// Limits bound a trial.
+type Limits struct {
+	Target      Target
+	Iterations  int
+	Seconds     float64 // own time; 0 is none
+	Unreachable float64 // part of b known to be out of A's range, relative to ‖b‖; 0 if none known
+	Delta       float64 // what the printed digits leave open in an entry
+}
+
+// History returns a consistent copy that shares the append-only records.
+func (t *Trial) History() trace.History {
+	t.mu.Lock()
+	defer t.mu.Unlock()
+	return t.hist
+}
+
+// Progress returns how far the set-up is, 0 to 1.
+func (t *Trial) Progress() float64 {
+	t.mu.Lock()
+	defer t.mu.Unlock()
+	return t.progress
+}
+
+// Method returns the resolved pairing.
+func (t *Trial) Method() Method { return t.method }
+
+func newTrial(id int, m Method, s linear.System, z sizes, l Limits, clock Clock, sc *scratch, memory int64) *Trial {
+	t := &Trial{ID: id, method: m, sys: s, sizes: z, limits: l, clock: clock, scratch: sc,
+		sched: newSchedule(), marks: newMarks(m.Solver.Lanczos)}
+	nan := math.NaN()
+	e, p := m.Solver, m.Precond
+	t.hist = trace.History{Pairing: m.Name, Stop: trace.Waiting, Norm: m.norm(), MemoryBytes: memory,
+		SymmetricA: e.Assumes&linear.AssumesSymmetric != 0, DefiniteA: e.Assumes&linear.AssumesDefinite != 0,
+		SPDM:      e.Assumes&linear.AssumesSymmetricM != 0 && p.Name != "none",
+		Restarted: e.Restarted, Monotone: e.Monotone, Energy: e.Energy, Direct: p.Exact,
+		CPUShare: nan, Residual: nan, TrueResidual: nan, BestTrue: math.Inf(1), Backward: nan, Componentwise: nan,
+		Error: nan, Floor: nan, Normal: nan, PrecondAsymmetry: nan, WouldStop: t.marks.audited(-1, nan)}
+	return t
+}
+
+// guard turns a panic of a method into a failed trial.
+func (t *Trial) guard() {
+	if p := recover(); p != nil {
+		t.end(trace.Failed, fmt.Sprintf("internal fault: %v\n%s", p, debug.Stack()))
+	}
+}
+
+// advance moves the trial until its budget is used up, it ends, or ctx does.
+func (t *Trial) advance(ctx context.Context) {
+	defer t.guard()
+	cpu, own := threadCPU(), t.hist.OwnTime
+	if t.solver == nil {
+		t.setUp(ctx)
+	}
+	for t.budget > 0 && ctx.Err() == nil && t.canMove() {
+		t.step()
+	}
+	t.cpu += threadCPU() - cpu
+	if spent := t.hist.OwnTime - own; spent > 0 {
+		t.mu.Lock()
+		t.hist.CPUShare = math.Min(1, float64(t.cpu)/float64(t.hist.OwnTime))
+		t.mu.Unlock()
+	}
+}
+
+// ended says whether the trial is over.
+func (t *Trial) ended() bool {
+	t.mu.Lock()
+	defer t.mu.Unlock()
+	return t.hist.Stop.Ended()
+}
+
+// canMove says whether the trial may take a step.
+func (t *Trial) canMove() bool {
+	t.mu.Lock()
+	defer t.mu.Unlock()
+	return !t.held && !t.hist.Stop.Ended()
+}
+
+// charge adds to the trial's own time what has passed since start.
+func (t *Trial) charge(start time.Duration) {
+	d := t.clock() - start
+	t.budget -= d
+	t.mu.Lock()
+	t.hist.OwnTime += d
+	t.mu.Unlock()
+}
+
+// setUp prepares, builds and begins, on the trial's clock.
+func (t *Trial) setUp(parent context.Context) {
+	ctx, cancel := context.WithCancel(parent)
+	defer cancel()
+	t.mu.Lock()
+	t.hist.Stop, t.cancel = trace.SettingUp, cancel
+	t.mu.Unlock()
+	start := t.clock()
+	reading, err := t.build(ctx)
+	t.charge(start)
+	t.mu.Lock()
+	t.hist.SetupTime, t.progress = t.hist.OwnTime, 1
+	live := !t.hist.Stop.Ended()
+	t.mu.Unlock()
+	switch {
+	case !live:
+	case err != nil && ctx.Err() != nil:
+		t.solver = nil
+		t.end(trace.Cancelled, "cancelled while setting up")
+	case err != nil:
+		t.end(trace.BrokeDown, "set-up: "+err.Error())
+	default:
+		t.begun(reading)
+	}
+}
+
+// build makes the prepared system, the preconditioner and the solver.
+func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
+	var err error
+	if t.prepared, t.back, err = chain(ctx, t.method.Preps, t.sys); err != nil {
+		return trace.Reading{}, err
+	}
+	m, notes, err := t.method.Precond.Build(ctx, t.prepared, t.method.PrecondValues, func(p float64) {
+		t.mu.Lock()
+		t.progress = p
+		t.mu.Unlock()
+	})
+	t.mu.Lock()
+	t.hist.Notes = notes
+	t.mu.Unlock()
+	if err != nil {
+		return trace.Reading{}, err
+	}
+	n := t.sys.N()
+	t.a, t.m = &counted{inner: t.prepared.A, n: n}, &counted{inner: m, n: n}
+	guess := t.prepared.Guess
+	solver := t.method.Solver.New(t.method.SolverValues)
+	r, err := solver.Begin(krylov.Problem{A: t.a, M: t.m, B: t.prepared.B, X: guess})
+	if err == nil {
+		t.solver = solver
+	}
+	return r, err
+}
+
+// begun follows a successful set-up: own norms, probes and iteration 0.
+func (t *Trial) begun(r trace.Reading) {
+	t.own0 = r.Residual
+	t.ownB = linear.Norm2(t.prepared.B)
+	if t.method.Solver.Norm == trace.PrecondNorm && t.method.Precond.Name != "none" {
+		t.m.inner.Apply(t.scratch.w, t.prepared.B)
+		t.ownB = math.Sqrt(math.Max(0, linear.Dot(t.prepared.B, t.scratch.w)))
+	}
+	t.mu.Lock()
+	t.hist.Stop = trace.Running
+	t.mu.Unlock()
+	if t.hist.SPDM {
+		t.probe()
+	}
+	if t.method.Solver.Lanczos || t.method.Solver.Tridiagonal {
+		t.lanczos = new(spectrum.Tridiagonal)
+	}
+	t.record(r, true)
+}
+
+// step makes one iteration on the clock and judges it off the clock.
+func (t *Trial) step() {
+	start := t.clock()
+	r, err := t.solver.Step()
+	t.charge(start)
+	if err == nil {
+		err = t.operatorError()
+	}
+	if err != nil {
+		t.end(trace.Failed, err.Error())
+		return
+	}
+	t.mu.Lock()
+	t.hist.Iterations++
+	t.mu.Unlock()
+	switch {
+	case t.method.Solver.Tridiagonal:
+		t.lanczos.AddLanczos(r.Alpha, r.Beta)
+	case t.lanczos != nil:
+		t.lanczos.AddCG(r.Alpha, r.Beta)
+	}
+	t.record(r, false)
+}
+
+func (t *Trial) operatorError() error {
+	for _, op := range []any{t.a.inner, t.m.inner} {
+		if f, ok := op.(linear.Failer); ok && f.Err() != nil {
+			return f.Err()
+		}
+	}
+	return nil
+}
+
+// interrupt cancels a set-up that is under way and makes a running slice end
+// after the present step.
+func (t *Trial) interrupt() {
+	t.mu.Lock()
+	defer t.mu.Unlock()
+	if t.cancel != nil {
+		t.cancel()
+	}
+	if !t.hist.Stop.Ended() {
+		t.held = true
+	}
+}
+
+// release keeps the solution and gives the rest of the memory back once the
+// trial has ended.
+func (t *Trial) release() {
+	if !t.ended() || t.solver == nil {
+		return
+	}
+	x := make([]float64, t.sys.N())
+	t.iterate(x)
+	t.mu.Lock()
+	t.answer = x
+	t.mu.Unlock()
+	t.solver, t.a, t.m, t.back, t.prepared, t.lanczos = nil, nil, nil, nil, linear.System{}, nil
+}
+
+// Answer returns the last iterate of an ended trial (length n), or nil.
+func (t *Trial) Answer() []float64 {
+	t.mu.Lock()
+	defer t.mu.Unlock()
+	return t.answer
+}

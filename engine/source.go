@@ -1,0 +1,134 @@
+package engine
+
+import (
+	"context"
+	"fmt"
+	"io"
+	"math"
+	"path/filepath"
+	"strconv"
+	"strings"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/load"
+	"dwindle/samples"
+)
+
+// madeStart is where the generator of a made right-hand side starts; JSON
+// calls it the seed.
+const madeStart = 1
+
+// read loads the system that source names, without its right-hand side.
+func read(ctx context.Context, source string, stdin io.Reader, progress func(float64)) (linear.System, error) {
+	switch {
+	case strings.HasPrefix(source, samples.Prefix):
+		s, err := samples.Build(source)
+		if err != nil {
+			err = &UsageError{err.Error()}
+		}
+		return s, err
+	case source == "-":
+		return load.Read(ctx, "stdin", stdin, -1, progress)
+	}
+	return load.File(ctx, source, progress)
+}
+
+// complete gives the system its right-hand side and guess, as the options ask.
+func complete(s *linear.System, opt Options) error {
+	n := s.N()
+	if err := setRHS(s, opt.RHS, n); err != nil {
+		return err
+	}
+	if linear.NormInf(s.B) != linear.NormInf(s.B) || math.IsInf(linear.NormInf(s.B), 0) {
+		return fmt.Errorf("the right-hand side holds a number that is not finite")
+	}
+	if opt.Guess == "" {
+		return nil
+	}
+	x, notes, err := load.VectorFile(opt.Guess, n)
+	if err != nil {
+		return err
+	}
+	s.Guess = x
+	s.Source.Notes = append(s.Source.Notes, notes...)
+	return nil
+}
+
+func setRHS(s *linear.System, rhs string, n int) error {
+	row, isUnit := strings.CutPrefix(rhs, "unit:")
+	switch {
+	case rhs == "" && s.Source.RHS != nil:
+		s.B, s.RHS = s.Source.RHS, linear.Embedded
+	case rhs == "":
+		setOnes(s, n)
+		if onesUnreachable(s) {
+			setMade(s, n)
+		}
+	case rhs == string(linear.Ones):
+		setOnes(s, n)
+	case rhs == string(linear.Made):
+		setMade(s, n)
+	case isUnit:
+		i, err := strconv.Atoi(row)
+		if err != nil || i < 1 || i > n {
+			return badOption("--rhs unit:ROW needs a row from 1 to %d, not %q", n, row)
+		}
+		s.B, s.RHS = make([]float64, n), linear.Unit
+		s.B[i-1] = 1
+	default:
+		b, notes, err := load.VectorFile(rhs, n)
+		if err != nil {
+			return err
+		}
+		s.B, s.RHS = b, linear.FromFile
+		s.Source.Notes = append(s.Source.Notes, notes...)
+	}
+	return nil
+}
+
+func setOnes(s *linear.System, n int) {
+	s.B, s.RHS = make([]float64, n), linear.Ones
+	for i := range s.B {
+		s.B[i] = 1
+	}
+}
+
+// setMade makes b = A x for x uniform in [−1, 1], so that the true error is
+// known.
+func setMade(s *linear.System, n int) {
+	s.Exact, s.B, s.RHS = make([]float64, n), make([]float64, n), linear.Made
+	linear.Uniform(s.Exact, madeStart)
+	s.A.Apply(s.B, s.Exact)
+}
+
+// onesUnreachable says whether b = ones has a part outside A's range that the
+// visible null vectors show.
+func onesUnreachable(s *linear.System) bool {
+	m := s.Matrix()
+	if m == nil {
+		return false
+	}
+	at := m
+	if !m.ExactlySymmetric() {
+		at = m.Transpose()
+	}
+	null := linear.LeftNull(m, at, linear.FindComponents(m), s.Delta())
+	if len(null.Size) == 0 {
+		return false
+	}
+	p := make([]float64, len(s.B))
+	null.Project(p, s.B)
+	linear.Lin(p, 1, s.B, -1, p)
+	return linear.Norm2(p) > 1e-12*linear.Norm2(s.B)
+}
+
+// shown is the name of a source on screens and in reports: never a path,
+// unless asked for.
+func shown(source string, s linear.System, identify bool) string {
+	if identify && !strings.HasPrefix(source, samples.Prefix) && source != "-" {
+		if abs, err := filepath.Abs(source); err == nil {
+			return abs
+		}
+	}
+	return s.Name
+}
