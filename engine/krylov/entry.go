@@ -20,11 +20,11 @@ type Problem struct {
 type Solver interface {
 	// Begin allocates everything and measures the first residual.
 	Begin(Problem) (trace.Reading, error)
-	// Step makes one iteration and allocates nothing, unless an event names
-	// rows. It must not be called after a reading with Done. A step that
-	// finds it cannot be made leaves the iterate as it was and says so with
-	// Done; Residual is always that of the iterate which Solution gives.
-	// The slice Reading.Events is overwritten by the next call.
+	// Step makes one iteration and allocates nothing. It must not be called
+	// after a reading with Done. A step that finds it cannot be made leaves
+	// the iterate as it was and says so with Done; Residual is always that of
+	// the iterate which Solution gives. Reading.Events is overwritten by the
+	// next call.
 	Step() (trace.Reading, error)
 	// Solution writes the current iterate to dst (length n) and changes
 	// nothing. In the middle of a cycle a restarted method applies M⁻¹ once.

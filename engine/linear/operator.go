@@ -83,3 +83,16 @@ func (f Func) Apply(dst, x []float64) { f.Do(dst, x) }
 
 // Dims returns the order twice.
 func (f Func) Dims() (rows, cols int) { return f.N, f.N }
+
+// Identity is the operator that changes nothing: "no preconditioner". Solvers
+// recognise it and skip the copy.
+type Identity struct{}
+
+// Apply computes dst = x.
+func (Identity) Apply(dst, x []float64) { copy(dst, x) }
+
+// ApplyDot computes dst = x and returns xᵀ x.
+func (Identity) ApplyDot(dst, x []float64) float64 {
+	copy(dst, x)
+	return Dot(x, x)
+}

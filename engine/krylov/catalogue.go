@@ -1,0 +1,20 @@
+package krylov
+
+// Catalogue lists the solvers. Each entry stands in its solver's file.
+var Catalogue = []Entry{
+	sdEntry,
+	cgEntry,
+	minresEntry,
+	bicgstabEntry,
+	gmresEntry,
+}
+
+// Lookup returns the solver of that name.
+func Lookup(name string) (Entry, bool) {
+	for _, e := range Catalogue {
+		if e.Name == name {
+			return e, true
+		}
+	}
+	return Entry{}, false
+}
