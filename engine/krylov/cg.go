@@ -1,8 +1,6 @@
 package krylov
 
 import (
-	"math"
-
 	"dwindle/engine/linear"
 	"dwindle/engine/trace"
 )

@@ -4,6 +4,7 @@ package precond
 
 import (
 	"context"
+	"fmt"
 
 	"dwindle/engine/linear"
 	"dwindle/engine/trace"
@@ -33,4 +34,9 @@ type Breakdown struct {
 	Row    int     // from 0
 	Pivot  float64 // its value
 	Why    string  // such as "zero pivot" or "missing diagonal entry"
+}
+
+// Error names the method, the row counted from 1 as files do, and the cause.
+func (b *Breakdown) Error() string {
+	return fmt.Sprintf("%s breaks down in row %d: %s (%.6g)", b.Method, b.Row+1, b.Why, b.Pivot)
 }

@@ -1,0 +1,57 @@
+package precond
+
+import (
+	"context"
+	"fmt"
+
+	"dwindle/engine/linear"
+)
+
+// lookEvery is how many rows are built between two looks at the context.
+const lookEvery = 4096
+
+// look stops a build that was cancelled and reports the share done at row i
+// of n, every lookEvery rows.
+func look(ctx context.Context, progress func(float64), i, n int) error {
+	if i%lookEvery != 0 {
+		return nil
+	}
+	if progress != nil {
+		progress(float64(i) / float64(n))
+	}
+	return ctx.Err()
+}
+
+// entriesOf returns the stored matrix of a system, which the method needs.
+func entriesOf(s linear.System, method string) (*linear.CSR, error) {
+	a := s.Matrix()
+	if a == nil {
+		return nil, fmt.Errorf("%s needs the matrix entries; this operator only gives products", method)
+	}
+	return a, nil
+}
+
+// halves counts the entries strictly below and above the diagonal.
+func halves(a *linear.CSR) (lower, upper int) {
+	for i := 0; i < a.NRows; i++ {
+		cols, _ := a.Row(i)
+		for _, c := range cols {
+			if int(c) < i {
+				lower++
+			} else if int(c) > i {
+				upper++
+			}
+		}
+	}
+	return lower, upper
+}
+
+// triangle returns an empty triangular factor with room for entries; rows are
+// appended in order.
+func triangle(n, entries int) *linear.CSR {
+	return &linear.CSR{NRows: n, NCols: n, Ptr: make([]int, n+1),
+		Col: make([]int32, 0, entries), Val: make([]float64, 0, entries)}
+}
+
+// triangleBytes returns what triangle(n, entries) takes.
+func triangleBytes(n, entries int) int64 { return int64(entries)*12 + int64(n+1)*8 }

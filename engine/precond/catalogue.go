@@ -1,0 +1,20 @@
+package precond
+
+// Catalogue lists the preconditioners. Each entry stands in its own file.
+var Catalogue = []Entry{
+	noneEntry,
+	jacobiEntry,
+	ssorEntry,
+	icEntry,
+	iluEntry,
+}
+
+// Lookup returns the preconditioner of that name.
+func Lookup(name string) (Entry, bool) {
+	for _, e := range Catalogue {
+		if e.Name == name {
+			return e, true
+		}
+	}
+	return Entry{}, false
+}
