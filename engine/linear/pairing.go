@@ -236,8 +236,16 @@ func span(text string) ([]string, error) {
 	}
 	var out []string
 	for k := 0; k <= int(count); k++ {
-		v := x[0] + float64(k)*x[2]
-		out = append(out, short(math.Round(v*1e12)/1e12))
+		out = append(out, short(tidy(x[0]+float64(k)*x[2], x[2])))
 	}
 	return out, nil
+}
+
+// tidy rounds v to twelve decimals below those of step, which takes away what
+// the sums of a range leave behind: 0.30000000000000004 becomes 0.3.
+func tidy(v, step float64) float64 {
+	decimals := 12 - int(math.Floor(math.Log10(math.Abs(step))))
+	text := strconv.FormatFloat(v, 'f', max(decimals, 0), 64)
+	v, _ = strconv.ParseFloat(text, 64)
+	return v
 }

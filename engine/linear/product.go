@@ -9,21 +9,25 @@ func (a *CSR) Apply(dst, x []float64) {
 
 func applyKernel(j *job, lo, hi, _ int) { j.m.rows(j.w, j.x, lo, hi) }
 
-// rows computes dst[lo:hi] of A x.
+// rows computes dst[lo:hi] of A x. One index runs through the entries of all
+// the rows, and four products at a time are added by halving.
 func (a *CSR) rows(dst, x []float64, lo, hi int) {
-	ptr := a.Ptr[lo : hi+1]
-	dst = dst[lo:hi]
-	start := ptr[0]
+	ptr, dst := a.Ptr[lo+1:hi+1], dst[lo:hi]
+	ptr = ptr[:len(dst)]
+	first, last := a.Ptr[lo], a.Ptr[hi]
+	cols, vals := a.Col[first:last], a.Val[first:last]
+	k := 0
 	for i := range dst {
-		end := ptr[i+1]
-		cols, vals := a.Col[start:end], a.Val[start:end]
-		vals = vals[:len(cols)]
+		end := ptr[i] - first
 		s := 0.0
-		for k, c := range cols {
-			s += vals[k] * x[uint32(c)]
+		for ; k+4 <= end && k+4 <= len(cols) && k+4 <= len(vals); k += 4 {
+			c, v := (*[4]int32)(cols[k:k+4]), (*[4]float64)(vals[k:k+4])
+			s += (v[0]*x[uint32(c[0])] + v[1]*x[uint32(c[1])]) + (v[2]*x[uint32(c[2])] + v[3]*x[uint32(c[3])])
+		}
+		for ; k < end; k++ {
+			s += vals[k] * x[uint32(cols[k])]
 		}
 		dst[i] = s
-		start = end
 	}
 }
 
