@@ -1,0 +1,40 @@
+package report
+
+import "dwindle/engine/diagnose"
+
+type findingJSON struct {
+	Rule      string         `json:"rule"`
+	Weight    string         `json:"weight"`
+	Certainty string         `json:"certainty"`
+	Subject   string         `json:"subject"`
+	Claim     string         `json:"claim"`
+	Advice    string         `json:"advice"`
+	Try       []string       `json:"try"`
+	Evidence  []evidenceJSON `json:"evidence"`
+}
+
+type evidenceJSON struct {
+	Quantity  string `json:"quantity"`
+	Value     number `json:"value"`
+	Unit      string `json:"unit"`
+	Iteration *int   `json:"iteration"`
+	Rows      []int  `json:"rows"`
+}
+
+func toFindings(fs []diagnose.Finding) []findingJSON {
+	out := make([]findingJSON, 0, len(fs))
+	for _, f := range fs {
+		j := findingJSON{Rule: tame(f.Rule), Weight: string(f.Weight), Certainty: string(f.Certainty),
+			Subject: tame(f.Subject), Claim: tame(f.Claim), Advice: tame(f.Advice), Try: tameAll(f.Try),
+			Evidence: []evidenceJSON{}}
+		for _, e := range f.Evidence {
+			k := evidenceJSON{tame(e.Quantity), number(e.Value), tame(e.Unit), nil, fromOne(e.Rows)}
+			if e.Iteration >= 0 {
+				k.Iteration = &e.Iteration
+			}
+			j.Evidence = append(j.Evidence, k)
+		}
+		out = append(out, j)
+	}
+	return out
+}

@@ -1,0 +1,178 @@
+package report
+
+import (
+	"fmt"
+	"io"
+	"strings"
+
+	"dwindle/engine/diagnose"
+	"dwindle/engine/trace"
+)
+
+// Text writes the report that is read and pasted: ASCII, at most Width
+// columns, Head first, then the chart, the trials, the findings in full, and
+// what the choice rests on.
+func Text(w io.Writer, d Document) error {
+	lines := Head(d)
+	lines = appendPart(lines, Chart(d))
+	lines = appendPart(lines, trialLines(d))
+	lines = appendPart(lines, findingLines(d.Findings))
+	lines = appendPart(lines, choiceLines(d))
+	lines = appendPart(lines, settingLines(d))
+	return writeLines(w, lines)
+}
+
+// appendPart adds a part behind an empty line, if it has any line.
+func appendPart(lines, part []string) []string {
+	if len(part) == 0 {
+		return lines
+	}
+	return append(append(lines, ""), part...)
+}
+
+func writeLines(w io.Writer, lines []string) error {
+	_, err := io.WriteString(w, strings.Join(trimmed(lines), "\n")+"\n")
+	return err
+}
+
+// trimmed takes the blanks off the ends of lines.
+func trimmed(lines []string) []string {
+	for i := range lines {
+		lines[i] = strings.TrimRight(lines[i], " ")
+	}
+	return lines
+}
+
+// trialLines is the table of trials: each has a line with its digit and
+// pairing, one with its state and numbers, and its reason where it ended
+// otherwise than converged.
+func trialLines(d Document) []string {
+	if len(d.Trials) == 0 {
+		return []string{"no trial has been run"}
+	}
+	const row = "%-24s%8s%9s%10s%9s%9s%9s"
+	lines := []string{fmt.Sprintf(row, "trial", "its", "products", "true res", "cond >=", "set-up", "own")}
+	for i, t := range d.Trials {
+		name := fmt.Sprintf("%c %s", digit(i), orDash(plain(t.Pairing)))
+		if t.Today {
+			name += "  (today)"
+		}
+		lines = append(lines, clip(name, Width))
+		n := numbers(t)
+		state := fmt.Sprintf("  %c %s", t.Stop.Mark(), t.Stop)
+		lines = append(lines, clip(fmt.Sprintf(row, state, n[0], n[1], n[2], n[3], n[4], n[5]), Width))
+		if t.Stop != trace.Converged && t.Reason != "" {
+			lines = append(lines, hang("    ", plain(t.Reason), Width)...)
+		}
+	}
+	return lines
+}
+
+// numbers are a trial's iterations, products, true residual, condition,
+// set-up time and own time; "-" for all where it never began.
+func numbers(t trace.History) [6]string {
+	if len(t.Records) == 0 {
+		return [6]string{"-", "-", "-", "-", "-", "-"}
+	}
+	condition := "-"
+	if t.Condition.Of != "" && !t.Condition.Negative {
+		condition = sci(t.Condition.Estimate)
+	}
+	return [6]string{fmt.Sprint(t.Iterations), fmt.Sprint(t.Products), sci(t.TrueResidual), condition,
+		seconds(t.SetupTime.Seconds()), seconds(t.OwnTime.Seconds())}
+}
+
+// findingLines tells every finding in full.
+func findingLines(fs []diagnose.Finding) []string {
+	if len(fs) == 0 {
+		return nil
+	}
+	lines := []string{"findings"}
+	for _, f := range leading(fs) {
+		lines = append(lines, hang("- ", string(f.Weight)+" "+findingText(f), Width)...)
+		for _, e := range f.Evidence {
+			lines = append(lines, hang("    ", evidenceText(e), Width)...)
+		}
+		if f.Advice != "" {
+			lines = append(lines, hang("  advice: ", plain(f.Advice), Width)...)
+		}
+		if len(f.Try) > 0 {
+			lines = append(lines, hang("  try: ", plain(strings.Join(f.Try, " or ")), Width)...)
+		}
+	}
+	return lines
+}
+
+func evidenceText(e diagnose.Evidence) string {
+	s := e.Quantity + " = -"
+	if finite(e.Value) {
+		s = fmt.Sprintf("%s = %.6g", e.Quantity, e.Value)
+	}
+	if e.Unit != "" {
+		s += " " + e.Unit
+	}
+	if e.Iteration >= 0 {
+		s += fmt.Sprintf(", iteration %d", e.Iteration)
+	}
+	return plain(s + rowText(e.Rows))
+}
+
+// rowText lists rows, counted from 1; many are cut short.
+func rowText(rows []int) string {
+	const most = 8
+	if len(rows) == 0 {
+		return ""
+	}
+	s := ", row"
+	if len(rows) > 1 {
+		s += "s"
+	}
+	for i, r := range rows {
+		if i == most {
+			return s + fmt.Sprintf(" and %d more", len(rows)-most)
+		}
+		s += fmt.Sprintf(" %d", r+1)
+	}
+	return s
+}
+
+// choiceLines gives the ranking with what it rests on.
+func choiceLines(d Document) []string {
+	var lines []string
+	for i, r := range d.Choice.Ranked {
+		what := "did not reach the tolerance"
+		if r.Reached {
+			what = strings.Join(rankedWords(r), ", ")
+		}
+		lines = append(lines, hang(fmt.Sprintf("%2d ", i+1), plain(r.Pairing)+": "+what, Width)...)
+	}
+	if len(lines) > 0 {
+		lines = append([]string{"ranking, by own time to the tolerance"}, lines...)
+	}
+	for _, r := range d.Choice.Reasons {
+		lines = append(lines, hang("because: ", plain(r), Width)...)
+	}
+	for _, r := range d.Choice.Doubts {
+		lines = append(lines, hang("doubt: ", plain(r), Width)...)
+	}
+	return lines
+}
+
+// settingLines tells under what conditions the numbers were measured.
+func settingLines(d Document) []string {
+	s, m := d.Settings, d.Machine
+	limits := "iterations at the default"
+	if s.Iterations > 0 {
+		limits = fmt.Sprintf("at most %d iterations", s.Iterations)
+	}
+	if s.Seconds > 0 {
+		limits += ", " + seconds(s.Seconds)
+	}
+	text := fmt.Sprintf("tol %s, rule %s, %s; %s; %s", exact(s.Tol), orDash(s.StopRule), limits,
+		orDash(m.CPU), plural(m.Threads, "thread", "threads"))
+	if m.MemoryLimit > 0 {
+		text += ", memory limit " + memory(m.MemoryLimit)
+	}
+	lines := hang("measured with ", plain(text), Width)
+	return append(lines, hang("repeat with ", plain(d.Command), Width)...)
+}

@@ -1,0 +1,150 @@
+package report
+
+import (
+	"bytes"
+	"errors"
+	"flag"
+	"io"
+	"math/rand/v2"
+	"os"
+	"strings"
+	"testing"
+)
+
+var update = flag.Bool("update", false, "write the golden files anew")
+
+// TestPlainText: whatever a document holds, text is printable ASCII of at
+// most 78 columns, the head of at most 12 lines.
+func TestPlainText(t *testing.T) {
+	r := rand.New(rand.NewPCG(1, 2))
+	docs := []Document{{}, typical()}
+	for range 400 {
+		docs = append(docs, wild(r))
+	}
+	for i, d := range docs {
+		if head := Head(d); len(head) > HeadLines || len(head) < 7 {
+			t.Fatalf("document %d: head of %d lines", i, len(head))
+		}
+		for name, write := range map[string]func(io.Writer, Document) error{"text": Text, "facts": Facts} {
+			var b bytes.Buffer
+			if err := write(&b, d); err != nil {
+				t.Fatal(err)
+			}
+			checkPlain(t, i, name, b.String(), Width)
+		}
+		var b bytes.Buffer
+		if err := Markdown(&b, d); err != nil {
+			t.Fatal(err)
+		}
+		checkPlain(t, i, "md", b.String(), 1<<20)
+	}
+}
+
+func checkPlain(t *testing.T, i int, name, text string, width int) {
+	t.Helper()
+	if !strings.HasSuffix(text, "\n") {
+		t.Fatalf("document %d, %s: no end of line", i, name)
+	}
+	for _, l := range strings.Split(strings.TrimSuffix(text, "\n"), "\n") {
+		if len(l) > width {
+			t.Fatalf("document %d, %s: %d columns: %q", i, name, len(l), l)
+		}
+		if strings.HasSuffix(l, " ") {
+			t.Fatalf("document %d, %s: trailing blank: %q", i, name, l)
+		}
+		for _, c := range []byte(l) {
+			if c < ' ' || c > '~' {
+				t.Fatalf("document %d, %s: byte %#x: %q", i, name, c, l)
+			}
+		}
+	}
+}
+
+// TestGolden shows whole reports for people to read.
+func TestGolden(t *testing.T) {
+	for name, write := range map[string]func(io.Writer, Document) error{
+		"text.golden": Text, "facts.golden": Facts, "md.golden": Markdown, "json.golden": JSON} {
+		var b bytes.Buffer
+		if err := write(&b, typical()); err != nil {
+			t.Fatal(err)
+		}
+		path := "testdata/" + name
+		if *update {
+			if err := os.WriteFile(path, b.Bytes(), 0o644); err != nil {
+				t.Fatal(err)
+			}
+		}
+		want, err := os.ReadFile(path)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if b.String() != string(want) {
+			t.Errorf("%s differs (go test ./engine/report -update writes it anew):\n%s", name, b.String())
+		}
+	}
+}
+
+// TestHeadTells: the head alone answers what was run, why, what to use.
+func TestHeadTells(t *testing.T) {
+	d := typical()
+	head := strings.Join(Head(d), "\n")
+	for _, want := range []string{"SYSTEM      sluice.mtx: 400 unknowns", "b = ones, not yours", "TODAY       cg+none: converged after 60 iterations, 60 ms, true",
+		"WHY         [measured] gmres:30+none: restarting", "USE         cg+ic:0, 20 iterations in 30 ms (set-up 2 ms), 39.1 KiB, 2.0 times", "DOUBT       counts on",
+		"REPEAT      dwindle run sluice.mtx --today cg+none (dwindle 0.1, seed 1)", "FINGERPRINT 9f86"} {
+		if !strings.Contains(head, want) {
+			t.Errorf("no %q in\n%s", want, head)
+		}
+	}
+	d.Trials[0].Today, d.Choice.Pairing, d.Choice.Reasons = false, "", nil
+	head = strings.Join(Head(d), "\n")
+	for _, want := range []string{"TODAY       not given", "USE         nothing yet: no pairing"} {
+		if !strings.Contains(head, want) {
+			t.Errorf("no %q in\n%s", want, head)
+		}
+	}
+}
+
+func TestWrap(t *testing.T) {
+	for _, c := range []struct {
+		s    string
+		w, n int
+		want string
+	}{
+		{"", 5, 1, ""},
+		{"ab cd ef", 5, 9, "ab cd|ef"},
+		{"abcdefgh", 5, 9, "abcde|fgh"},
+		{"ab cd ef gh", 5, 1, "a ..."},
+		{"abcdefghij kl", 6, 2, "abcdef|gh ..."},
+	} {
+		if got := strings.Join(wrapTo(c.s, c.w, c.n), "|"); got != c.want {
+			t.Errorf("wrapTo(%q, %d, %d) = %q, want %q", c.s, c.w, c.n, got, c.want)
+		}
+	}
+}
+
+// full takes a few bytes and then fails, like a full disk.
+type full struct{ room int }
+
+var errFull = errors.New("no space left")
+
+func (f *full) Write(p []byte) (int, error) {
+	if len(p) > f.room {
+		n := f.room
+		f.room = 0
+		return n, errFull
+	}
+	f.room -= len(p)
+	return len(p), nil
+}
+
+// TestWriteErrors: no writer hides that it could not write.
+func TestWriteErrors(t *testing.T) {
+	for name, write := range map[string]func(io.Writer, Document) error{
+		"text": Text, "facts": Facts, "md": Markdown, "json": JSON, "csv": CSV, "solution": Solution} {
+		for _, room := range []int{0, 20} {
+			if err := write(&full{room}, typical()); !errors.Is(err, errFull) {
+				t.Errorf("%s into %d bytes: %v", name, room, err)
+			}
+		}
+	}
+}
