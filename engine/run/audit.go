@@ -27,7 +27,7 @@ func (s *schedule) due(iter int, own, tol float64) bool {
 	for iter >= s.next {
 		due = true
 		s.power *= 1.2
-		s.next = max(s.next+1, int(math.Ceil(s.power)))
+		s.next = int(math.Ceil(s.power))
 	}
 	if own <= tol && (s.metAt < 0 || own <= s.metValue/2 || float64(iter) >= 1.05*float64(s.metAt)) {
 		s.metAt, s.metValue = iter, own

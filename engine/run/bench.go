@@ -160,7 +160,7 @@ func (b *Bench) Run(ctx context.Context) {
 		q := quantum(live)
 		for _, t := range live {
 			if !b.enter() {
-				break
+				return
 			}
 			t.budget += q
 			t.advance(ctx)
@@ -212,14 +212,16 @@ func quantum(live []*Trial) time.Duration {
 	return min(q, maxQuantum)
 }
 
+// enter waits for a pause to end, so that a round goes on where it was left;
+// false when the bench is stopped.
 func (b *Bench) enter() bool {
 	b.mu.Lock()
 	defer b.mu.Unlock()
-	if b.paused || b.stopped {
-		return false
+	for b.paused && !b.stopped {
+		b.wake.Wait()
 	}
-	b.moving = true
-	return true
+	b.moving = !b.stopped
+	return b.moving
 }
 
 func (b *Bench) leave() {
