@@ -1,0 +1,337 @@
+package direct
+
+import (
+	"context"
+	"math"
+	"math/big"
+	"math/rand/v2"
+	"testing"
+	"time"
+
+	"gonum.org/v1/gonum/mat"
+
+	"dwindle/engine/linear"
+)
+
+func verify(t *testing.T, a *linear.CSR, delta float64) Definiteness {
+	t.Helper()
+	r, err := VerifiedDefinite(context.Background(), a, delta)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return r
+}
+
+// symmetricOf builds a sparse matrix from the dense lower triangle f.
+func symmetricOf(n int, f func(i, j int) float64) *linear.CSR {
+	var e []linear.Entry
+	for i := range n {
+		for j := range i + 1 {
+			if v := f(i, j); v != 0 || i == j {
+				e = append(e, linear.Entry{I: i, J: j, V: v})
+				if i != j {
+					e = append(e, linear.Entry{I: j, J: i, V: v})
+				}
+			}
+		}
+	}
+	return linear.FromEntries(n, n, e)
+}
+
+// grid is the 5-point operator of Dirichlet type on k x k points.
+func grid(k int) *linear.CSR {
+	var e []linear.Entry
+	for i := range k * k {
+		e = append(e, linear.Entry{I: i, J: i, V: 4})
+		if i%k > 0 {
+			e = append(e, linear.Entry{I: i, J: i - 1, V: -1}, linear.Entry{I: i - 1, J: i, V: -1})
+		}
+		if i >= k {
+			e = append(e, linear.Entry{I: i, J: i - k, V: -1}, linear.Entry{I: i - k, J: i, V: -1})
+		}
+	}
+	return linear.FromEntries(k*k, k*k, e)
+}
+
+func TestGridIsDefinite(t *testing.T) {
+	for _, k := range []int{1, 2, 3, 5, 20, 45} {
+		if r := verify(t, grid(k), 0); !r.Definite || !r.WithinDelta || r.Negative || r.Row != -1 {
+			t.Errorf("grid %d: %+v", k, r)
+		}
+	}
+}
+
+// One spring of stiffness -2.3 between neighbours of a 20 x 20 grid keeps every
+// diagonal entry and every 2 x 2 minor positive; the smallest eigenvalue is
+// then -0.384 (dense eigenvalues, gonum, below).
+func TestHiddenNegativeSpring(t *testing.T) {
+	a := grid(20)
+	i, j := 210, 211
+	for _, e := range []struct {
+		i, j int
+		v    float64
+	}{{i, i, -2.3}, {j, j, -2.3}, {i, j, 2.3}, {j, i, 2.3}} {
+		cols, vals := a.Row(e.i)
+		for k, c := range cols {
+			if int(c) == e.j {
+				vals[k] += e.v
+			}
+		}
+	}
+	r := verify(t, a, 0)
+	if !r.Negative || r.Definite {
+		t.Fatalf("%+v", r)
+	}
+	low := eigenvalues(a)[0]
+	if r.Rayleigh < low*(1+1e-10) || r.Rayleigh > 0.8*low {
+		t.Errorf("Rayleigh quotient %g, smallest eigenvalue %g", r.Rayleigh, low)
+	}
+	if math.Abs(low+0.384) > 5e-4 {
+		t.Errorf("smallest eigenvalue %g", low)
+	}
+	if len(r.Rows) < 2 || r.Rows[0]+r.Rows[1] != i+j || r.Rows[0] != i && r.Rows[0] != j {
+		t.Errorf("rows %v", r.Rows)
+	}
+}
+
+func eigenvalues(a *linear.CSR) []float64 {
+	n := a.NRows
+	s := mat.NewSymDense(n, nil)
+	for i := range n {
+		cols, vals := a.Row(i)
+		for k, j := range cols {
+			s.SetSym(i, int(j), vals[k])
+		}
+	}
+	var e mat.EigenSym
+	if !e.Factorize(s, false) {
+		panic("eigenvalues did not converge")
+	}
+	return e.Values(nil)
+}
+
+// exactlyDefinite decides by an LDLᵀ in rational numbers, exact for every
+// double. Small n only.
+func exactlyDefinite(a *linear.CSR) bool {
+	n := a.NRows
+	m := make([][]*big.Rat, n)
+	for i := range n {
+		m[i] = make([]*big.Rat, n)
+		for j := range n {
+			m[i][j] = new(big.Rat).SetFloat64(a.At(i, j))
+		}
+	}
+	for k := range n {
+		if m[k][k].Sign() <= 0 {
+			return false
+		}
+		for i := k + 1; i < n; i++ {
+			f := new(big.Rat).Quo(m[i][k], m[k][k])
+			for j := k; j < n; j++ {
+				m[i][j].Sub(m[i][j], new(big.Rat).Mul(f, m[k][j]))
+			}
+		}
+	}
+	return true
+}
+
+// Matrices B·Bᵀ with integer B of deficient rank are exactly singular; moved by
+// a few units of the last place they lie on either side. No verdict may
+// contradict exact rational arithmetic.
+func TestNeverWrongNearSingular(t *testing.T) {
+	rng := rand.New(rand.NewPCG(1, 2))
+	var yes, no, left int
+	for trial := range 400 {
+		n := 2 + rng.IntN(9)
+		a := nearSingular(rng, n, trial%4)
+		r := verify(t, a, 0)
+		exact := exactlyDefinite(a)
+		switch {
+		case r.Definite && !exact:
+			t.Fatalf("trial %d: called definite: %+v", trial, a)
+		case r.Negative && exact:
+			t.Fatalf("trial %d: called indefinite: %+v", trial, a)
+		case r.Definite:
+			yes++
+		case r.Negative:
+			no++
+		default:
+			left++
+		}
+	}
+	if yes < 40 || no < 40 || left < 40 {
+		t.Errorf("the cases are one-sided: %d definite, %d indefinite, %d open", yes, no, left)
+	}
+}
+
+// nearSingular returns B·Bᵀ with integer B of rank n−1, moved by 0, a few ulps,
+// or 1e-13 to 1e-9, in badly scaled units.
+func nearSingular(rng *rand.Rand, n, how int) *linear.CSR {
+	b := make([][]float64, n)
+	for i := range b {
+		b[i] = make([]float64, n-1)
+		for j := range b[i] {
+			b[i][j] = float64(rng.IntN(19) - 9)
+		}
+		b[i][rng.IntN(n-1)] += 10
+	}
+	move := []float64{0, 4e-16, 1e-13, 1e-9}[how] * rng.Float64()
+	if rng.IntN(2) == 0 {
+		move = -move
+	}
+	unit := make([]int, n)
+	for i := range unit {
+		unit[i] = rng.IntN(60) - 30
+	}
+	return symmetricOf(n, func(i, j int) float64 {
+		v := 0.0
+		for k := range b[i] {
+			v += b[i][k] * b[j][k]
+		}
+		if i == j {
+			v *= 1 + move
+		}
+		return math.Ldexp(v, unit[i]+unit[j])
+	})
+}
+
+// Larger random symmetric matrices shifted to a known distance from
+// singularity: where dense eigenvalues are clear of their own error, the
+// verdict must agree, and must not be missing.
+func TestAgreesWithEigenvalues(t *testing.T) {
+	rng := rand.New(rand.NewPCG(3, 4))
+	for range 30 {
+		n := 20 + rng.IntN(60)
+		g := symmetricOf(n, func(i, j int) float64 {
+			if i == j || rng.IntN(6) == 0 {
+				return rng.NormFloat64()
+			}
+			return 0
+		})
+		shift := -eigenvalues(g)[0] + math.Pow(10, -1-8*rng.Float64())*float64(1-2*rng.IntN(2))
+		a := symmetricOf(n, func(i, j int) float64 {
+			if i == j {
+				return g.At(i, i) + shift
+			}
+			return g.At(i, j)
+		})
+		low := eigenvalues(a)[0]
+		if r := verify(t, a, 0); r.Definite != (low > 0) || r.Negative != (low < 0) {
+			t.Errorf("n=%d, smallest eigenvalue %g: %+v", n, low, r)
+		}
+	}
+}
+
+// An eigenvalue smaller than delta·‖|A|‖ leaves the digits in doubt; a larger
+// one does not.
+func TestDelta(t *testing.T) {
+	near := symmetricOf(2, func(i, j int) float64 {
+		if i == j {
+			return 1
+		}
+		return 1 - 1e-7
+	})
+	if r := verify(t, near, 5e-6); !r.Definite || r.WithinDelta {
+		t.Errorf("eigenvalue 1e-7 against digits 5e-6: %+v", r)
+	}
+	if r := verify(t, near, 5e-9); !r.Definite || !r.WithinDelta {
+		t.Errorf("eigenvalue 1e-7 against digits 5e-9: %+v", r)
+	}
+	past := symmetricOf(2, func(i, j int) float64 {
+		if i == j {
+			return 1
+		}
+		return 1 + 1e-7
+	})
+	if r := verify(t, past, 5e-6); !r.Negative || r.WithinDelta {
+		t.Errorf("eigenvalue -1e-7 against digits 5e-6: %+v", r)
+	}
+	if r := verify(t, past, 5e-9); !r.Negative || !r.WithinDelta {
+		t.Errorf("eigenvalue -1e-7 against digits 5e-9: %+v", r)
+	}
+}
+
+func TestWrongDiagonal(t *testing.T) {
+	a := linear.FromEntries(2, 2, []linear.Entry{{I: 0, J: 0, V: 1}, {I: 1, J: 1, V: -1e-9}})
+	if r := verify(t, a, 0.1); !r.Negative || !r.WithinDelta || r.Row != 1 || r.Rayleigh != -1e-9 {
+		t.Errorf("%+v", r)
+	}
+	a.Val[1] = 0
+	if r := verify(t, a, 0); r.Negative || r.Definite {
+		t.Errorf("zero diagonal: %+v", r)
+	}
+}
+
+func TestExtremeUnits(t *testing.T) {
+	a := symmetricOf(3, func(i, j int) float64 {
+		u := []float64{1e-140, 1, 1e140}
+		if i == j {
+			return 2 * u[i] * u[j]
+		}
+		return u[i] * u[j]
+	})
+	if r := verify(t, a, 0); !r.Definite {
+		t.Errorf("%+v", r)
+	}
+}
+
+func TestTooLargeAndCancelled(t *testing.T) {
+	if _, err := VerifiedDefinite(context.Background(), grid(500), 0); err != ErrTooLarge {
+		t.Errorf("err = %v", err)
+	}
+	ctx, cancel := context.WithCancel(context.Background())
+	cancel()
+	if _, err := VerifiedDefinite(ctx, grid(10), 0); err == nil || err == ErrTooLarge {
+		t.Errorf("err = %v after cancellation", err)
+	}
+}
+
+func TestReverseCuthillMcKee(t *testing.T) {
+	rng := rand.New(rand.NewPCG(5, 6))
+	k := 12
+	shuffle := rng.Perm(k * k)
+	var e []linear.Entry
+	g := grid(k)
+	for i := range g.NRows {
+		cols, vals := g.Row(i)
+		for p, j := range cols {
+			e = append(e, linear.Entry{I: shuffle[i], J: shuffle[j], V: vals[p]})
+		}
+	}
+	a := linear.FromEntries(k*k, k*k, e)
+	order := ReverseCuthillMcKee(a)
+	seen := make([]bool, k*k)
+	for _, i := range order {
+		if seen[i] {
+			t.Fatal("not a permutation")
+		}
+		seen[i] = true
+	}
+	band := 0
+	for g, f := range firsts(a, order) {
+		band = max(band, tile*g+tile-f)
+	}
+	if band > 3*k {
+		t.Errorf("bandwidth %d of a shuffled %d x %d grid", band, k, k)
+	}
+}
+
+func TestDenseSpeed(t *testing.T) {
+	if testing.Short() {
+		t.Skip("long")
+	}
+	n := 2000
+	rng := rand.New(rand.NewPCG(7, 8))
+	a := symmetricOf(n, func(i, j int) float64 {
+		if i == j {
+			return float64(n)
+		}
+		return rng.Float64() - 0.5
+	})
+	begun := time.Now()
+	r := verify(t, a, 0)
+	t.Logf("dense order %d: %v, c = %g", n, time.Since(begun), r.Shift)
+	if !r.Definite {
+		t.Errorf("%+v", r)
+	}
+}

@@ -1,0 +1,113 @@
+package direct
+
+import (
+	"context"
+	"slices"
+
+	"dwindle/engine/linear"
+)
+
+// The limits of a factorisation that is made for a fact.
+const (
+	maxWork  = 3e9      // floating-point operations
+	maxBytes = 64 << 20 // of the factor
+	maxRCM   = 200_000  // rows up to which another order is tried
+)
+
+// affordable returns the cheaper of the given order and reverse Cuthill–McKee,
+// and whether it keeps to the limits.
+func affordable(ctx context.Context, a *linear.CSR) (order []int32, ok bool, err error) {
+	order = make([]int32, a.NRows)
+	for i := range order {
+		order[i] = int32(i)
+	}
+	work, bytes := cost(firsts(a, order))
+	if a.NRows <= maxRCM {
+		other := ReverseCuthillMcKee(a)
+		if w, b := cost(firsts(a, other)); w < work {
+			order, work, bytes = other, w, b
+		}
+	}
+	return order, work <= maxWork && bytes <= maxBytes, ctx.Err()
+}
+
+// ReverseCuthillMcKee returns an order of the rows of a matrix with symmetric
+// pattern that keeps its entries near the diagonal: the original row of each
+// place. Each component is numbered breadth first from a row far from its
+// middle, neighbours by degree, and the whole is reversed (Cuthill and McKee
+// 1969; George 1971).
+func ReverseCuthillMcKee(a *linear.CSR) []int32 {
+	n := a.NRows
+	w := walk{a: a, level: make([]int32, n)}
+	for i := range w.level {
+		w.level[i] = unseen
+	}
+	order := make([]int32, 0, n)
+	for i := range int32(n) {
+		if w.level[i] == unseen {
+			order = w.breadthFirst(order, w.farEnd(i), numbered)
+		}
+	}
+	slices.Reverse(order)
+	return order
+}
+
+// The levels of rows that no search has reached, and of rows in the order.
+const (
+	unseen   = -1
+	numbered = -2
+)
+
+// walk is a breadth-first search.
+type walk struct {
+	a     *linear.CSR
+	level []int32 // distance in the search under way, else unseen or numbered
+	queue []int32
+}
+
+func (w *walk) degree(i int32) int { return w.a.Ptr[i+1] - w.a.Ptr[i] }
+
+// breadthFirst appends to list what is reached from i, neighbours by degree,
+// and leaves level as the mark; a mark of 0 or more is kept as the distance.
+func (w *walk) breadthFirst(list []int32, i int32, mark int32) []int32 {
+	w.level[i] = mark
+	list = append(list, i)
+	for k := len(list) - 1; k < len(list); k++ {
+		cols, vals := w.a.Row(int(list[k]))
+		from := len(list)
+		for p, j := range cols {
+			if vals[p] != 0 && w.level[j] == unseen {
+				w.level[j] = mark
+				if mark >= 0 {
+					w.level[j] = w.level[list[k]] + 1
+				}
+				list = append(list, j)
+			}
+		}
+		slices.SortStableFunc(list[from:], func(x, y int32) int { return w.degree(x) - w.degree(y) })
+	}
+	return list
+}
+
+// farEnd returns a row whose search from i reaches far: it repeats the search
+// from a row of least degree in the last level while the depth grows.
+func (w *walk) farEnd(i int32) int32 {
+	deepest := int32(-1)
+	for {
+		w.queue = w.breadthFirst(w.queue[:0], i, 0)
+		last := w.queue[len(w.queue)-1]
+		depth, end := w.level[last], last
+		for _, j := range w.queue {
+			if w.level[j] == depth && w.degree(j) < w.degree(end) {
+				end = j
+			}
+		}
+		for _, j := range w.queue {
+			w.level[j] = unseen
+		}
+		if depth <= deepest {
+			return i
+		}
+		deepest, i = depth, end
+	}
+}
