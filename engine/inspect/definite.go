@@ -1,0 +1,125 @@
+package inspect
+
+import (
+	"errors"
+	"math"
+
+	"dwindle/engine/direct"
+	"dwindle/engine/linear"
+)
+
+// definite settles what is left open by a verified Cholesky factorisation,
+// where one is affordable, and draws the conclusions.
+func (l *look) definite() error {
+	f := &l.f
+	var err error
+	if f.Symmetric.Answer == Yes && f.DiagPositive == f.N && open(f.PositiveDefinite) {
+		err = l.verify(l.a, &f.PositiveDefinite, "")
+	}
+	if f.Symmetric.Answer == Yes && f.DiagNegative == f.N && open(f.NegativeDefinite) {
+		err = l.verify(negated(l.a), &f.NegativeDefinite, "-")
+	}
+	if err != nil {
+		return err
+	}
+	l.conclude()
+	return nil
+}
+
+// open reports whether more work can make the fact surer.
+func open(f Fact) bool {
+	return f.Answer == "" || f.Answer == Unknown || f.Answer == Yes && f.Certainty != Proved
+}
+
+func negated(a *linear.CSR) *linear.CSR {
+	b := *a
+	b.Val = make([]float64, len(a.Val))
+	for k, v := range a.Val {
+		b.Val[k] = -v
+	}
+	return &b
+}
+
+// verify tries to prove a, which is sign times A, definite or not.
+func (l *look) verify(a *linear.CSR, side *Fact, sign string) error {
+	r, err := direct.VerifiedDefinite(l.ctx, a, l.slack)
+	switch {
+	case errors.Is(err, direct.ErrTooLarge):
+		l.beyondReach(side)
+		return nil
+	case err != nil:
+		return err
+	}
+	switch {
+	case r.Definite && r.WithinDelta:
+		*side = fact(Yes, Proved, r.Shift, nil, "the Cholesky factorisation of %sA - cI completes, with c = %.2g above all rounding errors, diagonal scaled to 1..4", sign, r.Shift)
+	case r.Definite:
+		*side = l.doubt(fact(Yes, Proved, r.Shift, nil, "the Cholesky factorisation of %sA - cI completes, with c = %.2g above all rounding errors, diagonal scaled to 1..4", sign, r.Shift), "yours may not be definite")
+	case r.Negative:
+		l.negativeFound(r, side, sign)
+	case side.Answer == "" || side.Answer == Unknown:
+		*side = unknown("the Cholesky factorisation of %sA breaks at %s, but no vector shows a negative curvature beyond rounding", sign, rowWord(r.Row))
+		side.Rows = []int{r.Row}
+	}
+	return nil
+}
+
+// negativeFound states that a vector of negative curvature was found.
+func (l *look) negativeFound(r direct.Definiteness, side *Fact, sign string) {
+	no := fact(No, Proved, r.Rayleigh, r.Rows, "a vector x with x'(%sA)x/x'x = %.3g, beyond its rounding bound, carried by %s", sign, r.Rayleigh, rowWord(r.Rows[:min(2, len(r.Rows))]...))
+	if !r.WithinDelta {
+		no = l.doubt(no, "yours may not be indefinite")
+	}
+	*side = no
+	if sign == "" {
+		l.f.Semidefinite = no
+	}
+}
+
+// beyondReach settles a system that is too large to factorise: dominance to
+// rounding is the only measure left.
+func (l *look) beyondReach(side *Fact) {
+	switch {
+	case side.Answer == Yes:
+	case l.chained(near, clear):
+		*side = fact(Yes, Measured, math.NaN(), nil, "diagonally dominant to rounding, clearly so in at least one row of each component")
+	default:
+		*side = unknown("symmetric with a diagonal of one sign; too large to be proved here")
+	}
+}
+
+// conclude draws what the facts found imply for one another.
+func (l *look) conclude() {
+	f := &l.f
+	pd, nd := &f.PositiveDefinite, &f.NegativeDefinite
+	if pd.Answer == "" {
+		*pd = unknown("not settled")
+	}
+	if nd.Answer == "" && pd.Answer == Yes {
+		*nd = fact(No, pd.Certainty, math.NaN(), nil, "A is positive definite")
+	}
+	if nd.Answer == "" {
+		*nd = unknown("not settled")
+	}
+	switch {
+	case pd.Answer == Yes:
+		f.Semidefinite = fact(Yes, pd.Certainty, pd.Value, nil, "A is positive definite")
+		l.regular("A is positive definite", pd.Certainty)
+	case nd.Answer == Yes:
+		f.Semidefinite = fact(No, nd.Certainty, math.NaN(), nil, "-A is positive definite")
+		l.regular("-A is positive definite", nd.Certainty)
+	case f.Semidefinite.Answer == "":
+		f.Semidefinite = unknown("not settled")
+	}
+}
+
+// regular notes that a definite matrix has no null vector.
+func (l *look) regular(why string, sure Certainty) {
+	f := &l.f
+	if f.Singular.Answer == Unknown || f.Singular.Answer == No && f.Singular.Certainty != Proved {
+		f.Singular = fact(No, sure, 0, nil, "%s", why)
+	}
+	if f.Unreachable.Answer == Unknown && f.Singular.Answer == No && len(l.s.B) == f.N {
+		f.Unreachable = fact(No, f.Singular.Certainty, 0, nil, "A is regular: %s", f.Singular.Why)
+	}
+}
