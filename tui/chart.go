@@ -1,0 +1,214 @@
+package tui
+
+import (
+	"math"
+	"strconv"
+	"strings"
+
+	"dwindle/engine/trace"
+)
+
+// margin is the width left of the plot: a label, a blank and the frame.
+const margin = 7
+
+// plot is everything a chart shows.
+type plot struct {
+	curves []drawn // in the order of their numbers
+	x      span
+	y      decades // rows are set when drawn
+	tol    float64
+	floor  float64 // estimated accuracy floor of the picked trial; NaN if unknown
+	truth  bool    // audited true residuals instead of the methods' own
+	name   string  // what is drawn, for the corner
+	signs  glyphs
+	on     brush
+}
+
+// drawn is one trial on the chart.
+type drawn struct {
+	id     int
+	h      *trace.History
+	picked bool
+}
+
+// mark is the state at the curve's head: nothing while it goes on.
+func (d drawn) mark() string {
+	if !d.h.Stop.Ended() {
+		return ""
+	}
+	return string(d.h.Stop.Mark())
+}
+
+// draw returns the chart as h lines of at most w cells: h-2 rows of plot, the
+// axis and its labels.
+func (p plot) draw(w, h int) []string {
+	c := newCanvas(w-margin, h-2)
+	p.y.rows = c.h
+	p.rules(c)
+	p.trials(c)
+	f := frames[p.signs]
+	labels := p.y.labels(p.tol)
+	lines := make([]string, 0, h)
+	for y := range c.h {
+		lines = append(lines, left(labels[y], margin-2)+" "+string(f.side)+c.line(y, p.on))
+	}
+	return append(lines, p.base(c.w)...)
+}
+
+// rules draws the target and the floor of the picked trial.
+func (p plot) rules(c *canvas) {
+	f := frames[p.signs]
+	if y, ok := p.rowOf(p.tol, c.h); ok {
+		for x := 1; x < c.w; x += 3 {
+			c.set(x, y, f.target, faint)
+		}
+	}
+	if y, ok := p.rowOf(p.floor, c.h); ok {
+		for x := 2; x < c.w; x += 4 {
+			c.set(x, y, f.floor, care)
+		}
+		c.write(c.w-len(floorText(p.floor))-1, y, floorText(p.floor), care)
+	}
+}
+
+// floorText is the label of the floor's line.
+func floorText(v float64) string { return " floor~" + sci(v) + " " }
+
+// rowOf is the row of a value on a canvas of h rows.
+func (p plot) rowOf(v float64, h int) (int, bool) {
+	l, ok := level(v)
+	if !ok || v <= 0 {
+		return 0, false
+	}
+	return cellRow(p.y.row(l), h)
+}
+
+// trials draws the curves, the picked one last so that it lies on top, then
+// the tags: heads first.
+func (p plot) trials(c *canvas) {
+	order := p.order()
+	curves := make([]curve, len(order))
+	for k, d := range order {
+		curves[k] = p.curve(c, d)
+	}
+	t := newTags(c)
+	for k := len(order) - 1; k >= 0; k-- { // the picked head gets its place first
+		p.head(t, order[k], curves[k])
+	}
+	for k := len(order) - 1; k >= 0; k-- {
+		p.falseStop(t, order[k])
+		p.body(t, order[k], curves[k])
+	}
+}
+
+// order is the drawing order.
+func (p plot) order() []drawn {
+	var out, last []drawn
+	for _, d := range p.curves {
+		if d.picked {
+			last = append(last, d)
+		} else {
+			out = append(out, d)
+		}
+	}
+	return append(out, last...)
+}
+
+// curve draws one trial in the chosen glyphs and returns it reduced to one
+// column a cell.
+func (p plot) curve(c *canvas, d drawn) curve {
+	i := inkOf(d.id)
+	cells := reduce(d.h.Records, p.x.fix, p.truth, p.x.place, max(c.w, 1))
+	switch p.signs {
+	case dotGlyphs:
+		fine := reduce(d.h.Records, p.x.fix, p.truth, p.x.place, max(2*c.w, 1))
+		braille{c, p.y}.draw(fine, i, d.picked)
+	case lineGlyphs:
+		strokes(c, p.y, reduce(d.h.Records, p.x.fix, p.truth, p.x.place, c.w+1), i, d.picked)
+	default:
+		digits(c, p.y, cells, d.id, i, d.picked)
+	}
+	return cells
+}
+
+// head tags the last point with the trial's number and its state; "^" says
+// that it lies above the chart.
+func (p plot) head(t *tags, d drawn, c curve) {
+	if c.head < 0 && !c.lost {
+		return
+	}
+	text, x, y := strconv.Itoa(d.id)+d.mark(), max(c.head, 0), 0
+	if c.head >= 0 {
+		y = int(math.Round(math.Min(math.Max(p.y.row(c.mid[c.head]), -1), float64(t.on.h-1))))
+	}
+	if c.lost || y < 0 {
+		text, y = strconv.Itoa(d.id)+"^"+d.mark(), 0
+	}
+	t.near(x, y, text, inkOf(d.id))
+}
+
+// falseStop marks where the picked trial's own number met the target while
+// the true residual had not.
+func (p plot) falseStop(t *tags, d drawn) {
+	e, ok := falseStop(d.h)
+	if !ok || !d.picked {
+		return
+	}
+	v := e.Scale
+	if p.truth {
+		v = e.Value
+	}
+	for _, r := range d.h.Records {
+		if r.Iter >= e.Iter {
+			if y, ok := p.rowOf(v, t.on.h); ok {
+				t.near(columnOf(p.x.place(p.x.fix.of(r)), t.on.w), y, "!", bad)
+			}
+			return
+		}
+	}
+}
+
+// body tags the curve on its way.
+func (p plot) body(t *tags, d drawn, c curve) {
+	if p.signs == asciiGlyphs && d.id < 10 {
+		return
+	}
+	period := 24
+	if !p.on {
+		period = 12
+	}
+	t.along(d.id, period, inkOf(d.id), func(x int) (int, bool) {
+		if x < 0 || x >= len(c.mid) {
+			return 0, false
+		}
+		return cellRow(p.y.row(c.mid[x]), t.on.h)
+	})
+}
+
+// base draws the axis and the labels below it; the last words name what is
+// drawn, and along what.
+func (p plot) base(w int) []string {
+	f := frames[p.signs]
+	axis := []rune(strings.Repeat(string(f.base), max(w, 0)))
+	labels := newCanvas(w+margin, 1)
+	name := p.name + " by " + p.x.fix.String()
+	if p.x.log {
+		name += ", log"
+	}
+	end := w + margin - len(name)
+	labels.write(max(end, 0), 0, name, plain)
+	free := 0
+	for _, v := range p.x.ticks(w) {
+		x := columnOf(p.x.place(v), w)
+		if x < len(axis) {
+			axis[x] = f.tick
+		}
+		text := short(v)
+		at := max(margin+x-len(text)/2, 0)
+		if at >= free && at+len(text) < end {
+			labels.write(at, 0, text, plain)
+			free = at + len(text) + 1
+		}
+	}
+	return []string{blanks(margin-1) + string(f.corner) + string(axis), labels.line(0, p.on)}
+}

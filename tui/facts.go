@@ -1,0 +1,183 @@
+package tui
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"dwindle/engine/inspect"
+)
+
+// factRow is one line of the facts.
+type factRow struct{ label, answer, sure, why string }
+
+// line is the row in w cells; the picked one carries ">".
+func (r factRow) line(picked bool, w int) string {
+	mark := "  "
+	if picked {
+		mark = "> "
+	}
+	answer := 22
+	if w < 60 {
+		answer = 18
+	}
+	rest := r.why
+	if r.sure != "" {
+		rest = strings.TrimSuffix(r.sure+", "+r.why, ", ")
+	}
+	return left(mark+left(r.label, 19)+" "+left(r.answer, answer)+" "+rest, w)
+}
+
+// factRows lists everything known about the system, most asked first.
+func factRows(f *inspect.Facts, g glyphs) []factRow {
+	if f == nil {
+		return nil
+	}
+	rows := append(sizeRows(f), answerRows(f)...)
+	rows = append(rows, numberRows(f)...)
+	rows = append(rows, rhsRows(f)...)
+	for _, note := range f.Notes {
+		rows = append(rows, factRow{label: "note", why: note})
+	}
+	for i, r := range rows {
+		rows[i] = factRow{g.clean(r.label), g.clean(r.answer), g.clean(r.sure), g.clean(r.why)}
+	}
+	return rows
+}
+
+// sizeRows are the plain numbers of the system and its file.
+func sizeRows(f *inspect.Facts) []factRow {
+	rows := []factRow{{"unknowns", count(f.N), "", ""}}
+	if f.MatrixFree {
+		return append(rows, factRow{"entries", none, "", "given as products only"})
+	}
+	each := ""
+	if f.N > 0 {
+		each = fmt.Sprintf("%.1f a row, %s", float64(f.Entries)/float64(f.N), rangeText(f.RowEntries, value))
+	}
+	rows = append(rows, factRow{"entries", count(f.Entries), "", each})
+	if f.Format != "" {
+		rows = append(rows, factRow{"stored in the file", count(f.Stored), "", fmt.Sprintf("%s duplicates, %s explicit zeros; %s",
+			count(f.Duplicates), count(f.ExplicitZeros), f.Format)})
+	}
+	if f.Digits > 0 {
+		open := "every value came through exactly"
+		if f.Delta > 0 {
+			open = "each entry is known to " + sci(f.Delta) + " of itself"
+		}
+		rows = append(rows, factRow{"digits in the file", value(float64(f.Digits)), "", open})
+	}
+	return append(rows, factRow{"bandwidth", count(f.Bandwidth), "", ""})
+}
+
+// answerRows are the facts with a yes or a no.
+func answerRows(f *inspect.Facts) []factRow {
+	list := []struct {
+		label string
+		fact  inspect.Fact
+	}{
+		{"symmetric", f.Symmetric}, {"pattern symmetric", f.PatternSymmetric},
+		{"positive definite", f.PositiveDefinite}, {"negative definite", f.NegativeDefinite},
+		{"singular", f.Singular}, {"row sums zero", f.RowSumsZero}, {"column sums zero", f.ColSumsZero},
+		{"b out of reach", f.Unreachable}, {"one triangle only", f.TriangleOnly},
+	}
+	var rows []factRow
+	for _, l := range list {
+		answer := string(l.fact.Answer)
+		if answer == "" {
+			answer = none
+		}
+		sure := string(l.fact.Certainty)
+		if l.fact.Answer == inspect.Unknown {
+			sure = ""
+		}
+		rows = append(rows, factRow{l.label, answer, sure, withRows(l.fact.Why, l.fact.Rows)})
+	}
+	return rows
+}
+
+// numberRows are the ranges and counts.
+func numberRows(f *inspect.Facts) []factRow {
+	if f.MatrixFree {
+		return nil
+	}
+	rows := []factRow{
+		diagonalRow(f),
+		{"diagonal size", pair(f.Diag), "", decadesText(f.Diag)},
+		{"row norms", pair(f.RowNorm), "", decadesText(f.RowNorm)},
+		{"column norms", pair(f.ColNorm), "", decadesText(f.ColNorm)},
+		{"norms of A", sci(f.NormInf), "", fmt.Sprintf("max norm; Frobenius %s, one %s", sci(f.NormFro), sci(f.NormOne))},
+		{"asymmetry", sci(f.Asymmetry), "", "||A-A^T||_F / ||A||_F; decides nothing"},
+		{"Gershgorin", pair(f.Gershgorin), "", fmt.Sprintf("ends from rows %d and %d", f.Gershgorin.MinRow+1, f.Gershgorin.MaxRow+1)},
+		{"dominant rows", share(f.Dominant, f.N), "", fmt.Sprintf("%s of them strictly", count(f.StrictlyDominant))},
+		{"components", count(f.Components), "", ""},
+		{"empty rows, columns", fmt.Sprintf("%d, %d", f.EmptyRowCount, f.EmptyColCount), "", withRows("", f.EmptyRows)},
+	}
+	if f.Singletons > 0 {
+		rows = append(rows, factRow{"decoupled rows", count(f.Singletons), "",
+			withRows("diagonal "+pair(f.SingletonDiag)+", the others "+pair(f.RestDiag), f.SingletonRows)})
+	}
+	return rows
+}
+
+// diagonalRow tells the signs of the diagonal.
+func diagonalRow(f *inspect.Facts) factRow {
+	answer := "mixed"
+	switch f.N {
+	case f.DiagPositive:
+		answer = "all positive"
+	case f.DiagNegative:
+		answer = "all negative"
+	}
+	why := fmt.Sprintf("%d > 0, %d < 0, %d zero, %d missing", f.DiagPositive, f.DiagNegative, f.DiagZero, f.DiagMissing)
+	return factRow{"diagonal signs", answer, "", withRows(why, f.DiagRows)}
+}
+
+// rhsRows tell of the right-hand side.
+func rhsRows(f *inspect.Facts) []factRow {
+	why := "norm " + sci(f.RHSNorm)
+	if f.ZeroRHS {
+		why = "b = 0: x = 0"
+	}
+	return []factRow{{"right-hand side", string(f.RHS), "", why}}
+}
+
+// pair writes the ends of a range.
+func pair(r inspect.Range) string { return sci(r.Min) + " .. " + sci(r.Max) }
+
+// rangeText writes a range with the rows that attain its ends.
+func rangeText(r inspect.Range, number func(float64) string) string {
+	return fmt.Sprintf("min %s (row %d), max %s (row %d)", number(r.Min), r.MinRow+1, number(r.Max), r.MaxRow+1)
+}
+
+// decadesText says how far a range of magnitudes stretches, and in which
+// rows it ends.
+func decadesText(r inspect.Range) string {
+	if !(r.Min > 0) || !(r.Max >= r.Min) {
+		return ""
+	}
+	return fmt.Sprintf("%.1f decades, rows %d and %d", math.Log10(r.Max/r.Min), r.MinRow+1, r.MaxRow+1)
+}
+
+// share writes part of n in per cent.
+func share(part, n int) string {
+	if n == 0 {
+		return none
+	}
+	return fmt.Sprintf("%.0f %%", 100*float64(part)/float64(n))
+}
+
+// withRows adds row numbers, counted from 1, to a phrase.
+func withRows(text string, rows []int) string {
+	if len(rows) == 0 {
+		return text
+	}
+	words := make([]string, 0, 5)
+	for _, r := range rows[:min(len(rows), 4)] {
+		words = append(words, fmt.Sprint(r+1))
+	}
+	if len(rows) > 4 {
+		words = append(words, "...")
+	}
+	return strings.TrimPrefix(text+"; rows "+strings.Join(words, " "), "; ")
+}

@@ -1,0 +1,100 @@
+package tui
+
+import (
+	"slices"
+	"strings"
+
+	tea "github.com/charmbracelet/bubbletea"
+)
+
+// helpView lies over a screen and lists its keys, derived from the bindings,
+// and what the marks mean.
+type helpView struct {
+	of    view // the screen it explains
+	first int
+	lines int
+}
+
+func (v *helpView) name() string   { return "help" }
+func (v *helpView) entry() *prompt { return nil }
+
+// openHelp opens help for the screen.
+func (m *model) openHelp() tea.Cmd {
+	m.over = &helpView{of: m.screen}
+	return nil
+}
+
+// keys are the bindings of the help screen.
+func (v *helpView) keys(m *model) []action {
+	list := []action{bind("close", (*model).closeOver, "esc", "q", "?", "enter")}
+	return append(list, moves(func(m *model, step int) {
+		v.first = max(min(v.first+step, v.lines-1), 0)
+	})...)
+}
+
+// signsHelp explains what the screens abbreviate.
+var signsHelp = []string{
+	"",
+	"> picked    t what your code runs today    (name) its curve is hidden",
+	"~ running   + converged   = stagnated   ! diverged or falsely converged",
+	"x broke down, refused or failed   . waiting   - held   # a limit or your stop",
+	"(!) the method's own number met the target, the true residual had not",
+	"^ the curve goes on above the chart",
+	"findings: ! blocker   = drag   . note",
+	"true res   ||b - Ax|| / ||b|| measured afresh, in no trial's clock",
+	"own res    the number the method itself watches, relative to b",
+	"Ritz cond  condition of the preconditioned matrix from Ritz values,",
+	"           a lower bound; ? not settled; - the method gives none",
+	"own s      this trial's time alone, set-up included",
+	"floor~     estimated accuracy below which nothing can be reached",
+}
+
+// draw draws the keys in two columns where there is room, then the signs.
+func (v *helpView) draw(m *model, w, h int) []string {
+	list := v.of.keys(m)
+	if v.of != view(m.chooser) {
+		list = slices.Concat(list, common)
+	}
+	list = slices.Concat(list, everywhere)
+	lines := []string{m.on.paint(faint, "keys of the "+v.of.(named).name()+" screen")}
+	lines = append(lines, keyTable(list, w)...)
+	for _, s := range signsHelp {
+		lines = append(lines, clip(s, w))
+	}
+	v.lines = len(lines)
+	v.first = max(min(v.first, len(lines)-h), 0)
+	out := some(lines, v.first, h)
+	if v.first+h < len(lines) {
+		out = slices.Clone(out)
+		out[len(out)-1] = m.on.paint(faint, "down: more")
+	}
+	return out
+}
+
+// keyTable lists bindings in as many columns as there is room for.
+func keyTable(list []action, w int) []string {
+	const cells = 40
+	across := max(w/cells, 1)
+	down := (len(list) + across - 1) / across
+	lines := make([]string, down)
+	for i, a := range list {
+		text := " " + left(allKeys(a), 11) + " " + strings.ReplaceAll(a.Help().Desc, ";", ",")
+		lines[i%down] += left(text, min(cells, w))
+	}
+	return lines
+}
+
+// allKeys names every key of a binding.
+func allKeys(a action) string {
+	if a.Help().Key == "1-9" {
+		return "1-9"
+	}
+	s := ""
+	for _, k := range a.Keys() {
+		if s != "" {
+			s += " "
+		}
+		s += keyName([]string{k})
+	}
+	return s
+}
