@@ -38,8 +38,10 @@ func (l *lines) next() ([]byte, bool) {
 			return l.line(rest[:k]), true
 		}
 		if l.atEOF {
-			l.pos = l.end
-			return l.line(rest), len(rest) > 0
+			if l.pos = l.end; len(rest) == 0 {
+				return nil, false
+			}
+			return l.line(rest), true
 		}
 		l.fill()
 	}
