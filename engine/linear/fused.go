@@ -10,13 +10,8 @@ func Dot2(x, y, z []float64) (xy, xz float64) {
 func dot2Kernel(j *job, lo, hi, block int) {
 	x, y, z := j.x[lo:hi], j.y[lo:hi], j.v[lo:hi]
 	y, z = y[:len(x)], z[:len(x)]
-	s0, s1 := 0.0, 0.0
-	for i, v := range x {
-		s0 += v * y[i]
-		s1 += v * z[i]
-	}
-	j.part[block] = s0
-	*j.second(block) = s1
+	j.part[block] = dot(x, y)
+	*j.second(block) = dot(x, z)
 }
 
 // AxpyDot2 computes y += a x and returns yᵀ y and yᵀ z with the new y.
@@ -29,15 +24,11 @@ func AxpyDot2(a float64, x, y, z []float64) (yy, yz float64) {
 func axpyDot2Kernel(j *job, lo, hi, block int) {
 	a, x, y, z := j.a, j.x[lo:hi], j.y[lo:hi], j.v[lo:hi]
 	y, z = y[:len(x)], z[:len(x)]
-	s0, s1 := 0.0, 0.0
 	for i, v := range x {
-		w := y[i] + a*v
-		y[i] = w
-		s0 += w * w
-		s1 += w * z[i]
+		y[i] += a * v
 	}
-	j.part[block] = s0
-	*j.second(block) = s1
+	j.part[block] = dot(y, y)
+	*j.second(block) = dot(y, z)
 }
 
 // Axpy2 computes y += a x + b z in one pass; x and z may be the same.
@@ -81,11 +72,8 @@ func LinDot(dst []float64, a float64, x []float64, b float64, y []float64) float
 func linDotKernel(j *job, lo, hi, block int) {
 	a, b, x, y, w := j.a, j.b, j.x[lo:hi], j.y[lo:hi], j.w[lo:hi]
 	y, w = y[:len(x)], w[:len(x)]
-	s := 0.0
 	for i, v := range x {
-		t := a*v + b*y[i]
-		w[i] = t
-		s += t * t
+		w[i] = a*v + b*y[i]
 	}
-	j.part[block] = s
+	j.part[block] = dot(w, w)
 }

@@ -130,13 +130,10 @@ func MulDot(dst, d, x []float64) float64 {
 func mulDotKernel(j *job, lo, hi, block int) {
 	w, d, x := j.w[lo:hi], j.v[lo:hi], j.x[lo:hi]
 	d, w = d[:len(x)], w[:len(x)]
-	s := 0.0
 	for i, v := range x {
-		z := d[i] * v
-		w[i] = z
-		s += v * z
+		w[i] = d[i] * v
 	}
-	j.part[block] = s
+	j.part[block] = dot(x, w)
 }
 
 // AxpyDot computes y += a x and returns yᵀ z with the new y; z may be y.
@@ -149,12 +146,10 @@ func AxpyDot(a float64, x, y, z []float64) float64 {
 func axpyDotKernel(j *job, lo, hi, block int) {
 	a, x, y, z := j.a, j.x[lo:hi], j.y[lo:hi], j.v[lo:hi]
 	y, z = y[:len(x)], z[:len(x)]
-	s := 0.0
 	for i, v := range x {
 		y[i] += a * v
-		s += y[i] * z[i]
 	}
-	j.part[block] = s
+	j.part[block] = dot(y, z) // still in the nearest cache
 }
 
 // StepDirection computes x += a p, then p = z + b p, in one pass: the last two
