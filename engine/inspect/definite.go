@@ -51,14 +51,15 @@ func (l *look) verify(a *linear.CSR, side *Fact, sign string) error {
 		return err
 	}
 	switch {
-	case r.Definite && r.WithinDelta:
-		*side = fact(Yes, Proved, r.Shift, nil, "the Cholesky factorisation of %sA - cI completes, with c = %.2g above all rounding errors, diagonal scaled to 1..4", sign, r.Shift)
 	case r.Definite:
-		*side = l.doubt(fact(Yes, Proved, r.Shift, nil, "the Cholesky factorisation of %sA - cI completes, with c = %.2g above all rounding errors, diagonal scaled to 1..4", sign, r.Shift), "yours may not be definite")
+		*side = fact(Yes, Proved, r.Shift, nil, "Cholesky of %sA - cI completes, with c = %.2g above all rounding (diagonal scaled to 1..4)", sign, r.Shift)
+		if !r.WithinDelta {
+			*side = l.doubt(*side, "yours may not be definite")
+		}
 	case r.Negative:
 		l.negativeFound(r, side, sign)
 	case side.Answer == "" || side.Answer == Unknown:
-		*side = unknown("the Cholesky factorisation of %sA breaks at %s, but no vector shows a negative curvature beyond rounding", sign, rowWord(r.Row))
+		*side = unknown("Cholesky of %sA breaks at %s, yet no negative curvature beyond rounding was found", sign, rowWord(r.Row))
 		side.Rows = []int{r.Row}
 	}
 	return nil
@@ -66,7 +67,7 @@ func (l *look) verify(a *linear.CSR, side *Fact, sign string) error {
 
 // negativeFound states that a vector of negative curvature was found.
 func (l *look) negativeFound(r direct.Definiteness, side *Fact, sign string) {
-	no := fact(No, Proved, r.Rayleigh, r.Rows, "a vector x with x'(%sA)x/x'x = %.3g, beyond its rounding bound, carried by %s", sign, r.Rayleigh, rowWord(r.Rows[:min(2, len(r.Rows))]...))
+	no := fact(No, Proved, r.Rayleigh, r.Rows, "a vector x, carried by %s, has %sx'Ax/x'x = %.3g, beyond its rounding bound", rowWord(r.Rows[:min(2, len(r.Rows))]...), sign, r.Rayleigh)
 	if !r.WithinDelta {
 		no = l.doubt(no, "yours may not be indefinite")
 	}

@@ -1,6 +1,9 @@
 package inspect
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // signs judges definiteness by what single entries and pairs of rows tell:
 // the diagonal, the 2 x 2 principal minors, diagonal dominance and the null
@@ -29,7 +32,7 @@ func (l *look) diagonalSays(wrong int, rows top, sign string) Fact {
 	f := &l.f
 	switch {
 	case wrong > 0:
-		return fact(No, Proved, float64(wrong), rows.list(), "%s on the diagonal, first in %s",
+		return fact(No, Proved, float64(wrong), rows.list(), "%s on the diagonal, the largest in %s",
 			count(wrong, sign+" entry", sign+" entries"), rowWord(rows.rows[0]))
 	case f.DiagZero+f.DiagMissing > 0:
 		return fact(No, Proved, float64(f.DiagZero+f.DiagMissing), l.zeroDiag.list(), "%s on the diagonal, first in %s",
@@ -74,12 +77,7 @@ func (l *look) dominant() {
 	if f.DiagNegative > 0 {
 		side = &f.NegativeDefinite
 	}
-	if f.Dominant == f.N && f.DiagNegative == 0 && f.Semidefinite.Answer == "" {
-		f.Semidefinite = fact(Yes, Proved, 0, nil, "diagonally dominant with a diagonal that is nowhere negative")
-		if l.slack > 0 && !l.robust(l.slack) {
-			f.Semidefinite = l.doubt(f.Semidefinite, "yours may be less dominant")
-		}
-	}
+	l.semidefinite()
 	if side.Answer != "" {
 		return
 	}
@@ -91,4 +89,25 @@ func (l *look) dominant() {
 		}
 		*side = yes
 	}
+}
+
+// semidefinite notes that dominance with a diagonal that is nowhere negative
+// leaves no negative curvature.
+func (l *look) semidefinite() {
+	f := &l.f
+	switch {
+	case f.DiagNegative > 0 || f.Semidefinite.Answer != "":
+	case f.Dominant == f.N:
+		f.Semidefinite = fact(Yes, Proved, math.NaN(), nil, "diagonally dominant, no diagonal entry negative")
+		if l.slack > 0 && !l.robust(l.slack) {
+			f.Semidefinite = l.doubt(f.Semidefinite, "yours may be less dominant")
+		}
+	case l.all(near):
+		f.Semidefinite = fact(Yes, Measured, math.NaN(), nil, "diagonally dominant to rounding, no diagonal entry negative")
+	}
+}
+
+// all reports whether every row has the property.
+func (l *look) all(g flag) bool {
+	return !slices.ContainsFunc(l.flags, func(h flag) bool { return h&g == 0 })
 }
