@@ -25,8 +25,10 @@ var bicgstabEntry = Entry{
 //	s = r − α v,           t = A M⁻¹s,   ω = tᵀs / tᵀt
 //	x += α M⁻¹p + ω M⁻¹s,  r = s − ω t,  β = (r̂ᵀr_new / r̂ᵀr) (α/ω)
 //
-// Its α and β are those of BiCG. A denominator counts as vanished when it is
-// within the unit roundoff of the product of the norms it is made of.
+// Its α and β are those of BiCG. A denominator counts as vanished only when it
+// is beyond any use: within u² of the product of the norms it is made of. One
+// that is merely rounding (within u) is divided by all the same, as codes do:
+// x and r stay consistent, and the iteration often recovers.
 type bicgstab struct {
 	core
 	r, shadow, p, v, t []float64 // length n; s lies in r
@@ -118,8 +120,8 @@ func (s *bicgstab) halfStep(alpha, half float64) (trace.Reading, error) {
 	return s.reading(alpha, math.NaN(), true), nil
 }
 
-// lost says whether a cosine is no more than rounding, or undefined.
-func (s *bicgstab) lost(c float64) bool { return !(math.Abs(c) > unit) || !finite(c) }
+// lost says whether a cosine is zero for every purpose, or undefined.
+func (s *bicgstab) lost(c float64) bool { return !(math.Abs(c) > unit*unit) || !finite(c) }
 
 // vanished ends the trial: the cosine of a denominator is zero or undefined.
 func (s *bicgstab) vanished(quantity string, c float64) (trace.Reading, error) {
