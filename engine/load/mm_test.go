@@ -141,6 +141,8 @@ func TestMatrixMarketBad(t *testing.T) {
 		{"pair twice", sym + "3 3 4\n1 1 1\n2 1 1\n% c\n3 3 1\n1 2 1\n", 7, "(1,2) is stored, and so is (2,1)"},
 		{"pair twice, upper first", sym + "3 3 4\n1 3 1\n2 1 1\n3 1 1\n3 3 1\n", 5, "(3,1) is stored, and so is (1,3)"},
 		{"skew pair twice", mmBanner("coordinate real skew-symmetric") + "2 2 2\n2 1 1\n1 2 -1\n", 4, "(1,2) is stored"},
+		{"sum too large", mm + "2 2 4\n1 1 1e308\n2 2 1\n1 1 1e308\n1 1 -1e308\n", 5, "the entries (1,1) add up to more"},
+		{"symmetric sum too large", sym + "2 2 3\n2 1 -1e308\n% c\n2 1 -1e308\n2 2 1\n", 5, "add up to more"},
 		{"skew diagonal", mmBanner("coordinate real skew-symmetric") + "2 2 2\n2 1 1\n2 2 0\n", 4, "no diagonal"},
 		{"array with two a line", mmBanner("array real general") + "2 2\n1 2\n3 4\n", 3, "one value a line"},
 		{"short array", mmBanner("array real general") + "2 2\n1.000\n2.000\n3.000\n", 5, "ends after 3"},
