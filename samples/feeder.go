@@ -33,7 +33,7 @@ func makeFeeder(v linear.Values) (linear.System, error) {
 		if i%50 == 49 && i > 60 {
 			join(i, i-37, 0.2) // a long tie between branches
 		}
-		e = append(e, linear.Entry{I: i, J: i, V: 1e-4 * random.next()})
+		e = append(e, linear.Entry{I: i, J: i, V: 1e-2 * random.next()})
 		b[i] = -0.01 * random.next() // current drawn
 	}
 	return linear.System{A: linear.FromEntries(n, n, e), B: b}, nil

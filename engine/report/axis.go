@@ -9,13 +9,17 @@ import (
 )
 
 // axis is the horizontal axis of the chart: own seconds, or iterations where
-// no time was measured. It is linear, or stretched near 0 as log(1+x/bend)
+// the times are too short to compare. It is linear, or stretched near 0 as log(1+x/bend)
 // when a short trial would vanish beside a long one.
 type axis struct {
 	seconds bool
 	end     float64
 	bend    float64 // 0: linear
 }
+
+// tooShort is the own time up to which the clock says more of the machine than
+// of the method; iterations are drawn then.
+const tooShort = 0.01 // seconds
 
 // longShort is the ratio of the longest to the shortest trial from which the
 // axis is stretched.
@@ -24,8 +28,8 @@ const longShort = 12
 func newAxis(trials []trace.History) axis {
 	a := axis{seconds: true}
 	shortest := a.span(trials)
-	if a.end == 0 {
-		a.seconds = false
+	if a.end < tooShort {
+		a = axis{}
 		shortest = a.span(trials)
 	}
 	if a.end > longShort*shortest {

@@ -5,7 +5,6 @@ import (
 	"io"
 	"strings"
 
-	"dwindle/engine/diagnose"
 	"dwindle/engine/inspect"
 )
 
@@ -17,13 +16,7 @@ func Facts(w io.Writer, d Document) error {
 	lines = append(lines, hang("FINGERPRINT ", orDash(plain(d.System.Fingerprint)), Width)...)
 	lines = appendPart(lines, factLines(d.Facts))
 	lines = appendPart(lines, measureLines(d.Facts))
-	var on []diagnose.Finding
-	for _, f := range d.Findings {
-		if f.Subject == diagnose.OnSystem {
-			on = append(on, f)
-		}
-	}
-	lines = appendPart(lines, findingLines(on))
+	lines = appendPart(lines, findingLines(d.SystemOnly().Findings))
 	return writeLines(w, lines)
 }
 

@@ -140,19 +140,19 @@ func rhsText(rhs string) string {
 func todayText(d Document) string {
 	for _, t := range d.Trials {
 		if t.Today {
-			return plain(t.Pairing) + ": " + outcome(t)
+			return plain(t.Pairing) + ": " + Outcome(t)
 		}
 	}
 	return "not given; --today PAIRING measures the gain over what your code runs now"
 }
 
-// outcome tells how a trial ended, in one phrase.
-func outcome(t trace.History) string {
+// Outcome tells how a trial ended, in one phrase.
+func Outcome(t trace.History) string {
 	if len(t.Records) == 0 {
 		return strings.TrimSuffix(t.Stop.String()+" before it began: "+plain(t.Reason), ": ")
 	}
 	return fmt.Sprintf("%s after %s, %s, true residual %s", t.Stop,
-		plural(t.Iterations, "iteration", "iterations"), seconds(t.OwnTime.Seconds()), sci(t.TrueResidual))
+		plural(t.Iterations, "it", "its"), seconds(t.OwnTime.Seconds()), sci(t.TrueResidual))
 }
 
 // findingText is a finding with its certainty, and its subject unless the
@@ -188,7 +188,7 @@ func useText(d Document) string {
 
 func rankedWords(r choose.Ranked) []string {
 	words := []string{
-		fmt.Sprintf("%s in %s (set-up %s)", plural(r.Iterations, "iteration", "iterations"), seconds(r.Seconds), seconds(r.Setup)),
+		fmt.Sprintf("%s in %s (set-up %s)", plural(r.Iterations, "it", "its"), seconds(r.Seconds), seconds(r.Setup)),
 		memory(r.Memory),
 	}
 	if finite(r.BreakEven) && r.BreakEven > 1 {

@@ -88,3 +88,7 @@ func hang(label, text string, w int) []string {
 	}
 	return lines
 }
+
+// Paragraph returns text as plain lines of at most Width columns, the first
+// behind label, the others indented as far.
+func Paragraph(label, text string) []string { return trimmed(hang(label, plain(text), Width)) }

@@ -1,0 +1,110 @@
+package main
+
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strconv"
+	"strings"
+
+	"github.com/spf13/cobra"
+
+	"dwindle/engine"
+)
+
+// flags are the options of a session as written on the command line.
+type flags struct {
+	opt               engine.Options
+	memory            string
+	as, out           string
+	history, solution string
+	strict            bool
+	glyphs            string
+	rate              float64
+}
+
+// problem adds the options that decide what is solved and where.
+func (f *flags) problem(c *cobra.Command) {
+	s := c.Flags()
+	s.SortFlags = false
+	s.StringVar(&f.opt.RHS, "rhs", "", "right-hand side: `FILE[:COL]`, ones, made or unit:ROW (default: the file's own, else ones)")
+	s.IntVar(&f.opt.Threads, "threads", 0, "use `N` threads (default: what a login node or the job allows)")
+	s.StringVar(&f.memory, "memory", "", "let all trials together use `SIZE`, such as 2GiB (default: half of what is free)")
+	s.BoolVar(&f.opt.Identify, "identify", false, "name files with their path in reports")
+}
+
+// trials adds the options that decide what is run.
+func (f *flags) trials(c *cobra.Command, seconds float64) {
+	s := c.Flags()
+	s.SortFlags = false
+	s.StringArrayVar(&f.opt.Pairs, "pair", nil, "run the pairing `P`, such as cg+ic:0; may be repeated (default: made from the facts)")
+	s.StringVar(&f.opt.Today, "today", "", "the pairing `P` your code runs now: every gain is told against it")
+	s.StringVar(&f.opt.Guess, "guess", "", "start from the vector in `FILE[:COL]`")
+	s.Float64Var(&f.opt.Tol, "tol", 1e-8, "tolerance `T`")
+	s.StringVar(&f.opt.StopRule, "stop", "rhs", "what the tolerance is relative to: `RULE` rhs, initial, backward or absolute")
+	s.IntVar(&f.opt.Iterations, "iterations", 0, "at most `N` iterations a trial (default: 10 n, at most 100000)")
+	s.Float64Var(&f.opt.Seconds, "seconds", seconds, "end the run after `S` seconds of wall time; 0 is never")
+	s.Float64Var(&f.opt.TrialSeconds, "trial-seconds", 0, "end a trial after `S` seconds of its own time (default: never)")
+}
+
+// results adds the options that decide what is written where.
+func (f *flags) results(c *cobra.Command) {
+	s := c.Flags()
+	s.StringVar(&f.as, "as", "text", "`FORM` of the result: text, json, csv or md")
+	s.StringVar(&f.out, "out", "", "save the result to `FILE` (default: a new file in the state folder)")
+	s.StringVar(&f.history, "history", "", "write the history of all trials to `FILE.csv`")
+	s.StringVar(&f.solution, "solution", "", "write the solution to `FILE` as a Matrix Market array")
+}
+
+// finish checks the options and completes them with what the engine needs.
+func (f *flags) finish(c *cobra.Command, args []string) error {
+	if f.as != "" && !slices.Contains(forms(), f.as) {
+		return usage("--as must be one of %s, not %q", strings.Join(forms(), ", "), f.as)
+	}
+	if f.memory != "" {
+		n, err := parseSize(f.memory)
+		if err != nil {
+			return usage("--memory: %v", err)
+		}
+		f.opt.Memory = n
+	}
+	if c.Flags().Changed("tol") && f.opt.Tol == 0 {
+		return usage("--tol must be above 0")
+	}
+	if f.rate < 0 || math.IsNaN(f.rate) {
+		return usage("--rate must be above 0")
+	}
+	if !slices.Contains([]string{"", "dot", "line", "ascii"}, f.glyphs) {
+		return usage("--glyphs must be dot, line or ascii, not %q", f.glyphs)
+	}
+	f.opt.Version = version()
+	f.opt.Command = commandLine(c, args, f.opt.Identify)
+	f.opt.Stdin = c.InOrStdin()
+	return f.opt.Check()
+}
+
+// units are the suffixes of a size, in bytes.
+var units = []struct {
+	suffix string
+	bytes  float64
+}{
+	{"kib", 1 << 10}, {"mib", 1 << 20}, {"gib", 1 << 30}, {"tib", 1 << 40},
+	{"kb", 1e3}, {"mb", 1e6}, {"gb", 1e9}, {"tb", 1e12},
+	{"k", 1 << 10}, {"m", 1 << 20}, {"g", 1 << 30}, {"t", 1 << 40}, {"b", 1},
+}
+
+// parseSize reads an amount of memory: 2GiB, 500M, 1.5g or bytes.
+func parseSize(text string) (int64, error) {
+	number, scale := strings.ToLower(strings.TrimSpace(text)), 1.0
+	for _, u := range units {
+		if s, ok := strings.CutSuffix(number, u.suffix); ok {
+			number, scale = s, u.bytes
+			break
+		}
+	}
+	x, err := strconv.ParseFloat(strings.TrimSpace(number), 64)
+	if err != nil || !(x*scale >= 1 && x*scale < 1<<62) {
+		return 0, fmt.Errorf("%q is not a size such as 2GiB", text)
+	}
+	return int64(x * scale), nil
+}
