@@ -42,7 +42,7 @@ var mayImport = map[string][]string{
 	"tui": {"engine", "engine/trace", "engine/inspect", "engine/diagnose", "engine/choose", "engine/spectrum",
 		"tui/quiet"},
 	"tui/quiet":   {},
-	"cmd/dwindle": {"engine", "engine/report", "tui", "samples"},
+	"cmd/dwindle": {"engine", "engine/report", "tui", "tui/quiet", "samples"},
 }
 
 // verbs are the stages, in their order; a stage imports no later one.

@@ -13,8 +13,9 @@ var feeder = Sample{
 		{Name: "n", Kind: linear.Int, Default: 500, Min: 2, Max: 5000000, Meaning: "nodes"},
 		{Name: "short", Kind: linear.Real, Default: 1e-4, Min: 1e-9, Max: 1, Meaning: "length of the short cables over that of the others"},
 	},
-	Size: func(v linear.Values) (int, int) { return v.Int("n"), 5 * v.Int("n") },
-	Make: makeFeeder,
+	Size:   func(v linear.Values) (int, int) { return v.Int("n"), 5 * v.Int("n") },
+	Make:   makeFeeder,
+	Expect: []string{"row-scaling"},
 }
 
 func makeFeeder(v linear.Values) (linear.System, error) {

@@ -21,7 +21,8 @@ var frame = Sample{
 		g := layOut(v)
 		return g.unknowns, 36*g.elements + 6
 	},
-	Make: makeFrame,
+	Make:   makeFrame,
+	Expect: []string{"row-scaling"},
 }
 
 const (

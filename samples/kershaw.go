@@ -10,6 +10,7 @@ var kershaw = Sample{
 		"J. Comput. Phys. 26 (1978) 43-65 (cited from memory)",
 	Spectrum: "3 - 2 sqrt(2) and 3 + 2 sqrt(2), each twice",
 	Size:     func(linear.Values) (int, int) { return 4, 12 },
+	Expect:   []string{"not-your-rhs", "pivot"},
 	Make: func(linear.Values) (linear.System, error) {
 		rows := [4][4]float64{{3, -2, 0, 2}, {-2, 3, -2, 0}, {0, -2, 3, -2}, {2, 0, -2, 3}}
 		var e []linear.Entry

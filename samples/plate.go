@@ -19,7 +19,8 @@ var plate = Sample{
 		n := v.Int("n")
 		return n * n, fivePointEntries(n, n)
 	},
-	Make: makePlate,
+	Make:   makePlate,
+	Expect: []string{"not-your-rhs"},
 }
 
 func makePlate(v linear.Values) (linear.System, error) {

@@ -5,6 +5,9 @@ import "dwindle/engine/inspect"
 // scaleLimit is the ratio of row norms from which a scaled variant joins.
 const scaleLimit = 1e4
 
+// longCycleUpTo is the order up to which a restart length of 100 is cheap.
+const longCycleUpTo = 100_000
+
 // LineUp chooses the pairings of a session from the facts: methods whose
 // assumptions hold, each with the preconditioners that can be built, plain
 // ones first so that a gain can be told. today is left to the caller.
@@ -53,6 +56,9 @@ func LineUp(f *inspect.Facts, list []Candidate, today string) []string {
 		if badly || !diag {
 			add("scale/", "gmres", "none")
 			add("scale/", "bicgstab", "none")
+		}
+		if !diag && f.N <= longCycleUpTo {
+			out = append(out, "gmres:100+none")
 		}
 		if badly && diag {
 			add("scale/", "gmres", "ilu")

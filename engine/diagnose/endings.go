@@ -2,7 +2,6 @@ package diagnose
 
 import (
 	"fmt"
-	"math"
 	"strconv"
 	"strings"
 
@@ -59,18 +58,29 @@ var divergence = Rule{"divergence", func(c Case) (out []Finding) {
 	return out
 }}
 
+// flatRun is how many flat cycles in a row are worth a word even where a limit
+// ended the trial first, and flat the factor that makes one.
+const (
+	flatRun = 5
+	flat    = 0.999
+)
+
 // stagnation: a restarted method makes no way, cycle after cycle.
 var stagnation = Rule{"restart-stagnation", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		cycles := events(h, trace.Restart)
-		if h.Stop != trace.Stagnated || h.FloorHits > 0 || len(cycles) < 2 || outOfReach(c) {
+		run := 0
+		for run < len(cycles) && cycles[len(cycles)-1-run].Value > flat {
+			run++
+		}
+		if run < flatRun || !h.Stop.Ended() || solved(h) || h.FloorHits > 0 || outOfReach(c) {
 			continue
 		}
 		last := cycles[len(cycles)-1]
 		prep, solver, m := cut(h.Pairing)
 		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("stands still at %s: its last cycles each left %.4g of the residual; the restart throws away what the space had gathered",
-				num(h.TrueResidual), last.Value),
+			Claim: fmt.Sprintf("stands still at %s: each of its last %d cycles left more than %g of the residual; every restart throws away what the cycle had gathered",
+				num(h.TrueResidual), run, flat),
 			Advice:   "a longer cycle, or a preconditioner",
 			Evidence: []Evidence{{Quantity: "factor of the last cycle", Value: last.Value, Iteration: int(last.Iter)}}}
 		if longer, ok := doubled(solver); ok {
@@ -91,19 +101,34 @@ func doubled(solver string) (string, bool) {
 	return fmt.Sprintf("%s:%d", name, min(4*m, 500)), true
 }
 
-// floor: the accuracy double precision allows is reached, and the tolerance
-// lies below it.
+// floor: the trial has reached the accuracy that rounding allows it, and the
+// tolerance lies below.
 var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		if h.FloorHits < 5 || solved(h) {
 			continue
 		}
-		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("tolerance %.0e is below what rounding allows: the true residual stays at %s while the recurrence falls to %s",
-				c.Tol, num(h.BestTrue), num(h.Residual)),
-			Advice: fmt.Sprintf("ask for no less than %.0e, or restart from this answer with a fresh residual", 2*h.BestTrue),
+		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
+			Claim: fmt.Sprintf("at its accuracy floor: the true residual stays at %s while the method's own number falls to %s; tolerance %.0e is below what rounding allows this recurrence",
+				num(h.BestTrue), num(h.Residual), c.Tol),
+			Advice: fmt.Sprintf("ask for no less than %.0e, or start again from this answer with a fresh residual", 2*h.BestTrue),
 			Evidence: []Evidence{{Quantity: "smallest true residual", Value: h.BestTrue, Iteration: h.Iterations},
-				number("u ||A|| max||x|| / ||b||", math.Max(h.Floor, 0), "")}})
+				{Quantity: "u ||A|| max||x|| / ||b||", Value: h.Floor, Iteration: none}}}
+		if deeper, ok := reached(c, h.BestTrue/2); ok {
+			f.Claim += fmt.Sprintf("; %s gets to %s", deeper.Pairing, num(deeper.BestTrue))
+			f.Try = []string{deeper.Pairing}
+		}
+		out = append(out, f)
 	}
 	return out
 }}
+
+// reached finds the trial with the smallest true residual below limit.
+func reached(c Case, limit float64) (best trace.History, ok bool) {
+	for _, h := range c.Trials {
+		if h.BestTrue < limit && (!ok || h.BestTrue < best.BestTrue) {
+			best, ok = h, true
+		}
+	}
+	return best, ok
+}

@@ -93,11 +93,7 @@ func (s *bicgstab) finish(alpha, omega, half float64) (trace.Reading, error) {
 	}
 	linear.Axpy2(s.x, alpha, s.ph, omega, s.sh)
 	rr, rho := linear.AxpyDot2(-omega, s.t, s.r, s.shadow)
-	res := root(rr, s.r)
-	if !finite(res) {
-		s.last = math.MaxFloat64
-		return s.overflow("|r|", res)
-	}
+	res := root(rr, s.r) // at most 2‖s‖, since ‖ωt‖ ≤ ‖s‖
 	s.beta = rho / s.rho * (alpha / omega)
 	s.rho, s.omega, s.last, s.peak = rho, omega, res, max(s.peak, res)
 	return s.reading(alpha, s.beta, res == 0), nil

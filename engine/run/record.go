@@ -26,7 +26,8 @@ func (t *Trial) record(r trace.Reading, first bool) {
 	marked := t.marks.see(iter, t.limits.Target.Tol, numbers{r: r.Residual, b: t.ownB, r0: t.own0,
 		backward: backward, precond: h.Norm == trace.PrecondNorm, alpha: r.Alpha, beta: r.Beta, firstStep: first})
 	var a *audit
-	if t.sched.due(iter, own, t.limits.Target.Tol) || marked || r.Done || t.atLimit(iter) {
+	due := t.sched.due(iter, own, t.limits.Target.Tol)
+	if due || marked || r.Done || t.atLimit(iter) || t.atUnreachable(rec.Residual) {
 		found := t.audit(t.limits.Unreachable > 0 || r.Done || t.atLimit(iter))
 		a = &found
 		rec.Audit = over(a.true2, t.sizes.b)
@@ -43,6 +44,14 @@ func (t *Trial) record(r trace.Reading, first bool) {
 	t.look(r.Done)
 	t.judge(r, rec, own, a)
 	t.thin()
+}
+
+// atUnreachable says that the residual has come down to the part of b that is
+// out of reach: then every iteration is audited, for past the least-squares
+// solution the iterates of a minimal residual method run off along the null
+// space (Choi, Paige and Saunders 2011).
+func (t *Trial) atUnreachable(residual float64) bool {
+	return t.limits.Unreachable > t.limits.Target.Tol && residual <= t.limits.Unreachable*(1+1e-6)
 }
 
 // ownRelative holds the method's own number against the stopping rule, with

@@ -1,0 +1,41 @@
+package engine
+
+import (
+	"slices"
+	"testing"
+
+	"dwindle/engine/trace"
+	"dwindle/samples"
+)
+
+// Each sample gives the findings it lists and no other, and what it calls
+// converged is so by audit.
+func TestSamplesGiveExactlyTheirFindings(t *testing.T) {
+	for _, s := range samples.Catalogue {
+		t.Run(s.Name, func(t *testing.T) {
+			v := ended(t, samples.Prefix+s.Name, Options{})
+			var got []string
+			for _, f := range v.Findings {
+				if !slices.Contains(got, f.Rule) {
+					got = append(got, f.Rule)
+				}
+			}
+			want := slices.Clone(s.Expect)
+			slices.Sort(got)
+			slices.Sort(want)
+			if !slices.Equal(got, want) {
+				t.Errorf("rules that spoke: %v, expected: %v%s", got, want, rules(v))
+			}
+			for _, u := range v.Trials {
+				h := u.History
+				t.Logf("%-22s %-18s it %5d true %.2g own %v %s", h.Pairing, h.Stop, h.Iterations, h.TrueResidual, h.OwnTime, h.Reason)
+				if h.Stop == trace.Converged && !(h.TrueResidual <= v.Settings.Tol) {
+					t.Errorf("%s is called converged at %g", h.Pairing, h.TrueResidual)
+				}
+			}
+			if len(v.Trials) == 0 {
+				t.Error("the line-up is empty")
+			}
+		})
+	}
+}
