@@ -34,9 +34,11 @@ func cycle(n int, v linear.Values) int { return max(1, min(n, v.Int("m"))) }
 //
 // A second pass over the v_i is made when the first cancels: when ‖w‖ falls
 // below 0.1/√2 of what it was. ‖w‖ within rounding of zero is the happy
-// breakdown: the space holds the solution, unless R is singular. The restart
-// happens at the start of the step after a full cycle and measures b − Ax
-// again.
+// breakdown: the space is exhausted and holds the solution, unless R is
+// singular; then its last column is dropped. The restart happens at the start
+// of the step after a full or exhausted cycle and measures b − Ax again. An
+// exhausted cycle that did not halve the residual so measured is the end: the
+// floor, or, if R was singular, a breakdown.
 type gmres struct {
 	core
 	values  linear.Values
@@ -44,6 +46,8 @@ type gmres struct {
 	v       [][]float64 // length+1 orthonormal vectors of length n
 	z, u    []float64   // M⁻¹v and scratch, length n; nil without a preconditioner
 	h       hessenberg
+	spent   bool    // the cycle exhausted its space
+	lost    float64 // then R's last diagonal entry over size, if R is singular; else 1
 	opening float64 // ‖r‖ at the start of the cycle
 	size    float64 // largest ‖A M⁻¹v‖ of the cycle: the scale of H
 }
@@ -70,7 +74,7 @@ func (s *gmres) Begin(p Problem) (trace.Reading, error) {
 
 // open starts a cycle: v₀ holds the residual of norm res.
 func (s *gmres) open(res float64) {
-	s.opening, s.size = res, 0
+	s.opening, s.size, s.spent, s.lost = res, 0, false, 1
 	s.h.start(res)
 	if res > 0 {
 		linear.Scale(s.v[0], 1/res, s.v[0])
@@ -79,10 +83,8 @@ func (s *gmres) open(res float64) {
 
 func (s *gmres) Step() (trace.Reading, error) {
 	s.next()
-	if s.h.k == s.length {
-		if s.restart(); s.last == 0 || !finite(s.last) {
-			return s.ended()
-		}
+	if (s.h.k == s.length || s.spent) && s.restart() {
+		return s.ended()
 	}
 	k := s.h.k
 	w, from := s.v[k+1], s.v[k]
@@ -97,15 +99,19 @@ func (s *gmres) Step() (trace.Reading, error) {
 	}
 	s.size = max(s.size, before)
 	zero := 8 * float64(k+1) * unit // rounding left by k+1 projections
-	happy := after <= zero*before
-	if d := s.h.rotate(); happy && d <= zero*s.size {
-		return s.broken("R(k,k)", cosine(d, s.size, 1))
+	s.spent = after <= zero*before
+	if d := s.h.rotate(); s.spent && d <= zero*s.size {
+		s.lost = cosine(d, s.size, 1)
+		if k == 0 {
+			return s.broken("R(k,k)", s.lost)
+		}
+		return s.reading(math.NaN(), math.NaN(), false), nil
 	}
 	s.last = s.h.accept()
-	if !happy {
+	if !s.spent {
 		linear.Scale(w, 1/after, w)
 	}
-	return s.reading(math.NaN(), math.NaN(), happy || s.last == 0), nil
+	return s.reading(math.NaN(), math.NaN(), false), nil
 }
 
 // m1 computes z = M⁻¹ x.
@@ -143,16 +149,23 @@ func (s *gmres) project(w, col []float64) float64 {
 }
 
 // restart takes the cycle's correction into x, measures the residual afresh
-// and opens the next cycle.
-func (s *gmres) restart() {
+// and opens the next cycle. It says whether that is the end.
+func (s *gmres) restart() (end bool) {
 	s.correct(s.x)
 	res := linear.Residual(s.v[0], s.a, s.x, s.b) // one more product
 	if !finite(res) {
 		s.event(trace.NonFinite, "|b-Ax|", res)
 	}
-	s.event(trace.Restart, "cycle factor", res/s.opening)
+	factor := res / s.opening
+	s.event(trace.Restart, "cycle factor", factor)
+	floor := s.spent && factor > 0.5
+	if floor && s.lost < 1 {
+		s.event(trace.Breakdown, "R(k,k)", s.lost)
+	}
+	end = floor || res == 0 || !finite(res)
 	s.last = res
 	s.open(res)
+	return end
 }
 
 // correct adds M⁻¹ V y to x, where y minimises the residual over the cycle's
