@@ -9,19 +9,19 @@ import (
 
 const (
 	maxSweeps   = 20
-	closeEnough = 0.1 // |norm − 1| of every row and column at which sweeps end
-	maxExponent = 500 // of one factor, so that no product of two leaves the range
+	closeEnough = 0.01 // |norm − 1| of every row and column at which sweeps end
+	maxExponent = 500  // of one factor, so that no product of two leaves the range
 )
 
-// equilibrate returns the binary exponents of the row and column factors that
-// bring every nonzero row and column of Dr A Dc to a largest entry near 1: in
-// each sweep every factor is divided by the square root of its row's or
-// column's norm (Ruiz 2001, in the maximum norm). With symmetric, both are the
-// same. The iteration runs on logarithms, which cannot overflow.
-func equilibrate(ctx context.Context, a *linear.CSR, symmetric bool) (row, col []int, err error) {
+// equilibrate returns the row and column factors that bring the largest entry
+// of every nonzero row and column of Dr A Dc near 1: a sweep divides each
+// factor by the square root of the norm of its row, then of its column (Ruiz
+// 2001, in the maximum norm, rows and columns in turn). With symmetric, one
+// sweep serves both and the factors are the same. The iteration runs on
+// logarithms, which cannot overflow.
+func equilibrate(ctx context.Context, a *linear.CSR, symmetric bool) (row, col []float64, err error) {
 	n := a.NRows
-	r, c := make([]float64, n), make([]float64, n)
-	rn, cn := make([]float64, n), make([]float64, n)
+	r, c, norm := make([]float64, n), make([]float64, n), make([]float64, n)
 	if symmetric {
 		c = r
 	}
@@ -30,20 +30,21 @@ func equilibrate(ctx context.Context, a *linear.CSR, symmetric bool) (row, col [
 		if err := ctx.Err(); err != nil {
 			return nil, nil, err
 		}
-		norms(a, lg, r, c, rn, cn)
-		worst := relax(r, rn)
+		rowNorms(a, lg, r, c, norm)
+		worst := relax(r, norm)
 		if !symmetric {
-			worst = max(worst, relax(c, cn))
+			colNorms(a, lg, r, c, norm)
+			worst = max(worst, relax(c, norm))
 		}
 		if worst <= math.Log2(1+closeEnough) {
 			break
 		}
 	}
-	row = exponents(r)
+	row = powers(r)
 	if symmetric {
 		return row, row, nil
 	}
-	return row, exponents(c), nil
+	return row, powers(c), nil
 }
 
 // logs returns log₂|a_ij| of every entry, −∞ for zeros.
@@ -55,16 +56,25 @@ func logs(a *linear.CSR) []float64 {
 	return lg
 }
 
-// norms writes log₂ of the largest entry of each row and column of Dr A Dc.
-func norms(a *linear.CSR, lg, r, c, rn, cn []float64) {
-	for i := range rn {
-		rn[i], cn[i] = math.Inf(-1), math.Inf(-1)
+// rowNorms writes log₂ of the largest entry of each row of Dr A Dc.
+func rowNorms(a *linear.CSR, lg, r, c, norm []float64) {
+	for i := range norm {
+		norm[i] = math.Inf(-1)
+		for k := a.Ptr[i]; k < a.Ptr[i+1]; k++ {
+			norm[i] = max(norm[i], lg[k]+r[i]+c[a.Col[k]])
+		}
 	}
-	for i := range rn {
+}
+
+// colNorms writes log₂ of the largest entry of each column of Dr A Dc.
+func colNorms(a *linear.CSR, lg, r, c, norm []float64) {
+	for j := range norm {
+		norm[j] = math.Inf(-1)
+	}
+	for i := range r {
 		for k := a.Ptr[i]; k < a.Ptr[i+1]; k++ {
 			j := a.Col[k]
-			v := lg[k] + r[i] + c[j]
-			rn[i], cn[j] = max(rn[i], v), max(cn[j], v)
+			norm[j] = max(norm[j], lg[k]+r[i]+c[j])
 		}
 	}
 }
@@ -82,10 +92,11 @@ func relax(d, norm []float64) float64 {
 	return worst
 }
 
-func exponents(d []float64) []int {
-	e := make([]int, len(d))
-	for i, v := range d {
-		e[i] = int(min(max(math.Round(v), -maxExponent), maxExponent))
+// powers returns 2^e of each exponent.
+func powers(e []float64) []float64 {
+	d := make([]float64, len(e))
+	for i, v := range e {
+		d[i] = math.Exp2(min(max(v, -maxExponent), maxExponent))
 	}
-	return e
+	return d
 }

@@ -44,7 +44,7 @@ func systemOf(rng *rand.Rand, a *linear.CSR) linear.System {
 	return s
 }
 
-func TestScaleIsExactAndLeadsBack(t *testing.T) {
+func TestScaleAndTheWayBack(t *testing.T) {
 	rng := rand.New(rand.NewPCG(1, 1))
 	for trial := range 20 {
 		symmetric := trial%2 == 0
@@ -55,28 +55,23 @@ func TestScaleIsExactAndLeadsBack(t *testing.T) {
 			t.Fatal(err)
 		}
 		m := p.Matrix()
-		for k := range m.Val {
-			if f1, _ := math.Frexp(m.Val[k]); f1 != first(math.Frexp(a.Val[k])) {
-				t.Fatalf("entry %g became %g: its digits changed", a.Val[k], m.Val[k])
-			}
-		}
 		if symmetric && !m.ExactlySymmetric() {
 			t.Error("a symmetric matrix lost its symmetry")
 		}
 		for _, q := range []*linear.CSR{m, m.Transpose()} {
 			for i := range q.NRows {
-				if _, v := q.Row(i); linear.NormInf(v) < 0.25 || linear.NormInf(v) > 4 {
+				if _, v := q.Row(i); linear.NormInf(v) < 0.9 || linear.NormInf(v) > 1.1 {
 					t.Errorf("row or column %d has norm %g", i, linear.NormInf(v))
 				}
 			}
 		}
-		residualsAgree(t, s, p, back)
+		residualsAgree(t, s, p, back.(scaling))
 	}
 }
 
-// residualsAgree checks Dr (b − A x) = b̃ − Ã x̃ bit for bit with x = Dc x̃: all
-// factors are powers of two, so every rounding is the same.
-func residualsAgree(t *testing.T, s, p linear.System, back Back) {
+// residualsAgree checks Dr (b − A x) = b̃ − Ã y with x = Dc y, each row to the
+// rounding of its own sum.
+func residualsAgree(t *testing.T, s, p linear.System, back scaling) {
 	n := s.N()
 	x, r, q := make([]float64, n), make([]float64, n), make([]float64, n)
 	for _, y := range [][]float64{p.Guess, p.Exact} {
@@ -84,17 +79,23 @@ func residualsAgree(t *testing.T, s, p linear.System, back Back) {
 		linear.Residual(r, s.A, x, s.B)
 		linear.Residual(q, p.A, y, p.B)
 		for i := range r {
-			if f := back.(scaling).row[back.Row(i)]; f*r[i] != q[i] {
-				t.Fatalf("row %d: scaled residual %g, expected %g", i, q[i], f*r[i])
+			size := math.Abs(p.B[i])
+			cols, vals := p.Matrix().Row(i)
+			for k, j := range cols {
+				size += math.Abs(vals[k] * y[j])
+			}
+			if math.Abs(back.row[back.Row(i)]*r[i]-q[i]) > 100*0x1p-53*size {
+				t.Fatalf("row %d: scaled residual %g, expected %g", i, q[i], back.row[i]*r[i])
 			}
 		}
 	}
-	if back.Solution(x, p.Exact); !slices.Equal(x, s.Exact) {
-		t.Error("the way back does not give the solution")
+	back.Solution(x, p.Exact)
+	for i := range x {
+		if math.Abs(x[i]-s.Exact[i]) > 4*0x1p-53*math.Abs(s.Exact[i]) {
+			t.Error("the way back does not give the solution")
+		}
 	}
 }
-
-func first(f float64, _ int) float64 { return f }
 
 func TestScaleLeavesEmptyRowsAlone(t *testing.T) {
 	a := linear.FromEntries(3, 3, []linear.Entry{{I: 0, J: 0, V: 1e8}, {I: 2, J: 0, V: 0}})
