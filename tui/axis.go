@@ -1,6 +1,7 @@
 package tui
 
 import (
+	"fmt"
 	"math"
 )
 
@@ -140,6 +141,6 @@ func (d decades) labels(tol float64) []string {
 		if r < last+2 || (at >= 0 && r >= at-1 && r <= at+1) {
 			continue
 		}
-		last, out[r] = r, power(math.Pow(10, float64(d.top-k)))
+		last, out[r] = r, fmt.Sprintf("1e%+03d", d.top-k)
 	}
 }

@@ -8,8 +8,9 @@ import (
 	"dwindle/engine/trace"
 )
 
-// margin is the width left of the plot: a label, a blank and the frame.
-const margin = 7
+// margin is the width left of the plot: a label, a blank and the frame. Only
+// an uncommon tolerance makes it wider than 1e-08 needs.
+func (p plot) margin() int { return max(len("1e-08"), len(power(p.tol))) + 2 }
 
 // plot is everything a chart shows.
 type plot struct {
@@ -42,6 +43,7 @@ func (d drawn) mark() string {
 // draw returns the chart as h lines of at most w cells: h-2 rows of plot, the
 // axis and its labels.
 func (p plot) draw(w, h int) []string {
+	margin := p.margin()
 	c := newCanvas(w-margin, h-2)
 	p.y.rows = c.h
 	p.rules(c)
@@ -188,7 +190,7 @@ func (p plot) body(t *tags, d drawn, c curve) {
 // base draws the axis and the labels below it; the last words name what is
 // drawn, and along what.
 func (p plot) base(w int) []string {
-	f := frames[p.signs]
+	f, margin := frames[p.signs], p.margin()
 	axis := []rune(strings.Repeat(string(f.base), max(w, 0)))
 	labels := newCanvas(w+margin, 1)
 	name := p.name + " by " + p.x.fix.String()

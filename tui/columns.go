@@ -37,7 +37,7 @@ var columns = [...]struct {
 }
 
 const (
-	leadCells  = 5  // ">t 3 "
+	leadCells  = 5 // ">t 3 "
 	leastNote  = 17
 	stateCells = 22 // " ! falsely-converged", " # iteration-limit(!)"
 )

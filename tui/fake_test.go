@@ -97,6 +97,8 @@ type fake struct {
 	findings []diagnose.Finding
 	broken   error
 	ready    bool
+	heard    func(format string, args ...any) // told of every call; nil: nobody
+	bomb     time.Time                        // Snapshot panics from then on
 }
 
 // newFake returns a session of the first n scripts, its clock given.
@@ -129,6 +131,9 @@ func someFindings() []diagnose.Finding {
 func (f *fake) Snapshot() engine.Snapshot {
 	f.mu.Lock()
 	defer f.mu.Unlock()
+	if !f.bomb.IsZero() && time.Now().After(f.bomb) {
+		panic("the fake session is told to")
+	}
 	t := f.clock()
 	s := engine.Snapshot{Phase: engine.Running, Progress: -1, Elapsed: span1(t), Facts: someFacts(),
 		System:   report.System{Name: "sluice4.mtx", Unknowns: 20000, Entries: 1390112, RHS: "ones"},
@@ -175,6 +180,9 @@ func (f *fake) clock() float64 {
 
 func (f *fake) did(format string, args ...any) {
 	f.calls = append(f.calls, fmt.Sprintf(format, args...))
+	if f.heard != nil {
+		f.heard(format, args...)
+	}
 }
 
 func (f *fake) lock() func() { f.mu.Lock(); return f.mu.Unlock }
@@ -247,4 +255,11 @@ func somePattern() [][]float64 {
 		}
 	}
 	return p
+}
+
+// Snapshot gives the system another name.
+func (n named14) Snapshot() (s engine.Snapshot) {
+	s = n.fake.Snapshot()
+	s.System.Name = n.name
+	return s
 }

@@ -70,6 +70,15 @@ func Run(cfg Config) error {
 
 // run is Run on anything that behaves like a session.
 func run(cfg Config, s session) error {
+	m, p, err := assemble(cfg, s)
+	if err != nil {
+		return err
+	}
+	return conduct(m, p)
+}
+
+// assemble makes the model and the program around it.
+func assemble(cfg Config, s session) (*model, *tea.Program, error) {
 	if cfg.In == nil {
 		cfg.In = os.Stdin
 	}
@@ -77,7 +86,7 @@ func run(cfg Config, s session) error {
 		cfg.Out = os.Stdout
 	}
 	if !term.IsTerminal(cfg.Out.Fd()) {
-		return ErrNoTerminal
+		return nil, nil, ErrNoTerminal
 	}
 	cfg.gate = newGate(cfg.Out)
 	m := newModel(cfg, s)
@@ -89,6 +98,12 @@ func run(cfg Config, s session) error {
 	}
 	p := tea.NewProgram(guarded{m}, options...)
 	cfg.gate.idle = func() { p.Send(drained{}) }
+	return m, p, nil
+}
+
+// conduct runs the program to its end, whatever ends it, and saves what there
+// is.
+func conduct(m *model, p *tea.Program) error {
 	caught := make(chan os.Signal, 4)
 	signal.Notify(caught, syscall.SIGINT, syscall.SIGTERM, syscall.SIGHUP)
 	defer signal.Stop(caught)
@@ -97,10 +112,10 @@ func run(cfg Config, s session) error {
 
 	_, err := p.Run()
 	close(ended)
-	cfg.gate.drain(lastWords)
-	if cfg.saveNow != nil && m.s != nil {
-		cfg.saveNow(m.s)
+	if m.cfg.saveNow != nil && m.s != nil {
+		m.cfg.saveNow(m.s)
 	}
+	m.cfg.gate.drain(lastWords)
 	if err == nil && m.interrupted {
 		return ErrInterrupted
 	}

@@ -1,6 +1,7 @@
 package tui
 
 import (
+	"slices"
 	"strings"
 	"unicode"
 
@@ -9,13 +10,49 @@ import (
 
 // spelled gives the ASCII form of the signs that findings and names use.
 var spelled = strings.NewReplacer(
-	"⁻¹", "^-1", "‖", "||", "−", "-", "–", "-", "—", "-", "≤", "<=", "≥", ">=", "≈", "~", "≠", "!=",
-	"×", "x", "·", "*", "√", "sqrt ", "∞", "inf", "→", "->", "±", "+-", "…", "...", "²", "^2", "³", "^3", "⁻", "^-",
-	"ᵀ", "^T", "ᴴ", "^H", "₀", "_0", "₁", "_1", "₂", "_2", "∈", "in", "⌈", "", "⌉", "",
+	"‖", "||", "−", "-", "–", "-", "—", "-", "≤", "<=", "≥", ">=", "≈", "~", "≠", "!=",
+	"×", "x", "·", "*", "√", "sqrt ", "∞", "inf", "→", "->", "±", "+-", "…", "...",
+	"ᵀ", "^T", "ᴴ", "^H", "∈", "in", "⌈", "", "⌉", "",
 	"α", "alpha", "β", "beta", "γ", "gamma", "δ", "delta", "ε", "eps", "η", "eta", "θ", "theta", "κ", "cond",
 	"λ", "lambda", "μ", "mu", "ρ", "rho", "σ", "sigma", "τ", "tau", "ω", "omega",
 	"’", "'", "‘", "'", "“", "\"", "”", "\"",
 )
+
+// raised and lowered are the signs of exponents and indices, and what they
+// stand for at the same place.
+const raised, raisedPlain = "⁰¹²³⁴⁵⁶⁷⁸⁹⁺⁻", "0123456789+-"
+const lowered, loweredPlain = "₀₁₂₃₄₅₆₇₈₉", "0123456789"
+
+// spell writes s in ASCII: known signs by name, a run of raised ones after
+// "^", a run of lowered ones after "_".
+func spell(s string) string {
+	var b strings.Builder
+	run := rune(0)
+	for _, r := range spelled.Replace(s) {
+		if at := runeIndex(raised, r); at >= 0 {
+			if run != '^' {
+				b.WriteByte('^')
+			}
+			run = '^'
+			b.WriteByte(raisedPlain[at])
+			continue
+		}
+		if at := runeIndex(lowered, r); at >= 0 {
+			if run != '_' {
+				b.WriteByte('_')
+			}
+			run = '_'
+			b.WriteByte(loweredPlain[at])
+			continue
+		}
+		run = 0
+		b.WriteRune(r)
+	}
+	return b.String()
+}
+
+// runeIndex is the place of r among the runes of s, -1 if it is not there.
+func runeIndex(s string, r rune) int { return slices.Index([]rune(s), r) }
 
 // clean makes foreign text safe to print on one line: control characters and
 // escape sequences vanish, blanks become one space, signs that are drawn in
@@ -24,7 +61,7 @@ var spelled = strings.NewReplacer(
 func (g glyphs) clean(s string) string {
 	s = ansi.Strip(strings.ToValidUTF8(s, "?"))
 	if g == asciiGlyphs {
-		s = spelled.Replace(s)
+		s = spell(s)
 	}
 	var b strings.Builder
 	blank := false

@@ -99,7 +99,7 @@ func (v *trialsView) widen(s engine.Snapshot) {
 		}
 	}
 	top := int(math.Ceil(math.Min(math.Max(high, start), math.Ceil(start)+headroom)))
-	end := int(math.Floor(math.Max(low, goal-depth)))
+	end := int(math.Floor(math.Max(low, goal-depth) + 0.12)) // a hair below a decade is drawn on it
 	if v.y == (decades{}) {
 		v.y = decades{top: top, low: end}
 	}

@@ -22,10 +22,11 @@ func (v *trialsView) draw(m *model, w, h int) []string {
 	detail := m.detail(w, h)
 	rows := v.listRows(n, h-len(detail))
 	chart := h - len(detail) - rows
-	v.columns = w - margin
-	lines := v.chart(m).draw(w, chart)
+	p := v.chart(m)
+	v.columns = w - p.margin()
+	lines := p.draw(w, chart)
 	if v.reading >= 0 && v.reading < v.columns {
-		lines[len(lines)-2] = cursorAt(lines[len(lines)-2], margin+v.reading)
+		lines[len(lines)-2] = cursorAt(lines[len(lines)-2], p.margin()+v.reading)
 	}
 	lines = append(lines, v.list(m, w, rows)...)
 	return append(lines, detail...)
