@@ -143,7 +143,7 @@ func todayText(d Document) string {
 			return plain(t.Pairing) + ": " + Outcome(t)
 		}
 	}
-	return "not given; --today PAIRING measures the gain over what your code runs now"
+	return "not given; --today PAIRING tells the gain over your code's"
 }
 
 // Outcome tells how a trial ended, in one phrase.
@@ -174,6 +174,12 @@ func useText(d Document) string {
 		return "nothing yet: no pairing has reached the tolerance"
 	}
 	words := []string{plain(c.Pairing)}
+	for _, t := range d.Trials {
+		if t.Pairing == c.Pairing && t.Stop != trace.Converged {
+			words[0] += " (" + t.Stop.String() + ")"
+			break
+		}
+	}
 	for _, r := range c.Ranked {
 		if r.Pairing == c.Pairing {
 			words = append(words, rankedWords(r)...)

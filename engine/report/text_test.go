@@ -9,6 +9,8 @@ import (
 	"os"
 	"strings"
 	"testing"
+
+	"dwindle/engine/trace"
 )
 
 var update = flag.Bool("update", false, "write the golden files anew")
@@ -94,6 +96,10 @@ func TestHeadTells(t *testing.T) {
 		if !strings.Contains(head, want) {
 			t.Errorf("no %q in\n%s", want, head)
 		}
+	}
+	d.Trials[1].Stop = trace.LeastSquares
+	if head = strings.Join(Head(d), "\n"); !strings.Contains(head, "USE         cg+ic:0 (least-squares), 20 its") {
+		t.Errorf("an answer that is not the solution is not told apart:\n%s", head)
 	}
 	d.Trials[0].Today, d.Choice.Pairing, d.Choice.Reasons = false, "", nil
 	head = strings.Join(Head(d), "\n")
