@@ -79,16 +79,19 @@ func largest(x []float64) []int {
 	return rows
 }
 
+// descendSteps is how many products a direction of negative curvature is worth.
+const descendSteps = 200
+
 // descend lowers the Rayleigh quotient of x on D A D by conjugate gradients
 // with an exact search in the plane of x and the direction (Bradbury and
 // Fletcher 1966), so that x shows the negative curvature clearly.
 func (s *scaled) descend(ctx context.Context, x []float64) {
 	n := len(x)
 	normalise(x)
-	ax, p, ap, g := make([]float64, n), make([]float64, n), make([]float64, n), make([]float64, n)
-	s.apply(ax, x)
+	ax, p, ap, g, work := make([]float64, n), make([]float64, n), make([]float64, n), make([]float64, n), make([]float64, n)
+	s.apply(ax, x, work)
 	old := 0.0
-	for step := 0; step < 200 && ctx.Err() == nil; step++ {
+	for step := 0; step < descendSteps && ctx.Err() == nil; step++ {
 		rho := linear.Dot(x, ax)
 		linear.Lin(g, 1, ax, -rho, x)
 		gg := linear.Dot(g, g)
@@ -103,7 +106,7 @@ func (s *scaled) descend(ctx context.Context, x []float64) {
 		linear.Lin(p, -1, g, beta, p)
 		linear.Axpy(-linear.Dot(p, x), x, p) // x has unit length: p ⟂ x
 		normalise(p)
-		s.apply(ap, p)
+		s.apply(ap, p, work)
 		c, t := lowest(rho, linear.Dot(p, ax), linear.Dot(p, ap))
 		linear.Lin(x, c, x, t, p)
 		linear.Lin(ax, c, ax, t, ap)

@@ -10,15 +10,17 @@ import (
 // rounded, since the factors are powers of two.
 type scaled struct {
 	a   *linear.CSR
-	exp []int // length n
+	exp []int     // length n
+	d   []float64 // 2^exp
 }
 
 // newScaled scales a, whose diagonal d is positive.
 func newScaled(a *linear.CSR, d []float64) *scaled {
-	s := &scaled{a: a, exp: make([]int, len(d))}
+	s := &scaled{a: a, exp: make([]int, len(d)), d: make([]float64, len(d))}
 	for i, v := range d {
 		_, k := math.Frexp(v)
 		s.exp[i] = (2 - k) >> 1
+		s.d[i] = math.Ldexp(1, s.exp[i])
 	}
 	return s
 }
@@ -49,14 +51,9 @@ func (s *scaled) normInf() float64 {
 	return largest * (1 + 1e-6)
 }
 
-// apply computes dst = D A D x.
-func (s *scaled) apply(dst, x []float64) {
-	for i := range s.exp {
-		sum := 0.0
-		cols, vals := s.a.Row(i)
-		for k, j := range cols {
-			sum += s.at(i, int(j), vals[k]) * x[j]
-		}
-		dst[i] = sum
-	}
+// apply computes dst = D A D x with work as scratch, all of length n.
+func (s *scaled) apply(dst, x, work []float64) {
+	linear.MulDot(work, s.d, x)
+	s.a.Apply(dst, work)
+	linear.MulDot(dst, s.d, dst)
 }
