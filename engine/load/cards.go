@@ -45,7 +45,7 @@ func (c *cards) next() ([]byte, cardField, error) {
 func (c *cards) turn() error {
 	card, ok := c.l.next()
 	if !ok {
-		return c.l.fail("the file ends after %d of %d %ss", c.k, c.n, c.what)
+		return c.l.fail("the file ends before %s %d of %d", c.what, c.k+1, c.n)
 	}
 	c.card = card
 	last := c.f.fields[len(c.f.fields)-1]
@@ -55,7 +55,7 @@ func (c *cards) turn() error {
 // tail checks that nothing stands on the card from a column on.
 func (c *cards) tail(column int) error {
 	if column < len(c.card) && !blank(c.card[column:]) {
-		return c.l.fail("the %ss (format %s) are followed by %s", c.what, c.f.text, quoted(skipBlank(c.card[column:])))
+		return c.l.fail("the last %s of the line (format %s) is followed by %s", c.what, c.f.text, quoted(skipBlank(c.card[column:])))
 	}
 	return nil
 }

@@ -52,7 +52,7 @@ func (c *collector) system(l *lines, format string, lineOf func(k int) int) (lin
 		src.Notes = append(src.Notes, c.sideNote())
 	}
 	if c.tiny > 0 {
-		src.Notes = append(src.Notes, fmt.Sprintf("%d values are too small for a double and were read as 0.", c.tiny))
+		src.Notes = append(src.Notes, fmt.Sprintf("Values too small for a double were read as 0: %d.", c.tiny))
 	}
 	a, merged, err := c.matrix(l.ctx)
 	if err != nil {

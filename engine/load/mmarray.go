@@ -30,7 +30,7 @@ func readArray(l *lines, h mmHeader, c *collector) (linear.System, error) {
 		return linear.System{}, err
 	}
 	if zeros > 0 {
-		s.Source.Notes = append(s.Source.Notes, fmt.Sprintf("Of the array's %d values, %d are zero and were left out.", h.stored, zeros))
+		s.Source.Notes = append(s.Source.Notes, fmt.Sprintf("Zeros of the array were left out: %d of %d values.", zeros, h.stored))
 	}
 	s.Source.Stored = h.stored
 	return s, nil

@@ -64,6 +64,30 @@ func TestStreams(t *testing.T) {
 	sameMatrix(t, packed.Matrix(), want.Matrix())
 }
 
+// Where the size is unknown, a claim shows false only at the end.
+func TestStreamEndsEarly(t *testing.T) {
+	i3 := "(26I3)"
+	f := [4]string{i3, i3, "(3F5.1)", "(2F5.1)"}
+	counts := []int{4, 1, 1, 1, 1}
+	rhs := fmt.Sprintf("%-14s%14d%14d", "F", 1, 0)
+	for _, c := range []struct {
+		text string
+		line int
+		want string
+	}{
+		{mm + "2 2 1000000000000\n1 1 1\n", 3, "the file ends after 1"},
+		{mmBanner("array real general") + "2000000000 2000000000\n1\n", 3, "the file ends after 1"},
+		{deck(counts[:4], "rsa", 2, 2, 3, f, "  1  3  4"), 5, "the file ends before row index 1 of 3"},
+		{deck(counts[:4], "rsa", 2, 2, 3, f, "  1  3  4", "  1  2  2"), 6, "the file ends before value 1 of 3"},
+		{deck(counts, "RSA", 2, 2, 3, f, rhs, "  1  3  4", "  1  2  2", "  4.0 -1.0  3.5"), 8, "ends before right-hand side value 1 of 2"},
+		{deck(counts, "RSA", 2, 2, 3, f, "M", "  1  3  4", "  1  2  2", "  4.0 -1.0  3.5"), 8, "ends after 0 of 1 right-hand side lines"},
+		{deck(counts[:4], "rsa", 2, 2, 3, f)[:200], 3, "the header ends after 3 of 4 lines"},
+	} {
+		_, err := Read(context.Background(), "t", strings.NewReader(c.text), -1, nil)
+		wantError(t, err, c.line, c.want)
+	}
+}
+
 func TestDamagedGzip(t *testing.T) {
 	text := line1D(20000)
 	z := squeeze(t, text)
