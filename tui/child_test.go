@@ -39,10 +39,7 @@ func beChild(mode string) int {
 	f := newFake(8, func() time.Duration { return time.Since(start) + span1(from) })
 	f.heard = note
 	if mode == "done" {
-		for id := 1; id <= 8; id++ {
-			f.ended[id] = 20
-		}
-		f.done, f.now = true, still(20)
+		f.finish()
 	}
 	if mode == "panic" {
 		f.bomb = start.Add(time.Second)

@@ -53,10 +53,11 @@ type listing struct {
 // listingFor chooses the columns for w cells by width alone, so that they do
 // not jump while trials run. Names get more room on wider screens.
 func listingFor(w int) listing {
+	if w < chartWidth {
+		return narrow(w)
+	}
 	l := listing{name: 19, state: stateCells}
 	switch {
-	case w < 50:
-		l.name, l.state = max(w-leadCells-stateCells-9, 8), stateCells
 	case w >= 160:
 		l.name = 34
 	case w >= 100:
@@ -83,13 +84,31 @@ func listingFor(w int) listing {
 	return l
 }
 
+// narrow is the list on screens without a chart: the residual, then the
+// iterations, and as much of the state as fits, if only its mark.
+func narrow(w int) listing {
+	l := listing{name: 15, state: 3, columns: []column{columns[0].column}}
+	if w >= 40 {
+		l.columns = []column{columns[1].column, columns[0].column}
+	}
+	room := w - leadCells - l.name - l.state
+	for _, c := range l.columns {
+		room -= c.w + 1
+	}
+	l.name += min(room, 0)
+	l.state += max(room, 0)
+	return l
+}
+
 // title is the line above the list.
 func (l listing) title(where string, w int) string {
 	s := blanks(leadCells-2) + "# " + left("trial", l.name)
 	for _, c := range l.columns {
 		s += " " + right(c.title, c.w)
 	}
-	s += "  " + left("state", l.state-1)
+	if l.state >= len("  state") {
+		s += "  state"
+	}
 	return ends(strings.TrimRight(s, " "), where, w)
 }
 
@@ -113,6 +132,9 @@ func (m *model) row(l listing, t *engine.Trial, w int) string {
 		front += " " + right(c.text(h), c.w)
 	}
 	state := left(stateText(h), l.state-2)
+	if l.state < len("  + conv") {
+		state = left(string(h.Stop.Mark()), l.state-2)
+	}
 	note := ""
 	if l.note > 0 {
 		note = left(m.signs.clean(noteOf(h)), l.note)

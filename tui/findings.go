@@ -193,7 +193,8 @@ func (m *model) ranking(ranked []choose.Ranked, w int) []string {
 	if len(ranked) == 0 {
 		return nil
 	}
-	lines := []string{"", m.on.paint(faint, clip("     "+left("pairing", 30)+right("s to tol", 10)+right("setup s", 9)+right("iters", 9)+right("memory", 11)+"  worth it from", w))}
+	name := min(max(w-56, 18), 34)
+	lines := []string{"", m.on.paint(faint, clip("     "+left("pairing", name)+right("s to tol", 12)+right("setup s", 9)+right("iters", 9)+right("memory", 11), w))}
 	for i, r := range ranked {
 		to := "not reached"
 		if r.Reached {
@@ -201,9 +202,9 @@ func (m *model) ranking(ranked []choose.Ranked, w int) []string {
 		}
 		worth := ""
 		if r.BreakEven > 0 {
-			worth = fmt.Sprintf("  %.0f right-hand sides", r.BreakEven)
+			worth = fmt.Sprintf("  best from %.0f sides", r.BreakEven)
 		}
-		lines = append(lines, clip(fmt.Sprintf("%4d %s%s%s%s%s%s", i+1, left(m.signs.clean(r.Pairing), 29), right(to, 11),
+		lines = append(lines, clip(fmt.Sprintf("%4d %s%s%s%s%s%s", i+1, left(m.signs.clean(r.Pairing), name), right(to, 12),
 			right(seconds(r.Setup), 9), right(fmt.Sprint(r.Iterations), 9), right(size(r.Memory), 11), worth), w))
 	}
 	return lines
