@@ -82,7 +82,7 @@ func (l *look) negativeFound(r direct.Definiteness, side *Fact, sign string) {
 func (l *look) beyondReach(side *Fact) {
 	switch {
 	case side.Answer == Yes:
-	case l.chained(near, clear):
+	case l.chained(near, beyond):
 		*side = fact(Yes, Measured, math.NaN(), nil, "diagonally dominant to rounding, clearly so in at least one row of each component")
 	default:
 		*side = unknown("symmetric with a diagonal of one sign; too large to be proved here")

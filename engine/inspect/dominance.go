@@ -17,7 +17,7 @@ func (l *look) dominance(t *tally, i int, d, off float64) {
 		g |= near
 	}
 	if d > off+2*err {
-		g |= clear | strict | weak
+		g |= beyond | strict | weak
 	} else if g&near != 0 {
 		switch l.margin(&t.sum, i) {
 		case 1:

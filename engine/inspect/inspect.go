@@ -57,7 +57,7 @@ const (
 	strict                   // |a_ii| > Σ|a_ij|, exactly
 	weak                     // |a_ii| ≥ Σ|a_ij|, exactly
 	near                     // the same to rounding
-	clear                    // |a_ii| > Σ|a_ij| beyond rounding
+	beyond                   // |a_ii| > Σ|a_ij| beyond rounding
 )
 
 // heading fills in what needs no look at the entries.

@@ -21,6 +21,7 @@ func (l *look) signs() error {
 	if err := l.minors(); err != nil {
 		return err
 	}
+	l.semidefinite()
 	l.constants()
 	l.dominant()
 	return nil
@@ -58,7 +59,11 @@ func (l *look) constants() {
 	if f.RowSumsZero.Answer != Yes {
 		return
 	}
-	no := fact(No, f.RowSumsZero.Certainty, 0, f.RowSumsZero.Rows, "semi-definite at best: %s", f.RowSumsZero.Why)
+	words := "not definite"
+	if f.Semidefinite.Answer == Yes {
+		words = "semi-definite, not definite"
+	}
+	no := fact(No, f.RowSumsZero.Certainty, 0, f.RowSumsZero.Rows, "%s: %s", words, f.RowSumsZero.Why)
 	for _, p := range []*Fact{&f.PositiveDefinite, &f.NegativeDefinite} {
 		if p.Answer == "" {
 			*p = no
@@ -77,7 +82,6 @@ func (l *look) dominant() {
 	if f.DiagNegative > 0 {
 		side = &f.NegativeDefinite
 	}
-	l.semidefinite()
 	if side.Answer != "" {
 		return
 	}

@@ -11,7 +11,7 @@ type defect struct {
 type matching struct {
 	l     *look
 	rowOf []int32 // row assigned to each column, −1 for none; length n
-	look  []int   // per row, next entry to try for a free column
+	cheap []int   // per row, next entry to try for a free column
 	next  []int   // per row, next entry of the search
 	seen  []int32 // per column, the last root that visited it, plus one
 	work  int     // entry visits left
@@ -25,11 +25,11 @@ func (l *look) structure() (defect, error) {
 	if l.f.DiagMissing+l.f.DiagZero == 0 || l.f.EmptyRowCount+l.f.EmptyColCount > 0 {
 		return defect{}, nil
 	}
-	m := matching{l: l, rowOf: make([]int32, n), look: make([]int, n), next: make([]int, n), seen: make([]int32, n)}
+	m := matching{l: l, rowOf: make([]int32, n), cheap: make([]int, n), next: make([]int, n), seen: make([]int32, n)}
 	m.work = 40*len(l.a.Val) + 1000
 	for j := range m.rowOf {
 		m.rowOf[j] = -1
-		m.look[j] = l.a.Ptr[j]
+		m.cheap[j] = l.a.Ptr[j]
 	}
 	var d defect
 	for i := range n {
@@ -86,8 +86,8 @@ func (m *matching) augment(root int) bool {
 // each entry is looked at once.
 func (m *matching) free(i int) int32 {
 	a := m.l.a
-	for ; m.look[i] < a.Ptr[i+1]; m.look[i]++ {
-		if k := m.look[i]; a.Val[k] != 0 && m.rowOf[a.Col[k]] < 0 {
+	for ; m.cheap[i] < a.Ptr[i+1]; m.cheap[i]++ {
+		if k := m.cheap[i]; a.Val[k] != 0 && m.rowOf[a.Col[k]] < 0 {
 			m.work--
 			return a.Col[k]
 		}
