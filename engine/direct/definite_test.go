@@ -3,7 +3,6 @@ package direct
 import (
 	"context"
 	"math"
-	"math/big"
 	"math/rand/v2"
 	"testing"
 	"time"
@@ -110,91 +109,6 @@ func eigenvalues(a *linear.CSR) []float64 {
 	return e.Values(nil)
 }
 
-// exactlyDefinite decides by an LDLᵀ in rational numbers, exact for every
-// double. Small n only.
-func exactlyDefinite(a *linear.CSR) bool {
-	n := a.NRows
-	m := make([][]*big.Rat, n)
-	for i := range n {
-		m[i] = make([]*big.Rat, n)
-		for j := range n {
-			m[i][j] = new(big.Rat).SetFloat64(a.At(i, j))
-		}
-	}
-	for k := range n {
-		if m[k][k].Sign() <= 0 {
-			return false
-		}
-		for i := k + 1; i < n; i++ {
-			f := new(big.Rat).Quo(m[i][k], m[k][k])
-			for j := k; j < n; j++ {
-				m[i][j].Sub(m[i][j], new(big.Rat).Mul(f, m[k][j]))
-			}
-		}
-	}
-	return true
-}
-
-// Matrices B·Bᵀ with integer B of deficient rank are exactly singular; moved by
-// a few units of the last place they lie on either side. No verdict may
-// contradict exact rational arithmetic.
-func TestNeverWrongNearSingular(t *testing.T) {
-	rng := rand.New(rand.NewPCG(1, 2))
-	var yes, no, left int
-	for trial := range 400 {
-		n := 2 + rng.IntN(9)
-		a := nearSingular(rng, n, trial%4)
-		r := verify(t, a, 0)
-		exact := exactlyDefinite(a)
-		switch {
-		case r.Definite && !exact:
-			t.Fatalf("trial %d: called definite: %+v", trial, a)
-		case r.Negative && exact:
-			t.Fatalf("trial %d: called indefinite: %+v", trial, a)
-		case r.Definite:
-			yes++
-		case r.Negative:
-			no++
-		default:
-			left++
-		}
-	}
-	if yes < 40 || no < 40 || left < 40 {
-		t.Errorf("the cases are one-sided: %d definite, %d indefinite, %d open", yes, no, left)
-	}
-}
-
-// nearSingular returns B·Bᵀ with integer B of rank n−1, moved by 0, a few ulps,
-// or 1e-13 to 1e-9, in badly scaled units.
-func nearSingular(rng *rand.Rand, n, how int) *linear.CSR {
-	b := make([][]float64, n)
-	for i := range b {
-		b[i] = make([]float64, n-1)
-		for j := range b[i] {
-			b[i][j] = float64(rng.IntN(19) - 9)
-		}
-		b[i][rng.IntN(n-1)] += 10
-	}
-	move := []float64{0, 4e-16, 1e-13, 1e-9}[how] * rng.Float64()
-	if rng.IntN(2) == 0 {
-		move = -move
-	}
-	unit := make([]int, n)
-	for i := range unit {
-		unit[i] = rng.IntN(60) - 30
-	}
-	return symmetricOf(n, func(i, j int) float64 {
-		v := 0.0
-		for k := range b[i] {
-			v += b[i][k] * b[j][k]
-		}
-		if i == j {
-			v *= 1 + move
-		}
-		return math.Ldexp(v, unit[i]+unit[j])
-	})
-}
-
 // Larger random symmetric matrices shifted to a known distance from
 // singularity: where dense eigenvalues are clear of their own error, the
 // verdict must agree, and must not be missing.
@@ -283,36 +197,6 @@ func TestTooLargeAndCancelled(t *testing.T) {
 	cancel()
 	if _, err := VerifiedDefinite(ctx, grid(10), 0); err == nil || err == ErrTooLarge {
 		t.Errorf("err = %v after cancellation", err)
-	}
-}
-
-func TestReverseCuthillMcKee(t *testing.T) {
-	rng := rand.New(rand.NewPCG(5, 6))
-	k := 12
-	shuffle := rng.Perm(k * k)
-	var e []linear.Entry
-	g := grid(k)
-	for i := range g.NRows {
-		cols, vals := g.Row(i)
-		for p, j := range cols {
-			e = append(e, linear.Entry{I: shuffle[i], J: shuffle[j], V: vals[p]})
-		}
-	}
-	a := linear.FromEntries(k*k, k*k, e)
-	order := ReverseCuthillMcKee(a)
-	seen := make([]bool, k*k)
-	for _, i := range order {
-		if seen[i] {
-			t.Fatal("not a permutation")
-		}
-		seen[i] = true
-	}
-	band := 0
-	for g, f := range firsts(a, order) {
-		band = max(band, tile*g+tile-f)
-	}
-	if band > 3*k {
-		t.Errorf("bandwidth %d of a shuffled %d x %d grid", band, k, k)
 	}
 }
 
