@@ -59,3 +59,18 @@ func TestSystem(t *testing.T) {
 		t.Error("17 digits determine a double")
 	}
 }
+
+// gated wraps an operator and denies one of its abilities.
+type gated struct{ counted }
+
+func (g *gated) Lacks(ability any) bool { _, ok := ability.(*Rower); return ok }
+
+func TestAsAsksTheGate(t *testing.T) {
+	g := &gated{counted{op: plateMatrix(3)}}
+	if _, ok := As[Rower](g); ok {
+		t.Error("an ability that the wrapper denies was found")
+	}
+	if _, ok := As[Transposer](g); !ok {
+		t.Error("an ability that the wrapper does not deny was not found")
+	}
+}

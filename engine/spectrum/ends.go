@@ -48,7 +48,7 @@ func (t *Tridiagonal) search(inside, outside, floor float64, more func(below int
 			break
 		}
 		points := between(inside, outside)
-		if pass == 0 {
+		if pass == 0 && inside != 0 {
 			points = near(inside, outside)
 		}
 		for p, below := range t.below(points) {
@@ -72,7 +72,7 @@ func near(inside, outside float64) (p [probes]float64) {
 }
 
 // between gives points that split the interval evenly: by ratio where its
-// ends differ by more than a factor of 16, else by length.
+// ends differ by more than a factor of 16 but not in sign, else by length.
 func between(inside, outside float64) (p [probes]float64) {
 	ratio := outside / inside
 	for i := range p {
@@ -80,7 +80,7 @@ func between(inside, outside float64) (p [probes]float64) {
 		switch {
 		case outside == 0:
 			p[i] = inside * math.Ldexp(1, -2<<(2*i))
-		case ratio > 16 || ratio > 0 && ratio < 1./16:
+		case finite(ratio) && (ratio > 16 || ratio > 0 && ratio < 1./16):
 			p[i] = inside * math.Pow(ratio, part)
 		default:
 			p[i] = inside + part*(outside-inside)

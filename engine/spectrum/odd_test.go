@@ -90,3 +90,47 @@ func TestHugeOrder(t *testing.T) {
 		t.Errorf("cold call took %v", cold)
 	}
 }
+
+// Kac's matrix in its symmetric form, zero diagonal and √(i(n−i)) beside it,
+// has the eigenvalues ±(n−1), ±(n−3), … (Clement 1959): the counts meet pivots
+// that cancel exactly.
+func TestKacMatrix(t *testing.T) {
+	for _, n := range []int{2, 8, 9, 100, 101} {
+		for _, scale := range []float64{1e-150, 1, 1e150} {
+			var T Tridiagonal
+			for i := 1; i <= n; i++ {
+				T.AddLanczos(0, scale*math.Sqrt(float64(i*(n-i))))
+			}
+			x := T.Extremes()
+			near12(t, "smallest", x.Smallest, -scale*float64(n-1), 1e-11)
+			near12(t, "largest", x.Largest, scale*float64(n-1), 1e-11)
+			if x.Negative != n/2 || !math.IsNaN(x.Condition()) {
+				t.Errorf("n=%d scale %g: %d negative, want %d", n, scale, x.Negative, n/2)
+			}
+		}
+	}
+}
+
+// At σ = T_00 the first pivot of L D Lᵀ − σI is exactly zero; by interlacing
+// one of the two eigenvalues lies below it.
+func TestCountAtAPivot(t *testing.T) {
+	for _, alpha := range []float64{0.25, -0.25} {
+		var T Tridiagonal
+		T.AddCG(alpha, 2)
+		T.AddCG(alpha, 1)
+		if got := T.below([probes]float64{1 / alpha, 1 / alpha, 1 / alpha, 1 / alpha}); got != [probes]int{1, 1, 1, 1} {
+			t.Errorf("α = %g: %v below 1/α", alpha, got)
+		}
+	}
+}
+
+func TestFormsDoNotMix(t *testing.T) {
+	defer func() {
+		if recover() == nil {
+			t.Error("a step of Lanczos was taken into a matrix of CG")
+		}
+	}()
+	var T Tridiagonal
+	T.AddCG(1, 1)
+	T.AddLanczos(1, 1)
+}
