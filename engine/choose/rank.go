@@ -14,6 +14,7 @@ const (
 	busyShare = 0.9   // CPU time over own time below which the machine was busy
 	tooShort  = 0.005 // seconds below which the clock cannot rank
 	near      = 1.1   // two times closer than this factor are not told apart
+	worth     = 0.1   // of a solve: gains below are taken for noise
 )
 
 // Rank orders the trials by own time to the target and recommends the first,
@@ -98,7 +99,7 @@ func breakEven(list []Ranked) {
 		}
 		q := list[cheap]
 		gain := (q.Seconds - q.Setup) - (r.Seconds - r.Setup)
-		if gain > 0 {
+		if gain > worth*(q.Seconds-q.Setup) {
 			r.BreakEven = math.Max(1, math.Ceil((r.Setup-q.Setup)/gain))
 		}
 	}

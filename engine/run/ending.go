@@ -86,9 +86,14 @@ func (t *Trial) judgeAudit(rec trace.Record, own float64, a *audit) {
 }
 
 // judgeFloor counts audits at the accuracy floor: the own number has fallen
-// far below its true value, and the true value no longer improves.
+// far below its true value, and the true value no longer improves. A restart
+// brings the two together again, so that restarted methods are judged by their
+// cycles alone.
 func (t *Trial) judgeFloor(rec trace.Record, a *audit) {
 	e := &t.ending
+	if t.method.Solver.Restarted {
+		return
+	}
 	ownNow := rec.Residual * t.ownB
 	if !(ownNow < parted*a.ownTrue) || rec.Iter == 0 {
 		e.atFloor, e.floorBest = 0, math.Inf(1)
