@@ -68,10 +68,10 @@ func LineUp(f *inspect.Facts, list []Candidate, today string) []string {
 }
 
 // couldBeDefinite says that nothing speaks against cg: no proof that A is
-// indefinite, or A is semi-definite with constants as null vectors.
+// indefinite, or A is semi-definite.
 func couldBeDefinite(f *inspect.Facts) bool {
 	if f.DiagNegative+f.DiagZero+f.DiagMissing > 0 {
 		return false
 	}
-	return f.PositiveDefinite.Answer != inspect.No || f.RowSumsZero.Answer == inspect.Yes && f.Dominant == f.N
+	return f.PositiveDefinite.Answer != inspect.No || f.Semidefinite.Answer == inspect.Yes
 }

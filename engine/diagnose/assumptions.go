@@ -47,9 +47,7 @@ func assumption(f *inspect.Facts, h trace.History) (Finding, bool) {
 
 // semidefinite says that A is at worst singular: cg works wherever b is in
 // reach.
-func semidefinite(f *inspect.Facts) bool {
-	return f.RowSumsZero.Answer == inspect.Yes && f.DiagNegative == 0 && f.Dominant == f.N
-}
+func semidefinite(f *inspect.Facts) bool { return f.Semidefinite.Answer == inspect.Yes }
 
 // instead names pairings that the facts allow.
 func instead(f *inspect.Facts) []string {
