@@ -19,6 +19,9 @@ func (t *Tridiagonal) searchLow(negative int, floor float64) float64 {
 	if t.last.Order > 0 {
 		inside = math.Min(inside, t.low)
 	}
+	if negative > 0 {
+		inside = math.Min(inside, 0)
+	}
 	outside := -t.radius * (1 + 0x1p-40)
 	if t.form == fromCG && negative == 0 {
 		outside = 0
