@@ -87,6 +87,9 @@ func (m *model) lead() []string {
 	head := fmt.Sprintf("%s %s: %s", m.findingMark(*f), m.subject(*f), m.signs.clean(f.Claim))
 	place := fmt.Sprintf("%d of %d", m.indexOf(f)+1, len(m.snap.Findings))
 	key := "tab: findings"
+	if c := m.snap.Choice.Pairing; c != "" {
+		key = "best so far: " + m.signs.clean(c)
+	}
 	if len(f.Try) > 0 {
 		key = "a: try " + m.signs.clean(f.Try[0])
 	}

@@ -139,6 +139,9 @@ func (m *model) row(l listing, t *engine.Trial, w int) string {
 	if l.note > 0 {
 		note = left(m.signs.clean(noteOf(h)), l.note)
 	}
+	if strings.TrimSpace(note) == "" {
+		state, note = strings.TrimRight(state, " "), ""
+	}
 	on := plain
 	if t.ID == m.trials.picked {
 		on = strong

@@ -8,55 +8,66 @@ import (
 )
 
 // detail is what is told of the picked trial where the screen is high enough:
-// where common stopping rules first held, what the condition estimate rests
-// on, and how the trial ended.
+// its numbers and their sources, how it ended, and where common stopping rules
+// first held.
 func (m *model) detail(w, h int) []string {
 	if h < 32 {
 		return nil
 	}
+	const lines = 4
 	t := m.trial(m.trials.picked)
 	if t == nil {
-		return make([]string, 3)
+		return make([]string, lines)
 	}
 	hist := &t.History
-	head := fmt.Sprintf("%d %s: ", t.ID, m.signs.clean(hist.Pairing))
-	return []string{
-		clip(head+m.endWords(hist), w),
-		clip("  would stop by: "+stopWords(hist.WouldStop), w),
-		clip("  "+m.conditionWords(hist)+preconditionerWords(hist.Notes), w),
+	out := []string{
+		clip(fmt.Sprintf("%d %s: ", t.ID, m.signs.clean(hist.Pairing))+m.numberWords(hist), w),
+		clip("  "+m.endWords(hist), w),
 	}
+	stops := wrap("would stop by: "+stopWords(hist.WouldStop), w-2)
+	for _, s := range some(stops, 0, 2) {
+		out = append(out, "  "+strings.ReplaceAll(s, "_", " "))
+	}
+	return fit(out, lines)
 }
 
-// endWords says how the trial stands, with both of its residuals named.
-func (m *model) endWords(h *trace.History) string {
-	s := h.Stop.String()
-	if h.Reason != "" {
-		s += ": " + m.signs.clean(h.Reason)
-	}
+// numberWords are the trial's residuals and its condition estimate, each with
+// its source, and what building the preconditioner left behind.
+func (m *model) numberWords(h *trace.History) string {
 	norm := string(h.Norm)
 	if norm == "" {
 		norm = string(trace.TwoNorm)
 	}
-	return s + fmt.Sprintf("; own residual %s (%s norm), true %s", sci(h.Residual), m.signs.clean(norm), sci(h.TrueResidual))
+	return fmt.Sprintf("own residual %s (%s norm), true %s; ", sci(h.Residual), m.signs.clean(norm), sci(h.TrueResidual)) +
+		m.conditionWords(h) + preconditionerWords(h.Notes)
 }
 
-// stopWords lists where common stopping rules first held.
+// endWords says how the trial stands or ended.
+func (m *model) endWords(h *trace.History) string {
+	if h.Reason == "" {
+		return h.Stop.String()
+	}
+	return h.Stop.String() + ": " + m.signs.clean(h.Reason)
+}
+
+// stopWords lists where common stopping rules first held, with the true
+// residual there. "_" stands for a blank at which no line breaks.
 func stopWords(marks []trace.StopMark) string {
 	var words []string
 	for _, s := range marks {
 		at := "never"
 		if s.Iter >= 0 {
-			at = fmt.Sprintf("it %d", s.Iter)
+			at = fmt.Sprintf("it_%d", s.Iter)
 			if v := sci(s.True); v != none {
-				at += " (true " + v + ")"
+				at += "_(true_" + v + ")"
 			}
 		}
-		words = append(words, s.Rule+" "+at)
+		words = append(words, s.Rule+"_"+at+",")
 	}
 	if len(words) == 0 {
 		return "nothing yet"
 	}
-	return strings.Join(words, "   ")
+	return strings.TrimSuffix(strings.Join(words, " "), ",")
 }
 
 // conditionWords says what is known of the condition number, and from what.

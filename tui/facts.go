@@ -22,7 +22,9 @@ func (r factRow) line(picked bool, w int) string {
 		answer = 18
 	}
 	rest := r.why
-	if r.sure != "" {
+	if r.sure != "" && w < 60 {
+		rest = r.sure // the reason stands below, in full
+	} else if r.sure != "" {
 		rest = strings.TrimSuffix(r.sure+", "+r.why, ", ")
 	}
 	return left(mark+left(r.label, 19)+" "+left(r.answer, answer)+" "+rest, w)

@@ -64,7 +64,7 @@ func compact(n int) string {
 	return strconv.FormatFloat(v, 'g', 3, 64) + unit
 }
 
-// secs writes a duration in seconds with four digits or so: 0.012, 12.30,
+// secs writes a duration in seconds with four digits or so: 0.0123, 12.30,
 // 123.4, 1234.
 func secs(d time.Duration) string {
 	return seconds(d.Seconds())
@@ -75,6 +75,8 @@ func seconds(v float64) string {
 	switch {
 	case math.IsNaN(v) || math.IsInf(v, 0) || v < 0:
 		return none
+	case v < 0.99995:
+		return strconv.FormatFloat(v, 'f', 4, 64)
 	case v < 9.9995:
 		return strconv.FormatFloat(v, 'f', 3, 64)
 	case v < 99.995:

@@ -334,7 +334,7 @@ func TestPoint15Numbers(t *testing.T) {
 			t.Errorf("sci(%v) = %q, want %q", c.v, got, c.want)
 		}
 	}
-	for v, want := range map[float64]string{0.0123: "0.012", 9.9996: "10.00", 12.345: "12.35", 99.996: "100.0", 1234.4: "1234", math.NaN(): "-"} {
+	for v, want := range map[float64]string{0.0123: "0.0123", 0.99996: "1.000", 9.9996: "10.00", 12.345: "12.35", 99.996: "100.0", 1234.4: "1234", math.NaN(): "-"} {
 		if got := seconds(v); got != want {
 			t.Errorf("seconds(%v) = %q, want %q", v, got, want)
 		}

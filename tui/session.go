@@ -61,7 +61,7 @@ func (m *model) look() {
 	if m.looked && snap.Version == m.snap.Version {
 		return
 	}
-	if !m.looked || snap.Live() {
+	if !m.looked || snap.Live() || m.snap.Live() { // the clock stops with the last trial
 		m.elapsed = snap.Elapsed
 	}
 	m.looked, m.stale, m.snap = true, true, snap

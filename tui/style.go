@@ -2,6 +2,7 @@ package tui
 
 import (
 	"os"
+	"strings"
 
 	"github.com/charmbracelet/lipgloss"
 	"github.com/muesli/termenv"
@@ -52,10 +53,12 @@ func coloured(out *os.File) bool {
 // brush paints text, or leaves it as it is when colours are off.
 type brush bool
 
-// paint returns s in ink i. Text to be measured must be clipped before.
+// paint returns s in ink i, blanks at its end outside of it, where they can be
+// left out. Text to be measured must be clipped before.
 func (on brush) paint(i ink, s string) string {
 	if !on || i == plain || s == "" {
 		return s
 	}
-	return "\x1b[" + string(i) + "m" + s + "\x1b[m"
+	text := strings.TrimRight(s, " ")
+	return "\x1b[" + string(i) + "m" + text + "\x1b[m" + s[len(text):]
 }
