@@ -29,6 +29,7 @@ type Options struct {
 	Memory       int64                // bytes for all live trials together; 0: half of what is free
 	Identify     bool                 // name the file's path in reports
 	Interactive  bool                 // the line-up starts by itself only if its estimated work is small
+	FactsOnly    bool                 // no trials: the session ends with the facts
 	Command      string               // as the user typed it, for the report
 	Version      string               // of the program, for the report
 	Stdin        io.Reader            // for source "-"

@@ -83,7 +83,7 @@ func (s *Session) loadAndInspect() (err error) {
 		return err
 	}
 	linear.SetThreads(s.opt.Threads)
-	sys, err := read(s.ctx, s.source, s.opt.Stdin, func(p float64) { s.set(func() { s.progress = p }) })
+	sys, err := read(s.ctx, s.source, s.opt.Stdin, s.opt.Memory, func(p float64) { s.set(func() { s.progress = p }) })
 	if err != nil {
 		return err
 	}
@@ -113,6 +113,10 @@ func (s *Session) setBench() *run.Bench {
 		lineup = append([]string{s.opt.Today}, lineup...)
 	}
 	s.set(func() { s.bench, s.lineup, s.phase = b, lineup, Ready })
+	if s.opt.FactsOnly {
+		s.set(func() { s.phase = Ended })
+		return b
+	}
 	if s.opt.Interactive {
 		if t := estimate(s.facts, len(lineup)); t > soonEnough {
 			s.set(func() { s.waiting = fmt.Sprintf("about %.0f s of work estimated", t.Seconds()) })

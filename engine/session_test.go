@@ -205,7 +205,7 @@ func checkNothingNegative(t *testing.T, what string, v Snapshot) {
 // rows that sum to zero exactly.
 func laplacian(t *testing.T, path string) *linear.CSR {
 	t.Helper()
-	s, err := read(context.Background(), path, nil, func(float64) {})
+	s, err := read(context.Background(), path, nil, 0, nil)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -231,7 +231,7 @@ func laplacian(t *testing.T, path string) *linear.CSR {
 // 212: every diagonal entry and 2x2 minor stays positive, the smallest
 // eigenvalue is −0.384 (check value of the project, dense in NumPy).
 func TestOneNegativeSpringIsProvedAndNamed(t *testing.T) {
-	s, err := read(context.Background(), "sample:plate:20", nil, nil)
+	s, err := read(context.Background(), "sample:plate:20", nil, 0, nil)
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -2,7 +2,6 @@ package engine
 
 import (
 	"context"
-	"fmt"
 	"io"
 	"math"
 	"path/filepath"
@@ -11,6 +10,7 @@ import (
 
 	"dwindle/engine/linear"
 	"dwindle/engine/load"
+	"dwindle/engine/run"
 	"dwindle/samples"
 )
 
@@ -19,18 +19,31 @@ import (
 const madeStart = 1
 
 // read loads the system that source names, without its right-hand side.
-func read(ctx context.Context, source string, stdin io.Reader, progress func(float64)) (linear.System, error) {
+func read(ctx context.Context, source string, stdin io.Reader, memory int64, progress func(float64)) (linear.System, error) {
 	switch {
 	case strings.HasPrefix(source, samples.Prefix):
-		s, err := samples.Build(source)
-		if err != nil {
-			err = &UsageError{err.Error()}
-		}
-		return s, err
+		return generate(source, memory)
 	case source == "-":
 		return load.Read(ctx, "stdin", stdin, -1, progress)
 	}
 	return load.File(ctx, source, progress)
+}
+
+// generate makes a sample, unless it would not fit into memory.
+func generate(spec string, memory int64) (linear.System, error) {
+	sample, v, err := samples.Parse(spec)
+	if err != nil {
+		return linear.System{}, &UsageError{err.Error()}
+	}
+	n, entries := sample.Size(v)
+	if need := 12*int64(entries) + 24*int64(n); memory > 0 && need > memory {
+		return linear.System{}, badOption("%s needs %s, more than the limit %s", spec, run.Bytes(need), run.Bytes(memory))
+	}
+	s, err := samples.Build(spec)
+	if err != nil {
+		err = &UsageError{err.Error()}
+	}
+	return s, err
 }
 
 // complete gives the system its right-hand side and guess, as the options ask.
@@ -40,7 +53,7 @@ func complete(s *linear.System, opt Options) error {
 		return err
 	}
 	if linear.NormInf(s.B) != linear.NormInf(s.B) || math.IsInf(linear.NormInf(s.B), 0) {
-		return fmt.Errorf("the right-hand side holds a number that is not finite")
+		return badOption("the right-hand side holds a number that is not finite")
 	}
 	if opt.Guess == "" {
 		return nil

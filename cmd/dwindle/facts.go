@@ -36,7 +36,7 @@ func (f *flags) facts(c *cobra.Command, args []string) error {
 	if f.as != "text" && f.as != "json" {
 		return usage("--as must be text or json here, not %q", f.as)
 	}
-	f.opt.Interactive = true // no hurry to start anything
+	f.opt.FactsOnly = true
 	if err := f.finish(c, args); err != nil {
 		return err
 	}

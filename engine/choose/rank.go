@@ -107,10 +107,10 @@ func breakEven(list []Ranked) {
 
 func reasons(trials []trace.History, c Choice) []string {
 	first := c.Ranked[0]
-	out := []string{fmt.Sprintf("%d iterations, %s to the target, of which %s set-up", first.Iterations, took(first.Seconds), took(first.Setup))}
+	out := []string{fmt.Sprintf("%s, %s to the target, of which %s set-up", count(first.Iterations, "iteration"), took(first.Seconds), took(first.Setup))}
 	if len(c.Ranked) > 1 && c.Ranked[1].Reached {
 		second := c.Ranked[1]
-		out = append(out, fmt.Sprintf("next is %s with %d iterations and %s", second.Pairing, second.Iterations, took(second.Seconds)))
+		out = append(out, fmt.Sprintf("next is %s with %s and %s", second.Pairing, count(second.Iterations, "iteration"), took(second.Seconds)))
 	}
 	missed := 0
 	for _, r := range c.Ranked {
@@ -159,4 +159,12 @@ func took(s float64) string {
 		return fmt.Sprintf("%.3g ms", 1000*s)
 	}
 	return fmt.Sprintf("%.3g s", s)
+}
+
+// count prints a number of things.
+func count(n int, thing string) string {
+	if n == 1 {
+		return "1 " + thing
+	}
+	return fmt.Sprintf("%d %ss", n, thing)
 }

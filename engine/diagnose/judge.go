@@ -1,6 +1,7 @@
 package diagnose
 
 import (
+	"cmp"
 	"slices"
 
 	"dwindle/engine/inspect"
@@ -33,25 +34,32 @@ var Catalogue = []Rule{
 }
 
 // Judge applies every rule and returns the findings, the most important
-// first: by weight, then by certainty, then in the order of the catalogue.
+// first: by weight, then what a rule says first before what it says again of
+// another trial, then by certainty, then in the order of the catalogue.
 func Judge(c Case) []Finding {
 	if c.Facts == nil {
 		return nil
 	}
-	var all []Finding
+	type told struct {
+		Finding
+		again int // how many findings of its rule come before it
+	}
+	var all []told
 	for _, r := range Catalogue {
-		for _, f := range r.Judge(c) {
+		for k, f := range r.Judge(c) {
 			f.Rule = r.Name
-			all = append(all, f)
+			all = append(all, told{f, k})
 		}
 	}
-	slices.SortStableFunc(all, func(a, b Finding) int {
-		if d := weightOrder(a.Weight) - weightOrder(b.Weight); d != 0 {
-			return d
-		}
-		return certaintyOrder(a.Certainty) - certaintyOrder(b.Certainty)
+	slices.SortStableFunc(all, func(a, b told) int {
+		return cmp.Or(weightOrder(a.Weight)-weightOrder(b.Weight), a.again-b.again,
+			certaintyOrder(a.Certainty)-certaintyOrder(b.Certainty))
 	})
-	return all
+	out := make([]Finding, len(all))
+	for i, f := range all {
+		out[i] = f.Finding
+	}
+	return out
 }
 
 func weightOrder(w Weight) int { return slices.Index([]Weight{Blocker, Drag, Note}, w) }

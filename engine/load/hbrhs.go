@@ -40,8 +40,8 @@ func (h *hbHeader) readRHSHeader(l *lines) error {
 		switch c := kind[k+1]; {
 		case c == byte(letter):
 			h.rhs.blocks++
-		case c != ' ':
-			return l.fail("the type of the right-hand sides is %s; %c or a blank is wanted in column %d", quoted([]byte(kind[:3])), letter, k+2)
+		case c != ' ' && c != 'N': // some writers say no by N
+			return l.fail("the type of the right-hand sides is %s; %c, N or a blank is wanted in column %d", quoted([]byte(kind[:3])), letter, k+2)
 		}
 	}
 	return nil

@@ -23,6 +23,7 @@ func allFacts(f *inspect.Facts) []named {
 		{"symmetric", f.Symmetric},
 		{"pattern_symmetric", f.PatternSymmetric},
 		{"positive_definite", f.PositiveDefinite},
+		{"semidefinite", f.Semidefinite},
 		{"negative_definite", f.NegativeDefinite},
 		{"singular", f.Singular},
 		{"components", components(f)},

@@ -64,14 +64,15 @@ func headItems(d Document) []item {
 		{"TODAY", todayText(d), 6},
 	}
 	label := "WHY"
-	for i, f := range leading(d.Findings) {
+	why := leading(d.Findings)
+	for i, f := range why {
 		if i == maxWhy {
 			break
 		}
 		items = append(items, item{label, findingText(f), 1 + 3*min(i, 1)})
 		label = ""
 	}
-	if len(d.Findings) == 0 {
+	if len(why) == 0 {
 		items = append(items, item{label, "no finding: nothing was seen that slows or spoils a solve", 4})
 	}
 	return append(items,
@@ -82,12 +83,12 @@ func headItems(d Document) []item {
 }
 
 // leading returns the findings with blockers first and notes last, otherwise
-// in the order given.
+// in the order given. That b is not the user's is told on other lines.
 func leading(fs []diagnose.Finding) []diagnose.Finding {
 	var out []diagnose.Finding
 	for _, w := range []diagnose.Weight{diagnose.Blocker, diagnose.Drag, diagnose.Note} {
 		for _, f := range fs {
-			if f.Weight == w {
+			if f.Weight == w && f.Rule != "not-your-rhs" {
 				out = append(out, f)
 			}
 		}

@@ -56,9 +56,11 @@ type audit struct {
 	normal   float64 // ‖Aᵀr‖₂/(‖A‖_F‖r‖₂); NaN where not asked
 }
 
-// audit measures b−Ax in the user's own units and ordering.
+// audit measures b−Ax in the user's own units and ordering. What it uses of
+// the preconditioner is not counted.
 func (t *Trial) audit(normal bool) audit {
-	s := t.scratch
+	s, uses := t.scratch, t.m.uses
+	defer func() { t.m.uses = uses }()
 	t.iterate(s.x)
 	var a audit
 	a.true2 = linear.Residual(s.r, t.sys.A, s.x, t.sys.B)

@@ -209,6 +209,18 @@ func TestMemoryIsKnownBeforeStart(t *testing.T) {
 	}
 }
 
+// One product and, after the first, one preconditioner use an iteration: the
+// uses of audits are not counted.
+func TestAuditsAreNotCounted(t *testing.T) {
+	for pairing, most := range map[string]int{"gmres:30+jacobi": 2, "minres+jacobi": 2, "cg+jacobi": 2} {
+		h := finish(t, sample(t, "plate:30"), limits(1e-8, 1000), nil, pairing)[0]
+		restarts := h.Iterations / 30
+		if extra := h.PrecondUses - h.Iterations; extra < 0 || extra > most+restarts {
+			t.Errorf("%s: %d preconditioner uses in %d iterations", pairing, h.PrecondUses, h.Iterations)
+		}
+	}
+}
+
 func TestHoldResumeCancelDrop(t *testing.T) {
 	s := sample(t, "plate:150")
 	b := NewBench(s, limits(1e-300, 1<<30), 0, nil)
