@@ -10,8 +10,6 @@ import (
 	"testing"
 	"time"
 
-	tea "github.com/charmbracelet/bubbletea"
-
 	"dwindle/engine/trace"
 )
 
@@ -96,58 +94,6 @@ func TestPoint03SignsAreSpelled(t *testing.T) {
 	sound(t, m, "signs")
 	if want := "cond(M^-1A) >= 8.3e5 - ||b-Ax||_2 -> inf, lambda_12 ~ -2*10^-10..."; !strings.Contains(m.View(), want) {
 		t.Errorf("not spelled out:\n%s", m.View())
-	}
-}
-
-// Point 9: several keys of one read, pasted text, the escape key.
-func TestPoint09Keys(t *testing.T) {
-	m := screenOf(newFake(8, still(12.3)), 80, 24, "dot")
-	press(m, "jjj")
-	if m.trials.picked != 4 {
-		t.Errorf("jjj picks %d, want 4", m.trials.picked)
-	}
-	m.Update(tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune("qyd"), Paste: true})
-	if m.question != nil {
-		t.Error("pasted text asked a question")
-	}
-	press(m, "n", "/")
-	m.Update(tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune("cg+x"), Paste: true})
-	if p := m.top().entry(); p == nil || p.text != "cg+x" {
-		t.Error("pasted text did not reach the line being typed")
-	}
-	if quits(press(m, "esc", "esc", "esc", "esc")) || m.over != nil {
-		t.Error("esc quit, or did not close")
-	}
-}
-
-// Point 9: torn escape sequences, in every way a read can tear them.
-func TestPoint09Torn(t *testing.T) {
-	runes := func(s string) tea.KeyMsg { return tea.KeyMsg{Type: tea.KeyRunes, Runes: []rune(s)} }
-	esc := tea.KeyMsg{Type: tea.KeyEsc}
-	for name, msgs := range map[string][]tea.KeyMsg{
-		"esc, [B":    {esc, runes("[B")},
-		"esc, [, B":  {esc, runes("["), runes("B")},
-		"esc [, B":   {{Type: tea.KeyRunes, Runes: []rune("["), Alt: true}, runes("B")},
-		"esc, OB":    {esc, runes("OB")},
-		"esc, [1;5B": {esc, runes("[1;5B")},
-		"esc, [Bx":   {esc, runes("[Bx")},
-	} {
-		m := screenOf(newFake(8, still(12.3)), 80, 24, "dot")
-		press(m, "?")
-		m.View()
-		for _, k := range msgs {
-			m.Update(k)
-		}
-		if _, open := m.over.(*helpView); !open {
-			t.Errorf("%s closed the help", name)
-		}
-		if name != "esc, [1;5B" && m.over.(*helpView).first != 1 {
-			t.Errorf("%s did not move down", name)
-		}
-		m.Update(escaped{m.esc.id})
-		if m.over == nil {
-			t.Errorf("%s closed the help later", name)
-		}
 	}
 }
 
@@ -294,101 +240,5 @@ func TestPoint13Extremes(t *testing.T) {
 	}
 	if !strings.Contains(m.View(), "Ritz cond") {
 		t.Error("the condition number does not name its source")
-	}
-}
-
-// Point 14: names with escapes, line ends, tabs and wide signs.
-func TestPoint14Names(t *testing.T) {
-	f := newFake(8, still(12.3))
-	evil := "a\x1b[31mb\n\tc\x07\u202e水門\ufe0f\u0301.mtx\xff"
-	f.scripts[0].pairing = evil
-	f.findings[0].Claim, f.findings[0].Subject = evil+evil, evil
-	for _, g := range glyphNames {
-		m := screenOf(named14{f, evil}, 80, 24, g)
-		sound(t, m, "evil "+g)
-		if v := m.View(); strings.ContainsAny(v, "\x07\t\u202e") || strings.Contains(v, "\x1b") || !strings.Contains(v, "ab c") {
-			t.Errorf("%s: not cleaned: %q", g, v)
-		}
-		for i, line := range strings.Split(m.View(), "\n") {
-			if strings.HasPrefix(line, ">  1") && width(line) > 0 && !strings.HasSuffix(line, "~ running") {
-				t.Errorf("%s: line %d broke its columns: %q", g, i, line)
-			}
-		}
-	}
-}
-
-// named14 gives the system another name.
-type named14 struct {
-	*fake
-	name string
-}
-
-// Point 15: numbers that change width or that are none.
-func TestPoint15Numbers(t *testing.T) {
-	for _, c := range []struct {
-		v    float64
-		want string
-	}{{0, "0"}, {math.Copysign(0, -1), "0"}, {math.NaN(), "-"}, {math.Inf(1), "-"}, {math.Inf(-1), "-"}, {1e-8, "1.0e-08"},
-		{9.96e-9, "1.0e-08"}, {1e-102, "1e-102"}, {-2.5e3, "-2.5e+03"}, {5e-324, "5e-324"}} {
-		if got := sci(c.v); got != c.want {
-			t.Errorf("sci(%v) = %q, want %q", c.v, got, c.want)
-		}
-	}
-	for v, want := range map[float64]string{0.0123: "0.0123", 0.99996: "1.000", 9.9996: "10.00", 12.345: "12.35", 99.996: "100.0", 1234.4: "1234", math.NaN(): "-"} {
-		if got := seconds(v); got != want {
-			t.Errorf("seconds(%v) = %q, want %q", v, got, want)
-		}
-	}
-	if power(1e-8) != "1e-08" || power(3.2e-7) != "3.2e-07" {
-		t.Error("tolerances change their form")
-	}
-	if count(1390112) != "1 390 112" || count(-1000) != "-1 000" || compact(1390112) != "1.39M" {
-		t.Error("counts lost their form")
-	}
-}
-
-// Point 16: something drawn before the size is known.
-func TestPoint16NoSize(t *testing.T) {
-	m := newModel(Config{}, newFake(8, still(1)))
-	m.look()
-	if m.View() != "" {
-		t.Error("drawn without a size")
-	}
-}
-
-// Point 17: a stop, a drop or an end without a question; a try before enter.
-func TestPoint17Asks(t *testing.T) {
-	f := newFake(8, still(6))
-	m := screenOf(f, 80, 24, "dot")
-	press(m, "4", "s")
-	if m.question == nil || len(f.calls) > 0 || !strings.Contains(m.View(), "stop trial 4") {
-		t.Fatal("s did not ask")
-	}
-	press(m, "j", "enter", " ")
-	if len(f.calls) > 0 {
-		t.Fatal("another key answered the question")
-	}
-	press(m, "n")
-	press(m, "d", "esc")
-	if quits(press(m, "q")) || len(f.calls) > 0 {
-		t.Fatalf("not asked: %v", f.calls)
-	}
-	press(m, "n", "a", "down")
-	if len(f.calls) > 0 {
-		t.Fatal("a try started before enter")
-	}
-	press(m, "enter")
-	if want := []string{"add gmres:60+ilu:0"}; !slices.Equal(f.calls, want) {
-		t.Fatalf("enter did %v, want %v", f.calls, want)
-	}
-	if m.trials.picked != 9 {
-		t.Error("the new trial is not picked")
-	}
-	press(m, "4", "s", "y", "5", "d", "y")
-	if want := []string{"add gmres:60+ilu:0", "cancel 4", "drop 5"}; !slices.Equal(f.calls, want) {
-		t.Fatalf("yes did %v, want %v", f.calls, want)
-	}
-	if !quits(press(m, "q", "y")) {
-		t.Error("q and y do not quit")
 	}
 }
