@@ -18,7 +18,6 @@ type job struct {
 	m             *CSR
 	part          []float64 // sums, one or two a block
 	shares        []share   // one a thread
-	down          bool      // take the blocks from the last to the first
 	failed        atomic.Pointer[any]
 }
 
@@ -26,9 +25,9 @@ type job struct {
 // done. It fills a cache line, so that threads at work do not disturb each
 // other.
 type share struct {
-	taken       atomic.Int64 // blocks taken so far
-	first, last int64        // blocks first to last−1
-	_           [40]byte
+	next atomic.Int64 // the first block not yet taken
+	end  int64
+	_    [48]byte
 }
 
 // spare is the job to be used next.
@@ -90,31 +89,15 @@ func (j *job) release() {
 }
 
 // split gives each thread its part of the blocks: the same one in every
-// kernel, so that a vector's part stays in the cache of its thread. Jobs sweep
-// up and down in turns: each begins with what the last one left in the cache.
+// kernel, so that a vector's part stays in the cache of its thread.
 func (j *job) split(threads, blocks int) {
 	if len(j.shares) != threads {
 		j.shares = make([]share, threads)
 	}
 	for i := range j.shares {
-		s := &j.shares[i]
-		s.taken.Store(0)
-		s.first, s.last = int64(blocks*i/threads), int64(blocks*(i+1)/threads)
+		j.shares[i].next.Store(int64(blocks * i / threads))
+		j.shares[i].end = int64(blocks * (i + 1) / threads)
 	}
-	j.down = !j.down
-}
-
-// take returns the next chunk of blocks of the share, lo to hi; none is left
-// when lo ≥ hi.
-func (s *share) take(down bool) (lo, hi int64) {
-	if s.first+s.taken.Load() >= s.last {
-		return 0, 0
-	}
-	n := s.taken.Add(chunkBlocks)
-	if down {
-		return max(s.last-n, s.first), s.last - n + chunkBlocks
-	}
-	return s.first + n - chunkBlocks, min(s.first+n, s.last)
 }
 
 // work takes chunks of blocks, first of the thread's own share, then of the
@@ -128,10 +111,11 @@ func (j *job) work(thread int) {
 	}()
 	for i := range j.shares {
 		s := &j.shares[(thread+i)%len(j.shares)]
-		for lo, hi := s.take(j.down); lo < hi; lo, hi = s.take(j.down) {
-			for k := lo; k < hi; k++ {
-				first := int(k) * Block
-				j.kernel(j, first, min(first+Block, j.n), int(k))
+		for s.next.Load() < s.end {
+			first := s.next.Add(chunkBlocks) - chunkBlocks
+			for k := first; k < min(first+chunkBlocks, s.end); k++ {
+				lo := int(k) * Block
+				j.kernel(j, lo, min(lo+Block, j.n), int(k))
 			}
 		}
 	}
