@@ -31,10 +31,11 @@ func ceil125(v float64) float64 {
 }
 
 // unit is the value at which a logarithmic axis turns from linear to
-// logarithmic: one iteration, or a millisecond.
+// logarithmic: one iteration, or the power of ten of seconds three decades
+// below the top.
 func (s span) unit() float64 {
 	if s.fix == bySeconds {
-		return 1e-3
+		return math.Pow(10, math.Floor(math.Log10(s.top)+1e-9)-3)
 	}
 	return 1
 }

@@ -86,17 +86,27 @@ func (m *model) lead() []string {
 	}
 	head := fmt.Sprintf("%s %s: %s", m.findingMark(*f), m.subject(*f), m.signs.clean(f.Claim))
 	place := fmt.Sprintf("%d of %d", m.indexOf(f)+1, len(m.snap.Findings))
-	key := "tab: findings"
-	if c := m.snap.Choice.Pairing; c != "" {
-		key = "best so far: " + m.signs.clean(c)
-	}
-	if len(f.Try) > 0 {
-		key = "a: try " + m.signs.clean(f.Try[0])
-	}
 	return []string{
 		m.on.paint(inkOfWeight(f.Weight), ends(head, place, m.w)),
-		ends("  "+m.signs.clean(f.Advice), key, m.w),
+		ends("  "+m.signs.clean(f.Advice), m.leadKey(f), m.w),
 	}
+}
+
+// leadKey names the key that tries the leading finding's advice; where it
+// offers nothing new, which trial runs it, or what is best so far.
+func (m *model) leadKey(f *diagnose.Finding) string {
+	for _, pairing := range f.Try {
+		if m.numberOf(pairing) == 0 {
+			return "a: try " + m.signs.clean(pairing)
+		}
+	}
+	switch {
+	case len(f.Try) > 0:
+		return fmt.Sprintf("trial %d runs %s", m.numberOf(f.Try[0]), m.signs.clean(f.Try[0]))
+	case m.snap.Choice.Pairing != "":
+		return "best so far: " + m.signs.clean(m.snap.Choice.Pairing)
+	}
+	return "tab: findings"
 }
 
 // leadChoice says what is recommended when nothing was found wrong.

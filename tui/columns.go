@@ -58,6 +58,8 @@ func listingFor(w int) listing {
 	}
 	l := listing{name: 19, state: stateCells}
 	switch {
+	case w < 70:
+		l.name = 15
 	case w >= 160:
 		l.name = 34
 	case w >= 100:

@@ -85,7 +85,7 @@ func (m *model) conditionWords(h *trace.History) string {
 	if c.Settled {
 		settled = "settled"
 	}
-	return fmt.Sprintf("Ritz values %s .. %s: cond(%s) at least %s, %s",
+	return fmt.Sprintf("Ritz %s .. %s: cond(%s) >= %s, %s",
 		sci(c.Smallest), sci(c.Largest), m.signs.clean(c.Of), sci(c.Estimate), settled)
 }
 

@@ -201,7 +201,7 @@ func (m *model) ranking(ranked []choose.Ranked, w int) []string {
 			to = seconds(r.Seconds)
 		}
 		worth := ""
-		if r.BreakEven > 0 {
+		if r.BreakEven > 0 && w >= 100 {
 			worth = fmt.Sprintf("  best from %.0f sides", r.BreakEven)
 		}
 		lines = append(lines, clip(fmt.Sprintf("%4d %s%s%s%s%s%s", i+1, left(m.signs.clean(r.Pairing), name), right(to, 12),

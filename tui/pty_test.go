@@ -43,11 +43,28 @@ type terminal struct {
 // environment.
 func openTerminal(t *testing.T, w, h, pace int, mode string, env ...string) *terminal {
 	t.Helper()
-	x := &terminal{t: t, pace: pace, log: filepath.Join(t.TempDir(), "log"), ended: make(chan error, 1)}
+	log := filepath.Join(t.TempDir(), "log")
+	cmd := exec.Command(os.Args[0])
+	cmd.Env = append(env, childMode+"="+mode, childLog+"="+log)
+	x := onTerminal(t, w, h, pace, cmd)
+	x.log = log
+	return x
+}
+
+// openCommand starts a command on a terminal of w x h cells.
+func openCommand(t *testing.T, w, h, pace int, path string, args ...string) *terminal {
+	t.Helper()
+	cmd := exec.Command(path, args...)
+	cmd.Env = []string{"XDG_STATE_HOME=" + t.TempDir()}
+	return onTerminal(t, w, h, pace, cmd)
+}
+
+// onTerminal starts cmd on a terminal that takes pace bytes a second.
+func onTerminal(t *testing.T, w, h, pace int, cmd *exec.Cmd) *terminal {
+	t.Helper()
+	x := &terminal{t: t, pace: pace, cmd: cmd, ended: make(chan error, 1)}
 	x.open(w, h)
-	x.cmd = exec.Command(os.Args[0])
-	x.cmd.Env = append(cleanEnv(), "TERM=xterm-256color", "LANG=C.UTF-8", childMode+"="+mode, childLog+"="+x.log)
-	x.cmd.Env = append(x.cmd.Env, env...)
+	x.cmd.Env = append(append(cleanEnv(), "TERM=xterm-256color", "LANG=C.UTF-8"), cmd.Env...)
 	x.cmd.Stdin, x.cmd.Stdout, x.cmd.Stderr = x.slave, x.slave, x.slave
 	x.cmd.SysProcAttr = &syscall.SysProcAttr{Setsid: true, Setctty: true}
 	x.began = time.Now()
