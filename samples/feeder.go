@@ -5,7 +5,7 @@ import "dwindle/engine/linear"
 var feeder = Sample{
 	Name:  "feeder",
 	Title: "power feeder of the weir: a main cable with branches and ties",
-	Shows: "values over many decades from very short cables: cg crawls, any diagonal scaling repairs most of it",
+	Shows: "values over many decades from very short cables: cg crawls, diagonal scaling helps little, incomplete Cholesky repairs it",
 	Source: "nodal admittances of a direct-current network: conductance 1/length, the substation eliminated, " +
 		"loads as small conductances to earth; lengths invented, by a fixed generator",
 	Spectrum: "positive definite; largest eigenvalue at most twice the largest diagonal entry",
