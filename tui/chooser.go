@@ -11,7 +11,6 @@ type chooser struct {
 	all       []SampleInfo
 	at, first int
 	line      *prompt // a file or sample being typed
-	opening   bool
 }
 
 // newChooser returns the screen for these samples.

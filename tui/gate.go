@@ -126,7 +126,7 @@ func (g *gate) step() bool {
 	g.change.Broadcast()
 	g.mu.Unlock()
 	if call {
-		g.idle()
+		go g.idle() // it may wait for a program that waits for the terminal
 	}
 	return err == nil
 }

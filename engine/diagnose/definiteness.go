@@ -28,8 +28,8 @@ var lostDefiniteness = Rule{"negative-curvature", func(c Case) (out []Finding) {
 func curvature(f *inspect.Facts, h trace.History, e trace.Event) Finding {
 	rows, part := carriers(e.Rows)
 	g := Finding{Weight: Blocker, Certainty: inspect.Proved, Subject: h.Pairing,
-		Claim: fmt.Sprintf("A has a negative eigenvalue, at most %s: met at iteration %d, carried %.0f %% by %s",
-			num(e.Value), e.Iter, 100*part, list(rows, 6)),
+		Claim: fmt.Sprintf("A has a negative eigenvalue, at most %s, carried %.0f %% by %s (met at it %d)",
+			num(e.Value), 100*part, list(rows, 6), e.Iter),
 		Advice: "look at these rows for a wrong sign, a missing support or a load past its limit; until then minres applies, cg does not",
 		Try:    instead(f),
 		Evidence: []Evidence{
@@ -53,7 +53,7 @@ var notDefinite = Rule{"not-definite", func(c Case) []Finding {
 		return nil
 	}
 	g := Finding{Weight: Drag, Certainty: f.PositiveDefinite.Certainty, Subject: OnSystem,
-		Claim:  "A is symmetric with a positive diagonal, yet not positive definite: " + f.PositiveDefinite.Why,
+		Claim:  "A has a positive diagonal, yet is not positive definite: " + f.PositiveDefinite.Why,
 		Advice: "if it should be definite, look at the rows named; if not, use minres, and no ic or ssor",
 		Try:    instead(f),
 		Evidence: []Evidence{{Quantity: "value behind it", Value: f.PositiveDefinite.Value, Iteration: none,

@@ -79,9 +79,9 @@ var stagnation = Rule{"restart-stagnation", func(c Case) (out []Finding) {
 		last := cycles[len(cycles)-1]
 		prep, solver, m := cut(h.Pairing)
 		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("stands still at %s: each of its last %d cycles left more than %g of the residual; every restart throws away what the cycle had gathered",
+			Claim: fmt.Sprintf("stands still at %s: each of its last %d cycles left more than %g of the residual",
 				num(h.TrueResidual), run, flat),
-			Advice:   "a longer cycle, or a preconditioner",
+			Advice:   "every restart throws away what the cycle had gathered: a longer cycle, or a preconditioner",
 			Evidence: []Evidence{{Quantity: "factor of the last cycle", Value: last.Value, Iteration: int(last.Iter)}}}
 		if longer, ok := doubled(solver); ok {
 			f.Try = []string{prep + longer + "+" + m}
@@ -109,7 +109,7 @@ var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 			continue
 		}
 		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("at its accuracy floor: the true residual stays at %s while the method's own number falls to %s; tolerance %.0e is below what rounding allows this recurrence",
+			Claim: fmt.Sprintf("at its accuracy floor: the true residual stays at %s while its own number falls to %s; rounding allows it no %.0e",
 				num(h.BestTrue), num(h.Residual), c.Tol),
 			Advice: fmt.Sprintf("ask for no less than %.0e, or start again from this answer with a fresh residual", 2*h.BestTrue),
 			Evidence: []Evidence{{Quantity: "smallest true residual", Value: h.BestTrue, Iteration: h.Iterations},

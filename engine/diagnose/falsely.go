@@ -24,7 +24,7 @@ var falseConvergence = Rule{"false-convergence", func(c Case) (out []Finding) {
 				continue
 			}
 			f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-				Claim: fmt.Sprintf("a code that stops on its %s norm stops at iteration %d with %s; the true relative residual there is %s",
+				Claim: fmt.Sprintf("its own number (%s norm) meets the target at it %d with %s; the true relative residual there is %s",
 					h.Norm, e.Iter, num(e.Scale), num(e.Value)),
 				Advice: fmt.Sprintf("test ||b-Ax||/||b||, or ask for %.0e in this norm", c.Tol*c.Tol/e.Value),
 				Evidence: []Evidence{

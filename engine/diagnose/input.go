@@ -48,6 +48,6 @@ var defaultRHS = Rule{"not-your-rhs", func(c Case) []Finding {
 		return nil
 	}
 	return []Finding{{Weight: Note, Certainty: inspect.Proved, Subject: OnSystem,
-		Claim:  fmt.Sprintf("the right-hand side is %s, not yours: counts on your own b may differ several-fold", c.Facts.RHS),
+		Claim:  fmt.Sprintf("b is %s, not yours: counts on your own b may differ several-fold", c.Facts.RHS),
 		Advice: "give it: --rhs FILE"}}
 }}

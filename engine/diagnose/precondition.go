@@ -61,10 +61,10 @@ var pivots = Rule{"pivot", func(c Case) (out []Finding) {
 		b := h.Notes.Broke[0]
 		_, solver, m := cut(h.Pairing)
 		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim:    fmt.Sprintf("%s broke down in %s with pivot %s", m, name(b.Row), num(b.Value)),
+			Claim:    fmt.Sprintf("%s breaks down in %s with pivot %s", m, name(b.Row), num(b.Value)),
 			Evidence: []Evidence{{Quantity: "pivot", Value: b.Value, Iteration: none, Rows: []int{b.Row}}}}
 		if h.Notes.Shift > 0 {
-			f.Claim += fmt.Sprintf("; it stands with A + %s diag(A), the smallest shift found in %d attempts",
+			f.Claim += fmt.Sprintf("; it stands with A + %s diag(A), found in %d attempts",
 				num(h.Notes.Shift), len(h.Notes.Broke)+1)
 			f.Advice = "a positive definite A can do this: keep the shift, or use jacobi or ssor"
 			f.Evidence = append(f.Evidence, number("shift", h.Notes.Shift, "of the diagonal"))
@@ -98,8 +98,8 @@ var costly = Rule{"preconditioner-costs-more", func(c Case) (out []Finding) {
 			continue
 		}
 		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("%s takes %s (set-up %s) where %s without it takes %s: %d iterations instead of %d do not pay for it",
-				m, seconds(with), seconds(h.SetupTime.Seconds()), solver, seconds(without), h.Iterations, plain.Iterations),
+			Claim: fmt.Sprintf("%s costs more than it saves: %s (set-up %s) for %d its, %s alone %s for %d",
+				m, seconds(with), seconds(h.SetupTime.Seconds()), h.Iterations, solver, seconds(without), plain.Iterations),
 			Advice: "leave it out for one right-hand side",
 			Try:    []string{plain.Pairing},
 			Evidence: []Evidence{number("own time", with, "s"), number("own time without", without, "s"),

@@ -28,7 +28,7 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 		try = []string{"scale/minres+none"}
 	}
 	return []Finding{{Weight: Drag, Certainty: inspect.Measured, Subject: OnSystem,
-		Claim: fmt.Sprintf("rows differ in size by %s (%s smallest, %s largest): a norm over all of them hides the small ones, and scaling alone can make the condition",
+		Claim: fmt.Sprintf("rows differ in size by %s (%s to %s): a norm over all of them hides the small ones",
 			num(span.Max/span.Min), name(rows[0]), name(rows[1])),
 		Advice:   "scale the system, or use jacobi at the least",
 		Try:      try,
@@ -56,11 +56,11 @@ var singletons = Rule{"singleton-rows", func(c Case) []Finding {
 			number("smallest eigenvalue of the rest at least", low, ""), number("largest eigenvalue of the rest at most", high, "")}}
 	switch {
 	case low > apart*f.SingletonDiag.Min:
-		g.Claim = fmt.Sprintf("%d decoupled rows with diagonal %s lie below the rest, whose eigenvalues start at %s or above (%s): they alone raise the condition by %s or more",
+		g.Claim = fmt.Sprintf("%d decoupled rows (diagonal %s) lie below the rest, which starts at %s or above (%s): they raise the condition %s-fold or more",
 			f.Singletons, num(f.SingletonDiag.Min), num(low), how, num(low/f.SingletonDiag.Min))
 	case f.SingletonDiag.Max > apart*high:
 		g.Certainty = inspect.Proved
-		g.Claim = fmt.Sprintf("%d decoupled rows with diagonal %s lie above the rest, whose eigenvalues end at %s or below (Gershgorin): they alone raise the condition by %s or more",
+		g.Claim = fmt.Sprintf("%d decoupled rows (diagonal %s) lie above the rest, which ends at %s or below (Gershgorin): they raise the condition %s-fold or more",
 			f.Singletons, num(f.SingletonDiag.Max), num(high), num(f.SingletonDiag.Max/high))
 	default:
 		return nil
