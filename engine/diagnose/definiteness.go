@@ -8,12 +8,16 @@ import (
 )
 
 // lostDefiniteness: a direction of negative curvature was met, and its
-// Rayleigh quotient lies below its rounding bound.
+// Rayleigh quotient lies below its rounding bound. Silent where the facts have
+// told the same before the trial.
 var lostDefiniteness = Rule{"negative-curvature", func(c Case) (out []Finding) {
 	if c.Facts.NegativeDefinite.Answer == inspect.Yes {
 		return nil
 	}
 	for _, h := range c.Trials {
+		if told, ok := assumption(c.Facts, h); ok && told.Certainty == inspect.Proved {
+			continue
+		}
 		for _, e := range events(h, trace.NegativeCurvature) {
 			if !e.Proved() {
 				continue
@@ -45,12 +49,17 @@ func curvature(f *inspect.Facts, h trace.History, e trace.Event) Finding {
 }
 
 // notDefinite: a symmetric A whose diagonal is positive is not positive
-// definite all the same.
+// definite all the same. Silent where a trial was told so.
 var notDefinite = Rule{"not-definite", func(c Case) []Finding {
 	f := c.Facts
 	if f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer != inspect.No || semidefinite(f) ||
 		f.DiagNegative+f.DiagZero+f.DiagMissing > 0 {
 		return nil
+	}
+	for _, h := range c.Trials {
+		if _, ok := assumption(f, h); ok {
+			return nil
+		}
 	}
 	g := Finding{Weight: Drag, Certainty: f.PositiveDefinite.Certainty, Subject: OnSystem,
 		Claim:  "A has a positive diagonal, yet is not positive definite: " + f.PositiveDefinite.Why,
