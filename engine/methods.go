@@ -60,7 +60,7 @@ func params(list []linear.Param) []Param {
 }
 
 func needs(h linear.Has) string {
-	return words(uint8(h), []string{"entries", "nonzero diagonal", "transpose"})
+	return words(uint8(h), []string{"entries", "nonzero diagonal", "transpose", "transpose of M"})
 }
 
 func assumes(a linear.Assume) string {

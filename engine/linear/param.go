@@ -17,6 +17,7 @@ const (
 	NeedsEntries   Has = 1 << iota // the matrix entries, not only products
 	NeedsDiagonal                  // the diagonal, every entry nonzero
 	NeedsTranspose                 // Aᵀ x
+	NeedsTransposeM                // M⁻ᵀ x
 )
 
 // Assume is what a method's theory takes for granted. A pairing is run all

@@ -20,6 +20,7 @@ type Entry struct {
 	Fixed       bool          // one linear operator; false: only flexible solvers may use it
 	Symmetric   bool          // M is symmetric if A is
 	Exact       bool          // a direct solve
+	Transposes  bool          // what Build returns is a linear.Transposer: M⁻ᵀ x
 	// Estimate returns the memory M takes before anything is allocated, and
 	// whether that is exact or an upper estimate.
 	Estimate func(a *linear.CSR, v linear.Values) (bytes int64, exact bool)

@@ -43,6 +43,12 @@ func (m Method) Refuse(h Have) string {
 	if why := lacking(m.Solver.Name, m.Solver.Needs, h); why != "" {
 		return why
 	}
+	if m.Solver.Needs&linear.NeedsTransposeM != 0 && m.Precond.Name != "none" && !m.Precond.Transposes {
+		return m.Solver.Name + " needs products with the transpose of M; " + m.Precond.Name + " has none"
+	}
+	if m.Solver.Assumes&linear.AssumesFixedM != 0 && !m.Precond.Fixed {
+		return m.Precond.Name + " changes from step to step: only flexible methods may use it"
+	}
 	return lacking(m.Precond.Name, m.Precond.Needs, h)
 }
 
