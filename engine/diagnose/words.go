@@ -2,7 +2,6 @@ package diagnose
 
 import (
 	"fmt"
-	"math"
 	"strings"
 
 	"dwindle/engine/trace"
@@ -63,20 +62,13 @@ func seconds(s float64) string {
 	return fmt.Sprintf("%.3g s", s)
 }
 
-// ratio is a/b, NaN where it says nothing.
-func ratio(a, b float64) float64 {
-	if b == 0 {
-		return math.NaN()
-	}
-	return a / b
-}
-
 // solved says whether a trial ended with an answer.
 func solved(h trace.History) bool {
 	return h.Stop == trace.Converged || h.Stop == trace.LeastSquares
 }
 
-// solver and precond cut a canonical pairing.
+// cut takes a canonical pairing apart: preparations with their slash, solver,
+// preconditioner.
 func cut(pairing string) (prep, solver, precond string) {
 	rest := pairing
 	if i := strings.IndexByte(rest, '/'); i >= 0 {

@@ -14,10 +14,10 @@ type Has uint8
 
 // The abilities a method can need.
 const (
-	NeedsEntries   Has = 1 << iota // the matrix entries, not only products
-	NeedsDiagonal                  // the diagonal, every entry nonzero
-	NeedsTranspose                 // Aᵀ x
-	NeedsTransposeM                // M⁻ᵀ x
+	NeedsEntries    Has = 1 << iota // the matrix entries, not only products
+	NeedsDiagonal                   // the diagonal, every entry nonzero
+	NeedsTranspose                  // Aᵀ x
+	NeedsTransposeM                 // M⁻ᵀ x
 )
 
 // Assume is what a method's theory takes for granted. A pairing is run all
