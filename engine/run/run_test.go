@@ -7,6 +7,7 @@ import (
 	"testing"
 	"time"
 
+	"dwindle/engine/krylov"
 	"dwindle/engine/linear"
 	"dwindle/engine/trace"
 	"dwindle/samples"
@@ -206,6 +207,44 @@ func TestMemoryIsKnownBeforeStart(t *testing.T) {
 	}
 	if h := b.Add(big).History(); h.Stop != trace.Refused || !strings.Contains(h.Reason, "limit") {
 		t.Errorf("gmres:300 of %d bytes: %s %q", h.MemoryBytes, h.Stop, h.Reason)
+	}
+}
+
+// faulty is a solver that panics in its third step.
+type faulty struct{ steps, n int }
+
+func (f *faulty) Begin(p krylov.Problem) (trace.Reading, error) {
+	f.n = len(p.B)
+	return trace.Reading{Residual: 1, Alpha: math.NaN(), Beta: math.NaN()}, nil
+}
+
+func (f *faulty) Step() (trace.Reading, error) {
+	if f.steps++; f.steps == 3 {
+		panic("index out of range")
+	}
+	return trace.Reading{Residual: 1, Alpha: math.NaN(), Beta: math.NaN()}, nil
+}
+
+func (f *faulty) Solution(dst []float64) { clear(dst) }
+
+func TestPanicOfASolverEndsItsTrialAlone(t *testing.T) {
+	s := sample(t, "plate:20")
+	good, _ := Parse("cg+none")
+	bad := good
+	bad.Name = "faulty+none"
+	bad.Solver.Lanczos = false
+	bad.Solver.New = func(linear.Values) krylov.Solver { return &faulty{} }
+	b := NewBench(s, limits(1e-8, 1000), 0, nil)
+	ctx, cancel := context.WithCancel(context.Background())
+	defer cancel()
+	failed, fine := b.Add(bad), b.Add(good)
+	go b.Run(ctx)
+	b.WaitEnded(ctx)
+	if h := failed.History(); h.Stop != trace.Failed || !strings.Contains(h.Reason, "index out of range") {
+		t.Errorf("a panicking solver ends %s (%s)", h.Stop, h.Reason)
+	}
+	if h := fine.History(); h.Stop != trace.Converged {
+		t.Errorf("its neighbour ends %s (%s)", h.Stop, h.Reason)
 	}
 }
 
