@@ -149,6 +149,21 @@ func TestConditionEstimatesOnOpenMatrices(t *testing.T) {
 	}
 }
 
+// Condition of the incomplete Cholesky-preconditioned 5-point matrix, dense
+// eigenvalues in float64 (check values of the project): the live estimate at
+// tol 1e-12 is within half a per cent and never above.
+func TestLiveConditionOfIncompleteCholesky(t *testing.T) {
+	for spec, want := range map[string]float64{"sample:plate:8": 3.6837, "sample:plate:16": 11.1445, "sample:plate:32": 39.8108} {
+		for _, rhs := range []string{"ones", "made"} {
+			got := only(t, ended(t, spec, Options{Pairs: []string{"cg+ic:0"}, Tol: 1e-12, RHS: rhs})).Condition.Estimate
+			t.Logf("%s %s: %.6g of %g", spec, rhs, got, want)
+			if !(got >= 0.995*want) || got > want*(1+2e-5) {
+				t.Errorf("%s, b %s: condition estimate %g, want within 0.5 %% below %g", spec, rhs, got, want)
+			}
+		}
+	}
+}
+
 // hangGlider_2 is a saddle system; most of its diagonal is zero.
 func TestHangGliderIsToldIndefinite(t *testing.T) {
 	v := ended(t, openFile(t, "hangGlider_2.mtx"), Options{Pairs: []string{"cg+none"}, Tol: 1e-6, Iterations: 2000})

@@ -4,7 +4,6 @@ import (
 	"context"
 	"fmt"
 	"math"
-	"runtime/debug"
 	"sync"
 	"time"
 
@@ -99,7 +98,7 @@ func newTrial(id int, m Method, s linear.System, z sizes, l Limits, clock Clock,
 // guard turns a panic of a method into a failed trial.
 func (t *Trial) guard() {
 	if p := recover(); p != nil {
-		t.end(trace.Failed, fmt.Sprintf("internal fault: %v\n%s", p, debug.Stack()))
+		t.end(trace.Failed, fmt.Sprintf("internal fault: %v", p))
 	}
 }
 
