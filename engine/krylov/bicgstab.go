@@ -25,10 +25,7 @@ var bicgstabEntry = Entry{
 //	s = r − α v,           t = A M⁻¹s,   ω = tᵀs / tᵀt
 //	x += α M⁻¹p + ω M⁻¹s,  r = s − ω t,  β = (r̂ᵀr_new / r̂ᵀr) (α/ω)
 //
-// Its α and β are those of BiCG. A denominator counts as vanished only when it
-// is beyond any use: within u² of the product of the norms it is made of. One
-// that is merely rounding (within u) is divided by all the same, as codes do:
-// x and r stay consistent, and the iteration often recovers.
+// Its α and β are those of BiCG.
 type bicgstab struct {
 	core
 	r, shadow, p, v, t []float64 // length n; s lies in r
@@ -58,13 +55,13 @@ func (s *bicgstab) Begin(p Problem) (trace.Reading, error) {
 
 func (s *bicgstab) Step() (trace.Reading, error) {
 	s.next()
-	if c := cosine(s.rho, s.shadowNorm, s.last); s.lost(c) {
+	if c := cosine(s.rho, s.shadowNorm, s.last); lost(c) {
 		return s.vanished("rho", c)
 	}
 	linear.Recur(s.p, s.r, s.beta, s.v, -s.beta*s.omega)
 	s.apply(s.v, s.ph, s.p) // the first product
 	rv, vv := linear.Dot2(s.v, s.shadow, s.v)
-	if c := cosine(rv, s.shadowNorm, root(vv, s.v)); s.lost(c) {
+	if c := cosine(rv, s.shadowNorm, root(vv, s.v)); lost(c) {
 		return s.vanished("rhat'v", c)
 	}
 	alpha := s.rho / rv
@@ -73,12 +70,12 @@ func (s *bicgstab) Step() (trace.Reading, error) {
 	switch {
 	case !finite(alpha) || !finite(half):
 		return s.overflow("alpha", alpha)
-	case half <= 4*unit*s.peak && half <= 1e-8*s.last:
+	case settled(half, s.last, s.peak):
 		return s.halfStep(alpha, half)
 	}
 	s.apply(s.t, s.sh, s.r) // the second product
 	ts, tt := linear.Dot2(s.t, s.r, s.t)
-	if c := cosine(ts, root(tt, s.t), half); s.lost(c) {
+	if c := cosine(ts, root(tt, s.t), half); lost(c) {
 		linear.Axpy(alpha, s.ph, s.x)
 		s.last = half
 		return s.vanished("omega", c)
@@ -114,20 +111,6 @@ func (s *bicgstab) halfStep(alpha, half float64) (trace.Reading, error) {
 	s.event(trace.HalfStep, "|s|/|r0|", half/s.first)
 	s.last = half
 	return s.reading(alpha, math.NaN(), true), nil
-}
-
-// lost says whether a cosine is zero for every purpose, or undefined.
-func (s *bicgstab) lost(c float64) bool { return !(math.Abs(c) > unit*unit) || !finite(c) }
-
-// vanished ends the trial: the cosine of a denominator is zero or undefined.
-func (s *bicgstab) vanished(quantity string, c float64) (trace.Reading, error) {
-	if !finite(c) {
-		return s.overflow(quantity, c)
-	}
-	if s.last <= exact*s.first {
-		return s.ended()
-	}
-	return s.broken(quantity, c)
 }
 
 func (s *bicgstab) Solution(dst []float64) { copy(dst, s.x) }

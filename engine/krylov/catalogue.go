@@ -5,6 +5,7 @@ var Catalogue = []Entry{
 	sdEntry,
 	cgEntry,
 	minresEntry,
+	bicgEntry,
 	bicgstabEntry,
 	gmresEntry,
 }
