@@ -91,6 +91,9 @@ type Identity struct{}
 // Apply computes dst = x.
 func (Identity) Apply(dst, x []float64) { copy(dst, x) }
 
+// ApplyT computes dst = x.
+func (Identity) ApplyT(dst, x []float64) { copy(dst, x) }
+
 // ApplyDot computes dst = x and returns xᵀ x.
 func (Identity) ApplyDot(dst, x []float64) float64 {
 	copy(dst, x)

@@ -4,9 +4,14 @@ package precond
 var Catalogue = []Entry{
 	noneEntry,
 	jacobiEntry,
+	gsEntry,
+	sorEntry,
+	sgsEntry,
 	ssorEntry,
 	icEntry,
 	iluEntry,
+	givenEntry,
+	ownFactorsEntry,
 }
 
 // Lookup returns the preconditioner of that name.

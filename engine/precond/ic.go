@@ -15,7 +15,7 @@ var icEntry = Entry{
 	Needs:     linear.NeedsEntries | linear.NeedsDiagonal,
 	Assumes:   linear.AssumesSymmetric | linear.AssumesDefinite,
 	Fixed:     true,
-	Symmetric: true,
+	Symmetric: true, Transposes: true,
 	Estimate: func(a *linear.CSR, _ linear.Values) (int64, bool) {
 		if a == nil {
 			return 0, false

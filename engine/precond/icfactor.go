@@ -84,7 +84,7 @@ func (k *icWork) row(i int, alpha float64) bool {
 // finish turns the last factorisation into a preconditioner that streams both
 // triangles by rows.
 func (k *icWork) finish() *factors {
-	f := &factors{lower: k.l, upper: k.l.Transpose(), inverse: k.w}
+	f := &factors{lower: k.l, upper: k.l.Transpose(), inverse: k.w, self: true}
 	for i, d := range k.pivots {
 		f.inverse[i] = 1 / d
 	}

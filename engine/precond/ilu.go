@@ -15,7 +15,7 @@ var iluEntry = Entry{
 		Meaning: "fill level: 0 keeps the pattern of A"}},
 	Needs:     linear.NeedsEntries,
 	Fixed:     true,
-	Symmetric: true,
+	Symmetric: true, Transposes: true,
 	Estimate: func(a *linear.CSR, _ linear.Values) (int64, bool) {
 		if a == nil {
 			return 0, false

@@ -14,7 +14,7 @@ var jacobiEntry = Entry{
 	Source:    "Saad, Iterative Methods for Sparse Linear Systems, 2nd ed. (2003), section 10.2; Jacobi, Astron. Nachr. 22 (1845)",
 	Needs:     linear.NeedsDiagonal,
 	Fixed:     true,
-	Symmetric: true,
+	Symmetric: true, Transposes: true,
 	Estimate: func(a *linear.CSR, _ linear.Values) (int64, bool) {
 		if a == nil {
 			return 0, false
@@ -34,6 +34,9 @@ func (j *jacobi) Apply(dst, x []float64) { linear.MulDot(dst, j.inverse, x) }
 
 // ApplyDot computes dst = M⁻¹ x and returns xᵀ dst.
 func (j *jacobi) ApplyDot(dst, x []float64) float64 { return linear.MulDot(dst, j.inverse, x) }
+
+// ApplyT computes dst = M⁻ᵀ x, which is M⁻¹ x.
+func (j *jacobi) ApplyT(dst, x []float64) { j.Apply(dst, x) }
 
 func buildJacobi(_ context.Context, s linear.System, _ linear.Values, _ func(float64)) (linear.Applier, trace.BuildNotes, error) {
 	n := s.N()

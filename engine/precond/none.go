@@ -11,9 +11,9 @@ var noneEntry = Entry{
 	Name: "none", Title: "no preconditioner",
 	Source:    "M = I",
 	Fixed:     true,
-	Symmetric: true,
-	Estimate:  func(*linear.CSR, linear.Values) (int64, bool) { return 0, true },
-	Build:     buildNone,
+	Symmetric: true, Transposes: true,
+	Estimate: func(*linear.CSR, linear.Values) (int64, bool) { return 0, true },
+	Build:    buildNone,
 }
 
 // buildNone returns the identity.

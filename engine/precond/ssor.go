@@ -2,7 +2,6 @@ package precond
 
 import (
 	"context"
-	"math"
 
 	"dwindle/engine/linear"
 	"dwindle/engine/trace"
@@ -15,7 +14,7 @@ var ssorEntry = Entry{
 		Min: 1e-6, Max: 1.999999, Meaning: "relaxation, above 0 and below 2"}},
 	Needs:     linear.NeedsEntries | linear.NeedsDiagonal,
 	Fixed:     true,
-	Symmetric: true,
+	Symmetric: true, Transposes: true,
 	Estimate: func(a *linear.CSR, _ linear.Values) (int64, bool) {
 		if a == nil {
 			return 0, false
@@ -37,6 +36,7 @@ type ssor struct {
 	diag    []int     // position of a_ii among A's entries, length n
 	inverse []float64 // ω/d_i, length n
 	omega   float64
+	self    bool // A is symmetric, and so is M
 }
 
 // Apply computes dst = M⁻¹ x.
@@ -80,34 +80,24 @@ func (s *ssor) up(z []float64) {
 }
 
 func buildSSOR(ctx context.Context, sys linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
+	return makeSSOR(ctx, sys, "ssor", v.Real("omega"), progress)
+}
+
+// makeSSOR builds the symmetric relaxation called name.
+func makeSSOR(ctx context.Context, sys linear.System, name string, omega float64, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 	var notes trace.BuildNotes
-	a, err := entriesOf(sys, "ssor")
+	a, err := entriesOf(sys, name)
 	if err != nil {
 		return nil, notes, err
 	}
-	n := a.NRows
-	s := &ssor{a: a, diag: make([]int, n), inverse: make([]float64, n), omega: v.Real("omega")}
-	positive := true
-	for i := 0; i < n; i++ {
-		if err := look(ctx, progress, i, n); err != nil {
-			return nil, notes, err
-		}
-		at, ok := diagonal(a, i)
-		if !ok {
-			return nil, notes, &Breakdown{Method: "ssor", Row: i, Why: "missing diagonal entry"}
-		}
-		d := a.Val[at]
-		w := s.omega / d
-		if d == 0 || math.IsInf(w, 0) || math.IsNaN(w) {
-			return nil, notes, &Breakdown{Method: "ssor", Row: i, Pivot: d, Why: "the diagonal entry has no inverse"}
-		}
-		pivot(&notes, d)
-		s.diag[i], s.inverse[i] = at, w
-		positive = positive && d > 0
+	s := &ssor{a: a, omega: omega}
+	if s.diag, s.inverse, err = pivots(ctx, a, name, omega, &notes, progress); err != nil {
+		return nil, notes, err
 	}
+	s.self = symmetric(a)
 	notes.Entries, notes.Fill = int64(a.Entries()), 1
-	notes.Bytes = 16 * int64(n)
-	notes.Symmetric = symmetric(a)
-	notes.Definite = notes.Symmetric && positive
+	notes.Bytes = 16 * int64(a.NRows)
+	notes.Symmetric = s.self
+	notes.Definite = s.self && positive(s.inverse)
 	return s, notes, nil
 }

@@ -47,6 +47,7 @@ func upperScaled(r *linear.CSR, inverse, z, y []float64) {
 type factors struct {
 	lower, upper *linear.CSR // strict parts of L and R, rows ascending
 	inverse      []float64   // 1/d_i, length n
+	self         bool        // R = Lᵀ: M is symmetric
 }
 
 // Apply computes dst = R⁻¹ D⁻¹ L⁻¹ x.
