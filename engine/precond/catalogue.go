@@ -10,8 +10,6 @@ var Catalogue = []Entry{
 	ssorEntry,
 	icEntry,
 	iluEntry,
-	givenEntry,
-	ownFactorsEntry,
 }
 
 // Lookup returns the preconditioner of that name.
