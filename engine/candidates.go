@@ -17,6 +17,9 @@ func candidates(h run.Have, memory int64) []choose.Candidate {
 	var list []choose.Candidate
 	for _, e := range krylov.Catalogue {
 		for _, p := range precond.Catalogue {
+			if p.InUserUnits {
+				continue // needs a file: typed, not listed
+			}
 			m, err := run.Parse(e.Name + "+" + p.Name)
 			if err != nil {
 				panic("engine: " + err.Error()) // a mistake in a catalogue

@@ -145,3 +145,12 @@ func shown(source string, s linear.System, identify bool) string {
 	}
 	return s.Name
 }
+
+// open reads a matrix that a pairing names.
+func (s *Session) open(path string) (*linear.CSR, error) {
+	sys, err := load.File(s.ctx, path, nil)
+	if err != nil {
+		return nil, err
+	}
+	return sys.Matrix(), nil
+}

@@ -102,10 +102,14 @@ func doubled(solver string) (string, bool) {
 }
 
 // floor: the trial has reached the accuracy that rounding allows it, and the
-// tolerance lies below.
+// tolerance lies below. A method outside its assumptions parts from its
+// residual for another reason, and is told so.
 var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		if h.FloorHits < 5 || solved(h) {
+			continue
+		}
+		if _, outside := assumption(c.Facts, h); outside {
 			continue
 		}
 		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,

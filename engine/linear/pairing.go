@@ -23,6 +23,7 @@ type Pairing struct {
 	Preps   []Part
 	Solver  Part
 	Precond Part
+	From    string // the preconditioner is built from the matrix in this file; empty: from A
 }
 
 // String prints the part: name:arg,name=arg.
@@ -41,7 +42,11 @@ func (p Part) String() string {
 
 // String prints the pairing in the form ParsePairing reads.
 func (p Pairing) String() string {
-	s := p.Solver.String() + "+" + p.Precond.String()
+	s := p.Solver.String() + "+"
+	if p.From != "" {
+		s += fromWord + p.From + "/"
+	}
+	s += p.Precond.String()
 	if len(p.Preps) == 0 {
 		return s
 	}
@@ -61,7 +66,7 @@ func ParsePairing(s string) (Pairing, error) {
 		return p, fmt.Errorf("a pairing is empty; write solver+preconditioner, such as cg+jacobi")
 	}
 	rest := s
-	if before, after, ok := strings.Cut(s, "/"); ok {
+	if before, after, ok := strings.Cut(s, "/"); ok && plus(before) < 0 {
 		for _, w := range splitPreps(before) {
 			q, err := parsePart(w)
 			if err != nil {
@@ -75,6 +80,13 @@ func ParsePairing(s string) (Pairing, error) {
 	if i := plus(rest); i >= 0 {
 		left, right = rest[:i], rest[i+1:]
 	}
+	if file, ok := strings.CutPrefix(right, fromWord); ok {
+		i := strings.LastIndexByte(file, '/')
+		if i <= 0 || !validPath(file[:i]) {
+			return p, fmt.Errorf("pairing %q: write from:FILE/PRECONDITIONER", s)
+		}
+		p.From, right = file[:i], file[i+1:]
+	}
 	var err error
 	if p.Solver, err = parsePart(left); err == nil {
 		p.Precond, err = parsePart(right)
@@ -84,6 +96,9 @@ func ParsePairing(s string) (Pairing, error) {
 	}
 	return p, nil
 }
+
+// fromWord introduces the matrix a preconditioner is built from.
+const fromWord = "from:"
 
 // plus finds the sign between solver and preconditioner: one that is not an
 // exponent's.
@@ -158,10 +173,14 @@ func validName(s string) bool {
 	return true
 }
 
-func validText(s string) bool {
+func validText(s string) bool { return validPath(s) && !strings.ContainsRune(s, ':') }
+
+// validPath admits letters, digits and what file names are made of in places
+// where no shell needs a quote.
+func validPath(s string) bool {
 	for i := 0; i < len(s); i++ {
 		c := s[i]
-		if !lower(c) && !digit(c) && !(c >= 'A' && c <= 'Z') && !strings.ContainsRune(".-+_", rune(c)) {
+		if !lower(c) && !digit(c) && !(c >= 'A' && c <= 'Z') && !strings.ContainsRune(".-+_/:", rune(c)) {
 			return false
 		}
 	}
@@ -185,8 +204,8 @@ func Expand(s string) ([]string, error) {
 	parts := append(append([]Part(nil), p.Preps...), p.Solver, p.Precond)
 	for i, q := range parts {
 		for k, a := range q.Args {
-			if !strings.Contains(a.Text, "..") {
-				continue
+			if !strings.Contains(a.Text, "..") || strings.Contains(a.Text, "/") {
+				continue // no range, or a path such as ../M.mtx
 			}
 			vals, err := span(a.Text)
 			if err != nil {
@@ -215,7 +234,7 @@ func (p Pairing) with(i, k int, text string) Pairing {
 	parts[i].Args = append([]Arg(nil), parts[i].Args...)
 	parts[i].Args[k].Text = text
 	n := len(p.Preps)
-	return Pairing{Preps: parts[:n:n], Solver: parts[n], Precond: parts[n+1]}
+	return Pairing{Preps: parts[:n:n], Solver: parts[n], Precond: parts[n+1], From: p.From}
 }
 
 func span(text string) ([]string, error) {

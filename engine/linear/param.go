@@ -40,6 +40,7 @@ const (
 	Int Kind = iota
 	Real
 	Choice
+	Path // a file; must be given
 )
 
 // Param describes one parameter of a method: parsed, listed, edited and
@@ -57,12 +58,13 @@ type Param struct {
 type Values struct {
 	params []Param
 	vals   []float64
+	paths  []string // length of params; empty but for Kind Path
 }
 
 // Resolve matches the written arguments with the parameters of the method
 // named what and fills in defaults.
 func Resolve(what string, params []Param, args []Arg) (Values, error) {
-	v := Values{params: params, vals: make([]float64, len(params))}
+	v := Values{params: params, vals: make([]float64, len(params)), paths: make([]string, len(params))}
 	for i, p := range params {
 		v.vals[i] = p.Default
 	}
@@ -80,11 +82,21 @@ func Resolve(what string, params []Param, args []Arg) (Values, error) {
 		if given[i] {
 			return v, fmt.Errorf("%s: parameter %s is given twice", what, params[i].Name)
 		}
+		given[i] = true
+		if params[i].Kind == Path {
+			v.paths[i] = a.Text
+			continue
+		}
 		x, err := params[i].parse(a.Text)
 		if err != nil {
 			return v, fmt.Errorf("%s: %w", what, err)
 		}
-		v.vals[i], given[i] = x, true
+		v.vals[i] = x
+	}
+	for i, p := range params {
+		if p.Kind == Path && !given[i] {
+			return v, fmt.Errorf("%s needs the file %s", what, p.Name)
+		}
 	}
 	return v, nil
 }
@@ -134,6 +146,9 @@ func (v Values) Choice(name string) string {
 	return v.params[i].Choices[int(v.vals[i])]
 }
 
+// Path returns the named file.
+func (v Values) Path(name string) string { return v.paths[v.index(name)] }
+
 func (v Values) get(name string) float64 { return v.vals[v.index(name)] }
 
 func (v Values) index(name string) int {
@@ -148,9 +163,12 @@ func (v Values) index(name string) int {
 func (v Values) Args() []Arg {
 	args := make([]Arg, len(v.params))
 	for i, p := range v.params {
-		if p.Kind == Choice {
+		switch p.Kind {
+		case Choice:
 			args[i] = Arg{Text: p.Choices[int(v.vals[i])]}
-		} else {
+		case Path:
+			args[i] = Arg{Text: v.paths[i]}
+		default:
 			args[i] = Arg{Text: short(v.vals[i])}
 		}
 	}

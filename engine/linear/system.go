@@ -26,6 +26,9 @@ type System struct {
 	// are written with; 17 or more means each double came through exactly.
 	Digits int
 	Source Source
+	// Open reads another square matrix, for preconditioners the user brings;
+	// nil where files cannot be read.
+	Open func(path string) (*CSR, error)
 }
 
 // Source is what the reader noticed while it read a file.

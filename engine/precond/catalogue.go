@@ -10,6 +10,8 @@ var Catalogue = []Entry{
 	ssorEntry,
 	icEntry,
 	iluEntry,
+	givenEntry,
+	ownFactorsEntry,
 }
 
 // Lookup returns the preconditioner of that name.

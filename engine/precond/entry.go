@@ -19,6 +19,7 @@ type Entry struct {
 	Assumes     linear.Assume // of A
 	Fixed       bool          // one linear operator; false: only flexible solvers may use it
 	Symmetric   bool          // M is symmetric if A is
+	InUserUnits bool          // M is the user's own, for A as it stands: no preparations
 	Exact       bool          // a direct solve
 	Transposes  bool          // what Build returns is a linear.Transposer: M⁻ᵀ x
 	// Estimate returns the memory M takes before anything is allocated, and

@@ -49,6 +49,12 @@ func (m Method) Refuse(h Have) string {
 	if m.Solver.Assumes&linear.AssumesFixedM != 0 && !m.Precond.Fixed {
 		return m.Precond.Name + " changes from step to step: only flexible methods may use it"
 	}
+	if len(m.Preps) > 0 && (m.Precond.InUserUnits || m.From != "") {
+		return "a matrix of your own belongs to A as it stands, not to a prepared one"
+	}
+	if m.From != "" {
+		return "" // what M needs, it needs of the other matrix
+	}
 	return lacking(m.Precond.Name, m.Precond.Needs, h)
 }
 

@@ -108,7 +108,7 @@ func (t *Trial) judgeFloor(rec trace.Record, a *audit) {
 	t.hist.FloorHits = e.atFloor
 	t.mu.Unlock()
 	if e.atFloor >= floorAudits {
-		t.end(trace.Stagnated, fmt.Sprintf("accuracy floor: the true residual stays at %.2g while the method's own number falls to %.2g",
+		t.end(trace.Stagnated, fmt.Sprintf("the true residual stays at %.2g while the method's own number falls to %.2g",
 			rec.Audit, rec.Residual))
 	}
 }

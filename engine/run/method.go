@@ -26,6 +26,7 @@ type Method struct {
 	SolverValues  linear.Values
 	Precond       precond.Entry
 	PrecondValues linear.Values
+	From          string // the file M is built from; empty: from A
 }
 
 // Parse reads one pairing (without ranges) and resolves it. The error names
@@ -36,7 +37,8 @@ func Parse(text string) (Method, error) {
 	if err != nil {
 		return m, err
 	}
-	canon := linear.Pairing{}
+	canon := linear.Pairing{From: p.From}
+	m.From = p.From
 	for _, q := range p.Preps {
 		e, ok := prepare.Lookup(q.Name)
 		if !ok {

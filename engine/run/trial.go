@@ -175,7 +175,11 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 	if t.prepared, t.back, err = chain(ctx, t.method.Preps, t.sys); err != nil {
 		return trace.Reading{}, err
 	}
-	m, notes, err := t.method.Precond.Build(ctx, t.prepared, t.method.PrecondValues, func(p float64) {
+	basis, err := t.basis()
+	if err != nil {
+		return trace.Reading{}, err
+	}
+	m, notes, err := t.method.Precond.Build(ctx, basis, t.method.PrecondValues, func(p float64) {
 		t.mu.Lock()
 		t.progress = p
 		t.mu.Unlock()
@@ -195,6 +199,26 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 		t.solver = solver
 	}
 	return r, err
+}
+
+// basis is the system that the preconditioner is built from.
+func (t *Trial) basis() (linear.System, error) {
+	if t.method.From == "" {
+		return t.prepared, nil
+	}
+	s := t.prepared
+	if s.Open == nil {
+		return s, fmt.Errorf("no file can be read here")
+	}
+	other, err := s.Open(t.method.From)
+	if err != nil {
+		return s, err
+	}
+	if other.NRows != s.N() {
+		return s, fmt.Errorf("%s has %d rows, A has %d", t.method.From, other.NRows, s.N())
+	}
+	s.A = other
+	return s, nil
 }
 
 // begun follows a successful set-up: own norms, probes and iteration 0.
