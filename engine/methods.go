@@ -48,9 +48,12 @@ func params(list []linear.Param) []Param {
 	var out []Param
 	for _, p := range list {
 		q := Param{Name: p.Name, Meaning: p.Meaning}
-		if p.Kind == linear.Choice {
+		switch p.Kind {
+		case linear.Choice:
 			q.Default, q.Range = p.Choices[int(p.Default)], strings.Join(p.Choices, "|")
-		} else {
+		case linear.Path:
+			q.Default, q.Range = "none", "a file"
+		default:
 			q.Default = strconv.FormatFloat(p.Default, 'g', -1, 64)
 			q.Range = fmt.Sprintf("%g to %g", p.Min, p.Max)
 		}

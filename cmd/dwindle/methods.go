@@ -19,7 +19,9 @@ cg+ic:0, gmres:30+ilu:0, scale/bicgstab+jacobi. A range makes a family of
 trials: cg+ssor:1.0..1.9..0.1.`
 
 func methodsCommand() *cobra.Command {
-	return &cobra.Command{
+	var measure bool
+	var threads int
+	c := &cobra.Command{
 		Use:   "methods",
 		Short: "list solvers, preconditioners and preparations",
 		Long:  methodsHelp,
@@ -29,8 +31,32 @@ func methodsCommand() *cobra.Command {
 			}
 			return nil
 		},
-		RunE: func(c *cobra.Command, _ []string) error { return listMethods(c.OutOrStdout(), engine.Methods()) },
+		RunE: func(c *cobra.Command, _ []string) error {
+			if measure {
+				return measureKernels(c.OutOrStdout(), threads)
+			}
+			return listMethods(c.OutOrStdout(), engine.Methods())
+		},
 	}
+	c.Flags().BoolVar(&measure, "measure", false, "measure this machine's memory bandwidth and each kernel's share of it instead")
+	c.Flags().IntVar(&threads, "threads", 0, "use `N` threads (default: what a login node or the job allows)")
+	return c
+}
+
+// measureKernels prints what the kernels of an iteration move on this machine.
+func measureKernels(w io.Writer, threads int) error {
+	list, err := engine.MeasureKernels(threads)
+	if err != nil {
+		return err
+	}
+	var b strings.Builder
+	b.WriteString("kernels on 10^6 unknowns, 5-point; bytes counted once each way\n")
+	fmt.Fprintf(&b, "%-20s %9s %11s %9s %9s\n", "kernel", "MB a call", "ms a call", "GB/s", "share")
+	for _, k := range list {
+		fmt.Fprintf(&b, "%-20s %9.1f %11.3f %9.2f %8.0f%%\n", k.Name, float64(k.Bytes)/1e6, 1e3*k.Time, k.Rate/1e9, 100*k.Share)
+	}
+	_, err = io.WriteString(w, b.String())
+	return err
 }
 
 func listMethods(w io.Writer, methods []engine.Method) error {
