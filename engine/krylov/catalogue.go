@@ -6,6 +6,10 @@ var Catalogue = []Entry{
 	cgEntry,
 	minresEntry,
 	bicgEntry,
+	cgsEntry,
+	tfqmrEntry,
+	qmrEntry,
+	bicgstablEntry,
 	bicgstabEntry,
 	gmresEntry,
 }
