@@ -9,7 +9,9 @@ var Catalogue = []Entry{
 	sgsEntry,
 	ssorEntry,
 	icEntry,
+	micEntry,
 	iluEntry,
+	miluEntry,
 	givenEntry,
 	ownFactorsEntry,
 }

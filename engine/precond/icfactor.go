@@ -39,8 +39,7 @@ func newICWork(a *linear.CSR) *icWork {
 	return w
 }
 
-// factor factors with shift alpha. It returns the row of the first pivot that
-// is not positive beyond rounding, or −1.
+// factor factors with shift alpha; see shiftable.
 func (k *icWork) factor(ctx context.Context, alpha float64, progress func(float64)) (broke int, err error) {
 	n := k.a.NRows
 	clear(k.at)
@@ -54,6 +53,8 @@ func (k *icWork) factor(ctx context.Context, alpha float64, progress func(float6
 	}
 	return -1, nil
 }
+
+func (k *icWork) pivot(i int) float64 { return k.pivots[i] }
 
 // row computes row i of L and its pivot:
 //

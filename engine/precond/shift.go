@@ -14,6 +14,15 @@ var decades = [...]float64{1e-3, 1e-2, 0.1, 1, 10, 100}
 
 const halvings = 4
 
+// shiftable is a factorisation that can be tried with another shift.
+type shiftable interface {
+	// factor factors A + alpha diag(A). It returns the row of the first pivot
+	// that is not positive beyond rounding, or −1.
+	factor(ctx context.Context, alpha float64, progress func(float64)) (broke int, err error)
+	// pivot returns the pivot of row i of the last factorisation.
+	pivot(i int) float64
+}
+
 // attempt factors with one shift and says whether that worked.
 type attempt func(alpha float64) (bool, error)
 
@@ -27,14 +36,14 @@ type attempt func(alpha float64) (bool, error)
 //
 // That is at most 12 factorisations, and those that fail end early. Attempts
 // that broke down are noted in order.
-func leastShift(ctx context.Context, w *icWork, notes *trace.BuildNotes, progress func(float64)) error {
+func leastShift(ctx context.Context, w shiftable, name string, notes *trace.BuildNotes, progress func(float64)) error {
 	try := func(alpha float64) (bool, error) {
 		row, err := w.factor(ctx, alpha, progress)
 		if err != nil {
 			return false, err
 		}
 		if row >= 0 {
-			notes.Broke = append(notes.Broke, trace.Pivot{Row: row, Value: w.pivots[row], Shift: alpha})
+			notes.Broke = append(notes.Broke, trace.Pivot{Row: row, Value: w.pivot(row), Shift: alpha})
 		}
 		return row < 0, nil
 	}
@@ -54,7 +63,7 @@ func leastShift(ctx context.Context, w *icWork, notes *trace.BuildNotes, progres
 		low = alpha
 	}
 	p := notes.Broke[0]
-	return &Breakdown{Method: "ic:0", Row: p.Row, Pivot: p.Value,
+	return &Breakdown{Method: name, Row: p.Row, Pivot: p.Value,
 		Why: fmt.Sprintf("the pivot is not positive, and no shift up to %g of the diagonal repairs it", low)}
 }
 
