@@ -29,3 +29,13 @@ func Order(a *linear.CSR, how Ordering) linear.Permutation {
 	}
 	return MinimumDegree(a)
 }
+
+// compose returns the permutation that takes place k from place inner[k] of
+// the outer one.
+func compose(outer, inner linear.Permutation) linear.Permutation {
+	out := make(linear.Permutation, len(inner))
+	for k, i := range inner {
+		out[k] = outer[i]
+	}
+	return out
+}
