@@ -3,9 +3,18 @@ package krylov
 // Catalogue lists the solvers. Each entry stands in its solver's file.
 var Catalogue = []Entry{
 	sdEntry,
+	richardsonEntry,
+	chebyshevEntry,
 	cgEntry,
+	fcgEntry,
+	crEntry,
 	minresEntry,
+	symmlqEntry,
 	bicgEntry,
+	cgnrEntry,
+	cgneEntry,
+	lsqrEntry,
+	lsmrEntry,
 	cgsEntry,
 	tfqmrEntry,
 	qmrEntry,

@@ -24,6 +24,9 @@ func each(t *testing.T, f func(t *testing.T, e krylov.Entry)) {
 func admissible(e krylov.Entry) []string {
 	var names []string
 	for _, p := range precond.Catalogue {
+		if p.InUserUnits {
+			continue // needs files
+		}
 		transposes := e.Needs&linear.NeedsTransposeM == 0 || p.Transposes || p.Name == "none"
 		if transposes && (e.Assumes&linear.AssumesFixedM == 0 || p.Fixed) && (e.Assumes&linear.AssumesSymmetricM == 0 || p.Symmetric) {
 			names = append(names, p.Name)
@@ -34,7 +37,8 @@ func admissible(e krylov.Entry) []string {
 
 // Every pairing converges on symmetric positive definite systems: the theory
 // of each method says so. (BiCGStab's asks for a shadow vector without special
-// structure: with b = e₁ on a line and SSOR, r̂ᵀr is exactly zero.)
+// structure: with b = e₁ on a line and SSOR, r̂ᵀr is exactly zero. Richardson's
+// iteration converges where the spectral radius is below one.)
 func TestEveryPairingConverges(t *testing.T) {
 	random := make([]float64, 24)
 	linear.Uniform(random, 8)
@@ -49,6 +53,9 @@ func TestEveryPairingConverges(t *testing.T) {
 	each(t, func(t *testing.T, e krylov.Entry) {
 		for _, p := range admissible(e) {
 			for name, s := range systems {
+				if e.Name == "richardson" && contraction(t, s.a, p) > 0.996 {
+					continue
+				}
 				r := begun(t, s.a, s.b, nil, e.Name+"+"+p)
 				n := r.until(1e-13, 8000)
 				if got := r.truth() / linear.Norm2(s.b); !(got <= 1e-10) {
@@ -134,7 +141,7 @@ func TestGuess(t *testing.T) {
 	norm := linear.Residual(r, a, g, b)
 	each(t, func(t *testing.T, e krylov.Entry) {
 		moved, plain := begun(t, a, b, g, e.Name), begun(t, a, r, nil, e.Name)
-		near(t, "‖r₀‖", moved.first.Residual, norm, 1e-12*norm)
+		near(t, "‖r₀‖", moved.first.Residual, inNorm(e, a, r), 1e-12*norm)
 		sameVector(t, moved.x(), g)
 		for range 8 {
 			moved.step()
@@ -142,7 +149,7 @@ func TestGuess(t *testing.T) {
 		}
 		x, d := moved.x(), plain.x()
 		for i := range x {
-			near(t, "x_i", x[i], g[i]+d[i], 1e-10)
+			near(t, "x_i", x[i], g[i]+d[i], 1e-10*(1+math.Abs(d[i])))
 		}
 	})
 }
@@ -213,10 +220,14 @@ func (halving) Apply(dst, x []float64) { linear.Scale(dst, 0.5, x) }
 
 func (h halving) ApplyT(dst, x []float64) { h.Apply(dst, x) }
 
-// M = 2 I changes nothing but the scale: same iterates as without.
+// M = 2 I changes nothing but the scale: same iterates as without. (Richardson's
+// step has no length of its own; TestRichardsonScales.)
 func TestScaledIdentity(t *testing.T) {
 	a, b := plate(9), ones(81)
 	each(t, func(t *testing.T, e krylov.Entry) {
+		if e.Name == "richardson" {
+			return
+		}
 		v, err := linear.Resolve(e.Name, e.Params, nil)
 		if err != nil {
 			t.Fatal(err)
@@ -258,7 +269,8 @@ func TestNotANumber(t *testing.T) {
 				t.Fatalf("last %+v, events %+v", r.last, r.seen)
 			}
 			x, res := r.x(), make([]float64, 36)
-			near(t, "residual of the kept iterate", r.last.Residual, linear.Residual(res, a, x, r.b), 1e-12)
+			linear.Residual(res, a, x, r.b)
+			near(t, "residual of the kept iterate", r.last.Residual, inNorm(e, a, res), 1e-12)
 		})
 	}
 }
@@ -267,6 +279,17 @@ func TestNotANumber(t *testing.T) {
 type symmetric struct{ linear.Func }
 
 func (s symmetric) ApplyT(dst, x []float64) { s.Apply(dst, x) }
+
+// inNorm returns the size of a residual in the norm the solver watches without
+// a preconditioner.
+func inNorm(e krylov.Entry, a *linear.CSR, r []float64) float64 {
+	if e.Norm != trace.NormalEquationNorm {
+		return linear.Norm2(r)
+	}
+	w := make([]float64, len(r))
+	a.ApplyT(w, r)
+	return linear.Norm2(w)
+}
 
 func same(x, y float64) bool { return math.Float64bits(x) == math.Float64bits(y) }
 

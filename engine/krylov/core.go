@@ -100,6 +100,19 @@ func (c *core) overflow(quantity string, value float64) (trace.Reading, error) {
 	return c.ended()
 }
 
+// refuse ends the trial because rz = rᵀz with z = M⁻¹r is not positive, and
+// the method takes its square root.
+func (c *core) refuse(quantity string, rz float64, r, z []float64) (trace.Reading, error) {
+	if !finite(rz) {
+		return c.overflow(quantity, rz)
+	}
+	value := cosine(rz, linear.Norm2(r), linear.Norm2(z))
+	if rz < 0 {
+		c.event(trace.PrecondIndefinite, quantity, value)
+	}
+	return c.broken(quantity, value)
+}
+
 // ended ends the trial with the last iterate.
 func (c *core) ended() (trace.Reading, error) {
 	return c.reading(math.NaN(), math.NaN(), true), nil

@@ -96,11 +96,36 @@ func begun(t *testing.T, a linear.Operator, b, guess []float64, pairing string) 
 	if err != nil {
 		t.Fatal(err)
 	}
-	pe, ok := precond.Lookup(p.Precond.Name)
-	if !ok {
-		t.Fatalf("no preconditioner %q", p.Precond.Name)
+	return begunWith(t, a, build(t, a, p.Precond), b, guess, p.Solver)
+}
+
+// solverPart reads a solver with its parameters.
+func solverPart(t *testing.T, text string) linear.Part {
+	t.Helper()
+	p, err := linear.ParsePairing(text)
+	if err != nil {
+		t.Fatal(err)
 	}
-	v, err := linear.Resolve(pe.Name, pe.Params, p.Precond.Args)
+	return p.Solver
+}
+
+// built makes the written preconditioner.
+func built(t *testing.T, a linear.Operator, precond string) linear.Applier {
+	t.Helper()
+	p, err := linear.ParsePairing("cg+" + precond)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return build(t, a, p.Precond)
+}
+
+func build(t *testing.T, a linear.Operator, part linear.Part) linear.Applier {
+	t.Helper()
+	pe, ok := precond.Lookup(part.Name)
+	if !ok {
+		t.Fatalf("no preconditioner %q", part.Name)
+	}
+	v, err := linear.Resolve(pe.Name, pe.Params, part.Args)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -108,7 +133,7 @@ func begun(t *testing.T, a linear.Operator, b, guess []float64, pairing string) 
 	if err != nil {
 		t.Fatal(err)
 	}
-	return begunWith(t, a, m, b, guess, p.Solver)
+	return m
 }
 
 // begunWith begins the solver with a given preconditioner.
