@@ -10,8 +10,11 @@ var Catalogue = []Entry{
 	ssorEntry,
 	icEntry,
 	micEntry,
+	ictEntry,
 	iluEntry,
 	miluEntry,
+	ilutEntry,
+	ilutpEntry,
 	givenEntry,
 	ownFactorsEntry,
 }
