@@ -28,7 +28,8 @@ var pow10 = [...]float64{1e0, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10,
 //
 // The value equals strconv.ParseFloat's. A number whose digits are below 2^53
 // and whose power of ten is exact costs one multiplication or division
-// (Clinger, "How to read floating point numbers accurately", PLDI 1990).
+// (Clinger, "How to read floating point numbers accurately", PLDI 1990); see
+// nearest for the others of up to 19 digits. The library reads the rest.
 func scanDecimal(s []byte, bare bool) (x decimal, n int) {
 	i, neg := 0, false
 	if len(s) > 0 && (s[0] == '-' || s[0] == '+') {
@@ -53,9 +54,15 @@ func scanDecimal(s []byte, bare bool) (x decimal, n int) {
 	x.last += e
 	switch {
 	case x.mant == 0 && x.digits == 0:
-	case x.digits > 19 || x.mant >= 1<<53 || x.last < -22 || x.last > 22:
+	case x.digits > 19:
 		x.val = slowValue(s[:i], mantissa)
 		return x, i
+	case x.mant >= 1<<53 || x.last < -22 || x.last > 22:
+		var ok bool
+		if x.val, ok = nearest(x.mant, x.last); !ok {
+			x.val = slowValue(s[:i], mantissa)
+			return x, i
+		}
 	case x.last < 0:
 		x.val = float64(x.mant) / pow10[-x.last]
 	default:
@@ -69,13 +76,20 @@ func scanDecimal(s []byte, bare bool) (x decimal, n int) {
 
 // scanDigits takes the digits that stand at i and returns where they end.
 func (x *decimal) scanDigits(s []byte, i int) int {
+	for x.digits == 0 && i < len(s) && s[i] == '0' {
+		i++
+	}
+	for x.digits <= 11 {
+		v, ok := eightDigits(s[i:])
+		if !ok {
+			break
+		}
+		x.mant, x.digits, i = x.mant*100_000_000+v, x.digits+8, i+8
+	}
 	for ; i < len(s); i++ {
 		d := s[i] - '0'
 		if d > 9 {
 			break
-		}
-		if d == 0 && x.digits == 0 {
-			continue
 		}
 		x.digits++
 		if x.digits <= 19 {
