@@ -158,6 +158,9 @@ func stateText(h *trace.History) string {
 	if _, ok := falseStop(h); ok && h.Stop != trace.FalselyConverged {
 		s += "(!)"
 	}
+	if h.Direct {
+		s += " direct" // one step with an exact factorisation
+	}
 	return s
 }
 

@@ -176,10 +176,16 @@ func useText(d Document) string {
 	}
 	words := []string{plain(c.Pairing)}
 	for _, t := range d.Trials {
-		if t.Pairing == c.Pairing && t.Stop != trace.Converged {
-			words[0] += " (" + t.Stop.String() + ")"
-			break
+		if t.Pairing != c.Pairing {
+			continue
 		}
+		if t.Direct {
+			words[0] += " (direct)"
+		}
+		if t.Stop != trace.Converged {
+			words[0] += " (" + t.Stop.String() + ")"
+		}
+		break
 	}
 	for _, r := range c.Ranked {
 		if r.Pairing == c.Pairing {
