@@ -1,7 +1,9 @@
 package linear
 
 import (
+	"cmp"
 	"fmt"
+	"math"
 	"slices"
 	"sync"
 )
@@ -36,6 +38,7 @@ type RowWork struct {
 	row  []int32   // the row (from 1) to which sum[c] belongs, length cols
 	now  int32     // the row under work, from 1
 	cols []int32   // columns of the row under work, as met
+	hint int       // entries of the last piece, to size the next
 }
 
 // Add adds v to the entry in column c of the row under work.
@@ -48,22 +51,35 @@ func (w *RowWork) Add(c int32, v float64) {
 	w.cols = append(w.cols, c)
 }
 
-// Columns returns the columns of the row under work in the order met: a view,
-// to be reordered or cut by Keep only.
-func (w *RowWork) Columns() []int32 { return w.cols }
-
-// At returns the sum so far in column c, which Add has met.
-func (w *RowWork) At(c int32) float64 { return w.sum[c] }
-
-// Keep replaces the columns of the row by those for which keep is true.
-func (w *RowWork) Keep(keep func(c int32, v float64) bool) {
-	w.cols = slices.DeleteFunc(w.cols, func(c int32) bool { return !keep(c, w.sum[c]) })
-}
+// Has says whether Add has met column c in the row under work.
+func (w *RowWork) Has(c int32) bool { return w.row[c] == w.now }
 
 // Scale multiplies the row under work by s.
 func (w *RowWork) Scale(s float64) {
 	for _, c := range w.cols {
 		w.sum[c] *= s
+	}
+}
+
+// Largest cuts the row under work to its n entries of largest size, of equal
+// ones those met first, and scales them so that the row sum stays.
+func (w *RowWork) Largest(n int) {
+	if len(w.cols) <= n {
+		return
+	}
+	all, kept := 0.0, 0.0
+	for _, c := range w.cols {
+		all += w.sum[c]
+	}
+	slices.SortStableFunc(w.cols, func(a, b int32) int {
+		return cmp.Compare(math.Abs(w.sum[b]), math.Abs(w.sum[a]))
+	})
+	w.cols = w.cols[:n]
+	for _, c := range w.cols {
+		kept += w.sum[c]
+	}
+	if f := all / kept; f > 0 && !math.IsInf(f, 0) {
+		w.Scale(f)
 	}
 }
 
@@ -93,21 +109,18 @@ func ByRows(rows, cols int, fill func(w *RowWork, i int)) *CSR {
 
 // build gathers the rows lo to hi.
 func (w *RowWork) build(lo, hi int, fill func(w *RowWork, i int)) piece {
-	p := piece{ends: make([]int, hi-lo)}
+	p := piece{ends: make([]int, hi-lo), cols: make([]int32, 0, w.hint), vals: make([]float64, 0, w.hint)}
 	for i := lo; i < hi; i++ {
 		w.now, w.cols = int32(i+1), w.cols[:0]
 		fill(w, i)
 		sortColumns(w.cols)
-		if i == lo {
-			p.cols = make([]int32, 0, (hi-lo)*(len(w.cols)+1))
-			p.vals = make([]float64, 0, cap(p.cols))
-		}
 		p.cols = append(p.cols, w.cols...)
 		for _, c := range w.cols {
 			p.vals = append(p.vals, w.sum[c])
 		}
 		p.ends[i-lo] = len(p.cols)
 	}
+	w.hint = len(p.cols) + len(p.cols)/8
 	return p
 }
 

@@ -9,6 +9,7 @@ var Catalogue = []Entry{
 	sgsEntry,
 	ssorEntry,
 	icEntry,
+	amgEntry,
 	micEntry,
 	ictEntry,
 	iluEntry,

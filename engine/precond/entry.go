@@ -33,12 +33,15 @@ type Entry struct {
 // Breakdown is the error of a factorisation that cannot go on.
 type Breakdown struct {
 	Method string  // such as "ilu:0"
-	Row    int     // from 0
+	Row    int     // from 0; below 0 where it is no row of A
 	Pivot  float64 // its value
 	Why    string  // such as "zero pivot" or "missing diagonal entry"
 }
 
 // Error names the method, the row counted from 1 as files do, and the cause.
 func (b *Breakdown) Error() string {
+	if b.Row < 0 {
+		return fmt.Sprintf("%s breaks down: %s (%.6g)", b.Method, b.Why, b.Pivot)
+	}
 	return fmt.Sprintf("%s breaks down in row %d: %s (%.6g)", b.Method, b.Row+1, b.Why, b.Pivot)
 }

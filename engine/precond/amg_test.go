@@ -1,0 +1,294 @@
+package precond
+
+import (
+	"context"
+	"errors"
+	"math"
+	"testing"
+
+	"gonum.org/v1/gonum/mat"
+
+	"dwindle/engine/linear"
+	"dwindle/samples"
+)
+
+// kinds are the hierarchies every property is tested on.
+var kinds = []string{"amg", "amg:classical", "amg:aggregation,cycle=v", "amg:classical,cycle=w", "amg:sweeps=2", "amg:classical,sweeps=3"}
+
+// sampled returns a sample's matrix and right-hand side, ones where it has
+// none.
+func sampled(t *testing.T, spec string) (*linear.CSR, []float64) {
+	t.Helper()
+	s, err := samples.Build(spec)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if s.B == nil {
+		s.B = constants(s.N())
+	}
+	return s.Matrix(), s.B
+}
+
+// cube returns the 7-point operator on an n x n x n grid.
+func cube(n int) *linear.CSR {
+	var e []linear.Entry
+	for i := 0; i < n*n*n; i++ {
+		e = append(e, linear.Entry{I: i, J: i, V: 6})
+		for step, at := 1, i; step < n*n*n; step, at = step*n, at/n {
+			if at%n > 0 {
+				e = append(e, linear.Entry{I: i, J: i - step, V: -1}, linear.Entry{I: i - step, J: i, V: -1})
+			}
+		}
+	}
+	return linear.FromEntries(n*n*n, n*n*n, e)
+}
+
+// steps returns how many iterations of preconditioned conjugate gradients cut
+// ‖r‖₂ to tol·‖b‖₂, at most 200.
+func steps(m linear.Applier, a *linear.CSR, b []float64, tol float64) int {
+	n := len(b)
+	r := append([]float64(nil), b...)
+	z, p, q := make([]float64, n), make([]float64, n), make([]float64, n)
+	goal, before := tol*linear.Norm2(b), math.Inf(1)
+	for k := 0; ; k++ {
+		if linear.Norm2(r) <= goal || k == 200 {
+			return k
+		}
+		m.Apply(z, r)
+		rho := linear.Dot(r, z)
+		linear.Xpby(z, rho/before, p)
+		before = rho
+		a.Apply(q, p)
+		linear.Axpy(-rho/linear.Dot(p, q), q, r)
+	}
+}
+
+// The counts stay level as the mesh is refined, and low where coefficients
+// jump or couplings differ by direction.
+func TestAMGCounts(t *testing.T) {
+	for _, kind := range kinds[:2] {
+		for _, c := range []struct {
+			spec string
+			most int
+		}{
+			{"sample:plate:64", 12}, {"sample:plate:128", 12}, {"sample:plate:256", 12},
+			{"sample:plate:300,jump=1e6", 24}, {"sample:plate:150,jump=1e-6", 24},
+			{"sample:plate:300,aniso=1000", 15}, {"sample:plate:150,aniso=1e-3", 15},
+			{"sample:seepage:100", 20},
+		} {
+			a, b := sampled(t, c.spec)
+			m, _ := made(t, a, kind)
+			if k := steps(m, a, b, 1e-8); k > c.most {
+				t.Errorf("%s on %s: %d iterations, want at most %d", kind, c.spec, k, c.most)
+			}
+		}
+		a := cube(30)
+		m, _ := made(t, a, kind)
+		if k := steps(m, a, constants(a.NRows), 1e-8); k > 13 {
+			t.Errorf("%s on a cube: %d iterations", kind, k)
+		}
+	}
+}
+
+// A symmetric cycle around a coarse correction that is a projection never
+// overshoots: M⁻¹ is symmetric and the eigenvalues of M⁻¹A lie in (0, 1]
+// (Xu and Zikatanov, J. Amer. Math. Soc. 15 (2002) 573–597). Symmetry is held
+// to 1e-12 of the largest entry.
+func TestAMGSpectrum(t *testing.T) {
+	jump, _ := sampled(t, "sample:plate:20,jump=1e4")
+	aniso, _ := sampled(t, "sample:plate:20,aniso=50")
+	feeder, _ := sampled(t, "sample:feeder:400")
+	for _, a := range []*linear.CSR{plate(20), cube(8), jump, aniso, feeder} {
+		for _, kind := range kinds {
+			m, notes := made(t, a, kind)
+			if len(notes.Levels) < 2 || !notes.Symmetric {
+				t.Errorf("%s: %d levels", kind, len(notes.Levels))
+			}
+			inv := inverse(m, a.NRows)
+			var skew mat.Dense
+			skew.Sub(inv, inv.T())
+			if s := mat.Max(&skew); !(s <= 1e-12*mat.Max(inv)) {
+				t.Errorf("%s: M⁻¹ is unsymmetric by %g of %g", kind, s, mat.Max(inv))
+			}
+			low, high := pencil(t, inv, dense(a))
+			if !(low > 0.02 && high <= 1+1e-10) {
+				t.Errorf("%s: eigenvalues of M⁻¹A from %g to %.15g", kind, low, high)
+			}
+		}
+	}
+}
+
+// pencil returns the ends of the spectrum of Lᵀ B L for A = L Lᵀ.
+func pencil(t *testing.T, b, a *mat.Dense) (low, high float64) {
+	t.Helper()
+	n, _ := a.Dims()
+	sym := mat.NewSymDense(n, nil)
+	for i := 0; i < n; i++ {
+		for j := i; j < n; j++ {
+			sym.SetSym(i, j, a.At(i, j))
+		}
+	}
+	var chol mat.Cholesky
+	if !chol.Factorize(sym) {
+		t.Fatal("the matrix is not positive definite")
+	}
+	var l mat.TriDense
+	chol.LTo(&l)
+	var p mat.Dense
+	p.Product(l.T(), b, &l)
+	for i := 0; i < n; i++ {
+		for j := i; j < n; j++ {
+			sym.SetSym(i, j, (p.At(i, j)+p.At(j, i))/2)
+		}
+	}
+	var eig mat.EigenSym
+	if !eig.Factorize(sym, false) {
+		t.Fatal("no eigenvalues")
+	}
+	v := eig.Values(nil)
+	return v[0], v[n-1]
+}
+
+// Every coarse operator is Pᵀ A P, and R is Pᵀ; gonum's dense product is the
+// oracle.
+func TestAMGGalerkin(t *testing.T) {
+	for _, kind := range kinds[:2] {
+		m, _ := made(t, plate(26), kind)
+		levels := m.(*cycle).levels
+		if len(levels) < 2 {
+			t.Fatalf("%s: %d levels", kind, len(levels))
+		}
+		for k, l := range levels[:len(levels)-1] {
+			p := dense(l.p)
+			var want, diff mat.Dense
+			want.Product(p.T(), dense(l.a), p)
+			diff.Sub(dense(levels[k+1].a), &want)
+			if e := mat.Norm(&diff, 2); !(e <= 1e-13*mat.Norm(&want, 2)) {
+				t.Errorf("%s, level %d: ‖A_c − PᵀAP‖ = %g", kind, k, e)
+			}
+			diff.Reset()
+			diff.Sub(dense(l.r).T(), p)
+			if mat.Norm(&diff, 2) != 0 {
+				t.Errorf("%s, level %d: R is not Pᵀ", kind, k)
+			}
+		}
+	}
+}
+
+// The cycle is the same bits for any number of threads, over several blocks
+// and levels.
+func TestAMGThreads(t *testing.T) {
+	defer linear.SetThreads(1)
+	a, b := sampled(t, "sample:plate:150,jump=1e3")
+	for _, kind := range kinds[:2] {
+		var want []float64
+		for _, threads := range []int{1, 2, 3} {
+			linear.SetThreads(threads)
+			m, _ := made(t, a, kind)
+			x := make([]float64, len(b))
+			m.Apply(x, b)
+			if want == nil {
+				want = x
+			}
+			for i := range x {
+				if math.Float64bits(x[i]) != math.Float64bits(want[i]) {
+					t.Fatalf("%s: %d threads give %v in row %d, one gives %v", kind, threads, x[i], i, want[i])
+				}
+			}
+		}
+	}
+}
+
+// A singular, consistent system keeps its null vector through the levels; the
+// one zero pivot is told.
+func TestAMGSemidefinite(t *testing.T) {
+	a, b := sampled(t, "sample:seepage:40")
+	for _, kind := range kinds[:2] {
+		m, notes := made(t, a, kind)
+		if notes.Replaced != 1 {
+			t.Errorf("%s: %d pivots replaced", kind, notes.Replaced)
+		}
+		if k := steps(m, a, b, 1e-10); k > 22 {
+			t.Errorf("%s: %d iterations", kind, k)
+		}
+	}
+}
+
+// The estimate bounds the memory that the notes tell.
+func TestAMGEstimate(t *testing.T) {
+	for _, spec := range []string{"sample:plate:100", "sample:plate:100,aniso=1000", "sample:plate:100,aniso=12",
+		"sample:seepage:64", "sample:feeder:5000", "sample:line:5000"} {
+		a, _ := sampled(t, spec)
+		checkEstimate(t, spec, a)
+	}
+	checkEstimate(t, "cube", cube(20))
+}
+
+func checkEstimate(t *testing.T, what string, a *linear.CSR) {
+	t.Helper()
+	for _, kind := range kinds[:2] {
+		e, v := lookup(t, kind)
+		_, notes := made(t, a, kind)
+		if most, exact := e.Estimate(a, v); exact || notes.Bytes > most {
+			t.Errorf("%s on %s: %d bytes, estimated %d", kind, what, notes.Bytes, most)
+		}
+		entries := int64(0)
+		for _, l := range notes.Levels {
+			entries += l.Entries
+		}
+		if entries != notes.Entries || math.Abs(notes.Fill*float64(a.Entries())-float64(entries)) > 0.5 {
+			t.Errorf("%s on %s: %d entries, fill %g, levels %v", kind, what, notes.Entries, notes.Fill, notes.Levels)
+		}
+	}
+}
+
+// What is not definite is refused with the reason; what is not symmetric is
+// replaced by its symmetric part.
+func TestAMGOutsideItsTheory(t *testing.T) {
+	var b *Breakdown
+	wave, _ := sampled(t, "sample:acoustics:60")
+	for _, kind := range kinds[:2] {
+		if _, _, err := tryMake(t, wave, kind); !errors.As(err, &b) || !(b.Pivot < 0) {
+			t.Errorf("%s on an indefinite matrix: %v", kind, err)
+		}
+		_, _, err := tryMake(t, fromRows([][]float64{{1, 0}, {0, -1}}), kind)
+		broke(t, err, 1)
+		duct, _ := sampled(t, "sample:duct")
+		m, _ := made(t, duct, kind)
+		part, _ := made(t, symmetricPart(duct), kind)
+		x, y, z := constants(duct.NRows), make([]float64, duct.NRows), make([]float64, duct.NRows)
+		m.Apply(y, x)
+		part.Apply(z, x)
+		for i := range y {
+			if y[i] != z[i] {
+				t.Fatalf("%s: M is not that of the symmetric part", kind)
+			}
+		}
+	}
+}
+
+// Rows that couple to nothing, and matrices that cannot be coarsened, are
+// left to the smoother.
+func TestAMGWithoutCouplings(t *testing.T) {
+	var e []linear.Entry
+	for i := 0; i < 900; i++ {
+		e = append(e, linear.Entry{I: i, J: i, V: float64(i + 1)})
+	}
+	a := linear.FromEntries(900, 900, e)
+	for _, kind := range kinds[:2] {
+		m, _ := made(t, a, kind)
+		if k := steps(m, a, constants(900), 1e-12); k > 1 {
+			t.Errorf("%s: %d iterations on a diagonal matrix", kind, k)
+		}
+	}
+}
+
+// A build is cancelled between levels, too.
+func TestAMGCancelled(t *testing.T) {
+	e, v := lookup(t, "amg")
+	ctx, cancel := context.WithCancel(context.Background())
+	_, _, err := e.Build(ctx, linear.System{A: plate(60)}, v, func(float64) { cancel() })
+	if !errors.Is(err, context.Canceled) {
+		t.Errorf("cancelled on the way: %v", err)
+	}
+}
