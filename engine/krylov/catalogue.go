@@ -21,6 +21,9 @@ var Catalogue = []Entry{
 	bicgstablEntry,
 	bicgstabEntry,
 	gmresEntry,
+	idrEntry,
+	gcrEntry,
+	fgmresEntry,
 }
 
 // Lookup returns the solver of that name.

@@ -37,17 +37,16 @@ func admissible(e krylov.Entry) []string {
 
 // Every pairing converges on symmetric positive definite systems: the theory
 // of each method says so. (BiCGStab's asks for a shadow vector without special
-// structure: with b = e₁ on a line and SSOR, r̂ᵀr is exactly zero. Richardson's
+// structure: with b = e₁ on a line and SSOR, r̂ᵀr is exactly zero, and with
+// b = 1 and an M that keeps row sums r̂ is an eigenvector of (A M⁻¹)ᵀ. Richardson's
 // iteration converges where the spectral radius is below one.)
 func TestEveryPairingConverges(t *testing.T) {
-	random := make([]float64, 24)
-	linear.Uniform(random, 8)
 	systems := map[string]struct {
 		a *linear.CSR
 		b []float64
 	}{
-		"line":  {line(24), random},
-		"plate": {plate(8), ones(64)},
+		"line":  {line(24), random(24, 8)},
+		"plate": {plate(8), random(64, 9)},
 		"diag":  {diagonal(1, 2, 3, 4, 5, 6, 7, 8, 9, 10), ones(10)},
 	}
 	each(t, func(t *testing.T, e krylov.Entry) {
@@ -245,7 +244,7 @@ func TestScaledIdentity(t *testing.T) {
 		x, y := make([]float64, 81), plain.x()
 		s.Solution(x)
 		for i := range x {
-			near(t, "x_i", x[i], y[i], 1e-12)
+			near(t, "x_i", x[i], y[i], 1e-11)
 		}
 	})
 }

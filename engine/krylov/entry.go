@@ -37,6 +37,14 @@ type Curver interface {
 	Curvature() (p, q []float64)
 }
 
+// Watched returns what Reading.Residual measures with those parameters.
+func (e Entry) Watched(v linear.Values) trace.Norm {
+	if e.NormOf != nil {
+		return e.NormOf(v)
+	}
+	return e.Norm
+}
+
 // Entry is one solver of the catalogue.
 type Entry struct {
 	Name, Title string
@@ -45,6 +53,7 @@ type Entry struct {
 	Needs       linear.Has
 	Assumes     linear.Assume
 	Norm        trace.Norm                         // what Reading.Residual measures
+	NormOf      func(linear.Values) trace.Norm     // the same where a parameter decides; nil elsewhere
 	Products    string                             // per step, for display
 	Restarted   bool                               // works in cycles
 	Monotone    bool                               // ‖r‖ cannot grow

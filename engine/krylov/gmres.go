@@ -1,8 +1,6 @@
 package krylov
 
 import (
-	"math"
-
 	"dwindle/engine/linear"
 	"dwindle/engine/trace"
 )
@@ -11,45 +9,37 @@ var gmresEntry = Entry{
 	Name: "gmres", Title: "generalised minimal residual, restarted",
 	Source: "Saad and Schultz, SIAM J. Sci. Stat. Comput. 7 (1986) 856–869",
 	Params: []linear.Param{{Name: "m", Kind: linear.Int, Default: 30, Min: 1, Max: 500,
-		Meaning: "restart length: inner vectors in a cycle"}},
+		Meaning: "restart length: inner vectors in a cycle"},
+		{Name: "side", Kind: linear.Choice, Choices: []string{"right", "left"},
+			Meaning: "where M stands; left watches the length of M⁻¹r"}},
 	Assumes:   linear.AssumesFixedM,
 	Norm:      trace.TwoNorm,
 	Products:  "1 inner vector",
 	Restarted: true,
 	Monotone:  true,
-	Memory: func(n int, v linear.Values) int64 {
-		m := cycle(n, v)
-		return vectors(m+4, n) + hessenbergBytes(m)
+	NormOf: func(v linear.Values) trace.Norm {
+		if v.Choice("side") == "left" {
+			return trace.LeftNorm
+		}
+		return trace.TwoNorm
 	},
-	New: func(v linear.Values) Solver { return &gmres{values: v} },
+	Memory: func(n int, v linear.Values) int64 { return arnoldiBytes(cycle(n, v), n) + vectors(2, n) },
+	New:    func(v linear.Values) Solver { return &gmres{values: v} },
 }
 
 // cycle returns the restart length, which never exceeds n.
 func cycle(n int, v linear.Values) int { return max(1, min(n, v.Int("m"))) }
 
-// gmres is GMRES(m), preconditioned from the right, so that it minimises
-// ‖b − Ax‖₂ over x₀ + M⁻¹K_k(AM⁻¹, r₀). One step is one inner vector:
-//
-//	w = A M⁻¹v_k,  h_i = v_iᵀw,  w −= h_i v_i  (modified Gram–Schmidt)
-//
-// A second pass over the v_i is made when the first cancels: when ‖w‖ falls
-// below 0.1/√2 of what it was. ‖w‖ within rounding of zero is the happy
-// breakdown: the space is exhausted and holds the solution, unless R is
-// singular; then its last column is dropped. The restart happens at the start
-// of the step after a full or exhausted cycle and measures b − Ax again. An
-// exhausted cycle that did not halve the residual so measured is the end: the
-// floor, or, if R was singular, a breakdown.
+// gmres is GMRES(m). Preconditioned from the right it minimises ‖b − Ax‖₂ over
+// x₀ + M⁻¹K_k(AM⁻¹, r₀); from the left, ‖M⁻¹(b − Ax)‖₂ over
+// x₀ + K_k(M⁻¹A, M⁻¹r₀), and that is the number it watches. One step is one
+// inner vector, A M⁻¹v_k or M⁻¹A v_k. The restart happens at the start of the
+// step after a full or exhausted cycle and measures b − Ax again.
 type gmres struct {
-	core
-	values  linear.Values
-	length  int         // of a cycle
-	v       [][]float64 // length+1 orthonormal vectors of length n
-	z, u    []float64   // M⁻¹v and scratch, length n; nil without a preconditioner
-	h       hessenberg
-	spent   bool    // the cycle exhausted its space
-	lost    float64 // then R's last diagonal entry over size, if R is singular; else 1
-	opening float64 // ‖r‖ at the start of the cycle
-	size    float64 // largest ‖A M⁻¹v‖ of the cycle: the scale of H
+	arnoldi
+	values linear.Values
+	left   bool      // M stands left; never without a preconditioner
+	z, u   []float64 // M⁻¹v (left: A v) and scratch, length n; nil without a preconditioner
 }
 
 func (s *gmres) Begin(p Problem) (trace.Reading, error) {
@@ -57,95 +47,43 @@ func (s *gmres) Begin(p Problem) (trace.Reading, error) {
 	if err := s.begin(p); err != nil {
 		return trace.Reading{}, err
 	}
-	s.length = cycle(s.n, s.values)
-	slab := make([]float64, (s.length+1)*s.n)
-	s.v = make([][]float64, s.length+1)
-	for i := range s.v {
-		s.v[i] = slab[i*s.n : (i+1)*s.n : (i+1)*s.n]
-	}
+	s.prepare(cycle(s.n, s.values))
 	if !s.plain {
 		s.z, s.u = make([]float64, s.n), make([]float64, s.n)
 	}
-	s.h = newHessenberg(s.length)
+	s.left = !s.plain && s.values.Choice("side") == "left"
 	res := s.residual(s.v[0], p.X)
+	if s.left && res > 0 && finite(res) {
+		res = s.seen()
+	}
 	s.open(res)
 	return s.start(res), nil
 }
 
-// open starts a cycle: v₀ holds the residual of norm res.
-func (s *gmres) open(res float64) {
-	s.opening, s.size, s.spent, s.lost = res, 0, false, 1
-	s.h.start(res)
-	if res > 0 {
-		linear.Scale(s.v[0], 1/res, s.v[0])
-	}
+// seen turns the residual in v₀ into M⁻¹ of it, and returns its norm.
+func (s *gmres) seen() float64 {
+	copy(s.z, s.v[0])
+	s.m.Apply(s.v[0], s.z)
+	return linear.Norm2(s.v[0])
 }
 
 func (s *gmres) Step() (trace.Reading, error) {
 	s.next()
-	if (s.h.k == s.length || s.spent) && s.restart() {
+	if s.full() && s.restart() {
 		return s.ended()
 	}
-	k := s.h.k
-	w, from := s.v[k+1], s.v[k]
-	if !s.plain {
-		s.m1(from)
-		from = s.z
+	w, from := s.v[s.h.k+1], s.v[s.h.k]
+	switch {
+	case s.plain:
+		s.a.Apply(w, from) // the product
+	case s.left:
+		s.a.Apply(s.z, from)
+		s.m.Apply(w, s.z)
+	default:
+		s.m.Apply(s.z, from)
+		s.a.Apply(w, s.z)
 	}
-	s.a.Apply(w, from) // the product
-	before, after := s.orthogonalise(w)
-	if !finite(before) || !finite(after) {
-		return s.overflow("|A inv(M) v|", before)
-	}
-	s.size = max(s.size, before)
-	zero := 8 * float64(k+1) * unit // rounding left by k+1 projections
-	s.spent = after <= zero*before
-	if d := s.h.rotate(); s.spent && d <= zero*s.size {
-		s.lost = cosine(d, s.size, 1)
-		if k == 0 {
-			return s.broken("R(k,k)", s.lost)
-		}
-		return s.reading(math.NaN(), math.NaN(), false), nil
-	}
-	s.last = s.h.accept()
-	if !s.spent {
-		linear.Scale(w, 1/after, w)
-	}
-	return s.reading(math.NaN(), math.NaN(), false), nil
-}
-
-// m1 computes z = M⁻¹ x.
-func (s *gmres) m1(x []float64) { s.m.Apply(s.z, x) }
-
-// orthogonalise removes the span of v_0..v_k from w and fills the column of H.
-// It returns ‖w‖ before and after.
-func (s *gmres) orthogonalise(w []float64) (before, after float64) {
-	col := s.h.column()
-	clear(col)
-	after = s.project(w, col)
-	before = after
-	for _, h := range col[:s.h.k+1] {
-		before = math.Hypot(before, h)
-	}
-	if after < 0.1*math.Sqrt2/2*before {
-		after = s.project(w, col)
-	}
-	col[s.h.k+1] = after
-	return before, after
-}
-
-// project makes one pass of modified Gram–Schmidt, adds the coefficients to
-// col and returns ‖w‖. Each subtraction shares its pass over w with the next
-// dot product.
-func (s *gmres) project(w, col []float64) float64 {
-	k := s.h.k
-	d := linear.Dot(s.v[0], w)
-	for i := 0; i < k; i++ {
-		col[i] += d
-		d = linear.AxpyDot(-d, s.v[i], w, s.v[i+1])
-	}
-	col[k] += d
-	return root(linear.AxpyDot(-d, s.v[k], w, w), w)
+	return s.extend()
 }
 
 // restart takes the cycle's correction into x, measures the residual afresh
@@ -153,38 +91,30 @@ func (s *gmres) project(w, col []float64) float64 {
 func (s *gmres) restart() (end bool) {
 	s.correct(s.x)
 	res := linear.Residual(s.v[0], s.a, s.x, s.b) // one more product
-	if !finite(res) {
-		s.event(trace.NonFinite, "|b-Ax|", res)
+	if s.left && finite(res) {
+		res = s.seen()
 	}
-	factor := res / s.opening
-	s.event(trace.Restart, "cycle factor", factor)
-	floor := s.spent && factor > 0.5
-	if floor && s.lost < 1 {
-		s.event(trace.Breakdown, "R(k,k)", s.lost)
-	}
-	end = floor || res == 0 || !finite(res)
-	s.last = res
-	s.open(res)
-	return end
+	return s.close(res)
 }
 
-// correct adds M⁻¹ V y to x, where y minimises the residual over the cycle's
-// space.
+// correct adds M⁻¹ V y (left: V y) to x, where y minimises the residual over
+// the cycle's space.
 func (s *gmres) correct(x []float64) {
 	y := s.h.solve()
 	if len(y) == 0 {
 		return
 	}
+	direct := s.plain || s.left
 	sum := x
-	if !s.plain {
+	if !direct {
 		clear(s.u)
 		sum = s.u
 	}
 	for j, yj := range y {
 		linear.Axpy(yj, s.v[j], sum)
 	}
-	if !s.plain {
-		s.m1(s.u)
+	if !direct {
+		s.m.Apply(s.z, s.u)
 		linear.Axpy(1, s.z, x)
 	}
 }

@@ -10,6 +10,7 @@ const (
 	TwoNorm            Norm = "2"                // ‖r‖₂
 	ScaledNorm         Norm = "scaled 2"         // ‖r‖₂ in scaled units
 	PrecondNorm        Norm = "preconditioned"   // √(rᵀM⁻¹r)
+	LeftNorm           Norm = "left"             // ‖M⁻¹r‖₂
 	NormalEquationNorm Norm = "normal-equations" // ‖Aᵀr‖₂
 )
 
