@@ -31,18 +31,19 @@ func affordable(ctx context.Context, a *linear.CSR) (order []int32, ok bool, err
 	return order, work <= maxWork && bytes <= maxBytes, ctx.Err()
 }
 
-// ReverseCuthillMcKee returns an order of the rows of a matrix with symmetric
-// pattern that keeps its entries near the diagonal: the original row of each
-// place. Each component is numbered breadth first from a row far from its
+// ReverseCuthillMcKee returns an order that keeps the entries of A + Aᵀ near
+// the diagonal: the original row of each place. Each component is numbered breadth first from a row far from its
 // middle, neighbours by degree, and the whole is reversed (Cuthill and McKee
 // 1969; George 1971).
-func ReverseCuthillMcKee(a *linear.CSR) []int32 {
-	n := a.NRows
-	w := walk{a: a, level: make([]int32, n)}
+func ReverseCuthillMcKee(a *linear.CSR) linear.Permutation { return reverseCuthillMcKee(patternOf(a)) }
+
+func reverseCuthillMcKee(g *graph) linear.Permutation {
+	n := g.order()
+	w := walk{g: g, level: make([]int32, n)}
 	for i := range w.level {
 		w.level[i] = unseen
 	}
-	order := make([]int32, 0, n)
+	order := make(linear.Permutation, 0, n)
 	for i := range int32(n) {
 		if w.level[i] == unseen {
 			order = w.breadthFirst(order, w.farEnd(i), numbered)
@@ -60,12 +61,12 @@ const (
 
 // walk is a breadth-first search.
 type walk struct {
-	a     *linear.CSR
+	g     *graph
 	level []int32 // distance in the search under way, else unseen or numbered
 	queue []int32
 }
 
-func (w *walk) degree(i int32) int { return w.a.Ptr[i+1] - w.a.Ptr[i] }
+func (w *walk) degree(i int32) int { return len(w.g.neighbours(i)) }
 
 // breadthFirst appends to list what is reached from i, neighbours by degree,
 // and leaves level as the mark; a mark of 0 or more is kept as the distance.
@@ -73,10 +74,9 @@ func (w *walk) breadthFirst(list []int32, i int32, mark int32) []int32 {
 	w.level[i] = mark
 	list = append(list, i)
 	for k := len(list) - 1; k < len(list); k++ {
-		cols, vals := w.a.Row(int(list[k]))
 		from := len(list)
-		for p, j := range cols {
-			if vals[p] != 0 && w.level[j] == unseen {
+		for _, j := range w.g.neighbours(list[k]) {
+			if w.level[j] == unseen {
 				w.level[j] = mark
 				if mark >= 0 {
 					w.level[j] = w.level[list[k]] + 1
