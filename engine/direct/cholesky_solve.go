@@ -109,3 +109,9 @@ func (s *Refined) Solve(dst, b []float64) {
 		linear.Axpy(1, s.d, dst)
 	}
 }
+
+// Beside returns the refined solver of another matrix of the same order that
+// shares the scratch of s: the two must not be used at once.
+func (s *Refined) Beside(a linear.Applier, by Solver) *Refined {
+	return &Refined{A: a, By: by, Steps: s.Steps, r: s.r, d: s.d}
+}

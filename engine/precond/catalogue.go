@@ -18,6 +18,9 @@ var Catalogue = []Entry{
 	ilutpEntry,
 	givenEntry,
 	ownFactorsEntry,
+	choleskyEntry,
+	ldlEntry,
+	luEntry,
 }
 
 // Lookup returns the preconditioner of that name.
