@@ -10,7 +10,7 @@ var gmresEntry = Entry{
 	Source: "Saad and Schultz, SIAM J. Sci. Stat. Comput. 7 (1986) 856–869",
 	Params: []linear.Param{{Name: "m", Kind: linear.Int, Default: 30, Min: 1, Max: 500,
 		Meaning: "restart length: inner vectors in a cycle"},
-		{Name: "side", Kind: linear.Choice, Choices: []string{"right", "left"},
+		{Name: "side", Kind: linear.Choice, Choices: []string{"right", "left"}, Quiet: true,
 			Meaning: "where M stands; left watches the length of M⁻¹r"}},
 	Assumes:   linear.AssumesFixedM,
 	Norm:      trace.TwoNorm,

@@ -69,6 +69,8 @@ var someParams = []Param{
 	{Name: "m", Kind: Int, Default: 30, Min: 1, Max: 1000},
 	{Name: "tau", Kind: Real, Default: 1e-3, Min: 0, Max: 1},
 	{Name: "side", Kind: Choice, Default: 1, Choices: []string{"left", "right"}},
+	{Name: "form", Kind: Choice, Choices: []string{"plain", "fast"}, Quiet: true},
+	{Name: "age", Kind: Int, Default: 2, Min: 0, Max: 9, Quiet: true},
 }
 
 func TestResolve(t *testing.T) {
@@ -85,7 +87,7 @@ func TestResolve(t *testing.T) {
 	}
 	for in, part := range map[string]string{
 		"s:0": "1 to 1000", "s:1.5": "whole", "s:x=1": "no parameter", "s:m=1,m=2": "twice", "s:1,m=2": "twice",
-		"s:1,2": "0 to 1", "s:1,.1,up": "one of", "s:1,.1,left,4": "takes 3", "s:NaN": "number", "s:1e999": "number",
+		"s:1,2": "0 to 1", "s:1,.1,up": "one of", "s:1,.1,left,4": "one of", "s:1,.1,left,fast,1,1": "takes 5", "s:NaN": "number", "s:1e999": "number",
 	} {
 		p, err := ParsePairing(in)
 		if err != nil {
@@ -93,6 +95,22 @@ func TestResolve(t *testing.T) {
 		}
 		if _, err = Resolve("s", someParams, p.Solver.Args); err == nil || !strings.Contains(err.Error(), part) {
 			t.Errorf("%s: %v, want a word about %q", in, err, part)
+		}
+	}
+}
+
+// A quiet parameter is printed only where it, or one after it, is not at its
+// default.
+func TestQuietParameters(t *testing.T) {
+	for in, want := range map[string]string{"s": "s:30,1e-3,right", "s:form=plain,age=2": "s:30,1e-3,right",
+		"s:form=fast": "s:30,1e-3,right,fast", "s:age=3": "s:30,1e-3,right,plain,3", "s:age=0": "s:30,1e-3,right,plain,0"} {
+		p, err := ParsePairing(in)
+		if err != nil {
+			t.Fatal(err)
+		}
+		v, err := Resolve("s", someParams, p.Solver.Args)
+		if s := (Part{Name: "s", Args: v.Args()}).String(); err != nil || s != want {
+			t.Errorf("%s is printed %s, want %s (%v)", in, s, want, err)
 		}
 	}
 }
@@ -107,7 +125,7 @@ func TestShortNumbers(t *testing.T) {
 }
 
 var pairingSeeds = []string{"cg", "cg+ic:0", "gmres(30)+ilu(0)", "match,rcm/gmres:30+ilut:1e-3,10", "cg+ssor:omega=1.5",
-	"cg+ssor:1.0..1.9..0.1", "a:1,b=2,c/d:+1+e:.5", "x:1e+3+y", "s:7,0.5,left+none", "cg+ic:1e-14..3e-14..1e-14"}
+	"cg+ssor:1.0..1.9..0.1", "a:1,b=2,c/d:+1+e:.5", "x:1e+3+y", "s:7,0.5,left+none", "s:age=3,form=fast", "s:form=fast+none", "cg+ic:1e-14..3e-14..1e-14"}
 
 // What is read prints to something that reads to the same; what resolves is
 // printed in one canonical form that resolves to itself.

@@ -51,6 +51,7 @@ type Param struct {
 	Default  float64  // for Choice: index into Choices
 	Min, Max float64  // inclusive bounds for Int and Real
 	Choices  []string // for Choice
+	Quiet    bool     // not printed at its default, unless a later one is
 	Meaning  string   // one line
 }
 
@@ -159,10 +160,15 @@ func (v Values) index(name string) int {
 	return i
 }
 
-// Args returns the values as written in a pairing, every one, in order.
+// Args returns the values as written in a pairing, in order: every one but the
+// last where those are quiet and at their defaults.
 func (v Values) Args() []Arg {
-	args := make([]Arg, len(v.params))
-	for i, p := range v.params {
+	n := len(v.params)
+	for n > 0 && v.params[n-1].Quiet && v.vals[n-1] == v.params[n-1].Default {
+		n--
+	}
+	args := make([]Arg, n)
+	for i, p := range v.params[:n] {
 		switch p.Kind {
 		case Choice:
 			args[i] = Arg{Text: p.Choices[int(v.vals[i])]}
