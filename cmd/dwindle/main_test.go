@@ -126,7 +126,7 @@ func TestOptions(t *testing.T) {
 		"run":     "pair today guess tol stop iterations seconds trial-seconds rhs threads memory identify as out history solution strict",
 		"facts":   "rhs threads memory identify as out",
 		"sample":  "out",
-		"methods": "",
+		"methods": "measure threads",
 	} {
 		c, _, err := root.Find(strings.Fields(path))
 		if err != nil {
