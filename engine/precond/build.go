@@ -55,3 +55,20 @@ func triangle(n, entries int) *linear.CSR {
 
 // triangleBytes returns what triangle(n, entries) takes.
 func triangleBytes(n, entries int) int64 { return int64(entries)*12 + int64(n+1)*8 }
+
+// makeRoom lets t take need more entries while row i is built: it looks ahead
+// by what the rows so far took, so that a factor is moved two or three times
+// on its way.
+func makeRoom(t *linear.CSR, i, need int) {
+	length := len(t.Col) + need
+	if length <= cap(t.Col) {
+		return
+	}
+	room := 2 * length
+	if i > t.NRows/16 {
+		ahead := int(1.05 * float64(length) / float64(i) * float64(t.NRows))
+		room = min(max(ahead, length+length/8), 4*length)
+	}
+	t.Col = append(make([]int32, 0, room), t.Col...)
+	t.Val = append(make([]float64, 0, room), t.Val...)
+}

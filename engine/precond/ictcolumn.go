@@ -124,6 +124,7 @@ func (k *ictWork) store(j int, d, drop float64, most int) {
 	k.sizes, n = largest(kept, k.vals, most, k.sizes)
 	sortRow(kept[:n], k.vals[:n])
 	k.next[j] = len(k.l.Col)
+	makeRoom(k.l, j, n)
 	k.l.Col, k.l.Val = append(k.l.Col, kept[:n]...), append(k.l.Val, k.vals[:n]...)
 	k.l.Ptr[j+1] = len(k.l.Col)
 	k.enlist(j)

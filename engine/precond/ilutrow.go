@@ -135,6 +135,8 @@ func (k *ilutWork) exchange(i int) {
 // store appends row i of L and of R.
 func (k *ilutWork) store(i int, inverse float64) {
 	l, r := k.f.lower, k.f.upper
+	makeRoom(l, i, len(k.lcol))
+	makeRoom(r, i, len(k.ucol))
 	l.Col, l.Val = append(l.Col, k.lcol...), append(l.Val, k.lval...)
 	sortRow(k.ucol, k.uval)
 	for p, j := range k.ucol {

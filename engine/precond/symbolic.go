@@ -83,13 +83,15 @@ func filled(ctx context.Context, a *linear.CSR, k int) (*linear.CSR, error) {
 	}
 	f := newFill(a, k)
 	out := triangle(a.NRows, a.Entries())
-	end := int32(a.NRows)
+	end, low := int32(a.NRows), 0
 	for i := 0; i < a.NRows; i++ {
 		if err := look(ctx, nil, i, a.NRows); err != nil {
 			return nil, err
 		}
 		f.row(i)
 		cols, vals := a.Row(i)
+		makeRoom(out, i, f.low-low+f.ptr[i+1]-f.ptr[i]+1)
+		low = f.low
 		for c := f.next[end]; c != end; c = f.next[c] {
 			v := 0.0
 			if len(cols) > 0 && cols[0] == c {
