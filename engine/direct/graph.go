@@ -13,6 +13,14 @@ func (g *graph) order() int { return len(g.ptr) - 1 }
 
 func (g *graph) neighbours(i int32) []int32 { return g.adj[g.ptr[i]:g.ptr[i+1]] }
 
+func (g *graph) maxDegree() int {
+	most := 0
+	for i := range g.order() {
+		most = max(most, g.ptr[i+1]-g.ptr[i])
+	}
+	return most
+}
+
 // patternOf returns the graph of A + Aᵀ. Stored zeros count as absent.
 func patternOf(a *linear.CSR) *graph {
 	n := a.NRows

@@ -26,13 +26,14 @@ type LUPlan struct {
 // is applied to A + Aᵀ where at least half of the off-diagonal entries have a
 // partner and the diagonal has no zeros, else to AᵀA.
 func PlanLU(a *linear.CSR, how Ordering) *LUPlan {
-	sum := patternOf(a)
-	p := &LUPlan{Diagonal: mostlySymmetric(a, sum)}
-	g := sum
-	if !p.Diagonal {
-		g = columnGraph(a, max(16, int(10*math.Sqrt(float64(a.NCols)))))
+	p := &LUPlan{Diagonal: mostlySymmetric(a)}
+	var s *Symbolic
+	if p.Diagonal {
+		s = Predict(a, how)
+	} else {
+		g := columnGraph(a, max(16, int(10*math.Sqrt(float64(a.NCols)))))
+		s = analyse(g, orderGraph(g, how))
 	}
-	s := analyse(g, orderGraph(g, how))
 	p.Columns, p.Work = s.Order, 2*s.Work
 	p.Entries = 2*s.Entries - int64(s.N)
 	if how == Unmoved {
@@ -41,9 +42,8 @@ func PlanLU(a *linear.CSR, how Ordering) *LUPlan {
 	return p
 }
 
-// mostlySymmetric says whether pivots on the diagonal are a fair choice. sum
-// is the graph of A + Aᵀ.
-func mostlySymmetric(a *linear.CSR, sum *graph) bool {
+// mostlySymmetric says whether pivots on the diagonal are a fair choice.
+func mostlySymmetric(a *linear.CSR) bool {
 	off := 0
 	for i := range a.NRows {
 		cols, vals := a.Row(i)
@@ -61,7 +61,7 @@ func mostlySymmetric(a *linear.CSR, sum *graph) bool {
 			return false
 		}
 	}
-	paired := 2*off - len(sum.adj)
+	paired := 2*off - len(patternOf(a).adj)
 	return 2*paired >= off
 }
 

@@ -40,18 +40,26 @@ func PredictLU(a *linear.CSR, how Ordering) *LUPlan {
 
 // get finds what was remembered of a, or makes it.
 func (m *memo) get(a *linear.CSR, how Ordering, has func(*remembered) bool, make func(*remembered)) remembered {
-	key := weak.Make(a)
+	r := remembered{of: weak.Make(a), how: how}
+	if m.find(&r, has) {
+		return r
+	}
+	make(&r)
 	m.Lock()
 	defer m.Unlock()
-	for k, r := range m.list {
-		if r.of == key && r.how == how && has(&r) {
-			copy(m.list[1:k+1], m.list[:k])
-			m.list[0] = r
-			return r
-		}
-	}
-	r := remembered{of: key, how: how}
-	make(&r)
 	m.list = append([]remembered{r}, m.list[:min(len(m.list), memoLength-1)]...)
 	return r
+}
+
+// find completes r by what was remembered of the same matrix, if has agrees.
+func (m *memo) find(r *remembered, has func(*remembered) bool) bool {
+	m.Lock()
+	defer m.Unlock()
+	for _, q := range m.list {
+		if q.of == r.of && q.how == r.how && has(&q) {
+			*r = q
+			return true
+		}
+	}
+	return false
 }

@@ -7,7 +7,7 @@ type Ordering string
 
 // The orders.
 const (
-	Best    Ordering = "best"    // the one of AMD and ND that takes fewer operations
+	Best    Ordering = "best"    // the one of AMD and ND that takes fewer operations; ND alone for large meshes
 	AMD     Ordering = "amd"     // MinimumDegree
 	ND      Ordering = "nd"      // NestedDissection
 	RCM     Ordering = "rcm"     // ReverseCuthillMcKee
@@ -40,11 +40,21 @@ func orderGraph(g *graph, how Ordering) linear.Permutation {
 	return cheaper(g)
 }
 
+// alone is the number of vertices beyond which nested dissection is taken
+// without a comparison: on meshes of that size it always won, and orders cost
+// seconds.
+const alone = 200_000
+
 // cheaper returns the order of AMD and ND whose factorisation takes fewer
-// operations.
+// operations; beyond 200 000 vertices ND, unless the degrees are so uneven
+// that the graph is no mesh.
 func cheaper(g *graph) linear.Permutation {
+	n := g.order()
+	if n > alone && g.maxDegree() <= 16*(1+len(g.adj)/n) {
+		return nestedDissection(g)
+	}
 	amd := minimumDegree(g, 0)
-	if g.order() <= leafSize {
+	if n <= leafSize {
 		return amd // the same
 	}
 	if nd := nestedDissection(g); analyse(g, nd).Work < analyse(g, amd).Work {

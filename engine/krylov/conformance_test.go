@@ -75,7 +75,12 @@ func TestStepAllocatesNothing(t *testing.T) {
 				name += ":3"
 			}
 			r := begun(t, a, ones(1600), nil, name+"+"+p)
-			if got := testing.AllocsPerRun(10, func() { r.step() }); got != 0 {
+			step := func() {
+				if !r.last.Done { // a direct solve ends sooner
+					r.step()
+				}
+			}
+			if got := testing.AllocsPerRun(10, step); got != 0 {
 				t.Errorf("%s+%s allocates %g times a step", name, p, got)
 			}
 		}

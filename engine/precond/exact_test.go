@@ -107,3 +107,18 @@ func TestExactOnOpenMatrices(t *testing.T) {
 		}
 	}
 }
+
+// A direct solve allocates nothing, transposed or not.
+func TestExactAllocatesNothing(t *testing.T) {
+	a := plate(30)
+	x, y := make([]float64, 900), make([]float64, 900)
+	linear.Uniform(x, 1)
+	for _, name := range []string{"cholesky", "ldl", "lu"} {
+		m, _ := made(t, a, name)
+		for what, f := range map[string]func(dst, x []float64){"Apply": m.Apply, "ApplyT": m.(linear.Transposer).ApplyT} {
+			if got := testing.AllocsPerRun(5, func() { f(y, x) }); got != 0 {
+				t.Errorf("%s of %s allocates %g times", what, name, got)
+			}
+		}
+	}
+}
