@@ -56,7 +56,7 @@ func settle(m *model, cmd tea.Cmd) []tea.Msg {
 	var msg tea.Msg
 	select {
 	case msg = <-got:
-	case <-time.After(30 * time.Millisecond):
+	case <-time.After(300 * time.Millisecond):
 		return nil
 	}
 	if all, ok := msg.(tea.BatchMsg); ok {
