@@ -32,6 +32,11 @@ func (c *digitCount) add(x decimal) {
 	c.loose = c.loose || !x.exact()
 }
 
+// join takes note of the values that another count saw.
+func (c *digitCount) join(o digitCount) {
+	c.most, c.loose = max(c.most, o.most), c.loose || o.loose
+}
+
 // result returns the digits of the file, 1 to 17.
 func (c *digitCount) result() int {
 	if !c.loose {

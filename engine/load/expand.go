@@ -9,45 +9,78 @@ import (
 
 // matrix expands the entries into compressed rows. merged counts the entries
 // of the expanded matrix that were summed into another one.
+//
+// It is a counting sort by rows on all threads: every thread has a group of
+// entries that follow one another in the file, and knows where each row's part
+// of its group begins. So every row is filled in file order, however many
+// threads there are.
 func (c *collector) matrix(ctx context.Context) (a *linear.CSR, merged int, err error) {
-	a = &linear.CSR{NRows: c.n, NCols: c.n}
-	total := c.t.n
-	if c.sym != general {
-		total += c.lower + c.upper
-	}
-	ptr := c.rowStarts()
-	a.Col, a.Val = make([]int32, total), make([]float64, total)
-	for _, p := range c.t.pieces {
-		if err := ctx.Err(); err != nil {
-			return nil, 0, err
+	groups := c.groups(linear.Threads())
+	next := make([][]int, len(groups))
+	linear.Parallel(len(groups), func(g int) { next[g] = c.countRows(groups[g]) })
+	a = &linear.CSR{NRows: c.n, NCols: c.n, Ptr: rowStarts(next, c.n)}
+	a.Col, a.Val = make([]int32, a.Ptr[c.n]), make([]float64, a.Ptr[c.n])
+	linear.Parallel(len(groups), func(g int) {
+		for _, p := range groups[g] {
+			if ctx.Err() == nil {
+				c.place(a, next[g], p)
+			}
 		}
-		c.place(a, ptr, p)
+	})
+	if err := ctx.Err(); err != nil {
+		return nil, 0, err
 	}
-	a.Ptr = ptr[:c.n+1]
-	return a, a.Compact(), nil
+	return a, sortRows(a), nil
 }
 
-// rowStarts returns, at r+1, where row r starts, with one place more behind:
-// filling a row moves its entry on to where the row ends, which is Ptr.
-func (c *collector) rowStarts() []int {
-	ptr := make([]int, c.n+2)
-	for _, p := range c.t.pieces {
+// groups cuts the entries into runs of about equal length, at most as many as
+// there are threads. Each needs 8 bytes a row: with k entries a row there are
+// at most (6+k)/4, so that they never take more than a quarter of the matrix
+// and the entries together.
+func (c *collector) groups(threads int) (groups [][]piece) {
+	most := min(threads, (6+c.t.n/c.n)/4)
+	taken, start := 0, 0
+	for k, p := range c.t.pieces {
+		taken += len(p.row)
+		if taken*most >= c.t.n*(len(groups)+1) {
+			groups = append(groups, c.t.pieces[start:k+1])
+			start = k + 1
+		}
+	}
+	return groups
+}
+
+// countRows counts what each row takes of a group.
+func (c *collector) countRows(group []piece) []int {
+	rows := make([]int, c.n)
+	for _, p := range group {
 		for k, i := range p.row {
-			ptr[i+2]++
+			rows[i]++
 			if j := p.col[k]; c.sym != general && i != j {
-				ptr[j+2]++
+				rows[j]++
 			}
 		}
 	}
-	for r := 2; r < len(ptr); r++ {
-		ptr[r] += ptr[r-1]
+	return rows
+}
+
+// rowStarts turns the counts of the groups into the places where each begins
+// to fill a row, and returns where the rows start.
+func rowStarts(next [][]int, n int) (ptr []int) {
+	ptr = make([]int, n+1)
+	at := 0
+	for r := range n {
+		for _, rows := range next {
+			at, rows[r] = at+rows[r], at
+		}
+		ptr[r+1] = at
 	}
 	return ptr
 }
 
-// place puts the entries of one piece, and their mirror images, where ptr
+// place puts the entries of one piece, and their mirror images, where next
 // says.
-func (c *collector) place(a *linear.CSR, ptr []int, p piece) {
+func (c *collector) place(a *linear.CSR, next []int, p piece) {
 	mirror := 1.0
 	if c.sym == skew {
 		mirror = -1
@@ -57,13 +90,13 @@ func (c *collector) place(a *linear.CSR, ptr []int, p piece) {
 		if p.val != nil {
 			v = p.val[k]
 		}
-		at := ptr[i+1]
+		at := next[i]
 		a.Col[at], a.Val[at] = j, v
-		ptr[i+1]++
+		next[i] = at + 1
 		if c.sym != general && i != j {
-			at := ptr[j+1]
+			at := next[j]
 			a.Col[at], a.Val[at] = i, mirror*v
-			ptr[j+1]++
+			next[j] = at + 1
 		}
 	}
 }

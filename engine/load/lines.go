@@ -26,6 +26,8 @@ type lines struct {
 	size     int64  // bytes of text in the stream, -1 if unknown
 	read     int64  // bytes taken from r
 	report   func() // called after every read; may be nil
+	raw      *counter
+	whole    *whole // the file, where it lies in memory; nil for a stream
 }
 
 // next returns the next line without its end, valid until the next call. It
@@ -33,17 +35,21 @@ type lines struct {
 func (l *lines) next() ([]byte, bool) {
 	for l.err == nil {
 		rest := l.buf[l.pos:l.end]
-		if k := bytes.IndexByte(rest, '\n'); k >= 0 {
+		switch k := bytes.IndexByte(rest, '\n'); {
+		case k > maxLine || k < 0 && len(rest) > maxLine:
+			l.num++
+			l.err = l.fail("the line is longer than %d bytes", maxLine)
+		case k >= 0:
 			l.pos += k + 1
 			return l.line(rest[:k]), true
-		}
-		if l.atEOF {
-			if l.pos = l.end; len(rest) == 0 {
-				return nil, false
-			}
+		case !l.atEOF:
+			l.fill()
+		case len(rest) > 0:
+			l.pos = l.end
 			return l.line(rest), true
+		default:
+			return nil, false
 		}
-		l.fill()
 	}
 	return nil, false
 }
@@ -59,11 +65,6 @@ func (l *lines) line(b []byte) []byte {
 // fill reads on behind what is not handed out yet.
 func (l *lines) fill() {
 	if l.err = l.ctx.Err(); l.err != nil {
-		return
-	}
-	if l.end-l.pos >= maxLine {
-		l.num++
-		l.err = l.fail("the line is longer than %d bytes", maxLine)
 		return
 	}
 	if l.end-l.pos > len(l.buf)/2 {

@@ -14,30 +14,27 @@ func readMatrixMarket(l *lines) (linear.System, error) {
 	if err := checkOrder(l, h.rows, h.cols, h.stored); err != nil {
 		return linear.System{}, err
 	}
-	c := &collector{n: h.rows, sym: h.sym, t: triplets{bare: h.field == "pattern"}}
+	c := h.collector()
 	if h.array {
-		return readArray(l, h, c)
+		return readArray(l, h, &c)
 	}
-	return readCoordinates(l, h, c)
+	return readCoordinates(l, h, &c)
+}
+
+func (h *mmHeader) collector() collector {
+	return collector{n: h.rows, sym: h.sym, t: triplets{bare: h.field == "pattern"}}
 }
 
 func readCoordinates(l *lines, h mmHeader, c *collector) (linear.System, error) {
 	at := lineTable{next: l.num + 1}
-	for k := 0; k < h.stored; {
-		line, ok := l.next()
-		if !ok {
-			return linear.System{}, l.fail("the size line claims %d entries; the file ends after %d", h.stored, k)
-		}
-		if blank(line) || line[0] == '%' {
-			continue
-		}
-		i, j, v, err := h.entry(l, c, line)
-		if err != nil {
-			return linear.System{}, err
-		}
-		c.add(int32(i-1), int32(j-1), v, h.stored-k)
-		at.add(k, l.num)
-		k++
+	if err := h.parallel(l, c, &at); err != nil {
+		return linear.System{}, err
+	}
+	if err := h.entries(l, c, &at, h.stored); err != nil {
+		return linear.System{}, err
+	}
+	if c.t.n < h.stored {
+		return linear.System{}, l.fail("the size line claims %d entries; the file ends after %d", h.stored, c.t.n)
 	}
 	if err := l.onlyBlank(true, "the last entry"); err != nil {
 		return linear.System{}, err
@@ -45,8 +42,28 @@ func readCoordinates(l *lines, h mmHeader, c *collector) (linear.System, error) 
 	return c.system(l, h.title(), at.line)
 }
 
+// entries reads entries until there are most of them or the text ends.
+func (h *mmHeader) entries(l *lines, c *collector, at *lineTable, most int) error {
+	for c.t.n < most {
+		line, ok := l.next()
+		if !ok {
+			return l.err
+		}
+		if blank(line) || line[0] == '%' {
+			continue
+		}
+		i, j, v, err := h.entry(l, c, line)
+		if err != nil {
+			return err
+		}
+		at.add(c.t.n, l.num)
+		c.add(int32(i-1), int32(j-1), v, most-c.t.n)
+	}
+	return nil
+}
+
 // entry reads one line: row, column and, but for a pattern, value.
-func (h mmHeader) entry(l *lines, c *collector, line []byte) (i, j int, v float64, err error) {
+func (h *mmHeader) entry(l *lines, c *collector, line []byte) (i, j int, v float64, err error) {
 	i, rest, ok := count(line)
 	if !ok {
 		return 0, 0, 0, badIndex(l, "row", rest)
@@ -73,7 +90,7 @@ func (h mmHeader) entry(l *lines, c *collector, line []byte) (i, j int, v float6
 }
 
 // value reads the value that stands first in s.
-func (h mmHeader) value(l *lines, c *collector, s []byte) (v float64, rest []byte, err error) {
+func (h *mmHeader) value(l *lines, c *collector, s []byte) (v float64, rest []byte, err error) {
 	s = skipBlank(s)
 	x, n := scanDecimal(s, false)
 	if n == 0 || n < len(s) && !isBlank(s[n]) {

@@ -11,14 +11,24 @@ import (
 	"dwindle/engine/linear"
 )
 
-// File reads the system in the file at path; see Read.
+// File reads the system in the file at path; see Read. A plain coordinate file
+// is read on all threads.
 func File(ctx context.Context, path string, progress func(float64)) (linear.System, error) {
 	f, size, err := open(path)
 	if err != nil {
 		return linear.System{}, err
 	}
 	defer f.Close()
-	return Read(ctx, path, f, size, progress)
+	l, err := newLines(ctx, path, f, size, progress)
+	if err != nil {
+		return linear.System{}, err
+	}
+	if l.size >= 0 {
+		whole, unmap := mapFile(f, size)
+		defer unmap()
+		l.whole = whole
+	}
+	return l.system(progress)
 }
 
 // Read reads a system from r: a Matrix Market, Harwell–Boeing or
@@ -35,6 +45,11 @@ func Read(ctx context.Context, name string, r io.Reader, size int64, progress fu
 	if err != nil {
 		return linear.System{}, err
 	}
+	return l.system(progress)
+}
+
+// system reads the system that l begins with.
+func (l *lines) system(progress func(float64)) (linear.System, error) {
 	read, err := l.format()
 	if err != nil {
 		return linear.System{}, err
@@ -43,7 +58,7 @@ func Read(ctx context.Context, name string, r io.Reader, size int64, progress fu
 	if err != nil {
 		return linear.System{}, err
 	}
-	s.Name = shortName(name)
+	s.Name = shortName(l.name)
 	if progress != nil {
 		progress(1)
 	}
@@ -71,12 +86,11 @@ func open(path string) (f *os.File, size int64, err error) {
 
 // newLines starts to read r, through gzip if its first bytes say so.
 func newLines(ctx context.Context, name string, r io.Reader, size int64, progress func(float64)) (*lines, error) {
-	l := &lines{ctx: ctx, name: name, size: size, buf: make([]byte, bufferSize)}
-	raw := &counter{r: r}
+	l := &lines{ctx: ctx, name: name, size: size, buf: make([]byte, bufferSize), raw: &counter{r: r}}
 	if progress != nil && size > 0 {
-		l.report = func() { progress(min(float64(raw.n)/float64(size), 1)) }
+		l.report = func() { progress(min(float64(l.raw.n)/float64(size), 1)) }
 	}
-	b := bufio.NewReaderSize(raw, 4096)
+	b := bufio.NewReaderSize(l.raw, 4096)
 	l.r = b
 	head, err := b.Peek(6)
 	if err != nil && err != io.EOF {

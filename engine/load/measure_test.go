@@ -1,0 +1,59 @@
+//go:build measure
+
+package load
+
+import (
+	"fmt"
+	"os"
+	"runtime"
+	"runtime/debug"
+	"strconv"
+	"strings"
+	"testing"
+	"time"
+
+	"dwindle/engine/linear"
+)
+
+// TestMeasureLoad loads the file named by DWINDLE_MEASURE_LOAD on the threads
+// that DWINDLE_MEASURE_THREADS names, 2 if it is not set, and prints the
+// seconds it took, the entries, the bytes of the matrix, and the process's
+// peak memory in bytes, with what it was before.
+func TestMeasureLoad(t *testing.T) {
+	threads := 2
+	if v := os.Getenv("DWINDLE_MEASURE_THREADS"); v != "" {
+		var err error
+		if threads, err = strconv.Atoi(v); err != nil {
+			t.Fatal(err)
+		}
+	}
+	linear.SetThreads(threads)
+	debug.FreeOSMemory()
+	before := peakMemory(t)
+	start := time.Now()
+	s := load(t, os.Getenv("DWINDLE_MEASURE_LOAD"))
+	taken := time.Since(start)
+	peak := peakMemory(t)
+	a := s.Matrix()
+	sum := 0.0
+	for _, v := range a.Val {
+		sum += v
+	}
+	fmt.Printf("\nload %.6f %d %.17g %d %d %d\n", taken.Seconds(), a.Entries(), sum, a.Bytes(), peak, before)
+	runtime.KeepAlive(s)
+}
+
+// peakMemory returns the most memory that the process ever had, mapped files
+// included.
+func peakMemory(t *testing.T) int64 {
+	b, err := os.ReadFile("/proc/self/status")
+	if err != nil {
+		t.Fatal(err)
+	}
+	_, rest, _ := strings.Cut(string(b), "VmHWM:")
+	var kib int64
+	if _, err := fmt.Sscan(rest, &kib); err != nil {
+		t.Fatal(err)
+	}
+	return kib << 10
+}
