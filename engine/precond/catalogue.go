@@ -4,6 +4,7 @@ package precond
 var Catalogue = []Entry{
 	noneEntry,
 	jacobiEntry,
+	blockJacobiEntry,
 	gsEntry,
 	sorEntry,
 	sgsEntry,
@@ -16,6 +17,9 @@ var Catalogue = []Entry{
 	miluEntry,
 	ilutEntry,
 	ilutpEntry,
+	fsaiEntry,
+	spaiEntry,
+	polyEntry,
 	givenEntry,
 	ownFactorsEntry,
 	choleskyEntry,
