@@ -6,6 +6,12 @@ import "slices"
 var Catalogue = []Entry{
 	scaleEntry,
 	projectEntry,
+	matchEntry,
+	symmetriseEntry,
+	rcmEntry,
+	amdEntry,
+	ndEntry,
+	colourEntry,
 }
 
 // Lookup returns the preparation of that name.

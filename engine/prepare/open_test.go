@@ -2,6 +2,7 @@ package prepare_test
 
 import (
 	"context"
+	"math"
 	"os"
 	"path/filepath"
 	"testing"
@@ -62,6 +63,39 @@ func TestConditionAfterScaling(t *testing.T) {
 		t.Logf("%s: %.4g raw, %.4g scaled", c.file, raw, scaled)
 		if raw < c.rawLow || raw > c.rawHigh || scaled < c.low || scaled > c.top {
 			t.Errorf("%s: condition %.4g raw, %.4g scaled", c.file, raw, scaled)
+		}
+	}
+}
+
+// west0479 has 471 zeros on its diagonal; matched, none, and every other entry
+// is at most 1 (Duff and Koster 2001).
+func TestMatchOnOpenMatrices(t *testing.T) {
+	dir := os.Getenv("DWINDLE_OPEN")
+	if dir == "" {
+		t.Skip("DWINDLE_OPEN does not name the folder of open matrices")
+	}
+	for _, file := range []string{"west0479.mtx", "west0067.rua", "arc130.rua", "fs_183_1.mtx", "rajat19.mtx", "reorientation_1.mtx"} {
+		s, err := load.File(context.Background(), filepath.Join(dir, file), nil)
+		if err != nil {
+			t.Fatal(err)
+		}
+		s.B = make([]float64, s.N())
+		e, _ := prepare.Lookup("match")
+		p, _, err := e.Apply(context.Background(), s, linear.Values{})
+		if err != nil {
+			t.Fatal(err)
+		}
+		m := p.Matrix()
+		if file == "west0479.mtx" || file == "arc130.rua" {
+			t.Logf("%s: condition %.4g raw, %.4g matched", file, condition(s.Matrix()), condition(m))
+		}
+		for i := range m.NRows {
+			if d := math.Abs(m.At(i, i)); math.Abs(d-1) > 1e-11 {
+				t.Fatalf("%s: diagonal entry %d has magnitude %.15g", file, i+1, d)
+			}
+			if _, vals := m.Row(i); linear.NormInf(vals) > 1+1e-11 {
+				t.Fatalf("%s: row %d has an entry of magnitude %.15g", file, i+1, linear.NormInf(vals))
+			}
 		}
 	}
 }
