@@ -7,6 +7,7 @@ var Catalogue = []Entry{
 	chebyshevEntry,
 	cgEntry,
 	fcgEntry,
+	dcgEntry,
 	crEntry,
 	minresEntry,
 	symmlqEntry,

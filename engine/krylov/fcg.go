@@ -53,12 +53,12 @@ func (s *fcg) Begin(p Problem) (trace.Reading, error) {
 	if !s.plain {
 		s.z = make([]float64, s.n)
 	}
-	s.p, s.q, s.pq = basis(s.kept, s.n), basis(s.kept, s.n), make([]float64, s.kept)
+	s.p, s.q, s.pq = arrays(s.kept, s.n), arrays(s.kept, s.n), make([]float64, s.kept)
 	return s.start(s.residual(s.r, p.X)), nil
 }
 
-// basis returns k vectors of length n.
-func basis(k, n int) [][]float64 {
+// arrays returns k vectors of length n.
+func arrays(k, n int) [][]float64 {
 	v := make([][]float64, k)
 	for i := range v {
 		v[i] = make([]float64, n)

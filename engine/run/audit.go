@@ -93,11 +93,32 @@ func (t *Trial) inOwnNorm(true2 float64) float64 {
 		true2 = linear.Residual(s.own, t.prepared.A, s.w, t.prepared.B)
 		r = s.own
 	}
-	if t.method.Solver.Norm != trace.PrecondNorm || t.method.Precond.Name == "none" {
-		return true2
+	return t.ownNorm(r, true2)
+}
+
+// ownNorm returns the size of a residual r of the prepared system in the norm
+// that the method watches, where two is ‖r‖₂. r may lie in the scratch, but not
+// in w. Nothing is counted.
+func (t *Trial) ownNorm(r []float64, two float64) float64 {
+	s, plain := t.scratch, t.method.Precond.Name == "none"
+	switch t.method.Solver.Norm {
+	case trace.PrecondNorm:
+		if plain {
+			return two
+		}
+		t.m.inner.Apply(s.w, r)
+		return math.Sqrt(math.Max(0, linear.Dot(r, s.w)))
+	case trace.NormalEquationNorm:
+		at, _ := linear.As[linear.Transposer](t.prepared.A)
+		at.ApplyT(s.w, r)
+		if plain {
+			return linear.Norm2(s.w)
+		}
+		mt, _ := linear.As[linear.Transposer](t.m.inner)
+		mt.ApplyT(s.own, s.w) // r has had its last use
+		return linear.Norm2(s.own)
 	}
-	t.m.Apply(s.w, r)
-	return math.Sqrt(math.Max(0, linear.Dot(r, s.w)))
+	return two
 }
 
 // normalResidual returns ‖Aᵀr‖₂/(‖A‖_F‖r‖₂) for the residual in the scratch.

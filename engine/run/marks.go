@@ -36,6 +36,7 @@ type numbers struct {
 	r, b, r0  float64 // own residual norm, that of b, the first one
 	backward  float64 // own estimate of the backward error; NaN before an audit
 	precond   bool    // the own norm is the preconditioned one
+	normal    bool    // the own norm is that of the normal equations
 	alpha     float64
 	beta      float64
 	firstStep bool // no step yet
@@ -65,7 +66,7 @@ func (m *marks) see(iter int, tol float64, v numbers) bool {
 		}
 	}
 	twoB, two0 := over(v.r, v.b), over(v.r, v.r0)
-	if v.precond {
+	if v.precond || v.normal {
 		twoB, two0 = math.NaN(), math.NaN()
 	}
 	new := false

@@ -20,11 +20,11 @@ func (t *Trial) record(r trace.Reading, first bool) {
 	events := t.judgeEvents(r.Events, iter)
 	own := t.ownRelative(r.Residual)
 	backward := over(r.Residual, t.sizes.fro*h.SolutionNorm+t.ownB)
-	if first {
+	if first || h.Norm == trace.NormalEquationNorm {
 		backward = math.NaN()
 	}
 	marked := t.marks.see(iter, t.limits.Target.Tol, numbers{r: r.Residual, b: t.ownB, r0: t.own0,
-		backward: backward, precond: h.Norm == trace.PrecondNorm, alpha: r.Alpha, beta: r.Beta, firstStep: first})
+		backward: backward, precond: h.Norm == trace.PrecondNorm, normal: h.Norm == trace.NormalEquationNorm, alpha: r.Alpha, beta: r.Beta, firstStep: first})
 	var a *audit
 	due := t.sched.due(iter, own, t.limits.Target.Tol)
 	if due || marked || r.Done || t.atLimit(iter) || t.atUnreachable(rec.Residual) {

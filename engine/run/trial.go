@@ -89,7 +89,7 @@ func newTrial(id int, m Method, s linear.System, z sizes, l Limits, clock Clock,
 	t.hist = trace.History{Pairing: m.Name, Stop: trace.Waiting, Norm: m.norm(), MemoryBytes: memory,
 		SymmetricA: e.Assumes&linear.AssumesSymmetric != 0, DefiniteA: e.Assumes&linear.AssumesDefinite != 0,
 		SPDM:      e.Assumes&linear.AssumesSymmetricM != 0 && p.Name != "none",
-		Restarted: e.Restarted, Monotone: e.Monotone, Energy: e.Energy, Direct: p.Exact,
+		Restarted: e.Restarted, Monotone: e.Monotone, Energy: e.Energy, Direct: p.Exact && m.From == "",
 		CPUShare: nan, Residual: nan, TrueResidual: nan, BestTrue: math.Inf(1), Backward: nan, Componentwise: nan,
 		Error: nan, Floor: nan, Normal: nan, PrecondAsymmetry: nan, WouldStop: t.marks.audited(-1, nan)}
 	return t
@@ -224,11 +224,7 @@ func (t *Trial) basis() (linear.System, error) {
 // begun follows a successful set-up: own norms, probes and iteration 0.
 func (t *Trial) begun(r trace.Reading) {
 	t.own0 = r.Residual
-	t.ownB = linear.Norm2(t.prepared.B)
-	if t.method.Solver.Norm == trace.PrecondNorm && t.method.Precond.Name != "none" {
-		t.m.inner.Apply(t.scratch.w, t.prepared.B)
-		t.ownB = math.Sqrt(math.Max(0, linear.Dot(t.prepared.B, t.scratch.w)))
-	}
+	t.ownB = t.ownNorm(t.prepared.B, linear.Norm2(t.prepared.B))
 	t.mu.Lock()
 	t.hist.Stop = trace.Running
 	t.mu.Unlock()
