@@ -11,8 +11,14 @@ import (
 	"dwindle/engine/run"
 )
 
+// predictUpTo is the order up to which the list of candidates tells what an
+// exact factorisation takes: beyond, the prediction itself takes a while, and
+// is left to the trial.
+const predictUpTo = 20_000
+
 // candidates describes every solver with every preconditioner, at default
-// parameters, for a system that offers h within the memory limit.
+// parameters, for a system that offers h. Where memory is positive, what each
+// takes is predicted and held against it.
 func candidates(h run.Have, memory int64) []choose.Candidate {
 	var list []choose.Candidate
 	for _, e := range krylov.Catalogue {
@@ -33,11 +39,14 @@ func candidates(h run.Have, memory int64) []choose.Candidate {
 
 func candidate(m run.Method, h run.Have, memory int64) choose.Candidate {
 	c := choose.Candidate{Pairing: m.Name, Solver: m.Solver.Name, Precond: m.Precond.Name,
-		Memory: m.Memory(h), Refused: m.Refuse(h),
+		Memory: -1, Refused: m.Refuse(h),
 		Symmetric: m.Solver.Assumes&linear.AssumesSymmetric != 0,
 		Definite:  m.Solver.Assumes&linear.AssumesDefinite != 0,
 		SPDM:      m.Solver.Assumes&linear.AssumesSymmetricM != 0,
 		Baseline:  m.Solver.Baseline, Summary: m.Solver.Title + ", " + m.Precond.Title}
+	if memory > 0 && (!m.Precond.Exact || h.Order() <= predictUpTo) {
+		c.Memory = m.Memory(h)
+	}
 	for _, p := range m.Preps {
 		c.Preps = append(c.Preps, p.Entry.Name)
 	}

@@ -105,10 +105,9 @@ func (s *Session) loadAndInspect() (err error) {
 // setBench makes the bench and the line-up, and starts it or says why not.
 func (s *Session) setBench() *run.Bench {
 	b := run.NewBench(s.sys, s.limits(), s.opt.Memory, s.clock)
-	cands := candidates(b.Have(), s.opt.Memory)
 	lineup := s.opt.Pairs
 	if len(lineup) == 0 {
-		lineup = choose.LineUp(s.facts, cands, s.opt.Today)
+		lineup = choose.LineUp(s.facts, candidates(b.Have(), 0), s.opt.Today)
 	}
 	if s.opt.Today != "" {
 		lineup = append([]string{s.opt.Today}, lineup...)

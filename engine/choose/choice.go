@@ -8,7 +8,7 @@ type Candidate struct {
 	Solver    string // bare names
 	Precond   string
 	Preps     []string
-	Memory    int64  // bytes of solver, preconditioner and preparations
+	Memory    int64  // bytes of solver, preconditioner and preparations; -1: not predicted
 	Refused   string // why it cannot run here; empty if it can
 	Symmetric bool   // the solver assumes A symmetric
 	Definite  bool   // the solver assumes A positive definite

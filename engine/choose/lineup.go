@@ -2,69 +2,117 @@ package choose
 
 import "dwindle/engine/inspect"
 
-// scaleLimit is the ratio of row norms from which a scaled variant joins.
-const scaleLimit = 1e4
-
-// longCycleUpTo is the order up to which a restart length of 100 is cheap.
-const longCycleUpTo = 100_000
+const (
+	// scaleLimit is the ratio of row norms from which a scaled variant joins.
+	scaleLimit = 1e4
+	// longCycleUpTo is the order up to which a restart length of 100 is cheap.
+	longCycleUpTo = 100_000
+	// directUpTo is the order up to which a direct solve joins.
+	directUpTo = 100_000
+	// multilevelFrom is the order from which a multilevel method joins.
+	multilevelFrom = 1000
+)
 
 // LineUp chooses the pairings of a session from the facts: methods whose
 // assumptions hold, each with the preconditioners that can be built, plain
-// ones first so that a gain can be told. today is left to the caller.
+// ones first so that a gain can be told, a direct solve where it is small.
+// today is left to the caller.
 func LineUp(f *inspect.Facts, list []Candidate, today string) []string {
-	var out []string
-	add := func(prep, solver, precond string) {
-		for _, c := range list {
-			if c.Solver == solver && c.Precond == precond && c.Refused == "" && prep+c.Pairing != today {
-				out = append(out, prep+c.Pairing)
-			}
-		}
-	}
-	badly := f.RowNorm.Min > 0 && f.RowNorm.Max/f.RowNorm.Min >= scaleLimit
-	diag := f.DiagZero+f.DiagMissing == 0
+	l := &lineUp{facts: f, list: list, today: today}
 	switch {
 	case f.MatrixFree:
-		add("", "cg", "none")
-		add("", "minres", "none")
-		add("", "gmres", "none")
+		l.add("", "cg", "none")
+		l.add("", "minres", "none")
+		l.add("", "gmres", "none")
 	case f.Symmetric.Answer == inspect.Yes && f.Unreachable.Answer == inspect.Yes:
-		add("", "minres", "none")
-		add("project/", "cg", "none")
-		add("project/", "cg", "jacobi")
+		l.add("", "minres", "none")
+		l.add("project/", "cg", "none")
+		l.add("project/", "cg", "jacobi")
 	case f.Symmetric.Answer == inspect.Yes && couldBeDefinite(f):
-		add("", "cg", "none")
-		add("", "cg", "jacobi")
-		add("", "cg", "ssor")
-		add("", "cg", "ic")
+		l.definite()
 	case f.Symmetric.Answer == inspect.Yes:
-		add("", "minres", "none")
-		if badly {
-			add("scale/", "minres", "none")
-		}
-		add("", "gmres", "none")
-		if diag {
-			add("", "gmres", "ilu")
-			add("", "bicgstab", "ilu")
-		}
+		l.indefinite()
 	default:
-		add("", "bicgstab", "none")
-		add("", "gmres", "none")
-		if diag {
-			add("", "bicgstab", "ilu")
-			add("", "gmres", "ilu")
-		}
-		if badly || !diag {
-			add("scale/", "gmres", "none")
-			add("scale/", "bicgstab", "none")
-		}
-		if !diag && f.N <= longCycleUpTo {
-			out = append(out, "gmres:100+none")
-		}
-		if badly && diag {
-			add("scale/", "gmres", "ilu")
+		l.nonsymmetric()
+	}
+	return l.pairings
+}
+
+// lineUp collects pairings.
+type lineUp struct {
+	facts    *inspect.Facts
+	list     []Candidate
+	today    string
+	pairings []string
+}
+
+// add joins the pairing where the catalogue has it and nothing refuses it.
+func (l *lineUp) add(prep, solver, precond string) {
+	for _, c := range l.list {
+		if c.Solver == solver && c.Precond == precond && c.Refused == "" && prep+c.Pairing != l.today {
+			l.pairings = append(l.pairings, prep+c.Pairing)
 		}
 	}
-	return out
+}
+
+// direct joins a direct solve where the system is small and may be regular.
+func (l *lineUp) direct(factorisation string) {
+	if l.facts.N <= directUpTo && l.facts.Singular.Answer != inspect.Yes {
+		l.add("", "richardson", factorisation)
+	}
+}
+
+func (l *lineUp) badlyScaled() bool {
+	return l.facts.RowNorm.Min > 0 && l.facts.RowNorm.Max/l.facts.RowNorm.Min >= scaleLimit
+}
+
+func (l *lineUp) fullDiagonal() bool { return l.facts.DiagZero+l.facts.DiagMissing == 0 }
+
+func (l *lineUp) definite() {
+	l.add("", "cg", "none")
+	l.add("", "cg", "jacobi")
+	l.add("", "cg", "ssor")
+	l.add("", "cg", "ic")
+	if l.facts.N >= multilevelFrom {
+		l.add("", "cg", "amg")
+	}
+	l.direct("cholesky")
+}
+
+func (l *lineUp) indefinite() {
+	l.add("", "minres", "none")
+	if l.badlyScaled() {
+		l.add("scale/", "minres", "none")
+	}
+	l.add("", "gmres", "none")
+	if l.fullDiagonal() {
+		l.add("", "gmres", "ilu")
+		l.add("", "bicgstab", "ilu")
+	}
+	l.direct("ldl")
+}
+
+func (l *lineUp) nonsymmetric() {
+	l.add("", "bicgstab", "none")
+	l.add("", "gmres", "none")
+	if l.fullDiagonal() {
+		l.add("", "bicgstab", "ilu")
+		l.add("", "gmres", "ilu")
+	}
+	if l.badlyScaled() || !l.fullDiagonal() {
+		l.add("scale/", "gmres", "none")
+		l.add("scale/", "bicgstab", "none")
+	}
+	switch {
+	case l.fullDiagonal() && l.badlyScaled():
+		l.add("scale/", "gmres", "ilu")
+	case !l.fullDiagonal():
+		l.add("match/", "gmres", "ilu")
+		if l.facts.N <= longCycleUpTo {
+			l.pairings = append(l.pairings, "gmres:100+none")
+		}
+	}
+	l.direct("lu")
 }
 
 // couldBeDefinite says that nothing speaks against cg: no proof that A is

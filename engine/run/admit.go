@@ -15,6 +15,9 @@ type Have struct {
 	zeroRow  int // the first of them
 }
 
+// Order returns the order of the system.
+func (h Have) Order() int { return h.n }
+
 // Offers finds what the system offers.
 func Offers(s linear.System) Have {
 	h := Have{n: s.N(), matrix: s.Matrix()}
