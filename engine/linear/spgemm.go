@@ -20,16 +20,66 @@ func Multiply(a, b *CSR) *CSR {
 	if a.NCols != b.NRows {
 		panic(fmt.Sprintf("linear: product of %d x %d and %d x %d", a.NRows, a.NCols, b.NRows, b.NCols))
 	}
-	return ByRows(a.NRows, b.NCols, func(w *RowWork, i int) {
-		acols, avals := a.Row(i)
-		for k, j := range acols {
-			s := avals[k]
-			bcols, bvals := b.Row(int(j))
-			for l, c := range bcols {
-				w.Add(c, s*bvals[l])
+	return ByRows(a.NRows, b.NCols, func(w *RowWork, i int) { addProduct(w, a, b, i) })
+}
+
+// Galerkin returns R A P as a new matrix, row by row without storing a product
+// of two of them. Otherwise it is like Multiply.
+func Galerkin(r, a, p *CSR) *CSR {
+	if r.NCols != a.NRows || a.NCols != p.NRows {
+		panic(fmt.Sprintf("linear: product of %d x %d, %d x %d and %d x %d", r.NRows, r.NCols, a.NRows, a.NCols, p.NRows, p.NCols))
+	}
+	spare := &workStore{cols: a.NCols}
+	return ByRows(r.NRows, p.NCols, func(w *RowWork, i int) {
+		ra := spare.get()
+		ra.begin(i)
+		addProduct(ra, r, a, i)
+		for _, j := range ra.cols {
+			s := ra.sum[j]
+			cols, vals := p.Row(int(j))
+			for l, c := range cols {
+				w.Add(c, s*vals[l])
 			}
 		}
+		spare.put(ra)
 	})
+}
+
+// addProduct adds row i of A B.
+func addProduct(w *RowWork, a, b *CSR, i int) {
+	acols, avals := a.Row(i)
+	for k, j := range acols {
+		s := avals[k]
+		bcols, bvals := b.Row(int(j))
+		for l, c := range bcols {
+			w.Add(c, s*bvals[l])
+		}
+	}
+}
+
+// workStore hands out RowWorks for rows of so many columns: as many as there
+// are threads that ask at once.
+type workStore struct {
+	mu   sync.Mutex
+	cols int
+	idle []*RowWork
+}
+
+func (s *workStore) get() *RowWork {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	if last := len(s.idle) - 1; last >= 0 {
+		w := s.idle[last]
+		s.idle = s.idle[:last]
+		return w
+	}
+	return &RowWork{sum: make([]float64, s.cols), row: make([]int32, s.cols)}
+}
+
+func (s *workStore) put(w *RowWork) {
+	s.mu.Lock()
+	s.idle = append(s.idle, w)
+	s.mu.Unlock()
 }
 
 // RowWork gathers one row of a matrix under construction.
@@ -40,6 +90,9 @@ type RowWork struct {
 	cols []int32   // columns of the row under work, as met
 	hint int       // entries of the last piece, to size the next
 }
+
+// begin turns to row i.
+func (w *RowWork) begin(i int) { w.now, w.cols = int32(i+1), w.cols[:0] }
 
 // Add adds v to the entry in column c of the row under work.
 func (w *RowWork) Add(c int32, v float64) {
@@ -83,45 +136,88 @@ func (w *RowWork) Largest(n int) {
 	}
 }
 
-// piece is the part of a matrix built by one part of the work.
+// ByRows builds a rows x cols matrix on the thread team. fill adds up row i;
+// it may be called for several rows at once, each with a RowWork of its own.
+// Beyond the matrix it needs memory for groupParts parts of it.
+func ByRows(rows, cols int, fill func(w *RowWork, i int)) *CSR {
+	m := &CSR{NRows: rows, NCols: cols, Ptr: make([]int, rows+1)}
+	spare := &workStore{cols: cols}
+	pieces := make([]piece, groupParts)
+	for first := 0; first < rows; first += groupParts * productRows {
+		parts := min(groupParts, (rows-first+productRows-1)/productRows)
+		Parallel(parts, func(part int) {
+			lo := first + part*productRows
+			w := spare.get()
+			pieces[part].build(w, lo, min(lo+productRows, rows), fill, m.Ptr)
+			spare.put(w)
+		})
+		m.attach(pieces[:parts], first)
+	}
+	return m
+}
+
+// groupParts is how many parts of a matrix are built before they are moved to
+// their place.
+const groupParts = 16
+
+// piece is a part of a matrix under construction.
 type piece struct {
-	ends []int // where each row ends, from the start of the piece
 	cols []int32
 	vals []float64
 }
 
-// ByRows builds a rows x cols matrix on the thread team. fill adds up row i;
-// it may be called for several rows at once, each with a RowWork of its own.
-func ByRows(rows, cols int, fill func(w *RowWork, i int)) *CSR {
-	parts := (rows + productRows - 1) / productRows
-	pieces := make([]piece, parts)
-	spare := sync.Pool{New: func() any {
-		return &RowWork{sum: make([]float64, cols), row: make([]int32, cols)}
-	}}
-	Parallel(parts, func(part int) {
-		w := spare.Get().(*RowWork)
-		lo := part * productRows
-		pieces[part] = w.build(lo, min(lo+productRows, rows), fill)
-		spare.Put(w)
-	})
-	return joined(rows, cols, pieces)
-}
-
-// build gathers the rows lo to hi.
-func (w *RowWork) build(lo, hi int, fill func(w *RowWork, i int)) piece {
-	p := piece{ends: make([]int, hi-lo), cols: make([]int32, 0, w.hint), vals: make([]float64, 0, w.hint)}
+// build gathers the rows lo to hi; ends[i+1] becomes the end of row i, from
+// the start of the piece.
+func (p *piece) build(w *RowWork, lo, hi int, fill func(w *RowWork, i int), ends []int) {
+	if p.cols == nil {
+		p.cols, p.vals = make([]int32, 0, w.hint), make([]float64, 0, w.hint)
+	}
+	p.cols, p.vals = p.cols[:0], p.vals[:0]
 	for i := lo; i < hi; i++ {
-		w.now, w.cols = int32(i+1), w.cols[:0]
+		w.begin(i)
 		fill(w, i)
 		sortColumns(w.cols)
 		p.cols = append(p.cols, w.cols...)
 		for _, c := range w.cols {
 			p.vals = append(p.vals, w.sum[c])
 		}
-		p.ends[i-lo] = len(p.cols)
+		ends[i+1] = len(p.cols)
 	}
 	w.hint = len(p.cols) + len(p.cols)/8
-	return p
+}
+
+// attach appends the pieces that begin at row first.
+func (m *CSR) attach(pieces []piece, first int) {
+	starts := make([]int, len(pieces)+1)
+	starts[0] = len(m.Col)
+	for i, p := range pieces {
+		starts[i+1] = starts[i] + len(p.cols)
+	}
+	m.grow(starts[len(pieces)], min(first+len(pieces)*productRows, m.NRows))
+	Parallel(len(pieces), func(i int) {
+		copy(m.Col[starts[i]:], pieces[i].cols)
+		copy(m.Val[starts[i]:], pieces[i].vals)
+		lo := first + i*productRows
+		for k := lo + 1; k <= min(lo+productRows, m.NRows); k++ {
+			m.Ptr[k] += starts[i]
+		}
+	})
+}
+
+// grow makes room for total entries, those of the first rows, and, where it
+// must allocate, for the rows to come as well if they are alike.
+func (m *CSR) grow(total, rows int) {
+	if total > cap(m.Col) {
+		room := total
+		if rows < m.NRows {
+			room = int(1.02*float64(total)/float64(rows)*float64(m.NRows)) + productRows
+		}
+		col, val := make([]int32, len(m.Col), room), make([]float64, len(m.Val), room)
+		copy(col, m.Col)
+		copy(val, m.Val)
+		m.Col, m.Val = col, val
+	}
+	m.Col, m.Val = m.Col[:total], m.Val[:total]
 }
 
 // sortColumns sorts ascending; rows are short and nearly in order.
@@ -138,25 +234,4 @@ func sortColumns(cols []int32) {
 		}
 		cols[l+1] = c
 	}
-}
-
-// joined sets the pieces one after the other.
-func joined(rows, cols int, pieces []piece) *CSR {
-	m := &CSR{NRows: rows, NCols: cols, Ptr: make([]int, rows+1)}
-	starts := make([]int, len(pieces)+1)
-	for i, p := range pieces {
-		starts[i+1] = starts[i] + len(p.cols)
-	}
-	total := starts[len(pieces)]
-	m.Col, m.Val = make([]int32, total), make([]float64, total)
-	Parallel(len(pieces), func(i int) {
-		p := &pieces[i]
-		copy(m.Col[starts[i]:], p.cols)
-		copy(m.Val[starts[i]:], p.vals)
-		for k, end := range p.ends {
-			m.Ptr[i*productRows+k+1] = starts[i] + end
-		}
-		*p = piece{}
-	})
-	return m
 }

@@ -65,9 +65,15 @@ func buildAMG(ctx context.Context, s linear.System, v linear.Values, progress fu
 // symmetricPart returns (A + Aᵀ)/2.
 func symmetricPart(a *linear.CSR) *linear.CSR {
 	t := a.Transpose()
+	addHalf := func(w *linear.RowWork, b *linear.CSR, i int) {
+		cols, vals := b.Row(i)
+		for k, c := range cols {
+			w.Add(c, vals[k]/2)
+		}
+	}
 	return linear.ByRows(a.NRows, a.NCols, func(w *linear.RowWork, i int) {
-		addRow(w, a, i, 0.5)
-		addRow(w, t, i, 0.5)
+		addHalf(w, a, i)
+		addHalf(w, t, i)
 	})
 }
 

@@ -1,33 +1,21 @@
 package precond
 
-import (
-	"math"
-
-	"dwindle/engine/linear"
-)
+import "dwindle/engine/linear"
 
 // alone marks a row without strong couplings: the smoother solves it, and it
 // belongs to no aggregate.
 const alone = -1
 
-// strength says which couplings are followed: |a_ij| ≥ θ √(a_ii a_jj).
+// strength says which couplings are followed: a_ij² ≥ θ² a_ii a_jj.
 type strength struct {
-	a     *linear.CSR
-	theta float64
-	root  []float64 // √a_ii, length n
-}
-
-func newStrength(a *linear.CSR, diag []float64, theta float64) *strength {
-	s := &strength{a: a, theta: theta, root: make([]float64, len(diag))}
-	for i, d := range diag {
-		s.root[i] = math.Sqrt(d)
-	}
-	return s
+	a      *linear.CSR
+	square float64   // θ²
+	diag   []float64 // a_ii, length n
 }
 
 // strong says whether the coupling a_ij = v of two rows is followed.
 func (s *strength) strong(i, j int, v float64) bool {
-	return i != j && v != 0 && math.Abs(v) >= s.theta*s.root[i]*s.root[j]
+	return v*v >= s.square*s.diag[i]*s.diag[j] && i != j && v != 0
 }
 
 // aggregate groups the rows around roots (Vaněk, Mandel and Brezina 1996,
@@ -109,7 +97,7 @@ func (s *strength) nearest(of []int32, i int) int32 {
 	cols, vals := s.a.Row(i)
 	for k, c := range cols {
 		if of[c] >= 0 && s.strong(i, int(c), vals[k]) {
-			if share := math.Abs(vals[k]) / s.root[c]; share > best {
+			if share := vals[k] * vals[k] / s.diag[c]; share > best {
 				best, to = share, of[c]
 			}
 		}

@@ -39,6 +39,10 @@ type level struct {
 	b     []float64 // right-hand side, length n; nil on the finest
 	x     []float64 // solution, length n; nil on the finest
 	u, t  []float64 // iterate and residual, length n
+
+	target []float64 // operands of prolong under way
+	source []float64
+	adding func(part int)
 }
 
 // newCycle builds the levels: A_c = Pᵀ A P until the order is small or the
@@ -70,8 +74,8 @@ func newCycle(ctx context.Context, a *linear.CSR, how coarsening, progress func(
 		if err := ctx.Err(); err != nil {
 			return nil, err
 		}
-		l.p, l.r = p, p.Transpose()
-		a = linear.Multiply(l.r, linear.Multiply(a, p))
+		l.join(p)
+		a = linear.Galerkin(l.r, a, p)
 	}
 }
 
@@ -95,6 +99,33 @@ func newLevel(a *linear.CSR, depth int) (*level, []float64, error) {
 		l.b, l.x = make([]float64, n), make([]float64, n)
 	}
 	return l, diag, nil
+}
+
+// join couples the level to the next coarser one.
+func (l *level) join(p *linear.CSR) {
+	l.p, l.r, l.adding = p, p.Transpose(), l.addRows
+}
+
+// prolong adds P times the solution of the next level to u.
+func (c *cycle) prolong(depth int, u []float64) {
+	l := c.levels[depth]
+	l.target, l.source = u, c.levels[depth+1].x
+	linear.Parallel(l.relax.parts, l.adding)
+	l.target, l.source = nil, nil
+}
+
+func (l *level) addRows(part int) {
+	lo, hi := l.relax.block(part)
+	u, x, ptr := l.target, l.source, l.p.Ptr
+	for i := lo; i < hi; i++ {
+		cols, vals := l.p.Col[ptr[i]:ptr[i+1]], l.p.Val[ptr[i]:ptr[i+1]]
+		vals = vals[:len(cols)]
+		t := u[i]
+		for k, c := range cols {
+			t += vals[k] * x[uint32(c)]
+		}
+		u[i] = t
+	}
 }
 
 func badDiagonal(row int, d float64, depth int) error {
@@ -124,10 +155,13 @@ func (c *cycle) solve(depth int, x, b []float64) {
 		return
 	}
 	u, other := l.u, x
-	l.relax.first(u, b)
+	l.relax.first(u, l.t, b)
 	for k := 1; k < c.sweeps; k++ {
 		l.relax.down(other, u, b)
 		u, other = other, u
+	}
+	if c.sweeps > 1 {
+		l.relax.residual(l.t, u, b)
 	}
 	if depth < len(c.levels)-1 {
 		c.correct(depth, u, b)
@@ -141,18 +175,22 @@ func (c *cycle) solve(depth int, x, b []float64) {
 	}
 }
 
-// correct adds the coarse correction, visits times: u += P A_c⁻¹ Pᵀ (b − A u).
+// correct adds the coarse correction, visits times: u += P A_c⁻¹ Pᵀ r with the
+// residual r = b − A u, which the level's t holds at the start. An exact
+// correction is not repeated.
 func (c *cycle) correct(depth int, u, b []float64) {
 	l, next := c.levels[depth], c.levels[depth+1]
-	for k := 0; k < c.visits; k++ {
-		if k > 0 && depth == len(c.levels)-2 && c.bottom != nil {
-			return // solved exactly the first time
+	visits := c.visits
+	if depth == len(c.levels)-2 && c.bottom != nil {
+		visits = 1
+	}
+	for k := 0; k < visits; k++ {
+		if k > 0 {
+			l.relax.residual(l.t, u, b)
 		}
-		l.relax.residual(l.t, u, b)
 		l.r.Apply(next.b, l.t)
 		c.solve(depth+1, next.x, next.b)
-		l.p.Apply(l.t, next.x)
-		linear.Axpy(1, l.t, u)
+		c.prolong(depth, u)
 	}
 }
 

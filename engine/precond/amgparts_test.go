@@ -24,8 +24,7 @@ func twoGrid(t *testing.T, m int) *cycle {
 	if err != nil {
 		t.Fatal(err)
 	}
-	l.p = linear.FromEntries(n, m, e)
-	l.r = l.p.Transpose()
+	l.join(linear.FromEntries(n, m, e))
 	coarse, _, err := newLevel(linear.Multiply(l.r, linear.Multiply(l.a, l.p)), 1)
 	if err != nil {
 		t.Fatal(err)
@@ -55,6 +54,7 @@ func TestTwoGridJacobi(t *testing.T) {
 				l.relax.residual(r, x, zero)
 				linear.Axpy(2./3/2, r, x)
 			}
+			l.relax.residual(l.t, x, zero)
 			c.correct(0, x, zero)
 			e.SetCol(j, x)
 		}
@@ -79,6 +79,7 @@ func TestTwoGridGaussSeidel(t *testing.T) {
 	c := twoGrid(t, n/2)
 	zero, x, y := make([]float64, n), make([]float64, n), make([]float64, n)
 	linear.Uniform(x, 5)
+	c.levels[0].relax.residual(c.levels[0].t, x, zero)
 	c.correct(0, x, zero)
 	for i := 1; i < n; i += 2 {
 		near(t, "error at a coarse unknown", x[i], 0, 1e-14)
@@ -116,8 +117,12 @@ func TestRelaxationConverges(t *testing.T) {
 	for _, block := range []int{1, 3, 7, n} {
 		s := newRelaxation(a, diag, block)
 		m := linear.Func{N: n, Do: func(dst, x []float64) {
-			u := make([]float64, n)
-			s.first(u, x)
+			u, res := make([]float64, n), make([]float64, n)
+			s.first(u, res, x)
+			s.residual(dst, u, x)
+			for i := range dst {
+				near(t, "residual of the first sweep", res[i], dst[i], 1e-12)
+			}
 			s.up(dst, u, x)
 		}}
 		low, high := pencil(t, inverse(m, n), dense(a))
@@ -145,7 +150,8 @@ func TestTentative(t *testing.T) {
 	}
 	of[10], of[11], of[12], of[13] = alone, alone, alone, alone
 	g := &aggregation{null: append([]float64(nil), b...), k: k}
-	p := g.tentative(of, n/5)
+	q := g.tentative(of, n/5)
+	p := linear.ByRows(n, q.cols(), func(w *linear.RowWork, i int) { q.add(w, i, 1) })
 	if want := 2 + 2 + 1 + 9*3; p.NCols != want || len(g.null) != want*k {
 		t.Fatalf("%d coarse unknowns, want %d", p.NCols, want)
 	}
@@ -179,7 +185,7 @@ func TestAggregate(t *testing.T) {
 	a := plate(30)
 	diag := make([]float64, a.NRows)
 	a.Diagonal(diag)
-	of, count := newStrength(a, diag, 0.08).aggregate()
+	of, count := (&strength{a: a, square: 0.0064, diag: diag}).aggregate()
 	size := make([]int, count)
 	for i, j := range of {
 		if j < 0 {

@@ -2,6 +2,7 @@ package precond
 
 import (
 	"math"
+	"slices"
 
 	"dwindle/engine/linear"
 )
@@ -29,8 +30,11 @@ type relaxation struct {
 	rows    int       // rows of a block
 	parts   int
 
-	dst, x, b                                 []float64 // operands of the sweep under way
-	firstPart, downPart, upPart, residualPart func(part int)
+	excess []float64 // e_i, length n; nil where all are zero
+	border [][]int32 // rows of each block with entries outside it
+
+	dst, x, b, r                                          []float64 // operands of the sweep under way
+	startPart, borderPart, downPart, upPart, residualPart func(part int)
 }
 
 // blockRows returns the block length for order n.
@@ -40,22 +44,42 @@ func blockRows(n int) int { return max(relaxRows, (n+relaxParts-1)/relaxParts) }
 func newRelaxation(a *linear.CSR, diag []float64, rows int) *relaxation {
 	s := &relaxation{a: a, inverse: make([]float64, a.NRows), rows: rows}
 	s.parts = (a.NRows + s.rows - 1) / s.rows
-	s.firstPart, s.downPart, s.upPart, s.residualPart = s.firstRows, s.downRows, s.upRows, s.residualRows
+	s.border = make([][]int32, s.parts)
+	s.startPart, s.borderPart = s.startRows, s.borderRows
+	s.downPart, s.upPart, s.residualPart = s.downRows, s.upRows, s.residualRows
+	excess := make([]float64, s.parts) // the largest of each part
 	linear.Parallel(s.parts, func(part int) {
 		lo, hi := s.block(part)
 		for i := lo; i < hi; i++ {
-			outside := 0.0
-			cols, vals := a.Row(i)
-			for k := 0; k < len(cols) && int(cols[k]) < lo; k++ {
-				outside += math.Abs(vals[k])
-			}
-			for k := len(cols) - 1; k >= 0 && int(cols[k]) >= hi; k-- {
-				outside += math.Abs(vals[k])
-			}
-			s.inverse[i] = 1 / (diag[i] + max(0, 1.05*outside-diag[i])/2)
+			e := max(0, 1.05*s.outside(part, i, lo, hi)-diag[i]) / 2
+			excess[part] = max(excess[part], e)
+			s.inverse[i] = 1 / (diag[i] + e)
 		}
 	})
+	if s.parts > 0 && slices.Max(excess) > 0 {
+		s.excess = make([]float64, a.NRows)
+		for i, v := range s.inverse {
+			s.excess[i] = 1/v - diag[i]
+		}
+	}
 	return s
+}
+
+// outside returns the sum of the sizes of row i outside its block, and lists
+// the row if it has such entries.
+func (s *relaxation) outside(part, i, lo, hi int) float64 {
+	cols, vals := s.a.Row(i)
+	if len(cols) == 0 || int(cols[0]) >= lo && int(cols[len(cols)-1]) < hi {
+		return 0
+	}
+	s.border[part] = append(s.border[part], int32(i))
+	sum := 0.0
+	for k, c := range cols {
+		if int(c) < lo || int(c) >= hi {
+			sum += math.Abs(vals[k])
+		}
+	}
+	return sum
 }
 
 func (s *relaxation) block(part int) (lo, hi int) {
@@ -63,92 +87,46 @@ func (s *relaxation) block(part int) (lo, hi int) {
 	return lo, min(lo+s.rows, s.a.NRows)
 }
 
-func (s *relaxation) run(do func(part int), dst, x, b []float64) {
-	s.dst, s.x, s.b = dst, x, b
-	linear.Parallel(s.parts, do)
-	s.dst, s.x, s.b = nil, nil, nil
-}
+func (s *relaxation) run(do func(part int)) { linear.Parallel(s.parts, do) }
 
-// first sweeps down from a zero guess: dst = (D + E + L)⁻¹ b.
-func (s *relaxation) first(dst, b []float64) { s.run(s.firstPart, dst, nil, b) }
+// release lets go of the operands.
+func (s *relaxation) release() { s.dst, s.x, s.b, s.r = nil, nil, nil, nil }
+
+// first sweeps down from a zero guess, dst = (D + E + L)⁻¹ b, and computes
+// the residual r = b − A dst in the same pass.
+func (s *relaxation) first(dst, r, b []float64) {
+	s.dst, s.r, s.b = dst, r, b
+	s.run(s.startPart)
+	s.run(s.borderPart)
+	s.release()
+}
 
 // down sweeps down once more: dst = x + (D + E + L)⁻¹ (b − A x). The three do
 // not overlap.
-func (s *relaxation) down(dst, x, b []float64) { s.run(s.downPart, dst, x, b) }
+func (s *relaxation) down(dst, x, b []float64) {
+	s.dst, s.x, s.b = dst, x, b
+	s.run(s.downPart)
+	s.release()
+}
 
 // up sweeps up: dst = x + (D + E + U)⁻¹ (b − A x). The three do not overlap.
-func (s *relaxation) up(dst, x, b []float64) { s.run(s.upPart, dst, x, b) }
+func (s *relaxation) up(dst, x, b []float64) {
+	s.dst, s.x, s.b = dst, x, b
+	s.run(s.upPart)
+	s.release()
+}
 
 // residual computes dst = b − A x.
-func (s *relaxation) residual(dst, x, b []float64) { s.run(s.residualPart, dst, x, b) }
-
-func (s *relaxation) firstRows(part int) {
-	lo, hi := s.block(part)
-	ptr, b, dst, inverse := s.a.Ptr, s.b, s.dst, s.inverse
-	for i := lo; i < hi; i++ {
-		cols, vals := s.a.Col[ptr[i]:ptr[i+1]], s.a.Val[ptr[i]:ptr[i+1]]
-		vals = vals[:len(cols)]
-		t := b[i]
-		for k, c := range cols {
-			if int(c) >= i {
-				break
-			}
-			if int(c) >= lo {
-				t -= vals[k] * dst[uint32(c)]
-			}
-		}
-		dst[i] = t * inverse[i]
-	}
+func (s *relaxation) residual(dst, x, b []float64) {
+	s.dst, s.x, s.b = dst, x, b
+	s.run(s.residualPart)
+	s.release()
 }
 
-func (s *relaxation) downRows(part int) {
-	lo, hi := s.block(part)
-	ptr, b, dst, x, inverse := s.a.Ptr, s.b, s.dst, s.x, s.inverse
-	for i := lo; i < hi; i++ {
-		cols, vals := s.a.Col[ptr[i]:ptr[i+1]], s.a.Val[ptr[i]:ptr[i+1]]
-		vals = vals[:len(cols)]
-		t := b[i]
-		for k, c := range cols {
-			v := x
-			if int(c) >= lo && int(c) < i {
-				v = dst
-			}
-			t -= vals[k] * v[uint32(c)]
-		}
-		dst[i] = x[i] + t*inverse[i]
+func (s *relaxation) bytes() int64 {
+	total := 8 * int64(len(s.inverse)+len(s.excess))
+	for _, rows := range s.border {
+		total += 4 * int64(cap(rows))
 	}
+	return total
 }
-
-func (s *relaxation) upRows(part int) {
-	lo, hi := s.block(part)
-	ptr, b, dst, x, inverse := s.a.Ptr, s.b, s.dst, s.x, s.inverse
-	for i := hi - 1; i >= lo; i-- {
-		cols, vals := s.a.Col[ptr[i]:ptr[i+1]], s.a.Val[ptr[i]:ptr[i+1]]
-		vals = vals[:len(cols)]
-		t := b[i]
-		for k, c := range cols {
-			v := x
-			if int(c) > i && int(c) < hi {
-				v = dst
-			}
-			t -= vals[k] * v[uint32(c)]
-		}
-		dst[i] = x[i] + t*inverse[i]
-	}
-}
-
-func (s *relaxation) residualRows(part int) {
-	lo, hi := s.block(part)
-	ptr, b, dst, x := s.a.Ptr, s.b, s.dst, s.x
-	for i := lo; i < hi; i++ {
-		cols, vals := s.a.Col[ptr[i]:ptr[i+1]], s.a.Val[ptr[i]:ptr[i+1]]
-		vals = vals[:len(cols)]
-		t := b[i]
-		for k, c := range cols {
-			t -= vals[k] * x[uint32(c)]
-		}
-		dst[i] = t
-	}
-}
-
-func (s *relaxation) bytes() int64 { return 8 * int64(len(s.inverse)) }

@@ -2,6 +2,7 @@ package precond
 
 import (
 	"math"
+	"slices"
 
 	"dwindle/engine/linear"
 )
@@ -28,102 +29,102 @@ func constants(n int) []float64 {
 // ω = 4/(3 ρ), ρ a bound of the spectral radius of D⁻¹ A_F by row sums. The
 // threshold is halved for the next level.
 func (g *aggregation) prolongation(a *linear.CSR, diag []float64) *linear.CSR {
-	s := newStrength(a, diag, g.theta)
+	s := &strength{a: a, square: g.theta * g.theta, diag: diag}
 	g.theta /= 2
 	of, count := s.aggregate()
 	if count == 0 {
 		return nil
 	}
+	omega := 4 / (3 * s.radius())
 	t := g.tentative(of, count)
-	filtered, radius := s.filter(diag)
-	return s.smooth(t, filtered, 4/(3*radius))
+	return linear.ByRows(a.NRows, t.cols(), func(w *linear.RowWork, i int) {
+		d, _ := s.filtered(i)
+		t.add(w, i, 1-omega)
+		cols, vals := a.Row(i)
+		for k, c := range cols {
+			if s.strong(i, int(c), vals[k]) {
+				t.add(w, int(c), -omega/d*vals[k])
+			}
+		}
+	})
 }
 
-// filter returns the diagonal of A_F and the largest row sum of |D⁻¹ A_F|.
-func (s *strength) filter(diag []float64) (filtered []float64, radius float64) {
+// filtered returns the diagonal of row i of A_F and the sum of the sizes of
+// its other entries. Where the weak couplings together are not weak, the
+// diagonal is kept from vanishing.
+func (s *strength) filtered(i int) (d, sum float64) {
+	d = s.diag[i]
+	cols, vals := s.a.Row(i)
+	for k, c := range cols {
+		v := vals[k]
+		switch {
+		case int(c) == i:
+		case s.strong(i, int(c), v):
+			sum += math.Abs(v)
+		default:
+			d += v
+		}
+	}
+	if least := s.diag[i] / 4; d < least && d < sum {
+		d = max(least, sum)
+	}
+	return d, sum
+}
+
+// radius returns the largest row sum of |D⁻¹ A_F|.
+func (s *strength) radius() float64 {
 	n := s.a.NRows
-	filtered = make([]float64, n)
-	parts := (n + relaxRows - 1) / relaxRows
-	largest := make([]float64, parts)
-	linear.Parallel(parts, func(part int) {
+	largest := make([]float64, (n+relaxRows-1)/relaxRows)
+	linear.Parallel(len(largest), func(part int) {
 		for i := part * relaxRows; i < min((part+1)*relaxRows, n); i++ {
-			d, sum := diag[i], 0.0
-			cols, vals := s.a.Row(i)
-			for k, c := range cols {
-				if int(c) == i {
-					continue
-				}
-				if s.strong(i, int(c), vals[k]) {
-					sum += math.Abs(vals[k])
-				} else {
-					d += vals[k]
-				}
-			}
-			if d < diag[i]/4 && d < sum { // the weak couplings are not weak together
-				d = max(diag[i]/4, sum)
-			}
-			filtered[i] = d
+			d, sum := s.filtered(i)
 			largest[part] = max(largest[part], 1+sum/d)
 		}
 	})
-	for _, r := range largest {
-		radius = max(radius, r)
+	return slices.Max(largest)
+}
+
+// tentative is the prolongation T that is block diagonal over the aggregates,
+// with orthonormal columns.
+type tentative struct {
+	of   []int32   // aggregate of each row, or alone; length n
+	rank []int32   // first coarse unknown of each aggregate, and their number
+	q    []float64 // n·k: the entries of row i from i·k on, as many as its aggregate has coarse unknowns
+	k    int
+}
+
+func (t *tentative) cols() int { return int(t.rank[len(t.rank)-1]) }
+
+// add adds f times row i.
+func (t *tentative) add(w *linear.RowWork, i int, f float64) {
+	j := t.of[i]
+	if j < 0 {
+		return
 	}
-	return filtered, radius
-}
-
-// smooth returns (I − ω D⁻¹ A_F) T.
-func (s *strength) smooth(t *linear.CSR, filtered []float64, omega float64) *linear.CSR {
-	return linear.ByRows(t.NRows, t.NCols, func(w *linear.RowWork, i int) {
-		addRow(w, t, i, 1-omega)
-		cols, vals := s.a.Row(i)
-		f := omega / filtered[i]
-		for k, c := range cols {
-			if s.strong(i, int(c), vals[k]) {
-				addRow(w, t, int(c), -f*vals[k])
-			}
-		}
-	})
-}
-
-func addRow(w *linear.RowWork, t *linear.CSR, i int, f float64) {
-	cols, vals := t.Row(i)
-	for k, c := range cols {
-		w.Add(c, f*vals[k])
+	first := t.rank[j]
+	for l, v := range t.q[i*t.k : i*t.k+int(t.rank[j+1]-first)] {
+		w.Add(first+int32(l), f*v)
 	}
 }
 
-// tentative returns T, block diagonal over the aggregates: the near-null
-// vectors cut to each aggregate and orthonormalised by Gram–Schmidt, done
-// twice. The triangular factors become the near-null vectors of the coarse
-// level. Vectors that depend on those before them within an aggregate are
-// left out there, so that T has full rank.
-func (g *aggregation) tentative(of []int32, count int) *linear.CSR {
-	n, k := len(of), g.k
+// tentative cuts the near-null vectors to each aggregate and orthonormalises
+// them there by Gram–Schmidt, done twice. The triangular factors become the
+// near-null vectors of the coarse level. Vectors that depend on those before
+// them within an aggregate are left out there, so that T has full rank.
+func (g *aggregation) tentative(of []int32, count int) *tentative {
 	start, member := members(of, count)
-	rank := make([]int32, count+1) // first coarse unknown of each aggregate
-	q := make([]float64, len(g.null))
-	coarse := make([]float64, 0, count*k*k)
+	t := &tentative{of: of, rank: make([]int32, count+1), q: g.null, k: g.k}
+	g.null = make([]float64, 0, count*g.k*g.k)
+	factor, column := make([]float64, g.k*g.k), []float64(nil)
 	for j := 0; j < count; j++ {
 		rows := member[start[j]:start[j+1]]
-		r, factor := orthonormalise(q, g.null, rows, k)
-		rank[j+1] = rank[j] + int32(r)
-		coarse = append(coarse, factor[:r*k]...)
-	}
-	t := &linear.CSR{NRows: n, NCols: int(rank[count]), Ptr: make([]int, n+1)}
-	for i, j := range of {
-		t.Ptr[i+1] = t.Ptr[i]
-		if j >= 0 {
-			t.Ptr[i+1] += int(rank[j+1] - rank[j])
+		if len(rows) > len(column) {
+			column = make([]float64, 2*len(rows))
 		}
+		r := orthonormalise(t.q, rows, g.k, factor, column[:len(rows)])
+		t.rank[j+1] = t.rank[j] + int32(r)
+		g.null = append(g.null, factor[:r*g.k]...)
 	}
-	t.Col, t.Val = make([]int32, t.Ptr[n]), make([]float64, t.Ptr[n])
-	for i, j := range of {
-		for l := 0; l < t.Ptr[i+1]-t.Ptr[i]; l++ {
-			t.Col[t.Ptr[i]+l], t.Val[t.Ptr[i]+l] = rank[j]+int32(l), q[i*k+l]
-		}
-	}
-	g.null = coarse
 	return t
 }
 
@@ -149,14 +150,14 @@ func members(of []int32, count int) (start []int, member []int32) {
 	return start, member
 }
 
-// orthonormalise writes an orthonormal basis of the k columns of b on the
-// given rows to q and returns its rank r and the factor R (r·k by rows) with
-// B = Q R. A column of which less than 1e-8 is left is dropped.
-func orthonormalise(q, b []float64, rows []int32, k int) (rank int, factor []float64) {
-	factor = make([]float64, k*k)
-	column := make([]float64, len(rows))
+// orthonormalise replaces the k columns of b on the given rows, stored by
+// rows, by an orthonormal basis Q and returns its rank r; factor becomes R
+// (r·k by rows) with B = Q R. A column of which less than 1e-8 is left is
+// dropped. column is scratch, one value a row.
+func orthonormalise(b []float64, rows []int32, k int, factor, column []float64) (rank int) {
+	clear(factor)
 	for c := 0; c < k; c++ {
-		before := 0.0
+		before, left := 0.0, 0.0
 		for m, i := range rows {
 			column[m] = b[int(i)*k+c]
 			before += column[m] * column[m]
@@ -165,15 +166,14 @@ func orthonormalise(q, b []float64, rows []int32, k int) (rank int, factor []flo
 			for l := 0; l < rank; l++ {
 				s := 0.0
 				for m, i := range rows {
-					s += q[int(i)*k+l] * column[m]
+					s += b[int(i)*k+l] * column[m]
 				}
 				for m, i := range rows {
-					column[m] -= s * q[int(i)*k+l]
+					column[m] -= s * b[int(i)*k+l]
 				}
 				factor[l*k+c] += s
 			}
 		}
-		left := 0.0
 		for _, v := range column {
 			left += v * v
 		}
@@ -182,10 +182,10 @@ func orthonormalise(q, b []float64, rows []int32, k int) (rank int, factor []flo
 		}
 		norm := math.Sqrt(left)
 		for m, i := range rows {
-			q[int(i)*k+rank] = column[m] / norm
+			b[int(i)*k+rank] = column[m] / norm
 		}
 		factor[rank*k+c] = norm
 		rank++
 	}
-	return rank, factor
+	return rank
 }
