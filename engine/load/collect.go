@@ -19,6 +19,7 @@ const (
 type collector struct {
 	n            int
 	sym          symmetry
+	pattern      bool // the file holds no values: each is 1
 	digits       digitCount
 	t            triplets
 	lower, upper int // stored entries below and above the diagonal
@@ -64,7 +65,7 @@ func (c *collector) system(l *lines, format string, lineOf func(k int) int) (lin
 	c.t.pieces = nil
 	shrink(a, merged)
 	dups := c.stored(a, merged)
-	if dups > 0 && c.t.bare {
+	if dups > 0 && c.pattern {
 		src.Notes = append(src.Notes, "Entries of the pattern that stand twice were summed, so that their value is 2 or more.")
 	}
 	src.Duplicates = dups

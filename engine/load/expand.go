@@ -19,7 +19,7 @@ func (c *collector) matrix(ctx context.Context) (a *linear.CSR, merged int, err 
 	next := make([][]int, len(groups))
 	linear.Parallel(len(groups), func(g int) { next[g] = c.countRows(groups[g]) })
 	a = &linear.CSR{NRows: c.n, NCols: c.n, Ptr: rowStarts(next, c.n)}
-	a.Col, a.Val = make([]int32, a.Ptr[c.n]), make([]float64, a.Ptr[c.n])
+	a.Col, a.Val = bulk[int32](a.Ptr[c.n]), bulk[float64](a.Ptr[c.n])
 	linear.Parallel(len(groups), func(g int) {
 		for _, p := range groups[g] {
 			if ctx.Err() == nil {
@@ -41,7 +41,7 @@ func (c *collector) groups(threads int) (groups [][]piece) {
 	most := min(threads, (6+c.t.n/c.n)/4)
 	taken, start := 0, 0
 	for k, p := range c.t.pieces {
-		taken += len(p.row)
+		taken += len(p)
 		if taken*most >= c.t.n*(len(groups)+1) {
 			groups = append(groups, c.t.pieces[start:k+1])
 			start = k + 1
@@ -54,10 +54,10 @@ func (c *collector) groups(threads int) (groups [][]piece) {
 func (c *collector) countRows(group []piece) []int {
 	rows := make([]int, c.n)
 	for _, p := range group {
-		for k, i := range p.row {
-			rows[i]++
-			if j := p.col[k]; c.sym != general && i != j {
-				rows[j]++
+		for _, e := range p {
+			rows[e.row]++
+			if c.sym != general && e.row != e.col {
+				rows[e.col]++
 			}
 		}
 	}
@@ -85,11 +85,8 @@ func (c *collector) place(a *linear.CSR, next []int, p piece) {
 	if c.sym == skew {
 		mirror = -1
 	}
-	for k, i := range p.row {
-		j, v := p.col[k], 1.0
-		if p.val != nil {
-			v = p.val[k]
-		}
+	for _, e := range p {
+		i, j, v := e.row, e.col, e.val
 		at := next[i]
 		a.Col[at], a.Val[at] = j, v
 		next[i] = at + 1

@@ -12,7 +12,7 @@ func readBoeing(l *lines) (linear.System, error) {
 	if err != nil {
 		return linear.System{}, err
 	}
-	c := &collector{n: h.n, sym: h.sym, t: triplets{bare: true}}
+	c := &collector{n: h.n, sym: h.sym, pattern: h.field == "pattern"}
 	firstIndex, err := h.readPattern(l, c)
 	if err == nil && h.field != "pattern" {
 		err = h.readValues(l, c)
@@ -69,7 +69,7 @@ func (h *hbHeader) readPointers(l *lines) ([]int, error) {
 	in := &cards{l: l, f: h.ptr, what: "column pointer", n: h.n + 1}
 	room := h.n + 1
 	if l.size < 0 {
-		room = min(room, chunkLen)
+		room = min(room, pieceLen)
 	}
 	ptr := make([]int, 0, room)
 	for j := 0; j <= h.n; j++ {
@@ -94,10 +94,8 @@ func (h *hbHeader) readPointers(l *lines) ([]int, error) {
 // readValues reads the values of the entries already placed.
 func (h *hbHeader) readValues(l *lines, c *collector) error {
 	in := &cards{l: l, f: h.val, what: "value", n: h.entries}
-	for p := range c.t.pieces {
-		q := &c.t.pieces[p]
-		q.val = make([]float64, len(q.row))
-		for k := range q.val {
+	for _, p := range c.t.pieces {
+		for k := range p {
 			x, err := in.value()
 			if err != nil {
 				return err
@@ -106,7 +104,7 @@ func (h *hbHeader) readValues(l *lines, c *collector) error {
 			if x.val == 0 {
 				c.zeros++
 			}
-			q.val[k] = x.val
+			p[k].val = x.val
 		}
 	}
 	return nil

@@ -27,7 +27,7 @@ type lines struct {
 	read     int64  // bytes taken from r
 	report   func() // called after every read; may be nil
 	raw      *counter
-	whole    *whole // the file, where it lies in memory; nil for a stream
+	whole    *whole // the file, if it is a plain one; nil for a stream
 }
 
 // next returns the next line without its end, valid until the next call. It

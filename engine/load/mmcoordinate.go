@@ -22,7 +22,7 @@ func readMatrixMarket(l *lines) (linear.System, error) {
 }
 
 func (h *mmHeader) collector() collector {
-	return collector{n: h.rows, sym: h.sym, t: triplets{bare: h.field == "pattern"}}
+	return collector{n: h.rows, sym: h.sym, pattern: h.field == "pattern"}
 }
 
 func readCoordinates(l *lines, h mmHeader, c *collector) (linear.System, error) {

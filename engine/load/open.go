@@ -23,10 +23,8 @@ func File(ctx context.Context, path string, progress func(float64)) (linear.Syst
 	if err != nil {
 		return linear.System{}, err
 	}
-	if l.size >= 0 {
-		whole, unmap := mapFile(f, size)
-		defer unmap()
-		l.whole = whole
+	if l.size >= 2*chunkSize {
+		l.whole = &whole{r: f, size: size, chunk: chunkSize}
 	}
 	return l.system(progress)
 }

@@ -1,24 +1,19 @@
 package load
 
 import (
-	"runtime/debug"
 	"sync"
 	"sync/atomic"
-	"unsafe"
 
 	"dwindle/engine/linear"
 )
-
-// chunkSize is how many bytes of a file are parsed at a time: whole pages,
-// and few enough to stay in a core's cache.
-const chunkSize = 1 << 20
 
 // parser shares the chunks of a file among threads. They are cut by position
 // alone, so that nothing depends on the number of threads.
 type parser struct {
 	h     *mmHeader
 	whole *whole
-	first int           // where the first line begins
+	store store
+	first int64         // where the first line begins
 	out   []chan *chunk // one a chunk, in file order
 	next  atomic.Int64  // the first chunk not yet taken
 	stop  atomic.Bool
@@ -31,10 +26,11 @@ type parser struct {
 func (h *mmHeader) parallel(l *lines, c *collector, at *lineTable) error {
 	w := l.whole
 	pos, num := l.position(), l.num
-	if w == nil || pos >= len(w.text) {
+	if w == nil || pos >= w.size {
 		return nil
 	}
-	p := &parser{h: h, whole: w, first: pos, out: make([]chan *chunk, (len(w.text)-pos+w.size-1)/w.size)}
+	p := &parser{h: h, whole: w, first: pos, store: store{expect: h.stored}}
+	p.out = make([]chan *chunk, (w.size-pos-1)/int64(w.chunk)+1)
 	p.start(linear.Threads())
 	defer p.end()
 	for _, out := range p.out {
@@ -52,9 +48,9 @@ func (h *mmHeader) parallel(l *lines, c *collector, at *lineTable) error {
 		if !k.ok || c.t.n+k.c.t.n > h.stored {
 			break
 		}
-		c.join(at, k, num+1)
+		c.join(at, k, num)
 		pos, num = k.end, num+k.lines
-		if l.raw.n = int64(pos); l.report != nil {
+		if l.raw.n = pos; l.report != nil {
 			l.report()
 		}
 	}
@@ -72,49 +68,38 @@ func (p *parser) start(threads int) {
 	}
 }
 
-// end returns when no thread looks at the text any more.
+// end returns when no thread is at work any more.
 func (p *parser) end() {
 	p.stop.Store(true)
 	p.wait.Wait()
 }
 
+// work reads one chunk after the other.
 func (p *parser) work() {
-	debug.SetPanicOnFault(true) // the file may shrink under the map
+	buf := make([]byte, p.whole.chunk+longLine+1)
 	for !p.stop.Load() {
-		i := int(p.next.Add(1)) - 1
-		if i >= len(p.out) {
+		i := p.next.Add(1) - 1
+		if i >= int64(len(p.out)) {
 			return
 		}
-		p.out[i] <- p.read(i)
+		p.out[i] <- p.read(buf, i)
 	}
 }
 
-// read reads chunk i. Where the text is gone the chunk is not in order.
-func (p *parser) read(i int) (k *chunk) {
+// read reads chunk i; a panic is kept for the caller of parallel.
+func (p *parser) read(buf []byte, i int64) (k *chunk) {
 	defer func() {
 		if r := recover(); r != nil {
 			k = &chunk{fault: r}
-			if p.gone(r) {
-				k.fault = nil
-			}
 		}
 	}()
 	w := p.whole
-	lo := p.first + i*w.size
-	hi := min(lo+w.size, len(w.text))
-	k = p.h.readChunk(w.text, lo, hi)
-	if w.forget != nil {
-		w.forget(lo, hi)
-	}
-	return k
-}
-
-// gone tells whether a panic comes from looking at the text.
-func (p *parser) gone(r any) bool {
-	e, ok := r.(interface{ Addr() uintptr })
+	lo := p.first + i*int64(w.chunk)
+	text, end, ok := w.lines(buf, lo, min(lo+int64(w.chunk), w.size))
 	if !ok {
-		return false
+		return &chunk{}
 	}
-	start := uintptr(unsafe.Pointer(unsafe.SliceData(p.whole.text)))
-	return e.Addr() >= start && e.Addr()-start < uintptr(len(p.whole.text))
+	k = p.h.readChunk(text, &p.store)
+	k.end = end
+	return k
 }

@@ -1,0 +1,6 @@
+//go:build !linux
+
+package load
+
+// largePages does nothing here.
+func largePages([]byte) {}
