@@ -12,14 +12,13 @@ import (
 //
 //	w = A z_k,  h_i = v_iᵀw,  w −= h_i v_i
 //
-// and the least-squares problem over it. A second pass over the v_i is made
-// when the first cancels: when ‖w‖ falls below 0.1/√2 of what it was. ‖w‖
-// within rounding of zero is the happy breakdown: the space is exhausted and
-// holds the solution, unless R is singular; then its last column is dropped.
+// and the least-squares problem over it. ‖w‖ within rounding of zero is the
+// happy breakdown: the space is exhausted and holds the solution, unless R is
+// singular; then its last column is dropped.
 type arnoldi struct {
 	core
-	length  int         // of a cycle
-	v       [][]float64 // length+1 orthonormal vectors of length n
+	length  int  // of a cycle
+	v       span // length+1 vectors of length n
 	h       hessenberg
 	spent   bool    // the cycle exhausted its space
 	lost    float64 // then R's last diagonal entry over size, if R is singular; else 1
@@ -53,7 +52,7 @@ func (s *arnoldi) full() bool { return s.h.k == s.length || s.spent }
 func (s *arnoldi) extend() (trace.Reading, error) {
 	k := s.h.k
 	w := s.v[k+1]
-	before, after := s.orthogonalise(w)
+	before, after := s.v.orthogonalise(w, s.h.column(), k)
 	if !finite(before) || !finite(after) {
 		return s.overflow("|A inv(M) v|", before)
 	}
@@ -72,37 +71,6 @@ func (s *arnoldi) extend() (trace.Reading, error) {
 		linear.Scale(w, 1/after, w)
 	}
 	return s.reading(math.NaN(), math.NaN(), false), nil
-}
-
-// orthogonalise removes the span of v_0..v_k from w and fills the column of H.
-// It returns ‖w‖ before and after.
-func (s *arnoldi) orthogonalise(w []float64) (before, after float64) {
-	col := s.h.column()
-	clear(col)
-	after = s.project(w, col)
-	before = after
-	for _, h := range col[:s.h.k+1] {
-		before = math.Hypot(before, h)
-	}
-	if after < 0.1*math.Sqrt2/2*before {
-		after = s.project(w, col)
-	}
-	col[s.h.k+1] = after
-	return before, after
-}
-
-// project makes one pass of modified Gram–Schmidt, adds the coefficients to
-// col and returns ‖w‖. Each subtraction shares its pass over w with the next
-// dot product.
-func (s *arnoldi) project(w, col []float64) float64 {
-	k := s.h.k
-	d := linear.Dot(s.v[0], w)
-	for i := 0; i < k; i++ {
-		col[i] += d
-		d = linear.AxpyDot(-d, s.v[i], w, s.v[i+1])
-	}
-	col[k] += d
-	return root(linear.AxpyDot(-d, s.v[k], w, w), w)
 }
 
 // close ends a cycle whose correction is in x and whose residual, measured

@@ -22,6 +22,7 @@ var Catalogue = []Entry{
 	bicgstablEntry,
 	bicgstabEntry,
 	gmresEntry,
+	gmresdrEntry,
 	idrEntry,
 	gcrEntry,
 	fgmresEntry,

@@ -20,7 +20,8 @@ type Problem struct {
 type Solver interface {
 	// Begin allocates everything and measures the first residual.
 	Begin(Problem) (trace.Reading, error)
-	// Step makes one iteration and allocates nothing. It must not be called
+	// Step makes one iteration and allocates nothing (next to nothing in the
+	// restart of a Dense method). It must not be called
 	// after a reading with Done. A step that finds it cannot be made leaves
 	// the iterate as it was and says so with Done; Residual is always that of
 	// the iterate which Solution gives. Reading.Events is overwritten by the
@@ -56,6 +57,7 @@ type Entry struct {
 	NormOf      func(linear.Values) trace.Norm     // the same where a parameter decides; nil elsewhere
 	Products    string                             // per step, for display
 	Restarted   bool                               // works in cycles
+	Dense       bool                               // a restart solves a small dense eigenproblem, which allocates a little
 	Monotone    bool                               // ‖r‖ cannot grow
 	Energy      bool                               // ‖e‖_A cannot grow when A is definite
 	Lanczos     bool                               // Alpha, Beta are those of CG and give the Lanczos matrix of M⁻¹A

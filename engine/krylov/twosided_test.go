@@ -178,15 +178,7 @@ func TestBiCGStabLMinimises(t *testing.T) {
 // Close to skew symmetric, BiCGStab's one dimension gains little and l = 2
 // restores convergence (Sleijpen and Fokkema 1993).
 func TestBiCGStabLNearSkew(t *testing.T) {
-	const n = 200
-	var e []linear.Entry
-	for i := range n {
-		e = append(e, linear.Entry{I: i, J: i, V: 0.3})
-		if i > 0 {
-			e = append(e, linear.Entry{I: i, J: i - 1, V: -1}, linear.Entry{I: i - 1, J: i, V: 1})
-		}
-	}
-	a, b := linear.FromEntries(n, n, e), random(n, 7)
+	a, b := nearSkew(200), random(200, 7)
 	one, two := begun(t, a, b, nil, "bicgstab"), begun(t, a, b, nil, "bicgstabl:2")
 	one.until(1e-8, 1000)
 	two.until(1e-8, 500)
@@ -194,6 +186,18 @@ func TestBiCGStabLNearSkew(t *testing.T) {
 		t.Errorf("l = 2: %d products to %g, BiCGStab %d to %g", 4*two.steps, two.truth(), 2*one.steps, one.truth())
 	}
 	t.Logf("l = 2: %d products to %.1e, BiCGStab %d to %.1e", 4*two.steps, two.truth(), 2*one.steps, one.truth())
+}
+
+// nearSkew returns 0.3 on the diagonal and ∓1 beside it.
+func nearSkew(n int) *linear.CSR {
+	var e []linear.Entry
+	for i := range n {
+		e = append(e, linear.Entry{I: i, J: i, V: 0.3})
+		if i > 0 {
+			e = append(e, linear.Entry{I: i, J: i - 1, V: -1}, linear.Entry{I: i - 1, J: i, V: 1})
+		}
+	}
+	return linear.FromEntries(n, n, e)
 }
 
 // The cyclic shift with b = e₁: r₀ᵀA r₀ = 0 ends every method of the BiCG
