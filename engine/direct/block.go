@@ -24,6 +24,10 @@ type block struct {
 
 func (b block) row(i int) []float64 { return b.val[i*b.cols : i*b.cols+b.cols] }
 
+// wide is how many columns are finished before the rows below are, in
+// parallel.
+const wide = 8 * panelRows
+
 // cholesky overwrites the block by its part of L. It returns the row whose
 // pivot fails, or −1; what lies above and left of that pivot is then complete.
 func (b block) cholesky(ctx context.Context, least float64) (broken int, err error) {
@@ -31,27 +35,32 @@ func (b block) cholesky(ctx context.Context, least float64) (broken int, err err
 	for i := range from {
 		from[i] = b.val[i*b.cols+i]
 	}
-	p := 0
-	for ; p < b.cols; p += panelRows {
-		if err := ctx.Err(); err != nil {
+	for q := 0; q < b.cols; q += wide {
+		end := min(q+wide, b.cols)
+		for p := q; p < end; p += panelRows {
+			if r := b.panel(p, min(p+panelRows, end), q, end, from, least); r >= 0 {
+				return r, nil
+			}
+		}
+		panels := (b.rows - end + panelRows - 1) / panelRows
+		work := 2 * float64(b.rows-end) * float64(end-q) * float64(end)
+		err := inParallel(ctx, panels, work, func(k int) {
+			p := end + k*panelRows
+			b.panel(p, min(p+panelRows, b.rows), q, end, from, least)
+		})
+		if err != nil {
 			return -1, err
 		}
-		if r := b.panel(p, from, least); r >= 0 {
-			return r, nil
-		}
 	}
-	panels := max(0, (b.rows-p+panelRows-1)/panelRows)
-	work := float64(b.rows-b.cols) * float64(b.cols) * float64(b.cols)
-	return -1, inParallel(ctx, panels, work, func(k int) { b.panel(p+k*panelRows, from, least) })
+	return -1, nil
 }
 
-// panel computes the rows p to p+panelRows of L, tile by tile, each from all
-// to its left.
-func (b block) panel(p int, from []float64, least float64) (broken int) {
-	end := min(p+panelRows, b.rows)
-	for j := 0; j < min(b.cols, end); j += tile {
+// panel computes columns j to right of the rows p to end of L, tile by tile,
+// each from all to its left. It returns the row whose pivot fails, or −1.
+func (b block) panel(p, end, j, right int, from []float64, least float64) (broken int) {
+	for ; j < min(right, end); j += tile {
 		for i := max(p, j); i < end; i += tile {
-			if r := b.tile(i, j, from, least); r >= 0 {
+			if r := b.tile(i, j, end, from, least); r >= 0 {
 				return r
 			}
 		}
@@ -59,11 +68,11 @@ func (b block) panel(p int, from []float64, least float64) (broken int) {
 	return -1
 }
 
-// tile computes the tile of L at (i, j) and returns the row whose pivot fails,
-// or −1.
-func (b block) tile(i, j int, from []float64, least float64) int {
-	b.subtract(i, j)
-	for r := i; r < min(i+tile, b.rows); r++ {
+// tile computes the tile of L at (i, j), rows before end, and returns the row
+// whose pivot fails, or −1.
+func (b block) tile(i, j, end int, from []float64, least float64) int {
+	b.subtract(i, j, end)
+	for r := i; r < min(i+tile, end); r++ {
 		row := b.row(r)
 		for c := j; c < min(j+tile, b.cols, r+1); c++ {
 			left := b.row(c)
@@ -85,12 +94,12 @@ func (b block) tile(i, j int, from []float64, least float64) int {
 }
 
 // subtract takes from the tile at (i, j) the products of the columns before j.
-func (b block) subtract(i, j int) {
+func (b block) subtract(i, j, end int) {
 	if j == 0 {
 		return
 	}
-	if i+tile > b.rows || j+tile > b.cols {
-		for r := i; r < min(i+tile, b.rows); r++ {
+	if i+tile > end || j+tile > b.cols {
+		for r := i; r < min(i+tile, end); r++ {
 			row := b.row(r)
 			for c := j; c < min(j+tile, b.cols); c++ {
 				if c <= r {

@@ -2,14 +2,9 @@ package direct
 
 import (
 	"context"
-	"errors"
 
 	"dwindle/engine/linear"
 )
-
-// ErrTooLarge says that a factorisation would pass the limits of work or
-// memory; nothing was computed.
-var ErrTooLarge = errors.New("too large to be factorised here")
 
 // Definiteness is what VerifiedDefinite found out. At most one of Definite and
 // Negative is true; with neither the question is open.
@@ -38,10 +33,16 @@ type Definiteness struct {
 // amount. Of a matrix that is symmetric to rounding only, pass a delta that
 // covers the difference.
 //
-// The matrix is scaled by powers of two, which is exact, and permuted by
-// reverse Cuthill–McKee where that saves work. It returns ErrTooLarge beyond
-// 3·10⁹ operations or 64 MiB of factor.
+// The matrix is scaled by powers of two, which is exact, and factorised in the
+// order that takes the fewest operations. VerifiedDefinite keeps to FactLimits
+// and returns ErrTooLarge beyond.
 func VerifiedDefinite(ctx context.Context, a *linear.CSR, delta float64) (Definiteness, error) {
+	return VerifiedDefiniteWithin(ctx, a, delta, FactLimits)
+}
+
+// VerifiedDefiniteWithin is VerifiedDefinite within the given limits, which are
+// held against what the pattern predicts before anything is allocated.
+func VerifiedDefiniteWithin(ctx context.Context, a *linear.CSR, delta float64, within Limits) (Definiteness, error) {
 	d := make([]float64, a.NRows)
 	a.Diagonal(d)
 	for i, v := range d {
@@ -53,29 +54,27 @@ func VerifiedDefinite(ctx context.Context, a *linear.CSR, delta float64) (Defini
 			return r, nil
 		}
 	}
-	order, ok, err := affordable(ctx, a)
+	sym, err := within.analyse(ctx, a)
 	if err != nil {
 		return Definiteness{Row: -1}, err
 	}
-	if !ok {
-		return Definiteness{Row: -1}, ErrTooLarge
-	}
-	return newScaled(a, d).decide(ctx, order, delta)
+	return newScaled(a, d).decide(ctx, sym, delta)
 }
 
 // decide factorises with the shift for delta and, if that breaks, with the one
 // for rounding alone.
-func (s *scaled) decide(ctx context.Context, order []int32, delta float64) (Definiteness, error) {
-	l := newSkyline(s.a, order)
+func (s *scaled) decide(ctx context.Context, sym *Symbolic, delta float64) (Definiteness, error) {
+	l := sym.lay(patternOf(s.a))
 	c := roundingShift(l, s.diagonal())
 	shifts := []float64{c}
 	if delta > 0 {
 		shifts = []float64{c + 1.01*delta*s.normInf(), c}
 	}
+	f := newFactoring(l, symmetricEntries{a: s.a, s: s}, 0)
 	r := Definiteness{}
 	for k, c := range shifts {
-		l.fill(s, c)
-		at, err := l.factor(ctx)
+		f.restart(c)
+		at, err := f.run(ctx, nil)
 		if err != nil {
 			return r, err
 		}
@@ -84,9 +83,9 @@ func (s *scaled) decide(ctx context.Context, order []int32, delta float64) (Defi
 			r.Definite, r.WithinDelta = true, k == 0
 			return r, nil
 		}
-		r.Row = int(order[at])
+		r.Row = int(sym.Order[at])
 		if k == len(shifts)-1 {
-			x := l.negativeVector(at, order)
+			x := f.negativeVector(at)
 			s.descend(ctx, x)
 			r.judge(s.a, x, s.exp, delta)
 		}

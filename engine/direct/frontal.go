@@ -85,6 +85,13 @@ func newFactoring(l *layout, a symmetricEntries, least float64) *factoring {
 		local: make([]int32, l.N), stack: make([]float64, l.Stack/8), wait: make([]int, len(l.up))}
 }
 
+// restart prepares another factorisation, with a shift of the diagonal.
+func (f *factoring) restart(shift float64) {
+	f.a.shift = shift
+	f.top = 0
+	clear(f.val)
+}
+
 // run factorises all supernodes and returns the column whose pivot fails, or −1.
 func (f *factoring) run(ctx context.Context, progress func(float64)) (broken int, err error) {
 	done, told := 0.0, 0.0

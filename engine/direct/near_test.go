@@ -40,8 +40,11 @@ func exactlyDefinite(a *linear.CSR) bool {
 func TestNeverWrongNearSingular(t *testing.T) {
 	rng := rand.New(rand.NewPCG(1, 2))
 	var yes, no, left int
-	for trial := range 400 {
+	for trial := range 1000 {
 		n := 2 + rng.IntN(9)
+		if trial%5 == 4 {
+			n = 12 + rng.IntN(8) // sparse, in several fronts
+		}
 		a := nearSingular(rng, n, trial%4)
 		r := verify(t, a, 0)
 		exact := exactlyDefinite(a)
@@ -70,7 +73,9 @@ func nearSingular(rng *rand.Rand, n, how int) *linear.CSR {
 	for i := range b {
 		b[i] = make([]float64, n-1)
 		for j := range b[i] {
-			b[i][j] = float64(rng.IntN(19) - 9)
+			if n < 12 || rng.IntN(n) < 2 {
+				b[i][j] = float64(rng.IntN(19) - 9)
+			}
 		}
 		b[i][rng.IntN(n-1)] += 10
 	}

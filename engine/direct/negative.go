@@ -8,28 +8,21 @@ import (
 )
 
 // negativeVector returns x with xᵀ(A−cI)x = the pivot that was not positive at
-// row k: L₁₁ᵀy = −l with l the part of row k left of the diagonal, x = (y, 1, 0).
+// step j: L₁₁ᵀy = −l with l the part of row j left of the diagonal, x = (y, 1, 0).
 // It is in original row order, of the scaled matrix.
-func (l *skyline) negativeVector(k int, order []int32) []float64 {
-	g := k / tile
-	v := make([]float64, k+1)
-	for c, f := range l.row(g, k%tile)[:k-l.first[g]] {
-		v[l.first[g]+c] = -f
+func (f *factoring) negativeVector(j int) []float64 {
+	c := &Cholesky{l: f.l, val: f.val, work: make([]float64, f.l.N)}
+	c.work[j] = 1
+	k := 0
+	for int(f.l.start[k+1]) <= j {
+		k++
 	}
-	v[k] = 1
-	for i := k - 1; i >= 0; i-- {
-		g := i / tile
-		f := l.first[g]
-		row := l.row(g, i%tile)
-		v[i] /= row[i-f]
-		for j := f; j < i; j++ {
-			v[j] -= row[j-f] * v[i]
-		}
+	c.backward(k, j-int(f.l.start[k]))
+	for k--; k >= 0; k-- {
+		c.backward(k, f.l.width(k))
 	}
-	x := make([]float64, len(order))
-	for i, y := range v {
-		x[order[i]] = y
-	}
+	x := make([]float64, f.l.N)
+	f.l.Order.Backward(x, c.work)
 	return x
 }
 

@@ -1,35 +1,10 @@
 package direct
 
 import (
-	"context"
 	"slices"
 
 	"dwindle/engine/linear"
 )
-
-// The limits of a factorisation that is made for a fact.
-const (
-	maxWork  = 3e9      // floating-point operations
-	maxBytes = 64 << 20 // of the factor
-	maxRCM   = 200_000  // rows up to which another order is tried
-)
-
-// affordable returns the cheaper of the given order and reverse Cuthill–McKee,
-// and whether it keeps to the limits.
-func affordable(ctx context.Context, a *linear.CSR) (order []int32, ok bool, err error) {
-	order = make([]int32, a.NRows)
-	for i := range order {
-		order[i] = int32(i)
-	}
-	work, bytes := cost(firsts(a, order))
-	if a.NRows <= maxRCM {
-		other := ReverseCuthillMcKee(a)
-		if w, b := cost(firsts(a, other)); w < work {
-			order, work, bytes = other, w, b
-		}
-	}
-	return order, work <= maxWork && bytes <= maxBytes, ctx.Err()
-}
 
 // ReverseCuthillMcKee returns an order that keeps the entries of A + Aᵀ near
 // the diagonal: the original row of each place. Each component is numbered breadth first from a row far from its
