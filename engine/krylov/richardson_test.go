@@ -50,12 +50,30 @@ func TestStationaryFactors(t *testing.T) {
 		for pairing, want := range map[string]float64{
 			"richardson+jacobi":    rho,
 			"richardson:0.25+none": (kappa - 1) / (kappa + 1),
-			"richardson:0.25":      rho,
+			"richardson+gs":        rho * rho,
 		} {
 			b := make([]float64, n*n)
 			linear.Uniform(b, 3)
 			r := begun(t, plate(n), b, nil, pairing)
 			near(t, pairing, factor(r, 500, 20), want, 2e-6)
+		}
+	}
+}
+
+// Over-relaxation with ω = 2/(1 + sin πh) has spectral radius ω − 1 (Young
+// 1954). Its eigenvalues of that size are defective, so that the dense ones are
+// good to about the root of the rounding unit only, and the residual falls as
+// k (ω−1)^k: the steps to 1e-10 lie a little beyond those of the radius.
+func TestOverRelaxation(t *testing.T) {
+	for n, rho := range map[int]float64{8: 0.490290596565702, 16: 0.689546622742459} {
+		omega := 2 / (1 + math.Sin(math.Pi/float64(n+1)))
+		near(t, "ω − 1", omega-1, rho, 1e-14)
+		sor := fmt.Sprintf("sor:%.17g", omega)
+		near(t, sor, contraction(t, plate(n), sor), rho, 1e-3)
+		r := begun(t, plate(n), ones(n*n), nil, "richardson+"+sor)
+		got, least := r.until(1e-10, 1000), math.Log(1e-10)/math.Log(rho)
+		if float64(got) < least-2 || float64(got) > 1.5*least {
+			t.Errorf("%d steps with %s, %.0f by the radius alone", got, sor, least)
 		}
 	}
 }
@@ -88,7 +106,7 @@ func TestRichardsonDiverges(t *testing.T) {
 // With an exact M one step solves. The tridiagonal matrix of a line has the
 // incomplete factorisation without fill as its exact one.
 func TestRichardsonDirect(t *testing.T) {
-	for _, m := range []string{"ic:0", "ilu:0"} {
+	for _, m := range []string{"ic:0", "ilu:0", "cholesky", "ldl", "lu"} {
 		r := begun(t, line(50), ones(50), nil, "richardson+"+m)
 		r.step()
 		near(t, m+": true residual after one step", r.truth(), 0, 1e-12)
