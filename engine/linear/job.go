@@ -16,6 +16,8 @@ type job struct {
 	u, v, w, x, y []float64
 	a, b          float64
 	m             *CSR
+	d             []diagonal
+	blk           *blocks
 	part          []float64 // sums, one or two a block
 	shares        []share   // one a thread
 	failed        atomic.Pointer[any]
@@ -84,7 +86,7 @@ func (j *job) makeParts(n int) {
 
 // release lets go of the operands and keeps the job for the next call.
 func (j *job) release() {
-	j.u, j.v, j.w, j.x, j.y, j.m = nil, nil, nil, nil, nil, nil
+	j.u, j.v, j.w, j.x, j.y, j.m, j.d, j.blk = nil, nil, nil, nil, nil, nil, nil, nil
 	spare.Store(j)
 }
 

@@ -11,23 +11,6 @@ func Dot(x, y []float64) float64 {
 
 func dotKernel(j *job, lo, hi, block int) { j.part[block] = dot(j.x[lo:hi], j.y[lo:hi]) }
 
-// dot is the sum of one block in four strands.
-func dot(x, y []float64) float64 {
-	y = y[:len(x)]
-	var s0, s1, s2, s3 float64
-	for len(x) >= 4 && len(y) >= 4 {
-		s0 += x[0] * y[0]
-		s1 += x[1] * y[1]
-		s2 += x[2] * y[2]
-		s3 += x[3] * y[3]
-		x, y = x[4:], y[4:]
-	}
-	for i, v := range x {
-		s0 += v * y[i]
-	}
-	return (s0 + s1) + (s2 + s3)
-}
-
 // Norm2 returns ‖x‖₂, also where the squares would over- or underflow.
 func Norm2(x []float64) float64 {
 	s := Dot(x, x)
