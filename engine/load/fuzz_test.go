@@ -69,7 +69,12 @@ func FuzzMatrixMarket(f *testing.F) {
 	} {
 		f.Add([]byte(s))
 	}
-	f.Fuzz(fuzzRead)
+	f.Fuzz(func(t *testing.T, data []byte) {
+		fuzzRead(t, data)
+		for _, chunk := range []int{1, 7, 40} {
+			sameReading(t, data, chunk)
+		}
+	})
 }
 
 func FuzzHarwellBoeing(f *testing.F) {

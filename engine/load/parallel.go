@@ -50,7 +50,7 @@ func (h *mmHeader) parallel(l *lines, c *collector, at *lineTable) error {
 		}
 		c.join(at, k, num)
 		pos, num = k.end, num+k.lines
-		if l.raw.n = pos; l.report != nil {
+		if l.raw.n = max(l.raw.n, pos); l.report != nil {
 			l.report()
 		}
 	}

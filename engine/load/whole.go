@@ -51,7 +51,7 @@ func (l *lines) position() int64 { return l.read - int64(l.end-l.pos) }
 // number num.
 func (l *lines) leap(pos int64, num int) {
 	l.raw.r = io.NewSectionReader(l.whole.r, pos, l.size-pos)
-	l.raw.n, l.read = pos, pos
+	l.read = pos
 	l.r = l.raw
 	l.pos, l.end, l.num, l.atEOF = 0, 0, num, false
 }
