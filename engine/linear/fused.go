@@ -22,11 +22,8 @@ func AxpyDot2(a float64, x, y, z []float64) (yy, yz float64) {
 }
 
 func axpyDot2Kernel(j *job, lo, hi, block int) {
-	a, x, y, z := j.a, j.x[lo:hi], j.y[lo:hi], j.v[lo:hi]
-	y, z = y[:len(x)], z[:len(x)]
-	for i, v := range x {
-		y[i] += a * v
-	}
+	y, z := j.y[lo:hi], j.v[lo:hi]
+	axpy(y, j.x[lo:hi], j.a)
 	j.part[block] = dot(y, y)
 	*j.second(block) = dot(y, z)
 }

@@ -59,3 +59,21 @@ func tapsPlain(dst []float64, taps []tap) {
 		}
 	}
 }
+
+// axpyPlain computes y += a x.
+func axpyPlain(y, x []float64, a float64) {
+	x = x[:len(y)]
+	for i, v := range x {
+		y[i] += float64(a * v)
+	}
+}
+
+// stepPlain computes x += a p, then p = z + b p.
+func stepPlain(x, p, z []float64, a, b float64) {
+	p, z = p[:len(x)], z[:len(x)]
+	for i := range x {
+		q := p[i]
+		x[i] += float64(a * q)
+		p[i] = z[i] + float64(b*q)
+	}
+}

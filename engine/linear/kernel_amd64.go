@@ -45,3 +45,35 @@ func sumTaps(dst []float64, taps []tap) {
 	}
 	tapsPlain(dst[whole:], taps)
 }
+
+// axpyAVX2 computes y += a x. n is a multiple of 8.
+//
+//go:noescape
+func axpyAVX2(y, x *float64, n int, a float64)
+
+// stepAVX2 computes x += a p, then p = z + b p. n is a multiple of 8.
+//
+//go:noescape
+func stepAVX2(x, p, z *float64, n int, a, b float64)
+
+// axpy computes y += a x.
+func axpy(y, x []float64, a float64) {
+	x = x[:len(y)]
+	whole := 0
+	if vectored && len(y) >= 8 {
+		whole = len(y) &^ 7
+		axpyAVX2(&y[0], &x[0], whole, a)
+	}
+	axpyPlain(y[whole:], x[whole:], a)
+}
+
+// step computes x += a p, then p = z + b p.
+func step(x, p, z []float64, a, b float64) {
+	p, z = p[:len(x)], z[:len(x)]
+	whole := 0
+	if vectored && len(x) >= 8 {
+		whole = len(x) &^ 7
+		stepAVX2(&x[0], &p[0], &z[0], whole, a, b)
+	}
+	stepPlain(x[whole:], p[whole:], z[whole:], a, b)
+}

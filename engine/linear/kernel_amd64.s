@@ -90,3 +90,64 @@ store:
 done:
 	VZEROUPPER
 	RET
+
+// func axpyAVX2(y, x *float64, n int, a float64)
+TEXT ·axpyAVX2(SB), NOSPLIT, $0-32
+	MOVQ         y+0(FP), DI
+	MOVQ         x+8(FP), SI
+	MOVQ         n+16(FP), CX
+	VBROADCASTSD a+24(FP), Y0
+	SHRQ         $3, CX
+	JZ           done
+
+eight:
+	VMULPD  (SI), Y0, Y1
+	VMULPD  32(SI), Y0, Y2
+	VADDPD  (DI), Y1, Y1
+	VADDPD  32(DI), Y2, Y2
+	VMOVUPD Y1, (DI)
+	VMOVUPD Y2, 32(DI)
+	ADDQ    $64, SI
+	ADDQ    $64, DI
+	DECQ    CX
+	JNZ     eight
+
+done:
+	VZEROUPPER
+	RET
+
+// func stepAVX2(x, p, z *float64, n int, a, b float64)
+TEXT ·stepAVX2(SB), NOSPLIT, $0-48
+	MOVQ         x+0(FP), DI
+	MOVQ         p+8(FP), SI
+	MOVQ         z+16(FP), DX
+	MOVQ         n+24(FP), CX
+	VBROADCASTSD a+32(FP), Y0
+	VBROADCASTSD b+40(FP), Y1
+	SHRQ         $3, CX
+	JZ           done
+
+eight:
+	VMOVUPD (SI), Y2
+	VMOVUPD 32(SI), Y3
+	VMULPD  Y2, Y0, Y4         // a p
+	VMULPD  Y3, Y0, Y5
+	VMULPD  Y2, Y1, Y2         // b p
+	VMULPD  Y3, Y1, Y3
+	VADDPD  (DI), Y4, Y4
+	VADDPD  32(DI), Y5, Y5
+	VADDPD  (DX), Y2, Y2
+	VADDPD  32(DX), Y3, Y3
+	VMOVUPD Y4, (DI)
+	VMOVUPD Y5, 32(DI)
+	VMOVUPD Y2, (SI)
+	VMOVUPD Y3, 32(SI)
+	ADDQ    $64, DI
+	ADDQ    $64, SI
+	ADDQ    $64, DX
+	DECQ    CX
+	JNZ     eight
+
+done:
+	VZEROUPPER
+	RET

@@ -203,21 +203,6 @@ func TestHalfOfTheDiagonalsGivesTheBitsOfAll(t *testing.T) {
 	}
 }
 
-// The vector instructions give the bits of their portable twins.
-func TestDotTwins(t *testing.T) {
-	if !vectored {
-		t.Log("no vector instructions here: the twins are the same")
-	}
-	for n := range 67 {
-		x, y := make([]float64, n), make([]float64, n)
-		Uniform(x, uint64(n))
-		Uniform(y, uint64(n+100))
-		if got, want := dot(x, y), dotPlain(x, y); got != want {
-			t.Errorf("length %d: %v, portable twin %v", n, got, want)
-		}
-	}
-}
-
 // Products by the forms allocate nothing once warm.
 func TestFormsDoNotAllocate(t *testing.T) {
 	for _, c := range forms {

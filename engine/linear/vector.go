@@ -49,13 +49,7 @@ func Axpy(a float64, x, y []float64) {
 	j.finish()
 }
 
-func axpyKernel(j *job, lo, hi, _ int) {
-	a, x, y := j.a, j.x[lo:hi], j.y[lo:hi]
-	y = y[:len(x)]
-	for i, v := range x {
-		y[i] += a * v
-	}
-}
+func axpyKernel(j *job, lo, hi, _ int) { axpy(j.y[lo:hi], j.x[lo:hi], j.a) }
 
 // Xpby computes y = x + b y.
 func Xpby(x []float64, b float64, y []float64) {
@@ -127,12 +121,9 @@ func AxpyDot(a float64, x, y, z []float64) float64 {
 }
 
 func axpyDotKernel(j *job, lo, hi, block int) {
-	a, x, y, z := j.a, j.x[lo:hi], j.y[lo:hi], j.v[lo:hi]
-	y, z = y[:len(x)], z[:len(x)]
-	for i, v := range x {
-		y[i] += a * v
-	}
-	j.part[block] = dot(y, z) // still in the nearest cache
+	y := j.y[lo:hi]
+	axpy(y, j.x[lo:hi], j.a)
+	j.part[block] = dot(y, j.v[lo:hi]) // still in the nearest cache
 }
 
 // StepDirection computes x += a p, then p = z + b p, in one pass: the last two
@@ -143,12 +134,4 @@ func StepDirection(x []float64, a float64, p []float64, z []float64, b float64) 
 	j.finish()
 }
 
-func stepKernel(j *job, lo, hi, _ int) {
-	a, b, x, p, z := j.a, j.b, j.x[lo:hi], j.u[lo:hi], j.v[lo:hi]
-	p, z = p[:len(x)], z[:len(x)]
-	for i := range x {
-		q := p[i]
-		x[i] += a * q
-		p[i] = z[i] + b*q
-	}
-}
+func stepKernel(j *job, lo, hi, _ int) { step(j.x[lo:hi], j.u[lo:hi], j.v[lo:hi], j.a, j.b) }
