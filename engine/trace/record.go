@@ -106,4 +106,11 @@ type BuildNotes struct {
 	Symmetric bool    // M is symmetric by construction
 	Definite  bool    // M is positive definite by construction
 	Growth    float64 // ‖(LU)⁻¹1‖∞·‖A‖∞ for factorisations; 0 if not measured
+	Levels    []Level // of a multilevel method, finest first
+}
+
+// Level is one operator of a multilevel method: its order and stored entries.
+type Level struct {
+	Unknowns int
+	Entries  int64
 }
