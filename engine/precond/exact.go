@@ -26,6 +26,17 @@ func refineBytes(n int, v linear.Values) int64 {
 	return 16 * int64(n)
 }
 
+// predictRows is how many rows are ordered for a prediction of memory alone;
+// more take longer than an answer may.
+const predictRows = 3_000_000
+
+// meshBytes is the memory of the factor of a plane mesh of n points in nested
+// dissection, 31/4·n·log₂n entries (George 1973): a stand-in for the
+// prediction where ordering takes too long.
+func meshBytes(n int) int64 {
+	return int64(8 * 7.75 * float64(n) * math.Log2(float64(n)))
+}
+
 // exact applies A⁻¹, and A⁻ᵀ.
 type exact struct{ solver, transposed direct.Solver }
 

@@ -22,6 +22,9 @@ var ldlEntry = Entry{
 		if a == nil {
 			return 0, false
 		}
+		if a.NRows > predictRows {
+			return meshBytes(a.NRows), false
+		}
 		sym := direct.Predict(a, ordering(v))
 		return sym.Bytes() + sym.Stack + refineBytes(a.NRows, v), false // pivots that must wait cost more
 	},

@@ -21,6 +21,9 @@ var luEntry = Entry{
 		if a == nil {
 			return 0, false
 		}
+		if a.NRows > predictRows {
+			return 2 * meshBytes(a.NRows), false
+		}
 		return direct.PredictLU(a, ordering(v)).Bytes() + refineBytes(a.NRows, v), false
 	},
 	Build: buildLU,
