@@ -101,13 +101,13 @@ func (t *Trial) inOwnNorm(true2 float64) float64 {
 // in w. Nothing is counted.
 func (t *Trial) ownNorm(r []float64, two float64) float64 {
 	s, plain := t.scratch, t.method.Precond.Name == "none"
-	switch t.method.Solver.Norm {
+	switch t.method.watched() {
 	case trace.PrecondNorm:
-		if plain {
-			return two
-		}
 		t.m.inner.Apply(s.w, r)
 		return math.Sqrt(math.Max(0, linear.Dot(r, s.w)))
+	case trace.LeftNorm:
+		t.m.inner.Apply(s.w, r)
+		return linear.Norm2(s.w)
 	case trace.NormalEquationNorm:
 		at, _ := linear.As[linear.Transposer](t.prepared.A)
 		at.ApplyT(s.w, r)

@@ -82,17 +82,21 @@ func unknown(what, name string, known []string) error {
 	return fmt.Errorf("no %s is called %q; there are %s", what, name, strings.Join(known, ", "))
 }
 
-// norm returns the norm the method's own number is in.
-func (m Method) norm() trace.Norm {
-	scales := slices.ContainsFunc(m.Preps, func(p Prep) bool { return p.Entry.Scales })
-	if scales && m.Solver.Norm == trace.TwoNorm {
-		return trace.ScaledNorm
-	}
-	if m.Solver.Norm == trace.PrecondNorm && m.Precond.Name == "none" {
-		if scales {
-			return trace.ScaledNorm
-		}
+// watched returns the norm the solver watches in the prepared system. Without
+// a preconditioner every norm of M⁻¹r is that of r.
+func (m Method) watched() trace.Norm {
+	w := m.Solver.Watched(m.SolverValues)
+	if m.Precond.Name == "none" && (w == trace.PrecondNorm || w == trace.LeftNorm) {
 		return trace.TwoNorm
 	}
-	return m.Solver.Norm
+	return w
+}
+
+// norm returns the norm the method's own number is in.
+func (m Method) norm() trace.Norm {
+	w := m.watched()
+	if w == trace.TwoNorm && slices.ContainsFunc(m.Preps, func(p Prep) bool { return p.Entry.Scales }) {
+		return trace.ScaledNorm
+	}
+	return w
 }

@@ -24,7 +24,7 @@ func (t *Trial) record(r trace.Reading, first bool) {
 		backward = math.NaN()
 	}
 	marked := t.marks.see(iter, t.limits.Target.Tol, numbers{r: r.Residual, b: t.ownB, r0: t.own0,
-		backward: backward, precond: h.Norm == trace.PrecondNorm, normal: h.Norm == trace.NormalEquationNorm, alpha: r.Alpha, beta: r.Beta, firstStep: first})
+		backward: backward, precond: h.Norm == trace.PrecondNorm || h.Norm == trace.LeftNorm, normal: h.Norm == trace.NormalEquationNorm, alpha: r.Alpha, beta: r.Beta, firstStep: first})
 	var a *audit
 	due := t.sched.due(iter, own, t.limits.Target.Tol)
 	if due || marked || r.Done || t.atLimit(iter) || t.atUnreachable(rec.Residual) {

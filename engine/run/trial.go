@@ -32,6 +32,7 @@ type Trial struct {
 
 	prepared linear.System
 	back     prepare.Back // nil without preparations
+	form     *form        // of the products of A; nil: the rows
 	a, m     *counted
 	solver   krylov.Solver
 	scratch  *scratch
@@ -89,7 +90,7 @@ func newTrial(id int, m Method, s linear.System, z sizes, l Limits, clock Clock,
 	t.hist = trace.History{Pairing: m.Name, Stop: trace.Waiting, Norm: m.norm(), MemoryBytes: memory,
 		SymmetricA: e.Assumes&linear.AssumesSymmetric != 0, DefiniteA: e.Assumes&linear.AssumesDefinite != 0,
 		SPDM:      e.Assumes&linear.AssumesSymmetricM != 0 && p.Name != "none",
-		Restarted: e.Restarted, Monotone: e.Monotone, Energy: e.Energy, Direct: p.Exact && m.From == "",
+		Restarted: e.Restarted, Monotone: e.Monotone && m.watched() != trace.LeftNorm, Energy: e.Energy, Direct: p.Exact && m.From == "",
 		CPUShare: nan, Residual: nan, TrueResidual: nan, BestTrue: math.Inf(1), Backward: nan, Componentwise: nan,
 		Error: nan, Floor: nan, Normal: nan, PrecondAsymmetry: nan, WouldStop: t.marks.audited(-1, nan)}
 	return t
@@ -150,7 +151,8 @@ func (t *Trial) setUp(parent context.Context) {
 	t.mu.Lock()
 	t.hist.Stop, t.cancel = trace.SettingUp, cancel
 	t.mu.Unlock()
-	start := t.clock()
+	shared := t.readyForm()
+	start := t.clock() - shared
 	reading, err := t.build(ctx)
 	t.charge(start)
 	t.mu.Lock()
@@ -191,7 +193,7 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 		return trace.Reading{}, err
 	}
 	n := t.sys.N()
-	t.a, t.m = &counted{inner: t.prepared.A, n: n}, &counted{inner: m, n: n}
+	t.a, t.m = &counted{inner: t.products(), n: n}, &counted{inner: m, n: n}
 	guess := t.prepared.Guess
 	solver := t.method.Solver.New(t.method.SolverValues)
 	r, err := solver.Begin(krylov.Problem{A: t.a, M: t.m, B: t.prepared.B, X: guess})
