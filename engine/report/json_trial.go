@@ -16,6 +16,7 @@ type trialJSON struct {
 	SetupSeconds  number        `json:"setup_seconds"`
 	OwnSeconds    number        `json:"own_seconds"`
 	Memory        int64         `json:"memory_bytes"`
+	Storage       *string       `json:"storage"`
 	Norm          *string       `json:"norm"`
 	Residual      number        `json:"residual"`
 	TrueResidual  number        `json:"true_residual"`
@@ -90,7 +91,8 @@ func toTrials(ts []trace.History) []trialJSON {
 		j := trialJSON{
 			Pairing: tame(t.Pairing), Today: t.Today, Stop: t.Stop.String(), Iterations: t.Iterations,
 			Products: t.Products, PrecondUses: t.PrecondUses, SetupSeconds: number(t.SetupTime.Seconds()),
-			OwnSeconds: number(t.OwnTime.Seconds()), Memory: t.MemoryBytes, Norm: optional(string(t.Norm)),
+			OwnSeconds: number(t.OwnTime.Seconds()), Memory: t.MemoryBytes,
+			Storage: optional(t.Storage), Norm: optional(string(t.Norm)),
 			Residual: number(t.Residual), TrueResidual: number(t.TrueResidual), Backward: number(t.Backward),
 			Componentwise: number(t.Componentwise), Error: number(t.Error), BestTrue: number(t.BestTrue),
 			Floor: number(t.Floor), CPUShare: number(t.CPUShare), UnsolvedRows: t.UnsolvedRows,

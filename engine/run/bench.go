@@ -29,6 +29,7 @@ type Bench struct {
 	clock   Clock
 	have    Have
 	sizes   sizes
+	form    *form // nil: products run on the rows
 	scratch *scratch
 
 	mu      sync.Mutex
@@ -48,6 +49,7 @@ func NewBench(s linear.System, l Limits, memory int64, clock Clock) *Bench {
 		clock = MachineClock()
 	}
 	b := &Bench{sys: s, limits: l, memory: memory, clock: clock, have: Offers(s), sizes: measure(s), nextID: 1}
+	b.form = foresee(b.have, memory, clock)
 	b.wake = sync.NewCond(&b.mu)
 	return b
 }
@@ -85,17 +87,19 @@ func (b *Bench) Have() Have { return b.have }
 // Add adds a trial. A pairing that cannot run here, or would not fit the
 // memory limit beside the live ones, is added as refused.
 func (b *Bench) Add(m Method) *Trial {
-	need := m.Memory(b.have)
+	form := b.formFor(m)
+	need := m.Memory(b.have) + form.need()
 	b.mu.Lock()
 	defer b.mu.Unlock()
 	if b.scratch == nil {
 		b.scratch = newScratch(b.sys.N())
 	}
 	t := newTrial(b.nextID, m, b.sys, b.sizes, b.limits, b.clock, b.scratch, need)
+	t.form = form
 	b.nextID++
 	if why := m.Refuse(b.have); why != "" {
 		t.end(trace.Refused, why)
-	} else if used := b.used(); b.memory > 0 && used+need > b.memory {
+	} else if used := b.used(); b.memory > 0 && used+b.beyond(t) > b.memory {
 		t.end(trace.Refused, fmt.Sprintf("needs %s; %s of the limit %s are in use", Bytes(need), Bytes(used), Bytes(b.memory)))
 	}
 	b.trials = append(b.trials, t)
@@ -104,15 +108,19 @@ func (b *Bench) Add(m Method) *Trial {
 	return t
 }
 
-// used returns the memory of the trials that hold any; b.mu is held.
+// used returns the memory of the trials that hold any, the shared form
+// counted once; b.mu is held.
 func (b *Bench) used() int64 {
 	total := int64(0)
 	for _, t := range b.trials {
 		if h := t.History(); !h.Stop.Ended() {
-			total += h.MemoryBytes
+			total += h.MemoryBytes - t.sharedBytes()
 		} else if h.Stop != trace.Refused {
 			total += 8 * int64(b.have.n) // the answer is kept
 		}
+	}
+	if b.formTaken() {
+		total += b.form.need()
 	}
 	return total
 }

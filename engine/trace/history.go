@@ -53,7 +53,10 @@ type History struct {
 	Iterations, Products, PrecondUses int
 	SetupTime, OwnTime                time.Duration
 	CPUShare                          float64 // driver CPU time over own time; NaN if not measured
-	MemoryBytes                       int64
+	MemoryBytes                       int64   // a second form of A included
+	// Storage is the form of A that products run on, such as "rows" or "3x3
+	// blocks"; empty before set-up and where A is matrix-free.
+	Storage string
 
 	Residual         float64    // own norm relative to b, last
 	TrueResidual     float64    // ‖b−Ax‖₂/‖b‖₂, last audit; NaN before the first
