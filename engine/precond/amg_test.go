@@ -283,6 +283,26 @@ func TestAMGWithoutCouplings(t *testing.T) {
 	}
 }
 
+// A diagonal entry that its weak couplings eat up does not spoil the
+// prolongation. The two hubs alone are coupled strongly.
+func TestAMGWeakTogether(t *testing.T) {
+	const n = 402
+	e := []linear.Entry{{I: 0, J: 0, V: 1e6}, {I: 1, J: 1, V: 1e6}, {I: 0, J: 1, V: -5e5}, {I: 1, J: 0, V: -5e5}}
+	for i := 2; i < n; i++ {
+		e = append(e, linear.Entry{I: i, J: i, V: 1})
+		for hub := 0; hub < 2; hub++ {
+			e = append(e, linear.Entry{I: i, J: hub, V: -0.5}, linear.Entry{I: hub, J: i, V: -0.5})
+		}
+	}
+	a := linear.FromEntries(n, n, e)
+	for _, kind := range kinds[:2] {
+		m, _ := made(t, a, kind)
+		if k := steps(m, a, constants(n), 1e-8); k > 12 {
+			t.Errorf("%s: %d iterations", kind, k)
+		}
+	}
+}
+
 // A build is cancelled between levels, too.
 func TestAMGCancelled(t *testing.T) {
 	e, v := lookup(t, "amg")

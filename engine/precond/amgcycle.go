@@ -132,7 +132,10 @@ func badDiagonal(row int, d float64, depth int) error {
 	if depth == 0 {
 		return &Breakdown{Method: "amg", Row: row, Pivot: d, Why: "the diagonal entry is not positive"}
 	}
-	return &Breakdown{Method: "amg", Row: -1, Pivot: d, Why: "a diagonal entry of a coarse operator is not positive, " + indefinite}
+	if d <= 0 {
+		return &Breakdown{Method: "amg", Row: -1, Pivot: d, Why: "a diagonal entry of a coarse operator is not positive, " + indefinite}
+	}
+	return &Breakdown{Method: "amg", Row: -1, Pivot: d, Why: "a coarse operator overflows"}
 }
 
 // indefinite ends the reasons why a hierarchy cannot be built.

@@ -51,7 +51,8 @@ func (g *aggregation) prolongation(a *linear.CSR, diag []float64) *linear.CSR {
 
 // filtered returns the diagonal of row i of A_F and the sum of the sizes of
 // its other entries. Where the weak couplings together are not weak, the
-// diagonal is kept from vanishing.
+// diagonal is kept from vanishing: at the sum of the strong ones, and at a
+// quarter of a_ii.
 func (s *strength) filtered(i int) (d, sum float64) {
 	d = s.diag[i]
 	cols, vals := s.a.Row(i)
@@ -65,8 +66,8 @@ func (s *strength) filtered(i int) (d, sum float64) {
 			d += v
 		}
 	}
-	if least := s.diag[i] / 4; d < least && d < sum {
-		d = max(least, sum)
+	if least := s.diag[i] / 4; d < least {
+		d = max(sum, least)
 	}
 	return d, sum
 }
