@@ -20,6 +20,7 @@ var Catalogue = []Entry{
 	fsaiEntry,
 	spaiEntry,
 	polyEntry,
+	rasEntry,
 	givenEntry,
 	ownFactorsEntry,
 	choleskyEntry,

@@ -22,15 +22,16 @@ var icEntry = Entry{
 		lower, _, exact := fillCounts(a, v.Int("level"))
 		return factorBytes(a.NRows, lower, lower), exact
 	},
-	Build: buildIC,
+	Build: func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
+		return scheduled(buildIC(ctx, s, v.Int("level"), progress))
+	},
 }
 
 // buildIC factors the lower triangle of A as L D Lᵀ on its own pattern, filled
 // in to the level asked for. Where a pivot is not positive it factors
 // A + α diag(A) instead, with the smallest workable α that leastShift finds.
-func buildIC(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
+func buildIC(ctx context.Context, s linear.System, level int, progress func(float64)) (*factors, trace.BuildNotes, error) {
 	var notes trace.BuildNotes
-	level := v.Int("level")
 	name := fmt.Sprintf("ic:%d", level)
 	a, err := entriesOf(s, name)
 	if err != nil {

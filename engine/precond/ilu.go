@@ -23,7 +23,7 @@ var iluEntry = Entry{
 	},
 	Build: func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 		level := v.Int("level")
-		return buildILU(ctx, s, fmt.Sprintf("ilu:%d", level), level, false, progress)
+		return scheduled(buildILU(ctx, s, fmt.Sprintf("ilu:%d", level), level, false, progress))
 	},
 }
 
@@ -39,7 +39,7 @@ var miluEntry = Entry{
 	Fixed:  true, Symmetric: true, Transposes: true,
 	Estimate: iluEntry.Estimate,
 	Build: func(ctx context.Context, s linear.System, _ linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
-		return buildILU(ctx, s, "milu:0", 0, true, progress)
+		return scheduled(buildILU(ctx, s, "milu:0", 0, true, progress))
 	},
 }
 
@@ -50,7 +50,7 @@ var noFillParam = linear.Param{Name: "level", Kind: linear.Int, Default: 0, Min:
 // buildILU factors A on its pattern filled in to a level. The modified
 // factorisation takes what it drops to the diagonal, so that it keeps the row
 // sums of A.
-func buildILU(ctx context.Context, s linear.System, name string, level int, modified bool, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
+func buildILU(ctx context.Context, s linear.System, name string, level int, modified bool, progress func(float64)) (*factors, trace.BuildNotes, error) {
 	var notes trace.BuildNotes
 	a, err := entriesOf(s, name)
 	if err != nil {

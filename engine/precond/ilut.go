@@ -20,7 +20,7 @@ var ilutEntry = Entry{
 		if err != nil {
 			return nil, notes, err
 		}
-		return w.f, notes, nil
+		return scheduled(w.f, notes, nil)
 	},
 }
 

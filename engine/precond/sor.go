@@ -41,12 +41,20 @@ type sor struct {
 	a       *linear.CSR
 	diag    []int     // position of a_ii among A's entries, length n
 	inverse []float64 // ω/d_i, length n
+	wave    *wave     // how the sweep is shared by threads; nil: it is not
 }
 
 // Apply computes dst = M⁻¹ x.
 func (s *sor) Apply(dst, x []float64) {
+	if !s.wave.run(dst, x) {
+		s.down(dst, x, 0, len(dst))
+	}
+}
+
+// down sweeps over rows lo to hi.
+func (s *sor) down(dst, x []float64, lo, hi int) {
 	a := s.a
-	for i := range dst {
+	for i := lo; i < hi; i++ {
 		cols, vals := a.Col[a.Ptr[i]:s.diag[i]], a.Val[a.Ptr[i]:s.diag[i]]
 		vals = vals[:len(cols)]
 		t := x[i]
@@ -76,6 +84,7 @@ func makeSOR(ctx context.Context, sys linear.System, name string, omega float64,
 	if s.diag, s.inverse, err = pivots(ctx, a, name, omega, &notes, progress); err != nil {
 		return nil, notes, err
 	}
+	s.wave = newWave(a.NRows, false, s.down, func(i int) []int32 { return a.Col[a.Ptr[i]:s.diag[i]] })
 	lower := 0
 	for i, at := range s.diag {
 		lower += at - a.Ptr[i]

@@ -37,12 +37,18 @@ type ssor struct {
 	inverse []float64 // ω/d_i, length n
 	omega   float64
 	self    bool // A is symmetric, and so is M
+	// How the sweeps are shared by threads; nil: they are not.
+	downWave, upWave *wave
 }
 
 // Apply computes dst = M⁻¹ x.
 func (s *ssor) Apply(dst, x []float64) {
-	s.down(dst, x)
-	s.up(dst)
+	if !s.downWave.run(dst, x) {
+		s.down(dst, x, 0, len(dst))
+	}
+	if !s.upWave.run(dst, dst) {
+		s.up(dst, dst, 0, len(dst))
+	}
 }
 
 // ApplyDot computes dst = M⁻¹ x and returns xᵀ dst.
@@ -51,31 +57,38 @@ func (s *ssor) ApplyDot(dst, x []float64) float64 {
 	return linear.Dot(x, dst)
 }
 
-func (s *ssor) down(y, x []float64) {
+// down sweeps over rows lo to hi.
+func (s *ssor) down(y, x []float64, lo, hi int) {
 	rest := 2 - s.omega
-	diag, ptr, inverse := s.diag[:len(y)], s.a.Ptr[:len(y)], s.inverse[:len(y)]
-	x = x[:len(y)]
-	for i := range y {
-		cols, vals := s.a.Col[ptr[i]:diag[i]], s.a.Val[ptr[i]:diag[i]]
+	starts, diag, inverse, x := s.a.Ptr[lo:hi], s.diag[lo:hi], s.inverse[lo:hi], x[lo:hi]
+	diag, inverse, x = diag[:len(starts)], inverse[:len(starts)], x[:len(starts)]
+	out := y[lo:hi]
+	out = out[:len(starts)]
+	for i, start := range starts {
+		cols, vals := s.a.Col[start:diag[i]], s.a.Val[start:diag[i]]
 		vals = vals[:len(cols)]
 		t := rest * x[i]
 		for k, c := range cols {
 			t -= vals[k] * y[uint32(c)]
 		}
-		y[i] = t * inverse[i]
+		out[i] = t * inverse[i]
 	}
 }
 
-func (s *ssor) up(z []float64) {
-	diag, ptr, inverse := s.diag[:len(z)], s.a.Ptr[1:len(z)+1], s.inverse[:len(z)]
-	for i := len(z) - 1; i >= 0; i-- {
-		cols, vals := s.a.Col[diag[i]+1:ptr[i]], s.a.Val[diag[i]+1:ptr[i]]
+// up sweeps over rows hi−1 down to lo.
+func (s *ssor) up(z, _ []float64, lo, hi int) {
+	diag, ends, inverse := s.diag[lo:hi], s.a.Ptr[lo+1:hi+1], s.inverse[lo:hi]
+	ends, inverse = ends[:len(diag)], inverse[:len(diag)]
+	out := z[lo:hi]
+	out = out[:len(diag)]
+	for i := len(diag) - 1; i >= 0; i-- {
+		cols, vals := s.a.Col[diag[i]+1:ends[i]], s.a.Val[diag[i]+1:ends[i]]
 		vals = vals[:len(cols)]
 		t := 0.0
 		for k, c := range cols {
 			t += vals[k] * z[uint32(c)]
 		}
-		z[i] -= t * inverse[i]
+		out[i] -= t * inverse[i]
 	}
 }
 
@@ -99,5 +112,7 @@ func makeSSOR(ctx context.Context, sys linear.System, name string, omega float64
 	notes.Bytes = 16 * int64(a.NRows)
 	notes.Symmetric = s.self
 	notes.Definite = s.self && positive(s.inverse)
+	s.downWave = newWave(a.NRows, false, s.down, func(i int) []int32 { return a.Col[a.Ptr[i]:s.diag[i]] })
+	s.upWave = newWave(a.NRows, true, s.up, func(i int) []int32 { return a.Col[s.diag[i]+1 : a.Ptr[i+1]] })
 	return s, notes, nil
 }

@@ -1,43 +1,50 @@
 package precond
 
-import "dwindle/engine/linear"
+import (
+	"dwindle/engine/linear"
+	"dwindle/engine/trace"
+)
 
-// lowerUnit solves L y = x for unit lower triangular L, whose strict lower
-// part is l. y may be x.
-func lowerUnit(l *linear.CSR, y, x []float64) {
-	ptr := l.Ptr[:len(y)+1]
-	x = x[:len(y)]
-	start := ptr[0]
-	for i := range y {
-		end := ptr[i+1]
+// lowerUnit solves rows lo to hi of L y = x for unit lower triangular L, whose
+// strict lower part is l and whose earlier rows are solved. y may be x.
+func lowerUnit(l *linear.CSR, y, x []float64, lo, hi int) {
+	ends := l.Ptr[lo+1 : hi+1]
+	start := l.Ptr[lo]
+	x = x[lo:hi]
+	x = x[:len(ends)]
+	out := y[lo:hi]
+	out = out[:len(ends)]
+	for i, end := range ends {
 		cols, vals := l.Col[start:end], l.Val[start:end]
 		vals = vals[:len(cols)]
 		t := x[i]
 		for k, c := range cols {
 			t -= vals[k] * y[uint32(c)]
 		}
-		y[i] = t
+		out[i] = t
 		start = end
 	}
 }
 
-// upperScaled solves U z = y for U = D (I + D⁻¹R) as z_i = y_i/d_i −
-// Σ r_ij z_j, where r holds the strict upper part already divided by the
-// pivots of its rows. z may be y.
-func upperScaled(r *linear.CSR, inverse, z, y []float64) {
-	n := len(z)
-	ptr := r.Ptr[:n+1]
-	inverse, y = inverse[:n], y[:n]
-	end := ptr[n]
-	for i := n - 1; i >= 0; i-- {
-		start := ptr[i]
+// upperScaled solves rows hi−1 down to lo of U z = y for U = D (I + D⁻¹R) as
+// z_i = y_i/d_i − Σ r_ij z_j, where r holds the strict upper part already
+// divided by the pivots of its rows and the later rows are solved. z may be y.
+func upperScaled(r *linear.CSR, inverse, z, y []float64, lo, hi int) {
+	starts := r.Ptr[lo:hi]
+	inverse, y = inverse[lo:hi], y[lo:hi]
+	inverse, y = inverse[:len(starts)], y[:len(starts)]
+	out := z[lo:hi]
+	out = out[:len(starts)]
+	end := r.Ptr[hi]
+	for i := len(starts) - 1; i >= 0; i-- {
+		start := starts[i]
 		cols, vals := r.Col[start:end], r.Val[start:end]
 		vals = vals[:len(cols)]
 		t := y[i] * inverse[i]
 		for k, c := range cols {
 			t -= vals[k] * z[uint32(c)]
 		}
-		z[i] = t
+		out[i] = t
 		end = start
 	}
 }
@@ -48,12 +55,42 @@ type factors struct {
 	lower, upper *linear.CSR // strict parts of L and R, rows ascending
 	inverse      []float64   // 1/d_i, length n
 	self         bool        // R = Lᵀ: M is symmetric
+	down, up     *wave       // how the sweeps are shared by threads; nil: they are not
 }
 
 // Apply computes dst = R⁻¹ D⁻¹ L⁻¹ x.
 func (f *factors) Apply(dst, x []float64) {
-	lowerUnit(f.lower, dst, x)
-	upperScaled(f.upper, f.inverse, dst, dst)
+	if !f.down.run(dst, x) {
+		f.sweepDown(dst, x, 0, len(dst))
+	}
+	if !f.up.run(dst, dst) {
+		f.sweepUp(dst, dst, 0, len(dst))
+	}
+}
+
+func (f *factors) sweepDown(dst, x []float64, lo, hi int) { lowerUnit(f.lower, dst, x, lo, hi) }
+
+func (f *factors) sweepUp(dst, x []float64, lo, hi int) {
+	upperScaled(f.upper, f.inverse, dst, x, lo, hi)
+}
+
+// schedule shares the sweeps among threads where that pays.
+func (f *factors) schedule() {
+	f.down = newWave(f.lower.NRows, false, f.sweepDown, func(i int) []int32 {
+		return f.lower.Col[f.lower.Ptr[i]:f.lower.Ptr[i+1]]
+	})
+	f.up = newWave(f.upper.NRows, true, f.sweepUp, func(i int) []int32 {
+		return f.upper.Col[f.upper.Ptr[i]:f.upper.Ptr[i+1]]
+	})
+}
+
+// scheduled ends the build of factors.
+func scheduled(f *factors, notes trace.BuildNotes, err error) (linear.Applier, trace.BuildNotes, error) {
+	if err != nil {
+		return nil, notes, err
+	}
+	f.schedule()
+	return f, notes, nil
 }
 
 // ApplyDot computes dst = M⁻¹ x and returns xᵀ dst.
