@@ -82,15 +82,17 @@ var pivots = Rule{"pivot", func(c Case) (out []Finding) {
 
 const (
 	costFactor = 1.3  // slower than without by this factor,
-	costLeast  = 0.05 // and by at least so many seconds
+	costLeast  = 0.05 // and by at least so many seconds,
+	ownCPU     = 0.9  // on a machine that gave the trial this share of its time
 )
 
-// costly: a preconditioner costs more time than its iterations save.
+// costly: a preconditioner costs more time than its iterations save. Silent
+// where the machine was busy with something else.
 var costly = Rule{"preconditioner-costs-more", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		prep, solver, m := cut(h.Pairing)
 		plain, ok := find(c, prep+solver+"+none")
-		if m == "none" || !ok || !solved(h) || !solved(plain) {
+		if m == "none" || !ok || !solved(h) || !solved(plain) || h.CPUShare < ownCPU {
 			continue
 		}
 		with, without := h.OwnTime.Seconds(), plain.OwnTime.Seconds()
