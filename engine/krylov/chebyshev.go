@@ -11,8 +11,8 @@ var chebyshevEntry = Entry{
 	Name: "chebyshev", Title: "Chebyshev semi-iteration",
 	Source: "Golub and Varga, Numer. Math. 3 (1961) 147–156; Saad, Iterative Methods for Sparse Linear Systems, 2nd ed. (2003), section 12.3",
 	Params: []linear.Param{
-		{Name: "lo", Kind: linear.Real, Min: 0, Max: 1e300, Meaning: "lower bound of the spectrum of inv(M)A; 0 = estimate"},
-		{Name: "hi", Kind: linear.Real, Min: 0, Max: 1e300, Meaning: "upper bound of the spectrum of inv(M)A; 0 = estimate"},
+		{Name: "lo", Kind: linear.Real, Quiet: true, Min: 0, Max: 1e300, Meaning: "lower bound of the spectrum of inv(M)A; 0 = estimate"},
+		{Name: "hi", Kind: linear.Real, Quiet: true, Min: 0, Max: 1e300, Meaning: "upper bound of the spectrum of inv(M)A; 0 = estimate"},
 	},
 	Assumes:     linear.AssumesSymmetric | linear.AssumesDefinite | linear.AssumesFixedM | linear.AssumesSymmetricM,
 	Norm:        trace.TwoNorm,

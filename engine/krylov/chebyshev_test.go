@@ -57,6 +57,23 @@ func TestChebyshevEstimates(t *testing.T) {
 	}
 }
 
+// A singular matrix (the line with free ends) with b in reach: the estimate does
+// not see the null vector, and the steps are those of the smallest eigenvalue
+// above zero, 2 − 2 cos(π/n).
+func TestChebyshevSingular(t *testing.T) {
+	const n = 50
+	a := line(n)
+	a.Val[0], a.Val[len(a.Val)-1] = 1, 1
+	b := e1(n)
+	b[n-1] = -1
+	r := begun(t, a, b, nil, "chebyshev")
+	got, want := r.until(1e-10, 4000), math.Log(2e10)/2/math.Tan(math.Pi/2/n)
+	if float64(got) > 1.6*want {
+		t.Errorf("%d steps, %.0f expected", got, want)
+	}
+	near(t, "true residual", r.truth(), 0, 1e-9)
+}
+
 // An upper end that lies too low makes it diverge, and is not made up for.
 func TestChebyshevDiverges(t *testing.T) {
 	r := begun(t, diagonal(1, 2, 4), ones(3), nil, "chebyshev:1,2")

@@ -37,8 +37,8 @@ const (
 //
 // The iteration then sees the rest of the spectrum alone. Rounding brings W
 // back into r, so that the first line is repeated after some steps. Any W is
-// valid: the better its vectors, the fewer the steps. Begin finds them, see
-// smallestRitz, and its products count.
+// valid: the better its vectors, the fewer the steps, and without any this is
+// cg. Begin finds them, see smallestRitz, and its products count.
 type dcg struct {
 	core
 	curv       curvature
@@ -65,10 +65,7 @@ func (s *dcg) Begin(p Problem) (trace.Reading, error) {
 		return rd, nil
 	}
 	w, aw, bad := smallestRitz(&s.core, s.k)
-	switch {
-	case !finite(bad):
-		return s.overflow("p'Ap", bad)
-	case bad < 0:
+	if bad < 0 {
 		s.indefinite = true
 		s.event(trace.PrecondIndefinite, "r'inv(M)r", bad)
 	}

@@ -8,9 +8,9 @@ import (
 )
 
 const (
-	ritzRelative = 0.05      // of a Ritz value is the residual at which it is good enough
-	ritzFloor    = 64 * unit // of the largest Ritz value is zero
-	ritzRestarts = 10        // most restarts
+	ritzRelative = 0.05    // of a Ritz value is the residual at which it is good enough
+	ritzFloor    = 0x1p-40 // of the largest Ritz value: one below it has too few digits to be divided by
+	ritzRestarts = 10      // most restarts
 )
 
 // ritzSpace is how many Lanczos vectors are held for k Ritz vectors.
@@ -40,7 +40,7 @@ type ritz struct {
 //
 // It returns W and A W, scaled to WᵀA W = I, at most k vectors of length n. bad
 // is 0, or not finite where a product was, or below zero where M is indefinite:
-// then there are no vectors.
+// then there are no vectors, and the iteration shows whether it can go on.
 func smallestRitz(c *core, k int) (w, aw [][]float64, bad float64) {
 	s := newRitz(c, k)
 	k = min(k, (s.m+1)/2) // A W takes the place of as many vectors
@@ -147,7 +147,7 @@ func (s *ritz) residual(j int) float64 {
 	return s.beta * math.Abs(s.y[(size-1)*size+j])
 }
 
-// floor is what a Ritz value may be by rounding alone.
+// floor is the smallest Ritz value that is told from zero.
 func (s *ritz) floor() float64 { return ritzFloor * math.Abs(s.theta[len(s.theta)-1]) }
 
 // good says whether the k smallest Ritz vectors need no better.
@@ -160,8 +160,8 @@ func (s *ritz) good(k int) bool {
 	return true
 }
 
-// worth says whether Ritz vector j is of use: its value is above zero beyond
-// rounding (the iteration itself shows what the others are), and its residual
+// worth says whether Ritz vector j is of use: its value is told from zero
+// (the iteration itself shows what the others are), and its residual
 // is below its value (else the eigenvalue it stands for may be any).
 func (s *ritz) worth(j int) bool { return s.theta[j] > max(s.floor(), s.residual(j)) }
 
