@@ -29,6 +29,12 @@ type System struct {
 	// Open reads another square matrix, for preconditioners the user brings;
 	// nil where files cannot be read.
 	Open func(path string) (*CSR, error)
+	// Dofs is how many unknowns of a node stand next to each other; 0 is 1.
+	Dofs int
+	// NearNull are vectors of length n that A maps nearly to zero, such as
+	// rigid motions, for multilevel methods; nil: the constant, one for each
+	// unknown of a node.
+	NearNull [][]float64
 }
 
 // Source is what the reader noticed while it read a file.

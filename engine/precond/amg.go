@@ -53,7 +53,11 @@ func buildAMG(ctx context.Context, s linear.System, v linear.Values, progress fu
 		part = symmetricPart(a)
 		notes.Bytes = part.Bytes()
 	}
-	c, err := newCycle(ctx, part, coarseningOf(v, a.NRows), progress)
+	how, err := coarseningOf(v, s)
+	if err != nil {
+		return nil, notes, err
+	}
+	c, err := newCycle(ctx, part, how, progress)
 	if err != nil {
 		return nil, notes, err
 	}
@@ -88,16 +92,16 @@ func visits(v linear.Values) int {
 }
 
 // coarseningOf returns how the next level is made.
-func coarseningOf(v linear.Values, n int) coarsening {
+func coarseningOf(v linear.Values, s linear.System) (coarsening, error) {
 	theta := v.Real("theta")
 	if v.Choice("kind") == "classical" {
 		if theta == 0 {
 			theta = 0.25
 		}
-		return &classical{theta: theta}
+		return &classical{theta: theta}, nil
 	}
 	if theta == 0 {
 		theta = 0.08
 	}
-	return &aggregation{theta: theta, null: constants(n), k: 1}
+	return newAggregation(theta, s.N(), s.Dofs, s.NearNull)
 }

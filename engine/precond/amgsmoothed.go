@@ -1,6 +1,7 @@
 package precond
 
 import (
+	"fmt"
 	"math"
 	"slices"
 
@@ -14,14 +15,41 @@ type aggregation struct {
 	theta float64
 	null  []float64 // n·k, the k values of a row next to each other
 	k     int
+	nodes []int32 // first row of each node, and n; nil where each row is one
 }
 
-func constants(n int) []float64 {
-	one := make([]float64, n)
-	for i := range one {
-		one[i] = 1
+// newAggregation starts from the given near-null vectors or, without any, from
+// the constant of each of the dofs unknowns of a node.
+func newAggregation(theta float64, n, dofs int, given [][]float64) (*aggregation, error) {
+	dofs = max(dofs, 1)
+	if n%dofs != 0 {
+		return nil, fmt.Errorf("amg: %d unknowns are not a whole number of nodes of %d", n, dofs)
 	}
-	return one
+	for _, vector := range given {
+		if len(vector) != n {
+			return nil, fmt.Errorf("amg: a near-null vector has %d entries, the system %d unknowns", len(vector), n)
+		}
+	}
+	g := &aggregation{theta: theta, k: max(len(given), 1)}
+	if len(given) == 0 {
+		g.k = dofs
+	}
+	g.null = make([]float64, n*g.k)
+	for i := range n {
+		if len(given) == 0 {
+			g.null[i*g.k+i%dofs] = 1
+		}
+		for c, vector := range given {
+			g.null[i*g.k+c] = vector[i]
+		}
+	}
+	if g.k > 1 {
+		g.nodes = make([]int32, n/dofs+1)
+		for node := range g.nodes {
+			g.nodes[node] = int32(node * dofs)
+		}
+	}
+	return g, nil
 }
 
 // prolongation returns P = (I − ω D⁻¹ A_F) T with the tentative prolongation
@@ -31,12 +59,15 @@ func constants(n int) []float64 {
 func (g *aggregation) prolongation(a *linear.CSR, diag []float64) *linear.CSR {
 	s := &strength{a: a, square: g.theta * g.theta, diag: diag}
 	g.theta /= 2
-	of, count := s.aggregate()
+	of, count := g.aggregate(s)
 	if count == 0 {
 		return nil
 	}
 	omega := 4 / (3 * s.radius())
 	t := g.tentative(of, count)
+	if g.k > 1 {
+		g.nodes = t.rank
+	}
 	return linear.ByRows(a.NRows, t.cols(), func(w *linear.RowWork, i int) {
 		d, _ := s.filtered(i)
 		t.add(w, i, 1-omega)
@@ -47,6 +78,23 @@ func (g *aggregation) prolongation(a *linear.CSR, diag []float64) *linear.CSR {
 			}
 		}
 	})
+}
+
+// aggregate groups the rows, those of a node together. Where nodes have
+// several rows, or there are several near-null vectors, all couplings count in
+// the smoothing that follows.
+func (g *aggregation) aggregate(s *strength) (of []int32, count int) {
+	if g.nodes == nil {
+		return s.aggregate()
+	}
+	node := s.nodeOf(g.nodes)
+	byNode, count := s.condensed(g.nodes, node).aggregate()
+	s.square = 0
+	of = make([]int32, len(node))
+	for i, j := range node {
+		of[i] = byNode[j]
+	}
+	return of, count
 }
 
 // filtered returns the diagonal of row i of A_F and the sum of the sizes of
