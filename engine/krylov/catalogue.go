@@ -22,10 +22,10 @@ var Catalogue = []Entry{
 	bicgstablEntry,
 	bicgstabEntry,
 	gmresEntry,
-	gmresdrEntry,
-	idrEntry,
-	gcrEntry,
 	fgmresEntry,
+	gmresdrEntry,
+	gcrEntry,
+	idrEntry,
 }
 
 // Lookup returns the solver of that name.
