@@ -52,7 +52,7 @@ func (c *collector) groups(threads int) (groups [][]piece) {
 
 // countRows counts what each row takes of a group.
 func (c *collector) countRows(group []piece) []int {
-	rows := make([]int, c.n)
+	rows := bulk[int](c.n)
 	for _, p := range group {
 		for _, e := range p {
 			rows[e.row]++
@@ -67,7 +67,7 @@ func (c *collector) countRows(group []piece) []int {
 // rowStarts turns the counts of the groups into the places where each begins
 // to fill a row, and returns where the rows start.
 func rowStarts(next [][]int, n int) (ptr []int) {
-	ptr = make([]int, n+1)
+	ptr = bulk[int](n + 1)
 	at := 0
 	for r := range n {
 		for _, rows := range next {
