@@ -1,0 +1,86 @@
+#include "textflag.h"
+
+// Products and sums are separate instructions, in the order of the portable
+// twin in dots.go: the same bits.
+
+// func strandsAVX2(a0, a1, a2, a3, b0, b1 *float64, n int, s *[8]float64)
+TEXT ·strandsAVX2(SB), NOSPLIT, $0-64
+	MOVQ a0+0(FP), R8
+	MOVQ a1+8(FP), R9
+	MOVQ a2+16(FP), R10
+	MOVQ a3+24(FP), R11
+	MOVQ b0+32(FP), SI
+	MOVQ b1+40(FP), DI
+	MOVQ n+48(FP), CX
+	MOVQ s+56(FP), DX
+	XORQ AX, AX
+	VXORPD Y0, Y0, Y0
+	VXORPD Y1, Y1, Y1
+	VXORPD Y2, Y2, Y2
+	VXORPD Y3, Y3, Y3
+	VXORPD Y4, Y4, Y4
+	VXORPD Y5, Y5, Y5
+	VXORPD Y6, Y6, Y6
+	VXORPD Y7, Y7, Y7
+
+four:
+	VMOVUPD (SI)(AX*8), Y8
+	VMOVUPD (DI)(AX*8), Y9
+	VMOVUPD (R8)(AX*8), Y10
+	VMULPD  Y8, Y10, Y11
+	VMULPD  Y9, Y10, Y12
+	VADDPD  Y11, Y0, Y0
+	VADDPD  Y12, Y1, Y1
+	VMOVUPD (R9)(AX*8), Y10
+	VMULPD  Y8, Y10, Y11
+	VMULPD  Y9, Y10, Y12
+	VADDPD  Y11, Y2, Y2
+	VADDPD  Y12, Y3, Y3
+	VMOVUPD (R10)(AX*8), Y10
+	VMULPD  Y8, Y10, Y11
+	VMULPD  Y9, Y10, Y12
+	VADDPD  Y11, Y4, Y4
+	VADDPD  Y12, Y5, Y5
+	VMOVUPD (R11)(AX*8), Y10
+	VMULPD  Y8, Y10, Y11
+	VMULPD  Y9, Y10, Y12
+	VADDPD  Y11, Y6, Y6
+	VADDPD  Y12, Y7, Y7
+	ADDQ    $4, AX
+	CMPQ    AX, CX
+	JLT     four
+
+	VEXTRACTF128 $1, Y0, X8
+	VADDPD       X8, X0, X0
+	VHADDPD      X0, X0, X0
+	VMOVSD       X0, 0(DX)
+	VEXTRACTF128 $1, Y1, X8
+	VADDPD       X8, X1, X1
+	VHADDPD      X1, X1, X1
+	VMOVSD       X1, 8(DX)
+	VEXTRACTF128 $1, Y2, X8
+	VADDPD       X8, X2, X2
+	VHADDPD      X2, X2, X2
+	VMOVSD       X2, 16(DX)
+	VEXTRACTF128 $1, Y3, X8
+	VADDPD       X8, X3, X3
+	VHADDPD      X3, X3, X3
+	VMOVSD       X3, 24(DX)
+	VEXTRACTF128 $1, Y4, X8
+	VADDPD       X8, X4, X4
+	VHADDPD      X4, X4, X4
+	VMOVSD       X4, 32(DX)
+	VEXTRACTF128 $1, Y5, X8
+	VADDPD       X8, X5, X5
+	VHADDPD      X5, X5, X5
+	VMOVSD       X5, 40(DX)
+	VEXTRACTF128 $1, Y6, X8
+	VADDPD       X8, X6, X6
+	VHADDPD      X6, X6, X6
+	VMOVSD       X6, 48(DX)
+	VEXTRACTF128 $1, Y7, X8
+	VADDPD       X8, X7, X7
+	VHADDPD      X7, X7, X7
+	VMOVSD       X7, 56(DX)
+	VZEROUPPER
+	RET
