@@ -34,9 +34,9 @@ func (c *collector) matrix(ctx context.Context) (a *linear.CSR, merged int, err 
 }
 
 // groups cuts the entries into runs of about equal length, at most as many as
-// there are threads. Each needs 8 bytes a row: with k entries a row there are
-// at most (6+k)/4, so that they never take more than a quarter of the matrix
-// and the entries together.
+// there are threads. Each takes 8 bytes a row. With k entries a row (6+k)/4 of
+// them, 28 bytes an entry and 8 a row for the entries and the matrix come to
+// 2.5 times the matrix: more groups there are not.
 func (c *collector) groups(threads int) (groups [][]piece) {
 	most := min(threads, (6+c.t.n/c.n)/4)
 	taken, start := 0, 0
