@@ -9,14 +9,9 @@ import sys
 import time
 
 import numpy as np
-import scipy.sparse as sp
 from scipy.sparse.linalg import cg
 
-
-def plate(n):
-    line = sp.diags([-np.ones(n - 1), 2 * np.ones(n), -np.ones(n - 1)], [-1, 0, 1])
-    one = sp.identity(n)
-    return (sp.kron(line, one) + sp.kron(one, line)).tocsr()
+from scipy_plate import plate
 
 
 def main():
