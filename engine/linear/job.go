@@ -93,9 +93,10 @@ func (j *job) release() {
 // split gives each thread its part of the blocks: the same one in every
 // kernel, so that a vector's part stays in the cache of its thread.
 func (j *job) split(threads, blocks int) {
-	if len(j.shares) != threads {
+	if cap(j.shares) < threads {
 		j.shares = make([]share, threads)
 	}
+	j.shares = j.shares[:threads]
 	for i := range j.shares {
 		j.shares[i].next.Store(int64(blocks * i / threads))
 		j.shares[i].end = int64(blocks * (i + 1) / threads)
