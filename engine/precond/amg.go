@@ -52,6 +52,7 @@ func buildAMG(ctx context.Context, s linear.System, v linear.Values, progress fu
 	if !symmetric(a) {
 		part = symmetricPart(a)
 		notes.Bytes = part.Bytes()
+		notes.Remarks = append(notes.Remarks, "A is not symmetric: M is built from its symmetric part (A + A')/2.")
 	}
 	how, err := coarseningOf(v, s)
 	if err != nil {

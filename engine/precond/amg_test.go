@@ -191,6 +191,9 @@ func TestAMGThreads(t *testing.T) {
 			m, _ := made(t, a, kind)
 			x := make([]float64, len(b))
 			m.Apply(x, b)
+			if got := testing.AllocsPerRun(3, func() { m.Apply(x, b) }); got > 0 {
+				t.Errorf("%s, %d threads: a cycle allocates %g times", kind, threads, got)
+			}
 			if want == nil {
 				want = x
 			}
@@ -209,8 +212,8 @@ func TestAMGSemidefinite(t *testing.T) {
 	a, b := sampled(t, "sample:seepage:40")
 	for _, kind := range kinds[:2] {
 		m, notes := made(t, a, kind)
-		if notes.Replaced != 1 {
-			t.Errorf("%s: %d pivots replaced", kind, notes.Replaced)
+		if notes.Replaced != 1 || len(notes.Remarks) != 1 {
+			t.Errorf("%s: %d pivots replaced, remarks %q", kind, notes.Replaced, notes.Remarks)
 		}
 		if k := steps(m, a, b, 1e-10); k > 22 {
 			t.Errorf("%s: %d iterations", kind, k)
@@ -258,8 +261,11 @@ func TestAMGOutsideItsTheory(t *testing.T) {
 		_, _, err := tryMake(t, fromRows([][]float64{{1, 0}, {0, -1}}), kind)
 		broke(t, err, 1)
 		duct, _ := sampled(t, "sample:duct")
-		m, _ := made(t, duct, kind)
-		part, _ := made(t, symmetricPart(duct), kind)
+		m, notes := made(t, duct, kind)
+		part, plain := made(t, symmetricPart(duct), kind)
+		if len(notes.Remarks) != 1 || len(plain.Remarks) != 0 {
+			t.Errorf("%s: remarks %q and %q", kind, notes.Remarks, plain.Remarks)
+		}
 		x, y, z := constants(duct.NRows), make([]float64, duct.NRows), make([]float64, duct.NRows)
 		m.Apply(y, x)
 		part.Apply(z, x)
@@ -280,9 +286,9 @@ func TestAMGWithoutCouplings(t *testing.T) {
 	}
 	a := linear.FromEntries(900, 900, e)
 	for _, kind := range kinds[:2] {
-		m, _ := made(t, a, kind)
-		if k := steps(m, a, constants(900), 1e-12); k > 1 {
-			t.Errorf("%s: %d iterations on a diagonal matrix", kind, k)
+		m, notes := made(t, a, kind)
+		if k := steps(m, a, constants(900), 1e-12); k > 1 || len(notes.Remarks) != 1 {
+			t.Errorf("%s: %d iterations on a diagonal matrix, remarks %q", kind, k, notes.Remarks)
 		}
 	}
 }

@@ -2,6 +2,7 @@ package precond
 
 import (
 	"context"
+	"fmt"
 	"math"
 
 	"dwindle/engine/linear"
@@ -88,7 +89,11 @@ func report(progress func(float64), done float64) {
 func newLevel(a *linear.CSR, depth int) (*level, []float64, error) {
 	n := a.NRows
 	diag := make([]float64, n)
-	a.Diagonal(diag)
+	linear.Parallel((n+relaxRows-1)/relaxRows, func(part int) {
+		for i := part * relaxRows; i < min((part+1)*relaxRows, n); i++ {
+			diag[i] = a.At(i, i)
+		}
+	})
 	for i, d := range diag {
 		if !(d > 0) || math.IsInf(1/d, 0) {
 			return nil, nil, badDiagonal(i, d, depth)
@@ -211,9 +216,16 @@ func (c *cycle) note(notes *trace.BuildNotes) {
 			notes.Bytes += l.p.Bytes() + l.r.Bytes()
 		}
 	}
-	if c.bottom != nil {
+	last := c.levels[len(c.levels)-1].a
+	if c.bottom == nil {
+		notes.Remarks = append(notes.Remarks, fmt.Sprintf("Coarsening ends at %d unknowns; that level is only smoothed.", last.NRows))
+	} else {
 		notes.Bytes += c.bottom.bytes()
+	}
+	if c.bottom != nil && c.bottom.replaced > 0 {
 		notes.Replaced = c.bottom.replaced
+		notes.Remarks = append(notes.Remarks, fmt.Sprintf(
+			"%d of %d pivots on the coarsest level are zero to rounding and left out: A looks singular.", notes.Replaced, last.NRows))
 	}
 	notes.Fill = float64(notes.Entries) / float64(max(1, c.levels[0].a.Entries()))
 }

@@ -100,13 +100,14 @@ type BuildNotes struct {
 	Bytes     int64   // memory of the preconditioner
 	MinPivot  float64 // smallest and largest pivot in magnitude; 0 if none
 	MaxPivot  float64
-	Replaced  int     // values replaced to go on (must be said to the user)
-	Shift     float64 // diagonal shift used, relative to diag A; 0 if none
-	Broke     []Pivot // attempts that broke down, in order
-	Symmetric bool    // M is symmetric by construction
-	Definite  bool    // M is positive definite by construction
-	Growth    float64 // ‖(LU)⁻¹1‖∞·‖A‖∞ for factorisations; 0 if not measured
-	Levels    []Level // of a multilevel method, finest first
+	Replaced  int      // values replaced to go on (must be said to the user)
+	Shift     float64  // diagonal shift used, relative to diag A; 0 if none
+	Broke     []Pivot  // attempts that broke down, in order
+	Symmetric bool     // M is symmetric by construction
+	Definite  bool     // M is positive definite by construction
+	Growth    float64  // ‖(LU)⁻¹1‖∞·‖A‖∞ for factorisations; 0 if not measured
+	Levels    []Level  // of a multilevel method, finest first
+	Remarks   []string // what the user should know of how M was built, one sentence each
 }
 
 // Level is one operator of a multilevel method: its order and stored entries.
