@@ -14,6 +14,7 @@ type ldlWork struct {
 	place   linear.Permutation
 	local   []int32 // index of a place in the front under work
 	updates []frontUpdate
+	doubts  []doubt
 	out     *LDL
 }
 
@@ -139,21 +140,28 @@ func (w *ldlWork) keep(k int, e *elimination) {
 	out.entries += int64(n*m - n*(n-1)/2)
 	for t := 0; t < n; t++ {
 		if e.e[t] != 0 {
-			low, high := pair{e.d[t], e.e[t], e.d[t+1]}.eigenvalues()
-			out.count(low)
-			out.count(high)
+			b := pair{e.d[t], e.e[t], e.d[t+1]}
+			low, high := b.eigenvalues()
+			for _, v := range [...]float64{low, high} {
+				x, y := b.vector(v)
+				w.count(doubt{k, t, v, x, y})
+			}
 			t++
 			continue
 		}
 		if e.d[t] == 0 && out.ZeroRow < 0 {
 			out.ZeroRow = int(out.order[e.rows[t]])
 		}
-		out.count(e.d[t])
+		w.count(doubt{k, t, e.d[t], 1, 0})
 	}
 }
 
 // count notes one eigenvalue of B.
-func (f *LDL) count(v float64) {
+func (w *ldlWork) count(d doubt) {
+	f, v := w.out, d.value
+	if f.small(v) {
+		w.doubts = append(w.doubts, d)
+	}
 	switch {
 	case v > 0:
 		f.Inertia.Positive++

@@ -8,8 +8,8 @@ import (
 )
 
 // Inertia counts the eigenvalues of a symmetric matrix by their sign, read off
-// the pivots (Sylvester's law). Zero counts pivots that vanish to rounding:
-// with any of them the other two are lower bounds.
+// the pivots (Sylvester's law). Zero counts those that vanish or whose sign may
+// be rounding: with any of them the other two are lower bounds.
 type Inertia struct{ Negative, Positive, Zero int }
 
 // LDL is P D A D Pᵀ = L B Lᵀ with powers of two in D, unit lower triangular L
@@ -68,6 +68,7 @@ func FactorLDL(ctx context.Context, a *linear.CSR, sym *Symbolic, progress func(
 			progress(share)
 		}
 	}
+	f.out.settle(a, f.doubts)
 	return f.out, nil
 }
 

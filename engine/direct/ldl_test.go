@@ -158,9 +158,43 @@ func TestVanishingPivots(t *testing.T) {
 			t.Errorf("%s: inertia %+v, row %d", c.name, f.Inertia, f.ZeroRow)
 		}
 	}
+	for _, k := range []int{9, 20, 60} { // no fixed value anywhere: constants are the null vectors
+		for seed := range uint64(3) {
+			a := floating(k, seed)
+			for _, how := range []Ordering{AMD, ND} {
+				if f := factoredLDL(t, a, how); f.Inertia != (Inertia{0, k*k - 1, 1}) {
+					t.Errorf("floating plate %d, %s: inertia %+v, smallest pivot %g", k, how, f.Inertia, f.MinPivot)
+				}
+			}
+		}
+	}
 	ctx, cancel := context.WithCancel(context.Background())
 	cancel()
 	if _, err := FactorLDL(ctx, ring, Analyse(ring, Order(ring, AMD)), nil); !errors.Is(err, context.Canceled) {
 		t.Errorf("cancelled: %v", err)
 	}
+}
+
+// floating is the 5-point operator without boundary values, with coefficients
+// 1 for seed 0 and random ones otherwise: semi-definite, singular to rounding.
+func floating(k int, seed uint64) *linear.CSR {
+	rng := rand.New(rand.NewPCG(seed, 2))
+	var e []linear.Entry
+	join := func(i, j int) {
+		v := 1.0
+		if seed > 0 {
+			v = 0.1 + 10*rng.Float64()
+		}
+		e = append(e, linear.Entry{I: i, J: j, V: -v}, linear.Entry{I: j, J: i, V: -v},
+			linear.Entry{I: i, J: i, V: v}, linear.Entry{I: j, J: j, V: v})
+	}
+	for i := range k * k {
+		if i%k > 0 {
+			join(i, i-1)
+		}
+		if i >= k {
+			join(i, i-k)
+		}
+	}
+	return linear.FromEntries(k*k, k*k, e)
 }

@@ -43,13 +43,13 @@ func buildLDL(ctx context.Context, s linear.System, v linear.Values, progress fu
 		return nil, notes, err
 	}
 	notes.MinPivot, notes.MaxPivot = f.MinPivot, f.MaxPivot
-	if f.Inertia.Zero > 0 {
+	if f.ZeroRow >= 0 {
 		notes.Broke = []trace.Pivot{{Row: f.ZeroRow}}
 		return nil, notes, &Breakdown{Method: "ldl", Row: f.ZeroRow, Why: "the pivot vanishes to rounding"}
 	}
 	notes.Entries = f.Entries()
 	notes.Fill = float64(2*f.Entries()-int64(a.NRows)) / float64(a.Entries())
 	notes.Bytes = f.Bytes() + refineBytes(a.NRows, v)
-	notes.Symmetric, notes.Definite = true, f.Inertia.Negative == 0
+	notes.Symmetric, notes.Definite = true, f.Inertia.Negative == 0 && f.Inertia.Zero == 0
 	return newExact(a, f, f, v), notes, nil
 }
