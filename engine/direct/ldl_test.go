@@ -198,3 +198,23 @@ func floating(k int, seed uint64) *linear.CSR {
 	}
 	return linear.FromEntries(k*k, k*k, e)
 }
+
+// The same bits for every number of threads.
+func TestLDLThreads(t *testing.T) {
+	a := box(14)
+	var first []ldlNode
+	for _, threads := range []int{1, 2, 3} {
+		linear.SetThreads(threads)
+		f := factoredLDL(t, a, ND)
+		if first == nil {
+			first = f.nodes
+			continue
+		}
+		for k := range first {
+			if !equal(first[k].l, f.nodes[k].l) || !equal(first[k].d, f.nodes[k].d) {
+				t.Fatalf("%d threads give another factor", threads)
+			}
+		}
+	}
+	linear.SetThreads(1)
+}

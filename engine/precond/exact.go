@@ -57,6 +57,7 @@ func newExact(a *linear.CSR, solver, transposed direct.Solver, v linear.Values) 
 // turned applies the transpose.
 type turned struct{ a *linear.CSR }
 
+// Apply computes dst = Aᵀ x.
 func (t turned) Apply(dst, x []float64) { t.a.ApplyT(dst, x) }
 
 // Apply computes dst = A⁻¹ x.
