@@ -24,7 +24,7 @@ func solvedTrial(pairing string, its int, own time.Duration) trace.History {
 	nan := math.NaN()
 	return trace.History{Pairing: pairing, Stop: trace.Converged, Norm: trace.TwoNorm, Iterations: its, OwnTime: own,
 		SymmetricA: strings.Contains(pairing, "cg"), DefiniteA: strings.Contains(pairing, "cg"),
-		TrueResidual: 1e-9, BestTrue: 1e-9, Residual: 1e-9, Componentwise: 1e-9, Error: nan, Floor: 1e-14, PrecondAsymmetry: nan}
+		CPUShare: 1, TrueResidual: 1e-9, BestTrue: 1e-9, Residual: 1e-9, Componentwise: 1e-9, Error: nan, Floor: 1e-14, PrecondAsymmetry: nan}
 }
 
 func said(c Case) map[string]Finding {
