@@ -3,11 +3,20 @@ package linear
 import (
 	"sync"
 	"sync/atomic"
+	"time"
 )
 
 // patience is how often a thread looks for another's progress before it takes
 // the other for stopped: some ten microseconds.
 const patience = 5000
+
+// A thread that laid down its task sleeps for an absence, which lets the other
+// have the processor where both were on one, and comes back; so often in a
+// run.
+const (
+	absence      = 20 * time.Microsecond
+	mostAbsences = 8
+)
 
 // Pipeline runs tasks that depend on earlier ones on the thread team. Tasks
 // are taken in ascending order by whichever thread is free, and done in steps;
@@ -15,8 +24,8 @@ const patience = 5000
 // later ones. What a task computes does not depend on which thread runs it.
 //
 // On a busy machine a thread may stand still for milliseconds. One that awaits
-// it in vain lays its task down and leaves the run; those that go on pick up
-// what is laid down, so that a run takes no longer than on one thread and the
+// it in vain lays its task down and leaves for a while; those that go on pick
+// up what is laid down, so that a run takes no longer than on one thread and the
 // standstill itself.
 type Pipeline struct {
 	mu     sync.Mutex // one run at a time
@@ -68,9 +77,15 @@ func (p *Pipeline) work(int) {
 		}
 	}()
 	p.active.Add(1)
+	absences := 0
 	for again := true; again; {
-		_ = p.take() && p.pickUp()
+		whole := p.take() && p.pickUp()
 		again = p.active.Add(-1) == 0 && p.laid()
+		if !whole && !again && absences < mostAbsences {
+			absences++
+			time.Sleep(absence)
+			again = p.laid()
+		}
 		if again {
 			p.active.Add(1)
 		}
