@@ -30,6 +30,7 @@ func TestAMGOpenMatrices(t *testing.T) {
 			t.Fatal(err)
 		}
 		a := s.Matrix()
+		checkEstimate(t, c.file, a)
 		for _, kind := range kinds[:2] {
 			m, _ := made(t, a, kind)
 			if k := steps(m, a, constants(a.NRows), 1e-8); k > c.most {
