@@ -21,10 +21,12 @@ build_eigen() {
   g++ -O3 -march=native -DNDEBUG -fopenmp -I/usr/include/eigen3 ".ci/peers/$1.cpp" -o "$work/$1"
 }
 
-# dwindle SYSTEM PAIRING solves to 1e-8 and prints, as the peers do: seconds of
-# the set-up, seconds of the solve, iterations, fill, true relative residual.
+# dwindle SYSTEM PAIRING [OPTION...] solves to 1e-8 and prints, as the peers do:
+# seconds of the set-up, seconds of the solve, iterations, fill, true relative
+# residual. The command in watch, if any, runs it.
+watch=()
 dwindle() {
-  "$work/dwindle" run "$1" --pair "$2" --tol 1e-8 --seconds 0 --threads $threads \
+  "${watch[@]}" "$work/dwindle" run "$1" --pair "$2" --tol 1e-8 --seconds 0 --threads $threads "${@:3}" \
     --as json >"$work/out.json" 2>"$work/err" || { cat "$work/err" >&2; return 1; }
   $python - "$work/out.json" <<'PY'
 import json, sys
@@ -39,7 +41,7 @@ PY
 note() {
   local label=$1 result
   shift
-  result=$("$@")
-  echo "$label $result" >>"$work/log"
-  echo "$label $result" >&2
+  result=$("$@") || return
+  echo "$label" $result >>"$work/log"
+  echo "$label" $result >&2
 }

@@ -1,5 +1,6 @@
 """Reads what the peers printed and writes the tables of it."""
 
+import math
 import statistics
 import sys
 from dataclasses import dataclass
@@ -14,6 +15,8 @@ class Run:
     iterations: int
     fill: float  # entries of the factors over those of the matrix
     residual: float  # true, relative to b
+    peak: float = math.nan  # kilobytes of the process, where watched
+    whole: float = math.nan  # seconds of the process, where watched
 
     @property
     def total(self):
@@ -28,8 +31,8 @@ def read(path):
     """The runs of each label, in the order in which they were made."""
     runs = {}
     for line in open(path):
-        label, setup, solve, iterations, fill, residual = line.split()
-        run = Run(float(setup), float(solve), int(iterations), float(fill), float(residual))
+        label, setup, solve, iterations, *rest = line.split()
+        run = Run(float(setup), float(solve), int(iterations), *map(float, rest))
         runs.setdefault(label, []).append(run)
     return runs
 
