@@ -1,6 +1,9 @@
 package linear
 
-import "sort"
+import (
+	"sort"
+	"sync/atomic"
+)
 
 // maxDiagonals is the most diagonals a matrix is stored by.
 const maxDiagonals = 64
@@ -73,52 +76,92 @@ func insert(s []int, k, v int) []int {
 	return s
 }
 
-// byDiagonals builds the second form from the rising offsets. half says that
-// the matrix is exactly symmetric.
-func byDiagonals(a *CSR, offs []int, half bool) *diagonals {
-	d := &diagonals{CSR: a, half: half}
-	first := 0
-	if half {
-		first = sort.SearchInts(offs, 0)
-	}
-	above := make([]diagonal, 0, len(offs))
-	for _, off := range offs[first:] {
-		above = append(above, diagonal{off: off, v: make([]float64, a.NRows)})
-	}
-	d.stored = len(above)
-	fillDiagonals(a, above)
-	if !half {
-		d.list = above
-		d.transposed = mirrored(above)
-		return d
-	}
-	if len(above) > 0 && above[0].off == 0 {
-		d.list = append(mirrored(above[1:]), above...)
-	} else {
-		d.list = append(mirrored(above), above...)
-	}
-	d.transposed = d.list
-	return d
+// byDiagonals builds the second form from the rising offsets.
+func byDiagonals(a *CSR, offs []int) *diagonals {
+	list := fillDiagonals(a, offs)
+	return &diagonals{CSR: a, list: list, transposed: mirrored(list), stored: len(list)}
 }
 
-// fillDiagonals copies the entries on the given diagonals.
-func fillDiagonals(a *CSR, list []diagonal) {
-	parts := (a.NRows + rowsOfPart - 1) / rowsOfPart
-	Parallel(parts, func(p int) {
-		for i := p * rowsOfPart; i < min((p+1)*rowsOfPart, a.NRows); i++ {
-			cols, vals := a.Row(i)
-			k := 0
-			for e, c := range cols {
-				off := int(c) - i
-				for k < len(list) && list[k].off < off {
-					k++
-				}
-				if k < len(list) && list[k].off == off {
-					list[k].v[i] = vals[e]
-				}
+// byHalf builds the second form from the diagonals at and above the main one.
+// Where a is not exactly symmetric it returns a.
+func byHalf(a *CSR, offs []int) Operator {
+	above := fillDiagonals(a, offs[sort.SearchInts(offs, 0):])
+	if !a.mirrors(above) {
+		return a
+	}
+	strict := above
+	if len(above) > 0 && above[0].off == 0 {
+		strict = above[1:]
+	}
+	list := append(mirrored(strict), above...)
+	return &diagonals{CSR: a, list: list, transposed: list, stored: len(above), half: true}
+}
+
+// fillDiagonals returns the diagonals at the rising offsets.
+func fillDiagonals(a *CSR, offs []int) []diagonal {
+	list := make([]diagonal, len(offs))
+	for k, off := range offs {
+		list[k] = diagonal{off: off, v: make([]float64, a.NRows)}
+	}
+	eachRow(a.NRows, func(i int) {
+		cols, vals := a.Row(i)
+		k := 0
+		for e, c := range cols {
+			off := int(c) - i
+			for k < len(list) && list[k].off < off {
+				k++
+			}
+			if k < len(list) && list[k].off == off {
+				list[k].v[i] = vals[e]
 			}
 		}
 	})
+	return list
+}
+
+// mirrors says whether the entries below the main diagonal are those of the
+// rising diagonals above it: each equals its partner, and neither side has
+// more that are not 0.
+func (a *CSR) mirrors(above []diagonal) bool {
+	var surplus, differ atomic.Int64
+	eachRow(a.NRows, func(i int) {
+		cols, vals := a.Row(i)
+		k, more := len(above)-1, int64(0)
+		for e, c := range cols {
+			off := i - int(c)
+			switch {
+			case off < 0 && vals[e] != 0:
+				more++
+			case off > 0:
+				for above[k].off > off {
+					k--
+				}
+				if above[k].v[c] != vals[e] {
+					differ.Store(1)
+				}
+				if vals[e] != 0 {
+					more--
+				}
+			}
+		}
+		if more != 0 {
+			surplus.Add(more)
+		}
+	})
+	return differ.Load() == 0 && surplus.Load() == 0
+}
+
+// seemsSymmetric looks at a sample of the rows.
+func (a *CSR) seemsSymmetric() bool {
+	for i := 0; i < a.NRows; i += max(1, a.NRows/sampleRows) {
+		cols, vals := a.Row(i)
+		for e, c := range cols {
+			if a.At(int(c), i) != vals[e] {
+				return false
+			}
+		}
+	}
+	return true
 }
 
 // mirrored returns the same diagonals of the transpose, in order of off.

@@ -32,7 +32,7 @@ func formDiagonals(half bool) string {
 
 func formBlocks(r int) string { return fmt.Sprintf("%dx%d blocks", r, r) }
 
-// Plan is the form foreseen for a matrix, before anything is allocated.
+// Plan is the form foreseen for a matrix, before it is allocated.
 type Plan struct {
 	Form    string
 	Product int64 // bytes a product must move once: the matrix, x and dst
@@ -41,7 +41,8 @@ type Plan struct {
 }
 
 // Build makes the form, in parallel; its products differ from those of the
-// rows by rounding only.
+// rows by rounding only. Where a matrix that was foreseen symmetric turns out
+// not to be, the rows come back.
 func (p Plan) Build() Operator { return p.build() }
 
 // Fastest returns a with a second form for its products where that pays, else
@@ -77,12 +78,17 @@ func (a *CSR) foreseeDiagonals() Plan {
 	}
 	n := int64(a.NRows)
 	stored, half := len(offs), false
-	if balanced(offs) && a.ExactlySymmetric() {
+	if balanced(offs) && a.seemsSymmetric() {
 		stored, half = (len(offs)+1)/2, true
 	}
 	extra := 8 * n * int64(stored)
 	return Plan{Form: formDiagonals(half), Extra: extra, Product: extra + vectorBytes*n,
-		build: func() Operator { return byDiagonals(a, offs, half) }}
+		build: func() Operator {
+			if half {
+				return byHalf(a, offs)
+			}
+			return byDiagonals(a, offs)
+		}}
 }
 
 // balanced says whether with each offset its opposite is in the rising list.
@@ -104,7 +110,7 @@ func (a *CSR) foreseeBlocks() Plan {
 		if a.NRows%r != 0 {
 			continue
 		}
-		count, entries := a.countBlocks(r, max(1, a.NRows/r/sampleRows))
+		count, entries := a.sampleBlocks(r, max(1, a.NRows/r/sampleRows))
 		if perEntry := float64(count*(8*r*r+4)) / float64(max(entries, 1)); perEntry < bestBytes {
 			best, bestBytes = r, perEntry
 		}
@@ -112,8 +118,17 @@ func (a *CSR) foreseeBlocks() Plan {
 	if best == 0 {
 		return Plan{}
 	}
-	count, _ := a.countBlocks(best, 1)
-	extra := int64(count)*int64(8*best*best+4) + 8*int64(a.NRows/best+1)
+	ptr := a.countBlocks(best)
+	extra := int64(ptr[len(ptr)-1])*int64(8*best*best+4) + 8*int64(len(ptr))
 	return Plan{Form: formBlocks(best), Extra: extra, Product: extra + vectorBytes*int64(a.NRows),
-		build: func() Operator { return byBlocks(a, best) }}
+		build: func() Operator { return byBlocks(a, best, ptr) }}
+}
+
+// eachRow calls do(0), …, do(rows−1) on the thread team.
+func eachRow(rows int, do func(i int)) {
+	Parallel((rows+rowsOfPart-1)/rowsOfPart, func(p int) {
+		for i := p * rowsOfPart; i < min((p+1)*rowsOfPart, rows); i++ {
+			do(i)
+		}
+	})
 }
