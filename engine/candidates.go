@@ -18,8 +18,9 @@ const predictUpTo = 20_000
 
 // candidates describes every solver with every preconditioner, at default
 // parameters, for a system that offers h. Where memory is positive, what each
-// takes is predicted and held against it.
+// takes is predicted, once a preconditioner, and held against it.
 func candidates(h run.Have, memory int64) []choose.Candidate {
+	bytes := map[string]int64{} // of each preconditioner; -1: not predicted
 	var list []choose.Candidate
 	for _, e := range krylov.Catalogue {
 		for _, p := range precond.Catalogue {
@@ -30,22 +31,33 @@ func candidates(h run.Have, memory int64) []choose.Candidate {
 			if err != nil {
 				panic("engine: " + err.Error()) // a mistake in a catalogue
 			}
-			list = append(list, candidate(m, h, memory))
+			if _, known := bytes[p.Name]; !known {
+				bytes[p.Name] = predicted(m, h, memory)
+			}
+			list = append(list, candidate(m, h, memory, bytes[p.Name]))
 		}
 	}
 	sort.SliceStable(list, func(i, j int) bool { return list[i].Refused == "" && list[j].Refused != "" })
 	return list
 }
 
-func candidate(m run.Method, h run.Have, memory int64) choose.Candidate {
+// predicted is the memory of the method's preconditioner, or -1.
+func predicted(m run.Method, h run.Have, memory int64) int64 {
+	if memory <= 0 || m.Precond.Exact && h.Order() > predictUpTo {
+		return -1
+	}
+	return m.PrecondMemory(h)
+}
+
+func candidate(m run.Method, h run.Have, memory, precond int64) choose.Candidate {
 	c := choose.Candidate{Pairing: m.Name, Solver: m.Solver.Name, Precond: m.Precond.Name,
 		Memory: -1, Refused: m.Refuse(h),
 		Symmetric: m.Solver.Assumes&linear.AssumesSymmetric != 0,
 		Definite:  m.Solver.Assumes&linear.AssumesDefinite != 0,
 		SPDM:      m.Solver.Assumes&linear.AssumesSymmetricM != 0,
 		Baseline:  m.Solver.Baseline, Summary: m.Solver.Title + ", " + m.Precond.Title}
-	if memory > 0 && (!m.Precond.Exact || h.Order() <= predictUpTo) {
-		c.Memory = m.Memory(h)
+	if precond >= 0 {
+		c.Memory = precond + m.SolverMemory(h)
 	}
 	for _, p := range m.Preps {
 		c.Preps = append(c.Preps, p.Entry.Name)

@@ -23,6 +23,41 @@ func (l *look) definite() error {
 		return err
 	}
 	l.conclude()
+	return l.countSigns()
+}
+
+// countSigns counts the negative eigenvalues of a symmetric matrix that is not
+// known to be definite, by the signs of its LDLᵀ pivots (Sylvester's law of
+// inertia), where a factorisation is affordable.
+func (l *look) countSigns() error {
+	f := &l.f
+	switch {
+	case f.PositiveDefinite.Answer == Yes:
+		f.NegativeCount = fact(No, f.PositiveDefinite.Certainty, 0, nil, "A is positive definite")
+		return nil
+	case f.NegativeDefinite.Answer == Yes:
+		f.NegativeCount = fact(Yes, f.NegativeDefinite.Certainty, float64(f.N), nil, "-A is positive definite")
+		return nil
+	case f.Symmetric.Answer != Yes:
+		f.NegativeCount = unknown("A is not symmetric")
+		return nil
+	}
+	n, err := direct.CountSigns(l.ctx, l.a, direct.FactLimits)
+	var pivot *direct.PivotError
+	switch {
+	case errors.Is(err, direct.ErrTooLarge):
+		f.NegativeCount = unknown("too large to be factorised for a fact")
+	case errors.As(err, &pivot):
+		f.NegativeCount = unknown("the factorisation breaks down: %v", err)
+	case err != nil:
+		return err
+	default:
+		f.NegativeCount = fact(No, Measured, float64(n.Negative), nil, "LDL' has %d negative, %d positive pivots, %d zero to rounding",
+			n.Negative, n.Positive, n.Zero)
+		if n.Negative > 0 {
+			f.NegativeCount.Answer = Yes
+		}
+	}
 	return nil
 }
 

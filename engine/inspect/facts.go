@@ -95,6 +95,7 @@ type Facts struct {
 	Singular         Fact // structurally, or by an exact null vector; else measured or unknown
 	PositiveDefinite Fact
 	NegativeDefinite Fact // −A is positive definite: the opposite sign convention
+	NegativeCount    Fact // whether A has negative eigenvalues; Value is how many, by LDLᵀ
 	Semidefinite     Fact // xᵀA x ≥ 0 for every x; no: some x has negative curvature
 	RowSumsZero      Fact // constants (per component) are null vectors of A
 	ColSumsZero      Fact // and of Aᵀ

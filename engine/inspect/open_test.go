@@ -167,3 +167,14 @@ func TestLarge(t *testing.T) {
 		t.Errorf("n %d, strict rows %d", f.N, f.StrictlyDominant)
 	}
 }
+
+// Negative eigenvalues of open matrices, counted densely in NumPy (check
+// values of the project).
+func TestNegativeCountsOnOpenMatrices(t *testing.T) {
+	for name, want := range map[string]float64{"hangGlider_2.mtx": 733, "can_24.psa": 10, "bcsstk01.rsa": 0} {
+		f := inspected(t, open(t, name))
+		if f.NegativeCount.Value != want || (f.NegativeCount.Answer == inspect.Yes) != (want > 0) {
+			t.Errorf("%s: %s, %g negative eigenvalues (%s), want %g", name, f.NegativeCount.Answer, f.NegativeCount.Value, f.NegativeCount.Why, want)
+		}
+	}
+}

@@ -24,6 +24,7 @@ func allFacts(f *inspect.Facts) []named {
 		{"pattern_symmetric", f.PatternSymmetric},
 		{"positive_definite", f.PositiveDefinite},
 		{"semidefinite", f.Semidefinite},
+		{"negative_eigenvalues", f.NegativeCount},
 		{"negative_definite", f.NegativeDefinite},
 		{"singular", f.Singular},
 		{"components", components(f)},

@@ -77,16 +77,9 @@ func lacking(name string, needs linear.Has, h Have) string {
 // Memory returns the bytes the method takes beyond the system itself, known
 // before anything is allocated.
 func (m Method) Memory(h Have) int64 {
-	total := int64(0)
-	if m.Solver.Memory != nil {
-		total += m.Solver.Memory(h.n, m.SolverValues)
-	}
+	total := m.SolverMemory(h) + m.PrecondMemory(h)
 	if h.matrix == nil {
 		return total
-	}
-	if m.Precond.Estimate != nil {
-		b, _ := m.Precond.Estimate(h.matrix, m.PrecondValues)
-		total += b
 	}
 	for _, p := range m.Preps {
 		if p.Entry.Estimate != nil {
@@ -94,4 +87,22 @@ func (m Method) Memory(h Have) int64 {
 		}
 	}
 	return total
+}
+
+// SolverMemory returns the bytes of the solver's own vectors.
+func (m Method) SolverMemory(h Have) int64 {
+	if m.Solver.Memory == nil {
+		return 0
+	}
+	return m.Solver.Memory(h.n, m.SolverValues)
+}
+
+// PrecondMemory returns the bytes of the preconditioner. For an exact one this
+// predicts its factorisation.
+func (m Method) PrecondMemory(h Have) int64 {
+	if h.matrix == nil || m.Precond.Estimate == nil {
+		return 0
+	}
+	b, _ := m.Precond.Estimate(h.matrix, m.PrecondValues)
+	return b
 }
