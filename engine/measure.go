@@ -54,6 +54,11 @@ func MeasureKernels(threads int) ([]KernelSpeed, error) {
 		timed("product", product, func() { a.Apply(z, x) }),
 		timed("product with dot", product, func() { a.ApplyDot(z, x) }),
 	}
+	forms, err := formProducts()
+	if err != nil {
+		return nil, err
+	}
+	list = append(list, forms...)
 	for i := range list {
 		list[i].Share = list[i].Rate / list[0].Rate
 	}

@@ -20,6 +20,9 @@ type Options struct {
 	Today        string               // the pairing the user's code runs now
 	RHS          string               // FILE[:COL], ones, made or unit:ROW; empty: the file's own, else ones, else made
 	Guess        string               // FILE[:COL]
+	Dofs         int                  // unknowns of a node that stand next to each other
+	Null         string               // FILE of near-null vectors, one a column
+	Coordinates  string               // FILE of the nodes' coordinates, one node a row
 	Tol          float64              // 1e-8
 	StopRule     string               // rhs (default), initial, backward or absolute
 	Iterations   int                  // per trial: 10 n, at most 100 000
@@ -90,6 +93,10 @@ func (o Options) Check() error {
 		return bad("--tol must lie between 0 and 1, not %g", o.Tol)
 	case !slices.Contains(rules, o.StopRule):
 		return bad("--stop must be rhs, initial, backward or absolute, not %q", o.StopRule)
+	case o.Dofs < 0:
+		return bad("--dofs must not be negative")
+	case o.Null != "" && o.Coordinates != "":
+		return bad("give --null or --coordinates, not both")
 	case o.Iterations < 0:
 		return bad("--iterations must not be negative")
 	case !(o.Seconds >= 0) || !(o.TrialSeconds >= 0):

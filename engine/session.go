@@ -90,6 +90,9 @@ func (s *Session) loadAndInspect() (err error) {
 	if err := complete(&sys, s.opt); err != nil {
 		return err
 	}
+	if err := setNearNull(&sys, s.opt); err != nil {
+		return err
+	}
 	sys.Open = s.open
 	sys.Name = shown(s.source, sys, s.opt.Identify)
 	s.set(func() { s.sys, s.phase, s.progress = sys, Inspecting, -1 })

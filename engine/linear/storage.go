@@ -4,7 +4,7 @@ import "fmt"
 
 const (
 	rowsOfPart  = 1 << 14 // rows (or block rows) of one part when a second form is built
-	sampleRows  = 4096    // block rows that are looked at to foretell a form
+	sampleRows  = 512     // block rows that are looked at to foretell a form
 	worthwhile  = 0.85    // a second form must move at most this share of the bytes
 	formOfRows  = "rows"
 	entryBytes  = 12 // value and column index of an entry in rows

@@ -47,18 +47,27 @@ func splitColumn(path string) (name string, col int, err error) {
 	return path[:k], col, nil
 }
 
+// ColumnsFile reads every column of a file as VectorFile reads one; all have
+// length n.
+func ColumnsFile(path string, n int) (columns [][]float64, err error) {
+	for col, cols := 1, 1; col <= cols; col++ {
+		f, size, err := open(path)
+		if err != nil {
+			return nil, err
+		}
+		p, err := pick(path, f, size, n, col)
+		f.Close()
+		if err != nil {
+			return nil, err
+		}
+		columns, cols = append(columns, p.v), p.cols
+	}
+	return columns, nil
+}
+
 // readVector reads column col of r, the first where col is 0.
 func readVector(name string, r io.Reader, size int64, n, col int) ([]float64, []string, error) {
-	l, err := newLines(context.Background(), name, r, size, nil)
-	if err != nil {
-		return nil, nil, err
-	}
-	p := picker{l: l, n: n, col: col}
-	if isBanner(l.preview()) {
-		err = p.readArray()
-	} else {
-		err = p.readColumns()
-	}
+	p, err := pick(name, r, size, n, col)
 	if err != nil {
 		return nil, nil, err
 	}
@@ -67,6 +76,21 @@ func readVector(name string, r io.Reader, size int64, n, col int) ([]float64, []
 		notes = append(notes, fmt.Sprintf("The file holds %d columns; the first is used (add :COL to its name to pick another).", p.cols))
 	}
 	return p.v, notes, nil
+}
+
+// pick reads column col of r, the first where col is 0.
+func pick(name string, r io.Reader, size int64, n, col int) (*picker, error) {
+	l, err := newLines(context.Background(), name, r, size, nil)
+	if err != nil {
+		return nil, err
+	}
+	p := &picker{l: l, n: n, col: col}
+	if isBanner(l.preview()) {
+		err = p.readArray()
+	} else {
+		err = p.readColumns()
+	}
+	return p, err
 }
 
 // picker takes one column of length n out of a file.

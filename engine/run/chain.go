@@ -16,6 +16,7 @@ func chain(ctx context.Context, preps []Prep, s linear.System) (linear.System, p
 		if err != nil {
 			return s, nil, err
 		}
+		carryNearNull(&next, s, b)
 		if back == nil {
 			back = b
 		} else {
@@ -43,3 +44,25 @@ func (t twice) Guess(dst, x []float64) {
 }
 
 func (t twice) Row(i int) int { return t.first.Row(t.second.Row(i)) }
+
+// carryNearNull takes the near-null vectors of a system along into the one
+// prepared from it: what solves A x ≈ 0 there is turned as a guess is. Nodes
+// need not stay together, so that constants become vectors of their own.
+func carryNearNull(next *linear.System, s linear.System, back prepare.Back) {
+	vectors := s.NearNull
+	if vectors == nil && s.Dofs > 1 {
+		for d := range s.Dofs {
+			v := make([]float64, s.N())
+			for i := d; i < len(v); i += s.Dofs {
+				v[i] = 1
+			}
+			vectors = append(vectors, v)
+		}
+	}
+	next.NearNull, next.Dofs = nil, 0
+	for _, v := range vectors {
+		w := make([]float64, len(v))
+		back.Guess(w, v)
+		next.NearNull = append(next.NearNull, w)
+	}
+}
