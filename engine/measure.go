@@ -25,7 +25,8 @@ const farBeyondCaches = 1 << 24
 
 // MeasureKernels measures this machine's memory bandwidth, w = a x + b y on
 // vectors far beyond its caches, and what the kernels of an iteration on a
-// million unknowns move; those whose vectors stay in a cache may exceed it.
+// million unknowns move, products by every form of storage among them; those
+// whose vectors stay in a cache may exceed it.
 // threads < 1 asks for the default.
 func MeasureKernels(threads int) ([]KernelSpeed, error) {
 	if threads < 1 {
