@@ -37,7 +37,16 @@ func candidates(h run.Have, memory int64) []choose.Candidate {
 			list = append(list, candidate(m, h, memory, bytes[p.Name]))
 		}
 	}
-	sort.SliceStable(list, func(i, j int) bool { return list[i].Refused == "" && list[j].Refused != "" })
+	place := func(c choose.Candidate) int {
+		switch {
+		case c.Refused != "":
+			return 2
+		case c.Baseline:
+			return 1
+		}
+		return 0
+	}
+	sort.SliceStable(list, func(i, j int) bool { return place(list[i]) < place(list[j]) })
 	return list
 }
 

@@ -15,10 +15,10 @@ var amgEntry = Entry{
 	Params: []linear.Param{
 		{Name: "kind", Kind: linear.Choice, Choices: []string{"aggregation", "classical"},
 			Meaning: "coarse unknowns: smoothed aggregates, or a subset of the fine ones"},
-		{Name: "theta", Kind: linear.Real, Default: 0, Min: 0, Max: 0.99,
+		{Name: "theta", Kind: linear.Real, Quiet: true, Default: 0, Min: 0, Max: 0.99,
 			Meaning: "couplings weaker than this share are not followed; 0: 0.08 for aggregation, 0.25 for classical"},
-		{Name: "sweeps", Kind: linear.Int, Default: 1, Min: 1, Max: 8, Meaning: "Gauss-Seidel sweeps before and after each coarse correction"},
-		{Name: "cycle", Kind: linear.Choice, Choices: []string{"auto", "v", "w"},
+		{Name: "sweeps", Kind: linear.Int, Quiet: true, Default: 1, Min: 1, Max: 8, Meaning: "Gauss-Seidel sweeps before and after each coarse correction"},
+		{Name: "cycle", Kind: linear.Choice, Quiet: true, Choices: []string{"auto", "v", "w"},
 			Meaning: "coarse levels visited once or twice a cycle; auto: w for aggregation, v for classical"},
 	},
 	Needs:     linear.NeedsEntries | linear.NeedsDiagonal,

@@ -12,8 +12,8 @@ import (
 
 // exactParams are the parameters of the complete factorisations.
 var exactParams = []linear.Param{
-	{Name: "order", Kind: linear.Choice, Choices: direct.Orderings, Meaning: "elimination order: best takes the cheaper of amd and nd"},
-	{Name: "refine", Kind: linear.Int, Default: 1, Min: 0, Max: 3, Meaning: "steps of iterative refinement in every solve"},
+	{Name: "order", Kind: linear.Choice, Quiet: true, Choices: direct.Orderings, Meaning: "elimination order: best takes the cheaper of amd and nd"},
+	{Name: "refine", Kind: linear.Int, Quiet: true, Default: 1, Min: 0, Max: 3, Meaning: "steps of iterative refinement in every solve"},
 }
 
 func ordering(v linear.Values) direct.Ordering { return direct.Ordering(v.Choice("order")) }
