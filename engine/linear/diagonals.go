@@ -151,13 +151,18 @@ func (a *CSR) mirrors(above []diagonal) bool {
 	return differ.Load() == 0 && surplus.Load() == 0
 }
 
-// seemsSymmetric looks at a sample of the rows.
+// seemsSymmetric looks at a sample of the rows: short runs of them, since
+// every second or third row may be of another kind.
 func (a *CSR) seemsSymmetric() bool {
-	for i := 0; i < a.NRows; i += max(1, a.NRows/sampleRows) {
-		cols, vals := a.Row(i)
-		for e, c := range cols {
-			if a.At(int(c), i) != vals[e] {
-				return false
+	const run = 8
+	stride := max(run, a.NRows*run/sampleRows)
+	for start := 0; start < a.NRows; start += stride {
+		for i := start; i < min(start+run, a.NRows); i++ {
+			cols, vals := a.Row(i)
+			for e, c := range cols {
+				if a.At(int(c), i) != vals[e] {
+					return false
+				}
 			}
 		}
 	}

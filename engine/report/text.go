@@ -3,6 +3,7 @@ package report
 import (
 	"fmt"
 	"io"
+	"slices"
 	"strings"
 
 	"dwindle/engine/diagnose"
@@ -173,6 +174,20 @@ func settingLines(d Document) []string {
 	if m.MemoryLimit > 0 {
 		text += ", memory limit " + memory(m.MemoryLimit)
 	}
+	if forms := secondForms(d.Trials); forms != "" {
+		text += ", products with A stored also by " + forms
+	}
 	lines := hang("measured with ", plain(text), Width)
 	return append(lines, hang("repeat with ", plain(d.Command), Width)...)
+}
+
+// secondForms lists the forms of A beside plain rows that products ran on.
+func secondForms(ts []trace.History) string {
+	var forms []string
+	for _, t := range ts {
+		if t.Storage != "" && t.Storage != "rows" && !slices.Contains(forms, t.Storage) {
+			forms = append(forms, t.Storage)
+		}
+	}
+	return strings.Join(forms, ", ")
 }
