@@ -33,9 +33,6 @@ const (
 // converged is so against a dense solution too, as far as the condition number
 // lets the residual say.
 func TestEveryPairingEndsAsTheTableSays(t *testing.T) {
-	if testing.Short() {
-		t.Skip("left out in short runs: thousands of trials")
-	}
 	var table strings.Builder
 	for _, spec := range endingsOf {
 		endings(t, &table, spec)
