@@ -105,52 +105,6 @@ func (s *Session) loadAndInspect() (err error) {
 	return nil
 }
 
-// setBench makes the bench and the line-up, and starts it or says why not.
-func (s *Session) setBench() *run.Bench {
-	b := run.NewBench(s.sys, s.limits(), s.opt.Memory, s.clock)
-	lineup := s.opt.Pairs
-	if len(lineup) == 0 {
-		lineup = choose.LineUp(s.facts, candidates(b.Have(), 0), s.opt.Today)
-	}
-	if s.opt.Today != "" {
-		lineup = append([]string{s.opt.Today}, lineup...)
-	}
-	s.set(func() { s.bench, s.lineup, s.phase = b, lineup, Ready })
-	if s.opt.FactsOnly {
-		s.set(func() { s.phase = Ended })
-		return b
-	}
-	if s.opt.Interactive {
-		if t := estimate(s.facts, len(lineup)); t > soonEnough {
-			s.set(func() { s.waiting = fmt.Sprintf("about %.0f s of work estimated", t.Seconds()) })
-			return b
-		}
-	}
-	s.Start()
-	return b
-}
-
-// soonEnough is the estimated work up to which a line-up starts by itself.
-const soonEnough = 30 * time.Second
-
-// estimate guesses the time of a line-up: a thousand iterations a pairing at
-// four nanoseconds an entry and ten an unknown.
-func estimate(f *inspect.Facts, pairings int) time.Duration {
-	return time.Duration(pairings) * 1000 * time.Duration(4*f.Entries+10*f.N)
-}
-
-func (s *Session) limits() run.Limits {
-	l := run.Limits{Target: run.Target{Rule: run.StopRule(s.opt.StopRule), Tol: s.opt.Tol},
-		Iterations: s.opt.Iterations, Seconds: s.opt.TrialSeconds, Delta: s.sys.Delta()}
-	if l.Iterations == 0 {
-		l.Iterations = min(10*s.sys.N(), 100_000)
-	}
-	if u := s.facts.Unreachable; u.Answer == inspect.Yes {
-		l.Unreachable = u.Value
-	}
-	return l
-}
-
 // Candidates lists the pairings that could be added, the refused ones with
 // their reason, admissible first.
 func (s *Session) Candidates() []choose.Candidate {

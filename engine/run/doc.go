@@ -7,11 +7,14 @@
 //	method.go   a pairing resolved against the catalogues
 //	admit.go    what a pairing needs and the system has; memory before start
 //	count.go    wrappers that count products and preconditioner uses
-//	trial.go    one pairing on the system: set-up, steps, records
+//	setup.go    a trial's set-up: prepare, build, begin
+//	trial.go    one pairing on the system, step by step
+//	record.go   readings become records, with audits where due
 //	target.go   the stopping rule
 //	audit.go    b−Ax measured afresh: when and what
 //	marks.go    where common stopping rules would have stopped
 //	ending.go   how a trial ends
 //	direction.go  what a direction of negative curvature proves
 //	bench.go    fair slices
+//	orders.go   pause, hold, cancel, drop: what may be asked of a running bench
 package run

@@ -1,0 +1,106 @@
+package run
+
+import (
+	"context"
+	"fmt"
+
+	"dwindle/engine/krylov"
+	"dwindle/engine/linear"
+	"dwindle/engine/spectrum"
+	"dwindle/engine/trace"
+)
+
+// setUp prepares, builds and begins, on the trial's clock.
+func (t *Trial) setUp(parent context.Context) {
+	ctx, cancel := context.WithCancel(parent)
+	defer cancel()
+	t.mu.Lock()
+	t.hist.Stop, t.cancel = trace.SettingUp, cancel
+	t.mu.Unlock()
+	shared := t.readyForm()
+	start := t.clock() - shared
+	reading, err := t.build(ctx)
+	t.charge(start)
+	t.mu.Lock()
+	t.hist.SetupTime, t.progress = t.hist.OwnTime, 1
+	live := !t.hist.Stop.Ended()
+	t.mu.Unlock()
+	switch {
+	case !live:
+	case err != nil && ctx.Err() != nil:
+		t.solver = nil
+		t.end(trace.Cancelled, "cancelled while setting up")
+	case err != nil:
+		t.end(trace.BrokeDown, "set-up: "+err.Error())
+	default:
+		t.begun(reading)
+	}
+}
+
+// build makes the prepared system, the preconditioner and the solver.
+func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
+	var err error
+	if t.prepared, t.back, err = chain(ctx, t.method.Preps, t.sys); err != nil {
+		return trace.Reading{}, err
+	}
+	basis, err := t.basis()
+	if err != nil {
+		return trace.Reading{}, err
+	}
+	m, notes, err := t.method.Precond.Build(ctx, basis, t.method.PrecondValues, func(p float64) {
+		t.mu.Lock()
+		t.progress = p
+		t.mu.Unlock()
+	})
+	t.mu.Lock()
+	t.hist.Notes = notes
+	t.mu.Unlock()
+	if err != nil {
+		return trace.Reading{}, err
+	}
+	n := t.sys.N()
+	t.a, t.m = &counted{inner: t.products(), n: n}, &counted{inner: m, n: n}
+	guess := t.prepared.Guess
+	solver := t.method.Solver.New(t.method.SolverValues)
+	r, err := solver.Begin(krylov.Problem{A: t.a, M: t.m, B: t.prepared.B, X: guess})
+	if err == nil {
+		t.solver = solver
+	}
+	return r, err
+}
+
+// basis is the system that the preconditioner is built from.
+func (t *Trial) basis() (linear.System, error) {
+	if t.method.From == "" {
+		return t.prepared, nil
+	}
+	s := t.prepared
+	if s.Open == nil {
+		return s, fmt.Errorf("no file can be read here")
+	}
+	other, err := s.Open(t.method.From)
+	if err != nil {
+		return s, err
+	}
+	if other.NRows != s.N() {
+		return s, fmt.Errorf("%s has %d rows, A has %d", t.method.From, other.NRows, s.N())
+	}
+	s.A = other
+	return s, nil
+}
+
+// begun follows a successful set-up: own norms, probes and iteration 0.
+func (t *Trial) begun(r trace.Reading) {
+	t.own0 = r.Residual
+	t.ownB = t.ownNorm(t.prepared.B, linear.Norm2(t.prepared.B))
+	t.mu.Lock()
+	t.hist.Stop = trace.Running
+	t.mu.Unlock()
+	if t.hist.SPDM {
+		t.probe()
+	}
+	if t.method.Solver.Lanczos || t.method.Solver.Tridiagonal {
+		t.lanczos = new(spectrum.Tridiagonal)
+	}
+	t.record(r, true)
+}
