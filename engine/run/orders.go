@@ -133,7 +133,8 @@ func (b *Bench) Live() bool {
 	return false
 }
 
-// WaitEnded returns when every trial has ended or ctx is done.
+// WaitEnded returns when every trial has ended and left its answer, or ctx is
+// done.
 func (b *Bench) WaitEnded(ctx context.Context) {
 	stop := context.AfterFunc(ctx, func() {
 		b.mu.Lock()
@@ -144,7 +145,7 @@ func (b *Bench) WaitEnded(ctx context.Context) {
 	b.mu.Lock()
 	defer b.mu.Unlock()
 	for ctx.Err() == nil {
-		ended := true
+		ended := !b.moving
 		for _, t := range b.trials {
 			ended = ended && t.ended()
 		}
