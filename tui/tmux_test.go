@@ -100,6 +100,10 @@ func TestPoint07And08Suspend(t *testing.T) {
 		t.Errorf("ended: alternate, cursor, mouse = %s", got)
 	}
 	data, _ := os.ReadFile(x.log)
+	for end := time.Now().Add(10 * time.Second); !strings.Contains(string(data), " own ") && time.Now().Before(end); {
+		time.Sleep(30 * time.Millisecond) // the prompt is back before the program has ended
+		data, _ = os.ReadFile(x.log)
+	}
 	for _, want := range []string{" suspend\n", " continue\n", " saved\n"} {
 		if !strings.Contains(string(data), want) {
 			t.Errorf("no%q in the log", want)
