@@ -23,7 +23,7 @@ var icEntry = Entry{
 		return factorBytes(a.NRows, lower, lower), exact
 	},
 	Build: func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
-		return scheduled(buildIC(ctx, s, v.Int("level"), progress))
+		return built(buildIC(ctx, s, v.Int("level"), progress))
 	},
 }
 

@@ -59,5 +59,5 @@ func buildICT(ctx context.Context, s linear.System, v linear.Values, progress fu
 		f.inverse[i] = 1 / d
 	}
 	factorNotes(&notes, f, a)
-	return scheduled(f, notes, nil)
+	return built(f, notes, nil)
 }

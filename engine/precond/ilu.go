@@ -23,7 +23,7 @@ var iluEntry = Entry{
 	},
 	Build: func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 		level := v.Int("level")
-		return scheduled(buildILU(ctx, s, fmt.Sprintf("ilu:%d", level), level, false, progress))
+		return built(buildILU(ctx, s, fmt.Sprintf("ilu:%d", level), level, false, progress))
 	},
 }
 
@@ -39,7 +39,7 @@ var miluEntry = Entry{
 	Fixed:  true, Symmetric: true, Transposes: true,
 	Estimate: iluEntry.Estimate,
 	Build: func(ctx context.Context, s linear.System, _ linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
-		return scheduled(buildILU(ctx, s, "milu:0", 0, true, progress))
+		return built(buildILU(ctx, s, "milu:0", 0, true, progress))
 	},
 }
 

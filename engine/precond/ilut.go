@@ -20,7 +20,7 @@ var ilutEntry = Entry{
 		if err != nil {
 			return nil, notes, err
 		}
-		return scheduled(w.f, notes, nil)
+		return built(w.f, notes, nil)
 	},
 }
 

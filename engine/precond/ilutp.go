@@ -26,7 +26,6 @@ var ilutpEntry = Entry{
 		if err != nil {
 			return nil, notes, err
 		}
-		w.f.schedule()
 		notes.Bytes += 12 * int64(len(w.col))
 		return &permuted{f: w.f, col: w.col, work: make([]float64, len(w.col))}, notes, nil
 	},

@@ -75,5 +75,5 @@ func buildMIC(ctx context.Context, s linear.System, _ linear.Values, progress fu
 	f := w.f
 	f.upper, f.self = f.lower.Transpose(), true
 	factorNotes(&notes, f, a)
-	return scheduled(f, notes, nil)
+	return built(f, notes, nil)
 }

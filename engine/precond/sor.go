@@ -41,14 +41,11 @@ type sor struct {
 	a       *linear.CSR
 	diag    []int     // position of a_ii among A's entries, length n
 	inverse []float64 // ω/d_i, length n
-	wave    *wave     // how the sweep is shared by threads; nil: it is not
 }
 
 // Apply computes dst = M⁻¹ x.
 func (s *sor) Apply(dst, x []float64) {
-	if !s.wave.run(dst, x) {
-		s.down(dst, x, 0, len(dst))
-	}
+	s.down(dst, x, 0, len(dst))
 }
 
 // down sweeps over rows lo to hi.
@@ -84,7 +81,6 @@ func makeSOR(ctx context.Context, sys linear.System, name string, omega float64,
 	if s.diag, s.inverse, err = pivots(ctx, a, name, omega, &notes, progress); err != nil {
 		return nil, notes, err
 	}
-	s.wave = newWave(a.NRows, false, s.down, func(i int) []int32 { return a.Col[a.Ptr[i]:s.diag[i]] })
 	lower := 0
 	for i, at := range s.diag {
 		lower += at - a.Ptr[i]

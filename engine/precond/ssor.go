@@ -37,18 +37,12 @@ type ssor struct {
 	inverse []float64 // ω/d_i, length n
 	omega   float64
 	self    bool // A is symmetric, and so is M
-	// How the sweeps are shared by threads; nil: they are not.
-	downWave, upWave *wave
 }
 
 // Apply computes dst = M⁻¹ x.
 func (s *ssor) Apply(dst, x []float64) {
-	if !s.downWave.run(dst, x) {
-		s.down(dst, x, 0, len(dst))
-	}
-	if !s.upWave.run(dst, dst) {
-		s.up(dst, dst, 0, len(dst))
-	}
+	s.down(dst, x, 0, len(dst))
+	s.up(dst, dst, 0, len(dst))
 }
 
 // ApplyDot computes dst = M⁻¹ x and returns xᵀ dst.
@@ -112,7 +106,5 @@ func makeSSOR(ctx context.Context, sys linear.System, name string, omega float64
 	notes.Bytes = 16 * int64(a.NRows)
 	notes.Symmetric = s.self
 	notes.Definite = s.self && positive(s.inverse)
-	s.downWave = newWave(a.NRows, false, s.down, func(i int) []int32 { return a.Col[a.Ptr[i]:s.diag[i]] })
-	s.upWave = newWave(a.NRows, true, s.up, func(i int) []int32 { return a.Col[s.diag[i]+1 : a.Ptr[i+1]] })
 	return s, notes, nil
 }

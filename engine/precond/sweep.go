@@ -55,41 +55,19 @@ type factors struct {
 	lower, upper *linear.CSR // strict parts of L and R, rows ascending
 	inverse      []float64   // 1/d_i, length n
 	self         bool        // R = Lᵀ: M is symmetric
-	down, up     *wave       // how the sweeps are shared by threads; nil: they are not
 }
 
 // Apply computes dst = R⁻¹ D⁻¹ L⁻¹ x.
 func (f *factors) Apply(dst, x []float64) {
-	if !f.down.run(dst, x) {
-		f.sweepDown(dst, x, 0, len(dst))
-	}
-	if !f.up.run(dst, dst) {
-		f.sweepUp(dst, dst, 0, len(dst))
-	}
+	lowerUnit(f.lower, dst, x, 0, len(dst))
+	upperScaled(f.upper, f.inverse, dst, dst, 0, len(dst))
 }
 
-func (f *factors) sweepDown(dst, x []float64, lo, hi int) { lowerUnit(f.lower, dst, x, lo, hi) }
-
-func (f *factors) sweepUp(dst, x []float64, lo, hi int) {
-	upperScaled(f.upper, f.inverse, dst, x, lo, hi)
-}
-
-// schedule shares the sweeps among threads where that pays.
-func (f *factors) schedule() {
-	f.down = newWave(f.lower.NRows, false, f.sweepDown, func(i int) []int32 {
-		return f.lower.Col[f.lower.Ptr[i]:f.lower.Ptr[i+1]]
-	})
-	f.up = newWave(f.upper.NRows, true, f.sweepUp, func(i int) []int32 {
-		return f.upper.Col[f.upper.Ptr[i]:f.upper.Ptr[i+1]]
-	})
-}
-
-// scheduled ends the build of factors.
-func scheduled(f *factors, notes trace.BuildNotes, err error) (linear.Applier, trace.BuildNotes, error) {
+// built ends the build of factors.
+func built(f *factors, notes trace.BuildNotes, err error) (linear.Applier, trace.BuildNotes, error) {
 	if err != nil {
 		return nil, notes, err
 	}
-	f.schedule()
 	return f, notes, nil
 }
 
