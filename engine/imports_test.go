@@ -29,7 +29,7 @@ var mayImport = map[string][]string{
 	"samples":         {"engine/linear"},
 
 	"engine/load":    {"engine/linear"},
-	"engine/inspect": {"engine/linear", "engine/spectrum", "engine/direct"},
+	"engine/inspect": {"engine/linear", "engine/spectrum", "engine/direct", "engine/prepare"},
 	"engine/run": {"engine/linear", "engine/trace", "engine/krylov", "engine/precond", "engine/prepare",
 		"engine/spectrum"},
 	"engine/diagnose": {"engine/trace", "engine/inspect", "engine/spectrum"},

@@ -23,6 +23,12 @@ type Options struct {
 	Dofs         int                  // unknowns of a node that stand next to each other
 	Null         string               // FILE of near-null vectors, one a column
 	Coordinates  string               // FILE of the nodes' coordinates, one node a row
+	Labels       string               // FILE with a label a row
+	Fields       string               // FILE with a field name a row
+	FieldTols    []string             // NAME=TOL: what must hold for one field as well
+	Goal         string               // what the choice goes by: seconds (default), memory or robust
+	Columns      string               // further right-hand sides to measure the choice on, such as 1-8 of the --rhs file
+	Recording    string               // FILE the session is written to as it goes; empty: none
 	Tol          float64              // 1e-8
 	StopRule     string               // rhs (default), initial, backward or absolute
 	Iterations   int                  // per trial: 10 n, at most 100 000

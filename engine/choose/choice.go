@@ -26,6 +26,24 @@ type Ranked struct {
 	Memory     int64
 	Reached    bool    // it converged; otherwise Seconds is NaN
 	BreakEven  float64 // right-hand sides from which it beats the cheapest set-up; NaN if never or not needed
+	// For is the predicted seconds for each of Sides right-hand sides solved
+	// one after the other with one set-up; NaN where not reached.
+	For       [len(Sides)]float64
+	Low, High float64 // range of Seconds thought likely; NaN where not reached
+}
+
+// Sides are the numbers of right-hand sides a ranking is told for.
+var Sides = [...]int{1, 10, 1000}
+
+// Ruled is a pairing that was ruled out, and why.
+type Ruled struct{ Pairing, Reason string }
+
+// Outcome holds a prediction against what came of it.
+type Outcome struct {
+	Pairing   string
+	What      string  // what was predicted, such as "iterations, told at half time"
+	Predicted float64
+	Came      float64
 }
 
 // Choice is the recommendation.
@@ -35,4 +53,9 @@ type Choice struct {
 	Reasons []string
 	Doubts  []string
 	Gain    float64 // today's seconds over the choice's; NaN without today's
+	// Settings says the choice in the terms of its methods, a line each, ready
+	// to be carried into any code.
+	Settings []string
+	RuledOut []Ruled   // pairings that cannot run here, with the reason, grouped
+	Outcomes []Outcome // predictions kept beside their outcomes
 }

@@ -102,6 +102,9 @@ type Facts struct {
 	NullComponents   int  // components whose rows sum to zero
 	Unreachable      Fact // Value: norm of the part of b out of A's range, relative to ‖b‖
 
+	// Study is what the second, costlier look found; nil before it.
+	Study *Study
+
 	Complete bool
 	Pattern  [][]float64 `json:"-"` // density picture of the pattern, at most 64 x 64, each 0 to 1
 }

@@ -35,6 +35,15 @@ type System struct {
 	// rigid motions, for multilevel methods; nil: the constant, one for each
 	// unknown of a node.
 	NearNull [][]float64
+	// Labels names the rows, one each, as their owner does; nil: by number.
+	Labels []string
+	// Fields names the fields of unknowns, and FieldOf the field of each row
+	// (length n); nil: no fields are known.
+	Fields  []string
+	FieldOf []int32
+	// Coordinates are those of the nodes, one row of 1 to 3 numbers a node;
+	// unknowns of node i are rows i·Dofs to i·Dofs+Dofs−1. Nil if not given.
+	Coordinates [][]float64
 }
 
 // Source is what the reader noticed while it read a file.

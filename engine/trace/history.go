@@ -30,6 +30,57 @@ type Condition struct {
 	Negative          bool    // a Ritz value is negative: no condition estimate
 }
 
+// Lock is a Ritz value that has settled on an eigenvalue: its residual bound
+// is below a thousandth of its distance to the others.
+type Lock struct {
+	Value  float64
+	Iter   int     // where it locked
+	Copies int     // 1; more where lost orthogonality has made ghosts of it
+	Weight float64 // share of the first residual (its M⁻¹ norm squared) that lies in it
+}
+
+// EnergyError encloses the energy norm of the error ‖x−x_k‖_A at one
+// iteration, relative to ‖x−x₀‖_A at the first.
+type EnergyError struct {
+	Iter         int
+	Lower, Upper float64 // Gauss; Gauss–Radau, NaN where no μ is known
+}
+
+// Prediction is when a trial is expected to reach the target, told while it ran.
+type Prediction struct {
+	Iter      int     // where it was told
+	Total     float64 // iterations expected in all; +Inf if never
+	Low, High float64 // the range thought likely
+}
+
+// Field is the residual of the rows of one field of unknowns.
+type Field struct {
+	Name          string
+	Rows          int
+	Residual      float64 // ‖(b−Ax)_f‖₂/‖b_f‖₂; relative to ‖b‖₂ where b_f is 0
+	Componentwise float64 // Oettli–Prager, over its rows
+	Tol           float64 // that must hold for it as well; 0 if none
+}
+
+// MProbe is what probing a preconditioner at set-up with random vectors showed.
+type MProbe struct {
+	Asymmetry    float64 // |uᵀM⁻¹v − vᵀM⁻¹u| relative to ‖u‖‖M⁻¹v‖
+	Nonlinear    float64 // ‖M⁻¹(u+v) − M⁻¹u − M⁻¹v‖ relative
+	Unrepeatable float64 // ‖M⁻¹v − M⁻¹v'‖ relative, the same v applied twice
+	Distance     float64 // ‖v − γM⁻¹Av‖/‖v‖ with the best γ
+	WrongWay     float64 // the same of M in place of M⁻¹, where M can be had; NaN
+	Plain        float64 // the same of A scaled by its diagonal, without M
+}
+
+// Column is one of several right-hand sides solved with one set-up.
+type Column struct {
+	Index      int // from 1, of the file
+	Iterations int
+	Seconds    float64 // without set-up
+	True       float64 // ‖b−Ax‖₂/‖b‖₂
+	Reached    bool
+}
+
 // History is everything a trial left behind. Records and Events are
 // append-only: a copy of the struct is a consistent snapshot.
 type History struct {
@@ -74,6 +125,21 @@ type History struct {
 
 	WouldStop []StopMark
 	Condition Condition
+
+	// Alphas and Betas are the recurrence coefficients of every step of a
+	// method of the conjugate gradient family (append-only, never thinned):
+	// α_k and β_{k+1} as Hestenes and Stiefel name them; nil for other methods.
+	Alphas, Betas []float64
+	Locks         []Lock               // Ritz values that have settled, by iteration
+	EnergyErrors       []EnergyError        // at growing iterations; nil where not known
+	Delay         int                  // iterations lost to lost orthogonality, estimated; 0 if none seen
+	Harmonic      []complex128         // harmonic Ritz values of the last whole cycle of an Arnoldi method
+	Predictions   []Prediction         // told at growing iterations
+	Fields        []Field              // residuals by field of unknowns, last full audit
+	Probe         *MProbe              // nil if not probed
+	Counts        []int                // iterations of reruns with each b_i changed by one unit in its last place
+	Columns       []Column             // other right-hand sides solved with the same set-up
+	Vectors       map[string][]float64 // what stands behind an event or the end, in the user's rows: "curvature", "slowest", "residual"
 }
 
 // Last returns the last record, or false if there is none.
