@@ -41,7 +41,7 @@ type Ruled struct{ Pairing, Reason string }
 // Outcome holds a prediction against what came of it.
 type Outcome struct {
 	Pairing   string
-	What      string  // what was predicted, such as "iterations, told at half time"
+	What      string // what was predicted, such as "iterations, told at half time"
 	Predicted float64
 	Came      float64
 }

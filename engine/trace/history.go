@@ -131,7 +131,7 @@ type History struct {
 	// α_k and β_{k+1} as Hestenes and Stiefel name them; nil for other methods.
 	Alphas, Betas []float64
 	Locks         []Lock               // Ritz values that have settled, by iteration
-	EnergyErrors       []EnergyError        // at growing iterations; nil where not known
+	EnergyErrors  []EnergyError        // at growing iterations; nil where not known
 	Delay         int                  // iterations lost to lost orthogonality, estimated; 0 if none seen
 	Harmonic      []complex128         // harmonic Ritz values of the last whole cycle of an Arnoldi method
 	Predictions   []Prediction         // told at growing iterations
