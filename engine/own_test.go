@@ -71,12 +71,45 @@ func TestYourOwnPreconditioners(t *testing.T) {
 	}
 }
 
+// M = D in a file, solved, is jacobi; M = A is a direct solve; M = D + L is gs.
+func TestYourOwnMatrixSolved(t *testing.T) {
+	s, err := read(context.Background(), "sample:plate:20", nil, 0, nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	a := s.Matrix()
+	part := func(keep func(i, j int) bool) *linear.CSR {
+		var e []linear.Entry
+		for i := range a.NRows {
+			cols, vals := a.Row(i)
+			for k, c := range cols {
+				if keep(i, int(c)) {
+					e = append(e, linear.Entry{I: i, J: int(c), V: vals[k]})
+				}
+			}
+		}
+		return linear.FromEntries(a.NRows, a.NRows, e)
+	}
+	for _, c := range []struct{ own, built string }{
+		{"cg+solve:" + saved(t, "m.mtx", part(func(i, j int) bool { return i == j })), "cg+jacobi"},
+		{"richardson+solve:" + saved(t, "a.mtx", a), "richardson+cholesky"},
+		{"gmres:30+solve:" + saved(t, "lower.mtx", part(func(i, j int) bool { return j <= i })), "gmres:30+gs"},
+	} {
+		v := ended(t, "sample:plate:20", Options{Pairs: []string{c.own, c.built}})
+		own, built := v.Trials[0].History, v.Trials[1].History
+		if own.Stop != trace.Converged || own.Iterations != built.Iterations {
+			t.Errorf("%s ends %s after %d iterations, %s after %d", own.Pairing, own.Stop, own.Iterations, built.Pairing, built.Iterations)
+		}
+	}
+}
+
 func TestYourOwnPreconditionersCanBeWrong(t *testing.T) {
 	wrong := saved(t, "small.mtx", linear.FromEntries(2, 2, []linear.Entry{{I: 0, J: 0, V: 1}, {I: 1, J: 1, V: 1}}))
 	for pairing, want := range map[string]trace.Stop{
 		"cg+given:" + wrong:                  trace.BrokeDown,
 		"cg+given:no/such.mtx":               trace.BrokeDown,
 		"cg+from:" + wrong + "/ic:0":         trace.BrokeDown,
+		"cg+solve:" + wrong:                  trace.BrokeDown,
 		"scale/cg+given:" + wrong:            trace.Refused,
 		"cg+factors:" + wrong + "," + wrong:  trace.BrokeDown,
 		"scale/cg+from:" + wrong + "/jacobi": trace.Refused,

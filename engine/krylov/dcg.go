@@ -1,6 +1,7 @@
 package krylov
 
 import (
+	"errors"
 	"math"
 
 	"dwindle/engine/linear"
@@ -10,8 +11,11 @@ import (
 var dcgEntry = Entry{
 	Name: "dcg", Title: "deflated conjugate gradients",
 	Source: "Saad, Yeung, Erhel and Guyomarc'h, SIAM J. Sci. Comput. 21 (2000) 1909–1926; Wu and Simon, SIAM J. Matrix Anal. Appl. 22 (2000) 602–616",
-	Params: []linear.Param{{Name: "k", Kind: linear.Int, Default: 4,
-		Min: 1, Max: 100, Meaning: "smallest Ritz vectors taken out"}},
+	Params: []linear.Param{
+		{Name: "k", Kind: linear.Int, Default: 4, Min: 1, Max: 100, Meaning: "vectors taken out, at most"},
+		{Name: "space", Kind: linear.Choice, Quiet: true, Choices: []string{"ritz", "given"},
+			Meaning: "the smallest Ritz vectors, found first, or the first of the near-null vectors given"},
+	},
 	Assumes:  linear.AssumesSymmetric | linear.AssumesDefinite | linear.AssumesFixedM | linear.AssumesSymmetricM,
 	Norm:     trace.TwoNorm,
 	Products: "1, after the set-up",
@@ -19,7 +23,7 @@ var dcgEntry = Entry{
 	Memory: func(n int, v linear.Values) int64 {
 		return vectors(5+2*(ritzSpace(v.Int("k"), n)+1), n)
 	},
-	New: func(v linear.Values) Solver { return &dcg{k: v.Int("k")} },
+	New: func(v linear.Values) Solver { return &dcg{k: v.Int("k"), given: v.Choice("space") == "given"} },
 }
 
 const (
@@ -27,8 +31,8 @@ const (
 	projectSteps = 50   // and the most steps between two projections
 )
 
-// dcg is the conjugate gradient method with the space W of the k smallest Ritz
-// vectors of M⁻¹A taken out, WᵀA W = I. The residual is made orthogonal to W
+// dcg is the conjugate gradient method with a space W taken out, WᵀA W = I:
+// that of the k smallest Ritz vectors of M⁻¹A, or of near-null vectors given. The residual is made orthogonal to W
 // first, and every direction conjugate to it:
 //
 //	x += W Wᵀr,  r −= A W Wᵀr
@@ -38,11 +42,12 @@ const (
 // The iteration then sees the rest of the spectrum alone. Rounding brings W
 // back into r, so that the first line is repeated after some steps. Any W is
 // valid: the better its vectors, the fewer the steps, and without any this is
-// cg. Begin finds them, see smallestRitz, and its products count.
+// cg. Begin finds them, see smallestRitz and conjugateNear, and its products count.
 type dcg struct {
 	core
 	curv       curvature
 	k          int
+	given      bool        // W is made from the near-null vectors of the problem
 	w, aw      [][]float64 // W and A W, at most k vectors of length n
 	r, z, p, q []float64   // length n; z is r without a preconditioner
 	rho        float64     // rᵀz of the last step; 0 before the first
@@ -52,7 +57,7 @@ type dcg struct {
 }
 
 func (s *dcg) Begin(p Problem) (trace.Reading, error) {
-	*s = dcg{k: s.k}
+	*s = dcg{k: s.k, given: s.given}
 	if err := s.begin(p); err != nil {
 		return trace.Reading{}, err
 	}
@@ -63,6 +68,13 @@ func (s *dcg) Begin(p Problem) (trace.Reading, error) {
 	}
 	if rd := s.start(s.residual(s.r, p.X)); rd.Done {
 		return rd, nil
+	}
+	if s.given {
+		s.w, s.aw = conjugateNear(&s.core, p.Near, s.k)
+		if len(s.w) == 0 {
+			return trace.Reading{}, errors.New("no near-null vector is given that A maps to more than rounding")
+		}
+		return s.reading(math.NaN(), math.NaN(), false), nil
 	}
 	w, aw, bad := smallestRitz(&s.core, s.k)
 	if bad < 0 {

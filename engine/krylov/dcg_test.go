@@ -133,3 +133,47 @@ func TestDeflationSingular(t *testing.T) {
 	near(t, "true residual", r.truth(), 0, 1e-8)
 	near(t, "x along the null vector", r.x()[200], 0, 1e-6)
 }
+
+// Three vectors given, the eigenvectors of the outliers in other combinations,
+// do what the three Ritz vectors do: 11 steps instead of 29 (see
+// TestDeflation). A null vector among them is left out.
+func TestDeflationOfGivenVectors(t *testing.T) {
+	a := outliers(1e-4, 2e-4, 5e-4)
+	n := a.NRows
+	given := make([][]float64, 3)
+	for k := range given {
+		given[k] = make([]float64, n)
+		for i := range 3 {
+			given[k][n-3+i] = math.Pow(float64(i+1), float64(k))
+		}
+	}
+	entry, _ := krylov.Lookup("dcg")
+	values, err := linear.Resolve("dcg", entry.Params, []linear.Arg{{Text: "3"}, {Name: "space", Text: "given"}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	begin := func(near [][]float64) (krylov.Solver, trace.Reading, error) {
+		s := entry.New(values)
+		r, err := s.Begin(krylov.Problem{A: a, M: linear.Identity{}, B: ones(n), Near: near})
+		return s, r, err
+	}
+	s, first, err := begin(given)
+	if err != nil {
+		t.Fatal(err)
+	}
+	steps := 0
+	for last := first; last.Residual > 1e-8*first.Residual && steps < 100; steps++ {
+		if last, err = s.Step(); err != nil {
+			t.Fatal(err)
+		}
+	}
+	if steps < 10 || steps > 12 {
+		t.Errorf("%d steps, want 11", steps)
+	}
+	if _, _, err := begin(nil); err == nil {
+		t.Error("begins without any vector")
+	}
+	if _, _, err := begin([][]float64{make([]float64, n)}); err == nil {
+		t.Error("begins with a zero vector")
+	}
+}

@@ -14,6 +14,9 @@ type Problem struct {
 	M linear.Applier // applies M⁻¹; never nil (identity for none)
 	B []float64      // right-hand side, not changed
 	X []float64      // starting guess, not changed; nil is zero
+	// Near are vectors that A maps nearly to zero, of length n and not
+	// changed, for methods that take them out; nil if none are known.
+	Near [][]float64
 }
 
 // Solver iterates. Its fields are exactly the state between two calls.

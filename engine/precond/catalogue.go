@@ -23,6 +23,7 @@ var Catalogue = []Entry{
 	rasEntry,
 	givenEntry,
 	ownFactorsEntry,
+	ownSolveEntry,
 	choleskyEntry,
 	ldlEntry,
 	luEntry,

@@ -62,7 +62,7 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 	t.a, t.m = &counted{inner: t.products(), n: n}, &counted{inner: m, n: n}
 	guess := t.prepared.Guess
 	solver := t.method.Solver.New(t.method.SolverValues)
-	r, err := solver.Begin(krylov.Problem{A: t.a, M: t.m, B: t.prepared.B, X: guess})
+	r, err := solver.Begin(krylov.Problem{A: t.a, M: t.m, B: t.prepared.B, X: guess, Near: t.prepared.NearNull})
 	if err == nil {
 		t.solver = solver
 	}

@@ -1,0 +1,38 @@
+package precond
+
+import (
+	"context"
+	"errors"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/trace"
+)
+
+var ownSolveEntry = Entry{
+	Name: "solve", Title: "your own M, a matrix, solved directly", Source: "given by the user",
+	Params:      append([]linear.Param{{Name: "file", Kind: linear.Path, Meaning: "the matrix that is M"}}, exactParams...),
+	Fixed:       true,
+	Symmetric:   true,
+	InUserUnits: true,
+	Transposes:  true,
+	Estimate:    ownEstimate,
+	Build:       buildOwnSolve,
+}
+
+// buildOwnSolve reads M and factorises it: by Cholesky's method where M is
+// symmetric and that goes through, else as LU.
+func buildOwnSolve(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
+	m, err := own(s, v.Path("file"))
+	if err != nil {
+		return nil, trace.BuildNotes{}, err
+	}
+	mine := linear.System{A: m}
+	if m.ExactlySymmetric() {
+		f, notes, err := buildCholesky(ctx, mine, v, progress)
+		var broke *Breakdown
+		if !errors.As(err, &broke) {
+			return f, notes, err
+		}
+	}
+	return buildLU(ctx, mine, v, progress)
+}
