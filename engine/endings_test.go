@@ -20,7 +20,7 @@ import (
 var update = flag.Bool("update", false, "write the table of endings anew")
 
 // endingsOf are the small samples every pairing is run on.
-var endingsOf = []string{"plate:12", "frame:n=4", "seepage:8", "duct:10", "acoustics:12", "strut:8", "feeder:60",
+var endingsOf = []string{"plate:12", "frame:n=4", "seepage:8", "duct:10", "acoustics:12", "drains:6", "strut:8", "feeder:60",
 	"strakos:24", "shift:12", "kershaw", "line:20"}
 
 const (

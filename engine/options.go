@@ -23,6 +23,7 @@ type Options struct {
 	Dofs         int                  // unknowns of a node that stand next to each other
 	Null         string               // FILE of near-null vectors, one a column
 	Coordinates  string               // FILE of the nodes' coordinates, one node a row
+	Split        string               // FILE with a number a row: not 0 where the unknown belongs to the second block
 	Labels       string               // FILE with a label a row
 	Fields       string               // FILE with a field name a row
 	FieldTols    []string             // NAME=TOL: what must hold for one field as well

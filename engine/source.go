@@ -55,6 +55,9 @@ func complete(s *linear.System, opt Options) error {
 	if linear.NormInf(s.B) != linear.NormInf(s.B) || math.IsInf(linear.NormInf(s.B), 0) {
 		return badOption("the right-hand side holds a number that is not finite")
 	}
+	if err := setSplit(s, opt.Split, n); err != nil {
+		return err
+	}
 	if opt.Guess == "" {
 		return nil
 	}
@@ -64,6 +67,28 @@ func complete(s *linear.System, opt Options) error {
 	}
 	s.Guess = x
 	s.Source.Notes = append(s.Source.Notes, notes...)
+	return nil
+}
+
+// setSplit reads which unknowns belong to the second block of a saddle system.
+func setSplit(s *linear.System, path string, n int) error {
+	if path == "" {
+		return nil
+	}
+	v, _, err := load.VectorFile(path, n)
+	if err != nil {
+		return err
+	}
+	s.Second = make([]bool, n)
+	second := 0
+	for i, x := range v {
+		if s.Second[i] = x != 0; s.Second[i] {
+			second++
+		}
+	}
+	if second == 0 || second == n {
+		return badOption("--split %s puts all %d unknowns into one block", path, n)
+	}
 	return nil
 }
 

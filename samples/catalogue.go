@@ -7,6 +7,7 @@ var Catalogue = []Sample{
 	seepage,
 	duct,
 	acoustics,
+	drains,
 	strut,
 	feeder,
 	strakos,

@@ -43,6 +43,7 @@ func (f *flags) trials(c *cobra.Command, seconds float64) {
 	s.IntVar(&f.opt.Dofs, "dofs", 0, "`K` unknowns of a node stand next to each other, for multilevel methods")
 	s.StringVar(&f.opt.Null, "null", "", "near-null vectors for multilevel methods, the columns of `FILE`")
 	s.StringVar(&f.opt.Coordinates, "coordinates", "", "coordinates of the nodes, one a row of `FILE`: rigid motions for multilevel methods")
+	s.StringVar(&f.opt.Split, "split", "", "second block of a saddle system: not 0 in its rows of `FILE`, one number a row")
 	s.Float64Var(&f.opt.Tol, "tol", 1e-8, "tolerance `T`")
 	s.StringVar(&f.opt.StopRule, "stop", "rhs", "what the tolerance is relative to: `RULE` rhs, initial, backward or absolute")
 	s.IntVar(&f.opt.Iterations, "iterations", 0, "at most `N` iterations a trial (default: 10 n, at most 100000)")

@@ -122,8 +122,8 @@ func TestSecondSignal(t *testing.T) {
 func TestOptions(t *testing.T) {
 	root := rootCommand()
 	for path, want := range map[string]string{
-		"":        "pair today guess dofs null coordinates tol stop iterations seconds trial-seconds rhs threads memory identify as out history solution glyphs rate",
-		"run":     "pair today guess dofs null coordinates tol stop iterations seconds trial-seconds rhs threads memory identify as out history solution strict",
+		"":        "pair today guess dofs null coordinates split tol stop iterations seconds trial-seconds rhs threads memory identify as out history solution glyphs rate",
+		"run":     "pair today guess dofs null coordinates split tol stop iterations seconds trial-seconds rhs threads memory identify as out history solution strict",
 		"facts":   "rhs threads memory identify as out",
 		"sample":  "out",
 		"methods": "measure threads",

@@ -18,6 +18,7 @@ const (
 	NeedsDiagonal                   // the diagonal, every entry nonzero
 	NeedsTranspose                  // Aᵀ x
 	NeedsTransposeM                 // M⁻ᵀ x
+	NeedsSplit                      // two blocks of unknowns: zeros on the diagonal, or told
 )
 
 // Assume is what a method's theory takes for granted. A pairing is run all

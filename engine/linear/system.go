@@ -35,6 +35,9 @@ type System struct {
 	// rigid motions, for multilevel methods; nil: the constant, one for each
 	// unknown of a node.
 	NearNull [][]float64
+	// Second marks the unknowns of the second block of a saddle system (length
+	// n), such as pressures; nil: those with a zero on the diagonal.
+	Second []bool
 	// Labels names the rows, one each, as their owner does; nil: by number.
 	Labels []string
 	// Fields names the fields of unknowns, and FieldOf the field of each row

@@ -21,6 +21,7 @@ var Catalogue = []Entry{
 	spaiEntry,
 	polyEntry,
 	rasEntry,
+	schurEntry,
 	givenEntry,
 	ownFactorsEntry,
 	ownSolveEntry,

@@ -19,20 +19,25 @@ var ownSolveEntry = Entry{
 	Build:       buildOwnSolve,
 }
 
-// buildOwnSolve reads M and factorises it: by Cholesky's method where M is
-// symmetric and that goes through, else as LU.
+// buildOwnSolve reads M and factorises it.
 func buildOwnSolve(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 	m, err := own(s, v.Path("file"))
 	if err != nil {
 		return nil, trace.BuildNotes{}, err
 	}
-	mine := linear.System{A: m}
-	if m.ExactlySymmetric() {
-		f, notes, err := buildCholesky(ctx, mine, v, progress)
+	return buildDirect(ctx, m, v, progress)
+}
+
+// buildDirect factorises a matrix completely: by Cholesky's method where it is
+// symmetric and that goes through, else as LU.
+func buildDirect(ctx context.Context, a *linear.CSR, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
+	s := linear.System{A: a}
+	if a.ExactlySymmetric() {
+		f, notes, err := buildCholesky(ctx, s, v, progress)
 		var broke *Breakdown
 		if !errors.As(err, &broke) {
 			return f, notes, err
 		}
 	}
-	return buildLU(ctx, mine, v, progress)
+	return buildLU(ctx, s, v, progress)
 }

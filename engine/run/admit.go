@@ -13,6 +13,7 @@ type Have struct {
 	transpo  bool
 	zeroDiag int // rows whose diagonal entry is zero or missing
 	zeroRow  int // the first of them
+	split    bool // the unknowns fall into two blocks
 }
 
 // Order returns the order of the system.
@@ -25,6 +26,7 @@ func Offers(s linear.System) Have {
 	if h.matrix == nil {
 		return h
 	}
+	h.split = s.Second != nil
 	d := make([]float64, h.n)
 	h.matrix.Diagonal(d)
 	for i := h.n - 1; i >= 0; i-- {
@@ -33,6 +35,7 @@ func Offers(s linear.System) Have {
 			h.zeroRow = i
 		}
 	}
+	h.split = h.split || h.zeroDiag > 0 && h.zeroDiag < h.n
 	return h
 }
 
@@ -65,6 +68,8 @@ func lacking(name string, needs linear.Has, h Have) string {
 	switch {
 	case needs&linear.NeedsEntries != 0 && h.matrix == nil:
 		return name + " needs the entries of A; only products are given"
+	case needs&linear.NeedsSplit != 0 && !h.split:
+		return name + " needs two blocks of unknowns: some zeros on the diagonal, or --split FILE"
 	case needs&linear.NeedsTranspose != 0 && !h.transpo:
 		return name + " needs products with the transpose"
 	case needs&linear.NeedsDiagonal != 0 && h.zeroDiag > 0:
