@@ -33,7 +33,7 @@ func curvature(f *inspect.Facts, h trace.History, e trace.Event) Finding {
 	rows, part := carriers(e.Rows)
 	g := Finding{Weight: Blocker, Certainty: inspect.Proved, Subject: h.Pairing,
 		Claim: fmt.Sprintf("A has a negative eigenvalue, at most %s, carried %.0f %% by %s (met at it %d)",
-			num(e.Value), 100*part, list(rows, 6), e.Iter),
+			num(e.Value), 100*part, f.Names.List(rows, 6), e.Iter),
 		Advice: "look at these rows for a wrong sign, a missing support or a load past its limit; until then minres applies, cg does not",
 		Try:    instead(f),
 		Evidence: []Evidence{

@@ -48,9 +48,6 @@ type Case struct {
 	Tol    float64
 	StopBy string  // the stopping rule of the session
 	Guess  float64 // ‖b−Ax₀‖/‖b‖ when a guess was given; NaN otherwise
-	// Row names a row (from 0) as screens and reports do: "row 4321", with the
-	// label its owner gave it where there is one. Nil: by number alone.
-	Row func(int) string
 }
 
 // Rule is one entry of the catalogue.

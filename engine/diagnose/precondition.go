@@ -61,7 +61,7 @@ var pivots = Rule{"pivot", func(c Case) (out []Finding) {
 		b := h.Notes.Broke[0]
 		_, solver, m := cut(h.Pairing)
 		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim:    fmt.Sprintf("%s breaks down in %s with pivot %s", m, name(b.Row), num(b.Value)),
+			Claim:    fmt.Sprintf("%s breaks down in %s with pivot %s", m, c.name(b.Row), num(b.Value)),
 			Evidence: []Evidence{{Quantity: "pivot", Value: b.Value, Iteration: none, Rows: []int{b.Row}}}}
 		if h.Notes.Shift > 0 {
 			f.Claim += fmt.Sprintf("; it stands with A + %s diag(A), found in %d attempts",

@@ -29,7 +29,7 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 	}
 	return []Finding{{Weight: Drag, Certainty: inspect.Measured, Subject: OnSystem,
 		Claim: fmt.Sprintf("rows differ in size by %s (%s to %s): a norm over all of them hides the small ones",
-			num(span.Max/span.Min), name(rows[0]), name(rows[1])),
+			num(span.Max/span.Min), c.name(rows[0]), c.name(rows[1])),
 		Advice:   "scale the system, or use jacobi at the least",
 		Try:      try,
 		Evidence: []Evidence{{Quantity: "largest over smallest row", Value: span.Max / span.Min, Iteration: none, Rows: rows}}}}

@@ -13,6 +13,12 @@ const none = -1
 // num prints a number in three digits.
 func num(x float64) string { return fmt.Sprintf("%.3g", x) }
 
+// name tells a row as its owner does: "row 4321 = 1042:rz", or by number.
+func (c Case) name(row int) string { return c.Facts.Names.Row(row) }
+
+// list tells at most k rows so.
+func (c Case) list(rows []int, k int) string { return c.Facts.Names.List(rows, k) }
+
 // name prints a row as the file counts it.
 func name(row int) string { return fmt.Sprintf("row %d", row+1) }
 

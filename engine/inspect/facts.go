@@ -49,6 +49,9 @@ type Facts struct {
 	N          int
 	Entries    int  // after symmetric expansion and summing, explicit zeros included
 	MatrixFree bool // no entries: most facts stay unknown
+	// Names are those its owner gave the rows; every row that is told to a
+	// person is told through them.
+	Names linear.RowNames
 
 	Format        string
 	Stored        int

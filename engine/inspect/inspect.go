@@ -63,7 +63,7 @@ const (
 // heading fills in what needs no look at the entries.
 func (l *look) heading() error {
 	f, s := &l.f, l.s
-	f.Name, f.N, f.MatrixFree = s.Name, s.N(), l.a == nil
+	f.Name, f.N, f.MatrixFree, f.Names = s.Name, s.N(), l.a == nil, s.RowNames()
 	f.Format, f.Stored, f.Duplicates = s.Source.Format, s.Source.Stored, s.Source.Duplicates
 	f.ExplicitZeros = s.Source.ExplicitZeros
 	f.Notes = append([]string(nil), s.Source.Notes...)
