@@ -94,7 +94,7 @@ func (l *look) verify(a *linear.CSR, side *Fact, sign string) error {
 	case r.Negative:
 		l.negativeFound(r, side, sign)
 	case side.Answer == "" || side.Answer == Unknown:
-		*side = unknown("Cholesky of %sA breaks at %s, yet no negative curvature beyond rounding was found", sign, rowWord(r.Row))
+		*side = unknown("Cholesky of %sA breaks at %s, yet no negative curvature beyond rounding was found", sign, l.f.Names.Both(r.Row))
 		side.Rows = []int{r.Row}
 	}
 	return nil
@@ -102,7 +102,7 @@ func (l *look) verify(a *linear.CSR, side *Fact, sign string) error {
 
 // negativeFound states that a vector of negative curvature was found.
 func (l *look) negativeFound(r direct.Definiteness, side *Fact, sign string) {
-	no := fact(No, Proved, r.Rayleigh, r.Rows, "a vector x, carried by %s, has %sx'Ax/x'x = %.3g, beyond its rounding bound", rowWord(r.Rows[:min(2, len(r.Rows))]...), sign, r.Rayleigh)
+	no := fact(No, Proved, r.Rayleigh, r.Rows, "a vector x, carried by %s, has %sx'Ax/x'x = %.3g, beyond its rounding bound", l.f.Names.Both(r.Rows[:min(2, len(r.Rows))]...), sign, r.Rayleigh)
 	if !r.WithinDelta {
 		no = l.doubt(no, "yours may not be indefinite")
 	}

@@ -61,10 +61,10 @@ func (l *look) indefinite(w minor, rows top, bad int, firm bool) {
 		}
 	}
 	no := fact(No, Proved, w.value, named, "%s negative, worst that of %s: a_ii a_jj - a_ij^2 is %.3g of |a_ii a_jj|",
-		count(bad, "2 x 2 principal minor is", "2 x 2 principal minors are"), rowWord(w.i, w.j), w.value)
+		count(bad, "2 x 2 principal minor is", "2 x 2 principal minors are"), l.f.Names.Both(w.i, w.j), w.value)
 	if math.IsInf(w.value, -1) {
 		no.Value = math.NaN()
-		no.Why = count(bad, "2 x 2 principal minor is", "2 x 2 principal minors are") + " negative, one of " + rowWord(w.i, w.j) + " with a zero on the diagonal"
+		no.Why = count(bad, "2 x 2 principal minor is", "2 x 2 principal minors are") + " negative, one of " + l.f.Names.Both(w.i, w.j) + " with a zero on the diagonal"
 	}
 	if !firm {
 		no = l.doubt(no, "yours may not be indefinite")

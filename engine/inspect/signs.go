@@ -34,10 +34,10 @@ func (l *look) diagonalSays(wrong int, rows top, sign string) Fact {
 	switch {
 	case wrong > 0:
 		return fact(No, Proved, float64(wrong), rows.list(), "%s on the diagonal, the largest in %s",
-			count(wrong, sign+" entry", sign+" entries"), rowWord(rows.rows[0]))
+			count(wrong, sign+" entry", sign+" entries"), l.f.Names.Both(rows.rows[0]))
 	case f.DiagZero+f.DiagMissing > 0:
 		return fact(No, Proved, float64(f.DiagZero+f.DiagMissing), l.zeroDiag.list(), "%s on the diagonal, first in %s",
-			count(f.DiagZero+f.DiagMissing, "zero", "zeros"), rowWord(l.zeroDiag.rows[0]))
+			count(f.DiagZero+f.DiagMissing, "zero", "zeros"), l.f.Names.Both(l.zeroDiag.rows[0]))
 	}
 	return Fact{}
 }

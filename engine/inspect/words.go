@@ -12,24 +12,6 @@ func (l *look) doubt(f Fact, could string) Fact {
 	return f
 }
 
-// rowWord prints rows as the file numbers them.
-func rowWord(rows ...int) string {
-	s := "row "
-	if len(rows) > 1 {
-		s = "rows "
-	}
-	for k, r := range rows {
-		switch {
-		case k > 0 && k == len(rows)-1:
-			s += " and "
-		case k > 0:
-			s += ", "
-		}
-		s += fmt.Sprint(r + 1)
-	}
-	return s
-}
-
 // count prints a number with its noun.
 func count(n int, one, many string) string {
 	if n == 1 {
