@@ -120,3 +120,27 @@ func TestYourOwnPreconditionersCanBeWrong(t *testing.T) {
 		}
 	}
 }
+
+// A preconditioner of the shifted system is the one built from A + σ diag A;
+// the answer is that of A.
+func TestShiftedPreconditioner(t *testing.T) {
+	s, err := read(context.Background(), "sample:kershaw", nil, 0, nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	a := *s.Matrix()
+	a.Val = append([]float64(nil), a.Val...)
+	for i := range a.NRows {
+		for k := a.Ptr[i]; k < a.Ptr[i+1]; k++ {
+			if int(a.Col[k]) == i {
+				a.Val[k] *= 1.3 // pivots stay positive (reference: Kershaw 1978, last pivot 1.2797 at 0.3)
+			}
+		}
+	}
+	v := ended(t, "sample:kershaw", Options{Pairs: []string{"shift:0.3/cg+ic:0", "cg+from:" + saved(t, "a.mtx", &a) + "/ic:0"}})
+	own, built := v.Trials[0].History, v.Trials[1].History
+	if own.Stop != trace.Converged || own.Iterations != built.Iterations || own.Notes.MinPivot != built.Notes.MinPivot || own.Notes.Shift != 0 {
+		t.Errorf("%s ends %s after %d iterations, smallest pivot %g; %s after %d, %g", own.Pairing, own.Stop, own.Iterations,
+			own.Notes.MinPivot, built.Pairing, built.Iterations, built.Notes.MinPivot)
+	}
+}

@@ -38,6 +38,9 @@ type System struct {
 	// Second marks the unknowns of the second block of a saddle system (length
 	// n), such as pressures; nil: those with a zero on the diagonal.
 	Second []bool
+	// Shift is added to the diagonal, relative to it, before a preconditioner
+	// is built; the system itself stays as it is.
+	Shift float64
 	// Labels names the rows, one each, as their owner does; nil: by number.
 	Labels []string
 	// Fields names the fields of unknowns, and FieldOf the field of each row

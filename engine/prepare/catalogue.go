@@ -12,6 +12,7 @@ var Catalogue = []Entry{
 	amdEntry,
 	ndEntry,
 	colourEntry,
+	shiftEntry,
 }
 
 // Lookup returns the preparation of that name.

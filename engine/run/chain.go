@@ -17,6 +17,7 @@ func chain(ctx context.Context, preps []Prep, s linear.System) (linear.System, p
 			return s, nil, err
 		}
 		carryNearNull(&next, s, b)
+		carrySecond(&next, s, b)
 		if back == nil {
 			back = b
 		} else {
@@ -64,5 +65,16 @@ func carryNearNull(next *linear.System, s linear.System, back prepare.Back) {
 		w := make([]float64, len(v))
 		back.Guess(w, v)
 		next.NearNull = append(next.NearNull, w)
+	}
+}
+
+// carrySecond takes the second block of a saddle system along.
+func carrySecond(next *linear.System, s linear.System, back prepare.Back) {
+	if s.Second == nil {
+		return
+	}
+	next.Second = make([]bool, len(s.Second))
+	for i := range next.Second {
+		next.Second[i] = s.Second[back.Row(i)]
 	}
 }

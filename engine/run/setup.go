@@ -6,6 +6,7 @@ import (
 
 	"dwindle/engine/krylov"
 	"dwindle/engine/linear"
+	"dwindle/engine/prepare"
 	"dwindle/engine/spectrum"
 	"dwindle/engine/trace"
 )
@@ -71,10 +72,13 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 
 // basis is the system that the preconditioner is built from.
 func (t *Trial) basis() (linear.System, error) {
-	if t.method.From == "" {
-		return t.prepared, nil
-	}
 	s := t.prepared
+	if t.method.From == "" {
+		if a := s.Matrix(); a != nil {
+			s.A = prepare.Shifted(a, s.Shift)
+		}
+		return s, nil
+	}
 	if s.Open == nil {
 		return s, fmt.Errorf("no file can be read here")
 	}
