@@ -55,7 +55,7 @@ func sizeRows(f *inspect.Facts) []factRow {
 	}
 	each := ""
 	if f.N > 0 {
-		each = fmt.Sprintf("%.1f a row, %s", float64(f.Entries)/float64(f.N), rangeText(f.RowEntries, value))
+		each = fmt.Sprintf("%.1f a row, %s", float64(f.Entries)/float64(f.N), rangeText(f.RowEntries, value, f))
 	}
 	rows = append(rows, factRow{"entries", count(f.Entries), "", each})
 	if f.Format != "" {
@@ -93,7 +93,7 @@ func answerRows(f *inspect.Facts) []factRow {
 		if l.fact.Answer == inspect.Unknown {
 			sure = ""
 		}
-		rows = append(rows, factRow{l.label, answer, sure, withRows(l.fact.Why, l.fact.Rows)})
+		rows = append(rows, factRow{l.label, answer, sure, withRows(l.fact.Why, l.fact.Rows, f)})
 	}
 	return rows
 }
@@ -105,19 +105,19 @@ func numberRows(f *inspect.Facts) []factRow {
 	}
 	rows := []factRow{
 		diagonalRow(f),
-		{"diagonal size", pair(f.Diag), "", decadesText(f.Diag)},
-		{"row norms", pair(f.RowNorm), "", decadesText(f.RowNorm)},
-		{"column norms", pair(f.ColNorm), "", decadesText(f.ColNorm)},
+		{"diagonal size", pair(f.Diag), "", decadesText(f.Diag, f)},
+		{"row norms", pair(f.RowNorm), "", decadesText(f.RowNorm, f)},
+		{"column norms", pair(f.ColNorm), "", decadesText(f.ColNorm, f)},
 		{"norms of A", sci(f.NormInf), "", fmt.Sprintf("max norm; Frobenius %s, one %s", sci(f.NormFro), sci(f.NormOne))},
 		{"asymmetry", sci(f.Asymmetry), "", "||A-A^T||_F / ||A||_F; decides nothing"},
-		{"Gershgorin", pair(f.Gershgorin), "", fmt.Sprintf("ends from rows %d and %d", f.Gershgorin.MinRow+1, f.Gershgorin.MaxRow+1)},
+		{"Gershgorin", pair(f.Gershgorin), "", fmt.Sprintf("ends from rows %s and %s", rowName(f.Gershgorin.MinRow, f), rowName(f.Gershgorin.MaxRow, f))},
 		{"dominant rows", share(f.Dominant, f.N), "", fmt.Sprintf("%s of them strictly", count(f.StrictlyDominant))},
 		{"components", count(f.Components), "", ""},
-		{"empty rows, columns", fmt.Sprintf("%d, %d", f.EmptyRowCount, f.EmptyColCount), "", withRows("", f.EmptyRows)},
+		{"empty rows, columns", fmt.Sprintf("%d, %d", f.EmptyRowCount, f.EmptyColCount), "", withRows("", f.EmptyRows, f)},
 	}
 	if f.Singletons > 0 {
 		rows = append(rows, factRow{"decoupled rows", count(f.Singletons), "",
-			withRows("diagonal "+pair(f.SingletonDiag)+", the others "+pair(f.RestDiag), f.SingletonRows)})
+			withRows("diagonal "+pair(f.SingletonDiag)+", the others "+pair(f.RestDiag), f.SingletonRows, f)})
 	}
 	return rows
 }
@@ -132,7 +132,7 @@ func diagonalRow(f *inspect.Facts) factRow {
 		answer = "all negative"
 	}
 	why := fmt.Sprintf("%d > 0, %d < 0, %d zero, %d missing", f.DiagPositive, f.DiagNegative, f.DiagZero, f.DiagMissing)
-	return factRow{"diagonal signs", answer, "", withRows(why, f.DiagRows)}
+	return factRow{"diagonal signs", answer, "", withRows(why, f.DiagRows, f)}
 }
 
 // rhsRows tell of the right-hand side.
@@ -148,17 +148,17 @@ func rhsRows(f *inspect.Facts) []factRow {
 func pair(r inspect.Range) string { return sci(r.Min) + " .. " + sci(r.Max) }
 
 // rangeText writes a range with the rows that attain its ends.
-func rangeText(r inspect.Range, number func(float64) string) string {
-	return fmt.Sprintf("min %s (row %d), max %s (row %d)", number(r.Min), r.MinRow+1, number(r.Max), r.MaxRow+1)
+func rangeText(r inspect.Range, number func(float64) string, f *inspect.Facts) string {
+	return fmt.Sprintf("min %s (row %s), max %s (row %s)", number(r.Min), rowName(r.MinRow, f), number(r.Max), rowName(r.MaxRow, f))
 }
 
 // decadesText says how far a range of magnitudes stretches, and in which
 // rows it ends.
-func decadesText(r inspect.Range) string {
+func decadesText(r inspect.Range, f *inspect.Facts) string {
 	if !(r.Min > 0) || !(r.Max >= r.Min) {
 		return ""
 	}
-	return fmt.Sprintf("%.1f decades, rows %d and %d", math.Log10(r.Max/r.Min), r.MinRow+1, r.MaxRow+1)
+	return fmt.Sprintf("%.1f decades, rows %s and %s", math.Log10(r.Max/r.Min), rowName(r.MinRow, f), rowName(r.MaxRow, f))
 }
 
 // share writes part of n in per cent.
@@ -169,17 +169,31 @@ func share(part, n int) string {
 	return fmt.Sprintf("%.0f %%", 100*float64(part)/float64(n))
 }
 
-// withRows adds row numbers, counted from 1, to a phrase.
-func withRows(text string, rows []int) string {
+// withRows adds row numbers, counted from 1, to a phrase, with the names that
+// facts know.
+func withRows(text string, rows []int, facts *inspect.Facts) string {
 	if len(rows) == 0 {
 		return text
 	}
 	words := make([]string, 0, 5)
 	for _, r := range rows[:min(len(rows), 4)] {
-		words = append(words, fmt.Sprint(r+1))
+		words = append(words, rowName(r, facts))
 	}
 	if len(rows) > 4 {
 		words = append(words, "...")
 	}
-	return strings.TrimPrefix(text+"; rows "+strings.Join(words, " "), "; ")
+	between := " "
+	if facts != nil && (facts.Names.Labels != nil || facts.Names.Fields != nil) {
+		between = ", "
+	}
+	return strings.TrimPrefix(text+"; rows "+strings.Join(words, between), "; ")
+}
+
+// rowName is the number of a row, counted from 1, with the name that facts
+// know.
+func rowName(row int, facts *inspect.Facts) string {
+	if facts == nil {
+		return fmt.Sprint(row + 1)
+	}
+	return facts.Names.Short(row)
 }

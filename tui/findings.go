@@ -8,6 +8,7 @@ import (
 
 	"dwindle/engine/choose"
 	"dwindle/engine/diagnose"
+	"dwindle/engine/inspect"
 )
 
 // findingsView is the screen of the findings and of the choice: a list, and
@@ -137,7 +138,7 @@ func (m *model) findingText(f diagnose.Finding, w int) []string {
 	if len(f.Evidence) > 0 {
 		lines = append(lines, "", "rests on")
 		for _, e := range f.Evidence {
-			lines = append(lines, paragraph(m.signs.clean(evidence(e)), 2, w)...)
+			lines = append(lines, paragraph(m.signs.clean(evidence(e, m.snap.Facts)), 2, w)...)
 		}
 	}
 	if f.Advice != "" {
@@ -150,8 +151,8 @@ func (m *model) findingText(f diagnose.Finding, w int) []string {
 	return lines
 }
 
-// evidence is one number behind a finding.
-func evidence(e diagnose.Evidence) string {
+// evidence is one number behind a finding, rows by the names that facts know.
+func evidence(e diagnose.Evidence, facts *inspect.Facts) string {
 	s := e.Quantity + "  " + value(e.Value)
 	if e.Unit != "" {
 		s += " " + e.Unit
@@ -159,7 +160,7 @@ func evidence(e diagnose.Evidence) string {
 	if e.Iteration >= 0 {
 		s += fmt.Sprintf("  at it %d", e.Iteration)
 	}
-	return withRows(s, e.Rows)
+	return withRows(s, e.Rows, facts)
 }
 
 // choiceText is the recommendation in full.

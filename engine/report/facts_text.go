@@ -16,7 +16,7 @@ func Facts(w io.Writer, d Document) error {
 	lines = append(lines, hang("FINGERPRINT ", orDash(plain(d.System.Fingerprint)), Width)...)
 	lines = appendPart(lines, factLines(d.Facts))
 	lines = appendPart(lines, measureLines(d.Facts))
-	lines = appendPart(lines, findingLines(d.SystemOnly().Findings))
+	lines = appendPart(lines, findingLines(d.SystemOnly().Findings, d.Facts))
 	return writeLines(w, lines)
 }
 
@@ -29,7 +29,7 @@ func factLines(f *inspect.Facts) []string {
 		}
 		label := fmt.Sprintf("%-18s%-8s%-10s", strings.ReplaceAll(n.name, "_", " "),
 			clip(plain(answer), 7), clip(plain(string(n.fact.Certainty)), 9))
-		lines = append(lines, hang(label, plain(n.fact.Why+rowText(n.fact.Rows)), Width)...)
+		lines = append(lines, hang(label, plain(n.fact.Why+rowText(n.fact.Rows, f)), Width)...)
 	}
 	return lines
 }
@@ -47,8 +47,8 @@ func measureLines(f *inspect.Facts) []string {
 	if f.Complete && !f.MatrixFree {
 		lines = append(lines,
 			fmt.Sprintf("entries a row     %.0f to %.0f, bandwidth %d", f.RowEntries.Min, f.RowEntries.Max, f.Bandwidth),
-			fmt.Sprintf("row norms         %s to %s (rows %d, %d)", sci(f.RowNorm.Min), sci(f.RowNorm.Max), f.RowNorm.MinRow+1, f.RowNorm.MaxRow+1),
-			fmt.Sprintf("column norms      %s to %s (columns %d, %d)", sci(f.ColNorm.Min), sci(f.ColNorm.Max), f.ColNorm.MinRow+1, f.ColNorm.MaxRow+1),
+			fmt.Sprintf("row norms         %s to %s (rows %s, %s)", sci(f.RowNorm.Min), sci(f.RowNorm.Max), rowName(f.RowNorm.MinRow, f), rowName(f.RowNorm.MaxRow, f)),
+			fmt.Sprintf("column norms      %s to %s (columns %s, %s)", sci(f.ColNorm.Min), sci(f.ColNorm.Max), rowName(f.ColNorm.MinRow, f), rowName(f.ColNorm.MaxRow, f)),
 			fmt.Sprintf("Gershgorin        %s to %s", sci(f.Gershgorin.Min), sci(f.Gershgorin.Max)),
 			fmt.Sprintf("norms of A        inf %s, 1 %s, Frobenius %s", sci(f.NormInf), sci(f.NormOne), sci(f.NormFro)))
 	}

@@ -73,7 +73,7 @@ func JSON(w io.Writer, d Document) error {
 		System:   toSystem(d),
 		Facts:    toFacts(d.Facts),
 		Trials:   toTrials(d.Trials),
-		Findings: toFindings(d.Findings),
+		Findings: toFindings(d.Findings, d.Facts),
 		Choice:   toChoice(d),
 		Elapsed:  number(d.Elapsed.Seconds()),
 	})

@@ -1,6 +1,9 @@
 package report
 
-import "dwindle/engine/diagnose"
+import (
+	"dwindle/engine/diagnose"
+	"dwindle/engine/inspect"
+)
 
 type findingJSON struct {
 	Rule      string         `json:"rule"`
@@ -14,27 +17,40 @@ type findingJSON struct {
 }
 
 type evidenceJSON struct {
-	Quantity  string `json:"quantity"`
-	Value     number `json:"value"`
-	Unit      string `json:"unit"`
-	Iteration *int   `json:"iteration"`
-	Rows      []int  `json:"rows"`
+	Quantity  string   `json:"quantity"`
+	Value     number   `json:"value"`
+	Unit      string   `json:"unit"`
+	Iteration *int     `json:"iteration"`
+	Rows      []int    `json:"rows"`
+	Labels    []string `json:"labels"` // of the rows; empty if none were given
 }
 
-func toFindings(fs []diagnose.Finding) []findingJSON {
+func toFindings(fs []diagnose.Finding, facts *inspect.Facts) []findingJSON {
 	out := make([]findingJSON, 0, len(fs))
 	for _, f := range fs {
 		j := findingJSON{Rule: tame(f.Rule), Weight: string(f.Weight), Certainty: string(f.Certainty),
 			Subject: tame(f.Subject), Claim: tame(f.Claim), Advice: tame(f.Advice), Try: tameAll(f.Try),
 			Evidence: []evidenceJSON{}}
 		for _, e := range f.Evidence {
-			k := evidenceJSON{tame(e.Quantity), number(e.Value), tame(e.Unit), nil, fromOne(e.Rows)}
+			k := evidenceJSON{tame(e.Quantity), number(e.Value), tame(e.Unit), nil, fromOne(e.Rows), labels(e.Rows, facts)}
 			if e.Iteration >= 0 {
 				k.Iteration = &e.Iteration
 			}
 			j.Evidence = append(j.Evidence, k)
 		}
 		out = append(out, j)
+	}
+	return out
+}
+
+// labels are those of rows, never nil; none where the rows have no labels.
+func labels(rows []int, facts *inspect.Facts) []string {
+	out := []string{}
+	if facts == nil || facts.Names.Labels == nil {
+		return out
+	}
+	for _, r := range rows {
+		out = append(out, tame(facts.Names.Label(r)))
 	}
 	return out
 }

@@ -48,7 +48,7 @@ func findingList(d Document) []string {
 	for _, f := range leading(d.Findings) {
 		lines = append(lines, "- **"+mark(string(f.Weight))+"** "+mark(findingText(f)))
 		for _, e := range f.Evidence {
-			lines = append(lines, "  - "+mark(evidenceText(e)))
+			lines = append(lines, "  - "+mark(evidenceText(e, d.Facts)))
 		}
 		if f.Advice != "" {
 			lines = append(lines, "  - advice: "+mark(f.Advice))

@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"dwindle/engine/diagnose"
+	"dwindle/engine/inspect"
 	"dwindle/engine/trace"
 )
 
@@ -17,7 +18,7 @@ func Text(w io.Writer, d Document) error {
 	lines := Head(d)
 	lines = appendPart(lines, Chart(d))
 	lines = appendPart(lines, trialLines(d))
-	lines = appendPart(lines, findingLines(d.Findings))
+	lines = appendPart(lines, findingLines(d.Findings, d.Facts))
 	lines = appendPart(lines, choiceLines(d))
 	lines = appendPart(lines, settingLines(d))
 	return writeLines(w, lines)
@@ -83,8 +84,8 @@ func numbers(t trace.History) [6]string {
 		seconds(t.SetupTime.Seconds()), seconds(t.OwnTime.Seconds())}
 }
 
-// findingLines tells every finding in full.
-func findingLines(fs []diagnose.Finding) []string {
+// findingLines tells every finding in full, rows by the names that facts know.
+func findingLines(fs []diagnose.Finding, facts *inspect.Facts) []string {
 	if len(fs) == 0 {
 		return nil
 	}
@@ -92,7 +93,7 @@ func findingLines(fs []diagnose.Finding) []string {
 	for _, f := range leading(fs) {
 		lines = append(lines, hang("- ", string(f.Weight)+" "+findingText(f), Width)...)
 		for _, e := range f.Evidence {
-			lines = append(lines, hang("    ", evidenceText(e), Width)...)
+			lines = append(lines, hang("    ", evidenceText(e, facts), Width)...)
 		}
 		if f.Advice != "" {
 			lines = append(lines, hang("  advice: ", plain(f.Advice), Width)...)
@@ -104,7 +105,7 @@ func findingLines(fs []diagnose.Finding) []string {
 	return lines
 }
 
-func evidenceText(e diagnose.Evidence) string {
+func evidenceText(e diagnose.Evidence, facts *inspect.Facts) string {
 	s := e.Quantity + " = -"
 	if finite(e.Value) {
 		s = fmt.Sprintf("%s = %.6g", e.Quantity, e.Value)
@@ -115,26 +116,42 @@ func evidenceText(e diagnose.Evidence) string {
 	if e.Iteration >= 0 {
 		s += fmt.Sprintf(", iteration %d", e.Iteration)
 	}
-	return plain(s + rowText(e.Rows))
+	return plain(s + rowText(e.Rows, facts))
 }
 
-// rowText lists rows, counted from 1; many are cut short.
-func rowText(rows []int) string {
+// rowText lists rows, counted from 1, with the names that facts know; many are
+// cut short.
+func rowText(rows []int, facts *inspect.Facts) string {
 	const most = 8
 	if len(rows) == 0 {
 		return ""
 	}
-	s := ", row"
+	s, comma := ", row", ""
 	if len(rows) > 1 {
 		s += "s"
+	}
+	if facts != nil && (facts.Names.Labels != nil || facts.Names.Fields != nil) {
+		comma = ","
 	}
 	for i, r := range rows {
 		if i == most {
 			return s + fmt.Sprintf(" and %d more", len(rows)-most)
 		}
-		s += fmt.Sprintf(" %d", r+1)
+		if i > 0 {
+			s += comma
+		}
+		s += " " + rowName(r, facts)
 	}
 	return s
+}
+
+// rowName is the number of a row, counted from 1, with the name that facts
+// know.
+func rowName(row int, facts *inspect.Facts) string {
+	if facts == nil {
+		return fmt.Sprint(row + 1)
+	}
+	return facts.Names.Short(row)
 }
 
 // choiceLines gives the ranking with what it rests on.
