@@ -1,15 +1,32 @@
 package run
 
-import "dwindle/engine/linear"
+import (
+	"context"
+	"math"
 
-// counted counts the uses of what it wraps and keeps its abilities.
+	"dwindle/engine/linear"
+)
+
+// counted counts the uses of what it wraps and keeps its abilities. While a
+// context is set and done it answers with a number that is not one, which
+// every method takes for the end: so a long Begin can be cancelled.
 type counted struct {
 	inner linear.Applier
 	n     int // order
 	uses  uint32
+	ctx   context.Context // during Begin; nil afterwards
 }
 
-func (c *counted) Apply(dst, x []float64) { c.uses++; c.inner.Apply(dst, x) }
+func (c *counted) Apply(dst, x []float64) {
+	c.uses++
+	if c.cancelled() {
+		dst[0] = math.NaN()
+		return
+	}
+	c.inner.Apply(dst, x)
+}
+
+func (c *counted) cancelled() bool { return c.ctx != nil && c.ctx.Err() != nil }
 
 func (c *counted) Dims() (rows, cols int) { return c.n, c.n }
 
@@ -18,6 +35,10 @@ func (c *counted) Unwrap() any { return c.inner }
 // ApplyDot counts and passes on; As finds it only where inner has it.
 func (c *counted) ApplyDot(dst, x []float64) float64 {
 	c.uses++
+	if c.cancelled() {
+		dst[0] = math.NaN()
+		return math.NaN()
+	}
 	return linear.ApplyDot(c.inner, dst, x)
 }
 

@@ -28,7 +28,7 @@ func (t *Trial) setUp(parent context.Context) {
 	t.mu.Unlock()
 	switch {
 	case !live:
-	case err != nil && ctx.Err() != nil:
+	case ctx.Err() != nil:
 		t.solver = nil
 		t.end(trace.Cancelled, "cancelled while setting up")
 	case err != nil:
@@ -60,10 +60,11 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 		return trace.Reading{}, err
 	}
 	n := t.sys.N()
-	t.a, t.m = &counted{inner: t.products(), n: n}, &counted{inner: m, n: n}
+	t.a, t.m = &counted{inner: t.products(), n: n, ctx: ctx}, &counted{inner: m, n: n, ctx: ctx}
 	guess := t.prepared.Guess
 	solver := t.method.Solver.New(t.method.SolverValues)
 	r, err := solver.Begin(krylov.Problem{A: t.a, M: t.m, B: t.prepared.B, X: guess, Near: t.prepared.NearNull})
+	t.a.ctx, t.m.ctx = nil, nil
 	if err == nil {
 		t.solver = solver
 	}
