@@ -49,6 +49,7 @@ func (s *Session) limits() run.Limits {
 	if l.Iterations == 0 {
 		l.Iterations = min(10*s.sys.N(), 100_000)
 	}
+	l.FieldTol, _ = fieldTols(s.sys, s.opt) // checked when the system was completed
 	if u := s.facts.Unreachable; u.Answer == inspect.Yes {
 		l.Unreachable = u.Value
 	}

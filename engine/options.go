@@ -113,6 +113,11 @@ func (o Options) Check() error {
 	case o.Memory < 0:
 		return bad("--memory must not be negative")
 	}
+	for _, text := range o.FieldTols {
+		if _, _, err := fieldTol(text); err != nil {
+			return err
+		}
+	}
 	for _, p := range append([]string{o.Today}, o.Pairs...) {
 		if p == "" {
 			continue

@@ -46,7 +46,8 @@ func generate(spec string, memory int64) (linear.System, error) {
 	return s, err
 }
 
-// complete gives the system its right-hand side and guess, as the options ask.
+// complete gives the system its right-hand side, names and guess, as the
+// options ask.
 func complete(s *linear.System, opt Options) error {
 	n := s.N()
 	if err := setRHS(s, opt.RHS, n); err != nil {
@@ -54,6 +55,12 @@ func complete(s *linear.System, opt Options) error {
 	}
 	if linear.NormInf(s.B) != linear.NormInf(s.B) || math.IsInf(linear.NormInf(s.B), 0) {
 		return badOption("the right-hand side holds a number that is not finite")
+	}
+	if err := setNames(s, opt); err != nil {
+		return err
+	}
+	if _, err := fieldTols(*s, opt); err != nil {
+		return err
 	}
 	if err := setSplit(s, opt.Split, n); err != nil {
 		return err

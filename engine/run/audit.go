@@ -54,6 +54,7 @@ type audit struct {
 	xInf, x2 float64
 	rInf     float64
 	normal   float64 // ‖Aᵀr‖₂/(‖A‖_F‖r‖₂); NaN where not asked
+	fields   []trace.Field
 }
 
 // audit measures b−Ax in the user's own units and ordering. What it uses of
@@ -65,6 +66,7 @@ func (t *Trial) audit(normal bool) audit {
 	var a audit
 	a.true2 = linear.Residual(s.r, t.sys.A, s.x, t.sys.B)
 	a.rInf, a.xInf, a.x2 = linear.NormInf(s.r), linear.NormInf(s.x), linear.Norm2(s.x)
+	a.fields = t.fieldResiduals()
 	a.ownTrue = t.inOwnNorm(a.true2)
 	a.normal = math.NaN()
 	if normal {
@@ -133,13 +135,16 @@ func (t *Trial) normalResidual(true2 float64) float64 {
 
 // componentwise returns max |r_i|/(|A||x|+|b|)_i (Oettli and Prager 1964) for
 // the residual and iterate in the scratch, with the rows that exceed limit:
-// how many, and the worst.
-func (t *Trial) componentwise(limit float64) (worst float64, over int, rows []trace.RowShare) {
+// how many, and the worst. The largest of each field goes into fields.
+func (t *Trial) componentwise(limit float64, fields []trace.Field) (worst float64, over int, rows []trace.RowShare) {
 	m := t.sys.Matrix()
 	if m == nil {
 		return math.NaN(), 0, nil
 	}
 	s := t.scratch
+	for f := range fields {
+		fields[f].Componentwise = 0
+	}
 	for i := range s.r {
 		cols, vals := m.Row(i)
 		size := math.Abs(t.sys.B[i])
@@ -151,6 +156,10 @@ func (t *Trial) componentwise(limit float64) (worst float64, over int, rows []tr
 			e = math.Min(r/size, 1)
 		}
 		worst = math.Max(worst, e)
+		if fields != nil {
+			f := &fields[t.sys.FieldOf[i]]
+			f.Componentwise = math.Max(f.Componentwise, e)
+		}
 		if e > limit {
 			over++
 			rows = keepLargest(rows, trace.RowShare{Row: i, Share: e})

@@ -45,9 +45,9 @@ func (t *Trial) judge(r trace.Reading, rec trace.Record, own float64, a *audit) 
 	case r.Done:
 		t.judgeDone(r)
 	case iter >= t.limits.Iterations:
-		t.end(trace.IterationLimit, fmt.Sprintf("%d iterations", iter))
+		t.end(trace.IterationLimit, fmt.Sprintf("%d iterations", iter)+a.fieldWords())
 	case t.limits.Seconds > 0 && t.hist.OwnTime >= time.Duration(t.limits.Seconds*1e9):
-		t.end(trace.TimeLimit, fmt.Sprintf("%.3g s of own time", t.hist.OwnTime.Seconds()))
+		t.end(trace.TimeLimit, fmt.Sprintf("%.3g s of own time", t.hist.OwnTime.Seconds())+a.fieldWords())
 	}
 }
 
@@ -68,7 +68,7 @@ func (t *Trial) judgeAudit(rec trace.Record, own float64, a *audit) {
 	switch {
 	case math.IsNaN(a.true2) || math.IsInf(a.true2, 0):
 		t.end(trace.Diverged, "the true residual is not a finite number")
-	case passed <= tol && !(t.limits.Unreachable > tol):
+	case passed <= tol && !(t.limits.Unreachable > tol) && a.unsolvedField() == nil:
 		t.end(trace.Converged, "")
 	case t.limits.Unreachable > tol && a.normal <= tol && rec.Audit > tol:
 		t.end(trace.LeastSquares, fmt.Sprintf("b is not in the range of A; the residual %.3g is the smallest there is", rec.Audit))
@@ -78,7 +78,7 @@ func (t *Trial) judgeAudit(rec trace.Record, own float64, a *audit) {
 	if t.ended() {
 		return
 	}
-	if own <= tol && !e.falseStop {
+	if own <= tol && passed > tol && !e.falseStop {
 		e.falseStop, e.falseValue, e.falseIter = true, rec.Audit, int(rec.Iter)
 		t.event(trace.Event{Iter: rec.Iter, Kind: trace.FalseStop, Quantity: "true relative residual", Value: rec.Audit, Scale: rec.Residual})
 	}
@@ -169,7 +169,7 @@ func (t *Trial) end(stop trace.Stop, reason string) {
 func (t *Trial) finalAudit() {
 	t.look(true)
 	a := t.audit(true)
-	worst, count, rows := t.componentwise(math.Sqrt(t.limits.Target.Tol))
+	worst, count, rows := t.componentwise(math.Sqrt(t.limits.Target.Tol), a.fields)
 	t.mu.Lock()
 	defer t.mu.Unlock()
 	h := &t.hist

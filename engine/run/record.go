@@ -75,7 +75,7 @@ func (t *Trial) noteAudit(a *audit, rec trace.Record, iter int) {
 	h.BestTrue = math.Min(h.BestTrue, rec.Audit)
 	h.Backward = over(a.rInf, t.sizes.aInf*a.xInf+t.sizes.bInf)
 	h.WouldStop = t.marks.audited(iter, rec.Audit)
-	h.Normal = a.normal
+	h.Normal, h.Fields = a.normal, a.fields
 	if floor := unit * t.sizes.a2 * a.x2 / t.sizes.b; !(floor <= h.Floor) {
 		h.Floor = floor // u‖A‖max‖x_j‖/‖b‖ (Greenbaum 1997), an upper estimate
 	}

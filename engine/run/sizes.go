@@ -9,13 +9,14 @@ import (
 
 // sizes are norms of the system that audits are held against.
 type sizes struct {
-	b, bInf       float64 // ‖b‖₂, ‖b‖∞
-	aInf, fro, a2 float64 // ‖A‖∞, ‖A‖_F, and √(‖A‖₁‖A‖∞) ≥ ‖A‖₂; NaN for a matrix-free A
+	b, bInf       float64   // ‖b‖₂, ‖b‖∞
+	fields        []float64 // ‖b_f‖₂ of each field of unknowns; nil without fields
+	aInf, fro, a2 float64   // ‖A‖∞, ‖A‖_F, and √(‖A‖₁‖A‖∞) ≥ ‖A‖₂; NaN for a matrix-free A
 }
 
 // measure finds the norms that audits are held against.
 func measure(s linear.System) sizes {
-	z := sizes{b: linear.Norm2(s.B), bInf: linear.NormInf(s.B)}
+	z := sizes{b: linear.Norm2(s.B), bInf: linear.NormInf(s.B), fields: fieldNorms(s, s.B)}
 	if z.b == 0 {
 		z.b = 1 // a zero right-hand side: residuals are absolute
 	}

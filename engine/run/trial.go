@@ -57,6 +57,9 @@ type Limits struct {
 	Seconds     float64 // own time; 0 is none
 	Unreachable float64 // part of b known to be out of A's range, relative to ‖b‖; 0 if none known
 	Delta       float64 // what the printed digits leave open in an entry
+	// FieldTol is what the residual of each field must come down to as well,
+	// 0 for nothing; nil where no field is asked for.
+	FieldTol []float64
 }
 
 // History returns a consistent copy that shares the append-only records.
