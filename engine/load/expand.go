@@ -19,7 +19,7 @@ func (c *collector) matrix(ctx context.Context) (a *linear.CSR, merged int, err 
 	next := make([][]int, len(groups))
 	linear.Parallel(len(groups), func(g int) { next[g] = c.countRows(groups[g]) })
 	a = &linear.CSR{NRows: c.n, NCols: c.n, Ptr: rowStarts(next, c.n)}
-	a.Col, a.Val = bulk[int32](a.Ptr[c.n]), bulk[float64](a.Ptr[c.n])
+	a.Col, a.Val = linear.Bulk[int32](a.Ptr[c.n]), linear.Bulk[float64](a.Ptr[c.n])
 	linear.Parallel(len(groups), func(g int) {
 		for _, p := range groups[g] {
 			if ctx.Err() == nil {
@@ -52,7 +52,7 @@ func (c *collector) groups(threads int) (groups [][]piece) {
 
 // countRows counts what each row takes of a group.
 func (c *collector) countRows(group []piece) []int {
-	rows := bulk[int](c.n)
+	rows := linear.Bulk[int](c.n)
 	for _, p := range group {
 		for _, e := range p {
 			rows[e.row]++
@@ -67,7 +67,7 @@ func (c *collector) countRows(group []piece) []int {
 // rowStarts turns the counts of the groups into the places where each begins
 // to fill a row, and returns where the rows start.
 func rowStarts(next [][]int, n int) (ptr []int) {
-	ptr = bulk[int](n + 1)
+	ptr = linear.Bulk[int](n + 1)
 	at := 0
 	for r := range n {
 		for _, rows := range next {

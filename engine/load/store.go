@@ -1,6 +1,10 @@
 package load
 
-import "sync"
+import (
+	"sync"
+
+	"dwindle/engine/linear"
+)
 
 // slabLen is how many entries memory is taken for at a time.
 const slabLen = 1 << 20
@@ -17,7 +21,7 @@ func (s *store) piece(n int) piece {
 	s.mu.Lock()
 	defer s.mu.Unlock()
 	if n > len(s.free) {
-		s.free = bulk[entry](max(n, min(s.expect, slabLen)))
+		s.free = linear.Bulk[entry](max(n, min(s.expect, slabLen)))
 	}
 	p := s.free[:0:n]
 	s.free = s.free[n:]

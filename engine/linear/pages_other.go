@@ -1,6 +1,6 @@
 //go:build !linux
 
-package load
+package linear
 
 // largePages does nothing here.
 func largePages([]byte) {}

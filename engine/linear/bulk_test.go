@@ -1,11 +1,11 @@
-package load
+package linear
 
 import "testing"
 
 // Rooms of all sizes hold zeros and take what is written, to the last place.
 func TestBulk(t *testing.T) {
 	for _, n := range []int{0, 1, 1000, 1 << 18, 1<<20 + 3} {
-		s := bulk[float64](n)
+		s := Bulk[float64](n)
 		if len(s) != n {
 			t.Fatalf("%d places; want %d", len(s), n)
 		}
