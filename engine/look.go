@@ -114,7 +114,7 @@ func (s *Session) document() report.Document {
 	defer s.mu.Unlock()
 	v := s.look()
 	d := report.Document{Version: s.opt.Version, Command: s.opt.Command, Machine: v.Machine, Settings: v.Settings,
-		System: v.System, Facts: v.Facts, Findings: v.Findings, Choice: v.Choice, Elapsed: v.Elapsed}
+		System: v.System, Facts: v.Facts, Toolchain: toolchain(), Findings: v.Findings, Choice: v.Choice, Elapsed: v.Elapsed}
 	for _, t := range v.Trials {
 		d.Trials = append(d.Trials, t.History)
 	}

@@ -117,3 +117,6 @@ func cpuName() string {
 	}
 	return runtime.GOARCH
 }
+
+// toolchain is what built the program and for which machine.
+func toolchain() string { return runtime.Version() + " " + runtime.GOOS + "/" + runtime.GOARCH }

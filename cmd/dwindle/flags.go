@@ -57,7 +57,7 @@ func (f *flags) trials(c *cobra.Command, seconds float64) {
 // results adds the options that decide what is written where.
 func (f *flags) results(c *cobra.Command) {
 	s := c.Flags()
-	s.StringVar(&f.as, "as", "text", "`FORM` of the result: text, json, csv or md")
+	s.StringVar(&f.as, "as", "text", "`FORM` of the result: text, json, csv, md, html or ticket")
 	s.StringVar(&f.out, "out", "", "save the result to `FILE` (default: a new file in the state folder)")
 	s.StringVar(&f.history, "history", "", "write the history of all trials to `FILE.csv`")
 	s.StringVar(&f.solution, "solution", "", "write the solution to `FILE` as a Matrix Market array")

@@ -26,6 +26,8 @@ var formats = []form{
 	{"json", "json", report.JSON},
 	{"csv", "csv", report.CSV},
 	{"md", "md", report.Markdown},
+	{"html", "html", report.HTML},
+	{"ticket", "txt", report.Ticket},
 }
 
 func forms() []string {

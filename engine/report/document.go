@@ -13,17 +13,18 @@ import (
 
 // Document is everything a report can say.
 type Document struct {
-	Version  string
-	Command  string // the exact command to repeat the run
-	Machine  Machine
-	Settings Settings
-	System   System
-	Facts    *inspect.Facts
-	Trials   []trace.History
-	Findings []diagnose.Finding
-	Choice   choose.Choice
-	Elapsed  time.Duration
-	Solution []float64 // of the chosen pairing, or of the best trial; nil if none
+	Version   string
+	Command   string // the exact command to repeat the run
+	Machine   Machine
+	Settings  Settings
+	System    System
+	Facts     *inspect.Facts
+	Trials    []trace.History
+	Findings  []diagnose.Finding
+	Choice    choose.Choice
+	Elapsed   time.Duration
+	Toolchain string    // what built the program, such as "go1.26.8 linux/amd64"
+	Solution  []float64 // of the chosen pairing, or of the best trial; nil if none
 }
 
 // Machine is where it ran. Nothing in it names the host or the user.

@@ -15,7 +15,8 @@ func Facts(w io.Writer, d Document) error {
 	lines := hang("SYSTEM      ", systemText(d), Width)
 	lines = append(lines, hang("FINGERPRINT ", orDash(plain(d.System.Fingerprint)), Width)...)
 	lines = appendPart(lines, factLines(d.Facts))
-	lines = appendPart(lines, measureLines(d.Facts))
+	lines = appendPart(lines, itemLines(measureItems(d.Facts)))
+	lines = appendPart(lines, itemLines(studyItems(d.Facts)))
 	lines = appendPart(lines, findingLines(d.SystemOnly().Findings, d.Facts))
 	return writeLines(w, lines)
 }
@@ -34,30 +35,35 @@ func factLines(f *inspect.Facts) []string {
 	return lines
 }
 
-// measureLines are the numbers that are no yes-or-no facts.
-func measureLines(f *inspect.Facts) []string {
+// measureItems are the numbers that are no yes-or-no facts.
+func measureItems(f *inspect.Facts) []labelled {
 	if f == nil {
 		return nil
 	}
-	lines := []string{
-		"format            " + orDash(plain(f.Format)),
-		fmt.Sprintf("stored            %d, of them %d duplicates summed, %d zeros", f.Stored, f.Duplicates, f.ExplicitZeros),
-		fmt.Sprintf("right-hand side   %s, 2-norm %s", orDash(plain(string(f.RHS))), sci(f.RHSNorm)),
+	items := []labelled{
+		{"format", orDash(f.Format)},
+		{"stored", fmt.Sprintf("%d, of them %d duplicates summed, %d zeros", f.Stored, f.Duplicates, f.ExplicitZeros)},
+		{"right-hand side", fmt.Sprintf("%s, 2-norm %s", orDash(string(f.RHS)), sci(f.RHSNorm))},
 	}
 	if f.Complete && !f.MatrixFree {
-		lines = append(lines,
-			fmt.Sprintf("entries a row     %.0f to %.0f, bandwidth %d", f.RowEntries.Min, f.RowEntries.Max, f.Bandwidth),
-			fmt.Sprintf("row norms         %s to %s (rows %s, %s)", sci(f.RowNorm.Min), sci(f.RowNorm.Max), rowName(f.RowNorm.MinRow, f), rowName(f.RowNorm.MaxRow, f)),
-			fmt.Sprintf("column norms      %s to %s (columns %s, %s)", sci(f.ColNorm.Min), sci(f.ColNorm.Max), rowName(f.ColNorm.MinRow, f), rowName(f.ColNorm.MaxRow, f)),
-			fmt.Sprintf("Gershgorin        %s to %s", sci(f.Gershgorin.Min), sci(f.Gershgorin.Max)),
-			fmt.Sprintf("norms of A        inf %s, 1 %s, Frobenius %s", sci(f.NormInf), sci(f.NormOne), sci(f.NormFro)))
-	}
-	var out []string
-	for _, l := range lines {
-		out = append(out, hang(l[:18], l[18:], Width)...)
+		items = append(items,
+			labelled{"entries a row", fmt.Sprintf("%.0f to %.0f, bandwidth %d", f.RowEntries.Min, f.RowEntries.Max, f.Bandwidth)},
+			labelled{"row norms", fmt.Sprintf("%s to %s (rows %d, %d)", sci(f.RowNorm.Min), sci(f.RowNorm.Max), f.RowNorm.MinRow+1, f.RowNorm.MaxRow+1)},
+			labelled{"column norms", fmt.Sprintf("%s to %s (columns %d, %d)", sci(f.ColNorm.Min), sci(f.ColNorm.Max), f.ColNorm.MinRow+1, f.ColNorm.MaxRow+1)},
+			labelled{"Gershgorin", fmt.Sprintf("%s to %s", sci(f.Gershgorin.Min), sci(f.Gershgorin.Max))},
+			labelled{"norms of A", fmt.Sprintf("inf %s, 1 %s, Frobenius %s", sci(f.NormInf), sci(f.NormOne), sci(f.NormFro))})
 	}
 	for _, n := range f.Notes {
-		out = append(out, hang("note              ", plain(n), Width)...)
+		items = append(items, labelled{"note", n})
+	}
+	return items
+}
+
+// itemLines are items as text, each under its label.
+func itemLines(items []labelled) []string {
+	var out []string
+	for _, it := range items {
+		out = append(out, hang(fmt.Sprintf("%-18s", clip(plain(it.label), 17)), plain(it.text), Width)...)
 	}
 	return out
 }

@@ -3,6 +3,7 @@ package report
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"dwindle/engine/choose"
@@ -13,10 +14,11 @@ import (
 
 // The shape of the text report.
 const (
-	Width     = 78 // columns
-	HeadLines = 12 // at most
-	labelCols = 12
-	maxWhy    = 3 // findings in the head
+	Width      = 78 // columns
+	HeadLines  = 12 // at most
+	labelCols  = 12
+	maxWhy     = 3 // findings in the head
+	maxCommand = 6 // lines of the command to repeat, which is not cut for others
 )
 
 // item is one entry of the head: a label, a text, and which item is served
@@ -31,11 +33,22 @@ type item struct {
 // "..." and is told in full further down.
 func Head(d Document) []string {
 	items := headItems(d)
+	command := min(len(wrap(repeatText(d), Width-labelCols)), maxCommand)
+	for len(items)+command-1 > HeadLines {
+		at := len(items) - 1
+		for at > 0 && items[at].label != "" { // the last finding but the first
+			at--
+		}
+		items = slices.Delete(items, at, at+1)
+	}
 	lines := make([]int, len(items)) // given to each
 	need := make([]int, len(items))
 	spare := HeadLines - len(items)
 	for i, it := range items {
 		lines[i], need[i] = 1, len(wrap(it.text, Width-labelCols))
+		if it.label == "REPEAT" {
+			lines[i], spare = command, spare-(command-1)
+		}
 	}
 	for pass := 0; pass < HeadLines; pass++ {
 		for rank := 0; rank < HeadLines; rank++ {
@@ -234,7 +247,8 @@ func doubtText(d Document) string {
 }
 
 func repeatText(d Document) string {
-	return fmt.Sprintf("%s (dwindle %s, seed %d)", orDash(plain(d.Command)), orDash(plain(d.Version)), d.Settings.Seed)
+	return fmt.Sprintf("%s (dwindle %s, %s, seed %d; %s, %s)", orDash(plain(d.Command)), orDash(plain(d.Version)), orDash(plain(d.Toolchain)),
+		d.Settings.Seed, orDash(plain(d.Machine.CPU)), plural(d.Machine.Threads, "thread", "threads"))
 }
 
 func orDash(s string) string {

@@ -38,7 +38,7 @@ func typical() Document {
 			Residual: max(2e-3, math.Pow(0.9, float64(i))), Audit: nan, Alpha: nan, Beta: nan})
 	}
 	refused := trace.History{Pairing: "cg+ilu:0", Stop: trace.Refused, Reason: "the preconditioner is not symmetric", TrueResidual: nan}
-	return Document{Version: "0.1", Command: "dwindle run sluice.mtx --today cg+none", Machine: Machine{"Example 3000", 2, 1 << 32},
+	return Document{Version: "0.1", Toolchain: "go1", Command: "dwindle run sluice.mtx --today cg+none", Machine: Machine{"Example 3000", 2, 1 << 32},
 		Settings: Settings{Tol: 1e-8, StopRule: "rhs", Seconds: 30, Seed: 1},
 		System:   System{"sluice.mtx", 400, 1920, "ones", 17, "9f86d081884c7d659a2feaa0c55ad015a3bf4f1b2b0b822cd15d6c15b0f00a08"},
 		Facts:    facts, Trials: []trace.History{cg, ic, gm, refused}, Elapsed: 2 * time.Second,
@@ -75,7 +75,7 @@ func wild(r *rand.Rand) Document {
 		return inspect.Fact{Answer: inspect.Answer([]string{"", "yes", "no", "unknown"}[r.IntN(4)]), Certainty: inspect.Certainty(text()),
 			Why: text(), Value: num(), Rows: make([]int, r.IntN(17))}
 	}
-	d := Document{Version: text(), Command: text(), Machine: Machine{text(), r.IntN(9), r.Int64()},
+	d := Document{Version: text(), Toolchain: text(), Command: text(), Machine: Machine{text(), r.IntN(9), r.Int64()},
 		Settings: Settings{num(), text(), r.IntN(100), num(), r.IntN(9)},
 		System:   System{text(), r.IntN(1e9), r.IntN(1e9), text(), r.IntN(20), text()}}
 	if r.IntN(4) > 0 {

@@ -178,6 +178,14 @@ func choiceLines(d Document) []string {
 
 // settingLines tells under what conditions the numbers were measured.
 func settingLines(d Document) []string {
+	lines := []string{"measured with"}
+	lines = append(lines, itemLines(settingItems(d))...)
+	return append(lines, hang("repeat with ", plain(d.Command), Width)...)
+}
+
+// settingItems are the conditions of the measurement: settings, machine,
+// versions.
+func settingItems(d Document) []labelled {
 	s, m := d.Settings, d.Machine
 	limits := "iterations at the default"
 	if s.Iterations > 0 {
@@ -186,16 +194,19 @@ func settingLines(d Document) []string {
 	if s.Seconds > 0 {
 		limits += ", " + seconds(s.Seconds)
 	}
-	text := fmt.Sprintf("tol %s, rule %s, %s; %s; %s", exact(s.Tol), orDash(s.StopRule), limits,
-		orDash(m.CPU), plural(m.Threads, "thread", "threads"))
+	machine := orDash(m.CPU) + ", " + plural(m.Threads, "thread", "threads")
 	if m.MemoryLimit > 0 {
-		text += ", memory limit " + memory(m.MemoryLimit)
+		machine += ", memory limit " + memory(m.MemoryLimit)
 	}
+	items := []labelled{
+		{"tolerance", fmt.Sprintf("%s, rule %s", exact(s.Tol), orDash(s.StopRule))},
+		{"limits", limits},
+		{"machine", machine},
+		{"versions", fmt.Sprintf("dwindle %s, %s, seed %d", orDash(d.Version), orDash(d.Toolchain), s.Seed)}}
 	if forms := secondForms(d.Trials); forms != "" {
-		text += ", products with A stored also by " + forms
+		items = append(items, labelled{"products", "with A stored also by " + forms})
 	}
-	lines := hang("measured with ", plain(text), Width)
-	return append(lines, hang("repeat with ", plain(d.Command), Width)...)
+	return items
 }
 
 // secondForms lists the forms of A beside plain rows that products ran on.

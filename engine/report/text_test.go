@@ -27,7 +27,7 @@ func TestPlainText(t *testing.T) {
 		if head := Head(d); len(head) > HeadLines || len(head) < 7 {
 			t.Fatalf("document %d: head of %d lines", i, len(head))
 		}
-		for name, write := range map[string]func(io.Writer, Document) error{"text": Text, "facts": Facts} {
+		for name, write := range map[string]func(io.Writer, Document) error{"text": Text, "facts": Facts, "ticket": Ticket} {
 			var b bytes.Buffer
 			if err := write(&b, d); err != nil {
 				t.Fatal(err)
@@ -92,7 +92,7 @@ func TestHeadTells(t *testing.T) {
 	head := strings.Join(Head(d), "\n")
 	for _, want := range []string{"SYSTEM      sluice.mtx: 400 unknowns", "b = ones, not yours", "TODAY       cg+none: converged after 60 its, 60 ms, true",
 		"WHY         [measured] gmres:30+none: restarting", "USE         cg+ic:0, 20 its in 30 ms (set-up 2 ms), 39.1 KiB, 2.0 times", "DOUBT       counts on",
-		"REPEAT      dwindle run sluice.mtx --today cg+none (dwindle 0.1, seed 1)", "FINGERPRINT 9f86"} {
+		"REPEAT      dwindle run sluice.mtx --today cg+none (dwindle 0.1, go1, seed 1;", "FINGERPRINT 9f86"} {
 		if !strings.Contains(head, want) {
 			t.Errorf("no %q in\n%s", want, head)
 		}
@@ -146,7 +146,7 @@ func (f *full) Write(p []byte) (int, error) {
 // TestWriteErrors: no writer hides that it could not write.
 func TestWriteErrors(t *testing.T) {
 	for name, write := range map[string]func(io.Writer, Document) error{
-		"text": Text, "facts": Facts, "md": Markdown, "json": JSON, "csv": CSV, "solution": Solution} {
+		"text": Text, "facts": Facts, "md": Markdown, "json": JSON, "csv": CSV, "solution": Solution, "html": HTML, "ticket": Ticket} {
 		for _, room := range []int{0, 20} {
 			if err := write(&full{room}, typical()); !errors.Is(err, errFull) {
 				t.Errorf("%s into %d bytes: %v", name, room, err)

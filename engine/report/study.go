@@ -1,0 +1,144 @@
+package report
+
+import (
+	"fmt"
+	"strings"
+
+	"dwindle/engine/inspect"
+)
+
+// labelled is a text under a label of a word or two.
+type labelled struct{ label, text string }
+
+// studyItems tells what the second look at the system found, one item a
+// matter; nothing where there was none.
+func studyItems(f *inspect.Facts) []labelled {
+	if f == nil || f.Study == nil {
+		return nil
+	}
+	s := f.Study
+	var out []labelled
+	add := func(label, text string) {
+		if text != "" {
+			out = append(out, labelled{label, text})
+		}
+	}
+	for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
+		if x != nil {
+			add("spectrum", spectrumText(*x))
+		}
+	}
+	if finite(s.Digits) && (s.Digits != 0 || s.Raw != nil) {
+		add("digits of x", fmt.Sprintf("about %.0f correct decimal digits to expect, from the condition after equilibration", max(s.Digits, 0)))
+	}
+	for _, v := range s.Null {
+		add("free direction", nullText(v, f))
+	}
+	add("normality", normalityText(s.Normality))
+	add("couplings", couplingsText(s.Couplings))
+	if s.Block != nil {
+		add("block", fmt.Sprintf("rows repeat in blocks of %d (%.0f %% of them full), proposed from the pattern", s.Block.Size, 100*s.Block.Share))
+	}
+	for _, l := range s.Lines {
+		add("single rows", fmt.Sprintf("%s of kind %s, diagonal %s where others have %s%s", plural(l.Count, "row", "rows"), l.Kind,
+			short(l.Value), short(l.Other), rowText(l.Rows, f)))
+	}
+	add("asymmetry", lopsidedText(s.Lopsided, f))
+	add("growth", growthText(s.Growth))
+	if s.Restore != nil {
+		add("definiteness", fmt.Sprintf("a shift of %s times %s would restore it%s", short(s.Restore.Shift), s.Restore.Of, rowText(s.Restore.Rows, f)))
+	}
+	return out
+}
+
+func spectrumText(x inspect.Spectrum) string {
+	s := fmt.Sprintf("of %s: %s to %s", x.Of, short(x.Smallest), short(x.Largest))
+	if finite(x.Condition) && x.Condition > 0 {
+		s += fmt.Sprintf(", condition %s", short(x.Condition))
+		if x.Norm != "" {
+			s += " in the " + x.Norm + "-norm"
+		}
+	}
+	if x.Negative > 0 {
+		s += fmt.Sprintf(", %d below zero", x.Negative)
+	}
+	if x.Exact {
+		s += ", all values"
+	}
+	return s + fmt.Sprintf(" (%s, by %s)", orDash(string(x.Certainty)), orDash(x.How))
+}
+
+func nullText(v inspect.NullDirection, f *inspect.Facts) string {
+	s := fmt.Sprintf("A maps it to %s of its size", short(v.Quotient))
+	if finite(v.Next) && v.Next > 0 {
+		s += ", the next to " + short(v.Next)
+	}
+	if v.Rigid != "" {
+		s += ", a " + v.Rigid
+	}
+	if v.Support > 0 {
+		s += fmt.Sprintf("; 99 %% of it lies in %s", plural(v.Support, "row", "rows"))
+	}
+	return s + rowText(v.Rows, f)
+}
+
+func normalityText(n *inspect.Normality) string {
+	if n == nil {
+		return ""
+	}
+	s := fmt.Sprintf("departure from normality %s", short(n.Henrici))
+	if !n.Exact {
+		s = fmt.Sprintf("departure from normality at least %s", short(n.Henrici))
+	}
+	s += fmt.Sprintf("; (A+A^T)/2 from %s to %s", short(n.FieldMin), short(n.FieldMax))
+	if n.FieldHoldsZero {
+		s += ": the field of values holds zero"
+	}
+	return s
+}
+
+func couplingsText(c *inspect.Couplings) string {
+	if c == nil {
+		return ""
+	}
+	var words []string
+	if c.OneWay > 0 {
+		words = append(words, fmt.Sprintf("%.0f %% of rows are coupled far stronger one way, by %s", 100*c.OneWay, short(c.Ratio)))
+	}
+	if c.Jump > 1 {
+		words = append(words, fmt.Sprintf("diagonals of neighbours differ up to %s times", short(c.Jump)))
+	}
+	if c.Mesh && finite(c.Dimension) {
+		words = append(words, fmt.Sprintf("the pattern looks like a mesh of dimension %.1f", c.Dimension))
+	}
+	return strings.Join(words, "; ")
+}
+
+func lopsidedText(l *inspect.Lopsided, f *inspect.Facts) string {
+	if l == nil || l.Count == 0 {
+		return ""
+	}
+	s := plural(l.Count, "row has", "rows have") + " entries without an equal one across"
+	if l.Identity > 0 {
+		s += fmt.Sprintf(", %d of the form of an identity row", l.Identity)
+	}
+	if l.OnlyThem {
+		s += "; without these rows and columns A is symmetric"
+	}
+	return s + rowText(l.Rows, f)
+}
+
+func growthText(g *inspect.Growth) string {
+	if g == nil || len(g.Unknowns) == 0 {
+		return ""
+	}
+	var steps []string
+	for i := range min(len(g.Unknowns), len(g.Iterations)) {
+		steps = append(steps, fmt.Sprintf("%d its at %d", g.Iterations[i], g.Unknowns[i]))
+	}
+	s := g.Pairing + ": " + strings.Join(steps, ", ")
+	if finite(g.Exponent) {
+		s += fmt.Sprintf("; iterations grow as unknowns to the power %.2f", g.Exponent)
+	}
+	return s
+}
