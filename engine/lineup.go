@@ -50,6 +50,9 @@ func (s *Session) limits() run.Limits {
 		l.Iterations = min(10*s.sys.N(), 100_000)
 	}
 	l.FieldTol, _ = fieldTols(s.sys, s.opt) // checked when the system was completed
+	if f := s.facts; f.Symmetric.Answer == inspect.Yes && f.Symmetric.Certainty == inspect.Proved && f.Gershgorin.Min > 0 {
+		l.Smallest = f.Gershgorin.Min * (1 - 1e-12) // what summing a row rounds away is less
+	}
 	if u := s.facts.Unreachable; u.Answer == inspect.Yes {
 		l.Unreachable = u.Value
 	}

@@ -42,6 +42,7 @@ func (t *Trial) record(r trace.Reading, first bool) {
 	}
 	t.mu.Unlock()
 	t.look(r.Done)
+	t.learn()
 	t.judge(r, rec, own, a)
 	t.thin()
 }

@@ -36,6 +36,7 @@ type Trial struct {
 	marks      marks
 	lanczos    *spectrum.Tridiagonal
 	lanczosAt  int // order at the last look
+	learned    learned
 	ending     ending
 	turned     bool // a negative curvature has been judged
 
@@ -57,6 +58,7 @@ type Limits struct {
 	Seconds     float64 // own time; 0 is none
 	Unreachable float64 // part of b known to be out of A's range, relative to ‖b‖; 0 if none known
 	Delta       float64 // what the printed digits leave open in an entry
+	Smallest    float64 // a proved lower bound of the spectrum of a symmetric A; 0 if none is known
 	// FieldTol is what the residual of each field must come down to as well,
 	// 0 for nothing; nil where no field is asked for.
 	FieldTol []float64
@@ -160,7 +162,9 @@ func (t *Trial) step() {
 	case t.method.Solver.Tridiagonal:
 		t.lanczos.AddLanczos(r.Alpha, r.Beta)
 	case t.lanczos != nil:
-		t.lanczos.AddCG(r.Alpha, r.Beta)
+		if before := t.lanczos.Order(); t.lanczos.AddCG(r.Alpha, r.Beta) || t.lanczos.Order() > before {
+			t.coefficients(r.Alpha, r.Beta)
+		}
 	}
 	t.record(r, false)
 }

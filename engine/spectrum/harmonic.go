@@ -75,6 +75,23 @@ func (h *Harmonic) Smallest(hbar []float64, k, limit int, p [][]float64) int {
 	return kept
 }
 
+// Values returns the harmonic Ritz values of H̄, of full rank and not changed,
+// by rising magnitude; nil where they are not found.
+func (h *Harmonic) Values(hbar []float64) []complex128 {
+	h.inverse(hbar)
+	first := lapackimpl.Implementation{}.Dgeev(lapack.LeftEVNone, lapack.RightEVNone, h.m, h.n, h.m,
+		h.re, h.im, nil, 1, nil, 1, h.work, len(h.work))
+	if first != 0 {
+		return nil
+	}
+	h.sort()
+	out := make([]complex128, h.m)
+	for i, j := range h.order {
+		out[i] = 1 / complex(h.re[j], h.im[j])
+	}
+	return out
+}
+
 // inverse computes n = R⁻¹Q_mᵀ.
 func (h *Harmonic) inverse(hbar []float64) {
 	m, lib := h.m, lapackimpl.Implementation{}

@@ -53,6 +53,22 @@ type Prediction struct {
 	Low, High float64 // the range thought likely
 }
 
+// What a counterfactual changes of the spectrum.
+const (
+	Deflated          = "deflated"               // the smallest eigenvalues are taken out
+	WithoutSingletons = "without singleton rows" // those that stand on the diagonal of singleton rows are
+)
+
+// Counterfactual is how many iterations a trial would have needed on a changed
+// spectrum, computed from its own coefficients.
+type Counterfactual struct {
+	What       string
+	Removed    int     // eigenvalues taken out, copies not counted
+	Largest    float64 // of them
+	Next       float64 // the smallest that stays
+	Iterations int
+}
+
 // Field is the residual of the rows of one field of unknowns.
 type Field struct {
 	Name          string
@@ -132,6 +148,8 @@ type History struct {
 	Alphas, Betas []float64
 	Locks         []Lock               // Ritz values that have settled, by iteration
 	EnergyErrors  []EnergyError        // at growing iterations; nil where not known
+	EnergyProved  bool                 // Upper rests on a proved μ; else μ is estimated from the smallest Ritz value
+	Without       []Counterfactual     // of an ended trial that converged; nil where nothing changes
 	Delay         int                  // iterations lost to lost orthogonality, estimated; 0 if none seen
 	Harmonic      []complex128         // harmonic Ritz values of the last whole cycle of an Arnoldi method
 	Predictions   []Prediction         // told at growing iterations

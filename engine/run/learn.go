@@ -1,0 +1,182 @@
+package run
+
+import (
+	"math"
+
+	"dwindle/engine/krylov"
+	"dwindle/engine/spectrum"
+	"dwindle/engine/trace"
+)
+
+const (
+	relearn   = 1.5  // how far a trial grows between two looks at its coefficients
+	takeApart = 60   // nanoseconds a squared step that a Lanczos matrix costs, taken apart
+	share     = 0.08 // of a trial's own work that looks may cost while it runs
+	most      = 3000 // steps looked at while it runs
+	mostEnd   = 1500 // steps looked at at the end, whatever the work was; the share allows more
+	lowLocks  = 12   // Ritz values told, at each end
+	highLocks = 6
+	deflated  = 10   // eigenvalues, at most, that a counterfactual takes out
+	errorGrid = 64   // energy errors are told at each of the first iterations,
+	errorStep = 1.03 // then at steps of this ratio
+)
+
+// learned is what was made of a trial's coefficients so far.
+type learned struct {
+	next   int     // iterations at which to look again
+	spent  float64 // nanoseconds that looks have cost, by count of work
+	cycles int     // whole cycles seen of a restarted method
+	nextAt int     // the cycle to look at next
+}
+
+// coefficients keeps α and β of one step of conjugate gradients.
+func (t *Trial) coefficients(alpha, beta float64) {
+	t.mu.Lock()
+	t.hist.Alphas, t.hist.Betas = append(t.hist.Alphas, alpha), append(t.hist.Betas, beta)
+	t.mu.Unlock()
+}
+
+// learn looks at the coefficients at growing iterations, off the clock.
+func (t *Trial) learn() {
+	t.seeCycle()
+	k := len(t.hist.Alphas)
+	if k < max(t.learned.next, 16) {
+		return
+	}
+	t.learned.next = int(math.Ceil(relearn * float64(k)))
+	cost := takeApart * float64(k) * float64(k)
+	if t.learned.spent+cost > share*t.work(k) {
+		return
+	}
+	t.learned.spent += cost
+	t.tellErrors()
+	if k <= most {
+		t.tellLocks(k)
+	}
+}
+
+// work is the nanoseconds that k steps take, roughly: by counts, so that what
+// is looked at does not depend on the machine.
+func (t *Trial) work(k int) float64 {
+	entries := 0
+	if a := t.sys.Matrix(); a != nil {
+		entries = a.Entries()
+	}
+	return float64(k) * float64(entries+5*t.sys.N())
+}
+
+// learnAll is the last look: at everything where the work allows, else at the
+// first steps.
+func (t *Trial) learnAll(stop trace.Stop) {
+	k := len(t.hist.Alphas)
+	if k == 0 || t.ended() || stop == trace.Cancelled || stop == trace.Outpaced || stop == trace.Failed {
+		return
+	}
+	t.tellErrors()
+	allowed := int(math.Sqrt(share * t.work(k) / takeApart))
+	c, ghosts := t.tellLocks(min(k, max(mostEnd, allowed)))
+	if len(c) == 0 || k > max(mostEnd, allowed) {
+		return
+	}
+	t.mu.Lock()
+	t.hist.Delay = ghosts
+	t.mu.Unlock()
+	if stop == trace.Converged {
+		t.tellWithout(c)
+	}
+}
+
+// tellErrors writes the energy errors at growing iterations, as far as they
+// are trusted, relative to the first.
+func (t *Trial) tellErrors() {
+	mu, proved := t.smallest()
+	e := spectrum.EnergyErrors(t.hist.Alphas, t.hist.Betas, mu)
+	if len(e.Lower) < len(t.hist.Alphas) {
+		e.Trusted = 0 // A or M is not definite: there is no such norm
+	}
+	if e.Trusted == 0 {
+		t.mu.Lock()
+		t.hist.EnergyErrors = nil
+		t.mu.Unlock()
+		return
+	}
+	low0, high0 := e.Lower[0], e.Upper[0]
+	if math.IsNaN(high0) {
+		high0 = low0
+	}
+	var out []trace.EnergyError
+	for k, next := 0, 0; k < e.Trusted; k++ {
+		if k < next {
+			continue
+		}
+		next = max(k+1, int(float64(k)*errorStep))
+		if k < errorGrid {
+			next = k + 1
+		}
+		out = append(out, trace.EnergyError{Iter: k, Lower: e.Lower[k] / high0, Upper: e.Upper[k] / low0})
+	}
+	t.mu.Lock()
+	t.hist.EnergyErrors, t.hist.EnergyProved = out, proved
+	t.mu.Unlock()
+}
+
+// below is what of the smallest settled Ritz value is taken as a lower bound
+// of the spectrum.
+const below = 0.9
+
+// smallest returns a lower bound of the spectrum of M⁻¹A: a proved one of A
+// where it is known and there is no M, else an estimate from the smallest Ritz
+// value once it has settled, or NaN.
+func (t *Trial) smallest() (mu float64, proved bool) {
+	if t.limits.Smallest > 0 && t.method.Precond.Name == "none" && t.back == nil {
+		return t.limits.Smallest, true
+	}
+	if c := t.hist.Condition; c.Settled && !c.Negative {
+		return below * c.Smallest, false
+	}
+	return math.NaN(), false
+}
+
+// tellLocks takes the Lanczos matrix of the first k steps apart and writes
+// which Ritz values have settled. It returns the clusters and how many of the
+// steps went into ghosts.
+func (t *Trial) tellLocks(k int) (c []spectrum.Cluster, ghosts int) {
+	alphas, betas := t.hist.Alphas[:k], t.hist.Betas[:k]
+	q, ok := spectrum.Gauss(alphas, betas)
+	if !ok {
+		return nil, 0
+	}
+	c = q.Clusters()
+	var out []trace.Lock
+	for _, l := range spectrum.Locks(c, alphas, betas, lowLocks, highLocks) {
+		out = append(out, trace.Lock{Value: l.Value, Iter: l.Iter, Copies: l.Copies, Weight: l.Weight})
+	}
+	t.mu.Lock()
+	t.hist.Locks = out
+	t.mu.Unlock()
+	return c, q.Ghosts(c)
+}
+
+// seeCycle keeps the harmonic Ritz values of whole cycles at growing counts.
+func (t *Trial) seeCycle() {
+	s, ok := t.solver.(krylov.Cycler)
+	if !ok {
+		return
+	}
+	hbar, m := s.Cycle()
+	if hbar == nil {
+		return
+	}
+	t.learned.cycles++
+	if t.learned.cycles < t.learned.nextAt || m > longestCycle {
+		return
+	}
+	t.learned.nextAt = t.learned.cycles + max(1, t.learned.cycles/2)
+	values := spectrum.NewHarmonic(m).Values(hbar)
+	t.mu.Lock()
+	t.hist.Harmonic = values
+	t.mu.Unlock()
+}
+
+// longestCycle bounds the cycles whose eigenvalues are looked at.
+const longestCycle = 120
