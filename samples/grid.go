@@ -11,8 +11,8 @@ type stencil struct{ south, west, centre, east, north float64 }
 func fivePoint(nx, ny int, at func(i, j int) stencil) *linear.CSR {
 	n := nx * ny
 	size := fivePointEntries(nx, ny)
-	a := &linear.CSR{NRows: n, NCols: n, Ptr: make([]int, n+1),
-		Col: make([]int32, size), Val: make([]float64, size)}
+	a := &linear.CSR{NRows: n, NCols: n, Ptr: linear.Bulk[int](n + 1),
+		Col: linear.Bulk[int32](size), Val: linear.Bulk[float64](size)}
 	p, k := 0, 0
 	put := func(col int, v float64) {
 		a.Col[p], a.Val[p] = int32(col), v

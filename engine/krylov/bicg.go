@@ -45,11 +45,11 @@ func (s *bicg) Begin(p Problem) (trace.Reading, error) {
 		return trace.Reading{}, err
 	}
 	for _, v := range []*[]float64{&s.r, &s.p, &s.q, &s.rh, &s.ph, &s.qh} {
-		*v = make([]float64, s.n)
+		*v = linear.Bulk[float64](s.n)
 	}
 	s.z, s.zh = s.r, s.rh
 	if !s.plain {
-		s.z, s.zh = make([]float64, s.n), make([]float64, s.n)
+		s.z, s.zh = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	}
 	res := s.residual(s.r, p.X)
 	copy(s.rh, s.r)

@@ -41,11 +41,11 @@ func (s *bicgstab) Begin(p Problem) (trace.Reading, error) {
 		return trace.Reading{}, err
 	}
 	for _, v := range []*[]float64{&s.r, &s.shadow, &s.p, &s.v, &s.t} {
-		*v = make([]float64, s.n)
+		*v = linear.Bulk[float64](s.n)
 	}
 	s.ph, s.sh = s.p, s.r
 	if !s.plain {
-		s.ph, s.sh = make([]float64, s.n), make([]float64, s.n)
+		s.ph, s.sh = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	}
 	res := s.residual(s.r, p.X)
 	copy(s.shadow, s.r)

@@ -57,9 +57,9 @@ func (s *bicgstabl) Begin(p Problem) (trace.Reading, error) {
 	s.r, s.u, s.tau = rows(s.l+1, s.n), rows(s.l+1, s.n), rows(s.l+1, s.l+1)
 	small := rows(4, s.l+1)
 	s.sigma, s.g, s.g1, s.g2 = small[0], small[1], small[2], small[3]
-	s.shadow = make([]float64, s.n)
+	s.shadow = linear.Bulk[float64](s.n)
 	if s.sum = s.x; !s.plain {
-		s.y, s.z, s.h = make([]float64, s.n), make([]float64, s.n), make([]float64, s.n)
+		s.y, s.z, s.h = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 		s.sum = s.y
 	}
 	res := s.residual(s.r[0], p.X)

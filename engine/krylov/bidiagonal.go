@@ -20,7 +20,7 @@ func (s *bidiagonal) open(c *core, p Problem) (res float64, err error) {
 		return 0, err
 	}
 	for _, v := range []*[]float64{&s.u, &s.v, &s.q, &s.z} {
-		*v = make([]float64, c.n)
+		*v = linear.Bulk[float64](c.n)
 	}
 	s.beta = c.residual(s.u, p.X)
 	if finite(s.beta) && s.beta > 0 {

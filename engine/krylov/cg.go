@@ -40,12 +40,12 @@ func (s *cg) Begin(p Problem) (trace.Reading, error) {
 	if err := s.begin(p); err != nil {
 		return trace.Reading{}, err
 	}
-	s.r, s.p, s.q = make([]float64, s.n), make([]float64, s.n), make([]float64, s.n)
+	s.r, s.p, s.q = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	res := s.residual(s.r, p.X)
 	s.z = s.r
 	if s.plain {
 		s.rho = linear.Dot(s.r, s.r)
-	} else if s.z = make([]float64, s.n); finite(res) && res > 0 {
+	} else if s.z = linear.Bulk[float64](s.n); finite(res) && res > 0 {
 		s.rho = s.precondition(s.z, s.r)
 		s.watchM(res)
 	}

@@ -38,7 +38,7 @@ func (s *cgne) Begin(p Problem) (trace.Reading, error) {
 	if s.normal, err = newNormal(p, s.n); err != nil {
 		return trace.Reading{}, err
 	}
-	s.r, s.p, s.q, s.z = make([]float64, s.n), make([]float64, s.n), make([]float64, s.n), make([]float64, s.n)
+	s.r, s.p, s.q, s.z = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n), linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	return s.start(s.residual(s.r, p.X)), nil
 }
 

@@ -40,10 +40,10 @@ func (s *cgs) Begin(p Problem) (trace.Reading, error) {
 		return trace.Reading{}, err
 	}
 	for _, v := range []*[]float64{&s.r, &s.shadow, &s.p, &s.q, &s.v, &s.u, &s.t} {
-		*v = make([]float64, s.n)
+		*v = linear.Bulk[float64](s.n)
 	}
 	if !s.plain {
-		s.h = make([]float64, s.n)
+		s.h = linear.Bulk[float64](s.n)
 	}
 	res := s.residual(s.r, p.X)
 	copy(s.shadow, s.r)

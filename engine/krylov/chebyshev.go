@@ -50,10 +50,10 @@ func (s *chebyshev) Begin(p Problem) (trace.Reading, error) {
 	if err := s.begin(p); err != nil {
 		return trace.Reading{}, err
 	}
-	s.r, s.d, s.q = make([]float64, s.n), make([]float64, s.n), make([]float64, s.n)
+	s.r, s.d, s.q = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	s.z = s.r
 	if !s.plain {
-		s.z = make([]float64, s.n)
+		s.z = linear.Bulk[float64](s.n)
 	}
 	res := s.residual(s.r, p.X)
 	rd := s.start(res)

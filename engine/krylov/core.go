@@ -37,7 +37,7 @@ func (c *core) begin(p Problem) error {
 			rows, cols, len(p.B), len(p.X))
 	}
 	_, plain := linear.As[linear.Identity](p.M)
-	*c = core{a: p.A, m: p.M, b: p.B, n: rows, plain: plain, x: make([]float64, rows)}
+	*c = core{a: p.A, m: p.M, b: p.B, n: rows, plain: plain, x: linear.Bulk[float64](rows)}
 	copy(c.x, p.X)
 	return nil
 }

@@ -44,14 +44,14 @@ func (s *cr) Begin(p Problem) (trace.Reading, error) {
 		return trace.Reading{}, err
 	}
 	for _, v := range []*[]float64{&s.r, &s.az, &s.p, &s.q, &s.bent} {
-		*v = make([]float64, s.n)
+		*v = linear.Bulk[float64](s.n)
 	}
 	s.z, s.u = s.r, s.q
 	res := s.residual(s.r, p.X)
 	if s.plain || !finite(res) || res == 0 {
 		return s.start(res), nil
 	}
-	s.z, s.u = make([]float64, s.n), make([]float64, s.n)
+	s.z, s.u = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	rz := s.precondition(s.z, s.r)
 	if !(rz > 0) || !finite(rz) {
 		s.last = res

@@ -48,10 +48,10 @@ func (s *fcg) Begin(p Problem) (trace.Reading, error) {
 	if err := s.begin(p); err != nil {
 		return trace.Reading{}, err
 	}
-	s.r = make([]float64, s.n)
+	s.r = linear.Bulk[float64](s.n)
 	s.z = s.r
 	if !s.plain {
-		s.z = make([]float64, s.n)
+		s.z = linear.Bulk[float64](s.n)
 	}
 	s.p, s.q, s.pq = arrays(s.kept, s.n), arrays(s.kept, s.n), make([]float64, s.kept)
 	return s.start(s.residual(s.r, p.X)), nil
@@ -61,7 +61,7 @@ func (s *fcg) Begin(p Problem) (trace.Reading, error) {
 func arrays(k, n int) [][]float64 {
 	v := make([][]float64, k)
 	for i := range v {
-		v[i] = make([]float64, n)
+		v[i] = linear.Bulk[float64](n)
 	}
 	return v
 }

@@ -49,7 +49,7 @@ func (s *gcr) Begin(p Problem) (trace.Reading, error) {
 		return trace.Reading{}, err
 	}
 	m := cycle(s.n, s.values)
-	s.p, s.q, s.r = rows(m, s.n), rows(m, s.n), make([]float64, s.n)
+	s.p, s.q, s.r = rows(m, s.n), rows(m, s.n), linear.Bulk[float64](s.n)
 	s.opening = s.residual(s.r, p.X)
 	return s.start(s.opening), nil
 }

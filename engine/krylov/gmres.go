@@ -49,7 +49,7 @@ func (s *gmres) Begin(p Problem) (trace.Reading, error) {
 	}
 	s.prepare(cycle(s.n, s.values))
 	if !s.plain {
-		s.z, s.u = make([]float64, s.n), make([]float64, s.n)
+		s.z, s.u = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	}
 	s.left = !s.plain && s.values.Choice("side") == "left"
 	res := s.residual(s.v[0], p.X)

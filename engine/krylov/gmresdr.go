@@ -68,9 +68,9 @@ func (s *gmresdr) Begin(p Problem) (trace.Reading, error) {
 		return trace.Reading{}, err
 	}
 	m, most := cycle(s.n, s.values), carried(s.n, s.values)+1
-	s.v, s.r, s.f = rows(m+1, s.n), make([]float64, s.n), newFit(m, most)
+	s.v, s.r, s.f = rows(m+1, s.n), linear.Bulk[float64](s.n), newFit(m, most)
 	if !s.plain {
-		s.z, s.u = make([]float64, s.n), make([]float64, s.n)
+		s.z, s.u = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	}
 	s.harmonic, s.c, s.t = spectrum.NewHarmonic(m), make([]float64, m+1), make([]float64, m+1)
 	s.p, s.top = rows(most+1, m+1), make([][]float64, most)

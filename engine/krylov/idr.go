@@ -61,9 +61,9 @@ func (s *idr) Begin(p Problem) (trace.Reading, error) {
 	dim := min(s.n, s.want)
 	s.p, s.g, s.u, s.l = rows(dim, s.n), rows(dim, s.n), rows(dim, s.n), rows(dim, dim)
 	s.f, s.c = make([]float64, dim), make([]float64, dim)
-	s.r, s.v = make([]float64, s.n), make([]float64, s.n)
+	s.r, s.v = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	if s.h = s.v; !s.plain {
-		s.h = make([]float64, s.n)
+		s.h = linear.Bulk[float64](s.n)
 	}
 	s.shadows()
 	s.omega = 1

@@ -20,14 +20,14 @@ type lanczos struct {
 // positive there it returns ok false and how the trial ends.
 func (s *lanczos) open(c *core, guess []float64) (end trace.Reading, ok bool) {
 	for _, v := range []*[]float64{&s.r, &s.rOld, &s.q} {
-		*v = make([]float64, c.n)
+		*v = linear.Bulk[float64](c.n)
 	}
 	s.beta = c.residual(s.r, guess)
 	s.z = s.r
 	if c.plain || !finite(s.beta) || s.beta == 0 {
 		return end, true
 	}
-	s.z = make([]float64, c.n)
+	s.z = linear.Bulk[float64](c.n)
 	rz := c.precondition(s.z, s.r)
 	if !(rz > 0) || !finite(rz) {
 		c.last = s.beta

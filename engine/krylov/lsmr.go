@@ -47,7 +47,7 @@ func (s *lsmr) Begin(p Problem) (trace.Reading, error) {
 	if err != nil {
 		return trace.Reading{}, err
 	}
-	s.h, s.hBar = make([]float64, s.n), make([]float64, s.n)
+	s.h, s.hBar = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	if !finite(res) || res == 0 {
 		return s.start(res), nil
 	}

@@ -45,7 +45,7 @@ func (s *lsqr) Begin(p Problem) (trace.Reading, error) {
 	if err != nil {
 		return trace.Reading{}, err
 	}
-	s.d, s.rest = make([]float64, s.n), res
+	s.d, s.rest = linear.Bulk[float64](s.n), res
 	return s.start(res), nil
 }
 

@@ -38,7 +38,7 @@ func (s *minres) Begin(p Problem) (trace.Reading, error) {
 	if err := s.begin(p); err != nil {
 		return trace.Reading{}, err
 	}
-	s.w, s.wOld = make([]float64, s.n), make([]float64, s.n)
+	s.w, s.wOld = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	if end, ok := s.open(&s.core, p.X); !ok {
 		return end, nil
 	}

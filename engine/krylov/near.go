@@ -13,7 +13,7 @@ import (
 func conjugateNear(c *core, vectors [][]float64, k int) (w, aw [][]float64) {
 	largest := 0.0
 	for _, given := range vectors[:min(k, len(vectors))] {
-		v, av := append([]float64(nil), given...), make([]float64, c.n)
+		v, av := append([]float64(nil), given...), linear.Bulk[float64](c.n)
 		c.a.Apply(av, v) // the product
 		if size := linear.Norm2(v); size > 0 {
 			largest = math.Max(largest, linear.Norm2(av)/size)

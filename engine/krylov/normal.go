@@ -1,5 +1,7 @@
 package krylov
 
+import "dwindle/engine/linear"
+
 // normal applies C = A M⁻¹ and Cᵀ = M⁻ᵀAᵀ for the methods that work on the
 // normal equations of C y = b, x = M⁻¹y.
 type normal struct {
@@ -12,7 +14,7 @@ func newNormal(p Problem, n int) (normal, error) {
 	t, err := newAdjoint(p)
 	s := normal{adjoint: t, op: p}
 	if err == nil && t.mt != nil {
-		s.half = make([]float64, n)
+		s.half = linear.Bulk[float64](n)
 	}
 	return s, err
 }

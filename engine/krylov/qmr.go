@@ -51,10 +51,10 @@ func (s *qmr) Begin(p Problem) (trace.Reading, error) {
 		return trace.Reading{}, err
 	}
 	for _, v := range []*[]float64{&s.r, &s.v, &s.w, &s.p, &s.q, &s.d, &s.ad, &s.t} {
-		*v = make([]float64, s.n)
+		*v = linear.Bulk[float64](s.n)
 	}
 	if s.z = s.w; !s.plain {
-		s.z = make([]float64, s.n)
+		s.z = linear.Bulk[float64](s.n)
 	}
 	res := s.residual(s.r, p.X)
 	s.gamma, s.eta, s.epsilon = 1, -1, 1

@@ -39,10 +39,10 @@ func (s *richardson) Begin(p Problem) (trace.Reading, error) {
 	if err := s.begin(p); err != nil {
 		return trace.Reading{}, err
 	}
-	s.r, s.q = make([]float64, s.n), make([]float64, s.n)
+	s.r, s.q = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	s.z = s.r
 	if !s.plain {
-		s.z = make([]float64, s.n)
+		s.z = linear.Bulk[float64](s.n)
 	}
 	return s.start(s.residual(s.r, p.X)), nil
 }

@@ -34,7 +34,7 @@ func (s *sd) Begin(p Problem) (trace.Reading, error) {
 	if err := s.begin(p); err != nil {
 		return trace.Reading{}, err
 	}
-	s.r, s.z, s.q = make([]float64, s.n), make([]float64, s.n), make([]float64, s.n)
+	s.r, s.z, s.q = linear.Bulk[float64](s.n), linear.Bulk[float64](s.n), linear.Bulk[float64](s.n)
 	return s.start(s.residual(s.r, p.X)), nil
 }
 

@@ -49,7 +49,7 @@ func (s *symmlq) Begin(p Problem) (trace.Reading, error) {
 	if err := s.begin(p); err != nil {
 		return trace.Reading{}, err
 	}
-	s.w = make([]float64, s.n)
+	s.w = linear.Bulk[float64](s.n)
 	if end, ok := s.open(&s.core, p.X); !ok {
 		return end, nil
 	}

@@ -71,7 +71,7 @@ func (a *CSR) countBlocks(r int) []int {
 // from countBlocks.
 func byBlocks(a *CSR, r int, ptr []int) *blocks {
 	count := ptr[len(ptr)-1]
-	b := &blocks{CSR: a, r: r, ptr: ptr, col: make([]int32, count), val: make([]float64, count*r*r)}
+	b := &blocks{CSR: a, r: r, ptr: ptr, col: Bulk[int32](count), val: Bulk[float64](count * r * r)}
 	eachRow(a.NRows/r, b.fill)
 	return b
 }

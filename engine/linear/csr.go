@@ -51,7 +51,7 @@ func (a *CSR) Diagonal(dst []float64) {
 // Transpose returns Aᵀ as a new matrix, by one counting pass.
 func (a *CSR) Transpose() *CSR {
 	t := &CSR{NRows: a.NCols, NCols: a.NRows,
-		Ptr: make([]int, a.NCols+1), Col: make([]int32, len(a.Col)), Val: make([]float64, len(a.Val))}
+		Ptr: Bulk[int](a.NCols + 1), Col: Bulk[int32](len(a.Col)), Val: Bulk[float64](len(a.Val))}
 	for _, c := range a.Col {
 		t.Ptr[c+1]++
 	}

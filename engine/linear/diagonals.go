@@ -101,7 +101,7 @@ func byHalf(a *CSR, offs []int) Operator {
 func fillDiagonals(a *CSR, offs []int) []diagonal {
 	list := make([]diagonal, len(offs))
 	for k, off := range offs {
-		list[k] = diagonal{off: off, v: make([]float64, a.NRows)}
+		list[k] = diagonal{off: off, v: Bulk[float64](a.NRows)}
 	}
 	eachRow(a.NRows, func(i int) {
 		cols, vals := a.Row(i)

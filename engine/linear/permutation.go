@@ -59,7 +59,7 @@ func (a *CSR) Permute(rows, cols Permutation) *CSR {
 		rows = Natural(a.NRows)
 	}
 	b := &CSR{NRows: a.NRows, NCols: a.NCols,
-		Ptr: make([]int, a.NRows+1), Col: make([]int32, len(a.Col)), Val: make([]float64, len(a.Val))}
+		Ptr: Bulk[int](a.NRows + 1), Col: Bulk[int32](len(a.Col)), Val: Bulk[float64](len(a.Val))}
 	place := cols.Inverse()
 	for k, i := range rows {
 		c, v := a.Row(int(i))

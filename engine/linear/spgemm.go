@@ -140,7 +140,7 @@ func (w *RowWork) Largest(n int) {
 // it may be called for several rows at once, each with a RowWork of its own.
 // Beyond the matrix it needs memory for groupParts parts of it.
 func ByRows(rows, cols int, fill func(w *RowWork, i int)) *CSR {
-	m := &CSR{NRows: rows, NCols: cols, Ptr: make([]int, rows+1)}
+	m := &CSR{NRows: rows, NCols: cols, Ptr: Bulk[int](rows + 1)}
 	spare := &workStore{cols: cols}
 	pieces := make([]piece, groupParts)
 	for first := 0; first < rows; first += groupParts * productRows {
@@ -212,7 +212,7 @@ func (m *CSR) grow(total, rows int) {
 		if rows < m.NRows {
 			room = int(1.02*float64(total)/float64(rows)*float64(m.NRows)) + productRows
 		}
-		col, val := make([]int32, len(m.Col), room), make([]float64, len(m.Val), room)
+		col, val := Bulk[int32](room)[:len(m.Col)], Bulk[float64](room)[:len(m.Val)]
 		copy(col, m.Col)
 		copy(val, m.Val)
 		m.Col, m.Val = col, val

@@ -29,7 +29,7 @@ func (s *strength) strong(i, j int, v float64) bool {
 //  3. what is left makes aggregates with its untaken neighbours.
 func (s *strength) aggregate() (of []int32, count int) {
 	n := s.a.NRows
-	of = make([]int32, n)
+	of = linear.Bulk[int32](n)
 	for i := range of {
 		of[i] = alone - 1 // not yet looked at
 	}

@@ -28,7 +28,7 @@ type split struct {
 // prolongation returns the extended interpolation from the coarse unknowns,
 // cut to few entries a row.
 func (c *classical) prolongation(a *linear.CSR, diag []float64) *linear.CSR {
-	s := &split{a: a, limit: make([]float64, a.NRows), name: make([]int32, a.NRows)}
+	s := &split{a: a, limit: linear.Bulk[float64](a.NRows), name: linear.Bulk[int32](a.NRows)}
 	s.findLimits(c.theta)
 	s.choose()
 	return linear.ByRows(a.NRows, s.count, func(w *linear.RowWork, i int) {

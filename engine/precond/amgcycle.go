@@ -88,7 +88,7 @@ func report(progress func(float64), done float64) {
 
 func newLevel(a *linear.CSR, depth int) (*level, []float64, error) {
 	n := a.NRows
-	diag := make([]float64, n)
+	diag := linear.Bulk[float64](n)
 	linear.Parallel((n+relaxRows-1)/relaxRows, func(part int) {
 		for i := part * relaxRows; i < min((part+1)*relaxRows, n); i++ {
 			diag[i] = a.At(i, i)
@@ -99,9 +99,9 @@ func newLevel(a *linear.CSR, depth int) (*level, []float64, error) {
 			return nil, nil, badDiagonal(i, d, depth)
 		}
 	}
-	l := &level{a: a, relax: newRelaxation(a, diag, blockRows(n)), u: make([]float64, n), t: make([]float64, n)}
+	l := &level{a: a, relax: newRelaxation(a, diag, blockRows(n)), u: linear.Bulk[float64](n), t: linear.Bulk[float64](n)}
 	if depth > 0 {
-		l.b, l.x = make([]float64, n), make([]float64, n)
+		l.b, l.x = linear.Bulk[float64](n), linear.Bulk[float64](n)
 	}
 	return l, diag, nil
 }

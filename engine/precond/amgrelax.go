@@ -42,7 +42,7 @@ func blockRows(n int) int { return max(relaxRows, (n+relaxParts-1)/relaxParts) }
 
 // newRelaxation prepares sweeps in blocks of so many rows.
 func newRelaxation(a *linear.CSR, diag []float64, rows int) *relaxation {
-	s := &relaxation{a: a, inverse: make([]float64, a.NRows), rows: rows}
+	s := &relaxation{a: a, inverse: linear.Bulk[float64](a.NRows), rows: rows}
 	s.parts = (a.NRows + s.rows - 1) / s.rows
 	s.border = make([][]int32, s.parts)
 	s.startPart, s.borderPart = s.startRows, s.borderRows
@@ -57,7 +57,7 @@ func newRelaxation(a *linear.CSR, diag []float64, rows int) *relaxation {
 		}
 	})
 	if s.parts > 0 && slices.Max(excess) > 0 {
-		s.excess = make([]float64, a.NRows)
+		s.excess = linear.Bulk[float64](a.NRows)
 		for i, v := range s.inverse {
 			s.excess[i] = 1/v - diag[i]
 		}

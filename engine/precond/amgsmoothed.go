@@ -34,7 +34,7 @@ func newAggregation(theta float64, n, dofs int, given [][]float64) (*aggregation
 	if len(given) == 0 {
 		g.k = dofs
 	}
-	g.null = make([]float64, n*g.k)
+	g.null = linear.Bulk[float64](n * g.k)
 	for i := range n {
 		if len(given) == 0 {
 			g.null[i*g.k+i%dofs] = 1

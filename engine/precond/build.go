@@ -49,8 +49,8 @@ func halves(a *linear.CSR) (lower, upper int) {
 // triangle returns an empty triangular factor with room for entries; rows are
 // appended in order.
 func triangle(n, entries int) *linear.CSR {
-	return &linear.CSR{NRows: n, NCols: n, Ptr: make([]int, n+1),
-		Col: make([]int32, 0, entries), Val: make([]float64, 0, entries)}
+	return &linear.CSR{NRows: n, NCols: n, Ptr: linear.Bulk[int](n + 1),
+		Col: linear.Bulk[int32](entries)[:0], Val: linear.Bulk[float64](entries)[:0]}
 }
 
 // triangleBytes returns what triangle(n, entries) takes.
@@ -69,6 +69,6 @@ func makeRoom(t *linear.CSR, i, need int) {
 		ahead := int(1.05 * float64(length) / float64(i) * float64(t.NRows))
 		room = min(max(ahead, length+length/8), 4*length)
 	}
-	t.Col = append(make([]int32, 0, room), t.Col...)
-	t.Val = append(make([]float64, 0, room), t.Val...)
+	t.Col = append(linear.Bulk[int32](room)[:0], t.Col...)
+	t.Val = append(linear.Bulk[float64](room)[:0], t.Val...)
 }

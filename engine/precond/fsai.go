@@ -95,7 +95,7 @@ func buildFSAI(ctx context.Context, s linear.System, v linear.Values, progress f
 		g.Col, g.Val = append(g.Col, j...), append(g.Val, y...)
 		g.Ptr[i+1] = len(g.Col)
 	}
-	f := &fsai{g: g, gt: g.Transpose(), work: make([]float64, n)}
+	f := &fsai{g: g, gt: g.Transpose(), work: linear.Bulk[float64](n)}
 	notes.Entries = int64(g.Entries())
 	notes.Fill = float64(2*g.Entries()-n) / float64(a.Entries())
 	notes.Bytes = g.Bytes() + f.gt.Bytes() + 8*int64(n)
@@ -110,7 +110,7 @@ type reach struct {
 	list []int32
 }
 
-func newReach(a *linear.CSR) *reach { return &reach{a: a, at: make([]int32, a.NRows)} }
+func newReach(a *linear.CSR) *reach { return &reach{a: a, at: linear.Bulk[int32](a.NRows)} }
 
 // row returns the columns up to i of row i of the k-th power of A, with i,
 // ascending; they are valid until the next call.
@@ -141,7 +141,7 @@ type submatrix struct {
 	v, y  []float64
 }
 
-func newSubmatrix(n int) *submatrix { return &submatrix{place: make([]int32, n)} }
+func newSubmatrix(n int) *submatrix { return &submatrix{place: linear.Bulk[int32](n)} }
 
 // load returns A_JJ, and zeros of the same length; both are valid until the
 // next call.

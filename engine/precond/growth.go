@@ -10,7 +10,7 @@ import (
 // factors whose solves explode (Chow and Saad, J. Comput. Appl. Math. 86
 // (1997) 387–414).
 func growth(m linear.Applier, a *linear.CSR) float64 {
-	ones, y := make([]float64, a.NRows), make([]float64, a.NRows)
+	ones, y := linear.Bulk[float64](a.NRows), linear.Bulk[float64](a.NRows)
 	for i := range ones {
 		ones[i] = 1
 	}

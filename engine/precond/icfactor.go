@@ -24,7 +24,7 @@ type icWork struct {
 func newICWork(a *linear.CSR) *icWork {
 	lower, _ := halves(a)
 	n := a.NRows
-	w := &icWork{a: a, l: triangle(n, lower), pivots: make([]float64, n), w: make([]float64, n), at: make([]int32, n)}
+	w := &icWork{a: a, l: triangle(n, lower), pivots: linear.Bulk[float64](n), w: linear.Bulk[float64](n), at: linear.Bulk[int32](n)}
 	for i := 0; i < n; i++ {
 		cols, _ := a.Row(i)
 		for _, c := range cols {

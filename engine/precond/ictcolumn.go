@@ -28,9 +28,9 @@ type ictWork struct {
 
 func newICTWork(a *linear.CSR, tau float64, p int) *ictWork {
 	n := a.NRows
-	return &ictWork{a: a, tau: tau, p: p, l: triangle(n, a.Entries()/2), pivots: make([]float64, n),
-		head: make([]int32, n), link: make([]int32, n), next: make([]int, n),
-		w: make([]float64, n), at: make([]int32, n)}
+	return &ictWork{a: a, tau: tau, p: p, l: triangle(n, a.Entries()/2), pivots: linear.Bulk[float64](n),
+		head: linear.Bulk[int32](n), link: linear.Bulk[int32](n), next: linear.Bulk[int](n),
+		w: linear.Bulk[float64](n), at: linear.Bulk[int32](n)}
 }
 
 func (k *ictWork) pivot(i int) float64 { return k.pivots[i] }

@@ -22,8 +22,8 @@ type iluWork struct {
 func newILUWork(a *linear.CSR, name string, modified bool) *iluWork {
 	n := a.NRows
 	lower, upper := halves(a)
-	f := &factors{lower: triangle(n, lower), upper: triangle(n, upper), inverse: make([]float64, n)}
-	return &iluWork{a: a, f: f, name: name, modified: modified, w: make([]float64, n), at: make([]int32, n)}
+	f := &factors{lower: triangle(n, lower), upper: triangle(n, upper), inverse: linear.Bulk[float64](n)}
+	return &iluWork{a: a, f: f, name: name, modified: modified, w: linear.Bulk[float64](n), at: linear.Bulk[int32](n)}
 }
 
 // row eliminates row i with the rows above it and stores it; it returns the

@@ -33,8 +33,8 @@ func newILUTWork(a *linear.CSR, name string, tau float64, p int, permtol float64
 	n := a.NRows
 	room := min(n*min(p, n)/2, a.Entries())
 	k := &ilutWork{a: a, name: name, tau: tau, p: p, permtol: permtol,
-		f:   &factors{lower: triangle(n, room), upper: triangle(n, room), inverse: make([]float64, n)},
-		pos: make([]int32, n), col: make([]int32, n), w: make([]float64, n), at: make([]int32, n)}
+		f:   &factors{lower: triangle(n, room), upper: triangle(n, room), inverse: linear.Bulk[float64](n)},
+		pos: linear.Bulk[int32](n), col: linear.Bulk[int32](n), w: linear.Bulk[float64](n), at: linear.Bulk[int32](n)}
 	for i := range k.pos {
 		k.pos[i], k.col[i] = int32(i), int32(i)
 	}

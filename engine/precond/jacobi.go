@@ -45,7 +45,7 @@ func buildJacobi(_ context.Context, s linear.System, _ linear.Values, _ func(flo
 	if !ok {
 		return nil, notes, fmt.Errorf("jacobi needs the diagonal; this operator does not give it")
 	}
-	d := make([]float64, n)
+	d := linear.Bulk[float64](n)
 	diag.Diagonal(d)
 	if m := s.Matrix(); m != nil && m.Entries() > 0 {
 		notes.Fill = float64(n) / float64(m.Entries())

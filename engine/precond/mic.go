@@ -62,7 +62,7 @@ func buildMIC(ctx context.Context, s linear.System, _ linear.Values, progress fu
 	}
 	shifted := *a
 	shifted.Val = append([]float64(nil), a.Val...)
-	w := &micWork{iluWork: *newILUWork(&shifted, name, true), a: a, pivots: make([]float64, a.NRows), diag: make([]int, a.NRows)}
+	w := &micWork{iluWork: *newILUWork(&shifted, name, true), a: a, pivots: linear.Bulk[float64](a.NRows), diag: linear.Bulk[int](a.NRows)}
 	for i := range w.diag {
 		w.diag[i], _ = diagonal(a, i)
 	}

@@ -43,7 +43,7 @@ func buildOwnFactors(_ context.Context, s linear.System, v linear.Values, _ func
 		return nil, notes, err
 	}
 	f := &factors{lower: strict(l, func(_, j int) float64 { return dl[j] }),
-		upper: strict(u, func(i, _ int) float64 { return du[i] }), inverse: make([]float64, s.N())}
+		upper: strict(u, func(i, _ int) float64 { return du[i] }), inverse: linear.Bulk[float64](s.N())}
 	notes.MinPivot = math.Inf(1)
 	for i := range f.inverse {
 		d := dl[i] * du[i]

@@ -71,7 +71,7 @@ func buildPoly(ctx context.Context, s linear.System, v linear.Values, progress f
 		return nil, notes, err
 	}
 	n := a.NRows
-	p := &poly{a: a, degree: v.Int("degree"), r: make([]float64, n), step: make([]float64, n)}
+	p := &poly{a: a, degree: v.Int("degree"), r: linear.Bulk[float64](n), step: linear.Bulk[float64](n)}
 	if _, p.inverse, err = pivots(ctx, a, name, 1, &notes, progress); err != nil {
 		return nil, notes, err
 	}

@@ -13,7 +13,7 @@ import (
 // is missing or has no inverse.
 func pivots(ctx context.Context, a *linear.CSR, name string, omega float64, notes *trace.BuildNotes, progress func(float64)) (at []int, inverse []float64, err error) {
 	n := a.NRows
-	at, inverse = make([]int, n), make([]float64, n)
+	at, inverse = linear.Bulk[int](n), linear.Bulk[float64](n)
 	for i := 0; i < n; i++ {
 		if err := look(ctx, progress, i, n); err != nil {
 			return nil, nil, err

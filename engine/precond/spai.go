@@ -32,8 +32,8 @@ func buildSPAI(ctx context.Context, s linear.System, _ linear.Values, progress f
 		return nil, notes, err
 	}
 	n := a.NRows
-	m := &linear.CSR{NRows: n, NCols: n, Ptr: a.Ptr, Col: a.Col, Val: make([]float64, a.Entries())}
-	w := &spaiWork{a: a, place: make([]int32, n)}
+	m := &linear.CSR{NRows: n, NCols: n, Ptr: a.Ptr, Col: a.Col, Val: linear.Bulk[float64](a.Entries())}
+	w := &spaiWork{a: a, place: linear.Bulk[int32](n)}
 	for i := 0; i < n; i++ {
 		if err := look(ctx, progress, i, n); err != nil {
 			return nil, notes, err

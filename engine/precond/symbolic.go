@@ -25,7 +25,7 @@ type fill struct {
 
 func newFill(a *linear.CSR, k int) *fill {
 	n := a.NRows
-	return &fill{a: a, k: k, next: make([]int32, n+1), lev: make([]uint8, n), ptr: make([]int, n+1)}
+	return &fill{a: a, k: k, next: linear.Bulk[int32](n + 1), lev: make([]uint8, n), ptr: linear.Bulk[int](n + 1)}
 }
 
 // row finds the columns of row i of the factors, left in the list, and keeps

@@ -43,7 +43,7 @@ type scratch struct {
 }
 
 func newScratch(n int) *scratch {
-	v := make([]float64, 4*n)
+	v := linear.Bulk[float64](4 * n)
 	return &scratch{v[:n:n], v[n : 2*n : 2*n], v[2*n : 3*n : 3*n], v[3*n:]}
 }
 

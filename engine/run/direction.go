@@ -62,8 +62,9 @@ func (t *Trial) judgeCurvature(e *trace.Event) {
 	sharper := *e
 	t.weigh(&sharper, m, better)
 	if sharper.Proved() && sharper.Value < e.Value {
-		*e = sharper
+		*e, v = sharper, better
 	}
+	t.keep(CurvatureVector, v)
 }
 
 // weigh sets the event's Rayleigh quotient, bounds and rows for direction v.
@@ -87,7 +88,7 @@ func (t *Trial) weigh(e *trace.Event, m *linear.CSR, v []float64) {
 // random vectors, for solvers that assume so.
 func (t *Trial) probe() {
 	n := t.sys.N()
-	buf := make([]float64, 4*n)
+	buf := linear.Bulk[float64](4 * n)
 	u, v, mu, mv := buf[:n], buf[n:2*n], buf[2*n:3*n], buf[3*n:]
 	linear.Uniform(u, 1)
 	linear.Uniform(v, 2)
