@@ -1,0 +1,85 @@
+package spectrum
+
+import (
+	"cmp"
+	"math"
+	"math/cmplx"
+	"slices"
+
+	"gonum.org/v1/gonum/mat"
+
+	"dwindle/engine/linear"
+)
+
+// DenseSymmetric returns all eigenvalues of a symmetric matrix, rising, by
+// reduction to tridiagonal form: 4n³/3 operations, 8n² bytes. Entries above
+// the diagonal are read. Nil where the iteration fails.
+func DenseSymmetric(a *linear.CSR) []float64 {
+	n := a.NRows
+	s := mat.NewSymDense(n, nil)
+	for i := range n {
+		cols, vals := a.Row(i)
+		for k, j := range cols {
+			if int(j) >= i {
+				s.SetSym(i, int(j), vals[k])
+			}
+		}
+	}
+	var e mat.EigenSym
+	if !e.Factorize(s, false) {
+		return nil
+	}
+	return e.Values(nil)
+}
+
+// DenseSingular returns all singular values of a square matrix, falling:
+// 8n³/3 operations, 8n² bytes. Nil where the iteration fails.
+func DenseSingular(a *linear.CSR) []float64 {
+	var s mat.SVD
+	if !s.Factorize(full(a), mat.SVDNone) {
+		return nil
+	}
+	return s.Values(nil)
+}
+
+// DenseEigenvalues returns all eigenvalues of a square matrix by rising real
+// part, then imaginary part: about 10n³ operations, 8n² bytes. Nil where the
+// iteration fails.
+func DenseEigenvalues(a *linear.CSR) []complex128 {
+	var e mat.Eigen
+	if !e.Factorize(full(a), mat.EigenNone) {
+		return nil
+	}
+	values := e.Values(nil)
+	slices.SortFunc(values, func(x, y complex128) int {
+		return cmp.Or(cmp.Compare(real(x), real(y)), cmp.Compare(imag(x), imag(y)))
+	})
+	return values
+}
+
+// full returns the matrix with all its zeros.
+func full(a *linear.CSR) *mat.Dense {
+	d := mat.NewDense(a.NRows, a.NCols, nil)
+	for i := range a.NRows {
+		cols, vals := a.Row(i)
+		for k, j := range cols {
+			d.Set(i, int(j), vals[k])
+		}
+	}
+	return d
+}
+
+// Henrici returns the departure from normality √(1 − Σ|λ|²/‖A‖_F²) of a matrix
+// with these eigenvalues and Frobenius norm (Henrici, Numer. Math. 4, 1962): 0
+// for a normal matrix, near 1 where eigenvalues tell next to nothing.
+func Henrici(values []complex128, frobenius float64) float64 {
+	if !(frobenius > 0) {
+		return 0
+	}
+	sum := 0.0
+	for _, v := range values {
+		r := cmplx.Abs(v) / frobenius
+		sum += r * r
+	}
+	return math.Sqrt(max(0, 1-sum))
+}
