@@ -45,7 +45,7 @@ func estimate(f *inspect.Facts, pairings int) time.Duration {
 
 func (s *Session) limits() run.Limits {
 	l := run.Limits{Target: run.Target{Rule: run.StopRule(s.opt.StopRule), Tol: s.opt.Tol},
-		Iterations: s.opt.Iterations, Seconds: s.opt.TrialSeconds, Delta: s.sys.Delta()}
+		Iterations: s.opt.Iterations, Seconds: s.opt.TrialSeconds, Delta: s.sys.Delta(), Vectors: s.opt.Vectors}
 	if l.Iterations == 0 {
 		l.Iterations = min(10*s.sys.N(), 100_000)
 	}

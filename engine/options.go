@@ -37,6 +37,7 @@ type Options struct {
 	TrialSeconds float64              // own time of a trial; 0 is no limit
 	Threads      int                  // 0: what a login node or the job allows
 	Memory       int64                // bytes for all live trials together; 0: half of what is free
+	Vectors      bool                 // keep the vectors behind findings for the report
 	Identify     bool                 // name the file's path in reports
 	Interactive  bool                 // the line-up starts by itself only if its estimated work is small
 	FactsOnly    bool                 // no trials: the session ends with the facts

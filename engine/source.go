@@ -149,22 +149,7 @@ func setMade(s *linear.System, n int) {
 // onesUnreachable says whether b = ones has a part outside A's range that the
 // visible null vectors show.
 func onesUnreachable(s *linear.System) bool {
-	m := s.Matrix()
-	if m == nil {
-		return false
-	}
-	at := m
-	if !m.ExactlySymmetric() {
-		at = m.Transpose()
-	}
-	null := linear.LeftNull(m, at, linear.FindComponents(m), s.Delta())
-	if len(null.Size) == 0 {
-		return false
-	}
-	p := make([]float64, len(s.B))
-	null.Project(p, s.B)
-	linear.Lin(p, 1, s.B, -1, p)
-	return linear.Norm2(p) > 1e-12*linear.Norm2(s.B)
+	return unreachable(*s) != nil
 }
 
 // shown is the name of a source on screens and in reports: never a path,

@@ -59,9 +59,10 @@ func (f *flags) save(d report.Document) (path string, err error) {
 	return path, toFile(path, form.write, d)
 }
 
-// saveExtras writes the history and the solution where they were asked for.
+// saveExtras writes the history, the solution and the vectors where they were
+// asked for.
 func (f *flags) saveExtras(d report.Document) error {
-	var history, solution error
+	var history, solution, vectors error
 	if f.history != "" {
 		history = toFile(f.history, report.CSV, d)
 	}
@@ -71,7 +72,25 @@ func (f *flags) saveExtras(d report.Document) error {
 	case f.solution != "":
 		solution = toFile(f.solution, report.Solution, d)
 	}
-	return errors.Join(history, solution)
+	if f.vectors != "" {
+		vectors = saveVectors(f.vectors, d)
+	}
+	return errors.Join(history, solution, vectors)
+}
+
+// saveVectors writes each vector into a file of its own in a folder, which is
+// made where it is missing.
+func saveVectors(dir string, d report.Document) error {
+	if err := os.MkdirAll(dir, 0o777); err != nil {
+		return unwritten(dir, reason(err))
+	}
+	for _, v := range d.Vectors {
+		write := func(w io.Writer) error { return report.WriteVector(w, d, v) }
+		if err := create(filepath.Join(dir, v.Name+".mtx"), write); err != nil {
+			return err
+		}
+	}
+	return nil
 }
 
 // toFile writes a document to a file.

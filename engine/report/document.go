@@ -23,6 +23,7 @@ type Document struct {
 	Findings  []diagnose.Finding
 	Choice    choose.Choice
 	Elapsed   time.Duration
+	Vectors   []Vector  // behind findings and ends, where they were asked for
 	Toolchain string    // what built the program, such as "go1.26.8 linux/amd64"
 	Solution  []float64 // of the chosen pairing, or of the best trial; nil if none
 }

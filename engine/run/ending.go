@@ -150,6 +150,7 @@ func (t *Trial) judgeDone(r trace.Reading) {
 func (t *Trial) end(stop trace.Stop, reason string) {
 	if t.solver != nil && t.scratch != nil && len(t.hist.Records) > 0 && stop != trace.Failed {
 		t.finalAudit()
+		t.lastVectors()
 		t.learnAll(stop)
 	}
 	t.mu.Lock()

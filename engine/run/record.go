@@ -31,6 +31,7 @@ func (t *Trial) record(r trace.Reading, first bool) {
 		found := t.audit(t.limits.Unreachable > 0 || r.Done || t.atLimit(iter))
 		a = &found
 		rec.Audit = over(a.true2, t.sizes.b)
+		t.waypoint(iter)
 	}
 	t.mu.Lock()
 	h.Records = append(h.Records, rec)

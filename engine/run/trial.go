@@ -40,6 +40,9 @@ type Trial struct {
 	ending     ending
 	turned     bool // a negative curvature has been judged
 
+	ways  [2][]float64 // iterates on the way, where vectors are asked for; the older first
+	wayAt int          // iteration of the later one
+
 	budget time.Duration // own time it may still use; negative is debt
 	cpu    time.Duration
 
@@ -58,6 +61,7 @@ type Limits struct {
 	Seconds     float64 // own time; 0 is none
 	Unreachable float64 // part of b known to be out of A's range, relative to ‖b‖; 0 if none known
 	Delta       float64 // what the printed digits leave open in an entry
+	Vectors     bool    // keep the vectors behind events and the end
 	Smallest    float64 // a proved lower bound of the spectrum of a symmetric A; 0 if none is known
 	// FieldTol is what the residual of each field must come down to as well,
 	// 0 for nothing; nil where no field is asked for.
