@@ -40,6 +40,15 @@ func (s *Session) Snapshot() Snapshot {
 
 // look makes a snapshot; s.mu is held.
 func (s *Session) look() Snapshot {
+	v := s.view()
+	if s.bench != nil || s.about != nil {
+		s.judge(&v)
+	}
+	return v
+}
+
+// view is a snapshot without a judgement; s.mu is held.
+func (s *Session) view() Snapshot {
 	v := Snapshot{Phase: s.phase, Progress: s.progress, Err: s.err, Facts: s.facts, Waiting: s.waiting,
 		Elapsed: s.elapsed(), Machine: thisMachine(s.opt.Threads, s.opt.Memory), Settings: s.settings(),
 		Version: s.changes}
@@ -50,6 +59,7 @@ func (s *Session) look() Snapshot {
 			v.System.Entries = m.Entries()
 		}
 	}
+	s.viewPast(&v)
 	if s.bench == nil {
 		return v
 	}
@@ -66,7 +76,6 @@ func (s *Session) look() Snapshot {
 	if v.Phase == Running && ended {
 		v.Phase = Ended
 	}
-	s.judge(&v)
 	return v
 }
 
@@ -85,7 +94,7 @@ func (s *Session) judge(v *Snapshot) {
 	now := s.clock()
 	if key != s.judged.key || now-s.judged.at > judgeAgain && v.Phase == Running {
 		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule, Guess: math.NaN()}
-		if s.sys.Guess != nil && len(histories) > 0 && len(histories[0].Records) > 0 {
+		if s.guessed() && len(histories) > 0 && len(histories[0].Records) > 0 {
 			c.Guess = histories[0].Records[0].Audit
 		}
 		f := diagnose.Judge(c)
@@ -120,6 +129,9 @@ func (s *Session) document() report.Document {
 	}
 	if s.bench != nil {
 		d.Solution = solution(s.bench.Trials(), v.Choice.Pairing)
+	}
+	if s.opt.Vectors {
+		d.Vectors = vectors(s.sys, d)
 	}
 	return d
 }

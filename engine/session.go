@@ -41,6 +41,16 @@ type Session struct {
 	haltedAt  time.Duration // when the present suspension began; negative if none
 	judged    verdict
 	changes   int64
+	recorder  *recorder // nil: no file is written
+	recordErr error     // why the recording ended
+
+	// of a session that was reopened from a file
+	reviving    sync.Mutex
+	about       *about // nil: this one is new
+	past        []Trial
+	pastElapsed time.Duration
+	again       string // where its system can be read again
+	lost        string // why it cannot
 }
 
 // Open starts a session on source (a file, "-", or sample:NAME[:ARGS]) in the
@@ -63,6 +73,17 @@ func Open(ctx context.Context, source string, opt Options) *Session {
 // flow runs the stages up to the trials, then moves the trials.
 func (s *Session) flow() {
 	defer close(s.done)
+	if isRecorded(s.source) {
+		err := s.opt.Check()
+		if err == nil {
+			err = s.reopen(s.opt.Recording)
+		}
+		if err != nil {
+			s.set(func() { s.phase, s.err = Broken, err })
+		}
+		close(s.ready)
+		return
+	}
 	if err := s.loadAndInspect(); err != nil {
 		s.set(func() { s.phase, s.err = Broken, err })
 		close(s.ready)
@@ -81,6 +102,11 @@ func (s *Session) loadAndInspect() (err error) {
 	}()
 	if err := s.opt.Check(); err != nil {
 		return err
+	}
+	if s.opt.Recording != "" {
+		if err := s.Record(s.opt.Recording); err != nil {
+			return err
+		}
 	}
 	linear.SetThreads(s.opt.Threads)
 	sys, err := read(s.ctx, s.source, s.opt.Stdin, s.opt.Memory, func(p float64) { s.set(func() { s.progress = p }) })
@@ -108,6 +134,9 @@ func (s *Session) loadAndInspect() (err error) {
 // Candidates lists the pairings that could be added, the refused ones with
 // their reason, admissible first.
 func (s *Session) Candidates() []choose.Candidate {
+	if s.revive() != nil {
+		return nil
+	}
 	b := s.theBench()
 	if b == nil {
 		return nil
@@ -156,6 +185,9 @@ func (s *Session) timeUp(b *run.Bench) {
 // Add adds a pairing as a new trial, or one for each value of a range, and
 // starts it. It returns the id of the first.
 func (s *Session) Add(pairing string) (id int, err error) {
+	if err := s.revive(); err != nil {
+		return 0, err
+	}
 	b := s.theBench()
 	if b == nil {
 		return 0, fmt.Errorf("the system is still being read")
@@ -191,11 +223,15 @@ func (s *Session) Cancel(id int) {
 }
 
 // Drop removes a trial and its curve.
-func (s *Session) Drop(id int) { s.on(id, func(b *run.Bench, t *run.Trial) { b.Drop(id) }) }
+func (s *Session) Drop(id int) {
+	s.dropPast(id)
+	s.on(id, func(b *run.Bench, t *run.Trial) { b.Drop(id) })
+}
 
 // MarkToday says that this trial is what the user's code runs now; id 0 takes
 // the mark back.
 func (s *Session) MarkToday(id int) {
+	s.markPast(id)
 	if b := s.theBench(); b != nil {
 		b.MarkToday(b.Find(id))
 	}
@@ -262,6 +298,11 @@ func (s *Session) Close() {
 	s.Interrupt("the session was closed")
 	s.cancel()
 	<-s.done
+	s.mu.Lock()
+	r := s.recorder
+	s.recorder = nil
+	s.mu.Unlock()
+	r.finish()
 }
 
 // Document returns everything a report can say at this moment.

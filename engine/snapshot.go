@@ -37,9 +37,15 @@ type Snapshot struct {
 	Trials   []Trial        // in the order they were added
 	Findings []diagnose.Finding
 	Choice   choose.Choice
-	Waiting  string        // in phase Ready: why the line-up was not started by itself
-	Elapsed  time.Duration // since the session was opened, suspended time left out
-	Version  int64         // changes whenever anything in the snapshot does, clocks of live trials included
+	// Recorded says that the session was read from a session file; ReadOnly
+	// why no pairing can be added to it, empty where one can.
+	Recorded  bool
+	ReadOnly  string
+	Recording string        // the file it is being written to, empty if none
+	RecordErr error         // why that ended before its time
+	Waiting   string        // in phase Ready: why the line-up was not started by itself
+	Elapsed   time.Duration // since the session was opened, suspended time left out
+	Version   int64         // changes whenever anything in the snapshot does, clocks of live trials included
 }
 
 // Trial is one trial as a snapshot shows it.

@@ -53,6 +53,13 @@ func NewBench(s linear.System, l Limits, memory int64, clock Clock) *Bench {
 	return b
 }
 
+// NumberFrom lets the next trial have this number.
+func (b *Bench) NumberFrom(id int) {
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	b.nextID = id
+}
+
 // Have returns what the system offers to methods.
 func (b *Bench) Have() Have { return b.have }
 

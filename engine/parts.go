@@ -1,0 +1,144 @@
+package engine
+
+import (
+	"errors"
+	"time"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/report"
+	"dwindle/engine/trace"
+)
+
+// part is what one frame of a session file adds to those before it: what has
+// changed, and of histories what is new. Findings and choice are not in it;
+// whoever reads it judges anew.
+type part struct {
+	Elapsed time.Duration
+	Closed  bool           // the session was closed after this part
+	About   *about         // nil: as before
+	Facts   *inspect.Facts // nil: as before
+	Order   []int          // the numbers of all trials, in order
+	Trials  []change       // of trials in which something moved
+}
+
+// about is what is known of a session besides its facts and trials.
+type about struct {
+	Version, Command, Toolchain string
+	Machine                     report.Machine
+	Settings                    report.Settings
+	System                      report.System
+	Source                      string  // a sample, or the file's name; its path where that may be told
+	Asked                       Options // what decides the outcome; no path unless it may be told
+}
+
+// change is what happened to a trial since the part before.
+type change struct {
+	ID      int
+	Rest    trace.History // without what follows
+	Keep    int           // so many earlier records stand
+	Records columns
+	Events  []trace.Event
+	Alphas  []float64
+	Betas   []float64
+	Vectors map[string][]float64 // nil: as before
+}
+
+// columns are records by columns: bits come back as they were, and zeros of
+// either sign with them.
+type columns struct {
+	Iter, MatVecs, Solves        []uint32
+	Clock                        []time.Duration
+	Residual, Audit, Alpha, Beta []float64
+}
+
+func columnsOf(list []trace.Record) columns {
+	var c columns
+	for _, r := range list {
+		c.Iter, c.MatVecs, c.Solves = append(c.Iter, r.Iter), append(c.MatVecs, r.MatVecs), append(c.Solves, r.Solves)
+		c.Clock = append(c.Clock, r.Clock)
+		c.Residual, c.Audit = append(c.Residual, r.Residual), append(c.Audit, r.Audit)
+		c.Alpha, c.Beta = append(c.Alpha, r.Alpha), append(c.Beta, r.Beta)
+	}
+	return c
+}
+
+// appendTo adds the records to list.
+func (c columns) appendTo(list []trace.Record) ([]trace.Record, error) {
+	n := len(c.Iter)
+	for _, k := range []int{len(c.MatVecs), len(c.Solves), len(c.Clock), len(c.Residual), len(c.Audit), len(c.Alpha), len(c.Beta)} {
+		if k != n {
+			return nil, errors.New("is damaged: columns of different length")
+		}
+	}
+	for i := range n {
+		list = append(list, trace.Record{Iter: c.Iter[i], MatVecs: c.MatVecs[i], Solves: c.Solves[i], Clock: c.Clock[i],
+			Residual: c.Residual[i], Audit: c.Audit[i], Alpha: c.Alpha[i], Beta: c.Beta[i]})
+	}
+	return list, nil
+}
+
+// told is how much of a trial stands in the file already.
+type told struct {
+	state   state
+	records int
+	last    uint32 // iteration of the last of them
+	events  int
+	coeffs  int
+	vectors int
+}
+
+// state changes whenever anything of a history does.
+type state struct {
+	stop                                  trace.Stop
+	today                                 bool
+	own                                   time.Duration
+	iterations, records, events, coeffs   int
+	counts, columns, told, locks, vectors int
+}
+
+func stateOf(h *trace.History) state {
+	return state{h.Stop, h.Today, h.OwnTime, h.Iterations, len(h.Records), len(h.Events), len(h.Alphas),
+		len(h.Counts), len(h.Columns), len(h.Predictions), len(h.Locks), len(h.Vectors)}
+}
+
+// since is the change of a trial since t was told, and renews t.
+func (t *told) since(id int, h trace.History) (change, bool) {
+	now := stateOf(&h)
+	if t.state == now {
+		return change{}, false
+	}
+	c := change{ID: id, Keep: t.records, Rest: h}
+	if n := t.records; n > len(h.Records) || n > 0 && h.Records[n-1].Iter != t.last { // the history was thinned
+		c.Keep = 0
+	}
+	c.Records, c.Events = columnsOf(h.Records[c.Keep:]), h.Events[t.events:]
+	k := min(len(h.Alphas), len(h.Betas))
+	c.Alphas, c.Betas = h.Alphas[t.coeffs:k], h.Betas[t.coeffs:k]
+	if len(h.Vectors) != t.vectors {
+		c.Vectors = h.Vectors
+	}
+	c.Rest.Records, c.Rest.Events, c.Rest.Alphas, c.Rest.Betas, c.Rest.Vectors = nil, nil, nil, nil, nil
+	*t = told{state: now, records: len(h.Records), events: len(h.Events), coeffs: k, vectors: len(h.Vectors)}
+	if t.records > 0 {
+		t.last = h.Records[t.records-1].Iter
+	}
+	return c, true
+}
+
+// after is the history that h becomes by the change.
+func (c change) after(h trace.History) (trace.History, error) {
+	if c.Keep < 0 || c.Keep > len(h.Records) {
+		return h, errors.New("is damaged: a record is missing")
+	}
+	next := c.Rest
+	var err error
+	if next.Records, err = c.Records.appendTo(h.Records[:c.Keep]); err != nil {
+		return h, err
+	}
+	next.Events = append(h.Events, c.Events...)
+	next.Alphas, next.Betas = append(h.Alphas, c.Alphas...), append(h.Betas, c.Betas...)
+	if next.Vectors = c.Vectors; c.Vectors == nil {
+		next.Vectors = h.Vectors
+	}
+	return next, nil
+}

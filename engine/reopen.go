@@ -1,0 +1,194 @@
+package engine
+
+import (
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"path/filepath"
+	"slices"
+	"strings"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/run"
+	"dwindle/samples"
+)
+
+// sessionExtension is how session files are named.
+const sessionExtension = ".dwindle"
+
+// isRecorded says whether source is a session file: by its first bytes, or by
+// its name, which promises one.
+func isRecorded(source string) bool {
+	if source == "-" || strings.HasPrefix(source, samples.Prefix) {
+		return false
+	}
+	info, err := os.Stat(source)
+	if err != nil || !info.Mode().IsRegular() {
+		return false
+	}
+	f, err := os.Open(source)
+	if err != nil {
+		return false
+	}
+	defer f.Close()
+	return isSessionFile(io.Reader(f)) || strings.HasSuffix(source, sessionExtension)
+}
+
+// reopen takes up a recorded session where its file ends. Nothing is run: the
+// trials are as they were left, and findings and choice are judged anew.
+func (s *Session) reopen(recording string) (err error) {
+	defer func() {
+		if p := recover(); p != nil {
+			err = &RecordError{s.source, fmt.Errorf("cannot be judged: %v", p)}
+		}
+	}()
+	r, err := replayFile(s.source)
+	if err != nil {
+		return err
+	}
+	linear.SetThreads(s.opt.Threads)
+	asked := r.about.Asked
+	asked.Threads, asked.Memory, asked.Clock, asked.Version = s.opt.Threads, s.opt.Memory, s.opt.Clock, s.opt.Version
+	if r.about.Command != "" {
+		asked.Command = r.about.Command
+	}
+	s.set(func() {
+		s.opt, s.about, s.facts, s.print, s.past = asked, r.about, r.facts, r.about.System.Fingerprint, r.trials
+		s.pastElapsed, s.phase, s.progress = r.elapsed, Ended, -1
+		s.lost = s.find()
+	})
+	s.Snapshot() // judged once here: a fault is one of the file
+	if recording == "" {
+		return nil
+	}
+	if sameFile(recording, s.source) {
+		return badOption("--session names the session that is opened; name another file")
+	}
+	return s.Record(recording)
+}
+
+func sameFile(a, b string) bool {
+	x, err := os.Stat(a)
+	y, fault := os.Stat(b)
+	return err == nil && fault == nil && os.SameFile(x, y)
+}
+
+// find looks where the system of a reopened session can be read again, and
+// says why it cannot, or nothing; s.mu is held.
+func (s *Session) find() string {
+	name := s.about.Source
+	if strings.HasPrefix(name, samples.Prefix) {
+		s.again = name
+		return ""
+	}
+	if name == "-" {
+		return "its system was read from stdin"
+	}
+	for _, path := range []string{name, filepath.Join(filepath.Dir(s.source), name)} {
+		if info, err := os.Stat(path); err == nil && info.Mode().IsRegular() {
+			s.again = path
+			return ""
+		}
+	}
+	return filepath.Base(name) + " is neither here nor beside it"
+}
+
+// revive reads the system of a reopened session again, so that new pairings
+// can be run beside what was recorded.
+func (s *Session) revive() error {
+	s.reviving.Lock()
+	defer s.reviving.Unlock()
+	s.mu.Lock()
+	about, bench, again, lost, opt := s.about, s.bench, s.again, s.lost, s.opt
+	s.mu.Unlock()
+	switch {
+	case bench != nil || about == nil:
+		return nil
+	case lost != "":
+		return errors.New("a recorded session is read-only: " + lost)
+	}
+	for _, name := range opt.files() {
+		if beside := filepath.Join(filepath.Dir(s.source), *name); *name != "" && !exists(*name) && exists(beside) {
+			*name = beside
+		}
+	}
+	sys, err := s.readAgain(again, opt)
+	if err != nil {
+		return s.lose(err.Error())
+	}
+	if fingerprint(sys) != about.System.Fingerprint {
+		return s.lose(sys.Name + " is not the system of this session any more")
+	}
+	s.takeUp(sys)
+	return nil
+}
+
+func exists(path string) bool { _, err := os.Stat(path); return err == nil }
+
+func (s *Session) readAgain(source string, opt Options) (linear.System, error) {
+	sys, err := read(s.ctx, source, nil, opt.Memory, func(float64) {})
+	if err == nil {
+		err = complete(&sys, opt)
+	}
+	if err == nil {
+		err = setNearNull(&sys, opt)
+	}
+	sys.Open = s.open
+	sys.Name = s.about.System.Name
+	return sys, err
+}
+
+// lose makes a reopened session read-only for good.
+func (s *Session) lose(why string) error {
+	s.set(func() { s.lost = why })
+	return errors.New("a recorded session is read-only: " + why)
+}
+
+// takeUp puts a bench under a reopened session; its trials are numbered on.
+func (s *Session) takeUp(sys linear.System) {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	s.sys = sys
+	last := 0
+	for _, t := range s.past {
+		last = max(last, t.ID)
+	}
+	s.bench = run.NewBench(sys, s.limits(), s.opt.Memory, s.clock)
+	s.bench.NumberFrom(last + 1)
+	s.phase, s.openAt = Running, s.clock()-s.pastElapsed
+	s.changes++
+	go s.bench.Run(s.ctx)
+}
+
+// viewPast adds to a view what came from a session file, and how the session
+// is being written to one; s.mu is held.
+func (s *Session) viewPast(v *Snapshot) {
+	v.RecordErr = s.recordErr
+	if s.recorder != nil {
+		v.Recording = s.recorder.path
+	}
+	if s.about == nil {
+		return
+	}
+	v.Recorded, v.ReadOnly, v.System, v.Trials = true, s.lost, s.about.System, slices.Clone(s.past)
+	if s.bench == nil {
+		v.Machine, v.Elapsed = s.about.Machine, s.pastElapsed
+	}
+}
+
+// guessed says whether the trials started from a guess.
+func (s *Session) guessed() bool { return s.sys.Guess != nil || s.about != nil && s.opt.Guess != "" }
+
+// dropPast takes a recorded trial off the list; markPast marks one as today's.
+func (s *Session) dropPast(id int) {
+	s.set(func() { s.past = slices.DeleteFunc(slices.Clone(s.past), func(t Trial) bool { return t.ID == id }) })
+}
+
+func (s *Session) markPast(id int) {
+	s.set(func() {
+		for i := range s.past {
+			s.past[i].History.Today = s.past[i].ID == id
+		}
+	})
+}
