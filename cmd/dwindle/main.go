@@ -68,7 +68,7 @@ func rootCommand() *cobra.Command {
 	root.SetHelpFunc(showHelp)
 	root.SetHelpCommand(helpCommand(root))
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error { return usage("%v; see %s --help", err, c.CommandPath()) })
-	root.AddCommand(runCommand(), factsCommand(), sampleCommand(), methodsCommand())
+	root.AddCommand(runCommand(), factsCommand(), checkCommand(), sampleCommand(), methodsCommand())
 	return root
 }
 
