@@ -9,29 +9,29 @@ import (
 )
 
 type checkJSON struct {
-	Schema        int           `json:"schema"`
-	Version       string        `json:"version"`
-	Command       string        `json:"command"`
-	Machine       machineJSON   `json:"machine"`
-	System        checkedJSON   `json:"system"`
-	Tol           number        `json:"tol"`
-	StopRule      string        `json:"stop_rule"`
-	Solved        bool          `json:"solved"`
-	Verdict       string        `json:"verdict"`
-	Hints         []string      `json:"hints"`
-	Notes         []string      `json:"notes"`
-	Said          *saidJSON     `json:"said"`
-	Measures      []measureJSON `json:"measures"`
-	Residual      residualJSON  `json:"residual"`
-	Norms         normsJSON     `json:"norms"`
-	Digits        int           `json:"digits_of_x"`
-	Printing      number        `json:"left_open_by_digits"`
-	Componentwise number        `json:"componentwise_error"`
-	Unsolved      int           `json:"unsolved_rows"`
-	Worst         []worstJSON   `json:"worst_rows"`
-	Fields        []fieldJSON   `json:"fields"`
-	Condition     *conditionOfX `json:"condition"`
-	NoCondition   string        `json:"no_condition"`
+	Schema        int                `json:"schema"`
+	Version       string             `json:"version"`
+	Command       string             `json:"command"`
+	Machine       machineJSON        `json:"machine"`
+	System        checkedJSON        `json:"system"`
+	Tol           number             `json:"tol"`
+	StopRule      string             `json:"stop_rule"`
+	Solved        bool               `json:"solved"`
+	Verdict       string             `json:"verdict"`
+	Hints         []string           `json:"hints"`
+	Notes         []string           `json:"notes"`
+	Said          *saidJSON          `json:"said"`
+	Measures      []measureJSON      `json:"measures"`
+	Residual      residualJSON       `json:"residual"`
+	Norms         normsJSON          `json:"norms"`
+	Digits        int                `json:"digits_of_x"`
+	Printing      number             `json:"left_open_by_digits"`
+	Componentwise number             `json:"componentwise_error"`
+	Unsolved      int                `json:"unsolved_rows"`
+	Worst         []worstJSON        `json:"worst_rows"`
+	Fields        []checkedFieldJSON `json:"fields"`
+	Condition     *conditionOfX      `json:"condition"`
+	NoCondition   string             `json:"no_condition"`
 }
 
 type checkedJSON struct {
@@ -84,7 +84,7 @@ type worstJSON struct {
 	Error number `json:"componentwise_error"`
 }
 
-type fieldJSON struct {
+type checkedFieldJSON struct {
 	Name          string `json:"name"`
 	Rows          int    `json:"rows"`
 	Residual      number `json:"residual"`
@@ -117,7 +117,7 @@ func CheckJSON(w io.Writer, d CheckDocument) error {
 		Residual: residualJSON{number(a.Residual.One), number(a.Residual.Two), number(a.Residual.Inf), number(a.Residual.Bound), number(a.Residual.Plain)},
 		Norms:    normsJSON{number(a.Norms.One), number(a.Norms.Inf), number(a.Norms.Fro), number(a.Norms.Two), a.Norms.TwoSettled},
 		Digits:   a.Digits, Printing: number(a.Printing), Componentwise: number(a.Componentwise), Unsolved: a.Unsolved,
-		Worst: []worstJSON{}, Fields: toFields(a.Fields), NoCondition: tame(a.NoFactor)}
+		Worst: []worstJSON{}, Fields: toCheckedFields(a.Fields), NoCondition: tame(a.NoFactor)}
 	for _, m := range a.Definitions {
 		j.Measures = append(j.Measures, toMeasure(m))
 	}
@@ -156,11 +156,11 @@ func toSaid(m *check.Match) *saidJSON {
 	return j
 }
 
-// toFields lists the residuals by field, never nil.
-func toFields(fields []trace.Field) []fieldJSON {
-	out := []fieldJSON{}
+// toCheckedFields lists the residuals by field, never nil.
+func toCheckedFields(fields []trace.Field) []checkedFieldJSON {
+	out := []checkedFieldJSON{}
 	for _, f := range fields {
-		j := fieldJSON{tame(f.Name), f.Rows, number(f.Residual), number(f.Componentwise), unknown}
+		j := checkedFieldJSON{tame(f.Name), f.Rows, number(f.Residual), number(f.Componentwise), unknown}
 		if f.Tol > 0 {
 			j.Tol = number(f.Tol)
 		}
