@@ -17,9 +17,9 @@ import (
 // sessionExtension is how session files are named.
 const sessionExtension = ".dwindle"
 
-// isRecorded says whether source is a session file: by its first bytes, or by
-// its name, which promises one.
-func isRecorded(source string) bool {
+// IsSessionFile says whether source is a session file: by its first bytes, or
+// by its name *.dwindle, which promises one.
+func IsSessionFile(source string) bool {
 	if source == "-" || strings.HasPrefix(source, samples.Prefix) {
 		return false
 	}
@@ -172,7 +172,7 @@ func (s *Session) viewPast(v *Snapshot) {
 		return
 	}
 	v.Recorded, v.ReadOnly, v.System, v.Trials = true, s.lost, s.about.System, slices.Clone(s.past)
-	if s.bench == nil {
+	if v.revived = s.bench != nil; !v.revived {
 		v.Machine, v.Elapsed = s.about.Machine, s.pastElapsed
 	}
 }

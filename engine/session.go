@@ -73,7 +73,7 @@ func Open(ctx context.Context, source string, opt Options) *Session {
 // flow runs the stages up to the trials, then moves the trials.
 func (s *Session) flow() {
 	defer close(s.done)
-	if isRecorded(s.source) {
+	if IsSessionFile(s.source) {
 		err := s.opt.Check()
 		if err == nil {
 			err = s.reopen(s.opt.Recording)

@@ -41,6 +41,7 @@ type Snapshot struct {
 	// why no pairing can be added to it, empty where one can.
 	Recorded  bool
 	ReadOnly  string
+	revived   bool          // it goes on beside what was recorded
 	Recording string        // the file it is being written to, empty if none
 	RecordErr error         // why that ended before its time
 	Waiting   string        // in phase Ready: why the line-up was not started by itself
@@ -53,6 +54,9 @@ type Trial struct {
 	ID      int // stable, from 1
 	History trace.History
 }
+
+// Unchanged says that nothing was added to what a session file told.
+func (s Snapshot) Unchanged() bool { return s.Recorded && !s.revived }
 
 // Live says whether any trial can still move without a command.
 func (s Snapshot) Live() bool {

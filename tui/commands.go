@@ -51,6 +51,22 @@ func (m *model) write() tea.Cmd {
 	}
 }
 
+// record writes the session to a file from now on.
+func (m *model) record() tea.Cmd {
+	switch {
+	case m.snap.Recording != "":
+		m.say("the session is recorded to " + m.snap.Recording + " already")
+		return nil
+	case m.cfg.keepNow == nil:
+		m.say("no session is recorded here")
+		return nil
+	}
+	return func() tea.Msg {
+		path, err := m.cfg.keepNow(m.s)
+		return acted{said: "recorded from now on to " + path, err: err}
+	}
+}
+
 // nextGlyphs walks through the glyph sets.
 func (m *model) nextGlyphs() tea.Cmd {
 	m.signs = m.signs.next()

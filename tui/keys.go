@@ -55,6 +55,7 @@ var common = []action{
 	bind("advice; try the leading finding's", (*model).tryLeading, "a"),
 	bind("new pairing; from a list, or typed", (*model).openAdd, "n"),
 	bind("write; the report", (*model).write, "w"),
+	bind("record; the session, to open it again", (*model).record, "W"),
 	bind("glyphs; dots, lines, ASCII", (*model).nextGlyphs, "u"),
 	bind("slower screen", func(m *model) tea.Cmd { return m.changeRate(0.5) }, "-"),
 	bind("faster screen", func(m *model) tea.Cmd { return m.changeRate(2) }, "+", "="),

@@ -27,6 +27,7 @@ type Config struct {
 	Samples    []SampleInfo
 	Open       func(source string) *engine.Session            // for the chooser; source is a file or sample:NAME[:ARGS]
 	Write      func(*engine.Session) (path string, err error) // writes the report
+	Record     func(*engine.Session) (path string, err error) // records the session to a file from now on
 	SaveOnExit func(*engine.Session)                          // called once after every ending, signals and panics included
 	In         *os.File                                       // nil: os.Stdin
 	Out        *os.File                                       // nil: os.Stdout
@@ -37,6 +38,7 @@ type Config struct {
 	openNow  func(source string) session
 	writeNow func(session) (string, error)
 	saveNow  func(session)
+	keepNow  func(session) (string, error)
 }
 
 // ErrInterrupted is returned when ctrl+c or a signal ended the interface.
@@ -61,6 +63,9 @@ func Run(cfg Config) error {
 	}
 	if write := cfg.Write; write != nil {
 		cfg.writeNow = func(s session) (string, error) { return write(s.(*engine.Session)) }
+	}
+	if record := cfg.Record; record != nil {
+		cfg.keepNow = func(s session) (string, error) { return record(s.(*engine.Session)) }
 	}
 	if save := cfg.SaveOnExit; save != nil {
 		cfg.saveNow = func(s session) { save(s.(*engine.Session)) }

@@ -25,7 +25,7 @@ func version() string {
 }
 
 // fileFlags name files; their folders are left out of reports.
-var fileFlags = map[string]bool{"rhs": true, "guess": true, "out": true, "history": true, "solution": true,
+var fileFlags = map[string]bool{"rhs": true, "guess": true, "out": true, "history": true, "solution": true, "session": true,
 	"labels": true, "fields": true, "null": true, "coordinates": true, "split": true, "x": true, "x0": true}
 
 // commandLine is the command that repeats this run, quoted for a shell. File

@@ -8,6 +8,7 @@ import (
 	"strings"
 
 	"github.com/spf13/cobra"
+	"github.com/spf13/pflag"
 
 	"dwindle/engine"
 )
@@ -18,6 +19,7 @@ type flags struct {
 	memory            string
 	as, out           string
 	history, solution string
+	vectors           string
 	strict            bool
 	glyphs            string
 	rate              float64
@@ -61,6 +63,8 @@ func (f *flags) results(c *cobra.Command) {
 	s.StringVar(&f.out, "out", "", "save the result to `FILE` (default: a new file in the state folder)")
 	s.StringVar(&f.history, "history", "", "write the history of all trials to `FILE.csv`")
 	s.StringVar(&f.solution, "solution", "", "write the solution to `FILE` as a Matrix Market array")
+	s.StringVar(&f.opt.Recording, "session", "", "record the session to `FILE` as it goes; dwindle FILE opens it again (name it *.dwindle)")
+	s.StringVar(&f.vectors, "vectors", "", "write the vectors behind the findings into folder `DIR`, as Matrix Market arrays")
 }
 
 // finish checks the options and completes them with what the engine needs.
@@ -84,10 +88,28 @@ func (f *flags) finish(c *cobra.Command, args []string) error {
 	if !slices.Contains([]string{"", "dot", "line", "ascii"}, f.glyphs) {
 		return usage("--glyphs must be dot, line or ascii, not %q", f.glyphs)
 	}
+	f.opt.Vectors = f.vectors != ""
 	f.opt.Version = version()
 	f.opt.Command = commandLine(c, args, f.opt.Identify)
 	f.opt.Stdin = c.InOrStdin()
+	if len(args) == 1 && engine.IsSessionFile(args[0]) {
+		if err := unmoved(c, args[0]); err != nil {
+			return err
+		}
+	}
 	return f.opt.Check()
+}
+
+// unmoved refuses options that would change what a recorded session is.
+func unmoved(c *cobra.Command, file string) (err error) {
+	allowed := []string{"threads", "memory", "identify", "as", "out", "history", "solution", "vectors", "session",
+		"strict", "glyphs", "rate"}
+	c.Flags().Visit(func(f *pflag.Flag) {
+		if err == nil && !slices.Contains(allowed, f.Name) {
+			err = usage("--%s does not apply: %s is a recorded session", f.Name, file)
+		}
+	})
+	return err
 }
 
 // units are the suffixes of a size, in bytes.

@@ -20,6 +20,7 @@ measurement what holds them back.
 
 Without SYSTEM it opens on the built-in samples. SYSTEM is a Matrix Market,
 Harwell-Boeing or Rutherford-Boeing file, - for stdin, or sample:NAME[:ARGS].
+A session recorded with --session opens again with all its screens.
 
 Exit status: 0 left by its user; 2 wrong usage; 3 input unreadable;
 4 interrupted, what was done is saved; 5 internal fault, or output that could
@@ -69,10 +70,17 @@ func (f *flags) show(c *cobra.Command, args []string) error {
 		return open(source, opt)
 	}
 	cfg.Write = func(s *engine.Session) (string, error) { return f.save(s.Document()) }
+	cfg.Record = func(s *engine.Session) (string, error) {
+		path, err := stateFile("dwindle")
+		if err == nil {
+			err = s.Record(path)
+		}
+		return path, err
+	}
 	var saved error
 	cfg.SaveOnExit = func(s *engine.Session) {
 		end(s)
-		if d := s.Document(); len(d.Trials) > 0 {
+		if d := s.Document(); len(d.Trials) > 0 && !s.Snapshot().Unchanged() {
 			saved = f.saveAndTell(c.ErrOrStderr(), d, nil)
 		}
 	}

@@ -22,6 +22,7 @@ type progress struct {
 	told   map[int]bool
 	shown  int // characters of the renewed line
 	latest time.Time
+	lost   bool // told that the session file is given up
 }
 
 func newProgress(w io.Writer) *progress {
@@ -46,6 +47,11 @@ func (p *progress) update(s engine.Snapshot) {
 			p.wipe()
 			fmt.Fprintf(p.w, "%3d %s: %s\n", t.ID, printable(t.History.Pairing), report.Outcome(t.History))
 		}
+	}
+	if s.RecordErr != nil && !p.lost {
+		p.lost = true
+		p.wipe()
+		fmt.Fprintln(p.w, "dwindle:", printable(s.RecordErr.Error())+"; the run goes on without it")
 	}
 	if p.live && time.Since(p.latest) >= time.Second {
 		p.latest = time.Now()

@@ -16,7 +16,8 @@ const runHelp = `Runs pairings of solver and preconditioner on SYSTEM side by si
 screen: progress on stderr, the result on stdout and in a file.
 
 SYSTEM is a Matrix Market, Harwell-Boeing or Rutherford-Boeing file, - for
-stdin, or sample:NAME[:ARGS].
+stdin, or sample:NAME[:ARGS]. Of a session that was recorded with --session
+the result is written as it stands there; nothing is run.
 
 Exit status: 0 today's pairing, if given, else any converged; 1 it did not;
 2 wrong usage; 3 input unreadable; 4 interrupted, what was done is printed and
@@ -56,6 +57,8 @@ func (f *flags) run(c *cobra.Command, args []string) error {
 	}
 	end(s)
 	switch {
+	case s.Snapshot().RecordErr != nil:
+		return &ending{fault, ""} // told when it happened
 	case stopped:
 		return &ending{interrupted, ""}
 	case !d.Reached() || f.strict && d.Blocked():
