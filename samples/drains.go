@@ -24,6 +24,8 @@ var drains = Sample{
 		return pipes + n*n - 1, 5*pipes - 4
 	},
 	Make: makeDrains,
+
+	Expect: []string{"restart-length"},
 }
 
 // makeDrains assembles [R Bᵀ; B 0], B the joints by pipes with a 1 where a pipe

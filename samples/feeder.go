@@ -15,7 +15,7 @@ var feeder = Sample{
 	},
 	Size:   func(v linear.Values) (int, int) { return v.Int("n"), 5 * v.Int("n") },
 	Make:   makeFeeder,
-	Expect: []string{"row-scaling"},
+	Expect: []string{"row-scaling", "residual-rises"},
 }
 
 func makeFeeder(v linear.Values) (linear.System, error) {

@@ -20,6 +20,8 @@ var seepage = Sample{
 		return n * n, fivePointEntries(n, n)
 	},
 	Make: makeSeepage,
+
+	Expect: []string{"lost-orthogonality"},
 }
 
 func makeSeepage(v linear.Values) (linear.System, error) {

@@ -21,6 +21,8 @@ var strakos = Sample{
 	},
 	Size: func(v linear.Values) (int, int) { return v.Int("n"), v.Int("n") },
 	Make: makeStrakos,
+
+	Expect: []string{"lost-orthogonality"},
 }
 
 func makeStrakos(v linear.Values) (linear.System, error) {

@@ -86,6 +86,12 @@ var stagnation = Rule{"restart-stagnation", func(c Case) (out []Finding) {
 		if longer, ok := doubled(solver); ok {
 			f.Try = []string{prep + longer + "+" + m}
 		}
+		if length, known := restartOf(h); known {
+			if keep, advice, ok := deflatedRestart(h, length); ok {
+				f.Advice += "; or " + advice
+				f.Try = append([]string{keep}, f.Try...)
+			}
+		}
 		out = append(out, f)
 	}
 	return out

@@ -39,6 +39,16 @@ type Finding struct {
 	Advice    string
 	Try       []string // pairings this finding offers to start
 	Evidence  []Evidence
+	// Predicts are the counts that this finding foresees for its tries, to be
+	// held against what comes of them.
+	Predicts []Predicted
+}
+
+// Predicted is one number foreseen for a pairing.
+type Predicted struct {
+	Pairing  string
+	Quantity string // "iterations"
+	Value    float64
 }
 
 // Case is what the rules judge.

@@ -65,6 +65,9 @@ var singletons = Rule{"singleton-rows", func(c Case) []Finding {
 	default:
 		return nil
 	}
+	if words, evidence, ok := withoutSingletons(c); ok {
+		g.Claim, g.Evidence = g.Claim+words, append(g.Evidence, evidence...)
+	}
 	return []Finding{g}
 }}
 

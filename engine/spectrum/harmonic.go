@@ -75,8 +75,8 @@ func (h *Harmonic) Smallest(hbar []float64, k, limit int, p [][]float64) int {
 	return kept
 }
 
-// Values returns the harmonic Ritz values of H̄, of full rank and not changed,
-// by rising magnitude; nil where they are not found.
+// Values returns the finite harmonic Ritz values of H̄, of full rank and not
+// changed, by rising magnitude; nil where they are not found.
 func (h *Harmonic) Values(hbar []float64) []complex128 {
 	h.inverse(hbar)
 	first := lapackimpl.Implementation{}.Dgeev(lapack.LeftEVNone, lapack.RightEVNone, h.m, h.n, h.m,
@@ -85,9 +85,11 @@ func (h *Harmonic) Values(hbar []float64) []complex128 {
 		return nil
 	}
 	h.sort()
-	out := make([]complex128, h.m)
-	for i, j := range h.order {
-		out[i] = 1 / complex(h.re[j], h.im[j])
+	out := make([]complex128, 0, h.m)
+	for _, j := range h.order {
+		if h.re[j] != 0 || h.im[j] != 0 {
+			out = append(out, 1/complex(h.re[j], h.im[j]))
+		}
 	}
 	return out
 }
