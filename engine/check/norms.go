@@ -45,25 +45,34 @@ const twoSteps = 120
 // settled to a thousandth.
 func (w *work) two(start []float64) (value float64, settled bool) {
 	t := new(spectrum.Tridiagonal)
-	next := 10
-	w.lanczos(start, twoSteps, func(alpha, beta float64) bool {
-		more := t.AddLanczos(alpha, beta)
-		if more && t.Order() < next && t.Order() < twoSteps {
-			return true
-		}
-		next = t.Order() + t.Order()/4
+	look := func() {
 		e := t.Extremes()
 		value, settled = math.Abs(e.Largest), e.ResidualLargest <= 1e-3*math.Abs(e.Largest)
 		if -e.Smallest > value {
 			value, settled = -e.Smallest, e.ResidualSmallest <= -1e-3*e.Smallest
 		}
+	}
+	next := 10
+	w.lanczos(start, twoSteps, func(alpha, beta float64) bool {
+		more := t.AddLanczos(alpha, beta)
+		if t.Order() >= next {
+			next = t.Order() + t.Order()/4
+			look()
+		}
 		return more && !settled
 	})
+	if t.Order() > 0 {
+		look()
+	}
 	if !w.symmetric {
 		value = math.Sqrt(value)
 	}
 	return value, settled
 }
+
+// exhausted is the size of a new direction, relative to A, that is nothing but
+// rounding: the Krylov space is complete.
+const exhausted = 10 * unit
 
 // lanczos runs Lanczos on A, or on AᵀA where A is not symmetric, from the
 // direction of start, and hands out the coefficients T_jj and T_{j+1,j} of
@@ -78,7 +87,7 @@ func (w *work) lanczos(start []float64, steps int, take func(alpha, beta float64
 		return
 	}
 	linear.Scale(v, 1/size, start)
-	beta := 0.0
+	beta, most := 0.0, 0.0
 	for range steps {
 		if w.ctx.Err() != nil {
 			return
@@ -93,7 +102,8 @@ func (w *work) lanczos(start []float64, steps int, take func(alpha, beta float64
 		alpha := linear.Dot(v, u)
 		linear.Axpy(-alpha, v, u)
 		beta = linear.Norm2(u)
-		if !take(alpha, beta) || !(beta > 0) || math.IsInf(beta, 0) {
+		most = math.Max(most, math.Abs(alpha)+beta)
+		if !take(alpha, beta) || !(beta > exhausted*most) || math.IsInf(beta, 0) {
 			return
 		}
 		old, v, u = v, u, old

@@ -73,6 +73,7 @@ func (w *work) bidiagonal(steps int, keep func(square float64) bool) {
 	}
 	linear.Scale(u, 1/beta, w.r0)
 	beta = 0
+	most := 0.0
 	for range steps {
 		if w.ctx.Err() != nil {
 			return
@@ -80,14 +81,15 @@ func (w *work) bidiagonal(steps int, keep func(square float64) bool) {
 		w.at.Apply(y, u)
 		linear.Lin(v, 1, y, -beta, v)
 		alpha := linear.Norm2(v)
-		if !(alpha > 0) {
+		if !(alpha > exhausted*most) {
 			return
 		}
 		linear.Scale(v, 1/alpha, v)
 		w.a.Apply(y, v)
 		linear.Lin(u, 1, y, -alpha, u)
 		beta = linear.Norm2(u)
-		if !keep(alpha*alpha+beta*beta) || !(beta > 0) {
+		most = math.Max(most, alpha+beta)
+		if !keep(alpha*alpha+beta*beta) || !(beta > exhausted*most) {
 			return
 		}
 		linear.Scale(u, 1/beta, u)

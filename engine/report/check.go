@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"io"
 	"math"
-	"strings"
 
 	"dwindle/engine/check"
 )
@@ -143,7 +142,7 @@ func groundLines(d CheckDocument) []string {
 	if a.Digits < 17 {
 		say("x is written with %s", plural(a.Digits, "digit", "digits"))
 	}
-	lines = append(lines, hang("rule ", plain(fmt.Sprintf("%s, tol %s; %s; fingerprint %s", d.StopRule, exact(d.Tol), strings.TrimSpace(d.Machine.CPU), d.System.Fingerprint)), Width)...)
+	lines = append(lines, "fingerprint "+orDash(plain(d.System.Fingerprint)))
 	return append(lines, hang("repeat with ", plain(d.Command)+" (dwindle "+plain(d.Version)+")", Width)...)
 }
 
