@@ -1,7 +1,5 @@
 package inspect
 
-import "dwindle/engine/spectrum"
-
 // Study is what a second, costlier look at a system found, within a budget of
 // work: spectra and what changes them. A nil or NaN part was not looked at or
 // did not fit the budget. Values are in the user's rows and units.
@@ -56,7 +54,8 @@ type NullDirection struct {
 // Normality says how far the eigenvalues of A can be trusted.
 type Normality struct {
 	Henrici             float64 // departure from normality relative to ‖A‖_F: √(1 − Σ|λ|²/‖A‖_F²), or its bound
-	Exact               bool    // from all eigenvalues; else from the commutator, a lower bound
+	Exact               bool    // from all eigenvalues; else a lower bound, by balancing
+	Equilibrated        float64 // the same of A equilibrated, so that units are not taken for it
 	FieldMin, FieldMax  float64 // smallest and largest eigenvalue of (A+Aᵀ)/2
 	FieldHoldsZero      bool
 	SkewMax             float64 // largest |eigenvalue| of (A−Aᵀ)/2
@@ -72,6 +71,7 @@ type Bin struct {
 
 // Couplings tells how the strength of neighbours differs.
 type Couplings struct {
+	Scalar    bool    // nine rows in ten are of one sign off the diagonal and of the other on it; else only Mesh and Dimension are filled in
 	OneWay    float64 // share of rows whose strong couplings are few and far stronger than the others
 	Ratio     float64 // median ratio of strong to weak coupling in those rows
 	Jump      float64 // largest ratio of the diagonals of neighbouring rows; 1 for none
@@ -88,7 +88,7 @@ type Block struct {
 
 // LineRows are rows that constrain single unknowns.
 type LineRows struct {
-	Kind  string // "identity", "penalty", "singleton", "row-replaced"
+	Kind  string // "singleton", "row-replaced" or "penalty"
 	Count int
 	Rows  []int   // the first 16
 	Value float64 // typical diagonal
@@ -97,10 +97,11 @@ type LineRows struct {
 
 // Lopsided says where A differs from its transpose.
 type Lopsided struct {
-	Rows     []int // rows with an asymmetric entry, the first 16
-	Count    int
-	Identity int  // of them: rows of the form e_i whose column is not
-	OnlyThem bool // A without these rows and columns is symmetric
+	Rows         []int // rows with an asymmetric entry, the first 16
+	Count        int
+	Identity     int   // of them: rows of the form e_i whose column is not
+	IdentityRows []int // the first 16
+	OnlyThem     bool  // A without these rows and columns is symmetric
 }
 
 // Growth is how iterations grow with size, from smaller parts cut out of the system.
@@ -113,9 +114,9 @@ type Growth struct {
 
 // Restore is the smallest shift that makes A positive definite, estimated.
 type Restore struct {
-	Shift float64 // A + Shift·D is positive definite
-	Of    string  // "I" or "diag A"
-	Rows  []int   // that carry the direction which needs it
+	Shift  float64   // A + Shift·D is positive definite
+	Bound  float64   // of its error
+	Of     string    // "diag A"
+	Rows   []int     // that carry the direction which needs it, at most 16
+	Shares []float64 // of the square of its norm, in units of the diagonal
 }
-
-var _ = spectrum.Symmetric

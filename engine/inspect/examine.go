@@ -1,0 +1,114 @@
+package inspect
+
+import (
+	"context"
+	"math"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/prepare"
+)
+
+// Budget bounds a second look, in counted work, so that what it finds does not
+// depend on the machine or its load.
+type Budget struct {
+	Work  float64 // operations, foreseen before each part: one that does not fit is left out
+	Dense int     // order up to which all eigenvalues are computed
+}
+
+// The budgets. Quick is about half a second, for the look before a run;
+// Thorough about ten, for a look that was asked for.
+var (
+	Quick    = Budget{Work: 1e9, Dense: 500}
+	Thorough = Budget{Work: 1.2e10, Dense: 2000}
+)
+
+// most is the share of a budget that a factorisation may take.
+const most = 0.4
+
+// Examine takes a second, costlier look at an inspected system, within the
+// budget: conditions of A and of what scaling makes of it, nearly free
+// directions, normality, couplings, rows that constrain, growth with size. It
+// returns f with Study filled in; f itself is not changed. After each part it
+// calls seen (if not nil) with a new value that it never changes again. A
+// system without entries has no study. It stops with the context's error.
+func Examine(ctx context.Context, s linear.System, f *Facts, b Budget, seen func(*Facts)) (*Facts, error) {
+	a := s.Matrix()
+	if a == nil || f.N < 2 || f.EmptyRowCount+f.EmptyColCount > 0 || !finite(f.NormFro) {
+		return f, nil
+	}
+	e := &exam{ctx: ctx, s: s, f: f, a: a, left: b.Work, budget: b, symmetric: f.Symmetric.Answer == Yes}
+	e.out.Digits = math.NaN()
+	parts := []func(*exam) error{(*exam).pattern, (*exam).factor, (*exam).spectra, (*exam).freeDirections,
+		(*exam).restore, (*exam).normality, (*exam).growth, (*exam).density}
+	result := f
+	for _, part := range parts {
+		if err := ctx.Err(); err != nil {
+			return nil, err
+		}
+		if err := part(e); err != nil {
+			return nil, err
+		}
+		result = e.facts()
+		if seen != nil {
+			seen(result)
+		}
+	}
+	return result, nil
+}
+
+// exam is a second look under way.
+type exam struct {
+	ctx       context.Context
+	s         linear.System
+	f         *Facts
+	a         *linear.CSR
+	symmetric bool // exactly or to rounding
+	budget    Budget
+	left      float64 // operations
+	out       Study
+
+	scaled   *linear.CSR // A equilibrated: B = R A C
+	row, col []float64   // R and C
+	solver   solver      // of B; nil where there is no factorisation
+	shift    float64     // solver is that of B + shift·I
+	singular bool        // B has no factorisation: a pivot vanishes to rounding
+	replaced []bool      // rows of the identity whose columns are not; nil: none
+	free     [][]float64 // nearly free directions of B, orthonormal
+}
+
+// facts returns the facts with a copy of the study so far.
+func (e *exam) facts() *Facts {
+	f, s := *e.f, e.out
+	f.Study = &s
+	return &f
+}
+
+// spend takes the work from the budget, if it is there.
+func (e *exam) spend(work float64) bool {
+	if work > e.left {
+		return false
+	}
+	e.left -= work
+	return true
+}
+
+// product is the work of one product with A.
+func (e *exam) product() float64 { return 2*float64(len(e.a.Val)) + 4*float64(e.f.N) }
+
+// equilibrate fills in B, R and C.
+func (e *exam) equilibrate() error {
+	scale, _ := prepare.Lookup("scale")
+	one := make([]float64, e.f.N)
+	for i := range one {
+		one[i] = 1
+	}
+	s, back, err := scale.Apply(e.ctx, linear.System{A: e.a, B: one}, linear.Values{})
+	if err != nil {
+		return err
+	}
+	e.scaled, e.row, e.col = s.Matrix(), s.B, make([]float64, e.f.N)
+	back.Solution(e.col, one)
+	return nil
+}
+
+func finite(x float64) bool { return x-x == 0 }

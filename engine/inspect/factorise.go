@@ -1,0 +1,123 @@
+package inspect
+
+import (
+	"errors"
+
+	"dwindle/engine/direct"
+	"dwindle/engine/linear"
+)
+
+// solver solves with a factorisation, and with the transpose.
+type solver interface {
+	Solve(dst, b []float64)
+	SolveT(dst, b []float64)
+}
+
+// both is a symmetric solver.
+type both struct{ direct.Solver }
+
+func (s both) SolveT(dst, b []float64) { s.Solve(dst, b) }
+
+// tinyShift makes a singular symmetric matrix, equilibrated, one that can be
+// factorised: its free directions stand out all the more.
+const tinyShift = 1e-9
+
+// equilibrateWork is the operations an entry that an equilibration takes.
+const equilibrateWork = 150
+
+// bytesOfFactor is the memory a factorisation of a study may take.
+const bytesOfFactor = 256 << 20
+
+// factor factorises A equilibrated where that fits the budget.
+func (e *exam) factor() error {
+	if !e.spend(equilibrateWork * float64(len(e.a.Val))) {
+		return nil
+	}
+	if err := e.equilibrate(); err != nil {
+		return err
+	}
+	var err error
+	if e.symmetric {
+		err = e.factorSymmetric()
+	} else {
+		err = e.factorGeneral()
+	}
+	var pivot *direct.PivotError
+	switch {
+	case errors.As(err, &pivot):
+		e.singular = true
+		return nil
+	case errors.Is(err, direct.ErrTooLarge):
+		return nil
+	}
+	return err
+}
+
+// within says whether a factorisation of that work and memory fits.
+func (e *exam) within(work float64, bytes int64) bool {
+	return work <= most*e.budget.Work && bytes <= bytesOfFactor && e.spend(work)
+}
+
+func (e *exam) factorSymmetric() error {
+	if e.tooLargeToOrder() {
+		return nil
+	}
+	sym := direct.Predict(e.a, direct.Best)
+	if !e.within(sym.Work, sym.Bytes()+sym.Stack) {
+		return nil
+	}
+	if e.f.PositiveDefinite.Answer == Yes {
+		if c, err := direct.FactorCholesky(e.ctx, e.scaled, sym, nil); err == nil {
+			e.solver = both{c}
+			return nil
+		}
+	}
+	f, err := direct.FactorLDL(e.ctx, e.scaled, sym, nil)
+	if err != nil {
+		return err
+	}
+	if f.Inertia.Zero > 0 {
+		e.singular, e.shift = true, tinyShift
+		if f, err = direct.FactorLDL(e.ctx, plusIdentity(e.scaled, e.shift), sym, nil); err != nil {
+			return err
+		}
+	}
+	e.solver = both{f}
+	return nil
+}
+
+func (e *exam) factorGeneral() error {
+	if e.tooLargeToOrder() {
+		return nil
+	}
+	plan := direct.PredictLU(e.a, direct.Best)
+	if !e.within(plan.Work, plan.Bytes()) {
+		return nil
+	}
+	f, err := direct.FactorLU(e.ctx, e.scaled, plan, nil)
+	if err != nil {
+		return err
+	}
+	e.solver = f
+	return nil
+}
+
+// tooLargeToOrder says whether even an order of elimination costs more than a
+// study may.
+func (e *exam) tooLargeToOrder() bool {
+	return !e.spend(200 * float64(len(e.a.Val)+e.f.N))
+}
+
+// plusIdentity returns a + s·I; a zero on the diagonal that is not stored is
+// added.
+func plusIdentity(a *linear.CSR, s float64) *linear.CSR {
+	entries := make([]linear.Entry, 0, len(a.Val)+a.NRows)
+	for i := range a.NRows {
+		cols, vals := a.Row(i)
+		for k, j := range cols {
+			entries = append(entries, linear.Entry{I: i, J: int(j), V: vals[k]})
+		}
+		entries = append(entries, linear.Entry{I: i, J: i, V: s})
+	}
+	return linear.FromEntries(a.NRows, a.NRows, entries)
+}

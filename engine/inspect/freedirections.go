@@ -1,0 +1,208 @@
+package inspect
+
+import (
+	"math"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/spectrum"
+)
+
+// A direction is nearly free where A equilibrated maps it to freeLimit of its
+// norm or less, and stands apart where the next one is mapped to isolated times
+// as much; below vanishing its quotient may be rounding alone.
+const (
+	freeLimit  = 1e-8
+	isolated   = 100
+	vanishing  = 1e-13
+	mostFree   = 8
+	freeSteps  = 14
+	tinyDivide = 1e-300
+)
+
+// freeDirections finds the directions that A equilibrated nearly maps to zero:
+// first the rigid motions of the coordinates, where they are known, then, with
+// the factorisation, those that the inverse stretches most.
+func (e *exam) freeDirections() error {
+	if e.scaled == nil {
+		return nil
+	}
+	norm := e.scaledNorm()
+	quotients := e.rigidMotions(norm)
+	rigid := len(quotients)
+	next, err := e.searchFree(norm, &quotients)
+	if err != nil {
+		return err
+	}
+	k := apart(append(quotients, next), rigid)
+	e.free = localise(e.free[:k], rigid)
+	for j, v := range e.free {
+		d := e.direction(v, norm)
+		d.Next = next
+		if k < len(quotients) {
+			d.Next = quotients[k]
+		}
+		if j < rigid {
+			d.Rigid = e.rigidKind(v)
+		}
+		e.out.Null = append(e.out.Null, d)
+	}
+	return nil
+}
+
+// scaledNorm is ‖B‖₂ as far as it is known, else its largest row sum.
+func (e *exam) scaledNorm() float64 {
+	if x := e.out.Equilibrated; x != nil && finite(x.Largest) {
+		return max(math.Abs(x.Largest), math.Abs(x.Smallest))
+	}
+	norm := 0.0
+	for i := range e.f.N {
+		_, vals := e.scaled.Row(i)
+		sum := 0.0
+		for _, v := range vals {
+			sum += math.Abs(v)
+		}
+		norm = max(norm, sum)
+	}
+	return norm
+}
+
+// quotient is ‖Bv‖ relative to ‖B‖, for a unit v.
+func (e *exam) quotient(v []float64, norm float64) float64 {
+	w := make([]float64, len(v))
+	e.scaled.Apply(w, v)
+	return linear.Norm2(w) / norm
+}
+
+// searchFree adds the directions that the inverse stretches most, one after
+// the other, and returns the quotient of the first that is not nearly free;
+// NaN where that is not known.
+func (e *exam) searchFree(norm float64, quotients *[]float64) (next float64, err error) {
+	if e.solver == nil {
+		return math.NaN(), nil
+	}
+	for len(e.free) < mostFree {
+		v, err := e.mostStretched()
+		if err != nil || v == nil {
+			return math.NaN(), err
+		}
+		q := e.quotient(v, norm)
+		if q > freeLimit {
+			return q, nil
+		}
+		e.free = append(e.free, v)
+		*quotients = append(*quotients, q)
+	}
+	return math.NaN(), nil
+}
+
+// mostStretched is the unit vector beside the free ones that the inverse of B
+// stretches most; nil where the budget is used up.
+func (e *exam) mostStretched() ([]float64, error) {
+	n := e.f.N
+	apply, low := e.solver.Solve, 1
+	if !e.symmetric {
+		w := make([]float64, n)
+		apply, low = func(dst, x []float64) {
+			e.solver.SolveT(w, x)
+			e.solver.Solve(dst, w)
+		}, 0
+	}
+	if !e.spend(freeSteps * (2*e.solveWork() + 100*float64(n))) {
+		return nil, nil
+	}
+	out, err := spectrum.Ends(e.ctx, n, apply, spectrum.Wanted{Low: low, High: 1, Tol: 1e-6, Basis: freeSteps + 4,
+		Products: freeSteps, Beside: e.free})
+	switch {
+	case err != nil || len(out.High) == 0:
+		return nil, err
+	case len(out.Low) > 0 && -out.Low[0].Value > out.High[0].Value:
+		return out.Low[0].Vector, nil
+	}
+	return out.High[0].Vector, nil
+}
+
+// apart returns how many of the directions stand apart: up to the last at
+// which the quotients grow at least isolated-fold, and of those found as rigid
+// motions all.
+func apart(quotients []float64, rigid int) int {
+	for k := len(quotients) - 1; k > rigid; k-- {
+		if quotients[k]/max(quotients[k-1], 1e-16) >= isolated {
+			return k
+		}
+	}
+	return rigid
+}
+
+// localise turns an orthonormal basis, from its member start on, into one whose
+// members each take all that the span has in one row, the largest first: what
+// is free at one place is told apart from what is free at another.
+func localise(v [][]float64, start int) [][]float64 {
+	out := append([][]float64(nil), v[:start]...)
+	rest := append([][]float64(nil), v[start:]...)
+	for len(rest) > 1 {
+		row, most := 0, -1.0
+		for i := range rest[0] {
+			s := 0.0
+			for _, x := range rest {
+				s += x[i] * x[i]
+			}
+			if s > most*(1+1e-9) {
+				row, most = i, s
+			}
+		}
+		w := make([]float64, len(rest[0]))
+		for _, x := range rest {
+			linear.Axpy(x[row]/math.Sqrt(most), x, w)
+		}
+		out = append(out, w)
+		rest = without(rest, w, row)
+	}
+	return append(out, rest...)
+}
+
+// without returns a basis of the span of v beside w, a member of it: all but
+// the vector nearest to w, made orthogonal to it.
+func without(v [][]float64, w []float64, row int) [][]float64 {
+	nearest := 0
+	for k := range v {
+		if math.Abs(v[k][row]) > math.Abs(v[nearest][row]) {
+			nearest = k
+		}
+	}
+	basis := [][]float64{w}
+	for k, x := range v {
+		if k == nearest {
+			continue
+		}
+		y := append([]float64(nil), x...)
+		for range 2 {
+			for _, b := range basis {
+				linear.Axpy(-linear.Dot(b, y), b, y)
+			}
+		}
+		linear.Scale(y, 1/max(linear.Norm2(y), tinyDivide), y)
+		basis = append(basis, y)
+	}
+	return basis[1:]
+}
+
+// direction describes one, v of unit length in the equilibrated units.
+func (e *exam) direction(v []float64, norm float64) NullDirection {
+	d := NullDirection{Quotient: e.quotient(v, norm), Next: math.NaN(), Support: support(v)}
+	var t top
+	for i, x := range v {
+		t.add(i, x*x)
+	}
+	for k, row := range t.rows {
+		if t.values[k] < 1e-4 {
+			break
+		}
+		d.Rows, d.Shares = append(d.Rows, row), append(d.Shares, t.values[k])
+	}
+	d.Vector = make([]float64, len(v))
+	for i, x := range v {
+		d.Vector[i] = e.col[i] * x
+	}
+	linear.Scale(d.Vector, 1/max(linear.Norm2(d.Vector), tinyDivide), d.Vector)
+	return d
+}

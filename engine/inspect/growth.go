@@ -1,0 +1,128 @@
+package inspect
+
+import (
+	"math"
+
+	"dwindle/engine/linear"
+)
+
+// Parts of a system that growth is measured on: a quarter of the rows each
+// time, of at least smallestPart, until the residual has fallen by growthTol.
+const (
+	smallestPart = 120
+	growthTol    = 1e-8
+)
+
+// growth measures how the iterations of conjugate gradients, with the diagonal
+// as preconditioner, grow with size: on breadth-first balls of the system of a
+// quarter of its rows, a quarter of that, and so on, with b = 1, and on the
+// whole where the budget allows. The iterations are those of a principal part,
+// whose rim is held.
+func (e *exam) growth() error {
+	c := e.out.Couplings
+	if !e.symmetric || c == nil || !c.Mesh || e.f.PositiveDefinite.Answer != Yes {
+		return nil
+	}
+	g := &Growth{Pairing: "cg+jacobi", Exponent: math.NaN()}
+	sizes := []int{}
+	for size := e.f.N; size >= smallestPart; size /= 4 {
+		sizes = append([]int{size}, sizes...)
+	}
+	w := newBalls(e)
+	centre := e.middle(w)
+	for _, size := range sizes {
+		a := e.a
+		if size < e.f.N {
+			rows, _ := w.grow(centre, size)
+			a = part(e.a, rising(rows, e.f.N))
+		}
+		its, err := e.iterations(a)
+		if err != nil || its == 0 {
+			return err
+		}
+		g.Unknowns, g.Iterations = append(g.Unknowns, a.NRows), append(g.Iterations, its)
+		if k := len(g.Unknowns); k >= 2 {
+			g.Exponent = fitPower(g.Unknowns[max(0, k-3):], g.Iterations[max(0, k-3):])
+			kept := *g
+			e.out.Growth = &kept
+		}
+	}
+	return nil
+}
+
+// middle is a row far from the rim of the mesh: half way between two rows that
+// are far apart.
+func (e *exam) middle(w *balls) int {
+	rows, _ := w.grow(e.f.N/2, e.f.N)
+	far := int(rows[len(rows)-1])
+	rows, within := w.grow(far, e.f.N)
+	half := within[len(within)/2]
+	from := within[max(0, len(within)/2-1)]
+	return int(rows[(from+half)/2])
+}
+
+// rising lists rows in rising order, of n in all.
+func rising(rows []int32, n int) []int {
+	in := make([]bool, n)
+	for _, i := range rows {
+		in[i] = true
+	}
+	var out []int
+	for i, yes := range in {
+		if yes {
+			out = append(out, i)
+		}
+	}
+	return out
+}
+
+// iterations of conjugate gradients with the diagonal on a x = 1; 0 where the
+// budget is used up, or the matrix is not definite after all.
+func (e *exam) iterations(a *linear.CSR) (int, error) {
+	n := a.NRows
+	d := byDiagonal(a)
+	if d == nil {
+		return 0, nil
+	}
+	r, z, p, q := make([]float64, n), make([]float64, n), make([]float64, n), make([]float64, n)
+	for i := range r {
+		r[i] = 1
+		z[i] = d[i] * d[i]
+	}
+	copy(p, z)
+	rho, target := linear.Dot(r, z), growthTol*math.Sqrt(float64(n))
+	work := 2*float64(len(a.Val)) + 16*float64(n)
+	for its := 1; ; its++ {
+		if err := e.ctx.Err(); err != nil {
+			return 0, err
+		}
+		if !e.spend(work) {
+			return 0, nil
+		}
+		curvature := linear.ApplyDot(a, q, p)
+		if !(curvature > 0) {
+			return 0, nil
+		}
+		alpha := rho / curvature
+		linear.Axpy(-alpha, q, r)
+		if linear.Norm2(r) <= target {
+			return its, nil
+		}
+		for i, v := range r {
+			z[i] = d[i] * d[i] * v
+		}
+		next := linear.Dot(r, z)
+		linear.Lin(p, 1, z, next/rho, p)
+		rho = next
+	}
+}
+
+// fitPower is the slope of log iterations over log unknowns, by least squares.
+func fitPower(unknowns, iterations []int) float64 {
+	n, sx, sy, sxx, sxy := float64(len(unknowns)), 0.0, 0.0, 0.0, 0.0
+	for k, u := range unknowns {
+		x, y := math.Log(float64(u)), math.Log(float64(iterations[k]))
+		sx, sy, sxx, sxy = sx+x, sy+y, sxx+x*x, sxy+x*y
+	}
+	return (n*sxy - sx*sy) / (n*sxx - sx*sx)
+}

@@ -1,0 +1,73 @@
+package inspect
+
+import (
+	"math"
+	"slices"
+)
+
+// A diagonal is a penalty where it exceeds the sum of the row's couplings, and
+// the largest diagonal of its neighbours, penaltyTimes; and no more than one
+// row in penaltyShare is of that kind.
+const (
+	penaltyTimes = 1e3
+	penaltyShare = 10
+)
+
+// lines lists the rows that constrain single unknowns: singletons, rows of the
+// identity whose columns are not, and penalties on the diagonal.
+func (e *exam) lines() []LineRows {
+	d := make([]float64, e.f.N)
+	e.a.Diagonal(d)
+	kinds := map[string]*LineRows{}
+	values := map[string][]float64{}
+	var others []float64
+	for i, v := range d {
+		kind := e.kind(i, d)
+		if kind == "" {
+			if v != 0 {
+				others = append(others, math.Abs(v))
+			}
+			continue
+		}
+		if kinds[kind] == nil {
+			kinds[kind] = &LineRows{Kind: kind}
+		}
+		l := kinds[kind]
+		l.Count++
+		l.Rows = first16(l.Rows, i)
+		values[kind] = append(values[kind], v)
+	}
+	var out []LineRows
+	typical := median(others)
+	for _, kind := range []string{"singleton", "row-replaced", "penalty"} {
+		l := kinds[kind]
+		if l == nil || kind == "penalty" && penaltyShare*l.Count > e.f.N {
+			continue
+		}
+		slices.Sort(values[kind])
+		l.Value, l.Other = values[kind][len(values[kind])/2], typical
+		out = append(out, *l)
+	}
+	return out
+}
+
+// kind of constraint of row i; "" for none.
+func (e *exam) kind(i int, d []float64) string {
+	cols, vals := e.a.Row(i)
+	sum, neighbour := 0.0, 0.0
+	for k, j := range cols {
+		if int(j) != i && vals[k] != 0 {
+			sum += math.Abs(vals[k])
+			neighbour = max(neighbour, math.Abs(d[j]))
+		}
+	}
+	switch {
+	case sum == 0 && d[i] != 0 && e.replaced != nil && e.replaced[i]:
+		return "row-replaced"
+	case sum == 0 && d[i] != 0:
+		return "singleton"
+	case sum > 0 && math.Abs(d[i]) >= penaltyTimes*max(sum, neighbour):
+		return "penalty"
+	}
+	return ""
+}

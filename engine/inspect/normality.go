@@ -1,0 +1,57 @@
+package inspect
+
+import (
+	"math"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/spectrum"
+)
+
+// balancingSweeps of the bound on the departure from normality, at about
+// balancingWork operations an entry.
+const balancingSweeps, balancingWork = 60, 40
+
+// normality tells how far the eigenvalues of a nonsymmetric A can be trusted;
+// of A equilibrated too, so that a difference of units is not taken for it.
+func (e *exam) normality() error {
+	if e.symmetric || e.scaled == nil || !e.spend(2*balancingSweeps*balancingWork*float64(len(e.a.Val))) {
+		return nil
+	}
+	m := &Normality{LeftmostRe: math.NaN(), RightRe: math.NaN(), FieldMin: math.NaN(), FieldMax: math.NaN(), SkewMax: math.NaN()}
+	at, bt := e.a.Transpose(), e.scaled.Transpose()
+	m.Henrici = spectrum.HenriciBound(e.a, at, balancingSweeps)
+	m.Equilibrated = spectrum.HenriciBound(e.scaled, bt, balancingSweeps)
+	if x := e.out.Raw; x != nil && x.Exact {
+		m.LeftmostRe, m.RightRe = real(x.Values[0]), real(x.Values[len(x.Values)-1])
+		m.Henrici, m.Exact = spectrum.Henrici(x.Values, e.f.NormFro), true
+	}
+	if m.Exact && e.densely(e.f.N, 10) {
+		if values := spectrum.DenseEigenvalues(e.scaled); values != nil {
+			m.Equilibrated = spectrum.Henrici(values, linear.Norm2(e.scaled.Val))
+		}
+	}
+	e.out.Normality = m
+	return e.field(m, e.a, at)
+}
+
+// field measures the field of values: the ends of the symmetric part, and the
+// largest magnitude of the skew one.
+func (e *exam) field(m *Normality, b, bt *linear.CSR) error {
+	h := spectrum.Combined(b, bt, b.NRows, 1)
+	out, err := e.ends(b.NRows, h, 1, 1, 2*e.product(), endProducts)
+	if err != nil || len(out.Low) == 0 {
+		return err
+	}
+	m.FieldMin, m.FieldMax = out.Low[0].Value, out.High[0].Value
+	m.FieldHoldsZero = m.FieldMin < 0 && m.FieldMax > 0
+	k, w := spectrum.Combined(b, bt, b.NRows, -1), make([]float64, b.NRows)
+	out, err = e.ends(b.NRows, func(dst, x []float64) {
+		k(w, x)
+		k(dst, w)
+		linear.Scale(dst, -1, dst)
+	}, 0, 1, 4*e.product(), endProducts)
+	if err == nil && len(out.High) > 0 {
+		m.SkewMax = math.Sqrt(max(0, out.High[0].Value))
+	}
+	return err
+}

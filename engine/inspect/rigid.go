@@ -1,0 +1,113 @@
+package inspect
+
+import (
+	"math"
+	"slices"
+
+	"dwindle/engine/linear"
+	"dwindle/engine/spectrum"
+)
+
+// support is how many rows carry 99 % of a unit vector.
+func support(v []float64) int {
+	shares := make([]float64, len(v))
+	for i, x := range v {
+		shares[i] = x * x
+	}
+	slices.Sort(shares)
+	sum, k := 0.0, len(shares)
+	for k > 0 && sum < 0.99 {
+		k--
+		sum += shares[k]
+	}
+	return len(shares) - k
+}
+
+// rigidMotions finds the motions of the coordinates, and the combinations of
+// them, that A leaves nearly free, in the whole system; it adds them to the
+// free directions and returns their quotients.
+func (e *exam) rigidMotions(norm float64) []float64 {
+	if e.s.Coordinates == nil || len(e.s.NearNull) == 0 || !e.symmetric {
+		return nil
+	}
+	var basis [][]float64
+	for _, m := range e.s.NearNull {
+		v := make([]float64, len(m))
+		for i, x := range m {
+			v[i] = x / e.col[i]
+		}
+		if orthonormal(v, basis) {
+			basis = append(basis, v)
+		}
+	}
+	k := len(basis)
+	images := make([][]float64, k)
+	for j, v := range basis {
+		images[j] = make([]float64, len(v))
+		e.scaled.Apply(images[j], v)
+	}
+	gram, values := make([]float64, k*k), make([]float64, k)
+	for i := range k {
+		for j := range k {
+			gram[i*k+j] = linear.Dot(images[i], images[j])
+		}
+	}
+	if !spectrum.Symmetric(gram, values, make([]float64, 3*k)) {
+		return nil
+	}
+	var quotients []float64
+	for j := range k {
+		v := make([]float64, e.f.N)
+		for i := range k {
+			linear.Axpy(gram[i*k+j], basis[i], v)
+		}
+		if q := e.quotient(v, norm); q <= freeLimit {
+			e.free = append(e.free, v)
+			quotients = append(quotients, q)
+		}
+	}
+	return quotients
+}
+
+// orthonormal makes v orthogonal to the basis and of unit length; false where
+// nothing but rounding is left.
+func orthonormal(v []float64, basis [][]float64) bool {
+	before := linear.Norm2(v)
+	for range 2 {
+		for _, b := range basis {
+			linear.Axpy(-linear.Dot(b, v), b, v)
+		}
+	}
+	after := linear.Norm2(v)
+	if !(after > 1e-8*before) {
+		return false
+	}
+	linear.Scale(v, 1/after, v)
+	return true
+}
+
+// rigidKind names a rigid motion: a translation where the first motions, those
+// along the axes, hold 99 % of it.
+func (e *exam) rigidKind(v []float64) string {
+	var basis [][]float64
+	axes := len(e.s.Coordinates[0])
+	for _, m := range e.s.NearNull[:min(axes, len(e.s.NearNull))] {
+		w := append([]float64(nil), m...)
+		if orthonormal(w, basis) {
+			basis = append(basis, w)
+		}
+	}
+	x := make([]float64, len(v))
+	for i := range v {
+		x[i] = e.col[i] * v[i]
+	}
+	held, all := 0.0, linear.Norm2(x)
+	for _, b := range basis {
+		c := linear.Dot(b, x) / all
+		held += c * c
+	}
+	if held > 0.99 && !math.IsNaN(held) {
+		return "translation"
+	}
+	return "rotation"
+}

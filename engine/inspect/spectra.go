@@ -1,0 +1,162 @@
+package inspect
+
+import (
+	"math"
+
+	"dwindle/engine/spectrum"
+)
+
+// spectra fills in the spectra of A and of what scaling, or the loss of its
+// singleton rows, makes of it, and the digits to expect.
+func (e *exam) spectra() error {
+	if e.scaled == nil {
+		return nil
+	}
+	var err error
+	ask := func(of string, l, r []float64, index []int) *Spectrum {
+		var x *Spectrum
+		if err == nil {
+			x, err = e.spectrumOf(e.see(of, l, r, index))
+		}
+		return x
+	}
+	e.out.Raw = ask("A", nil, nil, nil)
+	if e.symmetric && 0 < e.f.Singletons && e.f.Singletons < e.f.N-1 {
+		e.out.Rest = ask("A without singleton rows", nil, nil, e.coupled())
+	}
+	if d := byDiagonal(e.a); e.symmetric && d != nil {
+		if c, same := constant(d); same && e.out.Raw != nil {
+			e.out.Jacobi = e.out.Raw.times("A scaled by its diagonal", c*c)
+		} else {
+			e.out.Jacobi = ask("A scaled by its diagonal", d, d, nil)
+		}
+		if e.out.Jacobi != nil && alike(e.row, d) {
+			x := *e.out.Jacobi
+			x.Of, e.out.Equilibrated = "equilibrated A", &x
+		}
+	}
+	if e.out.Equilibrated == nil {
+		e.out.Equilibrated = ask("equilibrated A", e.row, e.col, nil)
+	}
+	if x := e.out.Equilibrated; x != nil && x.Condition > 0 && x.Certainty == Measured {
+		e.out.Digits = max(0, 53*math.Log10(2)-math.Log10(x.Condition))
+	}
+	return err
+}
+
+// alike says whether two positive diagonals differ by no more than what an
+// equilibration leaves open: of a definite matrix it is the scaling by the
+// diagonal.
+func alike(d, e []float64) bool {
+	for i, v := range d {
+		if math.Abs(v-e[i]) > 0.01*v {
+			return false
+		}
+	}
+	return true
+}
+
+// constant says whether a positive diagonal is the same number throughout, to
+// rounding.
+func constant(d []float64) (float64, bool) {
+	for _, v := range d {
+		if math.Abs(v-d[0]) > 1e-13*d[0] {
+			return 0, false
+		}
+	}
+	return d[0], true
+}
+
+// times returns the spectrum of the operator times a positive number.
+func (x *Spectrum) times(of string, c float64) *Spectrum {
+	y := *x
+	y.Of = of
+	y.Smallest, y.SmallestBound, y.Largest, y.LargestBound = c*x.Smallest, c*x.SmallestBound, c*x.Largest, c*x.LargestBound
+	y.Low, y.High, y.Values = nil, nil, nil
+	for _, v := range x.Low {
+		y.Low = append(y.Low, c*v)
+	}
+	for _, v := range x.High {
+		y.High = append(y.High, c*v)
+	}
+	for _, v := range x.Values {
+		y.Values = append(y.Values, complex(c, 0)*v)
+	}
+	return &y
+}
+
+// coupled lists the rows that are no singletons.
+func (e *exam) coupled() []int {
+	alone := make([]bool, e.f.N) // no other nonzero in the row
+	met := make([]bool, e.f.N)   // another nonzero in the column
+	for i := range e.f.N {
+		cols, vals := e.a.Row(i)
+		alone[i] = true
+		for k, j := range cols {
+			if int(j) != i && vals[k] != 0 {
+				alone[i], met[j] = false, true
+			}
+		}
+	}
+	var rows []int
+	for i := range alone {
+		if !alone[i] || met[i] {
+			rows = append(rows, i)
+		}
+	}
+	return rows
+}
+
+// spectrumOf measures one spectrum; nil where nothing fits the budget.
+func (e *exam) spectrumOf(v *view) (*Spectrum, error) {
+	x := &Spectrum{Of: v.of, Norm: "2", Certainty: Estimated, Negative: -1, Condition: math.NaN(),
+		Smallest: math.NaN(), Largest: math.NaN(), SmallestBound: math.NaN(), LargestBound: math.NaN()}
+	if e.symmetric {
+		return e.symmetricSpectrum(v, x)
+	}
+	return e.singularSpectrum(v, x)
+}
+
+// densely says whether all values of a view of order n are affordable, at work
+// n³ times the factor.
+func (e *exam) densely(n int, factor float64) bool {
+	return n <= e.budget.Dense && e.spend(factor*float64(n)*float64(n)*float64(n))
+}
+
+// The ends are sought to endTolerance, with endBasis vectors held at a time
+// and at most endProducts products; where only the matrix itself is at hand,
+// and both ends are wanted, with more.
+const (
+	endTolerance = 1e-3
+	endBasis     = 48
+	endProducts  = 96
+	bareProducts = 400
+	endsKept     = 16
+)
+
+// ends finds the outermost eigenvalues of a symmetric operator, within the
+// budget; nothing where that is not enough for a few steps.
+func (e *exam) ends(n int, apply func(dst, x []float64), low, high int, product float64, products int) (spectrum.Outermost, error) {
+	step := product + 8*float64(n)*endBasis/2
+	can := int(min(float64(products), e.left/2/step))
+	if can < 10 && can < n {
+		return spectrum.Outermost{}, nil
+	}
+	out, err := spectrum.Ends(e.ctx, n, apply, spectrum.Wanted{Low: low, High: high, Tol: endTolerance, Basis: endBasis, Products: can})
+	e.left -= step * float64(out.Products)
+	return out, err
+}
+
+// solveWork is the work of one solve with the factor, held to be that of some
+// ten products where the factor is not asked.
+func (e *exam) solveWork() float64 {
+	if b, ok := e.solver.(interface{ Entries() int64 }); ok {
+		return 4 * float64(b.Entries())
+	}
+	if b, ok := e.solver.(both); ok {
+		if f, ok := b.Solver.(interface{ Entries() int64 }); ok {
+			return 4 * float64(f.Entries())
+		}
+	}
+	return 10 * e.product()
+}

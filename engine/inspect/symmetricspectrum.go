@@ -1,0 +1,141 @@
+package inspect
+
+import (
+	"math"
+
+	"dwindle/engine/spectrum"
+)
+
+// symmetricSpectrum fills in the outermost eigenvalues of a symmetric view:
+// all of them densely where that is affordable; else the ends by Lanczos on
+// the matrix, and those next to zero on its inverse.
+func (e *exam) symmetricSpectrum(v *view, x *Spectrum) (*Spectrum, error) {
+	if e.densely(v.order(), 0.6) {
+		if values := spectrum.DenseSymmetric(v.m); values != nil {
+			x.fillDense(values)
+		}
+	}
+	if !x.Exact {
+		if err := e.bareEnds(v, x); err != nil {
+			return nil, err
+		}
+		if !finite(x.Largest) {
+			return nil, nil
+		}
+	}
+	if c := e.f.NegativeCount; v.index == nil && (c.Answer == No || c.Answer == Yes) {
+		x.Negative = int(c.Value) // scaling alters no sign
+	}
+	if v.invertible() {
+		return x, e.innerEnds(v, x)
+	}
+	return x, nil
+}
+
+// fillDense takes all eigenvalues, rising. The smallest magnitude is known to
+// the rounding of the largest only.
+func (x *Spectrum) fillDense(values []float64) {
+	n := len(values)
+	x.How, x.Exact, x.Certainty, x.Negative = "dense", true, Measured, 0
+	x.Smallest, x.Largest = values[0], values[n-1]
+	nearest, farthest := math.Inf(1), max(-values[0], values[n-1])
+	round := float64(n) * 0x1p-53 * farthest
+	x.SmallestBound, x.LargestBound = round, round
+	x.Values = make([]complex128, n)
+	for i, v := range values {
+		x.Values[i] = complex(v, 0)
+		nearest = min(nearest, math.Abs(v))
+		if v < -round {
+			x.Negative++
+		}
+	}
+	for k := range min(endsKept, n) {
+		x.Low, x.High = append(x.Low, values[k]), append(x.High, values[n-1-k])
+	}
+	x.Condition = farthest / nearest
+	if nearest <= 10*round {
+		x.Certainty = Estimated // only that it is at least as large is known
+		x.Condition = farthest / max(nearest, round)
+	}
+}
+
+// bareEnds measures both ends by products alone: the low one only where it
+// is not left to the inverse.
+func (e *exam) bareEnds(v *view, x *Spectrum) error {
+	definite, low, products := e.f.PositiveDefinite.Answer == Yes, 2, bareProducts
+	if definite && v.invertible() {
+		low, products = 0, endProducts
+	}
+	out, err := e.ends(v.order(), v.m.Apply, low, 2, e.product(), products)
+	if err != nil || len(out.High) == 0 {
+		return err
+	}
+	x.How = "lanczos"
+	x.Largest, x.LargestBound = out.High[0].Value, out.High[0].Bound
+	x.High = pairValues(out.High)
+	if len(out.Low) > 0 {
+		x.Smallest, x.SmallestBound = out.Low[0].Value, out.Low[0].Bound
+		x.Low = pairValues(out.Low)
+	}
+	if definite && x.Smallest > 0 && x.SmallestBound < x.Smallest {
+		x.Condition = x.Largest / x.Smallest // a lower bound until both ends are settled
+		if out.Settled {
+			x.Certainty = Measured
+		}
+	}
+	return nil
+}
+
+// innerEnds measures the eigenvalues next to zero by the inverse, and the
+// condition with them.
+func (e *exam) innerEnds(v *view, x *Spectrum) error {
+	definite := e.f.PositiveDefinite.Answer == Yes
+	low := 2
+	if definite {
+		low = 0
+	}
+	out, err := e.ends(v.order(), v.inverse, low, 4, e.solveWork(), endProducts)
+	if err != nil || len(out.High) == 0 {
+		return err
+	}
+	nearest, bound := inverted(out.High[0])
+	if len(out.Low) > 0 && -out.Low[0].Value > out.High[0].Value {
+		nearest, bound = inverted(out.Low[0])
+	}
+	if !(math.Abs(nearest) > 0) {
+		return nil
+	}
+	if definite && !x.Exact {
+		x.Smallest, x.SmallestBound, x.Low = nearest, bound, nil
+		for _, p := range out.High {
+			x.Low = append(x.Low, 1/p.Value)
+		}
+	}
+	if !x.Exact {
+		x.How = "factor"
+	}
+	x.Condition = max(math.Abs(x.Largest), math.Abs(x.Smallest)) / math.Abs(nearest)
+	x.Certainty = Estimated
+	if !(bound > 0.05*math.Abs(nearest)) && !(x.LargestBound > 0.05*math.Abs(x.Largest)) {
+		x.Certainty = Measured
+	}
+	return nil
+}
+
+// inverted turns an eigenvalue of the inverse into one of the matrix, with its
+// bound.
+func inverted(p spectrum.Pair) (value, bound float64) {
+	m := math.Abs(p.Value)
+	if !(p.Bound < m) {
+		return 1 / p.Value, math.Inf(1)
+	}
+	return 1 / p.Value, p.Bound / (m * (m - p.Bound))
+}
+
+func pairValues(list []spectrum.Pair) []float64 {
+	var out []float64
+	for _, p := range list {
+		out = append(out, p.Value)
+	}
+	return out
+}
