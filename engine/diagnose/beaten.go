@@ -40,7 +40,7 @@ var beaten = Rule{"today-beaten", func(c Case) []Finding {
 		return []Finding{f}
 	}
 	t, b := today.OwnTime.Seconds(), best.OwnTime.Seconds()
-	if t < beatFactor*b || t-b < beatLeast {
+	if t < beatFactor*b || t-b < beatLeast || !Apart(*best, *today, 0) {
 		return nil
 	}
 	f.Claim = fmt.Sprintf("today's pairing takes %d iterations and %s; %s takes %d and %s: %.1f times faster",

@@ -9,40 +9,6 @@ import (
 	"dwindle/engine/trace"
 )
 
-// breakdown: a quantity the method divides by vanished; or BiCGStab reached
-// its answer in the half step, which looks like one and is none.
-var breakdown = Rule{"breakdown", func(c Case) (out []Finding) {
-	for _, h := range c.Trials {
-		for _, e := range events(h, trace.HalfStep) {
-			out = append(out, Finding{Weight: Note, Certainty: inspect.Measured, Subject: h.Pairing,
-				Claim:    fmt.Sprintf("reached the answer in the half step of iteration %d (||s|| = %s of ||b||): no breakdown, but a code that divides by t't stops with one", e.Iter, num(e.Value)),
-				Advice:   "test ||s|| before the second half step",
-				Evidence: []Evidence{{Quantity: "||s||", Value: e.Value, Unit: "of ||b||", Iteration: int(e.Iter)}}})
-		}
-		if h.Stop != trace.BrokeDown && !strings.Contains(h.Reason, trace.BrokeDown.String()) {
-			continue
-		}
-		for _, e := range events(h, trace.Breakdown) {
-			out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-				Claim:    fmt.Sprintf("broke down at iteration %d: %s = %s (normalised) vanished", e.Iter, e.Quantity, num(e.Value)),
-				Advice:   remedy(e.Quantity),
-				Try:      instead(c.Facts),
-				Evidence: []Evidence{{Quantity: e.Quantity, Value: e.Value, Iteration: int(e.Iter)}}})
-		}
-	}
-	return out
-}}
-
-func remedy(quantity string) string {
-	switch quantity {
-	case "rho", "rhat·v", "rhat'v":
-		return "restart with a new shadow vector, or use gmres"
-	case "omega":
-		return "the one-step stabiliser fails near an imaginary spectrum: use gmres"
-	}
-	return "use a method that does not divide by it"
-}
-
 // divergence: the true residual ran away, or stopped being a number.
 var divergence = Rule{"divergence", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
@@ -92,10 +58,33 @@ var stagnation = Rule{"restart-stagnation", func(c Case) (out []Finding) {
 				f.Try = append([]string{keep}, f.Try...)
 			}
 		}
+		if other, ok := otherLength(c, h); ok {
+			f.Claim += fmt.Sprintf("; %s solves it in %s", other.Pairing, steps(other.Iterations))
+			f.Try = []string{other.Pairing}
+		}
+		if s := c.Facts.Study; s != nil && s.Normality != nil && s.Normality.FieldHoldsZero {
+			f.Claim += fmt.Sprintf("; the field of values of A holds 0 (%s to %s), so that no short cycle is sure to gain",
+				num(s.Normality.FieldMin), num(s.Normality.FieldMax))
+		}
 		out = append(out, f)
 	}
 	return out
 }}
+
+// otherLength is a trial that solved the system with the same method and
+// preconditioner and another restart length; a shorter one may do so (Embree,
+// SIAM Rev. 45 (2003) 259-266).
+func otherLength(c Case, h trace.History) (trace.History, bool) {
+	prep, solver, m := cut(h.Pairing)
+	name, _, _ := strings.Cut(solver, ":")
+	for _, o := range c.Trials {
+		p, s, q := cut(o.Pairing)
+		if n, _, _ := strings.Cut(s, ":"); solved(o) && n == name && p == prep && q == m {
+			return o, true
+		}
+	}
+	return trace.History{}, false
+}
 
 // doubled is the solver with four times the restart length.
 func doubled(solver string) (string, bool) {
@@ -124,6 +113,13 @@ var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 			Advice: fmt.Sprintf("ask for no less than %.0e, or start again from this answer with a fresh residual", 2*h.BestTrue),
 			Evidence: []Evidence{{Quantity: "smallest true residual", Value: h.BestTrue, Iteration: h.Iterations},
 				{Quantity: "u ||A|| max||x|| / ||b||", Value: h.Floor, Iteration: none}}}
+		if at, ok := parting(h); ok {
+			f.Claim += fmt.Sprintf("; the two part at it %d, and nothing below %s is real", at, num(h.BestTrue))
+			f.Evidence = append(f.Evidence, Evidence{Quantity: "true residual over own number", Value: parts, Iteration: at})
+		}
+		if at := bottom(h); h.Iterations-at > h.Iterations/10 {
+			f.Claim += fmt.Sprintf("; at the floor since it %d: the other %d its are noise", at, h.Iterations-at)
+		}
 		if deeper, ok := reached(c, h.BestTrue/2); ok {
 			f.Claim += fmt.Sprintf("; %s gets to %s", deeper.Pairing, num(deeper.BestTrue))
 			f.Try = []string{deeper.Pairing}
@@ -132,6 +128,38 @@ var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 	}
 	return out
 }}
+
+// parts is the ratio of the true residual to the method's own number from which
+// the two curves have parted for good.
+const parts = 2
+
+// parting is the first audit from which on the true residual stays above the
+// method's own number, where that is a residual in the same norm.
+func parting(h trace.History) (iter int, ok bool) {
+	if h.Norm != trace.TwoNorm {
+		return 0, false
+	}
+	for _, r := range h.Records {
+		switch {
+		case !r.Audited():
+		case !(r.Audit > parts*r.Residual):
+			ok = false
+		case !ok:
+			iter, ok = int(r.Iter), true
+		}
+	}
+	return iter, ok
+}
+
+// bottom is the first audit within twice the smallest true residual.
+func bottom(h trace.History) int {
+	for _, r := range h.Records {
+		if r.Audited() && r.Audit <= 2*h.BestTrue {
+			return int(r.Iter)
+		}
+	}
+	return h.Iterations
+}
 
 // reached finds the trial with the smallest true residual below limit.
 func reached(c Case, limit float64) (best trace.History, ok bool) {

@@ -39,6 +39,7 @@ type Finding struct {
 	Advice    string
 	Try       []string // pairings this finding offers to start
 	Evidence  []Evidence
+	Also      []string // other pairings of which the same is said
 	// Predicts are the counts that this finding foresees for its tries, to be
 	// held against what comes of them.
 	Predicts []Predicted
@@ -58,6 +59,9 @@ type Case struct {
 	Tol    float64
 	StopBy string  // the stopping rule of the session
 	Guess  float64 // ‖b−Ax₀‖/‖b‖ when a guess was given; NaN otherwise
+	// GuessScale is the multiple of the guess with the smallest residual, and
+	// GuessScaled that residual relative to ‖b‖; NaN without a guess.
+	GuessScale, GuessScaled float64
 }
 
 // Rule is one entry of the catalogue.

@@ -13,16 +13,21 @@ var Catalogue = []Rule{
 	outsideAssumptions,
 	lostDefiniteness,
 	unreachable,
+	wrongWay,
+	notLinear,
 	preconditioner,
 	falseConvergence,
 	beaten,
 	notDefinite,
 	oppositeSign,
 	unsolvedRows,
+	nullGrowth,
+	unstable,
 	breakdown,
 	divergence,
 	stagnation,
 	floor,
+	zeroDiagonal,
 	pivots,
 	singletons,
 	outliers,
@@ -35,37 +40,50 @@ var Catalogue = []Rule{
 	residualRises,
 	superlinear,
 	lostOrthogonality,
+	nearComplete,
+	guess,
+	noise,
+	changesNothing,
+	stoppingRules,
+	indefiniteSpectrum,
 	digits,
 	triangle,
 	zeroRHS,
 	defaultRHS,
 }
 
-// Judge applies every rule and returns the findings, the most important
-// first: by weight, then what a rule says first before what it says again of
-// another trial, then by certainty, then in the order of the catalogue.
+// Judge applies every rule, drops what another finding explains, and returns
+// the findings, the most important first: by weight, then today's pairing and
+// the system before trials that another one makes superfluous, then what a rule
+// says first before what it says again, then by certainty, then in the order of
+// the catalogue.
 func Judge(c Case) []Finding {
 	if c.Facts == nil {
 		return nil
 	}
-	type told struct {
-		Finding
-		again int // how many findings of its rule come before it
-	}
-	var all []told
+	var all []Finding
 	for _, r := range Catalogue {
-		for k, f := range r.Judge(c) {
+		for _, f := range r.Judge(c) {
 			f.Rule = r.Name
-			all = append(all, told{f, k})
+			all = append(all, f)
 		}
 	}
-	slices.SortStableFunc(all, func(a, b told) int {
-		return cmp.Or(weightOrder(a.Weight)-weightOrder(b.Weight), a.again-b.again,
+	all = resolve(all)
+	again, ranks := map[string]int{}, make(map[*Finding]int, len(all))
+	order := make([]*Finding, len(all))
+	for i := range all {
+		f := &all[i]
+		advise(c, f)
+		order[i], ranks[f] = f, again[f.Rule]
+		again[f.Rule]++
+	}
+	slices.SortStableFunc(order, func(a, b *Finding) int {
+		return cmp.Or(weightOrder(a.Weight)-weightOrder(b.Weight), concern(c, *a)-concern(c, *b), ranks[a]-ranks[b],
 			certaintyOrder(a.Certainty)-certaintyOrder(b.Certainty))
 	})
-	out := make([]Finding, len(all))
-	for i, f := range all {
-		out[i] = f.Finding
+	out := make([]Finding, len(order))
+	for i, f := range order {
+		out[i] = *f
 	}
 	return out
 }

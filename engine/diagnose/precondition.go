@@ -2,6 +2,7 @@ package diagnose
 
 import (
 	"fmt"
+	"math"
 	"strings"
 
 	"dwindle/engine/inspect"
@@ -9,8 +10,9 @@ import (
 )
 
 const (
-	asymmetryLimit  = 1e-6 // of the symmetry probe; rounding stays far below
-	indefiniteLimit = 1e-8 // of rᵀM⁻¹r over ‖r‖‖M⁻¹r‖
+	asymmetryLimit  = 1e-6  // of the symmetry and linearity probes; rounding stays far below
+	rounding        = 1e-13 // of factors with no growth, per unit of growth
+	indefiniteLimit = 1e-8  // of rᵀM⁻¹r over ‖r‖‖M⁻¹r‖
 )
 
 // preconditioner: a method that needs a symmetric positive definite M was
@@ -22,7 +24,7 @@ var preconditioner = Rule{"preconditioner-not-spd", func(c Case) (out []Finding)
 		}
 		_, solver, m := cut(h.Pairing)
 		f := Finding{Weight: Blocker, Certainty: inspect.Measured, Subject: h.Pairing}
-		if h.PrecondAsymmetry > asymmetryLimit {
+		if h.PrecondAsymmetry > probeLimit(h) {
 			f.Claim = fmt.Sprintf("%s is not symmetric: u'inv(M)v and v'inv(M)u differ by %s of their size; %s needs a symmetric positive definite M",
 				m, num(h.PrecondAsymmetry), solver)
 			f.Evidence = []Evidence{number("asymmetry of inv(M)", h.PrecondAsymmetry, "relative")}
@@ -42,6 +44,10 @@ var preconditioner = Rule{"preconditioner-not-spd", func(c Case) (out []Finding)
 	}
 	return out
 }}
+
+// probeLimit is what rounding can make of a symmetry or linearity probe: more
+// where the factors amplify.
+func probeLimit(h trace.History) float64 { return math.Max(asymmetryLimit, rounding*h.Notes.Growth) }
 
 func indefinite(h trace.History) (trace.Event, bool) {
 	for _, e := range events(h, trace.PrecondIndefinite) {
@@ -66,6 +72,12 @@ var pivots = Rule{"pivot", func(c Case) (out []Finding) {
 		if h.Notes.Shift > 0 {
 			f.Claim += fmt.Sprintf("; it stands with A + %s diag(A), found in %d attempts",
 				num(h.Notes.Shift), len(h.Notes.Broke)+1)
+			if c.Facts.PositiveDefinite.Answer == inspect.Yes {
+				f.Claim += fmt.Sprintf(" (A itself is positive definite, %s)", c.Facts.PositiveDefinite.Certainty)
+			}
+			if solved(h) {
+				f.Claim += fmt.Sprintf(", and takes %s", steps(h.Iterations))
+			}
 			f.Advice = "a positive definite A can do this: keep the shift, or use jacobi or ssor"
 			f.Evidence = append(f.Evidence, number("shift", h.Notes.Shift, "of the diagonal"))
 			f.Weight = Note
@@ -76,36 +88,6 @@ var pivots = Rule{"pivot", func(c Case) (out []Finding) {
 			f.Try = []string{solver + "+jacobi"}
 		}
 		out = append(out, f)
-	}
-	return out
-}}
-
-const (
-	costFactor = 1.3  // slower than without by this factor,
-	costLeast  = 0.05 // and by at least so many seconds,
-	ownCPU     = 0.9  // on a machine that gave the trial this share of its time
-)
-
-// costly: a preconditioner costs more time than its iterations save. Silent
-// where the machine was busy with something else.
-var costly = Rule{"preconditioner-costs-more", func(c Case) (out []Finding) {
-	for _, h := range c.Trials {
-		prep, solver, m := cut(h.Pairing)
-		plain, ok := find(c, prep+solver+"+none")
-		if m == "none" || !ok || !solved(h) || !solved(plain) || h.CPUShare < ownCPU {
-			continue
-		}
-		with, without := h.OwnTime.Seconds(), plain.OwnTime.Seconds()
-		if with < costFactor*without || with-without < costLeast {
-			continue
-		}
-		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("%s costs more than it saves: %s (set-up %s) for %d its, %s alone %s for %d",
-				m, seconds(with), seconds(h.SetupTime.Seconds()), h.Iterations, solver, seconds(without), plain.Iterations),
-			Advice: "leave it out for one right-hand side",
-			Try:    []string{plain.Pairing},
-			Evidence: []Evidence{number("own time", with, "s"), number("own time without", without, "s"),
-				number("set-up", h.SetupTime.Seconds(), "s")}})
 	}
 	return out
 }}

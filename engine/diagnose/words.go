@@ -97,3 +97,11 @@ func events(h trace.History, k trace.Kind) []trace.Event {
 	}
 	return out
 }
+
+// steps prints a number of iterations.
+func steps(n int) string {
+	if n == 1 {
+		return "1 iteration"
+	}
+	return fmt.Sprintf("%d iterations", n)
+}

@@ -63,6 +63,18 @@ func (f *factors) Apply(dst, x []float64) {
 	upperScaled(f.upper, f.inverse, dst, dst, 0, len(dst))
 }
 
+// Product computes dst = M x = L D R x, the way opposite to Apply; dst and x do
+// not overlap. It is for looking at factors, not for iterating.
+func (f *factors) Product(dst, x []float64) {
+	f.upper.Apply(dst, x)
+	for i := range dst {
+		dst[i] = (dst[i] + x[i]) / f.inverse[i]
+	}
+	y := make([]float64, len(dst))
+	f.lower.Apply(y, dst)
+	linear.Axpy(1, y, dst)
+}
+
 // built ends the build of factors.
 func built(f *factors, notes trace.BuildNotes, err error) (linear.Applier, trace.BuildNotes, error) {
 	if err != nil {

@@ -13,6 +13,7 @@ var Catalogue = []Entry{
 	ndEntry,
 	colourEntry,
 	shiftEntry,
+	rescaleEntry,
 }
 
 // Lookup returns the preparation of that name.

@@ -83,27 +83,3 @@ func (t *Trial) weigh(e *trace.Event, m *linear.CSR, v []float64) {
 		}
 	}
 }
-
-// probe tests off the clock whether M⁻¹ is symmetric and positive on two
-// random vectors, for solvers that assume so.
-func (t *Trial) probe() {
-	n := t.sys.N()
-	buf := linear.Bulk[float64](4 * n)
-	u, v, mu, mv := buf[:n], buf[n:2*n], buf[2*n:3*n], buf[3*n:]
-	linear.Uniform(u, 1)
-	linear.Uniform(v, 2)
-	t.m.inner.Apply(mu, u)
-	t.m.inner.Apply(mv, v)
-	uMv, vMu := linear.Dot(u, mv), linear.Dot(v, mu)
-	asym := over(math.Abs(uMv-vMu), linear.Norm2(u)*linear.Norm2(mv))
-	t.mu.Lock()
-	t.hist.PrecondAsymmetry = asym
-	t.mu.Unlock()
-	for _, q := range [][2][]float64{{u, mu}, {v, mv}} {
-		if d := linear.Dot(q[0], q[1]); d < 0 {
-			t.event(trace.Event{Kind: trace.PrecondIndefinite, Quantity: "v'inv(M)v of a random v",
-				Value: d / (linear.Norm2(q[0]) * linear.Norm2(q[1]))})
-			return
-		}
-	}
-}

@@ -101,9 +101,7 @@ func (t *Trial) begun(r trace.Reading) {
 	t.mu.Lock()
 	t.hist.Stop = trace.Running
 	t.mu.Unlock()
-	if t.hist.SPDM {
-		t.probe()
-	}
+	t.probe()
 	if t.method.Solver.Lanczos || t.method.Solver.Tridiagonal {
 		t.lanczos = new(spectrum.Tridiagonal)
 	}

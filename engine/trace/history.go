@@ -112,6 +112,7 @@ type History struct {
 	SymmetricA bool // the solver assumes A symmetric
 	DefiniteA  bool // the solver assumes A positive definite
 	SPDM       bool // the solver assumes M symmetric positive definite
+	FixedM     bool // the solver assumes that M is one linear operator
 	Restarted  bool // a restarted method
 	Monotone   bool // the true residual cannot grow in exact arithmetic
 	Energy     bool // the energy norm of the error cannot grow (cg)

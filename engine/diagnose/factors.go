@@ -1,0 +1,72 @@
+package diagnose
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+const (
+	unstableGrowth = 1e8 // of ||inv(LU) 1|| ||A|| in the maximum norm (Chow and Saad 1997)
+	nearlyAll      = 0.8 // of the entries of complete factors: little was dropped
+	worthwhile     = 1000
+)
+
+// unstable: the solves with incomplete factors blow up, and the trial fails.
+var unstable = Rule{"unstable-factors", func(c Case) (out []Finding) {
+	for _, h := range c.Trials {
+		if h.Direct || h.Notes.Growth < unstableGrowth || !h.Stop.Ended() || solved(h) {
+			continue
+		}
+		prep, solver, m := cut(h.Pairing)
+		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
+			Claim: fmt.Sprintf("the factors of %s are ill-conditioned: ||inv(LU) 1|| ||A|| = %s (above %.0e), so that M amplifies rounding; the trial ends %s",
+				m, num(h.Notes.Growth), unstableGrowth, h.Stop),
+			Advice: "match or scale A before it is factorised, shift its diagonal, or drop less with pivoting",
+			Try:    []string{"match/" + strings.TrimPrefix(prep, "match/") + solver + "+" + m, prep + solver + "+ilutp"},
+			Evidence: []Evidence{number("||inv(LU) 1|| ||A||", h.Notes.Growth, "maximum norm"),
+				number("smallest pivot", h.Notes.MinPivot, ""), number("fill", h.Notes.Fill, "entries of A")}})
+	}
+	return out
+}}
+
+// nearComplete: incomplete factors that drop next to nothing.
+var nearComplete = Rule{"nothing-dropped", func(c Case) (out []Finding) {
+	complete, ok := direct(c)
+	if !ok {
+		return nil
+	}
+	for _, h := range c.Trials {
+		_, _, m := cut(h.Pairing)
+		if !incomplete(m) || h.Direct || h.Notes.Entries < worthwhile || float64(h.Notes.Entries) < nearlyAll*float64(complete.Notes.Entries) {
+			continue
+		}
+		out = append(out, Finding{Weight: Note, Certainty: inspect.Measured, Subject: h.Pairing,
+			Claim: fmt.Sprintf("%s keeps %d entries, %.0f %% of the complete factors' %d: there is next to no fill to drop",
+				m, h.Notes.Entries, 100*float64(h.Notes.Entries)/float64(complete.Notes.Entries), complete.Notes.Entries),
+			Advice: "factorise completely: " + complete.Pairing,
+			Try:    []string{complete.Pairing},
+			Evidence: []Evidence{number("entries kept", float64(h.Notes.Entries), ""),
+				number("entries of the complete factors", float64(complete.Notes.Entries), ""), number("fill", h.Notes.Fill, "entries of A")}})
+	}
+	return out
+}}
+
+// incomplete says whether a preconditioner drops by a tolerance or a level.
+func incomplete(m string) bool {
+	name, _, _ := strings.Cut(m, ":")
+	return slices.Contains([]string{"ilut", "ilutp", "ict"}, name)
+}
+
+// direct is a trial with complete factors.
+func direct(c Case) (trace.History, bool) {
+	for _, h := range c.Trials {
+		if h.Direct && h.Notes.Entries > 0 && solved(h) {
+			return h, true
+		}
+	}
+	return trace.History{}, false
+}

@@ -1,0 +1,137 @@
+package diagnose
+
+import (
+	"fmt"
+	"slices"
+	"strings"
+	"time"
+
+	"dwindle/engine/trace"
+)
+
+// yield is one row of the table of contradictions: where the stronger rule has
+// spoken, at least as surely, the weaker one is not told.
+type yield struct {
+	stronger string
+	weaker   []string // nil: every rule that speaks of a pairing
+	where    func(strong, weak Finding) bool
+	why      string
+}
+
+// yields is the whole table. What a method does outside its assumptions, with
+// a spoilt preconditioner, or on a right-hand side that no x reaches, is no
+// news about its restarts, its floor or its stopping rule.
+var yields = []yield{
+	{"zero-rhs", nil, anywhere, "b = 0: no iteration tells anything"},
+	{"unreachable-rhs", []string{"restart-stagnation", "accuracy-floor", "divergence", "false-convergence", "stopping-rules", "not-your-rhs"},
+		unprojected, "no residual can get below the part that is out of reach"},
+	{"outside-assumptions", []string{"negative-curvature", "accuracy-floor", "restart-stagnation", "divergence", "breakdown",
+		"false-convergence", "stopping-rules", "preconditioner-not-spd", "pivot"}, samePairing, "the method has no right to converge"},
+	{"outside-assumptions", []string{"not-definite"}, anywhere, "the same matrix, told once"},
+	{"negative-curvature", []string{"not-definite"}, anywhere, "the same matrix, told once"},
+	{"preconditioner-wrong-way", []string{"preconditioner-not-spd", "preconditioner-costs-more", "divergence", "restart-stagnation",
+		"accuracy-floor", "unstable-factors"}, samePairing, "M is not what it is taken for"},
+	{"preconditioner-not-linear", []string{"preconditioner-not-spd", "divergence", "restart-stagnation", "accuracy-floor", "breakdown"},
+		samePairing, "the method supposes one M for all steps"},
+	{"preconditioner-not-spd", []string{"accuracy-floor", "divergence", "breakdown", "false-convergence", "stopping-rules"},
+		samePairing, "the method supposes that M is positive definite"},
+	{"preconditioner-changes-nothing", []string{"preconditioner-costs-more"}, samePairing, "the same iterates: only the clock differs"},
+	{"unstable-factors", []string{"divergence", "restart-stagnation", "breakdown", "accuracy-floor"}, samePairing, "the factors spoil it"},
+	{"zero-diagonal", []string{"pivot"}, zeroPivot, "the pivot is a zero of the diagonal"},
+	{"null-space-growth", []string{"divergence", "accuracy-floor", "false-convergence"}, samePairing, "what grows lies in the null space"},
+	{"false-convergence", []string{"stopping-rules"}, samePairing, "its own number is the stopping rule that fails"},
+	{"accuracy-floor", []string{"false-convergence"}, samePairing, "its own number goes on below the floor"},
+	{"today-beaten", []string{"preconditioner-costs-more"}, samePairing, "the same times, told once"},
+}
+
+func anywhere(_, _ Finding) bool { return true }
+
+func samePairing(strong, weak Finding) bool { return strong.Subject == weak.Subject }
+
+// unprojected: a trial on the projected right-hand side is not concerned.
+func unprojected(_, weak Finding) bool {
+	prep, _, _ := cut(weak.Subject)
+	return !strings.Contains(prep, "project")
+}
+
+func zeroPivot(_, weak Finding) bool { return len(weak.Evidence) > 0 && weak.Evidence[0].Value == 0 }
+
+// resolve drops the findings that another one explains, by the table, then
+// says once what is said alike of several pairings.
+func resolve(all []Finding) []Finding {
+	var out []Finding
+	for _, f := range all {
+		if explainedBy(all, f) {
+			continue
+		}
+		if k := slices.IndexFunc(out, func(g Finding) bool { return g.Rule == f.Rule && g.Claim == f.Claim && g.Weight == f.Weight }); k >= 0 {
+			out[k].Also = append(out[k].Also, f.Subject)
+			continue
+		}
+		out = append(out, f)
+	}
+	return out
+}
+
+// explainedBy says whether a finding yields to one of the others.
+func explainedBy(all []Finding, weak Finding) bool {
+	for _, y := range yields {
+		if y.weaker == nil && weak.Subject == OnSystem || y.weaker != nil && !slices.Contains(y.weaker, weak.Rule) {
+			continue
+		}
+		for _, strong := range all {
+			if strong.Rule == y.stronger && y.where(strong, weak) && certaintyOrder(strong.Certainty) <= certaintyOrder(weak.Certainty) {
+				return true
+			}
+		}
+	}
+	return false
+}
+
+// advise holds the tries of a finding against what has already run: what
+// failed, or ran slower than the trial it is about, is no longer offered; and
+// where another trial has solved the system, the advice says so first.
+func advise(c Case, f *Finding) {
+	about, isTrial := find(c, f.Subject)
+	f.Try = slices.DeleteFunc(slices.Clone(f.Try), func(p string) bool {
+		h, ran := find(c, p)
+		if !ran || !h.Stop.Ended() {
+			return false
+		}
+		return !solved(h) || f.Rule != "unsolved-rows" && isTrial && solved(about) && h.OwnTime > about.OwnTime
+	})
+	if !isTrial || solved(about) || !about.Stop.Ended() {
+		return
+	}
+	best, ok := quickest(c)
+	if !ok {
+		return
+	}
+	f.Advice = fmt.Sprintf("%s has solved the system in %s and %s; else %s", best.Pairing,
+		steps(best.Iterations), seconds(best.OwnTime.Seconds()), f.Advice)
+	f.Try = []string{best.Pairing}
+}
+
+// quickest is the trial that solved the system in the least time.
+func quickest(c Case) (best trace.History, ok bool) {
+	least := time.Duration(0)
+	for _, h := range c.Trials {
+		if solved(h) && (!ok || h.OwnTime < least) {
+			best, ok, least = h, true, h.OwnTime
+		}
+	}
+	return best, ok
+}
+
+// concern orders findings of one weight: today's pairing and the system come
+// before a trial that nobody needs because another one has solved it.
+func concern(c Case, f Finding) int {
+	h, isTrial := find(c, f.Subject)
+	if !isTrial || h.Today {
+		return 0
+	}
+	if _, ok := quickest(c); ok && !solved(h) {
+		return 1
+	}
+	return 0
+}
