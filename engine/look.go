@@ -93,10 +93,7 @@ func (s *Session) judge(v *Snapshot) {
 	}
 	now := s.clock()
 	if key != s.judged.key || now-s.judged.at > judgeAgain && v.Phase == Running {
-		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule, Guess: math.NaN()}
-		if s.guessed() && len(histories) > 0 && len(histories[0].Records) > 0 {
-			c.Guess = histories[0].Records[0].Audit
-		}
+		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule}
 		f := diagnose.Judge(c)
 		s.judged = verdict{key: key, at: now, findings: f, choice: choose.Rank(s.facts, histories, f)}
 	}

@@ -177,9 +177,6 @@ func (s *Session) viewPast(v *Snapshot) {
 	}
 }
 
-// guessed says whether the trials started from a guess.
-func (s *Session) guessed() bool { return s.sys.Guess != nil || s.about != nil && s.opt.Guess != "" }
-
 // dropPast takes a recorded trial off the list; markPast marks one as today's.
 func (s *Session) dropPast(id int) {
 	s.set(func() { s.past = slices.DeleteFunc(slices.Clone(s.past), func(t Trial) bool { return t.ID == id }) })

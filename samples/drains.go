@@ -23,9 +23,8 @@ var drains = Sample{
 		pipes := 2 * n * (n - 1)
 		return pipes + n*n - 1, 5*pipes - 4
 	},
-	Make: makeDrains,
-
-	Expect: []string{"restart-length"},
+	Make:   makeDrains,
+	Expect: []string{"restart-length", "zero-diagonal"},
 }
 
 // makeDrains assembles [R Bᵀ; B 0], B the joints by pipes with a 1 where a pipe

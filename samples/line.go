@@ -20,4 +20,5 @@ var line = Sample{
 		row := stencil{west: -1, centre: 2, east: -1}
 		return linear.System{A: fivePoint(n, 1, func(int, int) stencil { return row }), B: b}, nil
 	},
+	Expect: []string{"preconditioner-changes-nothing"},
 }

@@ -13,7 +13,7 @@ var shift = Sample{
 		{Name: "n", Kind: linear.Int, Default: 40, Min: 2, Max: 1000000, Meaning: "unknowns"},
 	},
 	Size:   func(v linear.Values) (int, int) { return v.Int("n"), v.Int("n") },
-	Expect: []string{"breakdown", "restart-stagnation"},
+	Expect: []string{"breakdown", "restart-stagnation", "zero-diagonal"},
 	Make: func(v linear.Values) (linear.System, error) {
 		n := v.Int("n")
 		ones, b := make([]float64, n), make([]float64, n)

@@ -57,11 +57,7 @@ type Case struct {
 	Facts  *inspect.Facts
 	Trials []trace.History
 	Tol    float64
-	StopBy string  // the stopping rule of the session
-	Guess  float64 // ‖b−Ax₀‖/‖b‖ when a guess was given; NaN otherwise
-	// GuessScale is the multiple of the guess with the smallest residual, and
-	// GuessScaled that residual relative to ‖b‖; NaN without a guess.
-	GuessScale, GuessScaled float64
+	StopBy string // the stopping rule of the session
 }
 
 // Rule is one entry of the catalogue.

@@ -38,7 +38,7 @@ func said(c Case) map[string]Finding {
 }
 
 func caseOf(f *inspect.Facts, trials ...trace.History) Case {
-	return Case{Facts: f, Trials: trials, Tol: 1e-8, StopBy: "rhs", Guess: math.NaN()}
+	return Case{Facts: f, Trials: trials, Tol: 1e-8, StopBy: "rhs"}
 }
 
 func TestNothingToSay(t *testing.T) {
@@ -66,8 +66,8 @@ func TestEachRuleSpeaks(t *testing.T) {
 			h.Stop = trace.IterationLimit
 		}, Blocker, inspect.Proved, "needs a symmetric A"},
 		{"outside-assumptions", func(f *inspect.Facts, h *trace.History) {
-			f.PositiveDefinite = inspect.Fact{Answer: inspect.No, Certainty: inspect.Proved, Why: "a zero on the diagonal"}
-			f.DiagZero = 1
+			f.PositiveDefinite = inspect.Fact{Answer: inspect.No, Certainty: inspect.Proved, Why: "a negative entry on the diagonal"}
+			f.DiagNegative = 1
 		}, Drag, inspect.Proved, "by no guarantee"},
 		{"negative-curvature", event(trace.Event{Iter: 14, Kind: trace.NegativeCurvature, Value: -0.384, Scale: 1e-12,
 			Rows: []trace.RowShare{{Row: 210, Share: 0.49}, {Row: 211, Share: 0.48}, {Row: 5, Share: 0.01}}}),

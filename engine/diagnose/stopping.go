@@ -21,11 +21,12 @@ var ruleWords = map[string]string{
 }
 
 // stoppingRules: a code that stops on another common rule, at the same
-// tolerance, would have stopped with a residual far from it.
+// tolerance, would have stopped with a residual far from it. Told of today's
+// pairing, whose code it is.
 var stoppingRules = Rule{"stopping-rules", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		m, ok := earliest(h, c.Tol)
-		if !ok || !h.Stop.Ended() {
+		if !ok || !h.Today || !h.Stop.Ended() {
 			continue
 		}
 		f := Finding{Weight: Note, Certainty: inspect.Measured, Subject: h.Pairing,

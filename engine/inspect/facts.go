@@ -64,6 +64,7 @@ type Facts struct {
 	RHS     linear.RHS
 	RHSNorm float64 // ‖b‖₂
 	ZeroRHS bool
+	Guess   *Guess // what is known of the starting guess; nil without one
 
 	RowEntries                   Range // entries a row
 	EmptyRows                    []int // the first 16

@@ -2,7 +2,6 @@ package run
 
 import (
 	"context"
-	"math"
 
 	"dwindle/engine/krylov"
 	"dwindle/engine/linear"
