@@ -101,7 +101,9 @@ func (t *Trial) begun(r trace.Reading) {
 	t.mu.Lock()
 	t.hist.Stop = trace.Running
 	t.mu.Unlock()
-	t.probe()
+	if t.hist.SPDM {
+		t.probe()
+	}
 	if t.method.Solver.Lanczos || t.method.Solver.Tridiagonal {
 		t.lanczos = new(spectrum.Tridiagonal)
 	}
