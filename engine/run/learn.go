@@ -11,12 +11,14 @@ import (
 const (
 	relearn   = 1.5  // how far a trial grows between two looks at its coefficients
 	takeApart = 60   // nanoseconds a squared step that a Lanczos matrix costs, taken apart
-	share     = 0.08 // of a trial's own work that looks may cost while it runs
+	share     = 0.05 // of a trial's own work that looks may cost while it runs
 	most      = 3000 // steps looked at while it runs
-	mostEnd   = 1500 // steps looked at at the end, whatever the work was; the share allows more
+	small     = 900  // steps looked at at the end, whatever the work was
+	smallDay  = 2000 // of today's pairing
+	first     = 300  // of a longer trial, the first of its steps; the share allows more
 	lowLocks  = 12   // Ritz values told, at each end
 	highLocks = 6
-	deflated  = 10   // eigenvalues, at most, that a counterfactual takes out
+	mostEnd   = 6000 // steps looked at at the end, where the work allows
 	errorGrid = 64   // energy errors are told at each of the first iterations,
 	errorStep = 1.03 // then at steps of this ratio
 )
@@ -55,14 +57,14 @@ func (t *Trial) learn() {
 	}
 }
 
-// work is the nanoseconds that k steps take, roughly: by counts, so that what
-// is looked at does not depend on the machine.
+// work is the nanoseconds that k steps take at the least, by counts, so that
+// what is looked at does not depend on the machine.
 func (t *Trial) work(k int) float64 {
 	entries := 0
 	if a := t.sys.Matrix(); a != nil {
 		entries = a.Entries()
 	}
-	return float64(k) * float64(entries+5*t.sys.N())
+	return float64(k) * float64(entries+5*t.sys.N()) / 4
 }
 
 // learnAll is the last look: at everything where the work allows, else at the
@@ -73,9 +75,9 @@ func (t *Trial) learnAll(stop trace.Stop) {
 		return
 	}
 	t.tellErrors()
-	allowed := int(math.Sqrt(share * t.work(k) / takeApart))
-	c, ghosts := t.tellLocks(min(k, max(mostEnd, allowed)))
-	if len(c) == 0 || k > max(mostEnd, allowed) {
+	looked := t.lookedAt(k)
+	c, ghosts := t.tellLocks(looked)
+	if len(c) == 0 || looked < k {
 		return
 	}
 	t.mu.Lock()
@@ -84,6 +86,19 @@ func (t *Trial) learnAll(stop trace.Stop) {
 	if stop == trace.Converged {
 		t.tellWithout(c)
 	}
+}
+
+// lookedAt is how many of k steps, from the first, the last look takes apart.
+func (t *Trial) lookedAt(k int) int {
+	whole := small
+	if t.hist.Today {
+		whole = smallDay
+	}
+	allowed := min(mostEnd, int(math.Sqrt(share*t.work(k)/takeApart)))
+	if k <= max(whole, allowed) {
+		return k
+	}
+	return max(first, allowed)
 }
 
 // tellErrors writes the energy errors at growing iterations, as far as they

@@ -12,51 +12,83 @@ import (
 // stand apart from the rest.
 const apart = 10
 
+// deflated is how many eigenvalues, at most, a counterfactual takes out.
+const deflated = 10
+
 // tellWithout writes what a converged trial would have needed on a changed
 // spectrum: conjugate gradients run on the spectrum that the trial saw, first
 // as it is, to hold the model against the trial, then changed.
 func (t *Trial) tellWithout(c []spectrum.Cluster) {
-	its := t.hist.Iterations
-	target := 1.0
-	for _, b := range t.hist.Betas {
-		target *= b
-	}
-	target = math.Sqrt(target)
-	if !(target > 0 && target < 1) || len(c)*its > 1<<25 {
-		return
-	}
-	model := spectrum.Steps(c, target, 2*its)
-	if math.Abs(float64(model-its)) > modelled*float64(its) {
-		return
-	}
-	ask := func(what string, drop func(i int, c spectrum.Cluster) bool) {
-		rest, weight := spectrum.Without(c, drop)
-		if len(rest) == 0 || len(rest) == len(c) {
-			return
-		}
-		goal := target
-		if what == trace.WithoutSingletons { // then b is shorter, too
-			goal *= math.Sqrt(1 - weight)
-		}
-		f := trace.Counterfactual{What: what, Removed: len(c) - len(rest), Next: rest[0].Value,
-			Iterations: spectrum.Steps(rest, goal, 2*its) * its / max(1, model)}
-		for i, k := range c {
-			if drop(i, k) {
-				f.Largest = k.Value
-			}
-		}
-		t.mu.Lock()
-		t.hist.Without = append(t.hist.Without, f)
-		t.mu.Unlock()
-	}
-	if k := outliers(c); k > 0 {
-		ask(trace.Deflated, func(i int, _ spectrum.Cluster) bool { return i < k })
-	}
+	low := outliers(c)
+	var values []float64
 	if t.method.Precond.Name == "none" && t.back == nil {
-		values := singletons(t.sys.Matrix())
-		ask(trace.WithoutSingletons, func(_ int, c spectrum.Cluster) bool { return near(values, c) })
+		values = singletons(t.sys.Matrix())
 	}
+	if low == 0 && len(values) == 0 {
+		return
+	}
+	m, ok := newModel(c, t.hist.Betas, t.hist.Iterations)
+	if !ok {
+		return
+	}
+	var out []trace.Counterfactual
+	if f, ok := m.without(trace.Deflated, func(i int) bool { return i < low }); ok {
+		out = append(out, f)
+	}
+	if f, ok := m.without(trace.WithoutSingletons, func(i int) bool { return near(values, c[i]) }); ok {
+		out = append(out, f)
+	}
+	t.mu.Lock()
+	t.hist.Without = out
+	t.mu.Unlock()
 }
+
+// model is a trial as its own clusters make it again.
+type model struct {
+	c      []spectrum.Cluster
+	target float64 // the residual at the end, relative to the first
+	its    int     // of the trial
+	own    int     // of the model
+}
+
+// newModel runs the model; ok is false where it misses the trial's own count,
+// or would cost too much.
+func newModel(c []spectrum.Cluster, betas []float64, its int) (m model, ok bool) {
+	square := 1.0
+	for _, b := range betas {
+		square *= b
+	}
+	m = model{c: c, target: math.Sqrt(square), its: its}
+	if !(m.target > 0 && m.target < 1) || len(c)*its > costly {
+		return m, false
+	}
+	m.own = spectrum.Steps(c, m.target, 2*its)
+	return m, math.Abs(float64(m.own-its)) <= modelled*float64(its)
+}
+
+// without runs the model without the clusters that drop names.
+func (m model) without(what string, drop func(i int) bool) (trace.Counterfactual, bool) {
+	f := trace.Counterfactual{What: what}
+	rest, weight := spectrum.Without(m.c, func(i int, c spectrum.Cluster) bool {
+		if drop(i) {
+			f.Removed, f.Largest = f.Removed+1, c.Value
+		}
+		return drop(i)
+	})
+	if f.Removed == 0 || len(rest) == 0 {
+		return f, false
+	}
+	goal := m.target
+	if what == trace.WithoutSingletons { // then b is shorter, too
+		goal *= math.Sqrt(1 - weight)
+	}
+	f.Next = rest[0].Value
+	f.Iterations = spectrum.Steps(rest, goal, 2*m.its) * m.its / max(1, m.own)
+	return f, true
+}
+
+// costly bounds the clusters times the iterations of a model.
+const costly = 1 << 22
 
 // modelled is how far the model may miss the trial's own count.
 const modelled = 0.1
