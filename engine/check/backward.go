@@ -18,25 +18,3 @@ func (w *work) backward() {
 	w.add("minimal-1", Minimal, true, "||r||1/(||A||1 ||x||1)", over(r.One, z.One*norm1(x)))
 	w.add("minimal-inf", Minimal, true, "||r||inf/(||A||inf ||x||inf)", over(r.Inf, z.Inf*xInf))
 }
-
-// runningMeasure adds the measure that a method with a running norm of A
-// tests: its value after the last step looked at, and the first step after
-// which it holds.
-func (w *work) runningMeasure(name, formula string, norms []float64) {
-	if len(norms) == 0 {
-		return
-	}
-	d := Definition{Name: name, Kind: Minimal, Formula: formula, Stops: true, Value: w.running2(norms, len(norms))}
-	for k := range norms {
-		if w.running2(norms, k+1) <= w.q.Tol {
-			d.From, d.Holds = k+1, true
-			break
-		}
-	}
-	w.out.Definitions = append(w.out.Definitions, d)
-}
-
-// running2 is ‖r‖₂/(‖A‖‖x‖₂) with the running norm after k steps.
-func (w *work) running2(norms []float64, k int) float64 {
-	return over(w.out.Residual.Two, norms[k-1]*linear.Norm2(w.q.X))
-}

@@ -63,7 +63,8 @@ func (w *work) claim(m *Match) string {
 	for _, f := range m.Fitting {
 		text := f.Definition.Formula
 		if f.First > 0 {
-			text += fmt.Sprintf(" with the norm of A that a minimal residual method has after %s", steps(f.First, f.Last))
+			text += fmt.Sprintf(" with the norm of A that %s has after %s (its residual there is that of x, too)",
+				w.out.Running.Method, steps(f.First, f.Last))
 		}
 		words = append(words, text)
 		onlyMinimal = onlyMinimal && f.Definition.Kind == Minimal

@@ -6,46 +6,105 @@ import (
 	"dwindle/engine/linear"
 )
 
-// Running are the estimates of ‖A‖ that minimal residual methods keep as they
-// go: the Frobenius norm of the matrix that their Lanczos process has built
-// (Paige and Saunders 1975 and 1982). They grow from step to step and pass
-// ‖A‖_F once orthogonality is lost. From r₀, as such a method starts.
+// Running is what a minimal residual method without a preconditioner keeps as
+// it goes from x₀: MINRES where A is symmetric, LSQR elsewhere (Paige and
+// Saunders 1975 and 1982). Its estimate of ‖A‖ is the Frobenius norm of the
+// matrix that the Lanczos process has built; it grows from step to step and
+// passes ‖A‖_F once orthogonality is lost.
 type Running struct {
-	Norms []float64 // after step k = 1, 2, ...
-	// WithStart are those of codes that also count the norm of r₀, nil where
-	// that changes nothing.
-	WithStart []float64
+	Method    string    // "minres" or "lsqr"
+	Norms     []float64 // ‖A‖ after step k = 1, 2, ...
+	WithStart []float64 // of codes that count ‖r₀‖ among the entries; nil where that changes nothing
+	Residuals []float64 // ‖b−Ax_k‖₂ by recurrence
 }
 
 const (
 	mostSteps   = 2000
 	productWork = 1e9 // floating-point operations spent on the products
+
+	// alike is how near the residual of x must be to that of the method for x
+	// to pass as its iterate: rounding moves the curve of a long Lanczos run.
+	alike = 0.02
 )
 
-// running follows a Lanczos process from r₀; for a matrix that is not
-// symmetric the bidiagonalisation of Golub and Kahan from r₀.
+// running follows the Lanczos process from r₀; for a matrix that is not
+// symmetric the bidiagonalisation of Golub and Kahan.
 func (w *work) running() error {
 	n := w.a.NRows
 	steps := min(max(5*n, 50), mostSteps)
 	steps = max(min(steps, int(productWork/float64(4*w.a.Entries()+20*n+1))), 10)
-	sum := 0.0
-	keep := func(square float64) bool {
-		sum += square
-		w.out.Running.Norms = append(w.out.Running.Norms, math.Sqrt(sum))
-		return !math.IsInf(sum, 0) && !math.IsNaN(sum)
+	run := &w.out.Running
+	square := 0.0
+	keep := func(add, residual float64) bool {
+		square += add
+		run.Norms = append(run.Norms, math.Sqrt(square))
+		run.Residuals = append(run.Residuals, residual)
+		return square < math.MaxFloat64
 	}
 	if w.symmetric {
-		before := 0.0
-		w.lanczos(w.r0, steps, func(alpha, beta float64) bool {
-			more := keep(alpha*alpha + before*before + beta*beta)
-			before = beta
-			return more
-		})
+		run.Method = "minres"
+		w.minres(steps, keep)
 	} else {
-		w.bidiagonal(steps, keep)
+		run.Method = "lsqr"
+		w.lsqr(steps, keep)
 	}
 	w.withStart()
 	return w.ctx.Err()
+}
+
+// minres hands out, for each step, what the entries of T add to its square and
+// the residual: T is brought to triangular form by rotations (c, s), and each
+// takes the residual down by s.
+func (w *work) minres(steps int, keep func(add, residual float64) bool) {
+	residual, before := linear.Norm2(w.r0), 0.0
+	c, s, dbar := -1.0, 0.0, 0.0
+	w.lanczos(w.r0, steps, func(alpha, beta float64) bool {
+		gbar := s*dbar - c*alpha
+		dbar = -c * beta
+		gamma := math.Hypot(gbar, beta)
+		c, s = over(gbar, gamma), over(beta, gamma)
+		residual *= s
+		more := keep(alpha*alpha+before*before+beta*beta, residual)
+		before = beta
+		return more
+	})
+}
+
+// lsqr does the same with the lower bidiagonal matrix of Golub and Kahan
+// (1965), α_k on its diagonal and β_{k+1} below.
+func (w *work) lsqr(steps int, keep func(add, residual float64) bool) {
+	n := w.a.NRows
+	u, v, y := make([]float64, n), make([]float64, n), make([]float64, n)
+	residual := linear.Norm2(w.r0)
+	if !(residual > 0) || math.IsInf(residual, 0) {
+		return
+	}
+	linear.Scale(u, 1/residual, w.r0)
+	beta, most, c := 0.0, 0.0, -1.0
+	for range steps {
+		if w.ctx.Err() != nil {
+			return
+		}
+		w.at.Apply(y, u)
+		linear.Lin(v, 1, y, -beta, v)
+		alpha := linear.Norm2(v)
+		if !(alpha > exhausted*most) {
+			return
+		}
+		linear.Scale(v, 1/alpha, v)
+		w.a.Apply(y, v)
+		linear.Lin(u, 1, y, -alpha, u)
+		beta = linear.Norm2(u)
+		most = math.Max(most, alpha+beta)
+		bar := -c * alpha
+		rho := math.Hypot(bar, beta)
+		c = over(bar, rho)
+		residual *= over(beta, rho)
+		if !keep(alpha*alpha+beta*beta, residual) || !(beta > exhausted*most) {
+			return
+		}
+		linear.Scale(u, 1/beta, u)
+	}
 }
 
 // withStart adds what codes get that count ‖r₀‖ among the entries.
@@ -62,36 +121,32 @@ func (w *work) withStart() {
 	}
 }
 
-// bidiagonal runs the bidiagonalisation of Golub and Kahan (1965) from r₀ and
-// hands out α_k² + β_{k+1}².
-func (w *work) bidiagonal(steps int, keep func(square float64) bool) {
-	n := w.a.NRows
-	u, v, y := make([]float64, n), make([]float64, n), make([]float64, n)
-	beta := linear.Norm2(w.r0)
-	if !(beta > 0) || math.IsInf(beta, 0) {
-		return
+// passes says whether x has the residual of the method's iterate after k steps.
+func (w *work) passes(k int) bool {
+	two := w.out.Residual.Two
+	return math.Abs(w.out.Running.Residuals[k-1]-two) <= alike*two
+}
+
+// runningMeasure adds what the method tests, ‖r‖₂/(‖A‖‖x‖₂), where x passes as
+// one of its iterates: the value after the last step with which it does, and
+// the first after which the measure holds.
+func (w *work) runningMeasure(name, formula string, norms []float64) {
+	d := Definition{Name: name, Kind: Minimal, Formula: formula, Stops: true, Value: math.NaN()}
+	for k := 1; k <= len(norms); k++ {
+		if !w.passes(k) {
+			continue
+		}
+		d.Value = w.running2(norms, k)
+		if d.Value <= w.q.Tol && d.From == 0 {
+			d.From, d.Holds = k, true
+		}
 	}
-	linear.Scale(u, 1/beta, w.r0)
-	beta = 0
-	most := 0.0
-	for range steps {
-		if w.ctx.Err() != nil {
-			return
-		}
-		w.at.Apply(y, u)
-		linear.Lin(v, 1, y, -beta, v)
-		alpha := linear.Norm2(v)
-		if !(alpha > exhausted*most) {
-			return
-		}
-		linear.Scale(v, 1/alpha, v)
-		w.a.Apply(y, v)
-		linear.Lin(u, 1, y, -alpha, u)
-		beta = linear.Norm2(u)
-		most = math.Max(most, alpha+beta)
-		if !keep(alpha*alpha+beta*beta) || !(beta > exhausted*most) {
-			return
-		}
-		linear.Scale(u, 1/beta, u)
+	if !math.IsNaN(d.Value) {
+		w.out.Definitions = append(w.out.Definitions, d)
 	}
+}
+
+// running2 is ‖r‖₂/(‖A‖‖x‖₂) with the running norm after k steps.
+func (w *work) running2(norms []float64, k int) float64 {
+	return over(w.out.Residual.Two, norms[k-1]*linear.Norm2(w.q.X))
 }

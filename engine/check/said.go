@@ -109,7 +109,7 @@ func (w *work) match() *Match {
 // measure prints as the number; 0, 0 where it never does.
 func (w *work) fittingSteps(norms []float64) (first, last int) {
 	for k := range norms {
-		if w.q.Said.fits(w.running2(norms, k+1)) {
+		if w.passes(k+1) && w.q.Said.fits(w.running2(norms, k+1)) {
 			if first == 0 {
 				first = k + 1
 			}

@@ -5,6 +5,10 @@ import (
 	"math"
 	"strings"
 	"testing"
+
+	"gonum.org/v1/gonum/mat"
+
+	"dwindle/engine/linear"
 )
 
 func TestParseSaid(t *testing.T) {
@@ -68,4 +72,72 @@ func TestLogarithm(t *testing.T) {
 	if len(a.Said.Fitting) == 0 || a.Said.Fitting[0].Definition.Name != "rhs" {
 		t.Errorf("%+v", a.Said)
 	}
+}
+
+// The iterates of minres and of lsqr by dense least squares: the residual by
+// recurrence is the true one, and the number that each would have printed is
+// named; the same number beside another x is not.
+func TestRunningMeasureNeedsTheIterate(t *testing.T) {
+	const n, steps = 60, 12
+	lopsided := laplace(n)
+	lopsided.Val[1] = -0.5
+	for _, m := range []*linear.CSR{laplace(n), lopsided} {
+		b, r := make([]float64, n), make([]float64, n)
+		linear.Uniform(b, 5)
+		x := minimal(t, m, b, steps)
+		run := asked(t, m, b, x, nil).Running
+		two := linear.Residual(r, m, x, b)
+		if math.Abs(run.Residuals[steps-1]-two) > 1e-9*two {
+			t.Errorf("%s: ||r|| after %d steps %g by recurrence, truly %g", run.Method, steps, run.Residuals[steps-1], two)
+		}
+		number := two / (run.Norms[steps-1] * linear.Norm2(x))
+		said := &Said{Text: fmt.Sprintf("%.3e", number), Value: number}
+		got := asked(t, m, b, x, func(q *Question) { q.Said = said }).Said
+		if len(got.Fitting) != 1 || got.Fitting[0].First > steps || got.Fitting[0].Last < steps {
+			t.Errorf("%s: its own number: %+v", run.Method, got)
+		}
+		other := make([]float64, n)
+		linear.Scale(other, 0.5, x)
+		for _, f := range asked(t, m, b, other, func(q *Question) { q.Said = said }).Said.Fitting {
+			if f.First > 0 {
+				t.Errorf("%s: the number passes beside another x: %+v", run.Method, f)
+			}
+		}
+	}
+}
+
+// minimal returns the vector that makes ‖b−Ax‖₂ smallest in the Krylov space
+// of order k, K(A, b) for a symmetric A and K(AᵀA, Aᵀb) else, by gonum's dense
+// least squares on an orthogonal basis.
+func minimal(t *testing.T, a *linear.CSR, b []float64, k int) []float64 {
+	t.Helper()
+	n := len(b)
+	basis, image := mat.NewDense(n, k, nil), mat.NewDense(n, k, nil)
+	v, y, x := append([]float64(nil), b...), make([]float64, n), make([]float64, n)
+	symmetric := a.ExactlySymmetric()
+	if !symmetric {
+		a.ApplyT(v, b)
+	}
+	for j := range k {
+		for range 2 {
+			for i := range j {
+				q := mat.Col(nil, i, basis)
+				linear.Axpy(-linear.Dot(q, v), q, v)
+			}
+		}
+		linear.Scale(v, 1/linear.Norm2(v), v)
+		basis.SetCol(j, v)
+		a.Apply(y, v)
+		image.SetCol(j, y)
+		copy(v, y)
+		if !symmetric {
+			a.ApplyT(v, y)
+		}
+	}
+	var c mat.VecDense
+	if err := c.SolveVec(image, mat.NewVecDense(n, b)); err != nil {
+		t.Fatal(err)
+	}
+	mat.NewVecDense(n, x).MulVec(basis, &c)
+	return x
 }

@@ -130,9 +130,10 @@ func groundLines(d CheckDocument) []string {
 		settled = "from below, not settled"
 	}
 	say("norms of A: 1 %s, inf %s, Frobenius %s, 2 %s (Lanczos, %s)", four(a.Norms.One), four(a.Norms.Inf), four(a.Norms.Fro), four(a.Norms.Two), settled)
-	if k := len(a.Running.Norms); k > 0 {
-		say("||A||run, which a minimal residual method keeps as it goes: %s after 1 step, %s after %d (estimated)",
-			four(a.Running.Norms[0]), four(a.Running.Norms[k-1]), k)
+	if d, ok := a.Definition("running"); ok {
+		k := len(a.Running.Norms)
+		say("||A||run is the norm of A that %s keeps as it goes, %s after 1 step, %s after %d; listed (%s) because its residual falls to that of x (estimated)",
+			a.Running.Method, four(a.Running.Norms[0]), four(a.Running.Norms[k-1]), k, four(d.Value))
 	}
 	if f := a.Factor; f != nil {
 		say("condition (%s factor, Hager and Higham): 1-norm %s (estimated), for the entries of this x %s", f.How, four(f.Condition), four(f.Reach))
