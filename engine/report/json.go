@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"io"
 
+	"dwindle/engine/choose"
 	"dwindle/engine/inspect"
 )
 
@@ -23,6 +24,9 @@ type documentJSON struct {
 	Findings []findingJSON `json:"findings"`
 	Choice   choiceJSON    `json:"choice"`
 	Elapsed  number        `json:"elapsed_seconds"`
+
+	Toolchain string     `json:"toolchain"`
+	Study     *studyJSON `json:"study"`
 }
 
 type machineJSON struct {
@@ -45,6 +49,10 @@ type choiceJSON struct {
 	Reasons []string     `json:"reasons"`
 	Doubts  []string     `json:"doubts"`
 	Gain    number       `json:"gain"`
+
+	Settings []string      `json:"settings"`
+	RuledOut []ruledJSON   `json:"ruled_out"`
+	Outcomes []outcomeJSON `json:"outcomes"`
 }
 
 type rankedJSON struct {
@@ -55,6 +63,16 @@ type rankedJSON struct {
 	Iterations int    `json:"iterations"`
 	Reached    bool   `json:"reached"`
 	BreakEven  number `json:"break_even"`
+
+	Low  number    `json:"seconds_low"`
+	High number    `json:"seconds_high"`
+	For  []forJSON `json:"for"`
+}
+
+// forJSON is the time predicted for a number of right-hand sides.
+type forJSON struct {
+	Sides   int    `json:"right_hand_sides"`
+	Seconds number `json:"seconds"`
 }
 
 // JSON writes the document in schema 1: every key is always there, what is
@@ -76,12 +94,16 @@ func JSON(w io.Writer, d Document) error {
 		Findings: toFindings(d.Findings, d.Facts),
 		Choice:   toChoice(d),
 		Elapsed:  number(d.Elapsed.Seconds()),
+
+		Toolchain: tame(d.Toolchain),
+		Study:     toStudy(d.Facts),
 	})
 }
 
 func toChoice(d Document) choiceJSON {
 	c := choiceJSON{Pairing: optional(d.Choice.Pairing), Ranked: []rankedJSON{},
-		Reasons: tameAll(d.Choice.Reasons), Doubts: tameAll(d.Choice.Doubts), Gain: unknown}
+		Reasons: tameAll(d.Choice.Reasons), Doubts: tameAll(d.Choice.Doubts), Gain: unknown,
+		Settings: tameAll(d.Choice.Settings), RuledOut: all(d.Choice.RuledOut, toRuled), Outcomes: all(d.Choice.Outcomes, toOutcome)}
 	if d.Choice.Gain > 0 {
 		c.Gain = number(d.Choice.Gain)
 	}
@@ -91,9 +113,17 @@ func toChoice(d Document) choiceJSON {
 			s = unknown
 		}
 		c.Ranked = append(c.Ranked, rankedJSON{tame(r.Pairing), s, r.Memory, number(r.Setup), r.Iterations,
-			r.Reached, number(r.BreakEven)})
+			r.Reached, number(r.BreakEven), measured(r.Low), measured(r.High), toFor(r)})
 	}
 	return c
+}
+
+func toFor(r choose.Ranked) []forJSON {
+	var out []forJSON
+	for i, n := range choose.Sides {
+		out = append(out, forJSON{n, measured(r.For[i])})
+	}
+	return out
 }
 
 // systemJSON carries the numbers of the system that are no yes-or-no facts.

@@ -18,26 +18,27 @@ import (
 // keys are the keys that stable readers may count on: path of object, then
 // its members. More may be there.
 var keys = map[string]string{
-	"":                      "schema version command machine settings system facts trials findings choice",
+	"":                      "schema version command machine settings system facts trials findings choice toolchain study",
 	"machine":               "cpu threads memory_limit_bytes",
 	"settings":              "tol stop_rule iterations seconds seed",
 	"system":                "name unknowns entries rhs digits fingerprint",
 	"facts":                 "symmetric positive_definite singular components pattern_symmetric negative_definite diagonal singletons unreachable triangle_only dominant",
 	"facts.*":               "answer certainty value why rows",
-	"trials.#":              "pairing today stop iterations products precond_uses setup_seconds own_seconds memory_bytes norm residual true_residual backward_error componentwise_error error would_stop condition reason",
+	"trials.#":              "pairing today stop iterations products precond_uses setup_seconds own_seconds memory_bytes norm residual true_residual backward_error componentwise_error error would_stop condition reason locks energy_errors delay_iterations harmonic_ritz predictions without fields preconditioner_probe rerun_iterations columns",
 	"trials.#.would_stop":   "rhs initial preconditioned backward energy",
 	"trials.#.condition":    "of estimate smallest largest settled bound",
 	"findings.#":            "rule weight certainty subject claim advice try evidence",
 	"findings.#.evidence.#": "quantity value unit iteration rows",
-	"choice":                "pairing ranked reasons doubts",
-	"choice.ranked.#":       "pairing seconds_to_tol memory_bytes",
+	"choice":                "pairing ranked reasons doubts settings ruled_out outcomes",
+	"choice.ranked.#":       "pairing seconds_to_tol memory_bytes seconds_low seconds_high for",
+	"choice.ranked.#.for.#": "right_hand_sides seconds",
 }
 
 // TestJSONKeys: every promised key is there, in any document, and what JSON
 // cannot hold is null.
 func TestJSONKeys(t *testing.T) {
 	r := rand.New(rand.NewPCG(5, 6))
-	docs := []Document{{}, typical()}
+	docs := []Document{{}, typical(), told()}
 	for range 200 {
 		docs = append(docs, wild(r))
 	}
@@ -206,5 +207,45 @@ func TestSolution(t *testing.T) {
 	}
 	if err := Solution(&b, Document{Trials: []trace.History{{}}}); err != ErrNoSolution {
 		t.Errorf("no solution: %v", err)
+	}
+}
+
+// TestJSONDeep: what deeper looks found is told with its numbers, rows from 1.
+func TestJSONDeep(t *testing.T) {
+	root := decode(t, told())
+	for path, want := range map[string]string{
+		"study.free_directions.#.rows":     "[4 6]",
+		"study.free_directions.#.quotient": "1e-14",
+		"study.spectra.#.condition":        "199",
+		"study.single_rows.#.rows":         "[1 10]",
+		"study.digits":                     "13",
+		"study.growth.exponent":            "0.5",
+		"study.restoring_shift.shift":      "0.2",
+		"choice.ranked.#.for.#.seconds":    "0.03",
+		"choice.ruled_out.#.reason":        "its M is not symmetric",
+		"choice.outcomes.#.predicted":      "21",
+	} {
+		if got := fmt.Sprint(follow(root, path)[0]); got != want {
+			t.Errorf("%s = %s, want %s", path, got, want)
+		}
+	}
+	trial := follow(root, "trials.#")[1]
+	for path, want := range map[string]string{
+		"locks.#.value":                      "0.3",
+		"energy_errors.#.upper":              "1.1",
+		"predictions.#.total":                "21",
+		"fields.#.name":                      "pressure",
+		"preconditioner_probe.distance":      "0.4",
+		"preconditioner_probe.distance_of_m": "<nil>",
+		"rerun_iterations":                   "[19 20 21]",
+		"columns.#.iterations":               "21",
+		"delay_iterations":                   "2",
+	} {
+		if got := fmt.Sprint(follow(trial, path)[0]); got != want {
+			t.Errorf("%s = %s, want %s", path, got, want)
+		}
+	}
+	if follow(decode(t, typical()), "study")[0] != nil {
+		t.Error("a study that was not made is told")
 	}
 }

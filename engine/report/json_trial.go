@@ -33,6 +33,7 @@ type trialJSON struct {
 	WorstRows     []int         `json:"worst_rows"`
 	Build         buildJSON     `json:"build"`
 	Events        []eventJSON   `json:"events"`
+	deepJSON
 }
 
 // wouldStopJSON is the iteration at which each common stopping rule first
@@ -97,7 +98,7 @@ func toTrials(ts []trace.History) []trialJSON {
 			Componentwise: number(t.Componentwise), Error: number(t.Error), BestTrue: number(t.BestTrue),
 			Floor: number(t.Floor), CPUShare: number(t.CPUShare), UnsolvedRows: t.UnsolvedRows,
 			WouldStop: toWouldStop(t.WouldStop), Condition: toCondition(t.Condition), Reason: tame(t.Reason),
-			WorstRows: rowsOf(t.WorstRows), Build: toBuild(t.Notes), Events: toEvents(t.Events),
+			WorstRows: rowsOf(t.WorstRows), Build: toBuild(t.Notes), Events: toEvents(t.Events), deepJSON: toDeep(t),
 		}
 		if len(t.Records) == 0 { // it never began: nothing was measured
 			for _, x := range []*number{&j.Residual, &j.TrueResidual, &j.Backward, &j.Componentwise, &j.Error,

@@ -14,9 +14,14 @@ func Markdown(w io.Writer, d Document) error {
 	if chart := Chart(d); len(chart) > 0 {
 		lines = append(append(append(lines, "", "```text"), chart...), "```")
 	}
-	lines = appendPart(lines, trialTable(d))
-	lines = appendPart(lines, findingList(d))
+	lines = appendPart(lines, titled("Trials", trialTable(d)))
+	lines = appendPart(lines, titled("Findings", findingList(d)))
+	lines = appendPart(lines, titled("Ranking", rankingList(d.Choice)))
 	lines = appendPart(lines, choiceList(d))
+	lines = appendPart(lines, titled("The system", itemTable(append(measureItems(d.Facts), studyItems(d.Facts)...))))
+	lines = appendPart(lines, deepTables(d.Trials))
+	lines = appendPart(lines, titled("Predictions", outcomeList(d.Choice.Outcomes)))
+	lines = appendPart(lines, titled("Measured with", itemTable(settingItems(d))))
 	return writeLines(w, lines)
 }
 
@@ -67,6 +72,12 @@ func choiceList(d Document) []string {
 	}
 	for _, r := range d.Choice.Doubts {
 		lines = append(lines, "- doubt: "+mark(r))
+	}
+	for _, r := range d.Choice.Settings {
+		lines = append(lines, "- set: "+mark(r))
+	}
+	for _, r := range d.Choice.RuledOut {
+		lines = append(lines, "- ruled out: "+mark(r.Pairing+": "+r.Reason))
 	}
 	return lines
 }

@@ -39,7 +39,11 @@ func trialItems(t trace.History) []labelled {
 	}
 	if n := len(t.EnergyErrors); n > 0 {
 		e := t.EnergyErrors[n-1]
-		add("energy error", "at it %d between %s and %s of the first", e.Iter, sci(e.Lower), sci(e.Upper))
+		upper := "estimated"
+		if t.EnergyProved {
+			upper = "proved"
+		}
+		add("energy error", "at it %d between %s and %s (%s) of the first", e.Iter, sci(e.Lower), sci(e.Upper), upper)
 	}
 	if len(t.Locks) > 0 {
 		add("locked", "%s", lockText(t.Locks))
@@ -48,11 +52,14 @@ func trialItems(t trace.History) []labelled {
 		add("delay", "about %s lost to rounding, estimated", plural(t.Delay, "iteration", "iterations"))
 	}
 	if finite(t.Floor) && t.Floor > 0 {
-		add("floor", "rounding ends the true residual near %s", sci(t.Floor))
+		add("floor", "rounding is estimated to end the true residual near %s", sci(t.Floor))
 	}
 	if n := len(t.Predictions); n > 0 {
 		p := t.Predictions[n-1]
 		add("prediction", "at it %d: %s its in all (%s to %s)", p.Iter, short(p.Total), short(p.Low), short(p.High))
+	}
+	for _, w := range t.Without {
+		add("without", "%s: about %s, computed from its own coefficients", withoutText(w), plural(w.Iterations, "it", "its"))
 	}
 	for _, f := range t.Fields {
 		s := fmt.Sprintf("%s, %s: residual %s, componentwise %s", f.Name, plural(f.Rows, "row", "rows"), sci(f.Residual), sci(f.Componentwise))
@@ -107,4 +114,9 @@ func countText(counts []int) string {
 		return fmt.Sprint(low)
 	}
 	return fmt.Sprintf("%d to %d", low, high)
+}
+
+// withoutText says what a counterfactual takes out of the spectrum.
+func withoutText(w trace.Counterfactual) string {
+	return fmt.Sprintf("%s, %s up to %s", w.What, plural(w.Removed, "value", "values"), short(w.Largest))
 }

@@ -6,6 +6,7 @@ import (
 	"slices"
 	"strings"
 
+	"dwindle/engine/choose"
 	"dwindle/engine/diagnose"
 	"dwindle/engine/inspect"
 	"dwindle/engine/trace"
@@ -20,6 +21,9 @@ func Text(w io.Writer, d Document) error {
 	lines = appendPart(lines, trialLines(d))
 	lines = appendPart(lines, findingLines(d.Findings, d.Facts))
 	lines = appendPart(lines, choiceLines(d))
+	lines = appendPart(lines, headedLines("second look at the system", itemLines(studyItems(d.Facts))))
+	lines = appendPart(lines, deepLines(d.Trials))
+	lines = appendPart(lines, outcomeLines(d.Choice.Outcomes))
 	lines = appendPart(lines, settingLines(d))
 	return writeLines(w, lines)
 }
@@ -160,7 +164,7 @@ func choiceLines(d Document) []string {
 	for i, r := range d.Choice.Ranked {
 		what := "did not reach the tolerance"
 		if r.Reached {
-			what = strings.Join(rankedWords(r), ", ")
+			what = strings.Join(append(rankedWords(r), aheadWords(r)...), ", ")
 		}
 		lines = append(lines, hang(fmt.Sprintf("%2d ", i+1), plain(r.Pairing)+": "+what, Width)...)
 	}
@@ -173,7 +177,28 @@ func choiceLines(d Document) []string {
 	for _, r := range d.Choice.Doubts {
 		lines = append(lines, hang("doubt: ", plain(r), Width)...)
 	}
+	for _, s := range d.Choice.Settings {
+		lines = append(lines, hang("set: ", plain(s), Width)...)
+	}
+	for _, r := range d.Choice.RuledOut {
+		lines = append(lines, hang("ruled out: ", plain(r.Pairing+": "+r.Reason), Width)...)
+	}
 	return lines
+}
+
+// aheadWords tell the range thought likely and the time for many right-hand
+// sides.
+func aheadWords(r choose.Ranked) []string {
+	var words []string
+	if s := likely(r); s != "-" {
+		words = append(words, "likely "+s)
+	}
+	for i, n := range choose.Sides {
+		if n > 1 && r.For[i] > 0 {
+			words = append(words, fmt.Sprintf("for %d b %s", n, seconds(r.For[i])))
+		}
+	}
+	return words
 }
 
 // settingLines tells under what conditions the numbers were measured.

@@ -19,7 +19,7 @@ var update = flag.Bool("update", false, "write the golden files anew")
 // most 78 columns, the head of at most 12 lines.
 func TestPlainText(t *testing.T) {
 	r := rand.New(rand.NewPCG(1, 2))
-	docs := []Document{{}, typical()}
+	docs := []Document{{}, typical(), told()}
 	for range 400 {
 		docs = append(docs, wild(r))
 	}
@@ -65,9 +65,9 @@ func checkPlain(t *testing.T, i int, name, text string, width int) {
 // TestGolden shows whole reports for people to read.
 func TestGolden(t *testing.T) {
 	for name, write := range map[string]func(io.Writer, Document) error{
-		"text.golden": Text, "facts.golden": Facts, "md.golden": Markdown, "json.golden": JSON} {
+		"text.golden": Text, "facts.golden": Facts, "md.golden": Markdown, "json.golden": JSON, "ticket.golden": Ticket} {
 		var b bytes.Buffer
-		if err := write(&b, typical()); err != nil {
+		if err := write(&b, told()); err != nil {
 			t.Fatal(err)
 		}
 		path := "testdata/" + name
@@ -152,5 +152,57 @@ func TestWriteErrors(t *testing.T) {
 				t.Errorf("%s into %d bytes: %v", name, room, err)
 			}
 		}
+	}
+}
+
+// TestTicket: it is the head alone and pastes cleanly: at most 12 lines, no
+// tab, no trailing blank, and the command to repeat is uncut, however many
+// findings there are.
+func TestTicket(t *testing.T) {
+	d := typical()
+	d.Command = "dwindle run sluice.mtx --today cg+none " + strings.Repeat("--pair match,rcm/gmres:30+ilut:1e-3,10 ", 4) + "--tol 1e-6"
+	for range 3 {
+		d.Findings = append(d.Findings, d.Findings[0])
+	}
+	var b bytes.Buffer
+	if err := Ticket(&b, d); err != nil {
+		t.Fatal(err)
+	}
+	text := b.String()
+	if n := strings.Count(text, "\n"); n > HeadLines || n != len(Head(d)) {
+		t.Errorf("%d lines", n)
+	}
+	joined := strings.Join(strings.Fields(text), " ")
+	for _, want := range []string{d.Command, "dwindle 0.1, go1, seed 1", "Example 3000, 2 threads", "FINGERPRINT " + d.System.Fingerprint} {
+		if !strings.Contains(joined, want) {
+			t.Errorf("no %q in\n%s", want, text)
+		}
+	}
+}
+
+// TestVectorFiles: names are safe for shells and file systems, comments stay
+// comments, numbers read back bit for bit.
+func TestVectorFiles(t *testing.T) {
+	if got := VectorName("residual", "match,rcm/gmres:30+ilut:1e-3,10"); got != "residual-match-rcm-gmres-30-ilut-1e-3-10" {
+		t.Errorf("%q", got)
+	}
+	for _, words := range nasty {
+		if name := VectorName("x", words); strings.ContainsAny(name, "/\\ :*\x1b") || strings.HasPrefix(name, "-") || strings.HasPrefix(name, ".") {
+			t.Errorf("%q becomes %q", words, name)
+		}
+	}
+	var b bytes.Buffer
+	v := Vector{Name: "x", Comment: "one\n2 1\n" + strings.Repeat("and more ", 30), Values: []float64{0.1, -1e-300}}
+	if err := WriteVector(&b, typical(), v); err != nil {
+		t.Fatal(err)
+	}
+	lines := strings.Split(strings.TrimSpace(b.String()), "\n")
+	for i, l := range lines[1 : len(lines)-3] {
+		if !strings.HasPrefix(l, "% ") || len(l) > Width {
+			t.Errorf("comment line %d: %q", i+1, l)
+		}
+	}
+	if end := lines[len(lines)-3:]; end[0] != "2 1" || end[1] != "1.0000000000000001e-01" || end[2] != "-1.0000000000000000e-300" {
+		t.Errorf("%q", end)
 	}
 }
