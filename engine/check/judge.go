@@ -196,7 +196,7 @@ func (w *work) atBest() {
 	}
 	text := fmt.Sprintf("x is off by %s of its largest entry: about %.0f correct digits, of about %.0f that a stable solver can be expected to give",
 		num(f.ErrorInf), math.Floor(correct(f.ErrorInf)), math.Floor(f.Digits))
-	if f.Written < f.Digits-0.5 {
+	if math.Floor(f.Written) < math.Floor(f.Digits) {
 		text += fmt.Sprintf("; the %d digits the matrix is written with determine x to about %.0f", w.q.System.Digits, math.Floor(f.Written))
 	}
 	w.hint("%s", text)

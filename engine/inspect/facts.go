@@ -106,6 +106,8 @@ type Facts struct {
 	NullComponents   int  // components whose rows sum to zero
 	Unreachable      Fact // Value: norm of the part of b out of A's range, relative to ‖b‖
 
+	Fields []FieldFacts // of each field of unknowns; nil where none are known
+
 	// Study is what the second, costlier look found; nil before it.
 	Study *Study
 

@@ -14,7 +14,7 @@ import (
 // context's error when cancelled.
 func Inspect(ctx context.Context, s linear.System, seen func(*Facts)) (*Facts, error) {
 	l := &look{ctx: ctx, s: s, a: s.Matrix(), delta: s.Delta()}
-	groups := []func(*look) error{(*look).heading, (*look).guess, (*look).rows, (*look).transpose, (*look).nullVectors, (*look).signs, (*look).definite}
+	groups := []func(*look) error{(*look).heading, (*look).guess, (*look).rows, (*look).transpose, (*look).nullVectors, (*look).signs, (*look).definite, (*look).fields}
 	if l.a == nil {
 		groups = []func(*look) error{(*look).heading, (*look).guess, (*look).matrixFree}
 	}
