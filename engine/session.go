@@ -34,6 +34,7 @@ type Session struct {
 	sys       linear.System
 	facts     *inspect.Facts
 	print     string // fingerprint
+	skip      func() // ends the second look at the system; nil if none is under way
 	bench     *run.Bench
 	lineup    []string
 	waiting   string
@@ -128,6 +129,10 @@ func (s *Session) loadAndInspect() (err error) {
 	}
 	print := fingerprint(sys)
 	s.set(func() { s.facts, s.print = facts, print })
+	if facts, err = s.study(sys, facts); err != nil {
+		return err
+	}
+	s.set(func() { s.facts = facts })
 	return nil
 }
 
