@@ -9,11 +9,10 @@ import (
 
 // A direction is nearly free where A equilibrated maps it to freeLimit of its
 // norm or less, and stands apart where the next one is mapped to isolated times
-// as much; below vanishing its quotient may be rounding alone.
+// as much.
 const (
 	freeLimit  = 1e-8
 	isolated   = 100
-	vanishing  = 1e-13
 	mostFree   = 8
 	freeSteps  = 14
 	tinyDivide = 1e-300
@@ -188,7 +187,7 @@ func without(v [][]float64, w []float64, row int) [][]float64 {
 
 // direction describes one, v of unit length in the equilibrated units.
 func (e *exam) direction(v []float64, norm float64) NullDirection {
-	d := NullDirection{Quotient: e.quotient(v, norm), Next: math.NaN(), Support: support(v)}
+	d := NullDirection{Quotient: e.quotient(v, norm), Next: math.NaN(), Load: math.NaN(), Support: support(v)}
 	var t top
 	for i, x := range v {
 		t.add(i, x*x)
@@ -204,5 +203,8 @@ func (e *exam) direction(v []float64, norm float64) NullDirection {
 		d.Vector[i] = e.col[i] * x
 	}
 	linear.Scale(d.Vector, 1/max(linear.Norm2(d.Vector), tinyDivide), d.Vector)
+	if e.symmetric && len(e.s.B) == len(v) && e.f.RHSNorm > 0 {
+		d.Load = math.Abs(linear.Dot(d.Vector, e.s.B)) / e.f.RHSNorm
+	}
 	return d
 }

@@ -9,7 +9,7 @@ import (
 // the largest diagonal of its neighbours, penaltyTimes; and no more than one
 // row in penaltyShare is of that kind.
 const (
-	penaltyTimes = 1e3
+	penaltyTimes = 100
 	penaltyShare = 10
 )
 

@@ -47,6 +47,7 @@ type NullDirection struct {
 	Rows     []int     // that carry it, the largest first, at most 16
 	Shares   []float64 // of ‖v‖², of these rows
 	Rigid    string    // "translation", "rotation" or "" : a motion of the coordinates
+	Load     float64   // |vᵀb|/(‖v‖‖b‖) of a symmetric A: the part of b that pushes along it; NaN
 	Support  int       // rows that carry 99 % of it
 	Vector   []float64 `json:"-"` // length n, in the user's units
 }

@@ -1,0 +1,154 @@
+package diagnose
+
+import (
+	"fmt"
+	"math"
+
+	"dwindle/engine/inspect"
+)
+
+// toRounding is the quotient ‖Av‖/(‖A‖‖v‖), after equilibration, below which a
+// direction is free as far as rounding lets it be seen.
+const toRounding = 1e-13
+
+// mechanism: motions of a symmetric system that cost no energy, where they are
+// not the constants that the facts know already.
+var mechanism = Rule{"mechanism", func(c Case) []Finding {
+	f := c.Facts
+	if f.Study == nil || f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer == inspect.Yes ||
+		f.NegativeCount.Answer == inspect.Yes || f.RowSumsZero.Answer == inspect.Yes || f.DiagNegative > 0 {
+		return nil
+	}
+	var free []inspect.NullDirection
+	for _, d := range f.Study.Null {
+		if d.Quotient <= toRounding {
+			free = append(free, d)
+		}
+	}
+	if len(free) == 0 {
+		return nil
+	}
+	claim, rows := c.motions(free)
+	g := Finding{Weight: Blocker, Certainty: inspect.Measured, Subject: OnSystem,
+		Claim:  claim,
+		Advice: "look there for a missing support or a hinge too many; until it is added, minres finds the part of the answer that is determined",
+		Try:    []string{"minres+none"},
+		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: free[0].Quotient, Iteration: none, Rows: rows},
+			number("the next direction", free[len(free)-1].Next, ""), number("free directions", float64(len(free)), "")}}
+	if load := heaviest(free); load > 1e-10 {
+		g.Claim += fmt.Sprintf("; b pushes along it with %s of its norm, and no x can answer that", num(load))
+		g.Evidence = append(g.Evidence, number("part of b along it", load, ""))
+	}
+	return []Finding{g}
+}}
+
+// motions words what is free and names rows that carry it.
+func (c Case) motions(free []inspect.NullDirection) (claim string, rows []int) {
+	d := free[0]
+	head := "one zero-energy motion"
+	if len(free) > 1 {
+		head = fmt.Sprintf("%d zero-energy motions", len(free))
+	}
+	whole := 0
+	for _, v := range free {
+		if v.Rigid != "" || 4*v.Support > c.Facts.N-c.Facts.Singletons {
+			whole++
+		}
+	}
+	if whole == len(free) {
+		return fmt.Sprintf("%s of the whole%s: nothing holds it in place", head, kinds(free)), d.Rows
+	}
+	if len(free) > 1 {
+		head += ", the most local one"
+		d = mostLocal(free)
+	}
+	rows, share := localRows(d)
+	if d.Support > len(rows) {
+		return fmt.Sprintf("%s carried 99 %% by %d rows, %.0f %% by %s: a part free to move, or a missing support",
+			head+",", d.Support, 100*share, c.list(rows, 6)), rows
+	}
+	return fmt.Sprintf("%s, carried %.0f %% by %s: a point free to spin, or a missing support", head, 100*share, c.list(rows, 6)), rows
+}
+
+// kinds counts rigid motions by their kind, in brackets.
+func kinds(free []inspect.NullDirection) string {
+	shift, turn := 0, 0
+	for _, d := range free {
+		switch d.Rigid {
+		case "translation":
+			shift++
+		case "rotation":
+			turn++
+		}
+	}
+	if shift+turn < len(free) {
+		return ""
+	}
+	return fmt.Sprintf(" (%s, %s)", count(shift, "translation"), count(turn, "rotation"))
+}
+
+func mostLocal(free []inspect.NullDirection) inspect.NullDirection {
+	best := free[0]
+	for _, d := range free {
+		if d.Support < best.Support {
+			best = d
+		}
+	}
+	return best
+}
+
+// localRows are the rows, the largest share first, that together carry 95 % of
+// a direction, at most six, and their part.
+func localRows(d inspect.NullDirection) (rows []int, part float64) {
+	for k, s := range d.Shares {
+		if part >= 0.95 || k == 6 {
+			break
+		}
+		rows, part = append(rows, d.Rows[k]), part+s
+	}
+	return rows, part
+}
+
+func heaviest(free []inspect.NullDirection) float64 {
+	sum := 0.0
+	for _, d := range free {
+		if d.Load > 0 {
+			sum += d.Load * d.Load
+		}
+	}
+	return math.Sqrt(sum)
+}
+
+// nearNull: a few directions are mapped nearly to zero, far below all others,
+// yet the system is not singular.
+var nearNull = Rule{"near-null", func(c Case) []Finding {
+	f := c.Facts
+	if f.Study == nil || len(f.Study.Null) == 0 || f.Singular.Answer == inspect.Yes || f.RowSumsZero.Answer == inspect.Yes ||
+		mechanism.Judge(c) != nil {
+		return nil
+	}
+	s := f.Study
+	d := s.Null[0]
+	g := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: OnSystem,
+		Claim:  "one direction is nearly free: after equilibration A maps it to " + num(d.Quotient) + " of its norm",
+		Advice: "if a mode of the model should be held, hold it; otherwise deflate it, or solve directly and trust only these digits",
+		Try:    []string{"scale/gmres:100+ilut:1e-3,10"},
+		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: d.Quotient, Iteration: none, Rows: d.Rows},
+			number("the next direction", d.Next, "")}}
+	if len(s.Null) > 1 {
+		g.Claim = fmt.Sprintf("%d directions are nearly free: after equilibration A maps them to %s of their norm or less",
+			len(s.Null), num(s.Null[len(s.Null)-1].Quotient))
+	}
+	if d.Next > 0 {
+		g.Claim += ", the next to " + num(d.Next)
+	}
+	if x := s.Equilibrated; x != nil && x.Condition > 0 {
+		g.Claim += fmt.Sprintf("; the condition %s leaves about %s of x", num(x.Condition),
+			count(max(0, int(math.Round(s.Digits))), "correct digit"))
+		g.Evidence = append(g.Evidence, number("condition after equilibration", x.Condition, ""), number("digits to expect", s.Digits, ""))
+	}
+	if f.Symmetric.Answer == inspect.Yes {
+		g.Try = instead(f)
+	}
+	return []Finding{g}
+}}
