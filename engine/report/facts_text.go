@@ -48,10 +48,13 @@ func measureItems(f *inspect.Facts) []labelled {
 	if f.Complete && !f.MatrixFree {
 		items = append(items,
 			labelled{"entries a row", fmt.Sprintf("%.0f to %.0f, bandwidth %d", f.RowEntries.Min, f.RowEntries.Max, f.Bandwidth)},
-			labelled{"row norms", fmt.Sprintf("%s to %s (rows %d, %d)", sci(f.RowNorm.Min), sci(f.RowNorm.Max), f.RowNorm.MinRow+1, f.RowNorm.MaxRow+1)},
-			labelled{"column norms", fmt.Sprintf("%s to %s (columns %d, %d)", sci(f.ColNorm.Min), sci(f.ColNorm.Max), f.ColNorm.MinRow+1, f.ColNorm.MaxRow+1)},
+			labelled{"row norms", fmt.Sprintf("%s to %s (rows %s, %s)", sci(f.RowNorm.Min), sci(f.RowNorm.Max), rowName(f.RowNorm.MinRow, f), rowName(f.RowNorm.MaxRow, f))},
+			labelled{"column norms", fmt.Sprintf("%s to %s (columns %s, %s)", sci(f.ColNorm.Min), sci(f.ColNorm.Max), rowName(f.ColNorm.MinRow, f), rowName(f.ColNorm.MaxRow, f))},
 			labelled{"Gershgorin", fmt.Sprintf("%s to %s", sci(f.Gershgorin.Min), sci(f.Gershgorin.Max))},
 			labelled{"norms of A", fmt.Sprintf("inf %s, 1 %s, Frobenius %s", sci(f.NormInf), sci(f.NormOne), sci(f.NormFro))})
+	}
+	for _, g := range f.Fields {
+		items = append(items, labelled{"field " + g.Name, fieldText(g)})
 	}
 	for _, n := range f.Notes {
 		items = append(items, labelled{"note", n})

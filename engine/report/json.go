@@ -128,27 +128,28 @@ func toFor(r choose.Ranked) []forJSON {
 
 // systemJSON carries the numbers of the system that are no yes-or-no facts.
 type systemJSON struct {
-	Name          string    `json:"name"`
-	Unknowns      int       `json:"unknowns"`
-	Entries       int       `json:"entries"`
-	RHS           *string   `json:"rhs"`
-	Digits        *int      `json:"digits"`
-	Fingerprint   string    `json:"fingerprint"`
-	Format        string    `json:"format"`
-	Stored        int       `json:"stored"`
-	Duplicates    int       `json:"duplicates"`
-	ExplicitZeros int       `json:"explicit_zeros"`
-	Notes         []string  `json:"notes"`
-	RHSNorm       number    `json:"rhs_norm"`
-	Bandwidth     *int      `json:"bandwidth"`
-	RowEntries    [2]number `json:"row_entries"`
-	RowNorm       [2]number `json:"row_norm"`
-	ColNorm       [2]number `json:"column_norm"`
-	Gershgorin    [2]number `json:"gershgorin"`
-	NormInf       number    `json:"norm_inf"`
-	NormOne       number    `json:"norm_one"`
-	NormFro       number    `json:"norm_fro"`
-	Asymmetry     number    `json:"asymmetry"`
+	Name          string           `json:"name"`
+	Unknowns      int              `json:"unknowns"`
+	Entries       int              `json:"entries"`
+	RHS           *string          `json:"rhs"`
+	Digits        *int             `json:"digits"`
+	Fingerprint   string           `json:"fingerprint"`
+	Format        string           `json:"format"`
+	Stored        int              `json:"stored"`
+	Duplicates    int              `json:"duplicates"`
+	ExplicitZeros int              `json:"explicit_zeros"`
+	Notes         []string         `json:"notes"`
+	RHSNorm       number           `json:"rhs_norm"`
+	Bandwidth     *int             `json:"bandwidth"`
+	RowEntries    [2]number        `json:"row_entries"`
+	RowNorm       [2]number        `json:"row_norm"`
+	ColNorm       [2]number        `json:"column_norm"`
+	Gershgorin    [2]number        `json:"gershgorin"`
+	NormInf       number           `json:"norm_inf"`
+	NormOne       number           `json:"norm_one"`
+	NormFro       number           `json:"norm_fro"`
+	Asymmetry     number           `json:"asymmetry"`
+	Fields        []fieldFactsJSON `json:"fields"`
 }
 
 func toSystem(d Document) systemJSON {
@@ -156,7 +157,7 @@ func toSystem(d Document) systemJSON {
 	s := systemJSON{Name: tame(d.System.Name), Unknowns: d.System.Unknowns, Entries: d.System.Entries,
 		RHS: optional(d.System.RHS), Fingerprint: tame(d.System.Fingerprint), Notes: []string{},
 		RHSNorm: unknown, RowEntries: none, RowNorm: none, ColNorm: none, Gershgorin: none,
-		NormInf: unknown, NormOne: unknown, NormFro: unknown, Asymmetry: unknown}
+		NormInf: unknown, NormOne: unknown, NormFro: unknown, Asymmetry: unknown, Fields: []fieldFactsJSON{}}
 	if d.System.Digits > 0 {
 		s.Digits = &d.System.Digits
 	}
@@ -164,7 +165,7 @@ func toSystem(d Document) systemJSON {
 	if f == nil {
 		return s
 	}
-	s.Format, s.Notes = tame(f.Format), tameAll(f.Notes)
+	s.Format, s.Notes, s.Fields = tame(f.Format), tameAll(f.Notes), toFieldFacts(f)
 	s.Stored, s.Duplicates, s.ExplicitZeros, s.RHSNorm = f.Stored, f.Duplicates, f.ExplicitZeros, number(f.RHSNorm)
 	if f.Complete && !f.MatrixFree {
 		s.Bandwidth = &f.Bandwidth
