@@ -9,7 +9,9 @@ import (
 )
 
 const (
-	relearn   = 1.5  // how far a trial grows between two looks at its coefficients
+	soonest   = 16   // iterations before the first look
+	retell    = 1.25 // how far a trial grows between two looks at its error,
+	relearn   = 1.5  // and between two at its eigenvalues
 	takeApart = 60   // nanoseconds a squared step that a Lanczos matrix costs, taken apart
 	share     = 0.05 // of a trial's own work that looks may cost while it runs
 	most      = 3000 // steps looked at while it runs
@@ -25,7 +27,8 @@ const (
 
 // learned is what was made of a trial's coefficients so far.
 type learned struct {
-	next   int     // iterations at which to look again
+	errors int     // iterations at which to tell the errors again
+	next   int     // iterations at which to take the Lanczos matrix apart again
 	spent  float64 // nanoseconds that looks have cost, by count of work
 	cycles int     // whole cycles seen of a restarted method
 	nextAt int     // the cycle to look at next
@@ -42,7 +45,11 @@ func (t *Trial) coefficients(alpha, beta float64) {
 func (t *Trial) learn() {
 	t.seeCycle()
 	k := len(t.hist.Alphas)
-	if k < max(t.learned.next, 16) {
+	if k >= max(t.learned.errors, soonest) {
+		t.learned.errors = int(math.Ceil(retell * float64(k)))
+		t.tellErrors()
+	}
+	if k < max(t.learned.next, soonest) {
 		return
 	}
 	t.learned.next = int(math.Ceil(relearn * float64(k)))
@@ -51,7 +58,6 @@ func (t *Trial) learn() {
 		return
 	}
 	t.learned.spent += cost
-	t.tellErrors()
 	if k <= most {
 		t.tellLocks(k)
 	}

@@ -92,7 +92,8 @@ const (
 // Tichý, Numer. Algorithms 88, 2021, written from memory): the sum of d terms
 // holds all but a quarter of the squared error when S·Δ_{k+d} ≤ Σ/4, where Δ
 // are the terms and S is the largest ratio of the squared error to its own
-// term seen since the error was a hundred times as large.
+// term from step k back to where the error was a hundred times as large. It is
+// a heuristic, and a long plateau can deceive it.
 func trusted(terms []float64) int {
 	n := len(terms)
 	tail := make([]float64, n+1)
@@ -101,7 +102,7 @@ func trusted(terms []float64) int {
 	}
 	safe := func(k int) bool {
 		s := 1.0
-		for j := k - 1; j >= 0 && tail[k] > lookBack*tail[j]; j-- {
+		for j := k; j >= 0 && tail[k] > lookBack*tail[j]; j-- {
 			s = math.Max(s, tail[j]/terms[j])
 		}
 		return s*terms[n-1] <= missing*(tail[k]-terms[n-1])

@@ -130,3 +130,30 @@ func TestHarmonicLimit(t *testing.T) {
 		t.Errorf("%d vectors, want the pair", got)
 	}
 }
+
+// The values are those of the other definition; those at infinity are left
+// out.
+func TestHarmonicValues(t *testing.T) {
+	const m = 9
+	for seed := range uint64(20) {
+		hbar := hessenberg(m, seed)
+		want := harmonicValues(hbar, m)
+		got := spectrum.NewHarmonic(m).Values(hbar)
+		if len(got) != m {
+			t.Fatalf("seed %d: %d values", seed, len(got))
+		}
+		for i, v := range got {
+			best := math.Inf(1)
+			for _, w := range want {
+				best = math.Min(best, cmplx.Abs(v-w)/cmplx.Abs(w))
+			}
+			if best > 1e-8 || i > 0 && cmplx.Abs(v) < cmplx.Abs(got[i-1])*(1-1e-12) {
+				t.Errorf("seed %d: value %v of %v, known %v", seed, v, got, want)
+			}
+		}
+	}
+	// A shift by one: H_m is nilpotent, and the residual stands still.
+	if got := spectrum.NewHarmonic(2).Values([]float64{0, 0, 1, 0, 0, 1}); len(got) != 0 {
+		t.Errorf("values of a shift: %v", got)
+	}
+}
