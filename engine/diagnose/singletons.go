@@ -72,6 +72,9 @@ func measuredSingletons(c Case) (out []Finding, ok bool) {
 			number("their smallest diagonal", f.SingletonDiag.Min, ""), number("their largest diagonal", f.SingletonDiag.Max, ""),
 			number("condition", raw.Condition, ""), number("condition without them", rest.Condition, ""),
 			number("smallest eigenvalue of the rest", rest.Smallest, ""), number("largest eigenvalue of the rest", rest.Largest, "")}}
+	if words, evidence, ok := withoutSingletons(c); ok {
+		g.Claim, g.Evidence = g.Claim+words, append(g.Evidence, evidence...)
+	}
 	return []Finding{g}, true
 }
 
