@@ -23,7 +23,7 @@ var acoustics = Sample{
 		return n * n, fivePointEntries(n, n)
 	},
 	Make:   makeAcoustics,
-	Expect: []string{"not-definite", "restart-length"},
+	Expect: []string{"not-definite", "restoring-shift", "restart-length"},
 }
 
 func makeAcoustics(v linear.Values) (linear.System, error) {

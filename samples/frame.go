@@ -22,7 +22,7 @@ var frame = Sample{
 		return g.unknowns, 36*g.elements + 6
 	},
 	Make:   makeFrame,
-	Expect: []string{"row-scaling", "residual-rises", "lost-orthogonality"},
+	Expect: []string{"row-scaling", "singleton-rows", "penalty-rows", "residual-rises", "lost-orthogonality"},
 }
 
 const (

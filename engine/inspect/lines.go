@@ -6,8 +6,8 @@ import (
 )
 
 // A diagonal is a penalty where it exceeds the sum of the row's couplings, and
-// the largest diagonal of its neighbours, penaltyTimes; and no more than one
-// row in penaltyShare is of that kind.
+// the median of all diagonals, penaltyTimes; and no more than one row in
+// penaltyShare is of that kind.
 const (
 	penaltyTimes = 100
 	penaltyShare = 10
@@ -18,11 +18,16 @@ const (
 func (e *exam) lines() []LineRows {
 	d := make([]float64, e.f.N)
 	e.a.Diagonal(d)
+	sizes := make([]float64, e.f.N)
+	for i, v := range d {
+		sizes[i] = math.Abs(v)
+	}
+	usual := median(sizes)
 	kinds := map[string]*LineRows{}
 	values := map[string][]float64{}
 	var others []float64
 	for i, v := range d {
-		kind := e.kind(i, d)
+		kind := e.kind(i, d[i], usual)
 		if kind == "" {
 			if v != 0 {
 				others = append(others, math.Abs(v))
@@ -51,22 +56,21 @@ func (e *exam) lines() []LineRows {
 	return out
 }
 
-// kind of constraint of row i; "" for none.
-func (e *exam) kind(i int, d []float64) string {
+// kind of constraint of row i with diagonal d; "" for none.
+func (e *exam) kind(i int, d, usual float64) string {
 	cols, vals := e.a.Row(i)
-	sum, neighbour := 0.0, 0.0
+	sum := 0.0
 	for k, j := range cols {
 		if int(j) != i && vals[k] != 0 {
 			sum += math.Abs(vals[k])
-			neighbour = max(neighbour, math.Abs(d[j]))
 		}
 	}
 	switch {
-	case sum == 0 && d[i] != 0 && e.replaced != nil && e.replaced[i]:
+	case sum == 0 && d != 0 && e.replaced != nil && e.replaced[i]:
 		return "row-replaced"
-	case sum == 0 && d[i] != 0:
+	case sum == 0 && d != 0:
 		return "singleton"
-	case sum > 0 && math.Abs(d[i]) >= penaltyTimes*max(sum, neighbour):
+	case sum > 0 && math.Abs(d) >= penaltyTimes*max(sum, usual):
 		return "penalty"
 	}
 	return ""
