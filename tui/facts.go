@@ -37,6 +37,7 @@ func factRows(f *inspect.Facts, g glyphs) []factRow {
 	}
 	rows := append(sizeRows(f), answerRows(f)...)
 	rows = append(rows, numberRows(f)...)
+	rows = append(rows, fieldFacts(f)...)
 	rows = append(rows, rhsRows(f)...)
 	for _, note := range f.Notes {
 		rows = append(rows, factRow{label: "note", why: note})
@@ -133,6 +134,20 @@ func diagonalRow(f *inspect.Facts) factRow {
 	}
 	why := fmt.Sprintf("%d > 0, %d < 0, %d zero, %d missing", f.DiagPositive, f.DiagNegative, f.DiagZero, f.DiagMissing)
 	return factRow{"diagonal signs", answer, "", withRows(why, f.DiagRows, f)}
+}
+
+// fieldFacts are what is known of each field of unknowns.
+func fieldFacts(f *inspect.Facts) []factRow {
+	var rows []factRow
+	for _, g := range f.Fields {
+		why := fmt.Sprintf("norms %s; diagonal %d > 0, %d < 0, %d zero; part of b %s",
+			pair(g.RowNorm), g.DiagPositive, g.DiagNegative, g.DiagZero, sci(g.RHSNorm))
+		if g.Block.Answer == inspect.Yes || g.Block.Answer == inspect.No {
+			why += fmt.Sprintf("; block definite: %s (%s), %s", g.Block.Answer, g.Block.Certainty, g.Block.Why)
+		}
+		rows = append(rows, factRow{"field " + g.Name, count(g.Rows) + " rows", "", why})
+	}
+	return rows
 }
 
 // rhsRows tell of the right-hand side.
