@@ -19,29 +19,6 @@ func (c Case) name(row int) string { return c.Facts.Names.Row(row) }
 // list tells at most k rows so.
 func (c Case) list(rows []int, k int) string { return c.Facts.Names.List(rows, k) }
 
-// name prints a row as the file counts it.
-func name(row int) string { return fmt.Sprintf("row %d", row+1) }
-
-// list prints at most k rows, as the file counts them.
-func list(rows []int, k int) string {
-	if len(rows) == 1 {
-		return name(rows[0])
-	}
-	var b strings.Builder
-	b.WriteString("rows ")
-	for i, r := range rows {
-		if i == k {
-			b.WriteString(", ...")
-			break
-		}
-		if i > 0 {
-			b.WriteString(", ")
-		}
-		fmt.Fprintf(&b, "%d", r+1)
-	}
-	return b.String()
-}
-
 // carriers are the rows that together carry at least half of the shares that
 // are known, the largest first, and how much they carry.
 func carriers(shares []trace.RowShare) (rows []int, part float64) {
