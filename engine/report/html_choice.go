@@ -93,8 +93,8 @@ func costPart(d Document) markup {
 	t, ok := timeBars(d).picture(350)
 	m, also := memoryBars(d).picture(350)
 	body := join(
-		small(t, ok, "Own time of the trials", "Own time: set-up dark, iterations light; &gt;&gt; is cut."),
-		small(m, also, "Memory of the trials", "Memory: preconditioner dark, the rest light."))
+		small(t, ok, "Own time of the trials", "Own time: set-up solid, iterations pale; &gt;&gt; is cut."),
+		small(m, also, "Memory of the trials", "Memory: preconditioner solid, the rest pale."))
 	if body == "" {
 		return ""
 	}

@@ -23,9 +23,12 @@ dl.head dd{margin:0}
 table{border-collapse:collapse;font-size:.9em;min-width:100%}
 th,td{text-align:left;vertical-align:top;padding:.28rem .7rem .28rem 0;border-bottom:1px solid var(--faint)}
 th{font-weight:600;color:var(--soft);vertical-align:bottom}
-td.n,th.n{text-align:right;white-space:nowrap;font-variant-numeric:tabular-nums}
+td.n,th.n{text-align:right;font-variant-numeric:tabular-nums}
+td.n{white-space:nowrap}
+td.remark{border-bottom:1px solid var(--faint);color:var(--soft);font-size:.92em;padding-top:0}
+td.remark div{position:sticky;left:0;max-width:min(60rem,88vw)}
+tr:has(+tr>td.remark)>td{border-bottom:0}
 td code{white-space:nowrap}
-td .small{min-width:12rem}
 table.items td:first-child{white-space:nowrap;color:var(--soft)}
 table.items{font-size:.92em}
 figure{margin:.8rem 0}

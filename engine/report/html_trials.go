@@ -37,21 +37,29 @@ func hued(tag, class string, i int) string {
 // trialsPart is the table of trials, with the reason of each ending that is
 // not convergence.
 func trialsPart(d Document) markup {
-	columns := []column{{"", false}, {"pairing", false}, {"ending", false}, {"its", true}, {"products", true}, {"M uses", true}, {"own residual", true},
-		{"true residual", true}, {"backward error", true}, {"componentwise", true}, {"condition at least", true}, {"set-up", true}, {"own time", true}, {"memory", true}}
+	columns := []column{{"", false}, {"pairing", false}, {"ending", false}, {"its", true}, {"own time", true}, {"set-up", true}, {"memory", true},
+		{"products", true}, {"true residual", true}, {"own residual", true}, {"backward error", true}, {"componentwise", true}, {"condition at least", true}}
 	var rows [][]markup
 	for i, t := range d.Trials {
-		n := numbers(t)
-		row := []markup{element(hued("span", "key", i), safe(string(digit(i)))), pairingCell(d, t), endingCell(t)}
-		if len(t.Records) == 0 {
-			row = append(row, words("-", "-", "-", "-", "-", "-", "-", "-", "-", "-", "-")...)
-		} else {
-			row = append(row, words(n[0], n[1], strconv.Itoa(t.PrecondUses), sci(t.Residual), n[2], sci(t.Backward), sci(t.Componentwise),
-				n[3], n[4], n[5], memory(t.MemoryBytes))...)
+		row := []markup{element(hued("span", "key", i), safe(string(digit(i)))), pairingCell(d, t), safe(t.Stop.String())}
+		for _, s := range trialCells(t) {
+			row = append(row, safe(s))
 		}
 		rows = append(rows, row)
+		if t.Stop != trace.Converged && t.Reason != "" {
+			rows = append(rows, []markup{safe(t.Reason)})
+		}
 	}
 	return table(columns, rows)
+}
+
+// trialCells are the numbers of a trial, dashes where it never began.
+func trialCells(t trace.History) []string {
+	n := numbers(t)
+	if len(t.Records) == 0 {
+		return []string{"-", "-", "-", "-", "-", "-", "-", "-", "-", "-"}
+	}
+	return []string{n[0], n[5], n[4], memory(t.MemoryBytes), n[1], n[2], sci(t.Residual), sci(t.Backward), sci(t.Componentwise), n[3]}
 }
 
 func pairingCell(d Document, t trace.History) markup {
@@ -61,14 +69,6 @@ func pairingCell(d Document, t trace.History) markup {
 	}
 	if t.Pairing == d.Choice.Pairing && t.Pairing != "" {
 		m = element("b", m)
-	}
-	return m
-}
-
-func endingCell(t trace.History) markup {
-	m := safe(t.Stop.String())
-	if t.Stop != trace.Converged && t.Reason != "" {
-		m += element(`div class="small"`, safe(t.Reason))
 	}
 	return m
 }

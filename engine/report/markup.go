@@ -1,6 +1,7 @@
 package report
 
 import (
+	"fmt"
 	"html"
 	"strings"
 	"unicode"
@@ -71,7 +72,7 @@ type column struct {
 }
 
 // table is a table that scrolls by itself where the page is narrow; nothing
-// without rows.
+// without rows. A row of one cell is a remark on the row above it.
 func table(columns []column, rows [][]markup) markup {
 	if len(rows) == 0 {
 		return ""
@@ -81,6 +82,10 @@ func table(columns []column, rows [][]markup) markup {
 		head = append(head, element(tagged("th", c), safe(c.title)))
 	}
 	for _, r := range rows {
+		if len(r) == 1 {
+			body = append(body, remark(r[0], len(columns)), "\n")
+			continue
+		}
 		var cells []markup
 		for k, m := range r {
 			cells = append(cells, element(tagged("td", columns[k]), m))
@@ -88,6 +93,11 @@ func table(columns []column, rows [][]markup) markup {
 		body = append(body, element("tr", cells...), "\n")
 	}
 	return element(`div class="wide"`, element("table", element("thead", element("tr", head...)), element("tbody", body...)))
+}
+
+// remark is a row that holds one text across all columns but the first.
+func remark(m markup, columns int) markup {
+	return element("tr", element("td"), element(fmt.Sprintf(`td class="remark" colspan="%d"`, columns-1), element("div", m)))
 }
 
 func tagged(tag string, c column) string {

@@ -92,7 +92,7 @@ func (b bars) picture(w vg.Length) (picture, bool) {
 }
 
 func (b bars) draw(c draw.Canvas, r barRow, top vg.Length) {
-	room := c.Max.X - c.Min.X - 12
+	room := c.Max.X - c.Min.X - 18
 	c.FillText(lettering(9.5, r.role, draw.XLeft, draw.YTop), vg.Point{X: c.Min.X, Y: top - 2}, clip(r.label, int(room/4.9)))
 	at := func(x float64) vg.Length { return c.Min.X + room*vg.Length(min(x/b.full, 1)) }
 	part := func(from, to float64, density uint8) {
