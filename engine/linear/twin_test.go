@@ -11,6 +11,10 @@ var twins = []struct {
 	{"axpy", func(o operands) float64 { axpy(o.y, o.x, o.a); return 0 }},
 	{"step", func(o operands) float64 { step(o.x, o.y, o.z, o.a, o.b); return 0 }},
 	{"taps", func(o operands) float64 { sumTaps(o.w, []tap{{o.x, o.y}, {o.y, o.z}, {o.z, o.x}}); return 0 }},
+	{"less taps", func(o operands) float64 { tapsOff(o.w, o.x, []tap{{o.x, o.y}, {o.y, o.z}, {o.z, o.x}}); return 0 }},
+	{"less taps in place", func(o operands) float64 { tapsOff(o.w, o.w, []tap{{o.x, o.y}}); return 0 }},
+	{"less taps from the end", func(o operands) float64 { tapsOffUp(o.w, o.z, o.x, []tap{{o.x, o.y}, {o.y, o.z}}); return 0 }},
+	{"less taps in place from the end", func(o operands) float64 { tapsOffUp(o.w, o.z, o.w, []tap{{o.x, o.y}}); return 0 }},
 	{"one tap", func(o operands) float64 { sumTaps(o.w, []tap{{o.x, o.y}}); return 0 }},
 }
 

@@ -15,8 +15,13 @@ func scatter(y []float64, t float64, a *linear.CSR, from, to int) {
 // ApplyT computes dst = M⁻ᵀ x = L⁻ᵀ D⁻¹ R⁻ᵀ x; the rows of the factors are the
 // columns of their transposes and are scattered in order.
 func (f *factors) ApplyT(dst, x []float64) {
-	if f.self {
+	switch {
+	case f.self:
 		f.Apply(dst, x)
+		return
+	case f.down != nil:
+		f.up.Forward(dst, x)
+		f.down.Backward(dst, dst, f.inverse)
 		return
 	}
 	copy(dst, x)

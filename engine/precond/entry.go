@@ -39,9 +39,12 @@ type Breakdown struct {
 }
 
 // Error names the method, the row counted from 1 as files do, and the cause.
-func (b *Breakdown) Error() string {
+func (b *Breakdown) Error() string { return b.In(fmt.Sprintf("row %d", b.Row+1)) }
+
+// In is Error with the row as its owner names it.
+func (b *Breakdown) In(row string) string {
 	if b.Row < 0 {
 		return fmt.Sprintf("%s breaks down: %s (%.6g)", b.Method, b.Why, b.Pivot)
 	}
-	return fmt.Sprintf("%s breaks down in row %d: %s (%.6g)", b.Method, b.Row+1, b.Why, b.Pivot)
+	return fmt.Sprintf("%s breaks down in %s: %s (%.6g)", b.Method, row, b.Why, b.Pivot)
 }

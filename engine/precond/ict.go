@@ -58,6 +58,7 @@ func buildICT(ctx context.Context, s linear.System, v linear.Values, progress fu
 	for i, d := range w.pivots {
 		f.inverse[i] = 1 / d
 	}
+	f.settle()
 	factorNotes(&notes, f, a)
 	return built(f, notes, nil)
 }

@@ -72,16 +72,17 @@ func buildILU(ctx context.Context, s linear.System, name string, level int, modi
 		}
 		pivot(&notes, d)
 	}
+	work.f.settle()
 	factorNotes(&notes, work.f, a)
 	return work.f, notes, nil
 }
 
-// factorNotes takes size and growth of finished factors of A into the notes.
+// factorNotes takes size and growth of settled factors of A into the notes.
 func factorNotes(notes *trace.BuildNotes, f *factors, a *linear.CSR) {
-	notes.Entries = int64(a.NRows + f.lower.Entries() + f.upper.Entries())
+	notes.Entries = int64(a.NRows + f.entries)
 	notes.Fill = float64(notes.Entries) / float64(a.Entries())
 	if f.self {
-		notes.Entries = int64(a.NRows + f.lower.Entries())
+		notes.Entries = int64(a.NRows + f.entries/2)
 		notes.Symmetric, notes.Definite = true, true
 	}
 	notes.Bytes = f.bytes()

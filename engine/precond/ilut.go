@@ -79,6 +79,7 @@ func buildILUT(ctx context.Context, s linear.System, name string, v linear.Value
 		pivot(&notes, d)
 	}
 	w.finish()
+	w.f.settle()
 	factorNotes(&notes, w.f, a)
 	return w, notes, nil
 }

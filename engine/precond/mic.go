@@ -73,7 +73,8 @@ func buildMIC(ctx context.Context, s linear.System, _ linear.Values, progress fu
 		pivot(&notes, d)
 	}
 	f := w.f
-	f.upper, f.self = f.lower.Transpose(), true
+	f.upper, f.self = nil, true
+	f.settle()
 	factorNotes(&notes, f, a)
 	return built(f, notes, nil)
 }

@@ -50,6 +50,7 @@ func buildOwnFactors(_ context.Context, s linear.System, v linear.Values, _ func
 		f.inverse[i] = 1 / d
 		notes.MinPivot, notes.MaxPivot = math.Min(notes.MinPivot, math.Abs(d)), math.Max(notes.MaxPivot, math.Abs(d))
 	}
+	f.settle()
 	entries := l.Entries() + u.Entries() - s.N()
 	notes.Entries, notes.Fill, notes.Bytes = int64(entries), fillOf(s, entries), f.bytes()
 	return f, notes, nil

@@ -1,0 +1,98 @@
+package linear
+
+const (
+	farFrom   = 32  // from here on the rows between are worth a pass of their own
+	bandBlock = 512 // rows solved at a time, so that they stay in the nearest cache
+)
+
+// Bands is a strictly lower triangular matrix L stored by its diagonals, for
+// triangular systems: no column is looked up, what lies far from the diagonal
+// is subtracted with vector instructions, and the row before, which each row
+// waits for, never leaves its register.
+type Bands struct {
+	n     int
+	next  []float64 // entry (i, i−1) at place i, length n; nil where there is none
+	far   []band    // the other diagonals, farthest first
+	block int       // rows solved at a time: at most the least far distance
+}
+
+// band is the diagonal at distance d below the main one.
+type band struct {
+	d int
+	v []float64 // entry (i, i−d) at place i, 0 for i < d; length n
+}
+
+// BandsOf stores a strictly lower triangular matrix by its diagonals, or the
+// transpose of a strictly upper triangular one. It returns nil where the rows
+// are better: where there are many diagonals, or some mostly empty, or some at
+// distances from 2 to 31.
+func BandsOf(t *CSR) *Bands {
+	if t.nearby(t.NRows / 2) {
+		return nil // spares most others a look at every row
+	}
+	offs := t.offsets()
+	if len(offs) == 0 || offs[0] <= 0 && offs[len(offs)-1] >= 0 {
+		return nil
+	}
+	if bytes := 8 * len(offs) * t.NRows; float64(bytes) > worthwhile*float64(t.Bytes()) {
+		return nil
+	}
+	b := &Bands{n: t.NRows, block: bandBlock}
+	for k := range offs {
+		d := offs[len(offs)-1-k] // the farthest first
+		if offs[0] < 0 {
+			d = -offs[k]
+		}
+		if d > 1 && d < farFrom {
+			return nil
+		}
+		if d > 1 {
+			b.far, b.block = append(b.far, band{d: d}), min(b.block, d)
+		}
+	}
+	if len(b.far) < len(offs) {
+		b.next = Bulk[float64](b.n)
+	}
+	b.fill(t)
+	return b
+}
+
+// nearby says whether row i has an entry neither next to the diagonal nor far
+// from it.
+func (a *CSR) nearby(i int) bool {
+	cols, _ := a.Row(i)
+	for _, c := range cols {
+		if d := max(i-int(c), int(c)-i); d > 1 && d < farFrom {
+			return true
+		}
+	}
+	return false
+}
+
+// Bytes returns the memory of the diagonals.
+func (b *Bands) Bytes() int64 { return 8 * int64(len(b.next)+b.n*len(b.far)) }
+
+// fill takes the entries of t, at (i, j) or at (j, i).
+func (b *Bands) fill(t *CSR) {
+	for k := range b.far {
+		b.far[k].v = Bulk[float64](b.n)
+	}
+	eachRow(b.n, func(i int) {
+		cols, vals := t.Row(i)
+		for e, c := range cols {
+			row, d := i, i-int(c)
+			if d < 0 {
+				row, d = int(c), -d
+			}
+			if d == 1 {
+				b.next[row] = vals[e]
+				continue
+			}
+			k := 0
+			for b.far[k].d != d {
+				k++
+			}
+			b.far[k].v[row] = vals[e]
+		}
+	})
+}
