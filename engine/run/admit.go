@@ -11,9 +11,10 @@ type Have struct {
 	n        int
 	matrix   *linear.CSR
 	transpo  bool
-	zeroDiag int // rows whose diagonal entry is zero or missing
-	zeroRow  int // the first of them
+	zeroDiag int  // rows whose diagonal entry is zero or missing
+	zeroRow  int  // the first of them
 	split    bool // the unknowns fall into two blocks
+	names    linear.RowNames
 }
 
 // Order returns the order of the system.
@@ -21,7 +22,7 @@ func (h Have) Order() int { return h.n }
 
 // Offers finds what the system offers.
 func Offers(s linear.System) Have {
-	h := Have{n: s.N(), matrix: s.Matrix()}
+	h := Have{n: s.N(), matrix: s.Matrix(), names: s.RowNames()}
 	_, h.transpo = linear.As[linear.Transposer](s.A)
 	if h.matrix == nil {
 		return h
@@ -73,8 +74,8 @@ func lacking(name string, needs linear.Has, h Have) string {
 	case needs&linear.NeedsTranspose != 0 && !h.transpo:
 		return name + " needs products with the transpose"
 	case needs&linear.NeedsDiagonal != 0 && h.zeroDiag > 0:
-		return fmt.Sprintf("%s needs a nonzero diagonal: %d of %d entries are zero, the first in row %d",
-			name, h.zeroDiag, h.n, h.zeroRow+1)
+		return fmt.Sprintf("%s needs a nonzero diagonal: %d of %d entries are zero, the first in %s",
+			name, h.zeroDiag, h.n, h.names.Row(h.zeroRow))
 	}
 	return ""
 }

@@ -32,7 +32,7 @@ func (t *Trial) setUp(parent context.Context) {
 		t.solver = nil
 		t.end(trace.Cancelled, "cancelled while setting up")
 	case err != nil:
-		t.end(trace.BrokeDown, "set-up: "+err.Error())
+		t.end(trace.BrokeDown, "set-up: "+t.told(err))
 	default:
 		t.begun(reading)
 	}
@@ -53,6 +53,7 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 		t.progress = p
 		t.mu.Unlock()
 	})
+	t.inFileRows(notes.Broke)
 	t.mu.Lock()
 	t.hist.Notes = notes
 	t.mu.Unlock()
