@@ -37,7 +37,7 @@ func candidates(h run.Have, memory int64) []choose.Candidate {
 			list = append(list, candidate(m, h, memory, bytes[p.Name]))
 		}
 	}
-	place := func(c choose.Candidate) int {
+	place := func(c choose.Candidate) int { // the list is by solver already
 		switch {
 		case c.Refused != "":
 			return 2
@@ -64,7 +64,10 @@ func candidate(m run.Method, h run.Have, memory, precond int64) choose.Candidate
 		Symmetric: m.Solver.Assumes&linear.AssumesSymmetric != 0,
 		Definite:  m.Solver.Assumes&linear.AssumesDefinite != 0,
 		SPDM:      m.Solver.Assumes&linear.AssumesSymmetricM != 0,
-		Baseline:  m.Solver.Baseline, Summary: m.Solver.Title + ", " + m.Precond.Title}
+		Baseline:  m.Solver.Baseline, Summary: m.Solver.Title + ", " + m.Precond.Title,
+		Direct:     m.Precond.Exact && m.From == "",
+		SymmetricA: m.Precond.Assumes&linear.AssumesSymmetric != 0,
+		DefiniteA:  m.Precond.Assumes&linear.AssumesDefinite != 0}
 	if precond >= 0 {
 		c.Memory = precond + m.SolverMemory(h)
 	}
@@ -75,8 +78,10 @@ func candidate(m run.Method, h run.Have, memory, precond int64) choose.Candidate
 	case c.Refused != "":
 	case c.SPDM && !m.Precond.Symmetric:
 		c.Refused = fmt.Sprintf("%s needs a symmetric preconditioner; %s is not", c.Solver, c.Precond)
+		c.Cause = "the solver needs a symmetric preconditioner, and this one is not"
 	case memory > 0 && c.Memory > memory:
 		c.Refused = fmt.Sprintf("needs %s, more than the limit %s", run.Bytes(c.Memory), run.Bytes(memory))
+		c.Cause = "it needs more memory than the limit " + run.Bytes(memory)
 	}
 	return c
 }

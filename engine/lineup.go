@@ -13,13 +13,16 @@ import (
 func (s *Session) setBench() *run.Bench {
 	b := run.NewBench(s.sys, s.limits(), s.opt.Memory, s.clock)
 	lineup := s.opt.Pairs
-	if len(lineup) == 0 {
-		lineup = choose.LineUp(s.facts, candidates(b.Have(), 0), s.opt.Today)
+	var r *race
+	if s.racing() {
+		r = s.newRace(b)
+		lineup = s.stands(r, nil).First()
 	}
 	if s.opt.Today != "" {
 		lineup = append([]string{s.opt.Today}, lineup...)
 	}
-	s.set(func() { s.bench, s.lineup, s.phase = b, lineup, Ready })
+	ruled := choose.RuledOut(s.facts, candidates(b.Have(), 0))
+	s.set(func() { s.bench, s.lineup, s.race, s.ruled, s.phase = b, lineup, r, ruled, Ready })
 	if s.opt.FactsOnly {
 		s.set(func() { s.phase = Ended })
 		return b

@@ -73,7 +73,7 @@ func (s *Session) view() Snapshot {
 		ended = ended && h.Stop.Ended()
 		v.Trials = append(v.Trials, Trial{ID: t.ID, History: h})
 	}
-	if v.Phase == Running && ended {
+	if v.Phase == Running && ended && !s.bench.Steered() {
 		v.Phase = Ended
 	}
 	return v
@@ -95,9 +95,19 @@ func (s *Session) judge(v *Snapshot) {
 	if key != s.judged.key || now-s.judged.at > judgeAgain && v.Phase == Running {
 		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule}
 		f := diagnose.Judge(c)
-		s.judged = verdict{key: key, at: now, findings: f, choice: choose.Rank(s.facts, histories, f)}
+		s.judged = verdict{key: key, at: now, findings: f, choice: s.rank(histories, f)}
 	}
 	v.Findings, v.Choice = s.judged.findings, s.judged.choice
+}
+
+// rank makes the choice, with its settings and what was ruled out.
+func (s *Session) rank(histories []trace.History, f []diagnose.Finding) choose.Choice {
+	c := choose.Rank(s.facts, histories, f, s.opt.Goal)
+	if c.Pairing != "" {
+		c.Settings = s.settingsOf(c.Pairing)
+	}
+	c.RuledOut = s.ruled
+	return c
 }
 
 // elapsed is the time since the session was opened, suspensions left out;

@@ -8,6 +8,7 @@ import (
 	"slices"
 	"time"
 
+	"dwindle/engine/choose"
 	"dwindle/engine/linear"
 	"dwindle/engine/load"
 	"dwindle/engine/run"
@@ -101,6 +102,8 @@ func (o Options) Check() error {
 		return bad("--tol must lie between 0 and 1, not %g", o.Tol)
 	case !slices.Contains(rules, o.StopRule):
 		return bad("--stop must be rhs, initial, backward or absolute, not %q", o.StopRule)
+	case o.Goal != "" && !slices.Contains(choose.Goals, o.Goal):
+		return bad("--goal must be seconds, memory or robust, not %q", o.Goal)
 	case o.Dofs < 0:
 		return bad("--dofs must not be negative")
 	case o.Null != "" && o.Coordinates != "":

@@ -37,6 +37,8 @@ type Session struct {
 	skip      func() // ends the second look at the system; nil if none is under way
 	bench     *run.Bench
 	lineup    []string
+	race      *race // nil: the line-up was given
+	ruled     []choose.Ruled
 	waiting   string
 	suspended time.Duration // total
 	haltedAt  time.Duration // when the present suspension began; negative if none
@@ -173,6 +175,7 @@ func (s *Session) Start() {
 			b.MarkToday(t)
 		}
 	}
+	s.steer(b)
 	if s.opt.Seconds > 0 {
 		go s.timeUp(b)
 	}

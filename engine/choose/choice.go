@@ -14,7 +14,11 @@ type Candidate struct {
 	Definite  bool   // the solver assumes A positive definite
 	SPDM      bool   // the solver assumes M symmetric positive definite
 	Baseline  bool   // naive, kept for comparison only
-	Summary   string // one line for lists
+	Direct    bool   // one step with an exact factorisation
+	Cause     string // why it is refused, in words that many share; empty: Refused says it
+	// SymmetricA and DefiniteA say what the preconditioner assumes of A.
+	SymmetricA, DefiniteA bool
+	Summary               string // one line for lists
 }
 
 // Ranked is one trial in the ranking.
@@ -30,6 +34,8 @@ type Ranked struct {
 	// one after the other with one set-up; NaN where not reached.
 	For       [len(Sides)]float64
 	Low, High float64 // range of Seconds thought likely; NaN where not reached
+	Expected  float64 // where not reached: the seconds it takes by its last prediction; NaN if none
+	Safe      bool    // it cannot fail on a matrix of this kind, and nothing went wrong on the way
 }
 
 // Sides are the numbers of right-hand sides a ranking is told for.
@@ -52,6 +58,7 @@ type Choice struct {
 	Ranked  []Ranked
 	Reasons []string
 	Doubts  []string
+	Goal    string  // what Ranked goes by; empty: Seconds
 	Gain    float64 // today's seconds over the choice's; NaN without today's
 	// Settings says the choice in the terms of its methods, a line each, ready
 	// to be carried into any code.

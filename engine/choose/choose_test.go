@@ -80,7 +80,7 @@ func TestRankByOwnTime(t *testing.T) {
 		trial("cg+jacobi", trace.Converged, 0, 3*time.Second),
 	}
 	trials[0].Today = true
-	c := Rank(facts(inspect.Yes, inspect.Yes), trials, nil)
+	c := Rank(facts(inspect.Yes, inspect.Yes), trials, nil, "")
 	var order []string
 	for _, r := range c.Ranked {
 		order = append(order, r.Pairing)
@@ -106,7 +106,7 @@ func TestUnsolvedRowsRankBelow(t *testing.T) {
 		trial("scale/cg+none", trace.Converged, 0, 2*time.Second),
 	}
 	f := []diagnose.Finding{{Rule: "unsolved-rows", Subject: "cg+none"}}
-	if c := Rank(facts(inspect.Yes, inspect.Yes), trials, f); c.Pairing != "scale/cg+none" {
+	if c := Rank(facts(inspect.Yes, inspect.Yes), trials, f, ""); c.Pairing != "scale/cg+none" {
 		t.Errorf("chose %s, which leaves rows unsolved", c.Pairing)
 	}
 }
@@ -117,7 +117,7 @@ func TestDoubts(t *testing.T) {
 	busy := trial("cg+none", trace.Converged, 0, time.Second)
 	busy.CPUShare = 0.5
 	near := trial("cg+jacobi", trace.Converged, 0, 1050*time.Millisecond)
-	all := strings.Join(Rank(f, []trace.History{busy, near}, nil).Doubts, "; ")
+	all := strings.Join(Rank(f, []trace.History{busy, near}, nil, "").Doubts, "; ")
 	for _, want := range []string{"--rhs", "busy", "not told apart"} {
 		if !strings.Contains(all, want) {
 			t.Errorf("doubts %q lack %q", all, want)
@@ -126,7 +126,7 @@ func TestDoubts(t *testing.T) {
 }
 
 func TestNothingReachedIsNoChoice(t *testing.T) {
-	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{trial("cg+none", trace.TimeLimit, 0, time.Second)}, nil)
+	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{trial("cg+none", trace.TimeLimit, 0, time.Second)}, nil, "")
 	if c.Pairing != "" {
 		t.Errorf("chose %s although nothing converged", c.Pairing)
 	}

@@ -57,14 +57,18 @@ func (l *lineUp) add(prep, solver, precond string) {
 
 // direct joins a direct solve where the system is small and may be regular.
 func (l *lineUp) direct(factorisation string) {
-	if l.facts.N <= directUpTo && l.facts.Singular.Answer != inspect.Yes {
+	if l.facts.N <= directUpTo && couldBeRegular(l.facts) {
 		l.add("", "richardson", factorisation)
 	}
 }
 
-func (l *lineUp) badlyScaled() bool {
-	return l.facts.RowNorm.Min > 0 && l.facts.RowNorm.Max/l.facts.RowNorm.Min >= scaleLimit
+func (l *lineUp) badlyScaled() bool { return badlyScaled(l.facts) }
+
+func badlyScaled(f *inspect.Facts) bool {
+	return f.RowNorm.Min > 0 && f.RowNorm.Max/f.RowNorm.Min >= scaleLimit
 }
+
+func couldBeRegular(f *inspect.Facts) bool { return f.Singular.Answer != inspect.Yes }
 
 func (l *lineUp) fullDiagonal() bool { return l.facts.DiagZero+l.facts.DiagMissing == 0 }
 

@@ -1,6 +1,7 @@
 package choose
 
 import (
+	"cmp"
 	"fmt"
 	"math"
 	"slices"
@@ -13,21 +14,20 @@ import (
 const (
 	busyShare = 0.9   // CPU time over own time below which the machine was busy
 	tooShort  = 0.005 // seconds below which the clock cannot rank
-	near      = 1.1   // two times closer than this factor are not told apart
 	worth     = 0.1   // of a solve: gains below are taken for noise
 )
 
-// Rank orders the trials by own time to the target and recommends the first,
-// with what it rests on and what could overturn it.
-func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding) Choice {
-	c := Choice{Gain: math.NaN()}
+// Rank orders the trials by the goal (empty: Seconds) and recommends the
+// first, with what it rests on and what could overturn it.
+func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding, goal string) Choice {
+	c := Choice{Gain: math.NaN(), Goal: goal, Outcomes: outcomes(trials, findings)}
 	for _, h := range trials {
 		if h.Stop == trace.Refused {
 			continue
 		}
 		c.Ranked = append(c.Ranked, ranked(h))
 	}
-	slices.SortStableFunc(c.Ranked, func(a, b Ranked) int { return order(a, b, findings) })
+	slices.SortStableFunc(c.Ranked, func(a, b Ranked) int { return order(a, b, findings, goal) })
 	breakEven(c.Ranked)
 	if len(c.Ranked) == 0 || !c.Ranked[0].Reached {
 		c.Doubts = doubts(f, trials, c)
@@ -48,27 +48,58 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding)
 func reached(h trace.History) bool { return h.Stop == trace.Converged || h.Stop == trace.LeastSquares }
 
 func ranked(h trace.History) Ranked {
-	r := Ranked{Pairing: h.Pairing, Seconds: math.NaN(), Setup: h.SetupTime.Seconds(), Iterations: h.Iterations,
-		Memory: h.MemoryBytes, Reached: reached(h), BreakEven: math.NaN()}
-	if r.Reached {
-		r.Seconds = h.OwnTime.Seconds()
+	nan := math.NaN()
+	r := Ranked{Pairing: h.Pairing, Seconds: nan, Setup: h.SetupTime.Seconds(), Iterations: h.Iterations,
+		Memory: h.MemoryBytes, Reached: reached(h), BreakEven: nan, Low: nan, High: nan, Expected: nan, Safe: safe(h)}
+	for i := range r.For {
+		r.For[i] = nan
 	}
+	if !r.Reached {
+		r.Expected = expected(h)
+		return r
+	}
+	r.Seconds = h.OwnTime.Seconds()
+	off := spread(h)
+	solve := r.Seconds - r.Setup
+	for i, k := range Sides {
+		r.For[i] = r.Setup + float64(k)*further(h, solve)
+	}
+	r.For[0] = r.Seconds
+	r.Low, r.High = math.Max(0, r.Seconds-off), r.Seconds+off
 	return r
 }
 
 // order puts those that reached the target first, of these the ones without
-// unsolved rows, then the faster.
-func order(a, b Ranked, findings []diagnose.Finding) int {
+// unsolved rows, then what the goal asks for.
+func order(a, b Ranked, findings []diagnose.Finding, goal string) int {
 	ka, kb := class(a, findings), class(b, findings)
 	switch {
 	case ka != kb:
 		return ka - kb
-	case ka == 2 || a.Seconds == b.Seconds:
+	case ka == 2:
+		return lessFirst(a.Expected, b.Expected)
+	case goal == Memory && a.Memory != b.Memory:
+		return cmp.Compare(a.Memory, b.Memory)
+	case goal == Robust && a.Safe != b.Safe:
+		if a.Safe {
+			return -1
+		}
+		return 1
+	}
+	return lessFirst(a.Seconds, b.Seconds)
+}
+
+// lessFirst orders numbers; those not known come last.
+func lessFirst(a, b float64) int {
+	switch {
+	case math.IsNaN(a) && math.IsNaN(b):
 		return 0
-	case a.Seconds < b.Seconds:
+	case math.IsNaN(a):
+		return 1
+	case math.IsNaN(b):
 		return -1
 	}
-	return 1
+	return cmp.Compare(a, b)
 }
 
 func class(r Ranked, findings []diagnose.Finding) int {
@@ -141,10 +172,10 @@ func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
 	}
 	if c.Ranked[0].Seconds < tooShort {
 		out = append(out, "the times are too short for the clock: rank by products")
-	} else if len(c.Ranked) > 1 && c.Ranked[1].Reached && c.Ranked[1].Seconds < near*c.Ranked[0].Seconds {
-		out = append(out, fmt.Sprintf("%s is within %.0f %%: the two are not told apart", c.Ranked[1].Pairing,
-			100*(c.Ranked[1].Seconds/c.Ranked[0].Seconds-1)))
+	} else {
+		out = append(out, notToldApart(c)...)
 	}
+	out = append(out, overturned(c)...)
 	for _, h := range trials {
 		if !h.Stop.Ended() {
 			out = append(out, "trials are still going")

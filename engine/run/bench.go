@@ -36,7 +36,8 @@ type Bench struct {
 	trials  []*Trial
 	nextID  int
 	paused  bool
-	moving  bool // the goroutine of Run is inside a trial
+	moving  bool        // the goroutine of Run is inside a trial
+	steer   func() bool // asked between rounds; nil: nobody steers
 	stopped bool
 	version atomic.Int64
 }
@@ -129,6 +130,7 @@ func (b *Bench) Run(ctx context.Context) {
 		b.mu.Unlock()
 	}()
 	for {
+		b.askSteersman()
 		live := b.await()
 		if live == nil {
 			return
@@ -146,18 +148,22 @@ func (b *Bench) Run(ctx context.Context) {
 	}
 }
 
-// await returns the trials that can move, waiting until there are any; nil
-// when the bench is stopped.
+// await returns the trials that can move, waiting until there are any, or
+// until something has changed that whoever steers should see; nil when the
+// bench is stopped.
 func (b *Bench) await() []*Trial {
 	b.mu.Lock()
 	defer b.mu.Unlock()
-	for {
+	for woken := false; ; woken = true {
 		if b.stopped {
 			return nil
 		}
 		if !b.paused {
 			if live := b.live(); len(live) > 0 {
 				return live
+			}
+			if b.steer != nil && woken {
+				return []*Trial{}
 			}
 		}
 		b.wake.Wait()

@@ -63,7 +63,7 @@ func (b *Bench) Cancel(t *Trial, stop trace.Stop, reason string) {
 	})
 }
 
-// CancelAll ends every live trial.
+// CancelAll ends every live trial, and nobody steers any more.
 func (b *Bench) CancelAll(stop trace.Stop, reason string) {
 	for _, t := range b.Trials() {
 		if !t.ended() {
@@ -75,6 +75,9 @@ func (b *Bench) CancelAll(stop trace.Stop, reason string) {
 			t.end(stop, reason)
 			t.release()
 		}
+		b.mu.Lock()
+		b.steer = nil
+		b.mu.Unlock()
 	})
 }
 
@@ -133,8 +136,8 @@ func (b *Bench) Live() bool {
 	return false
 }
 
-// WaitEnded returns when every trial has ended and left its answer, or ctx is
-// done.
+// WaitEnded returns when every trial has ended and left its answer and nobody
+// steers any more, or ctx is done.
 func (b *Bench) WaitEnded(ctx context.Context) {
 	stop := context.AfterFunc(ctx, func() {
 		b.mu.Lock()
@@ -145,7 +148,7 @@ func (b *Bench) WaitEnded(ctx context.Context) {
 	b.mu.Lock()
 	defer b.mu.Unlock()
 	for ctx.Err() == nil {
-		ended := !b.moving
+		ended := !b.moving && b.steer == nil
 		for _, t := range b.trials {
 			ended = ended && t.ended()
 		}

@@ -2,6 +2,7 @@ package run
 
 import (
 	"context"
+	"errors"
 	"fmt"
 
 	"dwindle/engine/krylov"
@@ -17,7 +18,12 @@ func (t *Trial) setUp(parent context.Context) {
 	defer cancel()
 	t.mu.Lock()
 	t.hist.Stop, t.cancel = trace.SettingUp, cancel
+	wait := t.wait
 	t.mu.Unlock()
+	if wait > 0 {
+		ctx, cancel = context.WithTimeoutCause(ctx, wait, errPatience)
+		defer cancel()
+	}
 	shared := t.readyForm()
 	start := t.clock() - shared
 	reading, err := t.build(ctx)
@@ -28,6 +34,10 @@ func (t *Trial) setUp(parent context.Context) {
 	t.mu.Unlock()
 	switch {
 	case !live:
+	case context.Cause(ctx) == errPatience && t.solver == nil:
+		t.end(trace.Outpaced, fmt.Sprintf("its set-up alone took more than %.3g s", wait.Seconds()))
+	case parent.Err() == nil && context.Cause(ctx) == errPatience:
+		t.begun(reading) // it was done just in time
 	case ctx.Err() != nil:
 		t.solver = nil
 		t.end(trace.Cancelled, "cancelled while setting up")
@@ -37,6 +47,9 @@ func (t *Trial) setUp(parent context.Context) {
 		t.begun(reading)
 	}
 }
+
+// errPatience ends a set-up that takes longer than it may.
+var errPatience = errors.New("the set-up takes too long")
 
 // build makes the prepared system, the preconditioner and the solver.
 func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
@@ -102,9 +115,7 @@ func (t *Trial) begun(r trace.Reading) {
 	t.mu.Lock()
 	t.hist.Stop = trace.Running
 	t.mu.Unlock()
-	if t.hist.SPDM {
-		t.probe()
-	}
+	t.probe()
 	if t.method.Solver.Lanczos || t.method.Solver.Tridiagonal {
 		t.lanczos = new(spectrum.Tridiagonal)
 	}

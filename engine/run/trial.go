@@ -44,6 +44,7 @@ type Trial struct {
 	wayAt int          // iteration of the later one
 
 	budget time.Duration // own time it may still use; negative is debt
+	wait   time.Duration // longest set-up; 0: no bound
 	cpu    time.Duration
 
 	mu       sync.Mutex
@@ -93,6 +94,7 @@ func newTrial(id int, m Method, s linear.System, z sizes, l Limits, clock Clock,
 	t.hist = trace.History{Pairing: m.Name, Stop: trace.Waiting, Norm: m.norm(), MemoryBytes: memory,
 		SymmetricA: e.Assumes&linear.AssumesSymmetric != 0, DefiniteA: e.Assumes&linear.AssumesDefinite != 0,
 		SPDM:      e.Assumes&linear.AssumesSymmetricM != 0 && p.Name != "none",
+		FixedM:    e.Assumes&linear.AssumesFixedM != 0 && p.Name != "none",
 		Restarted: e.Restarted, Monotone: e.Monotone && m.watched() != trace.LeftNorm, Energy: e.Energy, Direct: p.Exact && m.From == "",
 		CPUShare: nan, Residual: nan, TrueResidual: nan, BestTrue: math.Inf(1), Backward: nan, Componentwise: nan,
 		Error: nan, Floor: nan, Normal: nan, PrecondAsymmetry: nan, WouldStop: t.marks.audited(-1, nan)}

@@ -1,0 +1,58 @@
+package choose
+
+import (
+	"fmt"
+	"strings"
+)
+
+// notToldApart names those whose range of times overlaps with the first's.
+func notToldApart(c Choice) []string {
+	if c.Goal == Memory {
+		return nil
+	}
+	first := c.Ranked[0]
+	var names []string
+	closest := 0.0
+	for _, r := range c.Ranked[1:] {
+		if r.Reached && r.Low <= first.High && r.Seconds >= first.Low {
+			if len(names) == 0 {
+				closest = r.Seconds/first.Seconds - 1
+			}
+			names = append(names, r.Pairing)
+		}
+	}
+	switch {
+	case len(names) == 0:
+		return nil
+	case len(names) == 1:
+		return []string{fmt.Sprintf("%s is within %.0f %%: the two are not told apart", names[0], 100*closest)}
+	}
+	const most = 3
+	more := ""
+	if len(names) > most {
+		more = fmt.Sprintf(" and %d more", len(names)-most)
+		names = names[:most]
+	}
+	return []string{fmt.Sprintf("%s%s are within what a repetition may differ by: not told apart", strings.Join(names, ", "), more)}
+}
+
+// overturned says at how many right-hand sides another pairing is the better
+// one.
+func overturned(c Choice) []string {
+	first := c.Ranked[0]
+	for i := len(Sides) - 1; i > 0; i-- {
+		best := first
+		for _, r := range c.Ranked[1:] {
+			if r.Reached && r.For[i] < best.For[i] {
+				best = r
+			}
+		}
+		if best.Pairing == first.Pairing || best.For[i] > (1-worth)*first.For[i] {
+			continue
+		}
+		from := (best.Setup - first.Setup) / (first.For[i] - first.Setup - (best.For[i] - best.Setup)) * float64(Sides[i])
+		return []string{fmt.Sprintf("for %.0f right-hand sides and more, %s is better: %s for %d, against %s", from+1, best.Pairing,
+			took(best.For[i]), Sides[i], took(first.For[i]))}
+	}
+	return nil
+}

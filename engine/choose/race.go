@@ -1,0 +1,158 @@
+package choose
+
+import (
+	"slices"
+	"time"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+// Race is a race as it stands: what Next decides from.
+type Race struct {
+	Facts      *inspect.Facts
+	Candidates []Candidate
+	Trials     []trace.History
+	Tried      map[string]bool // pairings that were ever started, and those the caller could not start
+	Today      string          // the pairing the user's code runs now; it is never ended
+	Goal       string          // Seconds, Memory or Robust
+	Limit      int             // iterations a trial may take
+}
+
+// Orders are what a race asks for next. It is over when nothing is to be
+// added and no trial is live.
+type Orders struct {
+	Add []string // pairings, to be started in this order
+	End []End    // trials that have lost
+	// Setup is how much own time a set-up may take from now on; 0: any.
+	Setup time.Duration
+}
+
+// End is a trial that has lost, and why.
+type End struct {
+	Trial  int // its place in Race.Trials
+	Reason string
+}
+
+const (
+	width     = 3                      // trials that run at once when a first one has converged
+	mostInAll = 40                     // trials of a race
+	brief     = 20 * time.Millisecond  // a best below this is not worth a long race:
+	mostBrief = 16                     // so many trials then
+	enough    = 45.0                   // own time of all trials over the best's time, from which nothing is added
+	atLeast   = 3 * time.Second        // but so much is always spent
+	firstPace = 500 * time.Millisecond // own time of the slowest live trial from which help is added where nothing converges
+	pace      = 1.5                    // by which it grows with each trial added
+	setupRoom = 4.0                    // a set-up may take so many times the best's time
+	setupLow  = 200 * time.Millisecond // but at least this
+)
+
+// Next decides which trials have lost and which pairings to start, from how
+// the trials stand now.
+func (r Race) Next() Orders {
+	best, found := r.best()
+	o := Orders{End: r.lost(best, found)}
+	live := 0
+	for _, h := range r.Trials {
+		if !h.Stop.Ended() && h.Stop != trace.Held {
+			live++
+		}
+	}
+	live -= len(o.End)
+	if found {
+		o.Setup = max(setupLow, time.Duration(setupRoom*float64(best.OwnTime)))
+	}
+	o.Add = r.add(live, best, found)
+	return o
+}
+
+// add returns what to start beside so many live trials.
+func (r Race) add(live int, best *trace.History, found bool) []string {
+	var first []string
+	for _, p := range r.First() {
+		if !r.Tried[p] {
+			first = append(first, p)
+		}
+	}
+	if len(first) > 0 {
+		return first
+	}
+	room := width - live
+	switch {
+	case len(r.Trials) >= mostInAll || found && best.OwnTime < brief && len(r.Trials) >= mostBrief:
+		return nil
+	case found && r.spent() > max(atLeast, time.Duration(enough*float64(best.OwnTime))):
+		return nil
+	case !found && live > 0:
+		room = 0
+		if r.slowest() >= r.patience() {
+			room = 1
+		}
+	}
+	if room <= 0 {
+		return nil
+	}
+	return r.untried(room)
+}
+
+// best is the trial that reached the target in the least own time.
+func (r Race) best() (*trace.History, bool) {
+	var best *trace.History
+	for i := range r.Trials {
+		if h := &r.Trials[i]; reached(*h) && (best == nil || h.OwnTime < best.OwnTime) {
+			best = h
+		}
+	}
+	return best, best != nil
+}
+
+// spent is the own time of all trials.
+func (r Race) spent() time.Duration {
+	total := time.Duration(0)
+	for _, h := range r.Trials {
+		total += h.OwnTime
+	}
+	return total
+}
+
+// slowest is the least own time of a live trial.
+func (r Race) slowest() time.Duration {
+	least := time.Duration(-1)
+	for _, h := range r.Trials {
+		if !h.Stop.Ended() && h.Stop != trace.Held && (least < 0 || h.OwnTime < least) {
+			least = h.OwnTime
+		}
+	}
+	return least
+}
+
+// patience is the own time that every live trial must have had before help is
+// added where nothing has converged: longer with each that was.
+func (r Race) patience() time.Duration {
+	d := float64(firstPace)
+	for range len(r.Trials) - len(r.First()) {
+		d *= pace
+	}
+	return time.Duration(d)
+}
+
+// cheapDirect is the time of a factorisation, by the count of its work, up to
+// which a race begins with it.
+const cheapDirect = 300 * time.Millisecond
+
+// First are the pairings that a race begins with: cheap ones of different
+// kinds, a direct solve only where it is known to be cheap.
+func (r Race) First() []string {
+	costly := map[string]bool{}
+	for _, c := range r.Candidates {
+		costly[c.Pairing] = c.Direct && (c.Memory < 0 || factorTime(c.Memory, r.Facts.N) > cheapDirect)
+	}
+	return slices.DeleteFunc(LineUp(r.Facts, r.Candidates, r.Today), func(p string) bool { return costly[p] })
+}
+
+// factorTime guesses the time of a factorisation from the memory of its
+// factor: 12 bytes an entry, columns of even length, a nanosecond a product.
+func factorTime(bytes int64, n int) time.Duration {
+	entries := float64(bytes) / 12
+	return time.Duration(entries * entries / float64(max(1, n)))
+}

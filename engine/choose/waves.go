@@ -1,0 +1,201 @@
+package choose
+
+import (
+	"cmp"
+	"slices"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+const (
+	leads   = 2.0 // times the best's time up to which a trial leads
+	leaders = 2   // so many preconditioners, and solvers, are looked at more closely
+)
+
+// untried returns the next pairings of a race, at most so many: first every
+// kind of preconditioner under one solver, then the other solvers with the
+// preconditioners that lead, then parameters around the leaders, preparations
+// of them, and last what is unlike anything tried.
+func (r Race) untried(most int) []string {
+	var out []string
+	for _, wave := range []func() []string{r.kinds, r.solvers, r.parameters, r.preparations, r.unlike} {
+		for _, p := range wave() {
+			if len(out) == most {
+				return out
+			}
+			if !r.Tried[p] && p != r.Today && !slices.Contains(out, p) {
+				out = append(out, p)
+			}
+		}
+		if len(out) > 0 {
+			return out // what comes next depends on how these do
+		}
+	}
+	return out
+}
+
+// kindsInOrder is the order in which kinds of preconditioners are tried under
+// one solver: the ones that help most often first.
+var kindsInOrder = []string{"amg", "ict", "ilut", "mic", "fsai", "ilu", "ic", "schur", "poly", "ras", "ilutp", "milu",
+	"block-jacobi", "ssor", "jacobi", "sor", "gs", "spai", "none"}
+
+// kinds are all preconditioners under the solver that fits the matrix, and
+// direct solves.
+func (r Race) kinds() []string {
+	var out []string
+	add := func(solver, precond string) {
+		for _, c := range r.Candidates {
+			if c.Solver == solver && c.Precond == precond && r.admissible(c) {
+				out = append(out, r.prefix()+c.Pairing)
+			}
+		}
+	}
+	base := r.base()
+	for i, k := range kindsInOrder {
+		if i == 3 && couldBeRegular(r.Facts) {
+			add("richardson", r.factorisation())
+		}
+		add(base, k)
+	}
+	return out
+}
+
+// prefix is the preparation that every pairing of a race needs.
+func (r Race) prefix() string {
+	if r.Facts.Unreachable.Answer == inspect.Yes {
+		return "project/"
+	}
+	return ""
+}
+
+// base is the solver under which preconditioners are compared.
+func (r Race) base() string {
+	if symmetric(r.Facts) && couldBeDefinite(r.Facts) {
+		return "cg"
+	}
+	return "bicgstab"
+}
+
+func (r Race) factorisation() string {
+	switch {
+	case symmetric(r.Facts) && couldBeDefinite(r.Facts):
+		return "cholesky"
+	case symmetric(r.Facts):
+		return "ldl"
+	}
+	return "lu"
+}
+
+func symmetric(f *inspect.Facts) bool { return f.Symmetric.Answer == inspect.Yes }
+
+// admissible says that nothing known speaks against the candidate.
+func (r Race) admissible(c Candidate) bool {
+	return c.Refused == "" && against(r.Facts, c) == "" && (!c.Baseline || c.Direct)
+}
+
+// leading are the trials that reached the target in about the best's time,
+// the best first.
+func (r Race) leading() []*trace.History {
+	best, found := r.best()
+	if !found {
+		return nil
+	}
+	var out []*trace.History
+	for i := range r.Trials {
+		if h := &r.Trials[i]; reached(*h) && h.OwnTime.Seconds() <= leads*best.OwnTime.Seconds() {
+			out = append(out, h)
+		}
+	}
+	slices.SortStableFunc(out, func(a, b *trace.History) int { return cmp.Compare(a.OwnTime, b.OwnTime) })
+	return out
+}
+
+// solvers are all other solvers with the preconditioners that lead.
+func (r Race) solvers() []string {
+	var out []string
+	seen := map[string]bool{}
+	for _, h := range r.leading() {
+		p := split(h.Pairing)
+		if h.Direct || seen[bare(p.precond)] || len(seen) == leaders {
+			continue
+		}
+		seen[bare(p.precond)] = true
+		for _, s := range solversInOrder {
+			for _, c := range r.Candidates {
+				if c.Solver == s && c.Precond == bare(p.precond) && r.admissible(c) {
+					q := split(c.Pairing)
+					out = append(out, parts{p.preps, q.solver, p.precond}.String())
+				}
+			}
+		}
+	}
+	return out
+}
+
+// solversInOrder is the order in which solvers are tried with what leads.
+var solversInOrder = []string{"cg", "minres", "bicgstab", "gmres", "idr", "bicgstabl", "cr", "cgs", "tfqmr", "qmr", "fcg", "gmresdr", "dcg", "gcr", "symmlq"}
+
+// parameters are the neighbours of the leaders' parameters.
+func (r Race) parameters() []string {
+	var out []string
+	for i, h := range r.leading() {
+		if i == leaders {
+			break
+		}
+		p := split(h.Pairing)
+		for _, q := range neighbours(p.precond) {
+			out = append(out, parts{p.preps, p.solver, q}.String())
+		}
+		for _, q := range neighbours(p.solver) {
+			out = append(out, parts{p.preps, q, p.precond}.String())
+		}
+	}
+	return out
+}
+
+// preparations are orders and scalings for the best that is no direct solve.
+func (r Race) preparations() []string {
+	for _, h := range r.leading() {
+		p := split(h.Pairing)
+		if h.Direct || p.preps != "" {
+			continue
+		}
+		var out []string
+		if ordered(bare(p.precond)) {
+			out = append(out, "rcm/"+h.Pairing)
+		}
+		if badlyScaled(r.Facts) || !symmetric(r.Facts) {
+			out = append(out, "scale/"+h.Pairing)
+		}
+		if r.Facts.DiagZero+r.Facts.DiagMissing > 0 {
+			out = append(out, "match/"+h.Pairing)
+		}
+		return out
+	}
+	return nil
+}
+
+// ordered says that the order of the rows changes what the preconditioner is,
+// or how fast it is applied.
+func ordered(precond string) bool {
+	return slices.Contains([]string{"ic", "mic", "ict", "ilu", "milu", "ilut", "ilutp", "ssor", "sgs", "sor", "gs", "ras", "block-jacobi"}, precond)
+}
+
+// unlike are pairings of another kind than all that a race has seen so far,
+// and, where nothing has converged, the strongest there are.
+func (r Race) unlike() []string {
+	var out []string
+	pairs := [][2]string{{"gmres", "ilut"}, {"bicgstab", "ilut"}, {"gmresdr", "ilu"}, {"idr", "jacobi"}, {"gmres", "amg"}, {"lsmr", "none"}, {"cgnr", "none"}}
+	if _, found := r.best(); !found {
+		pairs = append(pairs, [2]string{"minres", "jacobi"}, [2]string{"gmres", "ilutp"}, [2]string{"gmres", "ras"}, [2]string{"idr", "ilu"}, [2]string{"gmres", "none"})
+	}
+	for _, p := range pairs {
+		for _, c := range r.Candidates {
+			if c.Solver == p[0] && c.Precond == p[1] && r.admissible(c) {
+				out = append(out, r.prefix()+c.Pairing)
+			}
+		}
+	}
+	return out
+}

@@ -1,0 +1,74 @@
+package engine
+
+import (
+	"dwindle/engine/choose"
+	"dwindle/engine/run"
+	"dwindle/engine/trace"
+)
+
+// racing says that dwindle makes the line-up itself: a race.
+func (s *Session) racing() bool { return len(s.opt.Pairs) == 0 }
+
+// race is how a race stands between two looks.
+type race struct {
+	list  []choose.Candidate
+	tried map[string]bool
+}
+
+// newRace begins a race; the candidates carry what they take.
+func (s *Session) newRace(b *run.Bench) *race {
+	return &race{list: candidates(b.Have(), s.opt.Memory), tried: map[string]bool{}}
+}
+
+// stands is the race as the policy sees it.
+func (s *Session) stands(r *race, trials []trace.History) choose.Race {
+	return choose.Race{Facts: s.facts, Candidates: r.list, Trials: trials, Tried: r.tried,
+		Today: canonical(s.opt.Today), Goal: s.opt.Goal, Limit: s.limits().Iterations}
+}
+
+// canonical is the pairing as the catalogues print it.
+func canonical(pairing string) string {
+	if m, err := run.Parse(pairing); err == nil {
+		return m.Name
+	}
+	return pairing
+}
+
+// lead moves the race on: it asks the policy, ends what has lost and starts
+// what comes next. It says whether anything is left to come. The bench asks
+// it between rounds.
+func (s *Session) lead(b *run.Bench, r *race) bool {
+	trials := b.Trials()
+	histories := make([]trace.History, len(trials))
+	for i, t := range trials {
+		histories[i] = t.History()
+		r.tried[histories[i].Pairing] = true
+	}
+	orders := s.stands(r, histories).Next()
+	for _, e := range orders.End {
+		b.Retire(trials[e.Trial], e.Reason)
+	}
+	for _, p := range orders.Add {
+		r.tried[p] = true
+		if m, err := run.Parse(p); err == nil && (m.Name == p || !r.tried[m.Name]) {
+			r.tried[m.Name] = true
+			b.Add(m)
+		}
+	}
+	for _, t := range b.Trials() {
+		if h := t.History(); h.Stop == trace.Waiting && !h.Today {
+			b.Bound(t, orders.Setup)
+		}
+	}
+	return len(orders.Add) > 0 || b.Live()
+}
+
+// steer lets the session move the trials on between rounds: the race, where
+// there is one.
+func (s *Session) steer(b *run.Bench) {
+	r := s.race
+	if r == nil {
+		return
+	}
+	b.Steer(func() bool { return s.lead(b, r) })
+}
