@@ -28,8 +28,21 @@ func setNearNull(s *linear.System, opt Options) error {
 		if s.NearNull = rigidMotions(x, dofs); s.NearNull == nil {
 			return badOption("--coordinates with %d columns and --dofs %d: rigid motions are known for 2 columns with 2 or 3 unknowns a node, and for 3 with 3 or 6", len(x), dofs)
 		}
+		s.Coordinates = byNode(x)
 	}
 	return nil
+}
+
+// byNode turns coordinates, one slice an axis, into one slice a node.
+func byNode(x [][]float64) [][]float64 {
+	nodes := make([][]float64, len(x[0]))
+	for i := range nodes {
+		nodes[i] = make([]float64, len(x))
+		for c := range x {
+			nodes[i][c] = x[c][i]
+		}
+	}
+	return nodes
 }
 
 // rigidMotions returns the three rigid motions of a plane or the six of space

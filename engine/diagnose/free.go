@@ -36,7 +36,11 @@ var mechanism = Rule{"mechanism", func(c Case) []Finding {
 		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: free[0].Quotient, Iteration: none, Rows: rows},
 			number("the next direction", free[len(free)-1].Next, ""), number("free directions", float64(len(free)), "")}}
 	if load := heaviest(free); load > 1e-10 {
-		g.Claim += fmt.Sprintf("; b pushes along it with %s of its norm, and no x can answer that", num(load))
+		along := "it"
+		if len(free) > 1 {
+			along = "them"
+		}
+		g.Claim += fmt.Sprintf("; b pushes along %s with %s of its norm, and no x can answer that", along, num(load))
 		g.Evidence = append(g.Evidence, number("part of b along it", load, ""))
 	}
 	return []Finding{g}

@@ -109,13 +109,19 @@ func (e *exam) coupled() []int {
 
 // spectrumOf measures one spectrum; nil where nothing fits the budget.
 func (e *exam) spectrumOf(v *view) (*Spectrum, error) {
-	x := &Spectrum{Of: v.of, Norm: "2", Certainty: Estimated, Negative: -1, Condition: math.NaN(),
+	x := &Spectrum{Of: v.of, Norm: "2", Certainty: Estimated, Negative: -1, Condition: math.NaN(), Condition1: math.NaN(),
 		Smallest: math.NaN(), Largest: math.NaN(), SmallestBound: math.NaN(), LargestBound: math.NaN()}
+	if v.invertible() && e.spend(oneNormSolves*e.solveWork()) {
+		x.Condition1 = oneNorm(v.m) * spectrum.OneNorm(v.order(), v.inverse, v.inverseT)
+	}
 	if e.symmetric {
 		return e.symmetricSpectrum(v, x)
 	}
 	return e.singularSpectrum(v, x)
 }
+
+// oneNormSolves is how many solves an estimate of the 1-norm takes at most.
+const oneNormSolves = 11
 
 // densely says whether all values of a view of order n are affordable, at work
 // n³ times the factor.

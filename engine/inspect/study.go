@@ -35,6 +35,7 @@ type Spectrum struct {
 	Smallest, SmallestBound float64
 	Largest, LargestBound   float64
 	Condition               float64
+	Condition1              float64      // in the 1-norm, by estimate: a lower bound; NaN without a factorisation
 	Negative                int          // eigenvalues below zero; −1 if not counted
 	Low, High               []float64    // the outermost values, from the end inwards, at most 16 each
 	Values                  []complex128 // all eigenvalues where Exact, ordered by real part

@@ -113,6 +113,15 @@ func (v *view) solve(dst, x, before, after []float64, with func(dst, b []float64
 	}
 }
 
+// oneNorm returns ‖a‖₁, the largest sum of magnitudes in a column.
+func oneNorm(a *linear.CSR) float64 {
+	sums := make([]float64, a.NCols)
+	for k, j := range a.Col {
+		sums[j] += math.Abs(a.Val[k])
+	}
+	return linear.NormInf(sums)
+}
+
 // byDiagonal returns 1/√a_ii, nil unless every a_ii is positive.
 func byDiagonal(a *linear.CSR) []float64 {
 	d := make([]float64, a.NRows)
