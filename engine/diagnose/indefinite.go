@@ -17,7 +17,7 @@ var indefiniteSpectrum = Rule{"indefinite-spectrum", func(c Case) []Finding {
 		return nil
 	}
 	s, negative := sides(f.Study.Raw)
-	if negative == 0 || negative == f.N || !(s.B > 0 && s.C > 0) || f.Singular.Answer == inspect.Yes {
+	if negative == 0 || negative == f.N || !(math.Min(s.B, s.C) > 10*f.Study.Raw.SmallestBound) || f.Singular.Answer == inspect.Yes {
 		return nil
 	}
 	rate := s.Rate()
