@@ -13,19 +13,19 @@ import (
 const falseFactor = 10
 
 // falseConvergence: the method's own number met the target while b−Ax was far
-// from it.
+// from it, and not only as far as the accuracy floor holds it.
 var falseConvergence = Rule{"false-convergence", func(c Case) (out []Finding) {
 	if outOfReach(c) || c.Facts.ZeroRHS {
 		return nil
 	}
 	for _, h := range c.Trials {
 		for _, e := range events(h, trace.FalseStop) {
-			if !(e.Value > falseFactor*c.Tol) || h.FloorHits > 0 && !solved(h) {
+			if !(e.Value > falseFactor*c.Tol) || h.FloorHits > 0 && !solved(h) && e.Value <= falseFactor*h.BestTrue {
 				continue
 			}
 			f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-				Claim: fmt.Sprintf("its own number (%s norm) meets the target at it %d with %s; the true relative residual there is %s",
-					h.Norm, e.Iter, num(e.Scale), num(e.Value)),
+				Claim: fmt.Sprintf("its own number (%s norm) meets the target at it %d with %s; the true relative residual there is %s, %.1f decades above the target",
+					h.Norm, e.Iter, num(e.Scale), num(e.Value), math.Log10(e.Value/c.Tol)),
 				Advice: fmt.Sprintf("test ||b-Ax||/||b||, or ask for %.0e in this norm", c.Tol*c.Tol/e.Value),
 				Evidence: []Evidence{
 					{Quantity: "own number", Value: e.Scale, Unit: string(h.Norm), Iteration: int(e.Iter)},

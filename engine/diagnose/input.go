@@ -27,7 +27,8 @@ var triangle = Rule{"one-triangle", func(c Case) []Finding {
 	}
 	return []Finding{{Weight: Drag, Certainty: t.Certainty, Subject: OnSystem,
 		Claim:  "the file is declared general but holds one triangle only: " + t.Why,
-		Advice: "if A is symmetric, declare the file symmetric; a triangular A is solved by one substitution"}}
+		Advice:   "if A is symmetric, declare the file symmetric; a triangular A is solved by one substitution",
+		Evidence: []Evidence{number("entries off the diagonal in one triangle", float64(c.Facts.Entries-c.Facts.N), "")}}}
 }}
 
 // zeroRHS: the answer is known.
@@ -37,7 +38,8 @@ var zeroRHS = Rule{"zero-rhs", func(c Case) []Finding {
 	}
 	return []Finding{{Weight: Note, Certainty: inspect.Proved, Subject: OnSystem,
 		Claim:  "b = 0: x = 0 is an answer, and iterations tell nothing",
-		Advice: "give the right-hand side of a real step: --rhs"}}
+		Advice:   "give the right-hand side of a real step: --rhs",
+		Evidence: []Evidence{number("||b||", 0, "")}}}
 }}
 
 // defaultRHS: b is not the user's.

@@ -21,24 +21,27 @@ var nullGrowth = Rule{"null-space-growth", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		prep, _, _ := cut(h.Pairing)
 		low, last := lowest(h)
-		if prep == "project/" || !h.Stop.Ended() || solved(h) || !(last.Residual > regrown*low.Residual) {
+		if prep == "project/" || !h.Stop.Ended() || solved(h) || !(last.Audit > regrown*low.Audit) {
 			continue
 		}
 		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("its residual falls to %s at it %d, then grows to %s along the null space of A",
-				num(low.Residual), low.Iter, num(last.Residual)),
+			Claim: fmt.Sprintf("||b-Ax|| falls to %s of ||b|| at it %d, then grows to %s along the null space of A",
+				num(low.Audit), low.Iter, num(last.Audit)),
 			Advice: "take the unreachable part out of b, or use a method of minimal residuals and stop it there",
 			Try:    []string{"project/cg+none", "minres+none"},
-			Evidence: []Evidence{{Quantity: "smallest residual", Value: low.Residual, Unit: "of ||b||", Iteration: int(low.Iter)},
-				{Quantity: "last residual", Value: last.Residual, Unit: "of ||b||", Iteration: int(last.Iter)}}})
+			Evidence: []Evidence{{Quantity: "smallest true residual", Value: low.Audit, Unit: "of ||b||", Iteration: int(low.Iter)},
+				{Quantity: "last true residual", Value: last.Audit, Unit: "of ||b||", Iteration: int(last.Iter)}}})
 	}
 	return out
 }}
 
-// lowest returns the record with the smallest residual, and the last one.
+// lowest returns the audited record with the smallest residual, and the last.
 func lowest(h trace.History) (low, last trace.Record) {
-	for i, r := range h.Records {
-		if i == 0 || r.Residual < low.Residual {
+	for _, r := range h.Records {
+		if !r.Audited() {
+			continue
+		}
+		if last.Audit == 0 || r.Audit < low.Audit {
 			low = r
 		}
 		last = r

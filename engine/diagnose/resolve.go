@@ -40,7 +40,6 @@ var yields = []yield{
 	{"zero-diagonal", []string{"pivot"}, zeroPivot, "the pivot is a zero of the diagonal"},
 	{"null-space-growth", []string{"divergence", "accuracy-floor", "false-convergence"}, samePairing, "what grows lies in the null space"},
 	{"false-convergence", []string{"stopping-rules"}, samePairing, "its own number is the stopping rule that fails"},
-	{"accuracy-floor", []string{"false-convergence"}, samePairing, "its own number goes on below the floor"},
 	{"restart-stagnation", []string{"restart-length"}, samePairing, "a cycle that stands still foretells nothing"},
 	{"today-beaten", []string{"preconditioner-costs-more"}, samePairing, "the same times, told once"},
 }
