@@ -76,9 +76,4 @@ func events(h trace.History, k trace.Kind) []trace.Event {
 }
 
 // steps prints a number of iterations.
-func steps(n int) string {
-	if n == 1 {
-		return "1 iteration"
-	}
-	return fmt.Sprintf("%d iterations", n)
-}
+func steps(n int) string { return count(n, "iteration") }
