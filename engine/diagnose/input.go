@@ -26,7 +26,7 @@ var triangle = Rule{"one-triangle", func(c Case) []Finding {
 		return nil
 	}
 	return []Finding{{Weight: Drag, Certainty: t.Certainty, Subject: OnSystem,
-		Claim:  "the file is declared general but holds one triangle only: " + t.Why,
+		Claim:    "the file is declared general but holds one triangle only: " + t.Why,
 		Advice:   "if A is symmetric, declare the file symmetric; a triangular A is solved by one substitution",
 		Evidence: []Evidence{number("entries off the diagonal in one triangle", float64(c.Facts.Entries-c.Facts.N), "")}}}
 }}
@@ -37,7 +37,7 @@ var zeroRHS = Rule{"zero-rhs", func(c Case) []Finding {
 		return nil
 	}
 	return []Finding{{Weight: Note, Certainty: inspect.Proved, Subject: OnSystem,
-		Claim:  "b = 0: x = 0 is an answer, and iterations tell nothing",
+		Claim:    "b = 0: x = 0 is an answer, and iterations tell nothing",
 		Advice:   "give the right-hand side of a real step: --rhs",
 		Evidence: []Evidence{number("||b||", 0, "")}}}
 }}
