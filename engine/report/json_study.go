@@ -29,6 +29,7 @@ type spectrumJSON struct {
 	Largest       number      `json:"largest"`
 	LargestBound  number      `json:"largest_bound"`
 	Condition     number      `json:"condition"`
+	Condition1    number      `json:"condition_1_norm"`
 	Negative      *int        `json:"negative"`
 	Low           []number    `json:"low"`
 	High          []number    `json:"high"`
@@ -42,11 +43,13 @@ type nullJSON struct {
 	Shares   []number `json:"shares"`
 	Rigid    *string  `json:"rigid"`
 	Support  int      `json:"support"`
+	Load     number   `json:"load"`
 }
 
 type normalityJSON struct {
 	Henrici        number `json:"henrici"`
 	Exact          bool   `json:"exact"`
+	Equilibrated   number `json:"henrici_equilibrated"`
 	FieldMin       number `json:"field_min"`
 	FieldMax       number `json:"field_max"`
 	FieldHoldsZero bool   `json:"field_holds_zero"`
@@ -63,6 +66,7 @@ type binJSON struct {
 }
 
 type couplingsJSON struct {
+	Scalar    bool   `json:"scalar"`
 	OneWay    number `json:"one_way_share"`
 	Ratio     number `json:"ratio"`
 	Jump      number `json:"jump"`
@@ -85,10 +89,11 @@ type linesJSON struct {
 }
 
 type lopsidedJSON struct {
-	Rows     []int `json:"rows"`
-	Count    int   `json:"count"`
-	Identity int   `json:"identity"`
-	OnlyThem bool  `json:"only_them"`
+	Rows         []int `json:"rows"`
+	Count        int   `json:"count"`
+	Identity     int   `json:"identity"`
+	IdentityRows []int `json:"identity_rows"`
+	OnlyThem     bool  `json:"only_them"`
 }
 
 type growthJSON struct {
@@ -99,9 +104,11 @@ type growthJSON struct {
 }
 
 type restoreJSON struct {
-	Shift number `json:"shift"`
-	Of    string `json:"of"`
-	Rows  []int  `json:"rows"`
+	Shift  number   `json:"shift"`
+	Bound  number   `json:"bound"`
+	Of     string   `json:"of"`
+	Rows   []int    `json:"rows"`
+	Shares []number `json:"shares"`
 }
 
 // toStudy is null before the second look.
@@ -117,31 +124,31 @@ func toStudy(f *inspect.Facts) *studyJSON {
 		}
 	}
 	if n := s.Normality; n != nil {
-		j.Normality = &normalityJSON{number(n.Henrici), n.Exact, number(n.FieldMin), number(n.FieldMax), n.FieldHoldsZero,
+		j.Normality = &normalityJSON{number(n.Henrici), n.Exact, number(n.Equilibrated), number(n.FieldMin), number(n.FieldMax), n.FieldHoldsZero,
 			number(n.SkewMax), number(n.LeftmostRe), number(n.RightRe)}
 	}
 	if c := s.Couplings; c != nil {
-		j.Couplings = &couplingsJSON{number(c.OneWay), number(c.Ratio), number(c.Jump), fromOne(c.JumpRows), c.Mesh, number(c.Dimension)}
+		j.Couplings = &couplingsJSON{c.Scalar, number(c.OneWay), number(c.Ratio), number(c.Jump), fromOne(c.JumpRows), c.Mesh, number(c.Dimension)}
 	}
 	if b := s.Block; b != nil {
 		j.Block = &blockJSON{b.Size, number(b.Share)}
 	}
 	if l := s.Lopsided; l != nil {
-		j.Lopsided = &lopsidedJSON{fromOne(l.Rows), l.Count, l.Identity, l.OnlyThem}
+		j.Lopsided = &lopsidedJSON{fromOne(l.Rows), l.Count, l.Identity, fromOne(l.IdentityRows), l.OnlyThem}
 	}
 	if g := s.Growth; g != nil {
 		same := func(n int) int { return n }
 		j.Growth = &growthJSON{tame(g.Pairing), all(g.Unknowns, same), all(g.Iterations, same), number(g.Exponent)}
 	}
 	if r := s.Restore; r != nil {
-		j.Restore = &restoreJSON{number(r.Shift), tame(r.Of), fromOne(r.Rows)}
+		j.Restore = &restoreJSON{number(r.Shift), number(r.Bound), tame(r.Of), fromOne(r.Rows), numbersOf(r.Shares)}
 	}
 	return j
 }
 
 func toSpectrum(x inspect.Spectrum) spectrumJSON {
 	j := spectrumJSON{tame(x.Of), tame(x.How), optional(string(x.Certainty)), x.Exact, optional(x.Norm), number(x.Smallest),
-		number(x.SmallestBound), number(x.Largest), number(x.LargestBound), number(x.Condition), nil, numbersOf(x.Low), numbersOf(x.High), toComplex(x.Values)}
+		number(x.SmallestBound), number(x.Largest), number(x.LargestBound), number(x.Condition), number(x.Condition1), nil, numbersOf(x.Low), numbersOf(x.High), toComplex(x.Values)}
 	if x.Negative >= 0 {
 		j.Negative = &x.Negative
 	}
@@ -153,7 +160,7 @@ func numbersOf(xs []float64) []number {
 }
 
 func toNull(v inspect.NullDirection) nullJSON {
-	return nullJSON{number(v.Quotient), number(v.Next), fromOne(v.Rows), numbersOf(v.Shares), optional(v.Rigid), v.Support}
+	return nullJSON{number(v.Quotient), number(v.Next), fromOne(v.Rows), numbersOf(v.Shares), optional(v.Rigid), v.Support, number(v.Load)}
 }
 
 func toBin(b inspect.Bin) binJSON {

@@ -58,6 +58,9 @@ func spectrumText(x inspect.Spectrum) string {
 		if x.Norm != "" {
 			s += " in the " + x.Norm + "-norm"
 		}
+		if finite(x.Condition1) && x.Condition1 > 0 {
+			s += fmt.Sprintf(", at least %s in the 1-norm", short(x.Condition1))
+		}
 	}
 	if x.Negative > 0 {
 		s += fmt.Sprintf(", %d below zero", x.Negative)
@@ -89,6 +92,13 @@ func normalityText(n *inspect.Normality) string {
 	s := fmt.Sprintf("departure from normality %s", short(n.Henrici))
 	if !n.Exact {
 		s = fmt.Sprintf("departure from normality at least %s", short(n.Henrici))
+	}
+	if finite(n.Equilibrated) && n.Equilibrated > 0 {
+		least := "at least "
+		if n.Exact {
+			least = ""
+		}
+		s += fmt.Sprintf(" (A equilibrated: %s%s)", least, short(n.Equilibrated))
 	}
 	s += fmt.Sprintf("; (A+A^T)/2 from %s to %s", short(n.FieldMin), short(n.FieldMax))
 	if n.FieldHoldsZero {
@@ -125,7 +135,11 @@ func lopsidedText(l *inspect.Lopsided, f *inspect.Facts) string {
 	if l.OnlyThem {
 		s += "; without these rows and columns A is symmetric"
 	}
-	return s + rowText(l.Rows, f)
+	rows := l.Rows
+	if l.OnlyThem {
+		rows = l.IdentityRows
+	}
+	return s + rowText(rows, f)
 }
 
 func growthText(g *inspect.Growth) string {

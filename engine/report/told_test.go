@@ -56,7 +56,7 @@ func toldStudy() *inspect.Study {
 		Couplings:    &inspect.Couplings{OneWay: 0.9, Ratio: 100, Jump: 1e4, JumpRows: []int{7}, Mesh: true, Dimension: 2},
 		Block:        &inspect.Block{Size: 3, Share: 0.98},
 		Lines:        []inspect.LineRows{{Kind: "penalty", Count: 2, Rows: []int{0, 9}, Value: 1e12, Other: 4}},
-		Lopsided:     &inspect.Lopsided{Rows: []int{1}, Count: 1, Identity: 1, OnlyThem: true},
+		Lopsided:     &inspect.Lopsided{Rows: []int{1}, Count: 1, Identity: 1, IdentityRows: []int{1}, OnlyThem: true},
 		Growth:       &inspect.Growth{Pairing: "cg+none", Unknowns: []int{100, 400}, Iterations: []int{30, 60}, Exponent: 0.5},
 		Restore:      &inspect.Restore{Shift: 0.2, Of: "I", Rows: []int{3}}}
 	for k := range 10 {
