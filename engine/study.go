@@ -20,6 +20,7 @@ func (s *Session) study(sys linear.System, facts *inspect.Facts) (*inspect.Facts
 	if s.opt.FactsOnly {
 		budget = inspect.Thorough
 	}
+	budget.Bytes = s.opt.Memory
 	latest, err := inspect.Examine(ctx, sys, facts, budget, func(f *inspect.Facts) {
 		facts = f
 		s.set(func() { s.facts = f })

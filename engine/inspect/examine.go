@@ -13,6 +13,7 @@ import (
 type Budget struct {
 	Work  float64 // operations, foreseen before each part: one that does not fit is left out
 	Dense int     // order up to which all eigenvalues are computed
+	Bytes int64   // of memory; 0: no limit but that of a factor
 }
 
 // The budgets. Quick is about half a second, for the look before a run;
@@ -21,6 +22,12 @@ var (
 	Quick    = Budget{Work: 1e9, Dense: 500}
 	Thorough = Budget{Work: 1.2e10, Dense: 2000}
 )
+
+// holds says whether the vectors of a study, and the copies of A that it makes,
+// fit the memory.
+func (b Budget) holds(a *linear.CSR) bool {
+	return b.Bytes == 0 || 3*a.Bytes()+8*int64(a.NRows)*(endBasis+16) <= b.Bytes
+}
 
 // most is the share of a budget that a factorisation may take.
 const most = 0.4
@@ -33,7 +40,7 @@ const most = 0.4
 // system without entries has no study. It stops with the context's error.
 func Examine(ctx context.Context, s linear.System, f *Facts, b Budget, seen func(*Facts)) (*Facts, error) {
 	a := s.Matrix()
-	if a == nil || f.N < 2 || f.EmptyRowCount+f.EmptyColCount > 0 || !finite(f.NormFro) {
+	if a == nil || f.N < 2 || f.EmptyRowCount+f.EmptyColCount > 0 || !finite(f.NormFro) || !b.holds(a) {
 		return f, nil
 	}
 	e := &exam{ctx: ctx, s: s, f: f, a: a, left: b.Work, budget: b, symmetric: f.Symmetric.Answer == Yes}

@@ -55,7 +55,11 @@ func (e *exam) factor() error {
 
 // within says whether a factorisation of that work and memory fits.
 func (e *exam) within(work float64, bytes int64) bool {
-	return work <= most*e.budget.Work && bytes <= bytesOfFactor && e.spend(work)
+	limit := int64(bytesOfFactor)
+	if b := e.budget.Bytes; b > 0 {
+		limit = min(limit, b/2)
+	}
+	return work <= most*e.budget.Work && bytes <= limit && e.spend(work)
 }
 
 func (e *exam) factorSymmetric() error {
