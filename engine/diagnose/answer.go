@@ -16,7 +16,7 @@ const fewDigits = 0.5
 // of the trial that solved the system best.
 var answer = Rule{"few-correct-digits", func(c Case) []Finding {
 	h, ok := bestSolved(c)
-	if !ok || c.Facts.ZeroRHS || h.Stop != trace.Converged {
+	if !ok || c.Facts.ZeroRHS || h.Stop != trace.Converged || c.Facts.Singular.Answer == inspect.Yes {
 		return nil
 	}
 	asked := -math.Log10(c.Tol)

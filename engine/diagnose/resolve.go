@@ -41,6 +41,8 @@ var yields = []yield{
 	{"null-space-growth", []string{"divergence", "accuracy-floor", "false-convergence"}, samePairing, "what grows lies in the null space"},
 	{"false-convergence", []string{"stopping-rules"}, samePairing, "its own number is the stopping rule that fails"},
 	{"restart-stagnation", []string{"restart-length"}, samePairing, "a cycle that stands still foretells nothing"},
+	{"mechanism", []string{"few-correct-digits"}, anywhere, "where A hardly holds x, digits mean nothing"},
+	{"near-null", []string{"few-correct-digits"}, anywhere, "the digits of the same condition, told once"},
 	{"today-beaten", []string{"preconditioner-costs-more"}, samePairing, "the same times, told once"},
 }
 

@@ -81,7 +81,7 @@ func (t *Trial) learnAll(stop trace.Stop) {
 		return
 	}
 	t.tellErrors()
-	looked := t.lookedAt(k)
+	looked := t.lookedAt(k, stop)
 	c, ghosts := t.tellLocks(looked)
 	if len(c) == 0 || looked < k {
 		return
@@ -95,10 +95,14 @@ func (t *Trial) learnAll(stop trace.Stop) {
 }
 
 // lookedAt is how many of k steps, from the first, the last look takes apart.
-func (t *Trial) lookedAt(k int) int {
+// Where the time is used up, few: all trials end at once.
+func (t *Trial) lookedAt(k int, stop trace.Stop) int {
 	whole := small
-	if t.hist.Today {
+	switch {
+	case t.hist.Today:
 		whole = smallDay
+	case stop == trace.TimeLimit:
+		whole = first
 	}
 	allowed := min(mostEnd, int(math.Sqrt(share*t.work(k)/takeApart)))
 	if k <= max(whole, allowed) {
