@@ -31,20 +31,20 @@ func Methods() []Method {
 	var list []Method
 	for _, e := range krylov.Catalogue {
 		list = append(list, Method{Kind: "solver", Name: e.Name, Title: e.Title, Source: e.Source,
-			Params: params(e.Params), Needs: needs(e.Needs), Assumes: assumes(e.Assumes), Products: e.Products})
+			Params: describe(e.Params), Needs: needs(e.Needs), Assumes: assumes(e.Assumes), Products: e.Products})
 	}
 	for _, e := range precond.Catalogue {
 		list = append(list, Method{Kind: "preconditioner", Name: e.Name, Title: e.Title, Source: e.Source,
-			Params: params(e.Params), Needs: needs(e.Needs), Assumes: assumes(e.Assumes)})
+			Params: describe(e.Params), Needs: needs(e.Needs), Assumes: assumes(e.Assumes)})
 	}
 	for _, e := range prepare.Catalogue {
 		list = append(list, Method{Kind: "preparation", Name: e.Name, Title: e.Title, Source: e.Source,
-			Params: params(e.Params), Needs: needs(e.Needs)})
+			Params: describe(e.Params), Needs: needs(e.Needs)})
 	}
 	return list
 }
 
-func params(list []linear.Param) []Param {
+func describe(list []linear.Param) []Param {
 	var out []Param
 	for _, p := range list {
 		q := Param{Name: p.Name, Meaning: p.Meaning}

@@ -1,6 +1,8 @@
 package tui
 
 import (
+	"fmt"
+	"slices"
 	"strings"
 
 	tea "github.com/charmbracelet/bubbletea"
@@ -8,12 +10,16 @@ import (
 	"dwindle/engine/choose"
 )
 
-// addView lies over a screen and lists the pairings that could be added, the
-// refused ones with their reason. A pairing may also be typed.
+// addView lies over a screen and lists what could be added: first the solvers,
+// then the preconditioners of the picked one, the refused ones with their
+// reason. A filter lists the pairings that hold its words; a pairing may also
+// be typed.
 type addView struct {
 	all       []choose.Candidate
 	ready     bool // the list has come
+	solver    string
 	at, first int
+	was       int     // the place among the solvers
 	line      *prompt // being typed
 	text      string  // filters the list; also what is typed as a pairing
 }
@@ -29,14 +35,22 @@ func (v *addView) entry() *prompt { return v.line }
 
 // openAdd opens the list.
 func (m *model) openAdd() tea.Cmd {
+	if m.snap.ReadOnly != "" {
+		m.say("read-only: " + m.snap.ReadOnly)
+		return nil
+	}
 	v, s := &addView{}, m.s
 	m.over = v
-	return func() tea.Msg { return offered{v, s.Candidates()} }
+	return func() tea.Msg { return offered{to: v, all: s.Candidates()} }
 }
 
 // onOffered fills the list.
 func (m *model) onOffered(o offered) {
 	o.to.all, o.to.ready, m.stale = o.all, true, true
+	if m.look(); m.snap.ReadOnly != "" && m.over == view(o.to) { // the system could not be read again
+		m.over = nil
+		m.say("read-only: " + m.snap.ReadOnly)
+	}
 }
 
 // keys are the bindings of the list, or of the line being typed.
@@ -48,11 +62,11 @@ func (v *addView) keys(m *model) []action {
 			bind("down", func(m *model) tea.Cmd { v.leave(); return nil }, "down"),
 		}
 	}
-	list := []action{
-		bind("add", v.enter, "enter"),
-		bind("find or type one", v.write, "/"),
-		bind("close", (*model).closeOver, "esc", "q"),
+	list := []action{bind("add", v.enter, "enter"), bind("parameters", v.edit, "p")}
+	if v.grouped() {
+		list = []action{bind("its preconditioners", v.enter, "enter")}
 	}
+	list = append(list, bind("find or type one", v.write, "/"), bind("back", v.back, "esc", "left", "h"), bind("close", (*model).closeOver, "q"))
 	return append(list, moves(v.move)...)
 }
 
@@ -69,6 +83,19 @@ func (v *addView) clear(m *model) tea.Cmd {
 	return nil
 }
 
+// back goes from the preconditioners to the solvers, from a filter to the
+// whole list, and from there away.
+func (v *addView) back(m *model) tea.Cmd {
+	switch {
+	case v.text != "":
+		return v.clear(m)
+	case v.solver != "":
+		v.solver, v.at = "", v.was
+		return nil
+	}
+	return m.closeOver()
+}
+
 // take adds what was typed when it reads as a pairing or nothing in the list
 // holds it; otherwise it stays as the filter.
 func (v *addView) take(m *model) tea.Cmd {
@@ -80,33 +107,99 @@ func (v *addView) take(m *model) tea.Cmd {
 	return nil
 }
 
-// enter adds the picked pairing; a refused one says why.
+// grouped says whether the solvers are listed.
+func (v *addView) grouped() bool { return v.solver == "" && v.filter() == "" }
+
+// filter is the text that the list must hold.
+func (v *addView) filter() string {
+	if v.line != nil {
+		return strings.TrimSpace(v.line.text)
+	}
+	return v.text
+}
+
+// enter opens the picked solver, or adds the picked pairing; a refused one
+// says why.
 func (v *addView) enter(m *model) tea.Cmd {
-	list := v.shown()
-	if v.at >= len(list) {
+	if v.grouped() {
+		if list := v.solvers(); v.at < len(list) {
+			v.solver, v.was, v.at = list[v.at].name, v.at, 0
+		}
 		return nil
 	}
-	if c := list[v.at]; c.Refused != "" {
-		m.say(c.Pairing + ": " + c.Refused)
+	c, ok := v.candidate(m)
+	if !ok {
 		return nil
 	}
 	m.over = nil
-	return m.add(list[v.at].Pairing)
+	return m.add(c.Pairing)
+}
+
+// edit opens the parameters of the picked pairing.
+func (v *addView) edit(m *model) tea.Cmd {
+	if c, ok := v.candidate(m); ok {
+		return m.openForm(c.Pairing, v)
+	}
+	return nil
+}
+
+// candidate is the picked one; a refused one is told why.
+func (v *addView) candidate(m *model) (choose.Candidate, bool) {
+	list := v.shown()
+	if v.at >= len(list) {
+		return choose.Candidate{}, false
+	}
+	if c := list[v.at]; c.Refused != "" {
+		m.say(c.Pairing + ": " + c.Refused)
+		return c, false
+	}
+	return list[v.at], true
 }
 
 func (v *addView) move(m *model, step int) {
-	v.at = max(min(v.at+step, len(v.shown())-1), 0)
+	n := len(v.shown())
+	if v.grouped() {
+		n = len(v.solvers())
+	}
+	v.at = max(min(v.at+step, n-1), 0)
 }
 
-// shown are the candidates that hold every word of the filter.
-func (v *addView) shown() []choose.Candidate {
-	text := v.text
-	if v.line != nil {
-		text = v.line.text
+// group is a solver with its candidates.
+type group struct {
+	name, title   string
+	fits, refused int
+	only          string // why every one of them is refused
+	naive         bool
+}
+
+// solvers lists the solvers in the order of the candidates.
+func (v *addView) solvers() []group {
+	var list []group
+	for _, c := range v.all {
+		k := slices.IndexFunc(list, func(g group) bool { return g.name == c.Solver })
+		if k < 0 {
+			title, _, _ := strings.Cut(c.Summary, ", ")
+			list, k = append(list, group{name: c.Solver, title: title, naive: c.Baseline}), len(list)
+		}
+		if c.Refused == "" {
+			list[k].fits++
+		} else {
+			list[k].refused++
+			list[k].only = c.Refused
+		}
 	}
-	words := strings.Fields(strings.ToLower(text))
+	return list
+}
+
+// shown are the candidates of the picked solver, or those that hold every word
+// of the filter.
+func (v *addView) shown() []choose.Candidate {
+	words := strings.Fields(strings.ToLower(v.filter()))
 	var out []choose.Candidate
 	for _, c := range v.all {
+		if len(words) == 0 && v.solver != "" && c.Solver != v.solver {
+			continue
+		}
 		if holds(c.Pairing+" "+c.Summary+" "+c.Refused, words) {
 			out = append(out, c)
 		}
@@ -127,27 +220,57 @@ func holds(text string, words []string) bool {
 
 // draw draws the list.
 func (v *addView) draw(m *model, w, h int) []string {
-	title := left("new pairing: enter adds, / finds or types one such as cg+ssor:1.2", w)
-	switch {
-	case v.line != nil:
-		title = v.line.line(m.signs, w)
-	case v.text != "":
-		title = left("new pairing, with \""+m.signs.clean(v.text)+"\"; / changes it", w)
+	lines := []string{v.title(m, w)}
+	var rows []string
+	if v.grouped() {
+		for i, g := range v.solvers() {
+			rows = append(rows, v.groupRow(m, g, i == v.at, w))
+		}
+	} else {
+		for i, c := range v.shown() {
+			rows = append(rows, v.row(m, c, i == v.at, w))
+		}
 	}
-	lines := []string{title}
-	list := v.shown()
 	switch {
 	case !v.ready:
 		return append(lines, "  the list is being made")
-	case len(list) == 0:
+	case len(rows) == 0:
 		return append(lines, "  none in the list; enter adds what is typed")
 	}
-	v.at = min(v.at, len(list)-1)
-	v.first = scroll(v.first, v.at, len(list), h-1)
-	for i := v.first; i < min(v.first+h-1, len(list)); i++ {
-		lines = append(lines, v.row(m, list[i], i == v.at, w))
+	v.at = min(v.at, len(rows)-1)
+	v.first = scroll(v.first, v.at, len(rows), h-1)
+	return append(lines, rows[v.first:min(v.first+h-1, len(rows))]...)
+}
+
+// title says what is listed, or what is being typed.
+func (v *addView) title(m *model, w int) string {
+	switch {
+	case v.line != nil:
+		return v.line.line(m.signs, w)
+	case v.text != "":
+		return left("new pairing, with \""+m.signs.clean(v.text)+"\"; / changes it, p its parameters", w)
+	case v.solver != "":
+		return left("new pairing: "+m.signs.clean(v.solver)+" with; enter adds, p edits its parameters", w)
 	}
-	return lines
+	return left("new pairing: enter opens a solver, / finds or types one such as cg+ssor:1.2", w)
+}
+
+// groupRow is one solver: how many preconditioners it takes, and what it is.
+func (v *addView) groupRow(m *model, g group, picked bool, w int) string {
+	mark, ink := " ", plain
+	if picked {
+		mark = ">"
+	}
+	note := g.title
+	if g.naive {
+		note += "; for comparison only"
+	}
+	state := " "
+	if g.fits == 0 {
+		state, note, ink = "x", "refused: "+g.only, faint
+	}
+	text := mark + state + " " + left(m.signs.clean(g.name), 12) + right(fmt.Sprintf("%d of %d", g.fits, g.fits+g.refused), 9) + "  " + m.signs.clean(note)
+	return m.on.paint(ink, clip(text, w))
 }
 
 // row is one candidate: name, memory, what it is; "x" and why where it cannot
@@ -158,6 +281,9 @@ func (v *addView) row(m *model, c choose.Candidate, picked bool, w int) string {
 		mark = ">"
 	}
 	note, ink := c.Summary, plain
+	if v.solver != "" && v.filter() == "" {
+		_, note, _ = strings.Cut(c.Summary, ", ")
+	}
 	state := " "
 	if c.Refused != "" {
 		state, note, ink = "x", "refused: "+c.Refused, faint

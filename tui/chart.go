@@ -2,6 +2,7 @@ package tui
 
 import (
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -19,6 +20,8 @@ type plot struct {
 	y      decades // rows are set when drawn
 	tol    float64
 	floor  float64 // estimated accuracy floor of the picked trial; NaN if unknown
+	marks  bool    // where common stopping rules would have ended the picked trial
+	bounds bool    // bounds of the picked trial's error in the energy norm
 	truth  bool    // audited true residuals instead of the methods' own
 	name   string  // what is drawn, for the corner
 	signs  glyphs
@@ -93,33 +96,46 @@ func (p plot) trials(c *canvas) {
 	for k, d := range order {
 		curves[k] = p.curve(c, d)
 	}
+	p.energy(c)
 	t := newTags(c)
 	for k := len(order) - 1; k >= 0; k-- { // the picked head gets its place first
 		p.head(t, order[k], curves[k])
 	}
 	for k := len(order) - 1; k >= 0; k-- {
 		p.falseStop(t, order[k])
+		p.stops(t, order[k], curves[k])
 		p.body(t, order[k], curves[k])
 	}
 }
 
-// order is the drawing order.
+// order is the drawing order: those that matter little lie below.
 func (p plot) order() []drawn {
-	var out, last []drawn
+	var first, out, last []drawn
 	for _, d := range p.curves {
-		if d.picked {
+		switch {
+		case d.picked:
 			last = append(last, d)
-		} else {
+		case aside(d.h):
+			first = append(first, d)
+		default:
 			out = append(out, d)
 		}
 	}
-	return append(out, last...)
+	return slices.Concat(first, out, last)
+}
+
+// ink is the colour of a curve and its tags.
+func (d drawn) ink() ink {
+	if aside(d.h) && !d.picked {
+		return faint
+	}
+	return inkOf(d.id)
 }
 
 // curve draws one trial in the chosen glyphs and returns it reduced to one
 // column a cell.
 func (p plot) curve(c *canvas, d drawn) curve {
-	i := inkOf(d.id)
+	i := d.ink()
 	cells := reduce(d.h.Records, p.x.fix, p.truth, p.x.place, max(c.w, 1))
 	switch p.signs {
 	case dotGlyphs:
@@ -146,7 +162,7 @@ func (p plot) head(t *tags, d drawn, c curve) {
 	if c.lost || y < 0 {
 		text, y = strconv.Itoa(d.id)+"^"+d.mark(), 0
 	}
-	t.near(x, y, text, inkOf(d.id))
+	t.near(x, y, text, d.ink())
 }
 
 // falseStop marks where the picked trial's own number met the target while
@@ -172,14 +188,14 @@ func (p plot) falseStop(t *tags, d drawn) {
 
 // body tags the curve on its way.
 func (p plot) body(t *tags, d drawn, c curve) {
-	if p.signs == asciiGlyphs && d.id < 10 {
+	if p.signs == asciiGlyphs && d.id < 10 || aside(d.h) && !d.picked {
 		return
 	}
 	period := 24
 	if !p.on {
 		period = 12
 	}
-	t.along(d.id, period, inkOf(d.id), func(x int) (int, bool) {
+	t.along(d.id, period, d.ink(), func(x int) (int, bool) {
 		if x < 0 || x >= len(c.mid) {
 			return 0, false
 		}

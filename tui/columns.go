@@ -144,11 +144,14 @@ func (m *model) row(l listing, t *engine.Trial, w int) string {
 	if strings.TrimSpace(note) == "" {
 		state, note = strings.TrimRight(state, " "), ""
 	}
-	on := plain
-	if t.ID == m.trials.picked {
+	on, mark := plain, inkOfMark(h.Stop.Mark())
+	switch {
+	case t.ID == m.trials.picked:
 		on = strong
+	case aside(h):
+		on, mark = faint, faint
 	}
-	return m.on.paint(on, front) + "  " + m.on.paint(inkOfMark(h.Stop.Mark()), state) + note
+	return m.on.paint(on, front) + "  " + m.on.paint(mark, state) + note
 }
 
 // stateText is the mark and the name of the state; "(!)" says that the
@@ -160,6 +163,9 @@ func stateText(h *trace.History) string {
 	}
 	if h.Direct {
 		s += " direct" // one step with an exact factorisation
+	}
+	if left := leftWords(h); left != "" && h.Stop == trace.Running {
+		s += " " + left
 	}
 	return s
 }

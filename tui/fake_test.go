@@ -73,8 +73,21 @@ func (s script) at(t float64) trace.History {
 	h.Residual = h.Records[len(h.Records)-1].Residual
 	if s.cond > 0 {
 		h.Condition = trace.Condition{Of: "M⁻¹A", Smallest: 30 / s.cond, Largest: 30, Estimate: s.cond, Settled: n > 400}
+		h.EnergyProved = s.cond > 1e6
+		for k := range 6 {
+			h.Locks = append(h.Locks, trace.Lock{Value: 30 / s.cond * math.Pow(2, float64(k)), Iter: n * (k + 2) / 9, Copies: 1 + k/5, Weight: 0.01})
+		}
+		for it := 0; it <= n; it += max(n/40, 1) {
+			e := math.Pow(10, s.level(float64(it)))
+			h.EnergyErrors = append(h.EnergyErrors, trace.EnergyError{Iter: it, Lower: 0.3 * e, Upper: 0.9 * e})
+		}
 	}
-	h.WouldStop = []trace.StopMark{{Rule: "rhs", Iter: n, True: h.Residual}, {Rule: "preconditioned", Iter: -1, True: math.NaN()}}
+	if h.Stop == trace.Running && n > 0 {
+		h.Predictions = []trace.Prediction{{Iter: n / 2, Total: float64(2 * n), Low: 1.5 * float64(n), High: 2.5 * float64(n)}}
+	}
+	h.Fields = []trace.Field{{Name: "gate", Rows: 12000, Residual: h.TrueResidual, Componentwise: 2e-6, Tol: 1e-6}, {Name: "spindle", Rows: 8000, Residual: 3e-7, Componentwise: 1e-3}}
+	h.WouldStop = []trace.StopMark{{Rule: "rhs", Iter: n, True: h.Residual}, {Rule: "energy", Iter: n / 2, True: math.Pow(10, s.level(float64(n/2)))},
+		{Rule: "backward", Iter: n * 2 / 3, True: math.Pow(10, s.level(float64(n*2/3)))}, {Rule: "preconditioned", Iter: -1, True: math.NaN()}}
 	return h
 }
 
@@ -147,7 +160,12 @@ func (f *fake) Snapshot() engine.Snapshot {
 		System:   report.System{Name: "sluice4.mtx", Unknowns: 20000, Entries: 1390112, RHS: "ones"},
 		Settings: report.Settings{Tol: 1e-8}, Findings: f.findings,
 		Choice: choose.Choice{Pairing: "cg+ic:0", Reasons: []string{"least own time to the tolerance"}, Gain: math.NaN(),
-			Ranked: []choose.Ranked{{Pairing: "cg+ic:0", Seconds: 4.6, Setup: 1.2, Iterations: 410, Memory: 12 << 20, Reached: true}}}}
+			Ranked: []choose.Ranked{{Pairing: "cg+ic:0", Seconds: 4.6, Setup: 1.2, Iterations: 410, Memory: 12 << 20, Reached: true, For: [3]float64{4.6, 35.2, 3401.2}, BreakEven: math.NaN()},
+				{Pairing: "cg+jacobi", Seconds: 7.4, Setup: 0.06, Iterations: 6165, Memory: 1 << 20, Reached: true, For: [3]float64{7.4, 73.5, 7340}, BreakEven: 3},
+				{Pairing: "bicgstab+none", Seconds: math.NaN(), Iterations: 5305, Memory: 1 << 20}},
+			Settings: []string{"solver: conjugate gradients", "preconditioner: incomplete Cholesky (level 0)"},
+			RuledOut: []choose.Ruled{{Pairing: "every pairing with qmr", Reason: "needs products with the transpose"}},
+			Outcomes: []choose.Outcome{{Pairing: "cg+ic:0", What: "iterations, told at half time", Predicted: 430, Came: 407}}}}
 	if f.broken != nil {
 		s.Phase, s.Err, s.Facts = engine.Broken, f.broken, nil
 		return s
@@ -197,9 +215,9 @@ func (f *fake) lock() func() { f.mu.Lock(); return f.mu.Unlock }
 
 func (f *fake) Candidates() []choose.Candidate {
 	return []choose.Candidate{
-		{Pairing: "cg+ic:0", Memory: 12 << 20, Summary: "conjugate gradients with incomplete Cholesky"},
-		{Pairing: "minres+ssor:1", Memory: 3 << 20, Summary: "minimum residual with one symmetric sweep"},
-		{Pairing: "cg+lu", Refused: "needs 9.1 GiB, the limit is 2 GiB"},
+		{Pairing: "cg+ic:0", Solver: "cg", Memory: 12 << 20, Summary: "conjugate gradients, incomplete Cholesky"},
+		{Pairing: "minres+ssor:1", Solver: "minres", Memory: 3 << 20, Summary: "minimum residual, one symmetric sweep"},
+		{Pairing: "cg+lu", Solver: "cg", Summary: "conjugate gradients, complete factors", Refused: "needs 9.1 GiB, the limit is 2 GiB"},
 	}
 }
 func (f *fake) Start() { defer f.lock()(); f.ready = false; f.did("start") }
@@ -247,7 +265,20 @@ func someFacts() *inspect.Facts {
 		PositiveDefinite: inspect.Fact{Answer: inspect.Unknown, Why: "nothing against it: n is over 2000"},
 		Diag:             inspect.Range{Min: 1.2e-3, Max: 8.8e4}, RowNorm: inspect.Range{Min: 1.2e-3, Max: 8.8e4, MinRow: 17, MaxRow: 4},
 		ColNorm: inspect.Range{Min: 1.2e-3, Max: 8.8e4}, NormInf: 8.8e4, NormFro: 2.1e6, NormOne: 8.8e4, Dominant: 12200,
-		Gershgorin: inspect.Range{Min: -3.1e4, Max: 2.6e5}, Components: 1, Complete: true, Pattern: somePattern()}
+		Gershgorin: inspect.Range{Min: -3.1e4, Max: 2.6e5}, Components: 1, Complete: true, Pattern: somePattern(), Study: someStudy()}
+}
+
+// someStudy is an invented second look.
+func someStudy() *inspect.Study {
+	s := &inspect.Study{Digits: 9,
+		Raw: &inspect.Spectrum{Of: "A", How: "lanczos", Certainty: inspect.Measured, Norm: "2", Smallest: 2e-3, Largest: 8.2e4, Condition: 4.1e7,
+			Low: []float64{2e-3, 5e-3}, High: []float64{8.2e4}},
+		Jacobi: &inspect.Spectrum{Of: "A scaled by its diagonal", How: "lanczos", Certainty: inspect.Estimated, Norm: "2", Smallest: 1.4e-6, Largest: 3, Condition: 2.2e6}}
+	for k := range 24 {
+		from := 2e-3 * math.Pow(10, float64(k)/3)
+		s.Density = append(s.Density, inspect.Bin{From: from, To: from * math.Pow(10, 1./3), Count: 20000 * math.Exp(-math.Pow(float64(k)-14, 2)/18) / 7.5, Sd: 40})
+	}
+	return s
 }
 
 // somePattern is a band with two more diagonals.

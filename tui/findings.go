@@ -6,7 +6,6 @@ import (
 
 	tea "github.com/charmbracelet/bubbletea"
 
-	"dwindle/engine/choose"
 	"dwindle/engine/diagnose"
 	"dwindle/engine/inspect"
 )
@@ -161,60 +160,4 @@ func evidence(e diagnose.Evidence, facts *inspect.Facts) string {
 		s += fmt.Sprintf("  at it %d", e.Iteration)
 	}
 	return withRows(s, e.Rows, facts)
-}
-
-// choiceText is the recommendation in full.
-func (m *model) choiceText(w int) []string {
-	c := m.snap.Choice
-	if c.Pairing == "" {
-		lines := []string{"nothing is recommended yet"}
-		return append(lines, m.bullets("doubt", c.Doubts, w)...)
-	}
-	head := "use " + m.signs.clean(c.Pairing)
-	if c.Gain > 0 {
-		head += fmt.Sprintf(": %s times as fast as today's", round2(c.Gain))
-	}
-	lines := []string{m.on.paint(strong, clip(head, w))}
-	lines = append(lines, m.bullets("because", c.Reasons, w)...)
-	lines = append(lines, m.bullets("doubt", c.Doubts, w)...)
-	return append(lines, m.ranking(c.Ranked, w)...)
-}
-
-// bullets lists sentences under a word.
-func (m *model) bullets(word string, list []string, w int) []string {
-	var lines []string
-	for _, s := range list {
-		lines = append(lines, paragraph(word+": "+m.signs.clean(s), 2, w)...)
-	}
-	return lines
-}
-
-// ranking is the table of the ranked pairings.
-func (m *model) ranking(ranked []choose.Ranked, w int) []string {
-	if len(ranked) == 0 {
-		return nil
-	}
-	name := min(max(w-56, 18), 34)
-	lines := []string{"", m.on.paint(faint, clip("     "+left("pairing", name)+right("s to tol", 12)+right("setup s", 9)+right("iters", 9)+right("memory", 11), w))}
-	for i, r := range ranked {
-		to := "not reached"
-		if r.Reached {
-			to = seconds(r.Seconds)
-		}
-		worth := ""
-		if r.BreakEven > 0 && w >= 100 {
-			worth = fmt.Sprintf("  best from %.0f sides", r.BreakEven)
-		}
-		lines = append(lines, clip(fmt.Sprintf("%4d %s%s%s%s%s%s", i+1, left(m.signs.clean(r.Pairing), name), right(to, 12),
-			right(seconds(r.Setup), 9), right(fmt.Sprint(r.Iterations), 9), right(size(r.Memory), 11), worth), w))
-	}
-	return lines
-}
-
-// round2 writes a factor with two digits or so.
-func round2(v float64) string {
-	if v >= 10 {
-		return fmt.Sprintf("%.0f", v)
-	}
-	return fmt.Sprintf("%.1f", v)
 }

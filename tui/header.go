@@ -80,6 +80,9 @@ func (m *model) progress() string {
 		}
 	}
 	text := fmt.Sprintf("%d going %d done", going, done)
+	if m.snap.Recorded && going+held == 0 {
+		text = fmt.Sprintf("recorded %d done", done)
+	}
 	if held > 0 {
 		text = fmt.Sprintf("%d held %s", held, text)
 	}

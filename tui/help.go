@@ -40,12 +40,16 @@ var signsHelp = []string{
 	"x broke down, refused or failed   . waiting   - held   # a limit or your stop",
 	"(!) the method's own number met the target, the true residual had not",
 	"^ the curve goes on above the chart",
+	"r i p b e  on the picked curve: a code that stops relative to b, relative to",
+	"           r0, preconditioned, by backward error, by energy norm stops here",
 	"findings: ! blocker   = drag   . note",
 	"true res   ||b - Ax|| / ||b|| measured afresh, in no trial's clock",
 	"own res    the number the method itself watches, relative to b",
 	"Ritz cond  condition of the preconditioned matrix from Ritz values,",
 	"           a lower bound; ? not settled; - the method gives none",
 	"own s      this trial's time alone, set-up included",
+	". '        lower and upper bound of the error in the energy norm (key e)",
+	"s left     at the pace so far to the predicted end; a model, no promise",
 	"floor~     estimated accuracy below which nothing can be reached",
 }
 

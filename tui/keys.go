@@ -48,7 +48,7 @@ var everywhere = []action{
 	bind("draw again", func(*model) tea.Cmd { return tea.ClearScreen }, "ctrl+l"),
 }
 
-// common are the bindings of the three screens of a session.
+// common are the bindings of the screens of a session.
 var common = []action{
 	bind("screen; the next one", func(m *model) tea.Cmd { m.turn(1); return nil }, "tab"),
 	bind("screen; the one before", func(m *model) tea.Cmd { m.turn(-1); return nil }, "shift+tab"),

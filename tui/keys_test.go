@@ -45,13 +45,17 @@ func TestCommands(t *testing.T) {
 		{[]string{"1", "s", "y"}, []string{"cancel 1"}},
 		{[]string{"2", "d", "y"}, []string{"drop 2"}},
 		{[]string{"3", "t", "t"}, []string{"today 3", "today 0"}},
-		{[]string{"n", "j", "enter"}, []string{"add minres+ssor:1"}},
-		{[]string{"n", "G", "enter", "esc"}, nil}, // refused
+		{[]string{"n", "j", "enter", "enter"}, []string{"add minres+ssor:1"}},
+		{[]string{"n", "enter", "enter"}, []string{"add cg+ic:0"}},
+		{[]string{"n", "enter", "G", "enter", "esc", "esc"}, nil}, // refused
+		{[]string{"n", "enter", "p", "e", "2", "enter", "enter"}, []string{"add cg+ic:2"}},
+		{[]string{"n", "enter", "p", "e", "x", "enter", "esc", "esc"}, nil}, // no number
+		{[]string{"3", "p", "e", "1", "enter", "enter"}, []string{"add cg+ic:1"}},
 		{[]string{"n", "/", "c", "g", "+", "i", "c", ":", "1", "enter"}, []string{"add cg+ic:1"}},
 		{[]string{"n", "/", "s", "s", "o", "r", "enter", "enter"}, []string{"add minres+ssor:1"}},
 		{[]string{"6", "enter", "2", "enter"}, []string{"add gmres:60+ilu:0"}},
 		{[]string{"6", "enter", "enter"}, nil}, // trial 4 runs it already
-		{[]string{"tab", "tab", "j", "enter", "enter"}, []string{"add gmres:60+ilu:0"}},
+		{[]string{"tab", "tab", "tab", "j", "enter", "enter"}, []string{"add gmres:60+ilu:0"}},
 		{[]string{"2", " "}, nil}, // has ended
 		{[]string{"4", "s", "n"}, nil},
 	} {

@@ -28,8 +28,9 @@ type model struct {
 	chooser *chooser
 	trials  *trialsView
 	system  *systemView
+	spectra *spectrumView
 	finding *findingsView
-	screen  view // one of the four
+	screen  view // one of the five
 	over    view // what lies over it, nil if nothing
 
 	question *question
@@ -52,7 +53,7 @@ func newModel(cfg Config, s session) *model {
 	m := &model{
 		cfg: cfg, s: s, follow: true, stale: true,
 		signs: glyphsNamed(cfg.Glyphs), rate: rateOf(cfg.Rate),
-		trials: newTrials(), system: &systemView{}, finding: &findingsView{},
+		trials: newTrials(), system: &systemView{}, spectra: &spectrumView{}, finding: &findingsView{},
 		now:  time.Now,
 		busy: func() bool { return false }, wanted: func() {},
 	}
@@ -84,7 +85,7 @@ func (m *model) attach(s session) {
 }
 
 // screens is the order in which tab walks.
-func (m *model) screens() []view { return []view{m.trials, m.system, m.finding} }
+func (m *model) screens() []view { return []view{m.trials, m.system, m.spectra, m.finding} }
 
 // turn walks by step screens.
 func (m *model) turn(step int) {

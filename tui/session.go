@@ -64,11 +64,25 @@ func (m *model) look() {
 	if !m.looked || snap.Live() || m.snap.Live() { // the clock stops with the last trial
 		m.elapsed = snap.Elapsed
 	}
+	m.tell(snap)
 	m.looked, m.stale, m.snap = true, true, snap
 	m.trials.follow(snap)
 	if m.follow && len(snap.Trials) > 0 {
 		m.follow = false
 		m.show(m.trials)
+	}
+}
+
+// tell says once that the session was opened from a file and what can be done
+// with it, and that its own recording failed.
+func (m *model) tell(snap engine.Snapshot) {
+	switch {
+	case snap.RecordErr != nil && m.snap.RecordErr == nil:
+		m.say(snap.RecordErr.Error() + "; the trials go on without it")
+	case snap.Recorded && !m.snap.Recorded && snap.ReadOnly != "":
+		m.say("a recorded session, read-only: " + snap.ReadOnly)
+	case snap.Recorded && !m.snap.Recorded:
+		m.say("a recorded session; a new pairing (n) reads its system again")
 	}
 }
 

@@ -20,11 +20,13 @@ type trialsView struct {
 	first  int // first visible row of the list
 	hidden map[int]bool
 
-	by    measure
-	log   bool
-	truth bool    // draw audited true residuals
-	spans [3]span // for each measure; they only grow
-	y     decades // grows too; zero until there is something to draw
+	by     measure
+	log    bool
+	bare   bool    // no marks of common stopping rules
+	bounds bool    // bounds of the picked trial's error in the energy norm
+	truth  bool    // draw audited true residuals
+	spans  [3]span // for each measure; they only grow
+	y      decades // grows too; zero until there is something to draw
 
 	reading int // column of the reading cursor, -1 if it is away
 	columns int // of the chart when last drawn
@@ -113,10 +115,14 @@ func (v *trialsView) keys(m *model) []action {
 		bind("hold; or resume the picked trial", (*model).holdTrial, " "),
 		bind("axis; iterations, products, seconds", v.nextMeasure, "x"),
 		bind("tries; for the picked trial", v.enter, "enter"),
+		bind("info; all of the picked trial", (*model).openInfo, "i"),
+		bind("parameters; of the picked trial, for a new one", (*model).editTrial, "p"),
 		bind("stop; the picked trial, its curve stays", (*model).stopTrial, "s"),
 		bind("drop; the picked trial and its curve", (*model).dropTrial, "d"),
 		bind("residual; own or true", v.turnTruth, "r"),
 		bind("today; your code runs this one now", (*model).markToday, "t"),
+		bind("marks; where common rules would have stopped", v.turnMarks, "m"),
+		bind("error bounds; in the energy norm", v.turnBounds, "e"),
 		bind("hide; or show the picked curve", v.hide, "v"),
 		bind("log axis; or linear", v.turnLog, "X"),
 		bind("read; the picked curve", v.readBy(-1), "left", "h"),
@@ -208,6 +214,31 @@ func (v *trialsView) turnTruth(m *model) tea.Cmd {
 	v.truth = !v.truth
 	v.y = decades{}
 	v.widen(m.snap)
+	return nil
+}
+
+// turnMarks draws the marks of common stopping rules, or leaves them out.
+func (v *trialsView) turnMarks(m *model) tea.Cmd {
+	v.bare = !v.bare
+	m.say("marks: r relative to b, i to r0, p preconditioned, b backward, e energy norm")
+	if v.bare {
+		m.say("marks of common stopping rules are left out")
+	}
+	return nil
+}
+
+// turnBounds draws the bounds of the error in the energy norm, or leaves them
+// out.
+func (v *trialsView) turnBounds(m *model) tea.Cmd {
+	v.bounds = !v.bounds
+	switch t := m.trial(v.picked); {
+	case !v.bounds:
+		m.say("error bounds are left out")
+	case t == nil || len(t.History.EnergyErrors) == 0:
+		m.say("the picked trial gives no bounds of the energy norm of its error")
+	default:
+		m.say(energyWords(&t.History))
+	}
 	return nil
 }
 

@@ -53,7 +53,7 @@ func cursorAt(line string, x int) string {
 // chart is what the chart shows.
 func (v *trialsView) chart(m *model) plot {
 	p := plot{x: v.axis(), y: v.y, tol: m.snap.Settings.Tol, floor: math.NaN(),
-		truth: v.truth, name: v.residualName(m), signs: m.signs, on: m.on}
+		truth: v.truth, marks: !v.bare, bounds: v.bounds, name: v.residualName(m), signs: m.signs, on: m.on}
 	for i := range m.snap.Trials {
 		t := &m.snap.Trials[i]
 		if v.hidden[t.ID] {
@@ -81,21 +81,21 @@ func (v *trialsView) residualName(m *model) string {
 	return fmt.Sprintf("own residual (%d: %s norm)", t.ID, m.signs.clean(string(t.History.Norm)))
 }
 
-// list is the title and h-1 rows of the list.
+// list is the title and h-1 rows of the list: all trials where there is room,
+// else those that must be seen and a window on the others.
 func (v *trialsView) list(m *model, w, h int) []string {
 	if h < 1 {
 		return nil
 	}
 	l := listingFor(w)
 	n := len(m.snap.Trials)
-	v.first = scroll(v.first, v.index(m), n, h-1)
-	end := min(v.first+h-1, n)
+	shown := v.visible(m, h-1)
 	where := ""
-	if n > h-1 {
-		where = fmt.Sprintf("%d-%d of %d", v.first+1, end, n)
+	if len(shown) < n {
+		where = fmt.Sprintf("%d of %d", len(shown), n)
 	}
 	lines := []string{m.on.paint(faint, l.title(where, w))}
-	for i := v.first; i < end; i++ {
+	for _, i := range shown {
 		lines = append(lines, m.row(l, &m.snap.Trials[i], w))
 	}
 	return fit(lines, h)
