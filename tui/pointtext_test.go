@@ -19,7 +19,7 @@ func TestPoint14Names(t *testing.T) {
 			t.Errorf("%s: not cleaned: %q", g, v)
 		}
 		for i, line := range strings.Split(m.View(), "\n") {
-			if strings.HasPrefix(line, ">  1") && width(line) > 0 && width(strings.Split(line, "~ running")[0]) != 58 {
+			if strings.HasPrefix(line, ">  1") && width(line) > 0 && width(strings.Split(line, "~ running")[0]) != 60 {
 				t.Errorf("%s: line %d broke its columns: %q", g, i, line)
 			}
 		}
