@@ -219,31 +219,38 @@ func TestFreeMotionsOfTheFrame(t *testing.T) {
 }
 
 // With coordinates the motions are named: two translations and a rotation of
-// a triangle of springs that nothing holds.
-func TestRigidMotionsOfATriangle(t *testing.T) {
-	x := [][]float64{{0, 0}, {2, 0}, {1, 1.5}}
+// each of two triangles of springs that nothing holds.
+func TestRigidMotionsOfTriangles(t *testing.T) {
+	x := [][]float64{{0, 0}, {2, 0}, {1, 1.5}, {5, 1}, {6, 1}, {6, 3}}
 	var out []linear.Entry
-	for i := range 3 {
-		for j := range i {
-			d := [2]float64{x[i][0] - x[j][0], x[i][1] - x[j][1]}
-			l := math.Hypot(d[0], d[1])
-			for p := range 2 {
-				for q := range 2 {
-					k := 100 * d[p] * d[q] / l / l / l
-					out = append(out, e(2*i+p, 2*i+q, k), e(2*j+p, 2*j+q, k), e(2*i+p, 2*j+q, -k), e(2*j+p, 2*i+q, -k))
-				}
+	spring := func(i, j int) {
+		d := [2]float64{x[i][0] - x[j][0], x[i][1] - x[j][1]}
+		l := math.Hypot(d[0], d[1])
+		for p := range 2 {
+			for q := range 2 {
+				k := 100 * d[p] * d[q] / l / l / l
+				out = append(out, e(2*i+p, 2*i+q, k), e(2*j+p, 2*j+q, k), e(2*i+p, 2*j+q, -k), e(2*j+p, 2*i+q, -k))
 			}
 		}
 	}
-	s := ones(linear.FromEntries(6, 6, out), 17)
+	for _, o := range []int{0, 3} {
+		spring(o, o+1)
+		spring(o+1, o+2)
+		spring(o+2, o)
+	}
+	s := ones(linear.FromEntries(12, 12, out), 17)
 	s.Coordinates, s.Dofs = x, 2
-	s.NearNull = [][]float64{{1, 0, 1, 0, 1, 0}, {0, 1, 0, 1, 0, 1}, {0, 0, 0, 2, -1.5, 1}}
+	s.NearNull = [][]float64{make([]float64, 12), make([]float64, 12), make([]float64, 12)}
+	for i, p := range x {
+		s.NearNull[0][2*i], s.NearNull[1][2*i+1] = 1, 1
+		s.NearNull[2][2*i], s.NearNull[2][2*i+1] = -p[1], p[0]
+	}
 	got := studied(t, s, inspect.Quick).Study.Null
-	if len(got) != 3 {
-		t.Fatalf("%d directions", len(got))
+	if len(got) != 6 {
+		t.Fatalf("%d directions, want 3 of each triangle", len(got))
 	}
 	for _, d := range got {
-		if d.Rigid == "" || d.Quotient > 1e-13 {
+		if d.Rigid == "" || d.Quotient > 1e-13 || d.Support > 6 {
 			t.Errorf("%+v", d)
 		}
 	}

@@ -24,35 +24,47 @@ func support(v []float64) int {
 }
 
 // rigidMotions finds the motions of the coordinates, and the combinations of
-// them, that A leaves nearly free, in the whole system; it adds them to the
-// free directions and returns their quotients.
+// them, that A leaves nearly free, in each connected part of several nodes; it
+// adds them to the free directions and returns their quotients.
 func (e *exam) rigidMotions(norm float64) []float64 {
 	if e.s.Coordinates == nil || len(e.s.NearNull) == 0 || !e.symmetric {
 		return nil
 	}
-	var basis [][]float64
+	parts := linear.FindComponents(e.a)
+	var quotients []float64
+	for k, size := range parts.Size {
+		if int(size) <= len(e.s.NearNull) || len(quotients) >= mostFree {
+			continue
+		}
+		quotients = append(quotients, e.rigidIn(parts, int32(k), norm)...)
+	}
+	return quotients
+}
+
+// rigidIn does so for one part.
+func (e *exam) rigidIn(parts *linear.Components, part int32, norm float64) []float64 {
+	var basis, images [][]float64
 	for _, m := range e.s.NearNull {
 		v := make([]float64, len(m))
 		for i, x := range m {
-			v[i] = x / e.col[i]
+			if parts.Of[i] == part {
+				v[i] = x / e.col[i]
+			}
 		}
 		if orthonormal(v, basis) {
-			basis = append(basis, v)
+			w := make([]float64, len(v))
+			e.scaled.Apply(w, v)
+			basis, images = append(basis, v), append(images, w)
 		}
 	}
 	k := len(basis)
-	images := make([][]float64, k)
-	for j, v := range basis {
-		images[j] = make([]float64, len(v))
-		e.scaled.Apply(images[j], v)
-	}
 	gram, values := make([]float64, k*k), make([]float64, k)
 	for i := range k {
 		for j := range k {
 			gram[i*k+j] = linear.Dot(images[i], images[j])
 		}
 	}
-	if !spectrum.Symmetric(gram, values, make([]float64, 3*k)) {
+	if k == 0 || !spectrum.Symmetric(gram, values, make([]float64, 3*k)) {
 		return nil
 	}
 	var quotients []float64
@@ -73,6 +85,9 @@ func (e *exam) rigidMotions(norm float64) []float64 {
 // nothing but rounding is left.
 func orthonormal(v []float64, basis [][]float64) bool {
 	before := linear.Norm2(v)
+	if before == 0 {
+		return false
+	}
 	for range 2 {
 		for _, b := range basis {
 			linear.Axpy(-linear.Dot(b, v), b, v)
