@@ -35,8 +35,27 @@ type factors struct {
 	solve, back func(dst, b []float64)
 }
 
+// leastSure is the relative error that rounding may make in x for a factor to
+// be trusted: a singular matrix is factorised by chance.
+const leastSure = 1e-3
+
+// sumsToZero says whether constants on a component of A are a null vector, to
+// rounding or within the printed digits.
+func (w *work) sumsToZero() bool {
+	for _, z := range linear.FindComponents(w.a).RowSums(w.a, w.q.System.Delta()) {
+		if z != linear.NotZero {
+			return true
+		}
+	}
+	return false
+}
+
 // factor factorises A within the limits and measures condition and error.
 func (w *work) factor() error {
+	if w.sumsToZero() {
+		w.out.NoFactor = "A is singular: its rows sum to zero, so that x is determined only up to a constant"
+		return nil
+	}
 	f, err := w.factorise()
 	var pivot *direct.PivotError
 	switch {
@@ -58,8 +77,8 @@ func (w *work) factor() error {
 	out.Reach = w.reach(f, star)
 	out.Digits = correct(unit * out.Reach)
 	out.Written = correct(math.Max(unit, w.q.System.Delta()) * out.Reach)
-	if math.IsNaN(out.Digits) || math.IsInf(out.Condition, 0) || out.Condition*unit > 1 && !out.Sure {
-		w.out.NoFactor = fmt.Sprintf("the factor is spoilt by rounding (condition %.1e or more): condition and error of x are not known", out.Condition)
+	if !(unit*out.Reach <= leastSure) || out.Condition*unit > 1 && !out.Sure {
+		w.out.NoFactor = fmt.Sprintf("A is singular to rounding, or nearly so (condition %.1e or more): double precision does not determine x", out.Condition)
 		return nil
 	}
 	w.out.Factor = out
