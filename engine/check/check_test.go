@@ -205,6 +205,22 @@ func TestTwoNorm(t *testing.T) {
 	}
 }
 
+// Too large to be factorised: the Ritz values bound the condition from below.
+// That of the Laplacian of order n is cot²(π/(2(n+1))).
+func TestConditionWithoutAFactor(t *testing.T) {
+	const n = 60
+	b, x := make([]float64, n), make([]float64, n)
+	linear.Uniform(b, 2)
+	a := asked(t, laplace(n), b, x, func(q *Question) { q.Factor = direct.Limits{} })
+	tan := math.Tan(math.Pi / (2 * (n + 1)))
+	if want := 1 / (tan * tan); a.Factor != nil || a.Running.Condition > want*(1+1e-9) || a.Running.Condition < 0.99*want {
+		t.Errorf("condition %g, truly %g; %q", a.Running.Condition, want, a.NoFactor)
+	}
+	if text := strings.Join(a.Hints, "\n"); !strings.Contains(text, "the condition of A is at least 1.51e+03") {
+		t.Errorf("%s", text)
+	}
+}
+
 func TestWhatElseIsWrong(t *testing.T) {
 	rows := [][]float64{{4, 1, 0}, {0, 3, 1}, {2, 0, 5}}
 	m, x := dense(rows...), []float64{1.5, -0.25, 3}

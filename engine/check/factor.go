@@ -62,6 +62,7 @@ func (w *work) factor() error {
 	case w.ctx.Err() != nil:
 		return w.ctx.Err()
 	case errors.Is(err, direct.ErrTooLarge):
+		w.tooLarge = true
 		w.out.NoFactor = "A is too large to be factorised here: condition and error of x are not known"
 		return nil
 	case errors.As(err, &pivot):

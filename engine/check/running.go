@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"dwindle/engine/linear"
+	"dwindle/engine/spectrum"
 )
 
 // Running is what a minimal residual method without a preconditioner keeps as
@@ -16,6 +17,9 @@ type Running struct {
 	Norms     []float64 // ‖A‖ after step k = 1, 2, ...
 	WithStart []float64 // of codes that count ‖r₀‖ among the entries; nil where that changes nothing
 	Residuals []float64 // ‖b−Ax_k‖₂ by recurrence
+	// Condition is the ratio of the outermost Ritz values of a symmetric A whose
+	// Ritz values are all positive, a lower bound of its condition; NaN else.
+	Condition float64
 }
 
 const (
@@ -34,6 +38,7 @@ func (w *work) running() error {
 	steps := min(max(5*n, 50), mostSteps)
 	steps = max(min(steps, int(productWork/float64(4*w.a.Entries()+20*n+1))), 10)
 	run := &w.out.Running
+	run.Condition = math.NaN()
 	square := 0.0
 	keep := func(add, residual float64) bool {
 		square += add
@@ -58,7 +63,9 @@ func (w *work) running() error {
 func (w *work) minres(steps int, keep func(add, residual float64) bool) {
 	residual, before := linear.Norm2(w.r0), 0.0
 	c, s, dbar := -1.0, 0.0, 0.0
+	t := new(spectrum.Tridiagonal)
 	w.lanczos(w.r0, steps, func(alpha, beta float64) bool {
+		t.AddLanczos(alpha, beta)
 		gbar := s*dbar - c*alpha
 		dbar = -c * beta
 		gamma := math.Hypot(gbar, beta)
@@ -68,6 +75,7 @@ func (w *work) minres(steps int, keep func(add, residual float64) bool) {
 		before = beta
 		return more
 	})
+	w.out.Running.Condition = t.Extremes().Condition()
 }
 
 // lsqr does the same with the lower bidiagonal matrix of Golub and Kahan

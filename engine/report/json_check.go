@@ -32,6 +32,7 @@ type checkJSON struct {
 	Fields        []checkedFieldJSON `json:"fields"`
 	Condition     *conditionOfX      `json:"condition"`
 	NoCondition   string             `json:"no_condition"`
+	Ritz          number             `json:"condition_at_least"` // of a symmetric A, by its Ritz values
 }
 
 type checkedJSON struct {
@@ -117,7 +118,7 @@ func CheckJSON(w io.Writer, d CheckDocument) error {
 		Residual: residualJSON{number(a.Residual.One), number(a.Residual.Two), number(a.Residual.Inf), number(a.Residual.Bound), number(a.Residual.Plain)},
 		Norms:    normsJSON{number(a.Norms.One), number(a.Norms.Inf), number(a.Norms.Fro), number(a.Norms.Two), a.Norms.TwoSettled},
 		Digits:   a.Digits, Printing: number(a.Printing), Componentwise: number(a.Componentwise), Unsolved: a.Unsolved,
-		Worst: []worstJSON{}, Fields: toCheckedFields(a.Fields), NoCondition: tame(a.NoFactor)}
+		Worst: []worstJSON{}, Fields: toCheckedFields(a.Fields), NoCondition: tame(a.NoFactor), Ritz: number(a.Running.Condition)}
 	for _, m := range a.Definitions {
 		j.Measures = append(j.Measures, toMeasure(m))
 	}
