@@ -2,6 +2,7 @@ package engine
 
 import (
 	"context"
+	"math"
 	"slices"
 	"testing"
 
@@ -13,6 +14,7 @@ import (
 // Each sample gives the findings it lists and no other, and what it calls
 // converged is so by audit.
 func TestSamplesGiveExactlyTheirFindings(t *testing.T) {
+	var told []choose.Outcome
 	for _, s := range samples.Catalogue {
 		t.Run(s.Name, func(t *testing.T) {
 			v := ended(t, samples.Prefix+s.Name, Options{Pairs: lineUp(t, samples.Prefix+s.Name)})
@@ -38,7 +40,31 @@ func TestSamplesGiveExactlyTheirFindings(t *testing.T) {
 			if len(v.Trials) == 0 {
 				t.Error("the line-up is empty")
 			}
+			told = append(told, v.Choice.Outcomes...)
 		})
+	}
+	checkCalibration(t, told)
+}
+
+// checkCalibration holds what was predicted at half time against the outcome:
+// within 20 % on 80 % of the trials over all samples.
+func checkCalibration(t *testing.T, told []choose.Outcome) {
+	t.Helper()
+	met, all := 0, 0
+	for _, o := range told {
+		if o.What != choose.HalfTime {
+			continue
+		}
+		all++
+		if math.Abs(o.Predicted-o.Came) <= 0.2*o.Came {
+			met++
+		} else {
+			t.Logf("%s: predicted %.0f, came %.0f", o.Pairing, o.Predicted, o.Came)
+		}
+	}
+	t.Logf("predictions at half time: %d of %d within 20 %%", met, all)
+	if all < 25 || float64(met) < 0.8*float64(all) {
+		t.Errorf("predictions at half time: %d of %d within 20 %%, want 80 %% of at least 25", met, all)
 	}
 }
 

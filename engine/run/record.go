@@ -45,6 +45,9 @@ func (t *Trial) record(r trace.Reading, first bool) {
 	t.look(r.Done)
 	t.learn()
 	t.judge(r, rec, own, a)
+	if !t.ended() {
+		t.predict(own)
+	}
 	t.thin()
 }
 

@@ -37,6 +37,7 @@ type Trial struct {
 	lanczos    *spectrum.Tridiagonal
 	lanczosAt  int // order at the last look
 	learned    learned
+	forecast   forecast
 	ending     ending
 	turned     bool // a negative curvature has been judged
 
