@@ -61,6 +61,7 @@ var outside = []struct {
 }{
 	{"github.com/charmbracelet/", []string{"tui", "tui/quiet"}},
 	{"github.com/guptarohit/asciigraph", []string{"tui", "engine/report"}},
+	{"gonum.org/v1/plot", []string{"engine/report"}},
 	{"github.com/spf13/cobra", []string{"cmd/dwindle"}},
 	{"github.com/rogpeppe/go-internal", nil},
 }
@@ -206,6 +207,7 @@ func TestImportJudge(t *testing.T) {
 		{"engine", "f.go", "github.com/charmbracelet/bubbletea"},
 		{"cmd/dwindle", "f.go", "github.com/charmbracelet/lipgloss"},
 		{"engine/run", "f.go", "github.com/guptarohit/asciigraph"},
+		{"tui", "f.go", "gonum.org/v1/plot/vg"},
 		{"cmd/dwindle", "f.go", "github.com/rogpeppe/go-internal/testscript"},
 		{"engine/helpers", "f.go", ""},
 	} {

@@ -22,10 +22,14 @@ func vectors(sys linear.System, d report.Document) []report.Vector {
 			}
 		}
 	}
-	if u := unreachable(sys); u != nil {
+	where := "left null space that pattern and sums show"
+	u := unreachable(sys)
+	if u == nil && d.Facts != nil && d.Facts.Study != nil && d.Facts.Symmetric.Answer == inspect.Yes {
+		u, where = along(sys.B, d.Facts.Study.Null), "span of the free directions"
+	}
+	if u != nil {
 		out = append(out, report.Vector{Name: "unreachable", Values: u, Comment: fmt.Sprintf(
-			"part of b that no x can reach, in the left null space that pattern and sums show: %.6g of the norm of b",
-			linear.Norm2(u)/linear.Norm2(sys.B))})
+			"part of b that no x can reach, in the %s: %.6g of the norm of b", where, linear.Norm2(u)/linear.Norm2(sys.B))})
 	}
 	for _, t := range d.Trials {
 		if v := t.Vectors[run.CurvatureVector]; v != nil {
@@ -82,6 +86,39 @@ func unreachable(s linear.System) []float64 {
 		return nil
 	}
 	return p
+}
+
+// freeToRounding is the quotient of a free direction up to which rounding
+// hides any answer of A.
+const freeToRounding = 1e-13
+
+// along projects b onto the free directions of a symmetric A; nil where there
+// is none or it is no more than rounding.
+func along(b []float64, free []inspect.NullDirection) []float64 {
+	var basis [][]float64 // orthonormal
+	part := make([]float64, len(b))
+	for _, d := range free {
+		if d.Quotient > freeToRounding || len(d.Vector) != len(b) {
+			continue
+		}
+		v := append([]float64{}, d.Vector...)
+		for range 2 { // twice is enough (Kahan, in Parlett 1980)
+			for _, q := range basis {
+				linear.Lin(v, 1, v, -linear.Dot(q, v), q)
+			}
+		}
+		size := linear.Norm2(v)
+		if size <= 1e-8*linear.Norm2(d.Vector) {
+			continue // within the others
+		}
+		linear.Lin(v, 1/size, v, 0, v)
+		basis = append(basis, v)
+		linear.Lin(part, 1, part, linear.Dot(v, b), v)
+	}
+	if linear.Norm2(part) <= 1e-10*linear.Norm2(b) {
+		return nil
+	}
+	return part
 }
 
 // shownTrial is the trial whose end is shown: the choice, else the last that ended.

@@ -133,3 +133,30 @@ func TestNoVectorsUnasked(t *testing.T) {
 		t.Error("vectors were kept")
 	}
 }
+
+// A frame without supports has three rigid motions (closed form): each vector
+// written is mapped to zero but for rounding in the products, and so is the part of b that pushes along them.
+func TestNullVectors(t *testing.T) {
+	a, vectors, comments, _ := vectorsOf(t, "frame:unsupported", "minres+none")
+	for _, name := range []string{"null-1", "null-2", "null-3", "unreachable"} {
+		v := vectors[name]
+		if v == nil {
+			t.Fatalf("no %s in %v", name, comments)
+		}
+		size := 0.0
+		for i := range v {
+			cols, vals := a.Row(i)
+			row := 0.0
+			for k, c := range cols {
+				row += math.Abs(vals[k] * v[c])
+			}
+			size = max(size, row)
+		}
+		if r := linear.NormInf(product(a, v)); !(r <= 1e-13*size) {
+			t.Errorf("%s: Av has %g, |A||v| %g", name, r, size)
+		}
+	}
+	if u := vectors["unreachable"]; linear.Norm2(u) < 0.1 {
+		t.Errorf("the dead load pushes along no motion: %g", linear.Norm2(u))
+	}
+}

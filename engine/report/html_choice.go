@@ -43,18 +43,15 @@ func rankingTable(c choose.Choice) markup {
 		if r.Pairing == c.Pairing {
 			name = element("b", name)
 		}
-		row := []markup{safe(strconv.Itoa(i + 1)), name}
-		if !r.Reached {
-			row = append(row, "not reached")
-			for range len(columns) - 3 {
-				row = append(row, "-")
-			}
-		} else {
-			row = append(row, words(rankedCells(r)...)...)
+		if r.Reached {
+			rows = append(rows, append([]markup{safe(strconv.Itoa(i + 1)), name}, words(rankedCells(r)...)...))
 		}
-		rows = append(rows, row)
 	}
-	return table(columns, rows)
+	out := table(columns, rows)
+	if missed := notReached(c); missed != "" {
+		out += element("p", safe("Not reached by "+missed+"."))
+	}
+	return out
 }
 
 // rankedCells are the numbers of one that reached the tolerance.

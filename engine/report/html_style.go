@@ -53,7 +53,7 @@ dl.head{grid-template-columns:minmax(0,1fr);gap:.1rem}dl.head dd{margin-bottom:.
 @media print{:root{color-scheme:light;--ground:#ffffff;--ink:#000000;--soft:#444c55;--faint:#b5bcc4;--goal:#a01820;--panel:#ffffff;
 --s0:#0b5cad;--s1:#a8420f;--s2:#1a7a3c;--s3:#7b3fb8;--s4:#8a6100;--s5:#b0256f;--s6:#007078;--s7:#5a5f66}
 body{max-width:none;padding:0;font-size:10pt}svg.broad{display:block}svg.narrow{display:none}.wide{overflow:visible}
-figure,.finding,tr,dl.head{break-inside:avoid}h2,h3{break-after:avoid}thead{display:table-header-group}
+details{display:none}figure,.finding,tr,dl.head{break-inside:avoid}h2,h3{break-after:avoid}thead{display:table-header-group}
 table{font-size:7.5pt}th,td{padding-right:.35rem}td code{white-space:normal;overflow-wrap:anywhere}.many{grid-template-columns:1fr 1fr}
 @page{margin:14mm}}
 `

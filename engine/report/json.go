@@ -64,9 +64,10 @@ type rankedJSON struct {
 	Reached    bool   `json:"reached"`
 	BreakEven  number `json:"break_even"`
 
-	Low  number    `json:"seconds_low"`
-	High number    `json:"seconds_high"`
-	For  []forJSON `json:"for"`
+	Low      number    `json:"seconds_low"`
+	High     number    `json:"seconds_high"`
+	For      []forJSON `json:"for"`
+	Expected number    `json:"seconds_expected"` // of one that did not reach it
 }
 
 // forJSON is the time predicted for a number of right-hand sides.
@@ -113,9 +114,17 @@ func toChoice(d Document) choiceJSON {
 			s = unknown
 		}
 		c.Ranked = append(c.Ranked, rankedJSON{tame(r.Pairing), s, r.Memory, number(r.Setup), r.Iterations,
-			r.Reached, number(r.BreakEven), measured(r.Low), measured(r.High), toFor(r)})
+			r.Reached, number(r.BreakEven), measured(r.Low), measured(r.High), toFor(r), expected(r)})
 	}
 	return c
+}
+
+// expected is when one that did not reach the tolerance was expected to.
+func expected(r choose.Ranked) number {
+	if r.Reached {
+		return unknown
+	}
+	return measured(r.Expected)
 }
 
 func toFor(r choose.Ranked) []forJSON {

@@ -24,14 +24,15 @@ func rankingList(c choose.Choice) []string {
 	}
 	lines := []string{head + " pays from |", rule + " --: |"}
 	for _, r := range c.Ranked {
-		cells := []string{"not reached"}
 		if r.Reached {
-			cells = rankedCells(r)
+			lines = append(lines, "| "+mark(r.Pairing)+" | "+strings.Join(rankedCells(r), " | ")+" |")
 		}
-		for len(cells) < 6+len(choose.Sides) {
-			cells = append(cells, "-")
-		}
-		lines = append(lines, "| "+mark(r.Pairing)+" | "+strings.Join(cells, " | ")+" |")
+	}
+	if len(lines) == 2 {
+		lines = nil
+	}
+	if missed := notReached(c); missed != "" {
+		lines = appendPart(lines, []string{"Not reached by " + mark(missed) + "."})
 	}
 	return lines
 }

@@ -16,7 +16,8 @@ type cloud struct {
 }
 
 // clouds lists what is known of eigenvalues off the real axis: those of A
-// where all are known, and the harmonic Ritz values of the trials.
+// where all are known, and the harmonic Ritz values of the trials; those that
+// lie on the axis are among the strips.
 func clouds(d Document) []cloud {
 	var out []cloud
 	if d.Facts != nil && d.Facts.Study != nil && d.Facts.Study.Raw != nil {
@@ -25,7 +26,7 @@ func clouds(d Document) []cloud {
 		}
 	}
 	for i, t := range d.Trials {
-		if len(t.Harmonic) > 0 {
+		if offAxis(t.Harmonic) {
 			out = append(out, cloud{string(digit(i)) + " harmonic Ritz values of " + plain(t.Pairing), t.Harmonic, curveInk(i)})
 		}
 	}

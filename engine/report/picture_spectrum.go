@@ -2,6 +2,7 @@ package report
 
 import (
 	"fmt"
+	"math"
 
 	"gonum.org/v1/plot"
 	"gonum.org/v1/plot/vg"
@@ -26,7 +27,7 @@ func strips(d Document) []strip {
 		s := d.Facts.Study
 		for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
 			if x != nil && finite(x.Smallest) && finite(x.Largest) {
-				out = append(out, strip{spectrumLabel(*x), x.Smallest, x.Largest, realValues(*x), inkText})
+				out = append(out, strip{valuesOf(d.Facts) + " of " + spectrumLabel(*x), x.Smallest, x.Largest, knownValues(*x, d.Facts), inkText})
 			}
 		}
 	}
@@ -34,8 +35,24 @@ func strips(d Document) []strip {
 		if s, ok := ritzStrip(i, t); ok {
 			out = append(out, s)
 		}
+		if s, ok := harmonicStrip(i, t); ok {
+			out = append(out, s)
+		}
 	}
 	return out
+}
+
+// harmonicStrip holds the harmonic Ritz values of an Arnoldi method where all
+// are real.
+func harmonicStrip(i int, t trace.History) (strip, bool) {
+	s := strip{low: math.Inf(1), high: math.Inf(-1), role: curveInk(i)}
+	for _, z := range t.Harmonic {
+		if x := real(z); finite(x) {
+			s.low, s.high, s.ticks = min(s.low, x), max(s.high, x), append(s.ticks, x)
+		}
+	}
+	s.label = fmt.Sprintf("%c %s, harmonic Ritz values: %s to %s", digit(i), plain(t.Pairing), short(s.low), short(s.high))
+	return s, len(s.ticks) > 0 && !offAxis(t.Harmonic)
 }
 
 func spectrumLabel(x inspect.Spectrum) string {
@@ -49,16 +66,15 @@ func spectrumLabel(x inspect.Spectrum) string {
 	return s + ", " + plain(string(x.Certainty))
 }
 
-// realValues are the known values of a spectrum on the real axis.
-func realValues(x inspect.Spectrum) []float64 {
-	if len(x.Values) == 0 {
+// knownValues are the eigenvalues that are known of a symmetric operator, the
+// singular values of another one.
+func knownValues(x inspect.Spectrum, f *inspect.Facts) []float64 {
+	if len(x.Values) == 0 || f.Symmetric.Answer != inspect.Yes {
 		return append(append([]float64{}, x.Low...), x.High...)
 	}
 	var out []float64
 	for _, z := range x.Values {
-		if imag(z) == 0 {
-			out = append(out, real(z))
-		}
+		out = append(out, real(z))
 	}
 	return out
 }

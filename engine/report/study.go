@@ -25,7 +25,7 @@ func studyItems(f *inspect.Facts) []labelled {
 	}
 	for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
 		if x != nil {
-			add("spectrum", spectrumText(*x))
+			add(valuesOf(f), spectrumText(*x))
 		}
 	}
 	if finite(s.Digits) && (s.Digits != 0 || s.Raw != nil) {
@@ -51,10 +51,22 @@ func studyItems(f *inspect.Facts) []labelled {
 	return out
 }
 
+// valuesOf says of what kind the ends of a spectrum are.
+func valuesOf(f *inspect.Facts) string {
+	if f.Symmetric.Answer == inspect.Yes {
+		return "eigenvalues"
+	}
+	return "singular values"
+}
+
 func spectrumText(x inspect.Spectrum) string {
 	s := fmt.Sprintf("of %s: %s to %s", x.Of, short(x.Smallest), short(x.Largest))
 	if finite(x.Condition) && x.Condition > 0 {
-		s += fmt.Sprintf(", condition %s", short(x.Condition))
+		least := ""
+		if x.Certainty == inspect.Estimated { // an end that is not settled lies inside
+			least = "at least "
+		}
+		s += fmt.Sprintf(", condition %s%s", least, short(x.Condition))
 		if x.Norm != "" {
 			s += " in the " + x.Norm + "-norm"
 		}
@@ -78,6 +90,9 @@ func nullText(v inspect.NullDirection, f *inspect.Facts) string {
 	}
 	if v.Rigid != "" {
 		s += ", a " + v.Rigid
+	}
+	if v.Load > 0 && finite(v.Load) {
+		s += fmt.Sprintf(", b pushes along it with %s of its norm", short(v.Load))
 	}
 	if v.Support > 0 {
 		s += fmt.Sprintf("; 99 %% of it lies in %s", plural(v.Support, "row", "rows"))

@@ -162,11 +162,13 @@ func rowName(row int, facts *inspect.Facts) string {
 func choiceLines(d Document) []string {
 	var lines []string
 	for i, r := range d.Choice.Ranked {
-		what := "did not reach the tolerance"
 		if r.Reached {
-			what = strings.Join(append(rankedWords(r), aheadWords(r)...), ", ")
+			what := strings.Join(append(rankedWords(r), aheadWords(r)...), ", ")
+			lines = append(lines, hang(fmt.Sprintf("%2d ", i+1), plain(r.Pairing)+": "+what, Width)...)
 		}
-		lines = append(lines, hang(fmt.Sprintf("%2d ", i+1), plain(r.Pairing)+": "+what, Width)...)
+	}
+	if missed := notReached(d.Choice); missed != "" {
+		lines = append(lines, hang(" - ", plain("not reached by "+missed), Width)...)
 	}
 	if len(lines) > 0 {
 		lines = append([]string{"ranking, by own time to the tolerance"}, lines...)
@@ -199,6 +201,22 @@ func aheadWords(r choose.Ranked) []string {
 		}
 	}
 	return words
+}
+
+// notReached lists the pairings that did not reach the tolerance, with the time
+// in which they were expected to, where that is known.
+func notReached(c choose.Choice) string {
+	var list []string
+	for _, r := range c.Ranked {
+		switch {
+		case r.Reached:
+		case r.Expected > 0 && finite(r.Expected):
+			list = append(list, r.Pairing+" (expected in "+seconds(r.Expected)+")")
+		default:
+			list = append(list, r.Pairing)
+		}
+	}
+	return strings.Join(list, ", ")
 }
 
 // settingLines tells under what conditions the numbers were measured.
