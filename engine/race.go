@@ -64,11 +64,18 @@ func (s *Session) lead(b *run.Bench, r *race) bool {
 }
 
 // steer lets the session move the trials on between rounds: the race, where
-// there is one.
+// there is one, and when all have ended the reruns that tell how far rounding
+// moves a count.
 func (s *Session) steer(b *run.Bench) {
 	r := s.race
-	if r == nil {
+	if r == nil && s.rerunBudget() <= 0 {
 		return
 	}
-	b.Steer(func() bool { return s.lead(b, r) })
+	b.Steer(func() bool {
+		if r != nil && s.lead(b, r) || b.Live() {
+			return true
+		}
+		s.rerun(b)
+		return false
+	})
 }

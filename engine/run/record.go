@@ -43,7 +43,9 @@ func (t *Trial) record(r trace.Reading, first bool) {
 	}
 	t.mu.Unlock()
 	t.look(r.Done)
-	t.learn()
+	if !t.quiet {
+		t.learn()
+	}
 	t.judge(r, rec, own, a)
 	if !t.ended() {
 		t.predict(own)

@@ -115,8 +115,10 @@ func (t *Trial) begun(r trace.Reading) {
 	t.mu.Lock()
 	t.hist.Stop = trace.Running
 	t.mu.Unlock()
-	t.probe()
-	if t.method.Solver.Lanczos || t.method.Solver.Tridiagonal {
+	if !t.quiet {
+		t.probe()
+	}
+	if !t.quiet && (t.method.Solver.Lanczos || t.method.Solver.Tridiagonal) {
 		t.lanczos = new(spectrum.Tridiagonal)
 	}
 	t.record(r, true)

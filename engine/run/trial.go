@@ -40,6 +40,7 @@ type Trial struct {
 	forecast   forecast
 	ending     ending
 	turned     bool // a negative curvature has been judged
+	quiet      bool // nobody sees it: no probes, no look at its coefficients
 
 	ways  [2][]float64 // iterates on the way, where vectors are asked for; the older first
 	wayAt int          // iteration of the later one
