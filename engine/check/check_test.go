@@ -296,6 +296,18 @@ func TestUnsolvedRowIsNamed(t *testing.T) {
 	}
 }
 
+// What overflows is never called solved.
+func TestOverflowIsNotSolved(t *testing.T) {
+	for _, rule := range []string{"rhs", "initial", "backward", "absolute"} {
+		for _, x := range []float64{1e308, -1.7e308, math.MaxFloat64} {
+			a := asked(t, dense([]float64{3, 1}, []float64{-1e10, 2}), []float64{3, 1}, []float64{x, x}, func(q *Question) { q.Rule = rule })
+			if a.Solved || !strings.Contains(a.Verdict, "not a finite number") {
+				t.Errorf("%s, x = %g: %s", rule, x, a.Verdict)
+			}
+		}
+	}
+}
+
 func TestFieldToleranceDecidesAsWell(t *testing.T) {
 	m := dense([]float64{1, 0}, []float64{0, 1})
 	for _, p := range []struct {

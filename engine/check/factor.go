@@ -53,7 +53,7 @@ func (w *work) sumsToZero() bool {
 // factor factorises A within the limits and measures condition and error.
 func (w *work) factor() error {
 	if w.sumsToZero() {
-		w.out.NoFactor = "A is singular: its rows sum to zero, so that x is determined only up to a constant"
+		w.out.NoFactor = "A is singular: the rows of a connected part of it sum to zero, and x is open there by a constant"
 		return nil
 	}
 	f, err := w.factorise()

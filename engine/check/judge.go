@@ -26,7 +26,11 @@ func (w *work) judge() {
 	out, tol := w.out, w.q.Tol
 	d, ok := out.Definition(ruleOf[w.q.Rule])
 	if !ok { // without x₀ the first residual is b
-		d, _ = out.Definition("rhs")
+		d, ok = out.Definition("rhs")
+	}
+	if !ok || !finite(out.Residual.Two) {
+		out.Verdict = "not solved: b-Ax is not a finite number"
+		return
 	}
 	if !(d.Value <= tol) {
 		out.Verdict = fmt.Sprintf("not solved: %s = %s, the rule asks for %.3g", d.Formula, num(d.Value), tol)
@@ -69,12 +73,20 @@ func (w *work) claim(m *Match) string {
 		words = append(words, text)
 		onlyMinimal = onlyMinimal && f.Definition.Kind == Minimal
 	}
-	text := said + " is " + strings.Join(words, ", or ")
+	text := said + " is " + strings.Join(words[:min(len(words), mostFits)], ", or ")
+	if more := len(words) - mostFits; more > 0 {
+		text += fmt.Sprintf(", or %d more of the measures below", more)
+	}
 	if rhs, ok := w.out.Definition("rhs"); ok && onlyMinimal && rhs.Value > 10*m.Said.size() {
 		text += fmt.Sprintf(": a measure that does not look at b; ||r||2/||b||2 is %s", num(rhs.Value))
 	}
 	return text
 }
+
+// mostFits is how many definitions a claim names.
+const mostFits = 4
+
+func finite(x float64) bool { return !math.IsNaN(x) && !math.IsInf(x, 0) }
 
 func steps(first, last int) string {
 	if first == last {
@@ -194,7 +206,7 @@ func (w *work) atBest() {
 	if k := w.out.Running.Condition; f == nil && w.tooLarge && k > 1 {
 		w.hint("the condition of A is at least %s by its Ritz values: the relative error of x can be so many times ||r||2/||b||2", num(k))
 	}
-	if f == nil || !f.Sure {
+	if f == nil || !f.Sure || f.ErrorInf == 0 {
 		return
 	}
 	text := fmt.Sprintf("x is off by %s of its largest entry: about %.0f correct digits, of about %.0f that a stable solver can be expected to give",

@@ -132,7 +132,7 @@ func (w *work) withStart() {
 // passes says whether x has the residual of the method's iterate after k steps.
 func (w *work) passes(k int) bool {
 	two := w.out.Residual.Two
-	return math.Abs(w.out.Running.Residuals[k-1]-two) <= alike*two
+	return two > 0 && math.Abs(w.out.Running.Residuals[k-1]-two) <= alike*two
 }
 
 // runningMeasure adds what the method tests, ‖r‖₂/(‖A‖‖x‖₂), where x passes as
