@@ -8,6 +8,9 @@
 //	5  choose    findings + histories → line-up and ranked choice
 //	6  report    document → text, JSON, CSV, Markdown
 //
+// Beside them stands check, which judges a solution from elsewhere without
+// any trial.
+//
 // The materials they work with are nouns: linear (operators, matrix, kernels,
 // pairing grammar), prepare (system → system, with the way back), trace
 // (records, events, endings), krylov and precond (methods, with their
