@@ -16,7 +16,7 @@ const (
 // by as many iterations it comes later. Told of one trial, see plainest.
 var lostOrthogonality = Rule{"lost-orthogonality", func(c Case) []Finding {
 	h, ok := plainest(c, func(h trace.History) bool {
-		return h.Delay >= delayLeast && float64(h.Delay) >= delayShare*float64(h.Iterations)
+		return h.FloorHits == 0 && h.Delay >= delayLeast && float64(h.Delay) >= delayShare*float64(h.Iterations)
 	})
 	if !ok {
 		return nil

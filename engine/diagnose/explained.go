@@ -19,7 +19,7 @@ const (
 // one trial, see plainest.
 var explained = Rule{"condition", func(c Case) []Finding {
 	h, ok := plainest(c, func(h trace.History) bool {
-		return h.Energy && h.Condition.Settled && h.Iterations >= knownFrom
+		return solved(h) && h.Energy && h.Condition.Settled && h.Iterations >= knownFrom
 	})
 	if !ok {
 		return nil

@@ -20,21 +20,37 @@ var outliers = Rule{"small-outliers", func(c Case) (out []Finding) {
 		if !ok || !solved(h) || !worth(h, w) || singletonsMakeThem(h, w) {
 			continue
 		}
-		prep, _, m := cut(h.Pairing)
-		try := fmt.Sprintf("%sdcg:%d+%s", prep, w.Removed, m)
-		f := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: h.Pairing,
+		f := Finding{Weight: Note, Certainty: inspect.Estimated, Subject: h.Pairing,
 			Claim: fmt.Sprintf("%s of %s %s far below the rest (up to %s, then %s): deflating %s gives about %d its in place of %d",
 				count(w.Removed, "eigenvalue"), spectrumOf(h), verb(w.Removed, "lies", "lie"), num(w.Largest), num(w.Next),
 				itOrThem(w.Removed), w.Iterations, h.Iterations),
-			Advice: "take them out: deflate, or use a preconditioner that lifts them",
-			Try:    []string{try},
+			Advice: "use a preconditioner that lifts them, or deflate vectors that are known: to find them takes as many products as are saved",
 			Evidence: []Evidence{number("largest eigenvalue apart", w.Largest, ""), number("smallest of the rest", w.Next, ""),
-				number("iterations without them", float64(w.Iterations), "predicted")},
-			Predicts: []Predicted{{Pairing: try, Quantity: "iterations", Value: float64(w.Iterations)}}}
+				number("iterations without them", float64(w.Iterations), "predicted")}}
+		if found(h, w) {
+			prep, _, m := cut(h.Pairing)
+			f.Weight = Drag
+			f.Advice = "take them out: deflate, which finds them first and pays over several right-hand sides; or use a preconditioner that lifts them"
+			f.Try = []string{fmt.Sprintf("%sdcg:%d+%s", prep, w.Removed, m)}
+			f.Predicts = []Predicted{{Pairing: f.Try[0], Quantity: "iterations", Value: float64(w.Iterations)}}
+		}
 		out = append(out, f)
 	}
 	return out
 }}
+
+// found says whether deflated cg is likely to find the eigenvectors: it looks
+// for k in a Krylov space of 2k+20 vectors, restarted, and does where the
+// trial's own Ritz values had settled within half as many steps more.
+func found(h trace.History, w trace.Counterfactual) bool {
+	within := 1.5 * float64(2*w.Removed+20)
+	for _, l := range h.Locks {
+		if l.Value <= w.Largest && float64(l.Iter) > within {
+			return false
+		}
+	}
+	return true
+}
 
 // worth says whether a change saves enough to be tried.
 func worth(h trace.History, w trace.Counterfactual) bool {

@@ -6,7 +6,7 @@ import (
 	"dwindle/engine/trace"
 )
 
-// plainest returns the one solved trial of which the curve of conjugate
+// plainest returns the one ended trial of which the curve of conjugate
 // gradients is explained, if the rule has something to say of it: today's;
 // where none is, the first without a preconditioner, else with jacobi, else
 // the only trial there is. So a session of many trials is told once what its
@@ -39,9 +39,14 @@ func plain(h trace.History, only bool) int {
 	return len(plainness)
 }
 
-// explainable says that a trial solved the system within the assumptions of
-// its method: what its coefficients tell is worth nothing else.
+// explainable says that a trial came to an end of its own within the
+// assumptions of its method: what the coefficients of another tell is worth
+// nothing.
 func explainable(c Case, h trace.History) bool {
 	_, outside := assumption(c.Facts, h)
-	return solved(h) && !outside && !h.Condition.Negative
+	switch h.Stop {
+	case trace.Converged, trace.LeastSquares, trace.FalselyConverged, trace.IterationLimit, trace.TimeLimit, trace.Stagnated:
+		return !outside && !h.Condition.Negative
+	}
+	return false
 }

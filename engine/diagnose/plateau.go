@@ -21,7 +21,7 @@ const (
 var plateau = Rule{"plateau", func(c Case) []Finding {
 	h, ok := plainest(c, func(h trace.History) bool {
 		_, ok := standstill(h)
-		return ok
+		return ok && !outOfReach(c)
 	})
 	if !ok {
 		return nil

@@ -16,7 +16,7 @@ const rises = 5
 var residualRises = Rule{"residual-rises", func(c Case) []Finding {
 	h, ok := plainest(c, func(h trace.History) bool {
 		p, e := peak(h)
-		return e < 1 && p.growth >= rises && h.Energy
+		return e < 1 && !outOfReach(c) && p.growth >= rises && h.Energy
 	})
 	if !ok {
 		return nil

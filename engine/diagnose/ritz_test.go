@@ -94,6 +94,11 @@ func TestOutliersThatPay(t *testing.T) {
 	if !ok || len(f.Try) != 1 || f.Try[0] != "dcg:2+jacobi" || f.Predicts[0] != (Predicted{"dcg:2+jacobi", "iterations", 20}) {
 		t.Errorf("%+v", f)
 	}
+	late := of(pays)
+	late.Locks = []trace.Lock{{Value: 1e-3, Iter: 55, Copies: 1}}
+	if f := said(caseOf(definite(), late))["small-outliers"]; f.Weight != Note || f.Try != nil || f.Predicts != nil {
+		t.Errorf("deflation would not find it: %+v", f)
+	}
 	for _, h := range []trace.History{of(little), of(pays, rows), of()} {
 		if f, ok := said(caseOf(definite(), h))["small-outliers"]; ok {
 			t.Errorf("%v: %s", h.Without, f.Claim)

@@ -18,7 +18,7 @@ const (
 var superlinear = Rule{"superlinear", func(c Case) []Finding {
 	h, ok := plainest(c, func(h trace.History) bool {
 		_, gain := halves(h)
-		return gain >= fasterBy && h.Iterations >= fasterFrom
+		return solved(h) && gain >= fasterBy && h.Iterations >= fasterFrom
 	})
 	if !ok {
 		return nil
