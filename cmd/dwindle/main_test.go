@@ -122,9 +122,9 @@ func TestSecondSignal(t *testing.T) {
 func TestOptions(t *testing.T) {
 	root := rootCommand()
 	for path, want := range map[string]string{
-		"":        "pair today guess dofs null coordinates split tol stop iterations seconds trial-seconds rhs threads memory identify as out history solution glyphs rate",
-		"run":     "pair today guess dofs null coordinates split tol stop iterations seconds trial-seconds rhs threads memory identify as out history solution strict",
-		"facts":   "rhs threads memory identify as out",
+		"":        "pair today goal columns guess null coordinates split tol tol-field stop iterations seconds trial-seconds rhs labels fields dofs threads memory identify as out history solution session vectors glyphs rate",
+		"run":     "pair today goal columns guess null coordinates split tol tol-field stop iterations seconds trial-seconds rhs labels fields dofs threads memory identify as out history solution session vectors strict",
+		"facts":   "rhs labels fields dofs threads memory identify as out",
 		"sample":  "out",
 		"methods": "measure threads",
 	} {
