@@ -22,16 +22,17 @@ type ilutWork struct {
 	w       []float64 // the row under work, by column; length n
 	at      []int32   // i+1 while column j belongs to row i; length n
 	low     intHeap   // positions left of the diagonal still to be eliminated
-	lcol    []int32   // positions kept for L
-	lval    []float64
-	ucol    []int32 // columns met right of the diagonal
-	uval    []float64
+	ucol    []int32   // columns met right of the diagonal
 	sizes   []float64
 }
 
+// roomFor is how many entries of a factor room is taken for at once, for each
+// entry of A: memory that is never touched costs nothing.
+const roomFor = 4
+
 func newILUTWork(a *linear.CSR, name string, tau float64, p int, permtol float64) *ilutWork {
 	n := a.NRows
-	room := min(n*min(p, n)/2, a.Entries())
+	room := min(capped(n, p), roomFor*a.Entries())
 	k := &ilutWork{a: a, name: name, tau: tau, p: p, permtol: permtol,
 		f:   &factors{lower: triangle(n, room), upper: triangle(n, room), inverse: linear.Bulk[float64](n)},
 		pos: linear.Bulk[int32](n), col: linear.Bulk[int32](n), w: linear.Bulk[float64](n), at: linear.Bulk[int32](n)}
@@ -46,7 +47,9 @@ func newILUTWork(a *linear.CSR, name string, tau float64, p int, permtol float64
 func (k *ilutWork) row(i int) (float64, error) {
 	cols, vals := k.a.Row(i)
 	drop := k.tau * norm2(vals)
-	k.low, k.lcol, k.lval, k.ucol = k.low[:0], k.lcol[:0], k.lval[:0], k.ucol[:0]
+	l := k.f.lower
+	start := len(l.Col)
+	k.low, k.ucol = k.low[:0], k.ucol[:0]
 	k.meet(i, k.col[i], 0)
 	for p, c := range cols {
 		if k.at[c] != int32(i+1) {
@@ -58,18 +61,33 @@ func (k *ilutWork) row(i int) (float64, error) {
 		c := k.low.pop()
 		if t := k.w[k.col[c]]; math.Abs(t) > drop {
 			k.eliminate(i, c, t)
-			k.lcol, k.lval = append(k.lcol, c), append(k.lval, t*k.f.inverse[c])
+			makeRoom(l, i, 1)
+			l.Col, l.Val = append(l.Col, c), append(l.Val, t*k.f.inverse[c])
 		}
 	}
-	k.choose(i, drop)
+	end := start + k.largest(l.Col[start:], l.Val[start:])
+	l.Col, l.Val, l.Ptr[i+1] = l.Col[:end], l.Val[:end], end
+	return k.finishUpper(i, drop)
+}
+
+// finishUpper stores row i of R and returns the pivot.
+func (k *ilutWork) finishUpper(i int, drop float64) (float64, error) {
+	cols, vals := k.keep(i, drop)
 	if k.permtol > 0 {
-		k.exchange(i)
+		cols, vals = k.exchange(i, cols, vals)
 	}
 	d := k.w[k.col[i]]
 	if unusable(d) {
 		return d, &Breakdown{Method: k.name, Row: i, Pivot: d, Why: "the pivot has no inverse"}
 	}
-	k.store(i, 1/d)
+	sortRow(cols, vals)
+	k.f.inverse[i] = 1 / d
+	for p := range vals {
+		vals[p] *= k.f.inverse[i]
+	}
+	r := k.f.upper
+	end := r.Ptr[i] + len(cols)
+	r.Col, r.Val, r.Ptr[i+1] = r.Col[:end], r.Val[:end], end
 	return d, nil
 }
 
@@ -87,63 +105,56 @@ func (k *ilutWork) meet(i int, c int32, v float64) {
 func (k *ilutWork) eliminate(i int, c int32, t float64) {
 	rc, rv := k.f.upper.Row(int(c))
 	rv = rv[:len(rc)]
+	at, w := k.at, k.w
+	w = w[:len(at)]
 	for p, j := range rc {
-		if k.at[j] == int32(i+1) {
-			k.w[j] -= t * rv[p]
+		if at[j] == int32(i+1) {
+			w[j] -= t * rv[p]
 		} else {
 			k.meet(i, j, -t*rv[p])
 		}
 	}
 }
 
-// choose drops what is small or not among the p largest.
-func (k *ilutWork) choose(i int, drop float64) {
-	k.uval = k.uval[:0]
-	kept := k.ucol[:0]
+// keep puts what is not small, and among the p largest, at the end of R and
+// returns it.
+func (k *ilutWork) keep(i int, drop float64) (cols []int32, vals []float64) {
+	r := k.f.upper
+	makeRoom(r, i, len(k.ucol))
+	start := len(r.Col)
+	cols, vals = r.Col[start:start+len(k.ucol)], r.Val[start:start+len(k.ucol)]
+	n := 0
 	for _, j := range k.ucol {
 		if v := k.w[j]; math.Abs(v) > drop {
-			kept, k.uval = append(kept, j), append(k.uval, v)
+			cols[n], vals[n] = j, v
+			n++
 		}
 	}
-	nl := k.largest(k.lcol, k.lval)
-	nu := k.largest(kept, k.uval)
-	k.lcol, k.lval, k.ucol, k.uval = k.lcol[:nl], k.lval[:nl], kept[:nu], k.uval[:nu]
+	n = k.largest(cols[:n], vals[:n])
+	return cols[:n], vals[:n]
 }
 
 // exchange moves the column of the largest entry to the diagonal where it
-// outgrows the diagonal entry by more than 1/permtol.
-func (k *ilutWork) exchange(i int) {
+// outgrows the diagonal entry by more than 1/permtol, and returns the rest.
+func (k *ilutWork) exchange(i int, cols []int32, vals []float64) ([]int32, []float64) {
 	diag := k.col[i]
 	best, at := math.Abs(k.w[diag]), -1
-	for p, v := range k.uval {
+	for p, v := range vals {
 		if math.Abs(v)*k.permtol > best {
 			best, at = math.Abs(v)*k.permtol, p
 		}
 	}
 	if at < 0 {
-		return
+		return cols, vals
 	}
-	j := k.ucol[at]
+	j := cols[at]
 	q := k.pos[j]
 	k.col[i], k.col[q], k.pos[j], k.pos[diag] = j, diag, int32(i), q
-	k.ucol[at], k.uval[at] = diag, k.w[diag]
+	cols[at], vals[at] = diag, k.w[diag]
 	if k.w[diag] == 0 {
-		k.ucol, k.uval = slices.Delete(k.ucol, at, at+1), slices.Delete(k.uval, at, at+1)
+		return slices.Delete(cols, at, at+1), slices.Delete(vals, at, at+1)
 	}
-}
-
-// store appends row i of L and of R.
-func (k *ilutWork) store(i int, inverse float64) {
-	l, r := k.f.lower, k.f.upper
-	makeRoom(l, i, len(k.lcol))
-	makeRoom(r, i, len(k.ucol))
-	l.Col, l.Val = append(l.Col, k.lcol...), append(l.Val, k.lval...)
-	sortRow(k.ucol, k.uval)
-	for p, j := range k.ucol {
-		r.Col, r.Val = append(r.Col, j), append(r.Val, k.uval[p]*inverse)
-	}
-	l.Ptr[i+1], r.Ptr[i+1] = len(l.Col), len(r.Col)
-	k.f.inverse[i] = inverse
+	return cols, vals
 }
 
 // finish puts positions for columns in R.
