@@ -101,7 +101,7 @@ func doubled(solver string) (string, bool) {
 // residual for another reason, and is told so.
 var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
-		if h.FloorHits < 5 || solved(h) {
+		if h.FloorHits < 5 || solved(h) || missed(h) != nil && normMet(c, h) {
 			continue
 		}
 		if _, outside := assumption(c.Facts, h); outside {

@@ -17,6 +17,10 @@ func TestUnsolvedField(t *testing.T) {
 	if !ok || f.Certainty != inspect.Measured || !strings.Contains(f.Claim, "field p (40 rows) ends at 0.3") || f.Try[0] != "scale/cg+none" {
 		t.Errorf("%v %+v", ok, f)
 	}
+	h.FloorHits, h.Floor, h.BestTrue, h.Residual = 7, 1e-9, 1e-9, 1e-14
+	if f, ok := said(caseOf(definite(), h))["accuracy-floor"]; ok {
+		t.Errorf("a floor below the tolerance is told as one above: %s", f.Claim)
+	}
 	for what, change := range map[string]func(*trace.History){
 		"a field without a tolerance of its own": func(h *trace.History) { h.Fields = []trace.Field{{Name: "p", Residual: 0.3}} },
 		"a field that holds":                     func(h *trace.History) { h.Fields = []trace.Field{{Name: "p", Residual: 1e-7, Tol: 1e-6}} },
