@@ -3,7 +3,6 @@ package run
 import (
 	"math"
 
-	"dwindle/engine/krylov"
 	"dwindle/engine/spectrum"
 	"dwindle/engine/trace"
 )
@@ -21,8 +20,6 @@ const (
 	lowLocks  = 12   // Ritz values told, at each end
 	highLocks = 6
 	mostEnd   = 6000 // steps looked at at the end, where the work allows
-	errorGrid = 64   // energy errors are told at each of the first iterations,
-	errorStep = 1.03 // then at steps of this ratio
 )
 
 // learned is what was made of a trial's coefficients so far.
@@ -111,57 +108,6 @@ func (t *Trial) lookedAt(k int, stop trace.Stop) int {
 	return max(first, allowed)
 }
 
-// tellErrors writes the energy errors at growing iterations, as far as they
-// are trusted, relative to the first.
-func (t *Trial) tellErrors() {
-	mu, proved := t.smallest()
-	e := spectrum.EnergyErrors(t.hist.Alphas, t.hist.Betas, mu)
-	if len(e.Lower) < len(t.hist.Alphas) {
-		e.Trusted = 0 // A or M is not definite: there is no such norm
-	}
-	if e.Trusted == 0 {
-		t.mu.Lock()
-		t.hist.EnergyErrors = nil
-		t.mu.Unlock()
-		return
-	}
-	low0, high0 := e.Lower[0], e.Upper[0]
-	if math.IsNaN(high0) {
-		high0 = low0
-	}
-	var out []trace.EnergyError
-	for k, next := 0, 0; k < e.Trusted; k++ {
-		if k < next {
-			continue
-		}
-		next = max(k+1, int(float64(k)*errorStep))
-		if k < errorGrid {
-			next = k + 1
-		}
-		out = append(out, trace.EnergyError{Iter: k, Lower: e.Lower[k] / high0, Upper: e.Upper[k] / low0})
-	}
-	t.mu.Lock()
-	t.hist.EnergyErrors, t.hist.EnergyProved = out, proved
-	t.mu.Unlock()
-}
-
-// below is what of the smallest settled Ritz value is taken as a lower bound
-// of the spectrum.
-const below = 0.9
-
-// smallest returns a lower bound of the spectrum of M⁻¹A: a proved one of A
-// where it is known and there is no M, else an estimate from the smallest Ritz
-// value once it has settled, or NaN.
-func (t *Trial) smallest() (mu float64, proved bool) {
-	if t.limits.Smallest > 0 && t.method.Precond.Name == "none" && t.back == nil {
-		return t.limits.Smallest, true
-	}
-	if c := t.hist.Condition; c.Settled && !c.Negative {
-		return below * c.Smallest, false
-	}
-	return math.NaN(), false
-}
-
 // tellLocks takes the Lanczos matrix of the first k steps apart and writes
 // which Ritz values have settled. It returns the clusters and how many of the
 // steps went into ghosts.
@@ -181,27 +127,3 @@ func (t *Trial) tellLocks(k int) (c []spectrum.Cluster, ghosts int) {
 	t.mu.Unlock()
 	return c, q.Ghosts(c)
 }
-
-// seeCycle keeps the harmonic Ritz values of whole cycles at growing counts.
-func (t *Trial) seeCycle() {
-	s, ok := t.solver.(krylov.Cycler)
-	if !ok {
-		return
-	}
-	hbar, m := s.Cycle()
-	if hbar == nil {
-		return
-	}
-	t.learned.cycles++
-	if t.learned.cycles < t.learned.nextAt || m > longestCycle {
-		return
-	}
-	t.learned.nextAt = t.learned.cycles + max(1, t.learned.cycles/2)
-	values := spectrum.NewHarmonic(m).Values(hbar)
-	t.mu.Lock()
-	t.hist.Harmonic = values
-	t.mu.Unlock()
-}
-
-// longestCycle bounds the cycles whose eigenvalues are looked at.
-const longestCycle = 120
