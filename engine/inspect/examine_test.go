@@ -3,6 +3,7 @@ package inspect_test
 import (
 	"context"
 	"math"
+	"math/big"
 	"reflect"
 	"testing"
 
@@ -331,4 +332,45 @@ func TestStudyRepeats(t *testing.T) {
 	if _, err := inspect.Examine(ctx, s, f, inspect.Quick, nil); err == nil {
 		t.Error("a cancelled study is no error")
 	}
+}
+
+// The free directions of a singular nonsymmetric matrix are as many as its rank
+// lacks, counted by exact elimination, and A maps each to zero.
+func TestFreeDirectionsOfJgl009(t *testing.T) {
+	sys := open(t, "jgl009.mtx")
+	free := studied(t, sys, inspect.Quick).Study.Null
+	if missing := 9 - rank(sys.Matrix()); len(free) != missing || missing == 0 {
+		t.Errorf("%d directions, the rank lacks %d", len(free), missing)
+	}
+	w := make([]float64, 9)
+	for _, d := range free {
+		sys.A.Apply(w, d.Vector)
+		if linear.NormInf(w) > 1e-13 {
+			t.Errorf("A v = %g", w)
+		}
+	}
+}
+
+// rank by elimination in rational numbers.
+func rank(a *linear.CSR) int {
+	m := rational(a)
+	r := 0
+	for j := range m {
+		p := r
+		for p < len(m) && m[p][j].Sign() == 0 {
+			p++
+		}
+		if p == len(m) {
+			continue
+		}
+		m[r], m[p] = m[p], m[r]
+		for i := r + 1; i < len(m); i++ {
+			f := new(big.Rat).Quo(m[i][j], m[r][j])
+			for k := j; k < len(m); k++ {
+				m[i][k].Sub(m[i][k], new(big.Rat).Mul(f, m[r][k]))
+			}
+		}
+		r++
+	}
+	return r
 }

@@ -77,7 +77,7 @@ func (e *exam) quotient(v []float64, norm float64) float64 {
 // NaN where that is not known.
 func (e *exam) searchFree(norm float64, quotients *[]float64) (next float64, err error) {
 	if e.solver == nil {
-		return math.NaN(), nil
+		return e.denseFree(norm, quotients), nil
 	}
 	for len(e.free) < mostFree {
 		v, err := e.mostStretched()
@@ -92,6 +92,23 @@ func (e *exam) searchFree(norm float64, quotients *[]float64) (next float64, err
 		*quotients = append(*quotients, q)
 	}
 	return math.NaN(), nil
+}
+
+// denseFree finds them densely, where A is singular, not symmetric, and
+// small: the last vector is the first that is not nearly free.
+func (e *exam) denseFree(norm float64, quotients *[]float64) (next float64) {
+	next = math.NaN()
+	if !e.singular || e.symmetric || !e.densely(e.f.N, 20) {
+		return next
+	}
+	for _, v := range spectrum.DenseNull(e.scaled, 1) {
+		q := e.quotient(v, norm)
+		if q > freeLimit || len(e.free) == mostFree {
+			return q
+		}
+		e.free, *quotients = append(e.free, v), append(*quotients, q)
+	}
+	return next
 }
 
 // mostStretched is the unit vector beside the free ones that the inverse of B

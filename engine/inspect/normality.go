@@ -21,6 +21,9 @@ func (e *exam) normality() error {
 	at, bt := e.a.Transpose(), e.scaled.Transpose()
 	m.Henrici = spectrum.HenriciBound(e.a, at, balancingSweeps)
 	m.Equilibrated = spectrum.HenriciBound(e.scaled, bt, balancingSweeps)
+	if rows := e.f.RowEntries.Max; e.spend(40 * rows * float64(len(e.a.Val))) {
+		m.Henrici = max(m.Henrici, spectrum.CommutatorBound(e.a, at))
+	}
 	if x := e.out.Raw; x != nil && x.Exact {
 		m.LeftmostRe, m.RightRe = real(x.Values[0]), real(x.Values[len(x.Values)-1])
 		m.Henrici, m.Exact = spectrum.Henrici(x.Values, e.f.NormFro), true
@@ -31,7 +34,32 @@ func (e *exam) normality() error {
 		}
 	}
 	e.out.Normality = m
-	return e.field(m, e.a, at)
+	if err := e.field(m, e.a, at); err != nil || m.Exact {
+		return err
+	}
+	return e.outermost(m)
+}
+
+// ritzSteps is how many steps of the Arnoldi process look for the outermost
+// eigenvalues.
+const ritzSteps = 40
+
+// outermost tells the extreme real parts of the eigenvalues, where not all are
+// known, by Ritz values.
+func (e *exam) outermost(m *Normality) error {
+	if !e.spend(ritzSteps * (e.product() + 4*ritzSteps*float64(e.f.N))) {
+		return nil
+	}
+	values, err := spectrum.Arnoldi(e.ctx, e.f.N, e.a.Apply, ritzSteps)
+	for _, v := range values {
+		if !(m.LeftmostRe <= real(v)) {
+			m.LeftmostRe = real(v)
+		}
+		if !(m.RightRe >= real(v)) {
+			m.RightRe = real(v)
+		}
+	}
+	return err
 }
 
 // field measures the field of values: the ends of the symmetric part, and the

@@ -56,12 +56,12 @@ type NullDirection struct {
 // Normality says how far the eigenvalues of A can be trusted.
 type Normality struct {
 	Henrici             float64 // departure from normality relative to ‖A‖_F: √(1 − Σ|λ|²/‖A‖_F²), or its bound
-	Exact               bool    // from all eigenvalues; else a lower bound, by balancing
+	Exact               bool    // from all eigenvalues; else a lower bound, by balancing or from the commutator
 	Equilibrated        float64 // the same of A equilibrated, so that units are not taken for it
 	FieldMin, FieldMax  float64 // smallest and largest eigenvalue of (A+Aᵀ)/2
 	FieldHoldsZero      bool
 	SkewMax             float64 // largest |eigenvalue| of (A−Aᵀ)/2
-	LeftmostRe, RightRe float64 // extreme real parts of the (Ritz) eigenvalues; NaN
+	LeftmostRe, RightRe float64 // extreme real parts of the eigenvalues where Exact, else of Ritz values; NaN
 }
 
 // Bin is one bar of a spectral density, by stochastic Lanczos quadrature.

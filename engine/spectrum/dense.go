@@ -42,6 +42,24 @@ func DenseSingular(a *linear.CSR) []float64 {
 	return s.Values(nil)
 }
 
+// DenseNull returns the right singular vectors of a square matrix whose singular
+// values are at most the limit times the largest one, the smallest first, each
+// of unit length. Nil where there are none, or the iteration fails.
+func DenseNull(a *linear.CSR, limit float64) [][]float64 {
+	var s mat.SVD
+	if !s.Factorize(full(a), mat.SVDFullV) {
+		return nil
+	}
+	values := s.Values(nil)
+	var v mat.Dense
+	s.VTo(&v)
+	var out [][]float64
+	for k := len(values) - 1; k >= 0 && values[k] <= limit*values[0]; k-- {
+		out = append(out, mat.Col(nil, k, &v))
+	}
+	return out
+}
+
 // DenseEigenvalues returns all eigenvalues of a square matrix by rising real
 // part, then imaginary part: about 10n³ operations, 8n² bytes. Nil where the
 // iteration fails.
