@@ -37,7 +37,8 @@ func studyItems(f *inspect.Facts) []labelled {
 	add("normality", normalityText(s.Normality))
 	add("couplings", couplingsText(s.Couplings))
 	if s.Block != nil {
-		add("block", fmt.Sprintf("rows repeat in blocks of %d (%.0f %% of them full), proposed from the pattern", s.Block.Size, 100*s.Block.Share))
+		add("block", fmt.Sprintf("rows repeat in blocks of %d (%.0f %% of them full), proposed from the pattern; --dofs %d takes them as the unknowns of a node",
+			s.Block.Size, 100*s.Block.Share, s.Block.Size))
 	}
 	for _, l := range s.Lines {
 		add("single rows", fmt.Sprintf("%s of kind %s, diagonal %s where others have %s%s", plural(l.Count, "row", "rows"), l.Kind,
