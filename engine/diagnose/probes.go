@@ -3,6 +3,7 @@ package diagnose
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"dwindle/engine/inspect"
 	"dwindle/engine/trace"
@@ -25,7 +26,7 @@ var wrongWay = Rule{"preconditioner-wrong-way", func(c Case) (out []Finding) {
 		_, solver, m := cut(h.Pairing)
 		f := Finding{Weight: Blocker, Certainty: inspect.Measured, Subject: h.Pairing,
 			Claim: fmt.Sprintf("%s seems to be applied the wrong way round: inv(M)A is %s away from the identity, taken the other way it is %s",
-				m, percent(p.Distance), percent(p.WrongWay)),
+				told(m), percent(p.Distance), percent(p.WrongWay)),
 			Advice: "the file holds M where inv(M) was asked for, or the reverse: swap given:FILE and solve:FILE",
 			Try:    []string{solver + "+none"},
 			Evidence: []Evidence{number("||v - g inv(M)A v||/||v||, best g", p.Distance, ""),
@@ -43,24 +44,23 @@ var wrongWay = Rule{"preconditioner-wrong-way", func(c Case) (out []Finding) {
 
 // swap turns a matrix given as M⁻¹ into one to solve with, and back.
 func swap(m string) (string, bool) {
-	const given, solve = "given:", "solve:"
-	switch {
-	case len(m) > len(given) && m[:len(given)] == given:
-		return solve + m[len(given):], true
-	case len(m) > len(solve) && m[:len(solve)] == solve:
-		return given + firstArgument(m[len(solve):]), true
+	if file, ok := strings.CutPrefix(m, "given:"); ok {
+		return "solve:" + file, true
+	}
+	if args, ok := strings.CutPrefix(m, "solve:"); ok {
+		file, _, _ := strings.Cut(args, ",")
+		return "given:" + file, true
 	}
 	return "", false
 }
 
-// firstArgument cuts off what follows the file.
-func firstArgument(args string) string {
-	for i, r := range args {
-		if r == ',' {
-			return args[:i]
-		}
+// told is a preconditioner without the folders of its file.
+func told(m string) string {
+	name, file, ok := strings.Cut(m, ":")
+	if !ok {
+		return m
 	}
-	return args
+	return name + ":" + file[strings.LastIndexByte(file, '/')+1:]
 }
 
 // notLinear: M changes from one use to the next, or is no linear operator, in
@@ -105,7 +105,7 @@ var changesNothing = Rule{"preconditioner-changes-nothing", func(c Case) (out []
 			continue
 		}
 		why := "M is a multiple of the identity here, or is not used"
-		if p := h.Probe; p != nil && len(m) >= 6 && m[:6] == "jacobi" {
+		if strings.HasPrefix(m, "jacobi") {
 			why = "the diagonal of A is constant"
 		}
 		out = append(out, Finding{Weight: Note, Certainty: inspect.Measured, Subject: h.Pairing,

@@ -102,8 +102,8 @@ func advise(c Case, f *Finding) {
 		}
 		return !solved(h) || f.Rule != "unsolved-rows" && isTrial && solved(about) && h.OwnTime > about.OwnTime
 	})
-	if !isTrial || solved(about) || !about.Stop.Ended() {
-		return
+	if !isTrial || solved(about) || !about.Stop.Ended() || f.Rule == "preconditioner-wrong-way" {
+		return // a file taken for what it is not is to be swapped, whatever else works
 	}
 	best, ok := quickest(c)
 	if !ok {

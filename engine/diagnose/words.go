@@ -51,17 +51,18 @@ func solved(h trace.History) bool {
 }
 
 // cut takes a canonical pairing apart: preparations with their slash, solver,
-// preconditioner.
+// preconditioner. A file that the preconditioner names may hold either sign.
 func cut(pairing string) (prep, solver, precond string) {
 	rest := pairing
-	if i := strings.IndexByte(rest, '/'); i >= 0 {
+	plus := strings.IndexByte(rest, '+')
+	if i := strings.IndexByte(rest, '/'); i >= 0 && (plus < 0 || i < plus) {
 		prep, rest = rest[:i+1], rest[i+1:]
 	}
-	i := strings.LastIndexByte(rest, '+')
-	if i < 0 {
-		return prep, rest, "none"
+	solver, precond, ok := strings.Cut(rest, "+")
+	if !ok {
+		precond = "none"
 	}
-	return prep, rest[:i], rest[i+1:]
+	return prep, solver, precond
 }
 
 // events returns the events of one kind.
