@@ -123,8 +123,7 @@ func heaviest(free []inspect.NullDirection) float64 {
 	return math.Sqrt(sum)
 }
 
-// nearNull: a few directions are mapped nearly to zero, far below all others,
-// yet the system is not singular.
+// nearNull: a few directions are mapped nearly to zero, far below all others.
 var nearNull = Rule{"near-null", func(c Case) []Finding {
 	f := c.Facts
 	if f.Study == nil || len(f.Study.Null) == 0 || f.Singular.Answer == inspect.Yes || f.RowSumsZero.Answer == inspect.Yes ||
@@ -132,27 +131,37 @@ var nearNull = Rule{"near-null", func(c Case) []Finding {
 		return nil
 	}
 	s := f.Study
-	d := s.Null[0]
-	g := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: OnSystem,
-		Claim:  "one direction is nearly free: after equilibration A maps it to " + num(d.Quotient) + " of its norm",
+	d, last := s.Null[0], s.Null[len(s.Null)-1]
+	g := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: OnSystem, Claim: freeClaim(len(s.Null), last),
 		Advice: "if a mode of the model should be held, hold it; otherwise deflate it, or solve directly and trust only these digits",
 		Try:    []string{"scale/gmres:100+ilut:1e-3,10"},
-		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: d.Quotient, Iteration: none, Rows: d.Rows},
-			number("the next direction", d.Next, "")}}
-	if len(s.Null) > 1 {
-		g.Claim = fmt.Sprintf("%d directions are nearly free: after equilibration A maps them to %s of their norm or less",
-			len(s.Null), num(s.Null[len(s.Null)-1].Quotient))
-	}
-	if d.Next > 0 {
-		g.Claim += ", the next to " + num(d.Next)
-	}
-	if x := s.Equilibrated; x != nil && x.Condition > 0 {
-		g.Claim += fmt.Sprintf("; the condition %s leaves about %s of x", num(x.Condition),
-			count(max(0, int(math.Round(s.Digits))), "correct digit"))
-		g.Evidence = append(g.Evidence, number("condition after equilibration", x.Condition, ""), number("digits to expect", s.Digits, ""))
-	}
+		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: last.Quotient, Iteration: none, Rows: d.Rows},
+			number("the next direction", last.Next, "")}}
 	if f.Symmetric.Answer == inspect.Yes {
 		g.Try = instead(f)
 	}
+	if last.Quotient <= toRounding && f.PositiveDefinite.Answer != inspect.Yes {
+		g.Weight, g.Certainty = Blocker, inspect.Measured
+		g.Claim = "A is singular to rounding: " + g.Claim
+		g.Advice = "find out which equation repeats others, or which unknown nothing determines; b may be out of reach"
+		return []Finding{g}
+	}
+	if x := s.Equilibrated; x != nil && x.Condition > 0 && s.Digits >= 0 {
+		g.Claim += fmt.Sprintf("; the condition %s leaves about %s of x", num(x.Condition), count(int(math.Round(s.Digits)), "correct digit"))
+		g.Evidence = append(g.Evidence, number("condition after equilibration", x.Condition, ""), number("digits to expect", s.Digits, ""))
+	}
 	return []Finding{g}
 }}
+
+// freeClaim tells how many directions are nearly free, and how far the least
+// free of them lies below the next.
+func freeClaim(n int, last inspect.NullDirection) string {
+	claim := "one direction is nearly free: after equilibration A maps it to " + num(last.Quotient) + " of its norm"
+	if n > 1 {
+		claim = fmt.Sprintf("%d directions are nearly free: after equilibration A maps them to %s of their norm or less", n, num(last.Quotient))
+	}
+	if last.Next > 0 {
+		claim += ", the next to " + num(last.Next)
+	}
+	return claim
+}

@@ -90,7 +90,7 @@ func TestStudyRulesOnOpenMatrices(t *testing.T) {
 	want := map[string][]string{
 		"494_bus.mtx": {"row-scaling"}, "LFAT5.mtx": {"row-scaling"}, "arc130.rua": {"row-scaling", "non-normal"},
 		"bcsstk13.mtx.gz": {"row-scaling"}, "bcsstk16.mtx.gz": {"singleton-rows", "mesh-growth"},
-		"cryg2500.mtx": {"row-scaling", "near-null"}, "fs_183_1.mtx": {"row-scaling"}, "olm1000.mtx": {"row-scaling", "non-normal"},
+		"cryg2500.mtx": {"row-scaling", "near-null"}, "fs_183_1.mtx": {"row-scaling"}, "jgl009.mtx": {"near-null"}, "olm1000.mtx": {"row-scaling", "non-normal"},
 		"pores_1.mtx": {"row-scaling"}, "rajat19.mtx": {"row-scaling"}, "reorientation_1.mtx": {"row-scaling"},
 		"watt_2.mtx": {"row-scaling"}, "west0479.mtx": {"row-scaling", "non-normal"}, "west0479.rb": {"row-scaling", "non-normal"},
 	}
@@ -99,6 +99,7 @@ func TestStudyRulesOnOpenMatrices(t *testing.T) {
 		"reorientation_1.mtx": {"row-scaling", "almost all scaling"},
 		"bcsstk16.mtx.gz":     {"singleton-rows", "74 decoupled rows (diagonal 1) are the cause of the condition 4.94e+09", "without them it is 3.11e+03"},
 		"cryg2500.mtx":        {"near-null", "one direction is nearly free", "about 4 correct digits"},
+		"jgl009.mtx":          {"near-null", "A is singular to rounding: 4 directions"},
 		"olm1000.mtx":         {"non-normal", "at least 0.994"},
 	}
 	files, err := os.ReadDir(dir)
