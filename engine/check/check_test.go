@@ -280,7 +280,10 @@ func TestFewPrintedDigits(t *testing.T) {
 		b[i] = 1. / 3
 		x[i] = math.Round(float64((i+1)*(n-i))/6*1e2) / 1e2
 	}
-	a := asked(t, m, b, x, nil)
+	a := asked(t, m, b, x, func(q *Question) { q.Said = &Said{Text: "1.2345e-13", Value: 1.2345e-13} })
+	if a.Said == nil || !strings.Contains(a.Said.Claim, "x is written with 5 digits") {
+		t.Errorf("its number: %+v", a.Said)
+	}
 	if a.Solved || a.Digits != 5 || !strings.Contains(strings.Join(a.Hints, "\n"), "written with 5 digits") {
 		t.Errorf("%d digits: %s %q", a.Digits, a.Verdict, a.Hints)
 	}

@@ -60,6 +60,9 @@ func (w *work) claim(m *Match) string {
 			d, size := m.Nearest.Definition, m.Said.size()
 			text += fmt.Sprintf("; the nearest is %s = %s, %s times it", d.Formula, num(d.Value), num(d.Value/size))
 		}
+		if out := w.out; out.Digits >= 3 && out.Digits <= 15 {
+			return text + fmt.Sprintf(": x is written with %d digits, and the others change every measure", out.Digits)
+		}
 		return text + ": it may be a recurrence that has parted from b-Ax, a norm with a preconditioner other than diag A, or of another b or x"
 	}
 	var words []string
@@ -135,7 +138,11 @@ func (w *work) unseen() {
 		}
 	}
 	if len(held) > 0 {
-		w.hint("a code that stops by %s would have stopped here: it does not test b-Ax against b", strings.Join(held, " or by "))
+		text := strings.Join(held[:min(len(held), mostFits)], " or by ")
+		if more := len(held) - mostFits; more > 0 {
+			text += fmt.Sprintf(" or by %d more of the measures below", more)
+		}
+		w.hint("a code that stops by %s would have stopped here, with ||r||2/||b||2 at %s", text, num(rhs.Value))
 	}
 }
 
@@ -209,8 +216,8 @@ func (w *work) atBest() {
 	if f == nil || !f.Sure || f.ErrorInf == 0 {
 		return
 	}
-	text := fmt.Sprintf("x is off by %s of its largest entry: about %.0f correct digits, of about %.0f that a stable solver can be expected to give",
-		num(f.ErrorInf), math.Floor(correct(f.ErrorInf)), math.Floor(f.Digits))
+	text := fmt.Sprintf("x is off by %s of its largest entry: about %s, of about %.0f that a stable solver can be expected to give",
+		num(f.ErrorInf), many(int(correct(f.ErrorInf)), "correct digit", "correct digits"), math.Floor(f.Digits))
 	if math.Floor(f.Written) < math.Floor(f.Digits) {
 		text += fmt.Sprintf("; the %d digits the matrix is written with determine x to about %.0f", w.q.System.Digits, math.Floor(f.Written))
 	}
