@@ -80,5 +80,6 @@ var restoring = Rule{"restoring-shift", func(c Case) []Finding {
 		Try:    []string{fmt.Sprintf("shift:%.2g/minres+ic:0", 1.2*r.Shift)},
 		Evidence: []Evidence{{Quantity: "shift relative to the diagonal", Value: r.Shift, Iteration: none, Rows: r.Rows},
 			number("its error, at most", r.Bound, "")}}
+	g.Advice += openDigits(f, r.Shift)
 	return []Finding{g}
 }}

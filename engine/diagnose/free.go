@@ -43,8 +43,18 @@ var mechanism = Rule{"mechanism", func(c Case) []Finding {
 		g.Claim += fmt.Sprintf("; b pushes along %s with %s of its norm, and no x can answer that", along, num(load))
 		g.Evidence = append(g.Evidence, number("part of b along it", load, ""))
 	}
+	g.Advice += openDigits(f, free[0].Quotient)
 	return []Finding{g}
 }}
+
+// openDigits says that the printed digits of the file leave open what a number,
+// relative to A, is.
+func openDigits(f *inspect.Facts, value float64) string {
+	if !(f.Delta > value) {
+		return ""
+	}
+	return fmt.Sprintf("; the file has %d digits and leaves this open: write 17 digits and run again", f.Digits)
+}
 
 // motions words what is free and names rows that carry it.
 func (c Case) motions(free []inspect.NullDirection) (claim string, rows []int) {
@@ -143,13 +153,14 @@ var nearNull = Rule{"near-null", func(c Case) []Finding {
 	if last.Quotient <= toRounding && f.PositiveDefinite.Answer != inspect.Yes {
 		g.Weight, g.Certainty = Blocker, inspect.Measured
 		g.Claim = "A is singular to rounding: " + g.Claim
-		g.Advice = "find out which equation repeats others, or which unknown nothing determines; b may be out of reach"
+		g.Advice = "find out which equation repeats others, or which unknown nothing determines; b may be out of reach" + openDigits(f, last.Quotient)
 		return []Finding{g}
 	}
 	if x := s.Equilibrated; x != nil && x.Condition > 0 && s.Digits >= 0 {
 		g.Claim += fmt.Sprintf("; the condition %s leaves about %s of x", num(x.Condition), count(int(math.Round(s.Digits)), "correct digit"))
 		g.Evidence = append(g.Evidence, number("condition after equilibration", x.Condition, ""), number("digits to expect", s.Digits, ""))
 	}
+	g.Advice += openDigits(f, last.Quotient)
 	return []Finding{g}
 }}
 

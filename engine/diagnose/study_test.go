@@ -205,3 +205,16 @@ func TestRestoringShiftIsTold(t *testing.T) {
 	}
 	only(t, "feeder", told(t, sample(t, "feeder")), "row-scaling")
 }
+
+// What the digits of a file leave open is said so.
+func TestFewDigitsAreSaidOfFreeDirections(t *testing.T) {
+	s := sample(t, "frame:pin")
+	s.Digits = 6
+	if g := told(t, s)["mechanism"]; !strings.Contains(g.Advice, "the file has 6 digits") {
+		t.Errorf("advice: %s", g.Advice)
+	}
+	s.Digits = 17
+	if g := told(t, s)["mechanism"]; strings.Contains(g.Advice, "digits") {
+		t.Errorf("advice: %s", g.Advice)
+	}
+}
