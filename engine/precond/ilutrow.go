@@ -22,6 +22,7 @@ type ilutWork struct {
 	w       []float64 // the row under work, by column; length n
 	at      []int32   // i+1 while column j belongs to row i; length n
 	low     intHeap   // positions left of the diagonal still to be eliminated
+	fresh   []int32   // columns that an elimination has filled in
 	ucol    []int32   // columns met right of the diagonal
 	sizes   []float64
 }
@@ -50,10 +51,10 @@ func (k *ilutWork) row(i int) (float64, error) {
 	l := k.f.lower
 	start := len(l.Col)
 	k.low, k.ucol = k.low[:0], k.ucol[:0]
-	k.meet(i, k.col[i], 0)
+	k.meet(i, k.col[i])
 	for p, c := range cols {
 		if k.at[c] != int32(i+1) {
-			k.meet(i, c, 0)
+			k.meet(i, c)
 		}
 		k.w[c] = vals[p]
 	}
@@ -91,9 +92,14 @@ func (k *ilutWork) finishUpper(i int, drop float64) (float64, error) {
 	return d, nil
 }
 
-// meet takes column c into row i with value v.
-func (k *ilutWork) meet(i int, c int32, v float64) {
-	k.at[c], k.w[c] = int32(i+1), v
+// meet takes column c into row i.
+func (k *ilutWork) meet(i int, c int32) {
+	k.at[c], k.w[c] = int32(i+1), 0
+	k.place(i, c)
+}
+
+// place puts a column of row i among those to eliminate or to keep.
+func (k *ilutWork) place(i int, c int32) {
 	if q := k.pos[c]; int(q) < i {
 		k.low.push(q)
 	} else if int(q) > i {
@@ -101,18 +107,26 @@ func (k *ilutWork) meet(i int, c int32, v float64) {
 	}
 }
 
-// eliminate subtracts t times row c of R.
+// eliminate subtracts t times row c of R; the columns that it fills in are
+// gone through afterwards, so that the loop calls nothing.
 func (k *ilutWork) eliminate(i int, c int32, t float64) {
 	rc, rv := k.f.upper.Row(int(c))
 	rv = rv[:len(rc)]
-	at, w := k.at, k.w
+	k.fresh = slices.Grow(k.fresh[:0], len(rc))
+	at, w, fresh, n := k.at, k.w, k.fresh[:len(rc)], 0
 	w = w[:len(at)]
 	for p, j := range rc {
+		v := t * rv[p]
 		if at[j] == int32(i+1) {
-			w[j] -= t * rv[p]
-		} else {
-			k.meet(i, j, -t*rv[p])
+			w[j] -= v
+			continue
 		}
+		at[j], w[j] = int32(i+1), -v
+		fresh[n] = j
+		n++
+	}
+	for _, j := range fresh[:n] {
+		k.place(i, j)
 	}
 }
 
