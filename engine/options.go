@@ -117,6 +117,9 @@ func (o Options) Check() error {
 	case o.Memory < 0:
 		return bad("--memory must not be negative")
 	}
+	if err := o.checkColumns(); err != nil {
+		return err
+	}
 	for _, text := range o.FieldTols {
 		if _, _, err := fieldTol(text); err != nil {
 			return err

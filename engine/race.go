@@ -64,15 +64,18 @@ func (s *Session) lead(b *run.Bench, r *race) bool {
 }
 
 // steer lets the session move the trials on between rounds: the race, where
-// there is one, and when all have ended the reruns that tell how far rounding
-// moves a count.
+// there is one, and when all have ended the measurement of what was chosen on
+// other right-hand sides, and the reruns that tell how far rounding moves a
+// count.
 func (s *Session) steer(b *run.Bench) {
-	r := s.race
-	if r == nil && s.rerunBudget() <= 0 {
+	if s.race == nil && s.columns == nil && s.rerunBudget() <= 0 {
 		return
 	}
 	b.Steer(func() bool {
-		if r != nil && s.lead(b, r) || b.Live() {
+		switch {
+		case s.race != nil && s.lead(b, s.race) || b.Live():
+			return true
+		case s.columns != nil && s.measureColumns(b, s.columns):
 			return true
 		}
 		s.rerun(b)

@@ -39,6 +39,7 @@ type Session struct {
 	lineup    []string
 	race      *race // nil: the line-up was given
 	ruled     []choose.Ruled
+	columns   *further // nil: none asked for
 	waiting   string
 	suspended time.Duration // total
 	haltedAt  time.Duration // when the present suspension began; negative if none
@@ -122,6 +123,11 @@ func (s *Session) loadAndInspect() (err error) {
 	if err := setNearNull(&sys, s.opt); err != nil {
 		return err
 	}
+	columns, err := s.readColumns(sys.N())
+	if err != nil {
+		return err
+	}
+	s.set(func() { s.columns = columns })
 	sys.Open = s.open
 	sys.Name = shown(s.source, sys, s.opt.Identify)
 	s.set(func() { s.sys, s.phase, s.progress = sys, Inspecting, -1 })

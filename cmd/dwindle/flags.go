@@ -44,6 +44,8 @@ func (f *flags) trials(c *cobra.Command, seconds float64) {
 	s.SortFlags = false
 	s.StringArrayVar(&f.opt.Pairs, "pair", nil, "run the pairing `P`, such as cg+ic:0; may be repeated (default: made from the facts)")
 	s.StringVar(&f.opt.Today, "today", "", "the pairing `P` your code runs now: every gain is told against it")
+	s.StringVar(&f.opt.Goal, "goal", "", "what the choice goes by: `GOAL` seconds, memory or robust (default: seconds)")
+	s.StringVar(&f.opt.Columns, "columns", "", "measure the choice on further right-hand sides with one set-up: columns `LIST` of the --rhs file, such as 1-8")
 	s.StringVar(&f.opt.Guess, "guess", "", "start from the vector in `FILE[:COL]`")
 	s.StringVar(&f.opt.Null, "null", "", "near-null vectors for multilevel methods, the columns of `FILE`")
 	s.StringVar(&f.opt.Coordinates, "coordinates", "", "coordinates of the nodes, one a row of `FILE`: rigid motions for multilevel methods")

@@ -57,19 +57,7 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 	if t.prepared, t.back, err = chain(ctx, t.method.Preps, t.sys); err != nil {
 		return trace.Reading{}, err
 	}
-	basis, err := t.basis()
-	if err != nil {
-		return trace.Reading{}, err
-	}
-	m, notes, err := t.method.Precond.Build(ctx, basis, t.method.PrecondValues, func(p float64) {
-		t.mu.Lock()
-		t.progress = p
-		t.mu.Unlock()
-	})
-	t.inFileRows(notes.Broke)
-	t.mu.Lock()
-	t.hist.Notes = notes
-	t.mu.Unlock()
+	m, err := t.preconditioner(ctx)
 	if err != nil {
 		return trace.Reading{}, err
 	}
@@ -83,6 +71,27 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 		t.solver = solver
 	}
 	return r, err
+}
+
+// preconditioner builds M, unless one is ready.
+func (t *Trial) preconditioner(ctx context.Context) (linear.Applier, error) {
+	if t.ready != nil {
+		return t.ready, nil
+	}
+	basis, err := t.basis()
+	if err != nil {
+		return nil, err
+	}
+	m, notes, err := t.method.Precond.Build(ctx, basis, t.method.PrecondValues, func(p float64) {
+		t.mu.Lock()
+		t.progress = p
+		t.mu.Unlock()
+	})
+	t.inFileRows(notes.Broke)
+	t.mu.Lock()
+	t.hist.Notes = notes
+	t.mu.Unlock()
+	return m, err
 }
 
 // basis is the system that the preconditioner is built from.

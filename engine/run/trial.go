@@ -28,6 +28,7 @@ type Trial struct {
 	back     prepare.Back // nil without preparations
 	form     *form        // of the products of A; nil: the rows
 	a, m     *counted
+	ready    linear.Applier // an M that was built before; nil: build one
 	solver   krylov.Solver
 	scratch  *scratch
 
