@@ -1,6 +1,7 @@
 package tui
 
 import (
+	"fmt"
 	"math"
 	"slices"
 	"strconv"
@@ -22,6 +23,7 @@ type plot struct {
 	floor  float64 // estimated accuracy floor of the picked trial; NaN if unknown
 	marks  bool    // where common stopping rules would have ended the picked trial
 	bounds bool    // bounds of the picked trial's error in the energy norm
+	out    int     // curves left out
 	truth  bool    // audited true residuals instead of the methods' own
 	name   string  // what is drawn, for the corner
 	signs  glyphs
@@ -33,6 +35,7 @@ type drawn struct {
 	id     int
 	h      *trace.History
 	picked bool
+	leads  bool
 }
 
 // mark is the state at the curve's head: nothing while it goes on.
@@ -162,7 +165,24 @@ func (p plot) head(t *tags, d drawn, c curve) {
 	if c.lost || y < 0 {
 		text, y = strconv.Itoa(d.id)+"^"+d.mark(), 0
 	}
-	t.near(x, y, text, d.ink())
+	columns, rows := p.reach(d, t.on)
+	t.within(x, y, text, d.ink(), columns, rows)
+}
+
+// many is how many curves may all have their head tagged at any distance.
+const many = 10
+
+// reach is how far the tag of a head may be pushed aside. Among many curves a
+// tag far from its own would be taken for another's: those that do not matter
+// most go without.
+func (p plot) reach(d drawn, c *canvas) (columns, rows int) {
+	switch {
+	case len(p.curves) <= many || d.picked || d.leads || d.h.Today:
+		return c.w, c.h
+	case reached(d.h):
+		return 8, 2
+	}
+	return 3, 1
 }
 
 // falseStop marks where the picked trial's own number met the target while
@@ -212,6 +232,9 @@ func (p plot) base(w int) []string {
 	name := p.name + " by " + p.x.fix.String()
 	if p.x.log {
 		name += ", log"
+	}
+	if p.out > 0 {
+		name += fmt.Sprintf(", %d left out", p.out)
 	}
 	end := w + margin - len(name)
 	labels.write(max(end, 0), 0, name, plain)

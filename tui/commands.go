@@ -84,6 +84,11 @@ func (m *model) changeRate(f float64) tea.Cmd {
 // start starts the line-up that waits.
 func (m *model) start() tea.Cmd { return act("started", m.s.Start) }
 
+// skip lets the line-up begin without the rest of the second look.
+func (m *model) skip() tea.Cmd {
+	return act("the second look ends with what it has found", m.s.Skip)
+}
+
 // stopTrial ends the picked trial, after a question.
 func (m *model) stopTrial() tea.Cmd {
 	t := m.trial(m.trials.picked)

@@ -220,6 +220,7 @@ func (f *fake) Candidates() []choose.Candidate {
 		{Pairing: "cg+lu", Solver: "cg", Summary: "conjugate gradients, complete factors", Refused: "needs 9.1 GiB, the limit is 2 GiB"},
 	}
 }
+func (f *fake) Skip()  { defer f.lock()(); f.did("skip") }
 func (f *fake) Start() { defer f.lock()(); f.ready = false; f.did("start") }
 func (f *fake) Add(p string) (int, error) {
 	defer f.lock()()

@@ -17,6 +17,20 @@ func aside(h *trace.History) bool {
 	return false
 }
 
+// classes of trials in the part of a list that scrolls: going on, ended, and
+// set aside.
+const classes = 3
+
+func classOf(h *trace.History) int {
+	switch {
+	case !h.Stop.Ended():
+		return 0
+	case !aside(h):
+		return 1
+	}
+	return 2
+}
+
 // reached says whether a trial came to an answer.
 func reached(h *trace.History) bool {
 	return h.Stop == trace.Converged || h.Stop == trace.LeastSquares
@@ -25,7 +39,7 @@ func reached(h *trace.History) bool {
 // visible chooses which of the trials are listed on rows lines, in the order of
 // their numbers. Where not all find room, the leader, today's pairing and those
 // that converged are always among them, the others scroll beside them with the
-// picked one in sight, and those that matter little come last.
+// picked one in sight: those that go on first, those that matter little last.
 func (v *trialsView) visible(m *model, rows int) []int {
 	trials := m.snap.Trials
 	n := len(trials)
@@ -38,9 +52,9 @@ func (v *trialsView) visible(m *model, rows int) []int {
 	}
 	shown := v.pinned(m, max(rows-2, min(rows-1, 1)))
 	var rest []int
-	for _, late := range []bool{false, true} {
+	for class := range classes {
 		for i := range trials {
-			if aside(&trials[i].History) == late && !slices.Contains(shown, i) {
+			if classOf(&trials[i].History) == class && !slices.Contains(shown, i) {
 				rest = append(rest, i)
 			}
 		}

@@ -39,6 +39,7 @@ var signsHelp = []string{
 	"~ running   + converged   = stagnated   ! diverged or falsely converged",
 	"x broke down, refused or failed   . waiting   - held   # a limit or your stop",
 	"(!) the method's own number met the target, the true residual had not",
+	"left out   among many trials: curves of those outpaced, refused or stopped",
 	"^ the curve goes on above the chart",
 	"r i p b e  on the picked curve: a code that stops relative to b, relative to",
 	"           r0, preconditioned, by backward error, by energy norm stops here",

@@ -120,5 +120,5 @@ func worstRows(h *trace.History, m *model) string {
 	for i, r := range h.WorstRows {
 		rows[i] = r.Row
 	}
-	return fmt.Sprintf("; %d rows unsolved, worst first%s", h.UnsolvedRows, withRows(" ", rows, m.snap.Facts))
+	return withRows(fmt.Sprintf("; %d rows unsolved, worst first", h.UnsolvedRows), rows, m.snap.Facts)
 }

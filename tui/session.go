@@ -14,6 +14,7 @@ type session interface {
 	Snapshot() engine.Snapshot
 	Candidates() []choose.Candidate
 	Start()
+	Skip()
 	Add(pairing string) (id int, err error)
 	Hold(id int)
 	Resume(id int)

@@ -62,7 +62,7 @@ func (m *model) conditionLines(f *inspect.Facts, w int) []string {
 		}
 		return []string{m.on.paint(faint, text)}
 	}
-	lines := []string{m.on.paint(faint, clip(left("eigenvalues", 25)+right("smallest", 10)+right("largest", 10)+right("condition", 11)+"  how known", w))}
+	lines := []string{m.on.paint(faint, clip(left(valuesWord(f), 25)+right("smallest", 10)+right("largest", 10)+right("condition", 11)+"  how known", w))}
 	s := f.Study
 	for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
 		if x != nil {
@@ -76,6 +76,15 @@ func (m *model) conditionLines(f *inspect.Facts, w int) []string {
 		lines = append(lines, clip(fmt.Sprintf("about %.0f correct digits of x to expect, from the condition after equilibration", max(s.Digits, 0)), w))
 	}
 	return lines
+}
+
+// valuesWord names the values whose ends are known: of an A that is not
+// symmetric the singular ones.
+func valuesWord(f *inspect.Facts) string {
+	if f.Symmetric.Answer == inspect.Yes {
+		return "eigenvalues"
+	}
+	return "singular values"
 }
 
 // conditionRow is one operator of the table.
@@ -130,7 +139,7 @@ func (m *model) ofAPicture(w, h int) []string {
 		}
 		return titled(title, densityPicture(binned(s.Density), w, h, m.signs))
 	case s.Raw != nil && len(s.Raw.Low)+len(s.Raw.High) > 0:
-		return titled("outermost eigenvalues of A", densityPicture(outermost(s.Raw), w, h, m.signs))
+		return titled("outermost "+valuesWord(m.snap.Facts)+" of A", densityPicture(outermost(s.Raw), w, h, m.signs))
 	}
 	return nil
 }

@@ -31,7 +31,10 @@ func (v *systemView) keys(m *model) []action {
 	list := []action{
 		bind("find; a fact by a word", v.search, "/"),
 	}
-	if m.snap.Phase == engine.Ready || m.snap.Phase == engine.Broken {
+	switch m.snap.Phase {
+	case engine.Inspecting:
+		list = append(list, bind("skip; the rest of the second look", v.enter, "enter"))
+	case engine.Ready, engine.Broken:
 		list = append(list, bind("go on", v.enter, "enter"))
 	}
 	if v.wanted != "" {
@@ -58,6 +61,8 @@ func (v *systemView) all(m *model) tea.Cmd {
 // enter starts the waiting line-up or goes back from a broken system.
 func (v *systemView) enter(m *model) tea.Cmd {
 	switch m.snap.Phase {
+	case engine.Inspecting:
+		return m.skip()
 	case engine.Ready:
 		return m.start()
 	case engine.Broken:

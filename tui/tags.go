@@ -40,9 +40,14 @@ func (t *tags) put(x, y int, text string, i ink) {
 // first, since a tag pushed upwards would tell another residual, then in the
 // rows around. It says whether there was room.
 func (t *tags) near(x, y int, text string, i ink) bool {
-	for dy := range t.on.h {
+	return t.within(x, y, text, i, t.on.w, t.on.h)
+}
+
+// within is near that goes no farther than so many columns and rows.
+func (t *tags) within(x, y int, text string, i ink, columns, rows int) bool {
+	for dy := range min(rows, t.on.h) {
 		for _, row := range []int{y - dy, y + dy} {
-			for dx := range t.on.w {
+			for dx := range min(columns, t.on.w) {
 				for _, col := range []int{x + dx, x - dx} {
 					if t.free(col, row, len(text)) {
 						t.put(col, row, text, i)

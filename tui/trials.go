@@ -192,6 +192,8 @@ func (v *trialsView) pickDigit(m *model, pressed string) tea.Cmd {
 // picked trial.
 func (v *trialsView) enter(m *model) tea.Cmd {
 	switch {
+	case m.snap.Phase == engine.Inspecting:
+		return m.skip()
 	case m.snap.Phase == engine.Ready:
 		return m.start()
 	case m.snap.Phase == engine.Broken:

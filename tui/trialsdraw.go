@@ -53,20 +53,24 @@ func cursorAt(line string, x int) string {
 // chart is what the chart shows.
 func (v *trialsView) chart(m *model) plot {
 	p := plot{x: v.axis(), y: v.y, tol: m.snap.Settings.Tol, floor: math.NaN(),
-		truth: v.truth, marks: !v.bare, bounds: v.bounds, name: v.residualName(m), signs: m.signs, on: m.on}
+		truth: v.truth, marks: !v.bare, bounds: v.bounds, out: v.leftOut(m), name: v.residualName(m), signs: m.signs, on: m.on}
+	lead := leader(m.snap)
 	for i := range m.snap.Trials {
 		t := &m.snap.Trials[i]
-		if v.hidden[t.ID] {
+		picked := t.ID == v.picked
+		if v.hidden[t.ID] || m.crowded() && aside(&t.History) && !picked {
 			continue
 		}
-		picked := t.ID == v.picked
 		if picked {
 			p.floor = t.History.Floor
 		}
-		p.curves = append(p.curves, drawn{t.ID, &t.History, picked})
+		p.curves = append(p.curves, drawn{t.ID, &t.History, picked, i == lead})
 	}
 	return p
 }
+
+// crowded says that there are too many trials to draw those set aside.
+func (m *model) crowded() bool { return len(m.snap.Trials) > many }
 
 // residualName names the residual that is drawn and, where the picked
 // trial's own norm is another one, that norm.
@@ -79,6 +83,17 @@ func (v *trialsView) residualName(m *model) string {
 		return "own residual"
 	}
 	return fmt.Sprintf("own residual (%d: %s norm)", t.ID, m.signs.clean(string(t.History.Norm)))
+}
+
+// leftOut counts the curves that are not drawn since there are too many.
+func (v *trialsView) leftOut(m *model) int {
+	n := 0
+	for _, t := range m.snap.Trials {
+		if m.crowded() && aside(&t.History) && t.ID != v.picked {
+			n++
+		}
+	}
+	return n
 }
 
 // list is the title and h-1 rows of the list: all trials where there is room,
@@ -109,7 +124,7 @@ func (m *model) noTrials(w, h int) []string {
 	case engine.Loading:
 		return []string{"", "the system is being read"}
 	case engine.Inspecting:
-		return []string{"", "the system is being inspected; tab shows what is known of it"}
+		return []string{"", "the system is being inspected; tab shows what is known of it, enter skips the rest"}
 	}
 	return []string{"", "no trial; n adds a pairing"}
 }
