@@ -4,6 +4,7 @@ import (
 	"errors"
 	"time"
 
+	"dwindle/engine/choose"
 	"dwindle/engine/inspect"
 	"dwindle/engine/report"
 	"dwindle/engine/trace"
@@ -21,13 +22,17 @@ type part struct {
 	Trials  []change       // of trials in which something moved
 }
 
+// empty says that nothing is new but the time and the order of the trials.
+func (p part) empty() bool { return p.About == nil && p.Facts == nil && len(p.Trials) == 0 }
+
 // about is what is known of a session besides its facts and trials.
 type about struct {
 	Version, Command, Toolchain string
 	Machine                     report.Machine
 	Settings                    report.Settings
 	System                      report.System
-	Source                      string  // a sample, or the file's name; its path where that may be told
+	Source                      string // a sample, or the file's name; its path where that may be told
+	Ruled                       []choose.Ruled
 	Asked                       Options // what decides the outcome; no path unless it may be told
 }
 

@@ -57,7 +57,7 @@ func (s *Session) state() (Snapshot, *about) {
 	a := s.about
 	if a == nil {
 		a = &about{Version: s.opt.Version, Command: s.opt.Command, Toolchain: toolchain(), Machine: v.Machine,
-			Settings: v.Settings, System: v.System, Source: s.sourceTold(), Asked: s.opt.told()}
+			Settings: v.Settings, System: v.System, Source: s.sourceTold(), Ruled: s.ruled, Asked: s.opt.told()}
 	}
 	return v, a
 }

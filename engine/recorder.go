@@ -6,6 +6,7 @@ import (
 	"errors"
 	"io"
 	"os"
+	"slices"
 	"strings"
 	"time"
 
@@ -23,10 +24,11 @@ type recorder struct {
 	gob  *gob.Encoder
 
 	facts  *inspect.Facts
-	about  bool // written with the facts and the fingerprint in it
+	about  int // 0 before it is written; grows with what is in it
 	trials map[int]*told
 	seen   recorded
 	at     time.Time // of the last frame
+	last   part      // what it held
 	stop   chan struct{}
 	done   chan struct{}
 }
@@ -117,7 +119,13 @@ func (r *recorder) look(closing bool) error {
 	}
 	r.seen, r.at = now, time.Now()
 	p := r.part()
-	p.Closed = closing
+	if p.Closed = closing; !closing && r.at != (time.Time{}) && p.empty() && slices.Equal(p.Order, r.last.Order) {
+		return nil
+	}
+	if p.empty() { // time went by, and nothing happened in it
+		p.Elapsed = r.last.Elapsed
+	}
+	r.last = p
 	r.buf.Reset()
 	if err := r.gob.Encode(p); err != nil {
 		return err
@@ -130,9 +138,11 @@ func (r *recorder) look(closing bool) error {
 func (r *recorder) part() part {
 	v, about := r.s.state()
 	p := part{Elapsed: v.Elapsed}
-	if v.Facts != r.facts || !r.about {
-		p.About, p.Facts = about, v.Facts
-		r.facts, r.about = v.Facts, about.System.Fingerprint != ""
+	if v.Facts != r.facts {
+		p.Facts, r.facts = v.Facts, v.Facts
+	}
+	if n := 1 + len(about.System.Fingerprint) + len(about.Ruled); n != r.about {
+		p.About, r.about = about, n
 	}
 	for _, t := range v.Trials {
 		p.Order = append(p.Order, t.ID)

@@ -55,7 +55,7 @@ func (s *Session) reopen(recording string) (err error) {
 	}
 	s.set(func() {
 		s.opt, s.about, s.facts, s.print, s.past = asked, r.about, r.facts, r.about.System.Fingerprint, r.trials
-		s.pastElapsed, s.phase, s.progress = r.elapsed, Ended, -1
+		s.pastElapsed, s.phase, s.progress, s.ruled = r.elapsed, Ended, -1, r.about.Ruled
 		s.lost = s.find()
 	})
 	s.Snapshot() // judged once here: a fault is one of the file
