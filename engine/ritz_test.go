@@ -149,6 +149,20 @@ func TestRestartsAreForetold(t *testing.T) {
 	}
 }
 
+// Two tiny eigenvalues below [1,2]: gmres:5 loses them at each restart and
+// stands still. The harmonic Ritz values say so, and the try that they lead to
+// ends it.
+func TestStagnationIsEndedByTheSlowPart(t *testing.T) {
+	path := written(t, outlying(100, 1e-8, 2e-8), 0)
+	f := must(t, ended(t, path, Options{Pairs: []string{"gmres:5+none"}}), "restart-stagnation", "gmres:5+none")
+	if len(f.Try) == 0 || !strings.HasPrefix(f.Try[0], "gmresdr:5,") || !strings.Contains(f.Advice, "near zero (from ") {
+		t.Fatalf("tries %v: %s", f.Try, f.Advice)
+	}
+	if h := only(t, ended(t, path, Options{Pairs: f.Try[:1]})); h.Stop != trace.Converged || h.Iterations > 60 {
+		t.Errorf("%s ends %s after %d its", f.Try[0], h.Stop, h.Iterations)
+	}
+}
+
 // A beam of fifty elements, b from a known solution: the residual meets the
 // tolerance, and the error is large. Where the solution is known it is
 // measured, else estimated, and then not below the true one.

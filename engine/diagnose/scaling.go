@@ -23,7 +23,7 @@ const (
 var scaling = Rule{"row-scaling", func(c Case) []Finding {
 	f := c.Facts
 	span, rows := f.RowNorm, []int{f.RowNorm.MinRow, f.RowNorm.MaxRow}
-	if f.Singletons > 0 {
+	if f.Singletons > 0 && f.Singletons < f.N {
 		span, rows = f.RestDiag, []int{f.RestDiag.MinRow, f.RestDiag.MaxRow}
 	}
 	before, after, share := byScaling(f.Study)

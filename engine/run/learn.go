@@ -46,7 +46,7 @@ func (t *Trial) learn() {
 		t.learned.errors = int(math.Ceil(retell * float64(k)))
 		t.tellErrors()
 	}
-	if k < max(t.learned.next, soonest) {
+	if k < max(t.learned.next, soonest) || k > most {
 		return
 	}
 	t.learned.next = int(math.Ceil(relearn * float64(k)))
@@ -55,9 +55,7 @@ func (t *Trial) learn() {
 		return
 	}
 	t.learned.spent += cost
-	if k <= most {
-		t.tellLocks(k)
-	}
+	t.tellLocks(k)
 }
 
 // work is the nanoseconds that k steps take at the least, by counts, so that
