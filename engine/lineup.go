@@ -56,6 +56,8 @@ func (s *Session) limits() run.Limits {
 	if f := s.facts; f.Symmetric.Answer == inspect.Yes && f.Symmetric.Certainty == inspect.Proved && f.Gershgorin.Min > 0 {
 		l.Smallest = f.Gershgorin.Min * (1 - 1e-12) // what summing a row rounds away is less
 	}
+	l.NoNorm = s.facts.Symmetric.Answer == inspect.No ||
+		s.facts.PositiveDefinite.Answer == inspect.No && s.facts.Semidefinite.Answer != inspect.Yes
 	if u := s.facts.Unreachable; u.Answer == inspect.Yes {
 		l.Unreachable = u.Value
 	}

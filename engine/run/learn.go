@@ -42,6 +42,9 @@ func (t *Trial) coefficients(alpha, beta float64) {
 func (t *Trial) learn() {
 	t.seeCycle()
 	k := len(t.hist.Alphas)
+	if t.limits.NoNorm {
+		return
+	}
 	if k >= max(t.learned.errors, soonest) {
 		t.learned.errors = int(math.Ceil(retell * float64(k)))
 		t.tellErrors()
@@ -72,7 +75,7 @@ func (t *Trial) work(k int) float64 {
 // first steps.
 func (t *Trial) learnAll(stop trace.Stop) {
 	k := len(t.hist.Alphas)
-	if k == 0 || t.ended() || stop == trace.Cancelled || stop == trace.Outpaced || stop == trace.Failed {
+	if k == 0 || t.limits.NoNorm || t.ended() || stop == trace.Cancelled || stop == trace.Outpaced || stop == trace.Failed {
 		return
 	}
 	t.tellErrors()

@@ -88,6 +88,9 @@ func TestEnergyErrorsOfATrial(t *testing.T) {
 			t.Errorf("%d errors of %d iterations", n, h.Iterations)
 		}
 	}
+	if h := moved(t, spread(20), "cg+none", Limits{NoNorm: true}); h.EnergyErrors != nil || h.Locks != nil || len(h.Alphas) == 0 {
+		t.Errorf("A is said to have no energy norm: %d errors, %d locks", len(h.EnergyErrors), len(h.Locks))
+	}
 	if h := moved(t, spread(20, -1), "cg+none", Limits{}); h.EnergyErrors != nil || h.Locks != nil {
 		t.Errorf("an indefinite matrix has no energy norm: %d errors, %d locks", len(h.EnergyErrors), len(h.Locks))
 	}

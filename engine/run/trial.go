@@ -66,6 +66,7 @@ type Limits struct {
 	Unreachable float64 // part of b known to be out of A's range, relative to ‖b‖; 0 if none known
 	Delta       float64 // what the printed digits leave open in an entry
 	Vectors     bool    // keep the vectors behind events and the end
+	NoNorm      bool    // A is known not to be symmetric and semi-definite: xᵀA x is no norm, and cg's coefficients tell nothing
 	Smallest    float64 // a proved lower bound of the spectrum of a symmetric A; 0 if none is known
 	// FieldTol is what the residual of each field must come down to as well,
 	// 0 for nothing; nil where no field is asked for.
