@@ -1,0 +1,189 @@
+package choose
+
+import (
+	"slices"
+	"strings"
+	"testing"
+	"time"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+// running is a live trial.
+func running(pairing string, setup, own time.Duration) trace.History {
+	h := trial(pairing, trace.Running, setup, own)
+	h.TrueResidual = 1e-3
+	return h
+}
+
+func tried(trials []trace.History) map[string]bool {
+	m := map[string]bool{}
+	for _, h := range trials {
+		m[h.Pairing] = true
+	}
+	return m
+}
+
+func race(trials ...trace.History) Race {
+	r := Race{Facts: facts(inspect.Yes, inspect.Yes), Candidates: list(), Trials: trials, Tried: tried(trials), Limit: 1000}
+	for _, p := range r.First() {
+		r.Tried[p] = true
+	}
+	return r
+}
+
+const second = time.Second
+
+func TestRaceBeginsWithTheLineUp(t *testing.T) {
+	r := race()
+	r.Tried = nil
+	if got, want := r.Next().Add, LineUp(r.Facts, r.Candidates, ""); !slices.Equal(got, want) || len(got) == 0 {
+		t.Errorf("a race begins with %v, the line-up is %v", got, want)
+	}
+}
+
+func TestNothingIsEndedBeforeAnythingConverged(t *testing.T) {
+	r := race(running("cg+none", 0, 100*second), running("cg+jacobi", 0, second))
+	if o := r.Next(); len(o.End) > 0 || o.Setup != 0 {
+		t.Errorf("orders %+v", o)
+	}
+}
+
+func TestWhoHasLost(t *testing.T) {
+	winner := trial("cg+ic", trace.Converged, second, 3*second)
+	for _, c := range []struct {
+		what string
+		h    trace.History
+		lost bool
+	}{
+		{"well behind", running("cg+none", 0, 4*second), true},
+		{"within the margin", running("cg+none", 0, 3500*time.Millisecond), false},
+		{"slow set-up, quick solve: it may win for many right-hand sides", running("cg+ssor", 5*second, 6*second), false},
+		{"slow set-up, slow solve", running("cg+ssor", 5*second, 8*second), true},
+	} {
+		o := race(winner, c.h).Next()
+		if got := len(o.End) == 1 && o.End[0].Trial == 1; got != c.lost {
+			t.Errorf("%s: ended %v, want %v (%+v)", c.what, got, c.lost, o.End)
+		}
+		if c.lost && !strings.Contains(o.End[0].Reason, "cg+ic has the answer") {
+			t.Errorf("%s: reason %q", c.what, o.End[0].Reason)
+		}
+	}
+}
+
+func TestTodayIsNeverEnded(t *testing.T) {
+	today := running("cg+none", 0, 100*second)
+	today.Today = true
+	r := race(trial("cg+ic", trace.Converged, 0, second), today)
+	r.Today = "cg+none"
+	if o := r.Next(); len(o.End) > 0 {
+		t.Errorf("ended: %+v", o.End)
+	}
+}
+
+// A restarted method that needs far more iterations than it may take is
+// hopeless, unless its predictions fall; other methods are let go on.
+func TestOnlyTheHopelessAreEndedEarly(t *testing.T) {
+	hopeless := running("gmres+none", 0, second)
+	hopeless.Restarted = true
+	for i := range 6 {
+		hopeless.Predictions = append(hopeless.Predictions, trace.Prediction{Iter: 100 + 10*i, Total: 1e6, Low: 9e5, High: 2e6})
+	}
+	gaining := hopeless
+	gaining.Predictions = slices.Clone(hopeless.Predictions)
+	for i := range gaining.Predictions {
+		gaining.Predictions[i].Total /= float64(int(1) << i)
+	}
+	free := hopeless
+	free.Restarted = false
+	other := running("cg+none", 0, second)
+	for i, c := range []struct {
+		h    trace.History
+		lost bool
+	}{{hopeless, true}, {gaining, false}, {free, false}} {
+		if got := len(race(other, c.h).Next().End) == 1; got != c.lost {
+			t.Errorf("case %d: ended %v, want %v", i, got, c.lost)
+		}
+	}
+	if o := race(hopeless).Next(); len(o.End) > 0 {
+		t.Error("the last live trial was ended")
+	}
+}
+
+func TestSetUpsAreBoundedOnceSomethingConverged(t *testing.T) {
+	if o := race(trial("cg+ic", trace.Converged, 0, second)).Next(); o.Setup != 4*second {
+		t.Errorf("a set-up may take %v, want four times the best", o.Setup)
+	}
+}
+
+// Kinds of preconditioners come first, then solvers with the leader, then its
+// parameters; nothing twice; and it ends.
+func TestWavesFollowEachOtherAndEnd(t *testing.T) {
+	r := race(trial("cg+none", trace.Converged, 0, 4*second), trial("cg+ic:0", trace.Converged, 0, second))
+	for i := range r.Candidates {
+		if r.Candidates[i].Precond == "ic" {
+			r.Candidates[i].Pairing += ":0"
+		}
+	}
+	seen := map[string]bool{}
+	var order []string
+	for range 100 {
+		o := r.Next()
+		if len(o.Add) == 0 {
+			break
+		}
+		for _, p := range o.Add {
+			if seen[p] {
+				t.Fatalf("%s twice", p)
+			}
+			seen[p], r.Tried[p] = true, true
+			order = append(order, p)
+			r.Trials = append(r.Trials, trial(p, trace.Converged, 0, 3*second))
+		}
+	}
+	at := func(p string) int { return slices.Index(order, p) }
+	if at("cg+ilu") < 0 || at("minres+ic:0") < at("cg+ilu") || at("cg+ic:1") < at("minres+ic:0") || at("rcm/cg+ic:0") < at("cg+ic:1") {
+		t.Errorf("order %v", order)
+	}
+	if o := r.Next(); len(o.Add) > 0 {
+		t.Errorf("it does not end: %v", o.Add)
+	}
+}
+
+// Where nothing converges, help is added, and later each time.
+func TestHelpIsAddedWhereNothingConverges(t *testing.T) {
+	r := race()
+	for _, p := range r.First() {
+		r.Trials = append(r.Trials, running(p, 0, 100*time.Millisecond))
+	}
+	if o := r.Next(); len(o.Add) != 0 {
+		t.Errorf("%v added after 0.1 s", o.Add)
+	}
+	for i := range r.Trials {
+		r.Trials[i].OwnTime = 600 * time.Millisecond
+	}
+	o := r.Next()
+	if len(o.Add) != 1 {
+		t.Fatalf("%v added after 0.6 s, want one", o.Add)
+	}
+	r.Trials = append(r.Trials, running(o.Add[0], 0, 600*time.Millisecond))
+	r.Tried[o.Add[0]] = true
+	if o := r.Next(); len(o.Add) != 0 {
+		t.Errorf("%v added at once after another", o.Add)
+	}
+}
+
+func TestCostlyFactorisationsWait(t *testing.T) {
+	r := race()
+	direct := Candidate{Pairing: "richardson+cholesky", Solver: "richardson", Precond: "cholesky", Direct: true, Memory: 1 << 40}
+	r.Candidates = append(r.Candidates, direct)
+	r.Facts.N = 50_000
+	if slices.Contains(r.First(), direct.Pairing) {
+		t.Error("a race begins with a factorisation of a terabyte")
+	}
+	r.Candidates[len(r.Candidates)-1].Memory = 1 << 20
+	if !slices.Contains(r.First(), direct.Pairing) {
+		t.Error("a cheap factorisation is left out")
+	}
+}
