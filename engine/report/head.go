@@ -14,11 +14,12 @@ import (
 
 // The shape of the text report.
 const (
-	Width      = 78 // columns
-	HeadLines  = 12 // at most
-	labelCols  = 12
-	maxWhy     = 3 // findings in the head
-	maxCommand = 6 // lines of the command to repeat, which is not cut for others
+	Width     = 78 // columns
+	HeadLines = 12 // at most
+	labelCols = 12
+	maxWhy    = 3 // findings in the head
+	whole     = 2 // items up to this rank are not cut for the sake of others
+	mostLines = 6 // of one item
 )
 
 // item is one entry of the head: a label, a text, and which item is served
@@ -33,33 +34,14 @@ type item struct {
 // "..." and is told in full further down.
 func Head(d Document) []string {
 	items := headItems(d)
-	command := min(len(wrap(repeatText(d), Width-labelCols)), maxCommand)
-	for len(items)+command-1 > HeadLines {
+	for least(items) > HeadLines && slices.ContainsFunc(items, further) {
 		at := len(items) - 1
-		for at > 0 && items[at].label != "" { // the last finding but the first
+		for !further(items[at]) {
 			at--
 		}
-		items = slices.Delete(items, at, at+1)
+		items = slices.Delete(items, at, at+1) // told in full further down
 	}
-	lines := make([]int, len(items)) // given to each
-	need := make([]int, len(items))
-	spare := HeadLines - len(items)
-	for i, it := range items {
-		lines[i], need[i] = 1, len(wrap(it.text, Width-labelCols))
-		if it.label == "REPEAT" {
-			lines[i], spare = command, spare-(command-1)
-		}
-	}
-	for pass := 0; pass < HeadLines; pass++ {
-		for rank := 0; rank < HeadLines; rank++ {
-			for i, it := range items {
-				if it.rank == rank && spare > 0 && lines[i] < need[i] {
-					lines[i]++
-					spare--
-				}
-			}
-		}
-	}
+	lines := allot(items)
 	var out []string
 	for i, it := range items {
 		label := it.label
@@ -69,6 +51,46 @@ func Head(d Document) []string {
 		}
 	}
 	return out
+}
+
+// further says whether an item is a finding after the first.
+func further(it item) bool { return it.label == "" }
+
+// least is how many lines items need, those of the lowest ranks whole.
+func least(items []item) int {
+	sum := 0
+	for _, it := range items {
+		if it.rank <= whole {
+			sum += needs(it)
+		} else {
+			sum++
+		}
+	}
+	return sum
+}
+
+// needs is how many lines an item takes whole, up to mostLines.
+func needs(it item) int { return min(len(wrap(it.text, Width-labelCols)), mostLines) }
+
+// allot gives each item a line, those of the lowest ranks all they need as far
+// as there is room, and what is left to the others in turn.
+func allot(items []item) []int {
+	lines := make([]int, len(items))
+	spare := HeadLines - len(items)
+	for i := range lines {
+		lines[i] = 1
+	}
+	for pass := range HeadLines {
+		for rank := range HeadLines {
+			for i, it := range items {
+				for it.rank == rank && spare > 0 && lines[i] < needs(it) && (rank <= whole || lines[i] <= pass) {
+					lines[i]++
+					spare--
+				}
+			}
+		}
+	}
+	return lines
 }
 
 func headItems(d Document) []item {
@@ -82,16 +104,16 @@ func headItems(d Document) []item {
 		if i == maxWhy {
 			break
 		}
-		items = append(items, item{label, findingText(f), 1 + 3*min(i, 1)})
+		items = append(items, item{label, findingText(f), whole + 2*min(i, 1)})
 		label = ""
 	}
 	if len(why) == 0 {
 		items = append(items, item{label, "no finding: nothing was seen that slows or spoils a solve", 4})
 	}
 	return append(items,
-		item{"USE", useText(d), 0},
+		item{"USE", useText(d), 1},
 		item{"DOUBT", doubtText(d), 5},
-		item{"REPEAT", repeatText(d), 2},
+		item{"REPEAT", repeatText(d), 0},
 		item{"FINGERPRINT", orDash(plain(d.System.Fingerprint)), 7})
 }
 

@@ -28,7 +28,7 @@ func htmlOf(t *testing.T, d Document) string {
 func TestHTMLStandsAlone(t *testing.T) {
 	r := rand.New(rand.NewPCG(3, 4))
 	docs := []Document{{}, typical(), told()}
-	for range 25 {
+	for range 12 {
 		docs = append(docs, wild(r))
 	}
 	for i, d := range docs {
