@@ -49,11 +49,12 @@ func curvature(f *inspect.Facts, h trace.History, e trace.Event) Finding {
 }
 
 // notDefinite: a symmetric A whose diagonal is positive is not positive
-// definite all the same. Silent where a trial was told so.
+// definite all the same. Silent where a trial was told so, or a mechanism says
+// why.
 var notDefinite = Rule{"not-definite", func(c Case) []Finding {
 	f := c.Facts
 	if f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer != inspect.No || semidefinite(f) ||
-		f.DiagNegative+f.DiagZero+f.DiagMissing > 0 {
+		f.DiagNegative+f.DiagZero+f.DiagMissing > 0 || mechanism.Judge(c) != nil {
 		return nil
 	}
 	for _, h := range c.Trials {

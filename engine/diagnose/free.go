@@ -16,7 +16,7 @@ const toRounding = 1e-13
 var mechanism = Rule{"mechanism", func(c Case) []Finding {
 	f := c.Facts
 	if f.Study == nil || f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer == inspect.Yes ||
-		f.NegativeCount.Answer == inspect.Yes || f.RowSumsZero.Answer == inspect.Yes || f.DiagNegative > 0 {
+		f.NegativeCount.Answer == inspect.Yes || f.DiagNegative > 0 {
 		return nil
 	}
 	var free []inspect.NullDirection
@@ -25,7 +25,7 @@ var mechanism = Rule{"mechanism", func(c Case) []Finding {
 			free = append(free, d)
 		}
 	}
-	if len(free) == 0 {
+	if len(free) <= constants(f) {
 		return nil
 	}
 	claim, rows := c.motions(free)
@@ -46,6 +46,14 @@ var mechanism = Rule{"mechanism", func(c Case) []Finding {
 	g.Advice += openDigits(f, free[0].Quotient)
 	return []Finding{g}
 }}
+
+// constants is how many free directions the row sums account for.
+func constants(f *inspect.Facts) int {
+	if f.RowSumsZero.Answer == inspect.Yes {
+		return f.NullComponents
+	}
+	return 0
+}
 
 // openDigits says that the printed digits of the file leave open what a number,
 // relative to A, is.
@@ -136,7 +144,7 @@ func heaviest(free []inspect.NullDirection) float64 {
 // nearNull: a few directions are mapped nearly to zero, far below all others.
 var nearNull = Rule{"near-null", func(c Case) []Finding {
 	f := c.Facts
-	if f.Study == nil || len(f.Study.Null) == 0 || f.Singular.Answer == inspect.Yes || f.RowSumsZero.Answer == inspect.Yes ||
+	if f.Study == nil || len(f.Study.Null) <= constants(f) || f.Singular.Answer == inspect.Yes && f.RowSumsZero.Answer != inspect.Yes ||
 		mechanism.Judge(c) != nil {
 		return nil
 	}

@@ -41,22 +41,39 @@ func (e *exam) rigidMotions(norm float64) []float64 {
 	return quotients
 }
 
-// rigidIn does so for one part.
-func (e *exam) rigidIn(parts *linear.Components, part int32, norm float64) []float64 {
-	var basis, images [][]float64
+// rigidIn does so for one part: a motion that is free by itself is taken as it
+// is, and of the others the combinations that are.
+func (e *exam) rigidIn(parts *linear.Components, part int32, norm float64) (quotients []float64) {
+	var basis, held, images [][]float64
 	for _, m := range e.s.NearNull {
-		v := make([]float64, len(m))
+		v, w := make([]float64, len(m)), make([]float64, len(m))
 		for i, x := range m {
 			if parts.Of[i] == part {
 				v[i] = x / e.col[i]
 			}
 		}
-		if orthonormal(v, basis) {
-			w := make([]float64, len(v))
-			e.scaled.Apply(w, v)
-			basis, images = append(basis, v), append(images, w)
+		if !orthonormal(v, basis) {
+			continue
+		}
+		basis = append(basis, v)
+		e.scaled.Apply(w, v)
+		if q := linear.Norm2(w) / norm; q <= freeLimit {
+			e.free, quotients = append(e.free, v), append(quotients, q)
+			continue
+		}
+		held, images = append(held, v), append(images, w)
+	}
+	for _, v := range combined(held, images) {
+		if q := e.quotient(v, norm); q <= freeLimit {
+			e.free, quotients = append(e.free, v), append(quotients, q)
 		}
 	}
+	return quotients
+}
+
+// combined returns the singular vectors of an operator on the span of an
+// orthonormal basis, given its images.
+func combined(basis, images [][]float64) [][]float64 {
 	k := len(basis)
 	gram, values := make([]float64, k*k), make([]float64, k)
 	for i := range k {
@@ -67,18 +84,14 @@ func (e *exam) rigidIn(parts *linear.Components, part int32, norm float64) []flo
 	if k == 0 || !spectrum.Symmetric(gram, values, make([]float64, 3*k)) {
 		return nil
 	}
-	var quotients []float64
-	for j := range k {
-		v := make([]float64, e.f.N)
+	out := make([][]float64, k)
+	for j := range out {
+		out[j] = make([]float64, len(basis[0]))
 		for i := range k {
-			linear.Axpy(gram[i*k+j], basis[i], v)
-		}
-		if q := e.quotient(v, norm); q <= freeLimit {
-			e.free = append(e.free, v)
-			quotients = append(quotients, q)
+			linear.Axpy(gram[i*k+j], basis[i], out[j])
 		}
 	}
-	return quotients
+	return out
 }
 
 // orthonormal makes v orthogonal to the basis and of unit length; false where
