@@ -38,10 +38,27 @@ func (e *exam) spectra() error {
 	if e.out.Equilibrated == nil {
 		e.out.Equilibrated = ask("equilibrated A", e.row, e.col, nil)
 	}
+	e.doubtFactor()
 	if x := e.out.Equilibrated; x != nil && x.Condition > 0 && x.Certainty == Measured {
 		e.out.Digits = max(0, 53*math.Log10(2)-math.Log10(x.Condition))
 	}
 	return err
+}
+
+// shaky is the condition of A equilibrated from which solves with its
+// factorisation may have no correct digit.
+const shaky = 1e13
+
+// doubtFactor calls estimated what rests on such a factorisation.
+func (e *exam) doubtFactor() {
+	if x := e.out.Equilibrated; x == nil || !(x.Condition > shaky) {
+		return
+	}
+	for _, x := range []*Spectrum{e.out.Raw, e.out.Equilibrated, e.out.Jacobi, e.out.Rest} {
+		if x != nil {
+			x.Certainty = Estimated
+		}
+	}
 }
 
 // alike says whether two positive diagonals differ by no more than what an
