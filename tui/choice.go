@@ -8,8 +8,8 @@ import (
 )
 
 // choiceText is the recommendation in full: what, why, what could overturn it,
-// the ranking for one and for many right-hand sides, the settings, what was
-// ruled out, and how good the predictions were.
+// the settings, the ranking for one and for many right-hand sides, how good the
+// predictions were, and what was ruled out.
 func (m *model) choiceText(w int) []string {
 	c := m.snap.Choice
 	if c.Pairing == "" {
@@ -25,13 +25,13 @@ func (m *model) choiceText(w int) []string {
 	lines := []string{m.on.paint(strong, clip(head, w))}
 	lines = append(lines, m.bullets("because", c.Reasons, w)...)
 	lines = append(lines, m.bullets("doubt", c.Doubts, w)...)
-	lines = append(lines, m.ranking(c.Ranked, w)...)
 	if len(c.Settings) > 0 {
 		lines = append(lines, "", m.on.paint(faint, "settings, for any code"))
 		for _, s := range c.Settings {
 			lines = append(lines, hanging(m.signs.clean(s), w)...)
 		}
 	}
+	lines = append(lines, m.ranking(c.Ranked, w)...)
 	lines = append(lines, m.outcomes(c.Outcomes, w)...)
 	return append(lines, m.ruledOut(c.RuledOut, w)...)
 }
@@ -52,7 +52,7 @@ func (m *model) ranking(ranked []choose.Ranked, w int) []string {
 		return nil
 	}
 	name := min(max(w-59, 14), 34)
-	head := "     " + left("seconds, right sides", name)
+	head := "     " + left("time, right sides", name)
 	for _, n := range choose.Sides {
 		head += right(fmt.Sprintf("for %d", n), 9)
 	}
@@ -77,13 +77,13 @@ func (m *model) rankedRow(place int, r choose.Ranked, name int) string {
 		case !r.Reached && i == 0:
 			text = "not met"
 		case r.Reached && finite(r.For[i]) && r.For[i] > 0:
-			text = seconds(r.For[i])
+			text = took(r.For[i])
 		case r.Reached && i == 0:
-			text = seconds(r.Seconds)
+			text = took(r.Seconds)
 		}
 		line += right(text, 9)
 	}
-	return line + right(seconds(r.Setup), 9) + right(fmt.Sprint(r.Iterations), 8) + right(size(r.Memory), 10)
+	return line + right(took(r.Setup), 9) + right(fmt.Sprint(r.Iterations), 8) + right(size(r.Memory), 10)
 }
 
 // near is how far a prediction may be off to count as good.

@@ -87,6 +87,21 @@ func seconds(v float64) string {
 	return strconv.FormatFloat(v, 'f', 0, 64)
 }
 
+// took writes a number of seconds with its unit: 29.8 us, 1.24 ms, 35.2 s.
+func took(v float64) string {
+	switch {
+	case math.IsNaN(v) || math.IsInf(v, 0) || v < 0:
+		return none
+	case v < 0.9995e-3:
+		return strconv.FormatFloat(v*1e6, 'g', 3, 64) + " us"
+	case v < 0.9995:
+		return strconv.FormatFloat(v*1e3, 'g', 3, 64) + " ms"
+	case v < 999.5:
+		return strconv.FormatFloat(v, 'g', 3, 64) + " s"
+	}
+	return strconv.FormatFloat(v, 'f', 0, 64) + " s"
+}
+
 // size writes a number of bytes: 12.3 MiB.
 func size(b int64) string {
 	if b <= 0 {

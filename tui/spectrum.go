@@ -24,7 +24,7 @@ func (v *spectrumView) entry() *prompt { return nil }
 func (v *spectrumView) keys(m *model) []action {
 	list := []action{
 		bindKey("pick; a trial by its number", m.trials.pickDigit, "1", "2", "3", "4", "5", "6", "7", "8", "9", "0").named("1-9"),
-		bind("of; A or the picked trial", func(m *model) tea.Cmd { v.ofA = !v.ofA; v.first = 0; return nil }, "o"),
+		bind("A or trial; whose picture", func(m *model) tea.Cmd { v.ofA = !v.ofA; v.first = 0; return nil }, "o"),
 		bind("next trial", func(m *model) tea.Cmd { m.trials.move(m, 1); return nil }, "right", "l"),
 		bind("trial before", func(m *model) tea.Cmd { m.trials.move(m, -1); return nil }, "left", "h"),
 		bind("info; all of the picked trial", (*model).openInfo, "i"),

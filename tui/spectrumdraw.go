@@ -149,7 +149,7 @@ func (r ruler) ticks(w int) []float64 {
 }
 
 // pictureMargin is the width of the labels left of a picture.
-const pictureMargin = 7
+const pictureMargin = 8
 
 // densityPicture draws how many values lie where, h lines high: single values
 // by column, bins each as high as what they hold. Where there is any there is
