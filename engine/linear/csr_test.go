@@ -141,3 +141,40 @@ func TestProductsDoNotDependOnThreads(t *testing.T) {
 		}
 	}
 }
+
+// Products with the transpose have the bits of rows scattered in order, on any
+// number of threads, and allocate nothing.
+func TestApplyTDoesNotDependOnThreads(t *testing.T) {
+	defer SetThreads(1)
+	const rows, cols = 12000, 9001
+	u := make([]float64, 3*rows)
+	Uniform(u, 5)
+	var entries []Entry
+	for k := range 2 * rows { // half of them near the diagonal, some rows empty
+		i, j := k%rows, int((u[k]+1)/2*cols)
+		if k < rows {
+			j = min(max(i-500+j%1000, 0), cols-1)
+		}
+		if i%7 != 0 {
+			entries = append(entries, Entry{I: i, J: j, V: u[k]})
+		}
+	}
+	a := FromEntries(rows, cols, entries)
+	x, want, got := u[2*rows:], make([]float64, cols), make([]float64, cols)
+	for i := range rows {
+		c, v := a.Row(i)
+		for k := range c {
+			want[c[k]] += float64(v[k] * x[i])
+		}
+	}
+	for _, threads := range []int{1, 2, 3, 5} {
+		SetThreads(threads)
+		Uniform(got, 6) // what was there does not count
+		if a.ApplyT(got, x); !slices.Equal(got, want) {
+			t.Errorf("%d threads: other bits than the rows in order", threads)
+		}
+		if n := testing.AllocsPerRun(10, func() { a.ApplyT(got, x) }); n > 0 {
+			t.Errorf("%d threads: %g allocations", threads, n)
+		}
+	}
+}

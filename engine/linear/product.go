@@ -44,14 +44,55 @@ func applyDotKernel(j *job, lo, hi, block int) {
 	j.part[block] = dot(j.x[lo:hi], j.w[lo:hi])
 }
 
-// ApplyT computes dst = Aᵀ x, on the calling thread: rows are scattered in
-// order, so the result does not depend on the number of threads.
+// ApplyT computes dst = Aᵀ x on the thread team. Each thread takes its columns
+// and adds to them in order of the rows, so that the result does not depend on
+// the number of threads.
 func (a *CSR) ApplyT(dst, x []float64) {
-	clear(dst)
-	for i, xi := range x {
+	parts := 1
+	if a.NCols >= serialBelow*Block {
+		parts = Threads()
+	}
+	if parts == 1 {
+		a.scatter(dst, x, 0, a.NCols)
+		return
+	}
+	j := begin(scatterKernel, parts*partStride*Block)
+	j.m, j.x, j.w = a, x[:a.NRows], dst[:a.NCols]
+	j.finish()
+}
+
+func scatterKernel(j *job, _, _, block int) {
+	parts, p, n := j.n/(partStride*Block), block/partStride, j.m.NCols
+	if block%partStride == 0 {
+		j.m.scatter(j.w, j.x, n*p/parts, n*(p+1)/parts)
+	}
+}
+
+// scatter computes dst[lo:hi] of Aᵀ x. Rows that end before these columns or
+// begin behind them are passed over; of a matrix whose rows lie near the
+// diagonal that is most of the others.
+func (a *CSR) scatter(dst, x []float64, lo, hi int) {
+	clear(dst[lo:hi])
+	from, to := int32(lo), int32(hi)
+	whole := hi-lo == a.NCols
+	for i, xi := range x[:a.NRows] {
 		cols, vals := a.Row(i)
+		if len(cols) == 0 || cols[0] >= to || cols[len(cols)-1] < from {
+			continue
+		}
+		if !whole {
+			k := 0
+			for k < len(cols) && cols[k] < from {
+				k++
+			}
+			cols, vals = cols[k:], vals[k:]
+		}
+		vals = vals[:len(cols)]
 		for k, c := range cols {
-			dst[c] += vals[k] * xi
+			if c >= to {
+				break
+			}
+			dst[uint32(c)] += float64(vals[k] * xi)
 		}
 	}
 }
