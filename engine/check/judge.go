@@ -6,9 +6,6 @@ import (
 	"strings"
 )
 
-// ruleOf is the definition behind each stopping rule.
-var ruleOf = map[string]string{"rhs": "rhs", "initial": "initial", "backward": "backward", "absolute": "absolute"}
-
 // Definition returns the definition of that name, or false.
 func (a *Answer) Definition(name string) (Definition, bool) {
 	for _, d := range a.Definitions {
@@ -22,7 +19,7 @@ func (a *Answer) Definition(name string) (Definition, bool) {
 // judge decides whether the rule and the fields' own tolerances hold.
 func (w *work) judge() {
 	out, tol := w.out, w.q.Tol
-	d, ok := out.Definition(ruleOf[w.q.Rule])
+	d, ok := out.Definition(w.q.Rule) // definitions are named as the rules are
 	if !ok { // without x₀ the first residual is b
 		d, ok = out.Definition("rhs")
 	}
