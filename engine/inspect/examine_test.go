@@ -259,3 +259,33 @@ func TestStudyRepeats(t *testing.T) {
 }
 
 // The free directions of a singular nonsymmetric matrix are as many as its rank
+
+// Rows that stand alone in the middle of the numbering do not stop growth from
+// being measured on the mesh about them.
+func TestGrowthBesideSingletons(t *testing.T) {
+	s, err := samples.Build("plate:40")
+	if err != nil {
+		t.Fatal(err)
+	}
+	a := s.Matrix()
+	moved := func(i int) int {
+		if i < 800 {
+			return i
+		}
+		return i + 5
+	}
+	var out []linear.Entry
+	for i := range 5 {
+		out = append(out, e(800+i, 800+i, 1))
+	}
+	for i := range a.NRows {
+		cols, vals := a.Row(i)
+		for k, j := range cols {
+			out = append(out, e(moved(i), moved(int(j)), vals[k]))
+		}
+	}
+	g := studied(t, ones(linear.FromEntries(1605, 1605, out), 17), inspect.Quick).Study.Growth
+	if g == nil || math.Abs(g.Exponent-0.5) > 0.08 {
+		t.Errorf("%+v", g)
+	}
+}

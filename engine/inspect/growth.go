@@ -30,6 +30,9 @@ func (e *exam) growth() error {
 	}
 	w := newBalls(e)
 	centre := e.middle(w)
+	if centre < 0 {
+		return nil
+	}
 	for _, size := range sizes {
 		a := e.a
 		if size < e.f.N {
@@ -51,14 +54,19 @@ func (e *exam) growth() error {
 }
 
 // middle is a row far from the rim of the mesh: half way between two rows that
-// are far apart.
+// are far apart, in a part that holds most of the system; -1 where there is no
+// such part.
 func (e *exam) middle(w *balls) int {
-	rows, _ := w.grow(e.f.N/2, e.f.N)
-	far := int(rows[len(rows)-1])
-	rows, within := w.grow(far, e.f.N)
-	half := within[len(within)/2]
-	from := within[max(0, len(within)/2-1)]
-	return int(rows[(from+half)/2])
+	for start := e.f.N / 2; start < min(e.f.N/2+64, e.f.N); start++ {
+		rows, _ := w.grow(start, e.f.N)
+		if 2*len(rows) < e.f.N {
+			continue
+		}
+		rows, within := w.grow(int(rows[len(rows)-1]), e.f.N)
+		half := len(within) / 2
+		return int(rows[(within[max(0, half-1)]+within[half])/2])
+	}
+	return -1
 }
 
 // rising lists rows in rising order, of n in all.
