@@ -2,6 +2,7 @@ package engine
 
 import (
 	"errors"
+	"reflect"
 	"time"
 
 	"dwindle/engine/choose"
@@ -89,21 +90,26 @@ type told struct {
 	last    uint32 // iteration of the last of them
 	events  int
 	coeffs  int
-	vectors int
 }
 
 // state changes whenever anything of a history does.
 type state struct {
-	stop                                  trace.Stop
-	today                                 bool
-	own                                   time.Duration
-	iterations, records, events, coeffs   int
-	counts, columns, told, locks, vectors int
+	stop                           trace.Stop
+	today                          bool
+	own                            time.Duration
+	iterations, records            int
+	events, coeffs, predictions    int
+	errors, locks, without, copies int
+	counts, columns, harmonic      int
+	probe                          *trace.MProbe
+	vectors                        uintptr // of the map: a changed one is another
 }
 
 func stateOf(h *trace.History) state {
-	return state{h.Stop, h.Today, h.OwnTime, h.Iterations, len(h.Records), len(h.Events), len(h.Alphas),
-		len(h.Counts), len(h.Columns), len(h.Predictions), len(h.Locks), len(h.Vectors)}
+	return state{stop: h.Stop, today: h.Today, own: h.OwnTime, iterations: h.Iterations, records: len(h.Records),
+		events: len(h.Events), coeffs: len(h.Alphas), predictions: len(h.Predictions), errors: len(h.EnergyErrors),
+		locks: len(h.Locks), without: len(h.Without), copies: h.Delay, counts: len(h.Counts), columns: len(h.Columns),
+		harmonic: len(h.Harmonic), probe: h.Probe, vectors: reflect.ValueOf(h.Vectors).Pointer()}
 }
 
 // since is the change of a trial since t was told, and renews t.
@@ -119,11 +125,11 @@ func (t *told) since(id int, h trace.History) (change, bool) {
 	c.Records, c.Events = columnsOf(h.Records[c.Keep:]), h.Events[t.events:]
 	k := min(len(h.Alphas), len(h.Betas))
 	c.Alphas, c.Betas = h.Alphas[t.coeffs:k], h.Betas[t.coeffs:k]
-	if len(h.Vectors) != t.vectors {
+	if now.vectors != t.state.vectors {
 		c.Vectors = h.Vectors
 	}
 	c.Rest.Records, c.Rest.Events, c.Rest.Alphas, c.Rest.Betas, c.Rest.Vectors = nil, nil, nil, nil, nil
-	*t = told{state: now, records: len(h.Records), events: len(h.Events), coeffs: k, vectors: len(h.Vectors)}
+	*t = told{state: now, records: len(h.Records), events: len(h.Events), coeffs: k}
 	if t.records > 0 {
 		t.last = h.Records[t.records-1].Iter
 	}
