@@ -117,7 +117,7 @@ var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 			f.Claim += fmt.Sprintf("; the two part at it %d, and nothing below %s is real", at, num(h.BestTrue))
 			f.Evidence = append(f.Evidence, Evidence{Quantity: "true residual over own number", Value: parts, Iteration: at})
 		}
-		if at := bottom(h); h.Iterations-at > h.Iterations/10 {
+		if at := bottom(h); at > 0 && h.Iterations-at > h.Iterations/10 {
 			f.Claim += fmt.Sprintf("; at the floor since it %d: the other %d its are noise", at, h.Iterations-at)
 		}
 		if deeper, ok := reached(c, h.BestTrue/2); ok {

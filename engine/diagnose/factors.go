@@ -10,15 +10,16 @@ import (
 )
 
 const (
-	unstableGrowth = 1e8 // of ||inv(LU) 1|| ||A|| in the maximum norm (Chow and Saad 1997)
-	nearlyAll      = 0.8 // of the entries of complete factors: little was dropped
-	worthwhile     = 1000
+	unstableGrowth = 1e8  // of ||inv(LU) 1|| ||A|| in the maximum norm (Chow and Saad 1997)
+	ofItself       = 100  // times the condition of A: its own inverse grows no further
+	nearlyAll      = 0.8  // of the entries of complete factors: little was dropped
+	worthwhile     = 1000 // entries from which it matters
 )
 
 // unstable: the solves with incomplete factors blow up, and the trial fails.
 var unstable = Rule{"unstable-factors", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
-		if h.Direct || h.Notes.Growth < unstableGrowth || !h.Stop.Ended() || solved(h) {
+		if h.Direct || h.Notes.Growth < unstableGrowth || h.Notes.Growth < ofItself*condition(c) || !failed(h) {
 			continue
 		}
 		prep, solver, m := cut(h.Pairing)
@@ -33,6 +34,23 @@ var unstable = Rule{"unstable-factors", func(c Case) (out []Finding) {
 	return out
 }}
 
+// condition is that of A as it stands; 0 if it is not known.
+func condition(c Case) float64 {
+	if s := c.Facts.Study; s != nil && s.Raw != nil && s.Raw.Condition > 0 {
+		return s.Raw.Condition
+	}
+	return 0
+}
+
+// failed says whether a trial came to an end of its own without an answer.
+func failed(h trace.History) bool {
+	switch h.Stop {
+	case trace.FalselyConverged, trace.IterationLimit, trace.BrokeDown, trace.Diverged, trace.Stagnated:
+		return true
+	}
+	return false
+}
+
 // nearComplete: incomplete factors that drop next to nothing.
 var nearComplete = Rule{"nothing-dropped", func(c Case) (out []Finding) {
 	complete, ok := direct(c)
@@ -45,8 +63,8 @@ var nearComplete = Rule{"nothing-dropped", func(c Case) (out []Finding) {
 			continue
 		}
 		out = append(out, Finding{Weight: Note, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("%s keeps %d entries, %.0f %% of the complete factors' %d: there is next to no fill to drop",
-				m, h.Notes.Entries, 100*float64(h.Notes.Entries)/float64(complete.Notes.Entries), complete.Notes.Entries),
+			Claim: fmt.Sprintf("%s keeps %d entries, complete factors in a good ordering have %d (%.0f %%): there is next to no fill to drop",
+				m, h.Notes.Entries, complete.Notes.Entries, 100*float64(h.Notes.Entries)/float64(complete.Notes.Entries)),
 			Advice: "factorise completely: " + complete.Pairing,
 			Try:    []string{complete.Pairing},
 			Evidence: []Evidence{number("entries kept", float64(h.Notes.Entries), ""),

@@ -57,6 +57,7 @@ type Case struct {
 	Facts  *inspect.Facts
 	Trials []trace.History
 	Tol    float64
+	Race   bool   // the trials, today's aside, were entered by dwindle, not asked for
 	StopBy string // the stopping rule of the session
 }
 

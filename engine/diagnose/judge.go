@@ -63,9 +63,8 @@ var Catalogue = []Rule{
 }
 
 // Judge applies every rule, drops what another finding explains, and returns
-// the findings, the most important first: by weight, then today's pairing and
-// the system before trials that another one makes superfluous, then what a rule
-// says first before what it says again, then by certainty, then in the order of
+// the findings, the most important first: by weight, then the system and
+// today's pairing before other trials, then what a rule says first before what it says again, then by certainty, then in the order of
 // the catalogue.
 func Judge(c Case) []Finding {
 	if c.Facts == nil {
@@ -84,6 +83,7 @@ func Judge(c Case) []Finding {
 	for i := range all {
 		f := &all[i]
 		advise(c, f)
+		soften(c, f)
 		order[i], ranks[f] = f, again[f.Rule]
 		again[f.Rule]++
 	}

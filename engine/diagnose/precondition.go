@@ -11,7 +11,7 @@ import (
 
 const (
 	asymmetryLimit  = 1e-6  // of the symmetry and linearity probes; rounding stays far below
-	rounding        = 1e-13 // of factors with no growth, per unit of growth
+	rounding        = 1e-10 // of a probe, per unit of growth of the factors
 	indefiniteLimit = 1e-8  // of rᵀM⁻¹r over ‖r‖‖M⁻¹r‖
 )
 

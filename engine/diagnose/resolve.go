@@ -125,15 +125,33 @@ func quickest(c Case) (best trace.History, ok bool) {
 	return best, ok
 }
 
-// concern orders findings of one weight: today's pairing and the system come
-// before a trial that nobody needs because another one has solved it.
+// concern orders findings of one weight: the system and today's pairing first,
+// then other trials, last those that nobody needs because another one has
+// solved the system.
 func concern(c Case, f Finding) int {
 	h, isTrial := find(c, f.Subject)
-	if !isTrial || h.Today {
+	switch {
+	case !isTrial || h.Today:
 		return 0
+	case superfluous(c, h):
+		return 2
 	}
-	if _, ok := quickest(c); ok && !solved(h) {
-		return 1
+	return 1
+}
+
+// superfluous says whether another trial solved the system, and this one did
+// not.
+func superfluous(c Case, h trace.History) bool {
+	_, ok := quickest(c)
+	return ok && !solved(h)
+}
+
+// soften makes a note of what befalls a trial that dwindle itself has entered
+// and that another one has outdone: it costs the user nothing.
+func soften(c Case, f *Finding) {
+	h, isTrial := find(c, f.Subject)
+	best, ok := quickest(c)
+	if c.Race && isTrial && !h.Today && ok && h.Pairing != best.Pairing {
+		f.Weight = Note
 	}
-	return 0
 }
