@@ -93,7 +93,7 @@ func (s *Session) judge(v *Snapshot) {
 	}
 	now := s.clock()
 	if key != s.judged.key || now-s.judged.at > judgeAgain && v.Phase == Running {
-		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule, Race: s.racing()}
+		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule}
 		f := diagnose.Judge(c)
 		s.judged = verdict{key: key, at: now, findings: f, choice: s.rank(histories, f)}
 	}
