@@ -20,7 +20,7 @@ var icEntry = Entry{
 			return 0, false
 		}
 		lower, _, exact := fillCounts(a, v.Int("level"))
-		return factorBytes(a.NRows, lower, lower), exact
+		return factorBytes(a.NRows, lower, lower), exact && a.NRows < bandsFrom
 	},
 	Build: func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 		return built(buildIC(ctx, s, v.Int("level"), progress))

@@ -19,7 +19,7 @@ var iluEntry = Entry{
 			return 0, false
 		}
 		lower, upper, exact := fillCounts(a, v.Int("level"))
-		return factorBytes(a.NRows, lower, upper), exact
+		return factorBytes(a.NRows, lower, upper), exact && a.NRows < bandsFrom
 	},
 	Build: func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 		level := v.Int("level")

@@ -119,7 +119,7 @@ func (f *factors) bytes() int64 {
 }
 
 // factorBytes returns what factors with so many entries below and above the
-// diagonal will take, stored by rows.
+// diagonal will take, stored by rows; by diagonals it is less.
 func factorBytes(n, lower, upper int) int64 {
 	return triangleBytes(n, lower) + triangleBytes(n, upper) + 8*int64(n)
 }
