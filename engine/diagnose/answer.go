@@ -37,7 +37,7 @@ var answer = Rule{"few-correct-digits", func(c Case) []Finding {
 	if !(e.error > math.Pow(c.Tol, fewDigits)) {
 		return nil
 	}
-	f.Claim = fmt.Sprintf("its residual meets %.0e, but backward error %s times condition %s (of %s) leaves about %s",
+	f.Claim = fmt.Sprintf("its residual meets %.0e, but backward error %s times condition %s (of %s) may leave no more than %s",
 		c.Tol, num(e.backward), num(e.kappa), e.of, count(whole(-math.Log10(e.error)), "correct digit"))
 	f.Evidence = []Evidence{number("backward error", e.backward, ""), number("condition of "+e.of, e.kappa, ""),
 		number("relative error to expect, at most", e.error, "")}

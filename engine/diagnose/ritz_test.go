@@ -161,7 +161,7 @@ func TestFewDigits(t *testing.T) {
 		return f
 	}
 	f, ok := said(caseOf(study(1e11, 1e13), h))["few-correct-digits"]
-	if !ok || f.Certainty != inspect.Estimated || !strings.Contains(f.Claim, "(of A) leaves about 1 correct digit") {
+	if !ok || f.Certainty != inspect.Estimated || !strings.Contains(f.Claim, "(of A) may leave no more than 1 correct digit") {
 		t.Errorf("%v: %s", ok, f.Claim)
 	}
 	singular := study(1e11, 1e13)
