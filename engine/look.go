@@ -2,6 +2,7 @@ package engine
 
 import (
 	"math"
+	"strings"
 	"time"
 
 	"dwindle/engine/choose"
@@ -122,7 +123,7 @@ func (s *Session) elapsed() time.Duration {
 
 func (s *Session) settings() report.Settings {
 	return report.Settings{Tol: s.opt.Tol, StopRule: s.opt.StopRule, Iterations: s.opt.Iterations,
-		Seconds: s.opt.Seconds, Seed: madeStart}
+		Seconds: s.opt.Seconds, Seed: madeStart, FieldTols: strings.Join(s.opt.FieldTols, ", ")}
 }
 
 func (s *Session) document() report.Document {

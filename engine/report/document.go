@@ -42,6 +42,7 @@ type Settings struct {
 	Iterations int     // per trial; 0 is the default
 	Seconds    float64 // of the run; 0 is no limit
 	Seed       int
+	FieldTols  string // what must hold of fields as well: NAME=TOL, ...; empty for nothing
 }
 
 // System is the system's name and fingerprint.

@@ -36,11 +36,12 @@ type machineJSON struct {
 }
 
 type settingsJSON struct {
-	Tol        number `json:"tol"`
-	StopRule   string `json:"stop_rule"`
-	Iterations int    `json:"iterations"`
-	Seconds    number `json:"seconds"`
-	Seed       int    `json:"seed"`
+	Tol        number  `json:"tol"`
+	StopRule   string  `json:"stop_rule"`
+	Iterations int     `json:"iterations"`
+	Seconds    number  `json:"seconds"`
+	Seed       int     `json:"seed"`
+	FieldTols  *string `json:"field_tolerances"`
 }
 
 type choiceJSON struct {
@@ -88,7 +89,7 @@ func JSON(w io.Writer, d Document) error {
 		Command: tame(d.Command),
 		Machine: machineJSON{tame(d.Machine.CPU), d.Machine.Threads, d.Machine.MemoryLimit},
 		Settings: settingsJSON{number(d.Settings.Tol), tame(d.Settings.StopRule), d.Settings.Iterations,
-			number(d.Settings.Seconds), d.Settings.Seed},
+			number(d.Settings.Seconds), d.Settings.Seed, optional(d.Settings.FieldTols)},
 		System:   toSystem(d),
 		Facts:    toFacts(d.Facts),
 		Trials:   toTrials(d.Trials),

@@ -76,7 +76,7 @@ func wild(r *rand.Rand) Document {
 			Why: text(), Value: num(), Rows: make([]int, r.IntN(17))}
 	}
 	d := Document{Version: text(), Toolchain: text(), Command: text(), Machine: Machine{text(), r.IntN(9), r.Int64()},
-		Settings: Settings{num(), text(), r.IntN(100), num(), r.IntN(9)},
+		Settings: Settings{Tol: num(), StopRule: text(), Iterations: r.IntN(100), Seconds: num(), Seed: r.IntN(9), FieldTols: text()},
 		System:   System{text(), r.IntN(1e9), r.IntN(1e9), text(), r.IntN(20), text()}}
 	if r.IntN(4) > 0 {
 		d.Facts = &inspect.Facts{N: 3, Complete: r.IntN(2) == 0, Format: text(), RHS: "ones", RHSNorm: num(), Components: r.IntN(3),

@@ -241,8 +241,12 @@ func settingItems(d Document) []labelled {
 	if m.MemoryLimit > 0 {
 		machine += ", memory limit " + memory(m.MemoryLimit)
 	}
+	tolerance := fmt.Sprintf("%s, rule %s", exact(s.Tol), orDash(s.StopRule))
+	if s.FieldTols != "" {
+		tolerance += ", and of fields " + s.FieldTols
+	}
 	items := []labelled{
-		{"tolerance", fmt.Sprintf("%s, rule %s", exact(s.Tol), orDash(s.StopRule))},
+		{"tolerance", tolerance},
 		{"limits", limits},
 		{"machine", machine},
 		{"versions", fmt.Sprintf("dwindle %s, %s, seed %d", orDash(d.Version), orDash(d.Toolchain), s.Seed)}}
