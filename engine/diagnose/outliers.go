@@ -83,7 +83,7 @@ func withoutSingletons(c Case) (words string, evidence []Evidence, ok bool) {
 		if !found || !solved(h) || !worth(h, w) {
 			continue
 		}
-		return fmt.Sprintf("; without them %s would take about %d its in place of %d", h.Pairing, w.Iterations, h.Iterations),
+		return fmt.Sprintf("%s would take about %d its in place of %d", h.Pairing, w.Iterations, h.Iterations),
 			[]Evidence{{Quantity: "iterations of " + h.Pairing, Value: float64(h.Iterations), Iteration: none},
 				{Quantity: "iterations without these rows", Value: float64(w.Iterations), Unit: "predicted", Iteration: none}}, true
 	}

@@ -41,7 +41,7 @@ var singletons = Rule{"singleton-rows", func(c Case) []Finding {
 		return nil
 	}
 	if words, evidence, ok := withoutSingletons(c); ok {
-		g.Claim, g.Evidence = g.Claim+words, append(g.Evidence, evidence...)
+		g.Claim, g.Evidence = g.Claim+"; without them "+words, append(g.Evidence, evidence...)
 	}
 	return []Finding{g}
 }}
@@ -64,8 +64,8 @@ func measuredSingletons(c Case) (out []Finding, ok bool) {
 		does = "are the cause of"
 	}
 	g := Finding{Weight: Drag, Subject: OnSystem, Certainty: lesser(raw.Certainty, rest.Certainty),
-		Claim: fmt.Sprintf("%d decoupled rows (diagonal %s) %s the condition %s: without them it is %s, the eigenvalues of the rest reach from %s to %s",
-			f.Singletons, num(f.SingletonDiag.Min), does, num(raw.Condition), num(rest.Condition), num(rest.Smallest), num(rest.Largest)),
+		Claim: fmt.Sprintf("%d decoupled rows (diagonal %s) %s the condition %s: without them it is %s",
+			f.Singletons, num(f.SingletonDiag.Min), does, num(raw.Condition), num(rest.Condition)),
 		Advice: "eliminate these rows, or rescale them (jacobi does)",
 		Try:    []string{"cg+jacobi"},
 		Evidence: []Evidence{{Quantity: "decoupled rows", Value: float64(f.Singletons), Iteration: none, Rows: f.SingletonRows},
@@ -73,7 +73,9 @@ func measuredSingletons(c Case) (out []Finding, ok bool) {
 			number("condition", raw.Condition, ""), number("condition without them", rest.Condition, ""),
 			number("smallest eigenvalue of the rest", rest.Smallest, ""), number("largest eigenvalue of the rest", rest.Largest, "")}}
 	if words, evidence, ok := withoutSingletons(c); ok {
-		g.Claim, g.Evidence = g.Claim+words, append(g.Evidence, evidence...)
+		g.Claim, g.Evidence = g.Claim+", and "+words, append(g.Evidence, evidence...)
+	} else {
+		g.Claim += fmt.Sprintf(", the eigenvalues of the rest reach from %s to %s", num(rest.Smallest), num(rest.Largest))
 	}
 	return []Finding{g}, true
 }
