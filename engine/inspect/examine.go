@@ -72,6 +72,7 @@ type exam struct {
 	symmetric bool // exactly or to rounding
 	budget    Budget
 	left      float64 // operations
+	reserved  float64 // of them, for what comes after the spectra
 	out       Study
 
 	scaled   *linear.CSR // A equilibrated: B = R A C

@@ -123,7 +123,7 @@ func (e *exam) mostStretched() ([]float64, error) {
 			e.solver.Solve(dst, w)
 		}, 0
 	}
-	if !e.spend(freeSteps * (2*e.solveWork() + 100*float64(n))) {
+	if !e.spend(e.searchWork()) {
 		return nil, nil
 	}
 	out, err := spectrum.Ends(e.ctx, n, apply, spectrum.Wanted{Low: low, High: 1, Tol: 1e-6, Basis: freeSteps + 4,
@@ -136,6 +136,9 @@ func (e *exam) mostStretched() ([]float64, error) {
 	}
 	return out.High[0].Vector, nil
 }
+
+// searchWork is the work of finding one direction.
+func (e *exam) searchWork() float64 { return freeSteps * (2*e.solveWork() + 100*float64(e.f.N)) }
 
 // apart returns how many of the directions stand apart: up to the last at
 // which the quotients grow at least isolated-fold, and of those found as rigid

@@ -12,6 +12,10 @@ func (e *exam) spectra() error {
 	if e.scaled == nil {
 		return nil
 	}
+	if e.solver != nil {
+		e.reserved = min(e.left/2, 2*e.searchWork()) // free directions matter more than another digit
+	}
+	defer func() { e.reserved = 0 }()
 	var err error
 	ask := func(of string, l, r []float64, index []int) *Spectrum {
 		var x *Spectrum
@@ -161,7 +165,7 @@ const (
 // budget; nothing where that is not enough for a few steps.
 func (e *exam) ends(n int, apply func(dst, x []float64), low, high int, product float64, products int) (spectrum.Outermost, error) {
 	step := product + 8*float64(n)*endBasis/2
-	can := int(min(float64(products), e.left/2/step))
+	can := int(min(float64(products), (e.left-e.reserved)/2/step))
 	if can < 10 && can < n {
 		return spectrum.Outermost{}, nil
 	}
