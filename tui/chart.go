@@ -111,20 +111,23 @@ func (p plot) trials(c *canvas) {
 	}
 }
 
-// order is the drawing order: those that matter little lie below.
+// order is the drawing order: those that matter little lie below, the leader
+// and today's on top of the others, the picked one on top of all.
 func (p plot) order() []drawn {
-	var first, out, last []drawn
+	var first, out, lead, last []drawn
 	for _, d := range p.curves {
 		switch {
 		case d.picked:
 			last = append(last, d)
+		case d.leads || d.h.Today:
+			lead = append(lead, d)
 		case aside(d.h):
 			first = append(first, d)
 		default:
 			out = append(out, d)
 		}
 	}
-	return slices.Concat(first, out, last)
+	return slices.Concat(first, out, lead, last)
 }
 
 // ink is the colour of a curve and its tags.

@@ -59,7 +59,8 @@ func everyScreen(t *testing.T, s session, sizes [][2]int, name string) {
 		for _, g := range glyphNames {
 			m := screenOf(s, size[0], size[1], g)
 			m.on = brush(size[0]%2 == 0)
-			for _, keys := range [][]string{nil, {"r"}, {"x", "X"}, {"l", "x"}, {"v"}, {"?"}, {"esc", "a"}, {"esc", "n"}, {"/", "q", "enter"}, {"esc", "tab"}, {"/"}, {"esc", "tab"}, {"pgdown"}} {
+			for _, keys := range [][]string{nil, {"r"}, {"x", "X"}, {"l", "x"}, {"v"}, {"?"}, {"esc", "a"}, {"esc", "n"}, {"/", "q", "enter"}, {"enter", "p"}, {"e", "9"}, {"esc", "esc", "esc", "esc", "i"}, {"pgdown"}, {"esc", "e"}, {"m"}, {"p"},
+				{"esc", "tab"}, {"/"}, {"esc", "tab"}, {"o"}, {"pgdown"}, {"tab"}, {"pgdown"}, {"G"}} {
 				press(m, keys...)
 				sound(t, m, fmt.Sprintf("%s %dx%d %s %v", name, size[0], size[1], g, keys))
 			}
