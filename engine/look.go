@@ -39,6 +39,13 @@ func (s *Session) Snapshot() Snapshot {
 	return s.look()
 }
 
+// Trials returns the trials as they stand, without a judgement.
+func (s *Session) Trials() []Trial {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	return s.view().Trials
+}
+
 // look makes a snapshot; s.mu is held.
 func (s *Session) look() Snapshot {
 	v := s.view()
@@ -94,7 +101,7 @@ func (s *Session) judge(v *Snapshot) {
 	}
 	now := s.clock()
 	if key != s.judged.key || now-s.judged.at > judgeAgain && v.Phase == Running {
-		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule}
+		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule, Race: s.racing()}
 		f := diagnose.Judge(c)
 		s.judged = verdict{key: key, at: now, findings: f, choice: s.rank(histories, f)}
 	}

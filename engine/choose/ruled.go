@@ -8,9 +8,9 @@ import (
 	"dwindle/engine/inspect"
 )
 
-// against says which fact speaks against a candidate that could run, or
+// Against says which fact speaks against a candidate that could run, or
 // nothing.
-func against(f *inspect.Facts, c Candidate) string {
+func Against(f *inspect.Facts, c Candidate) string {
 	switch {
 	case f == nil:
 		return ""
@@ -38,7 +38,7 @@ func RuledOut(f *inspect.Facts, list []Candidate) []Ruled {
 			why = c.Refused
 		}
 		if why == "" {
-			why = against(f, c)
+			why = Against(f, c)
 		}
 		if why == "" {
 			continue

@@ -91,7 +91,7 @@ func symmetric(f *inspect.Facts) bool { return f.Symmetric.Answer == inspect.Yes
 
 // admissible says that nothing known speaks against the candidate.
 func (r Race) admissible(c Candidate) bool {
-	return c.Refused == "" && against(r.Facts, c) == "" && (!c.Baseline || c.Direct)
+	return c.Refused == "" && Against(r.Facts, c) == "" && (!c.Baseline || c.Direct)
 }
 
 // leading are the trials that reached the target in about the best's time,
