@@ -86,7 +86,18 @@ func made(t *testing.T, a linear.Operator, written string) (linear.Applier, trac
 func tryMake(t *testing.T, a linear.Operator, written string) (linear.Applier, trace.BuildNotes, error) {
 	t.Helper()
 	e, v := lookup(t, written)
-	return e.Build(context.Background(), linear.System{A: a}, v, nil)
+	return e.Build(context.Background(), parted(a), v, nil)
+}
+
+// parted is the system of a with every other unknown in the second block, for
+// the methods that ask for two.
+func parted(a linear.Operator) linear.System {
+	n, _ := a.Dims()
+	s := linear.System{A: a, Second: make([]bool, n)}
+	for i := 1; i < n; i += 2 {
+		s.Second[i] = true
+	}
+	return s
 }
 
 func lookup(t *testing.T, written string) (Entry, linear.Values) {

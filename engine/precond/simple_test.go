@@ -82,11 +82,11 @@ func TestCatalogue(t *testing.T) {
 			}
 			ctx, cancel := context.WithCancel(context.Background())
 			cancel()
-			if _, _, err := e.Build(ctx, linear.System{A: a}, v, nil); !errors.Is(err, context.Canceled) {
+			if _, _, err := e.Build(ctx, parted(a), v, nil); !errors.Is(err, context.Canceled) {
 				t.Errorf("a cancelled build gives %v", err)
 			}
 			seen := -1.0
-			_, _, err := e.Build(context.Background(), linear.System{A: a}, v, func(f float64) { seen = max(seen, f) })
+			_, _, err := e.Build(context.Background(), parted(a), v, func(f float64) { seen = max(seen, f) })
 			if err != nil || seen <= 0 || seen >= 1 {
 				t.Errorf("progress reached %g, error %v", seen, err)
 			}
