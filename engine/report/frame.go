@@ -67,8 +67,11 @@ func decadeTicks(low, high float64, most int) []plot.Tick {
 }
 
 func decadeLabel(d float64) string {
-	if d == 0 {
+	switch d {
+	case 0:
 		return "1"
+	case 1:
+		return "10"
 	}
 	return "1e" + strconv.Itoa(int(d))
 }
@@ -88,7 +91,7 @@ func roundTicks(low, high float64, most int) []plot.Tick {
 	}
 	var out []plot.Tick
 	for k := math.Ceil(low/step - 1e-9); k*step <= high+1e-9*step; k++ {
-		x := k * step
+		x := k*step + 0 // never -0
 		out = append(out, plot.Tick{Value: x, Label: strconv.FormatFloat(x, 'g', 6, 64)})
 	}
 	return out

@@ -167,3 +167,27 @@ func TestOwnCurveKeepsPeaks(t *testing.T) {
 		t.Errorf("the curve ends at %g", end.x)
 	}
 }
+
+// TestTicks: round numbers, no sign on zero, none outside, no more than asked.
+func TestTicks(t *testing.T) {
+	for _, c := range []struct {
+		low, high float64
+		most      int
+		want      string
+	}{{0, 950, 4, "0 500"}, {-1, 1, 5, "-1 -0.5 0 0.5 1"}, {0.2, 0.9, 4, "0.2 0.4 0.6 0.8"}, {3, 3, 4, ""}} {
+		var got []string
+		for _, k := range roundTicks(c.low, c.high, c.most) {
+			got = append(got, k.Label)
+		}
+		if s := strings.Join(got, " "); s != c.want {
+			t.Errorf("%g to %g: %s, want %s", c.low, c.high, s, c.want)
+		}
+	}
+	var got []string
+	for _, k := range decadeTicks(-9.5, 1.2, 8) {
+		got = append(got, k.Label)
+	}
+	if s := strings.Join(got, " "); s != "1e-8 1e-6 1e-4 1e-2 1" {
+		t.Errorf("decades: %s", s)
+	}
+}
