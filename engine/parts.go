@@ -101,6 +101,7 @@ type state struct {
 	events, coeffs, predictions    int
 	errors, locks, without, copies int
 	counts, columns, harmonic      int
+	reruns                         int
 	probe                          *trace.MProbe
 	vectors                        uintptr // of the map: a changed one is another
 }
@@ -108,7 +109,7 @@ type state struct {
 func stateOf(h *trace.History) state {
 	return state{stop: h.Stop, today: h.Today, own: h.OwnTime, iterations: h.Iterations, records: len(h.Records),
 		events: len(h.Events), coeffs: len(h.Alphas), predictions: len(h.Predictions), errors: len(h.EnergyErrors),
-		locks: len(h.Locks), without: len(h.Without), copies: h.Delay, counts: len(h.Counts), columns: len(h.Columns),
+		locks: len(h.Locks), without: len(h.Without), copies: h.Delay, counts: len(h.Counts), columns: len(h.Columns), reruns: len(h.Reruns),
 		harmonic: len(h.Harmonic), probe: h.Probe, vectors: reflect.ValueOf(h.Vectors).Pointer()}
 }
 

@@ -65,8 +65,8 @@ func (s *Session) lead(b *run.Bench, r *race) bool {
 
 // steer lets the session move the trials on between rounds: the race, where
 // there is one, and when all have ended the measurement of what was chosen on
-// other right-hand sides, and the reruns that tell how far rounding moves a
-// count.
+// other right-hand sides, the repetitions of trials whose times were close, and
+// the reruns that tell how far rounding moves a count.
 func (s *Session) steer(b *run.Bench) {
 	if s.race == nil && s.columns == nil && s.rerunBudget() <= 0 {
 		return
@@ -77,6 +77,9 @@ func (s *Session) steer(b *run.Bench) {
 			return true
 		case s.columns != nil && s.measureColumns(b, s.columns):
 			return true
+		}
+		if s.race != nil {
+			s.repeat(b)
 		}
 		s.rerun(b)
 		return false

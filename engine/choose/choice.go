@@ -26,6 +26,7 @@ type Ranked struct {
 	Pairing    string
 	Seconds    float64 // own seconds to tolerance, set-up included
 	Setup      float64 // of which set-up
+	Runs       int     // Seconds is the median of so many runs
 	Iterations int
 	Memory     int64
 	Reached    bool    // it converged; otherwise Seconds is NaN

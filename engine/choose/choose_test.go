@@ -131,3 +131,79 @@ func TestNothingReachedIsNoChoice(t *testing.T) {
 		t.Errorf("chose %s although nothing converged", c.Pairing)
 	}
 }
+
+// A trial that was run again counts with its median run.
+func TestMedianOfRuns(t *testing.T) {
+	lucky := trial("cg+none", trace.Converged, 0, time.Second)
+	lucky.Reruns = []trace.Run{{Own: 4 * time.Second}, {Own: 3 * time.Second}}
+	steady := trial("cg+jacobi", trace.Converged, 0, 2*time.Second)
+	steady.Reruns = []trace.Run{{Own: 2 * time.Second}, {Own: 2 * time.Second}}
+	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{lucky, steady}, nil, "")
+	if c.Pairing != "cg+jacobi" || c.Ranked[1].Seconds != 3 || c.Ranked[0].Runs != 3 {
+		t.Errorf("chose %s; %+v", c.Pairing, c.Ranked)
+	}
+	if !strings.Contains(c.Reasons[0], "median of 3 runs") {
+		t.Errorf("reasons %v", c.Reasons)
+	}
+}
+
+func TestGoals(t *testing.T) {
+	quick := trial("gmres+ilu", trace.Converged, 0, time.Second)
+	quick.MemoryBytes, quick.Restarted = 100, true
+	small := trial("bicgstab+none", trace.Converged, 0, 3*time.Second)
+	small.MemoryBytes = 10
+	safe := trial("minres+none", trace.Converged, 0, 2*time.Second)
+	safe.MemoryBytes, safe.Monotone = 20, true
+	for goal, want := range map[string]string{"": "gmres+ilu", Seconds: "gmres+ilu", Memory: "bicgstab+none", Robust: "minres+none"} {
+		if c := Rank(facts(inspect.Yes, inspect.No), []trace.History{quick, small, safe}, nil, goal); c.Pairing != want {
+			t.Errorf("goal %q: chose %s, want %s", goal, c.Pairing, want)
+		}
+	}
+}
+
+// Seconds for many right-hand sides share one set-up; what is better for many
+// is told with the number from which it is.
+func TestManyRightHandSides(t *testing.T) {
+	a := trial("cg+none", trace.Converged, 0, 2*time.Second)
+	b := trial("cg+ic", trace.Converged, 10*time.Second, 11*time.Second)
+	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{a, b}, nil, "")
+	if c.Pairing != "cg+none" || c.Ranked[0].For != [3]float64{2, 20, 2000} || c.Ranked[1].For != [3]float64{11, 20, 1010} {
+		t.Errorf("chose %s; %v, %v", c.Pairing, c.Ranked[0].For, c.Ranked[1].For)
+	}
+	if got := strings.Join(c.Doubts, "; "); !strings.Contains(got, "for 11 right-hand sides and more, cg+ic is better") {
+		t.Errorf("doubts %q", got)
+	}
+	a.Columns = []trace.Column{{Seconds: 0.5}, {Seconds: 1.5}}
+	if c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{a}, nil, ""); c.Ranked[0].For[1] != 10 {
+		t.Errorf("for 10: %g s, measured 1 s a column", c.Ranked[0].For[1])
+	}
+}
+
+func TestWhatIsRuledOutIsGrouped(t *testing.T) {
+	l := list()
+	for i := range l {
+		l[i].Symmetric = l[i].Solver == "cg" || l[i].Solver == "minres"
+		if l[i].Precond == "ic" {
+			l[i].Refused = "ic needs a nonzero diagonal: row 3"
+		}
+	}
+	got := RuledOut(facts(inspect.No, inspect.Unknown), l)
+	if len(got) != 2 || got[0].Pairing != "cg, minres + none, jacobi, ssor, ilu" || got[1].Pairing != "cg, minres, bicgstab, gmres + ic" ||
+		!strings.Contains(got[0].Reason, "assumes A symmetric") || got[1].Reason != "ic needs a nonzero diagonal: row 3" {
+		t.Errorf("%+v", got)
+	}
+}
+
+// What was told last before half of the iterations is held against the end;
+// so is what a finding foresaw for a pairing that was then tried.
+func TestOutcomes(t *testing.T) {
+	h := trial("cg+none", trace.Converged, 0, time.Second)
+	h.Iterations = 100
+	h.Predictions = []trace.Prediction{{Iter: 40, Total: 130}, {Iter: 50, Total: 110}, {Iter: 55, Total: 101}}
+	f := []diagnose.Finding{{Rule: "outliers", Predicts: []diagnose.Predicted{{Pairing: "cg+none", Quantity: "iterations", Value: 90}, {Pairing: "cg+ic", Quantity: "iterations", Value: 9}}}}
+	got := outcomes([]trace.History{h}, f)
+	want := []Outcome{{"cg+none", HalfTime, 110, 100}, {"cg+none", "iterations, foreseen by outliers", 90, 100}}
+	if !slices.Equal(got, want) {
+		t.Errorf("got %+v", got)
+	}
+}

@@ -2,6 +2,7 @@ package choose
 
 import (
 	"fmt"
+	"math"
 	"strings"
 )
 
@@ -51,7 +52,7 @@ func overturned(c Choice) []string {
 			continue
 		}
 		from := (best.Setup - first.Setup) / (first.For[i] - first.Setup - (best.For[i] - best.Setup)) * float64(Sides[i])
-		return []string{fmt.Sprintf("for %.0f right-hand sides and more, %s is better: %s for %d, against %s", from+1, best.Pairing,
+		return []string{fmt.Sprintf("for %.0f right-hand sides and more, %s is better: %s for %d, against %s", math.Floor(from)+1, best.Pairing,
 			took(best.For[i]), Sides[i], took(first.For[i]))}
 	}
 	return nil

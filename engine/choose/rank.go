@@ -35,10 +35,11 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 	}
 	first := c.Ranked[0]
 	c.Pairing = first.Pairing
-	c.Reasons = reasons(trials, c)
+	c.Reasons = reasons(f, trials, c)
 	for _, h := range trials {
 		if h.Today && reached(h) {
-			c.Gain = h.OwnTime.Seconds() / first.Seconds
+			_, own := times(h)
+			c.Gain = own / first.Seconds
 		}
 	}
 	c.Doubts = doubts(f, trials, c)
@@ -49,7 +50,8 @@ func reached(h trace.History) bool { return h.Stop == trace.Converged || h.Stop 
 
 func ranked(h trace.History) Ranked {
 	nan := math.NaN()
-	r := Ranked{Pairing: h.Pairing, Seconds: nan, Setup: h.SetupTime.Seconds(), Iterations: h.Iterations,
+	setup, own := times(h)
+	r := Ranked{Pairing: h.Pairing, Seconds: nan, Setup: setup, Runs: 1 + len(h.Reruns), Iterations: h.Iterations,
 		Memory: h.MemoryBytes, Reached: reached(h), BreakEven: nan, Low: nan, High: nan, Expected: nan, Safe: safe(h)}
 	for i := range r.For {
 		r.For[i] = nan
@@ -58,7 +60,7 @@ func ranked(h trace.History) Ranked {
 		r.Expected = expected(h)
 		return r
 	}
-	r.Seconds = h.OwnTime.Seconds()
+	r.Seconds = own
 	off := spread(h)
 	solve := r.Seconds - r.Setup
 	for i, k := range Sides {
@@ -136,25 +138,6 @@ func breakEven(list []Ranked) {
 	}
 }
 
-func reasons(trials []trace.History, c Choice) []string {
-	first := c.Ranked[0]
-	out := []string{fmt.Sprintf("%s, %s to the target, of which %s set-up", count(first.Iterations, "iteration"), took(first.Seconds), took(first.Setup))}
-	if len(c.Ranked) > 1 && c.Ranked[1].Reached {
-		second := c.Ranked[1]
-		out = append(out, fmt.Sprintf("next is %s with %s and %s", second.Pairing, count(second.Iterations, "iteration"), took(second.Seconds)))
-	}
-	missed := 0
-	for _, r := range c.Ranked {
-		if !r.Reached {
-			missed++
-		}
-	}
-	if missed > 0 {
-		out = append(out, fmt.Sprintf("%d of %d pairings did not reach the target", missed, len(c.Ranked)))
-	}
-	return out
-}
-
 func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
 	var out []string
 	switch f.RHS {
@@ -176,6 +159,7 @@ func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
 		out = append(out, notToldApart(c)...)
 	}
 	out = append(out, overturned(c)...)
+	out = append(out, unproved(f, trials, c)...)
 	for _, h := range trials {
 		if !h.Stop.Ended() {
 			out = append(out, "trials are still going")

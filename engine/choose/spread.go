@@ -1,6 +1,7 @@
 package choose
 
 import (
+	"cmp"
 	"math"
 	"slices"
 
@@ -14,26 +15,51 @@ const (
 	briefOff = 0.15 // the same of a trial too short to be taken apart
 )
 
-// spread is by how many seconds the time of a trial may be off: twice the
-// standard error of its mean iteration, from the speeds of its parts; what
+// spread is by how many seconds the time of a trial may be off: what its runs
+// differ by where it was run again, else twice the standard error of its mean
+// iteration, from the speeds of its parts; what
 // rounding does to its number of iterations, where it was rerun; and what the
 // machine took away.
 func spread(h trace.History) float64 {
-	own, solve := h.OwnTime.Seconds(), (h.OwnTime - h.SetupTime).Seconds()
+	setup, own := times(h)
+	solve := own - setup
 	off := leastOff * own
-	if rel, ok := unsteady(h); ok {
+	rel, ok := unsteady(h)
+	switch {
+	case len(h.Reruns) > 0:
+		off = math.Max(off, farthest(h, own))
+	case ok:
 		off = math.Hypot(off, 2*rel*solve)
-	} else {
+	default:
 		off = briefOff * own
 	}
 	if len(h.Counts) > 0 && h.Iterations > 0 {
 		low, high := slices.Min(h.Counts), slices.Max(h.Counts)
 		off = math.Max(off, solve*math.Max(float64(h.Iterations-low), float64(high-h.Iterations))/float64(h.Iterations))
 	}
-	if h.CPUShare < 1 && h.CPUShare > 0 {
+	if h.CPUShare < 1 && h.CPUShare > 0 && len(h.Reruns) == 0 {
 		off += own * (1 - h.CPUShare)
 	}
 	return off
+}
+
+// times are the seconds of set-up and of all of a trial: of the median run
+// where it was run again.
+func times(h trace.History) (setup, own float64) {
+	runs := append([]trace.Run{{Setup: h.SetupTime, Own: h.OwnTime}}, h.Reruns...)
+	slices.SortFunc(runs, func(a, b trace.Run) int { return cmp.Compare(a.Own, b.Own) })
+	middle := runs[(len(runs)-1)/2]
+	return middle.Setup.Seconds(), middle.Own.Seconds()
+}
+
+// farthest is by how much the runs of a trial differ from own: half of the
+// range that they span, for the slowest of few may be the machine's doing.
+func farthest(h trace.History, own float64) float64 {
+	low, high := own, own
+	for _, r := range append([]trace.Run{{Own: h.OwnTime}}, h.Reruns...) {
+		low, high = math.Min(low, r.Own.Seconds()), math.Max(high, r.Own.Seconds())
+	}
+	return (high - low) / 2
 }
 
 // unsteady is the standard error of the mean time of an iteration, relative

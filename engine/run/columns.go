@@ -29,7 +29,7 @@ func (c *Columns) Next(ctx context.Context, index int, rhs []float64) bool {
 	}
 	t := c.live
 	for t.canMove() {
-		if ctx.Err() != nil || c.bench.hurried() {
+		if ctx.Err() != nil || c.bench.wanted() {
 			return false
 		}
 		t.budget += minQuantum
@@ -62,11 +62,4 @@ func (c *Columns) Tell(t *Trial) {
 	t.hist.Columns = append([]trace.Column(nil), c.Done...)
 	t.mu.Unlock()
 	c.bench.changed()
-}
-
-// hurried says that somebody waits for trials to stand still.
-func (b *Bench) hurried() bool {
-	b.mu.Lock()
-	defer b.mu.Unlock()
-	return b.paused || b.stopped
 }

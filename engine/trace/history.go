@@ -88,6 +88,9 @@ type MProbe struct {
 	Plain        float64 // the same of A scaled by its diagonal, without M
 }
 
+// Run is how long one run of a trial took.
+type Run struct{ Setup, Own time.Duration }
+
 // Column is one of several right-hand sides solved with one set-up.
 type Column struct {
 	Index      int // from 1, of the file
@@ -157,6 +160,7 @@ type History struct {
 	Fields        []Field              // residuals by field of unknowns, last full audit
 	Probe         *MProbe              // nil if not probed
 	Counts        []int                // iterations of reruns with each b_i changed by one unit in its last place
+	Reruns        []Run                // times of the same trial run again, where times were close
 	Columns       []Column             // other right-hand sides solved with the same set-up
 	Vectors       map[string][]float64 // what stands behind an event or the end, in the user's rows: "curvature", "slowest", "residual"
 }

@@ -1,0 +1,94 @@
+package choose
+
+import (
+	"fmt"
+	"strings"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+// reasons say what the choice rests on.
+func reasons(f *inspect.Facts, trials []trace.History, c Choice) []string {
+	first := c.Ranked[0]
+	s := fmt.Sprintf("%s, %s to the target, of which %s set-up", count(first.Iterations, "iteration"), took(first.Seconds), took(first.Setup))
+	if first.Runs > 1 {
+		s += fmt.Sprintf(" (median of %d runs)", first.Runs)
+	}
+	out := []string{s}
+	switch {
+	case c.Goal == Memory:
+		out = append(out, "it takes the least memory of those that reached the target")
+	case c.Goal == Robust && first.Safe:
+		out = append(out, "theory stands behind it on a matrix of this kind, and nothing went wrong on the way")
+	case c.Goal == Robust:
+		out = append(out, "nothing that reached the target is safe by theory on a matrix of this kind")
+	}
+	if len(c.Ranked) > 1 && c.Ranked[1].Reached {
+		second := c.Ranked[1]
+		out = append(out, fmt.Sprintf("next is %s with %s and %s", second.Pairing, count(second.Iterations, "iteration"), took(second.Seconds)))
+	}
+	if s := restsOn(f, trials, c); s != "" {
+		out = append(out, s)
+	}
+	return append(out, others(trials, c)...)
+}
+
+// others counts those that did not get there.
+func others(trials []trace.History, c Choice) []string {
+	outpaced, missed := 0, 0
+	for _, h := range trials {
+		switch {
+		case h.Stop == trace.Outpaced:
+			outpaced++
+		case h.Stop.Ended() && h.Stop != trace.Refused && !reached(h):
+			missed++
+		}
+	}
+	var out []string
+	if outpaced > 0 {
+		out = append(out, fmt.Sprintf("%d of %d pairings were behind for good and ended early", outpaced, len(c.Ranked)))
+	}
+	if missed > 0 {
+		out = append(out, fmt.Sprintf("%d of %d pairings did not reach the target", missed, len(c.Ranked)))
+	}
+	return out
+}
+
+// chosen is the trial of the choice.
+func chosen(trials []trace.History, c Choice) *trace.History {
+	for i := range trials {
+		if trials[i].Pairing == c.Ranked[0].Pairing {
+			return &trials[i]
+		}
+	}
+	return nil
+}
+
+// restsOn names the facts that the chosen method assumes.
+func restsOn(f *inspect.Facts, trials []trace.History, c Choice) string {
+	h := chosen(trials, c)
+	if f == nil || h == nil || !h.SymmetricA {
+		return ""
+	}
+	var words []string
+	if f.Symmetric.Answer == inspect.Yes {
+		words = append(words, fmt.Sprintf("A is symmetric (%s)", f.Symmetric.Certainty))
+	}
+	if h.DefiniteA && f.PositiveDefinite.Answer == inspect.Yes {
+		words = append(words, fmt.Sprintf("positive definite (%s)", f.PositiveDefinite.Certainty))
+	}
+	if len(words) == 0 {
+		return ""
+	}
+	return "it rests on this: " + strings.Join(words, " and ")
+}
+
+// unproved says that the chosen method assumes what has not been established.
+func unproved(f *inspect.Facts, trials []trace.History, c Choice) []string {
+	h := chosen(trials, c)
+	if f == nil || h == nil || !h.DefiniteA || f.PositiveDefinite.Answer != inspect.Unknown {
+		return nil
+	}
+	return []string{"whether A is positive definite is not known: the method assumes it, and a negative eigenvalue could end it on another b"}
+}

@@ -1,0 +1,28 @@
+package run
+
+import (
+	"context"
+
+	"dwindle/engine/trace"
+)
+
+// Repeat runs an ended trial again as it is, as often as asked, and keeps the
+// times in its history: its iterates come out the same, so that only the
+// machine tells the runs apart. Nothing is charged to the trial. Only who
+// steers may call it; it gives up as soon as the bench is asked to pause or
+// stop.
+func (b *Bench) Repeat(ctx context.Context, t *Trial, times int) {
+	var runs []trace.Run
+	for range times {
+		u := newTrial(0, t.method, b.sys, b.sizes, b.limits, b.clock, b.scratch, 0)
+		u.form, u.quiet, u.turned, u.limits.Seconds = t.form, true, true, 0
+		if !b.runOut(ctx, u) {
+			return
+		}
+		runs = append(runs, trace.Run{Setup: u.hist.SetupTime, Own: u.hist.OwnTime})
+	}
+	t.mu.Lock()
+	t.hist.Reruns = runs
+	t.mu.Unlock()
+	b.changed()
+}
