@@ -165,6 +165,9 @@ func stateText(h *trace.History) string {
 		s += " direct" // one step with an exact factorisation
 	}
 	if left := leftWords(h); left != "" && h.Stop == trace.Running {
+		if strings.HasSuffix(s, "(!)") { // both must find room
+			left = strings.TrimSuffix(left, " left")
+		}
 		s += " " + left
 	}
 	return s

@@ -11,15 +11,17 @@
 //	prompt.go    one line of text input
 //
 //	frame.go     screen = header + body + bottom lines, cut to size
-//	chooser.go, trials.go, system.go, findings.go     the four screens
-//	help.go, addlist.go, tries.go, ask.go             what lies over them
-//	columns.go, detail.go, bottom.go, header.go       parts of them
+//	chooser.go, trials.go, system.go, spectrum.go, findings.go   the screens
+//	help.go, addlist.go, form.go, infoview.go, tries.go, ask.go  what lies over them
+//	columns.go, fold.go, detail.go, trialwords.go, choice.go, bottom.go, header.go   parts of them
+//	spectrumdraw.go, ruler.go   pictures of eigenvalues
 //
 //	chart.go     composes the chart from the pieces below
 //	reduce.go    history → one value per column
 //	axis.go      ranges that only grow, even decades, ticks
 //	canvas.go    a grid of coloured cells
 //	braille.go, strokes.go, digits.go                 three ways to draw a curve
+//	chartmarks.go   where common rules would have stopped, bounds of the error
 //	tags.go      digits on the curves, their heads and marks
 //
 //	text.go, numbers.go, style.go, glyphs.go          clean, fixed, coloured text

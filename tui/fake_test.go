@@ -269,19 +269,6 @@ func someFacts() *inspect.Facts {
 		Gershgorin: inspect.Range{Min: -3.1e4, Max: 2.6e5}, Components: 1, Complete: true, Pattern: somePattern(), Study: someStudy()}
 }
 
-// someStudy is an invented second look.
-func someStudy() *inspect.Study {
-	s := &inspect.Study{Digits: 9,
-		Raw: &inspect.Spectrum{Of: "A", How: "lanczos", Certainty: inspect.Measured, Norm: "2", Smallest: 2e-3, Largest: 8.2e4, Condition: 4.1e7,
-			Low: []float64{2e-3, 5e-3}, High: []float64{8.2e4}},
-		Jacobi: &inspect.Spectrum{Of: "A scaled by its diagonal", How: "lanczos", Certainty: inspect.Estimated, Norm: "2", Smallest: 1.4e-6, Largest: 3, Condition: 2.2e6}}
-	for k := range 24 {
-		from := 2e-3 * math.Pow(10, float64(k)/3)
-		s.Density = append(s.Density, inspect.Bin{From: from, To: from * math.Pow(10, 1./3), Count: 20000 * math.Exp(-math.Pow(float64(k)-14, 2)/18) / 7.5, Sd: 40})
-	}
-	return s
-}
-
 // somePattern is a band with two more diagonals.
 func somePattern() [][]float64 {
 	rng := rand.New(rand.NewSource(1))

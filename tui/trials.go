@@ -202,56 +202,6 @@ func (v *trialsView) enter(m *model) tea.Cmd {
 	return m.tryFor(v.picked)
 }
 
-func (v *trialsView) nextMeasure(m *model) tea.Cmd {
-	v.by, v.reading = v.by.next(), -1
-	return nil
-}
-
-func (v *trialsView) turnLog(m *model) tea.Cmd {
-	v.log, v.reading = !v.log, -1
-	return nil
-}
-
-func (v *trialsView) turnTruth(m *model) tea.Cmd {
-	v.truth = !v.truth
-	v.y = decades{}
-	v.widen(m.snap)
-	return nil
-}
-
-// turnMarks draws the marks of common stopping rules, or leaves them out.
-func (v *trialsView) turnMarks(m *model) tea.Cmd {
-	v.bare = !v.bare
-	m.say("marks: r relative to b, i to r0, p preconditioned, b backward, e energy norm")
-	if v.bare {
-		m.say("marks of common stopping rules are left out")
-	}
-	return nil
-}
-
-// turnBounds draws the bounds of the error in the energy norm, or leaves them
-// out.
-func (v *trialsView) turnBounds(m *model) tea.Cmd {
-	v.bounds = !v.bounds
-	switch t := m.trial(v.picked); {
-	case !v.bounds:
-		m.say("error bounds are left out")
-	case t == nil || len(t.History.EnergyErrors) == 0:
-		m.say("the picked trial gives no bounds of the energy norm of its error")
-	default:
-		m.say(energyWords(&t.History))
-	}
-	return nil
-}
-
-// hide hides the picked curve, or shows it again.
-func (v *trialsView) hide(m *model) tea.Cmd {
-	v.hidden[v.picked] = !v.hidden[v.picked]
-	v.y = decades{}
-	v.widen(m.snap)
-	return nil
-}
-
 // readBy moves the reading cursor and tells the values under it.
 func (v *trialsView) readBy(step int) func(*model) tea.Cmd {
 	return func(m *model) tea.Cmd {
