@@ -122,6 +122,24 @@ func TestRisingResidualIsNoDivergence(t *testing.T) {
 	quiet(t, ended(t, "sample:line", Options{Pairs: []string{"cg+none"}, Tol: 1e-8}), "residual-rises")
 }
 
+// Before any trial, from the eigenvalues of the scaled matrix alone: what cg
+// takes with jacobi is foreseen within a quarter.
+func TestScalingIsForeseen(t *testing.T) {
+	sources := []string{"sample:frame", "sample:feeder"}
+	if dir := os.Getenv("DWINDLE_OPEN"); dir != "" {
+		sources = append(sources, filepath.Join(dir, "494_bus.mtx"))
+	}
+	for _, source := range sources {
+		v := ended(t, source, Options{Pairs: []string{"cg+jacobi"}, Tol: 1e-8})
+		took := trialOf(t, v, "cg+jacobi").Iterations
+		f := must(t, v, "row-scaling", "")
+		t.Logf("%s: %d its; %s", source, took, f.Claim)
+		if len(f.Predicts) != 1 || !near(int(f.Predicts[0].Value), took, .25) {
+			t.Errorf("%s: foreseen %v, took %d", source, f.Predicts, took)
+		}
+	}
+}
+
 // Restarted gmres on the plate: what longer cycles need is foretold from above,
 // and carrying the slow harmonic Ritz vectors over the restart pays.
 func TestRestartsAreForetold(t *testing.T) {

@@ -3,6 +3,7 @@ package diagnose
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"dwindle/engine/inspect"
 )
@@ -45,14 +46,32 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 	differ := fmt.Sprintf("rows differ in size by %s (%s to %s)", num(span.Max/span.Min), c.name(rows[0]), c.name(rows[1]))
 	if share == "" {
 		g.Claim = differ + ": a norm over all of them hides the small ones"
+		foreseeScaled(c, &g)
 		return []Finding{g}
 	}
 	g.Claim = fmt.Sprintf("the condition %s of %s is %s scaling: %s once rows and columns are equilibrated; %s",
 		num(before.Condition), before.Of, share, num(after.Condition), differ)
 	g.Certainty = lesser(before.Certainty, after.Certainty)
 	g.Evidence = append(g.Evidence, number("condition of "+before.Of, before.Condition, ""), number("condition after equilibration", after.Condition, ""))
+	foreseeScaled(c, &g)
 	return []Finding{g}
 }}
+
+// foreseeScaled adds what cg needs once A is scaled by its diagonal, where it
+// can be foreseen.
+func foreseeScaled(c Case, g *Finding) {
+	const scaled = "cg+jacobi"
+	if c.Facts.Study == nil || !slices.Contains(g.Try, scaled) {
+		return
+	}
+	its, ok := foresee(c.Facts.Study.Jacobi, c.Tol)
+	if !ok {
+		return
+	}
+	g.Claim += fmt.Sprintf("; %s is foreseen to take about %d its", scaled, its)
+	g.Evidence = append(g.Evidence, number("iterations of "+scaled, float64(its), "foreseen"))
+	g.Predicts = []Predicted{{Pairing: scaled, Quantity: "iterations", Value: float64(its)}}
+}
 
 // byScaling says how much of the condition is scaling: "almost all", "mostly",
 // or "" for less. Singleton rows are left out where they are told apart.
