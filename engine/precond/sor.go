@@ -44,23 +44,7 @@ type sor struct {
 }
 
 // Apply computes dst = M⁻¹ x.
-func (s *sor) Apply(dst, x []float64) {
-	s.down(dst, x, 0, len(dst))
-}
-
-// down sweeps over rows lo to hi.
-func (s *sor) down(dst, x []float64, lo, hi int) {
-	a := s.a
-	for i := lo; i < hi; i++ {
-		cols, vals := a.Col[a.Ptr[i]:s.diag[i]], a.Val[a.Ptr[i]:s.diag[i]]
-		vals = vals[:len(cols)]
-		t := x[i]
-		for k, c := range cols {
-			t -= vals[k] * dst[uint32(c)]
-		}
-		dst[i] = t * s.inverse[i]
-	}
-}
+func (s *sor) Apply(dst, x []float64) { relaxDown(s.a, s.diag, s.inverse, dst, x, 1) }
 
 // ApplyT computes dst = M⁻ᵀ x by a sweep up that scatters the rows of L.
 func (s *sor) ApplyT(dst, x []float64) {

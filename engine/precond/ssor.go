@@ -41,49 +41,14 @@ type ssor struct {
 
 // Apply computes dst = M⁻¹ x.
 func (s *ssor) Apply(dst, x []float64) {
-	s.down(dst, x, 0, len(dst))
-	s.up(dst, dst, 0, len(dst))
+	relaxDown(s.a, s.diag, s.inverse, dst, x, 2-s.omega)
+	relaxUp(s.a, s.diag, s.inverse, dst)
 }
 
 // ApplyDot computes dst = M⁻¹ x and returns xᵀ dst.
 func (s *ssor) ApplyDot(dst, x []float64) float64 {
 	s.Apply(dst, x)
 	return linear.Dot(x, dst)
-}
-
-// down sweeps over rows lo to hi.
-func (s *ssor) down(y, x []float64, lo, hi int) {
-	rest := 2 - s.omega
-	starts, diag, inverse, x := s.a.Ptr[lo:hi], s.diag[lo:hi], s.inverse[lo:hi], x[lo:hi]
-	diag, inverse, x = diag[:len(starts)], inverse[:len(starts)], x[:len(starts)]
-	out := y[lo:hi]
-	out = out[:len(starts)]
-	for i, start := range starts {
-		cols, vals := s.a.Col[start:diag[i]], s.a.Val[start:diag[i]]
-		vals = vals[:len(cols)]
-		t := rest * x[i]
-		for k, c := range cols {
-			t -= vals[k] * y[uint32(c)]
-		}
-		out[i] = t * inverse[i]
-	}
-}
-
-// up sweeps over rows hi−1 down to lo.
-func (s *ssor) up(z, _ []float64, lo, hi int) {
-	diag, ends, inverse := s.diag[lo:hi], s.a.Ptr[lo+1:hi+1], s.inverse[lo:hi]
-	ends, inverse = ends[:len(diag)], inverse[:len(diag)]
-	out := z[lo:hi]
-	out = out[:len(diag)]
-	for i := len(diag) - 1; i >= 0; i-- {
-		cols, vals := s.a.Col[diag[i]+1:ends[i]], s.a.Val[diag[i]+1:ends[i]]
-		vals = vals[:len(cols)]
-		t := 0.0
-		for k, c := range cols {
-			t += vals[k] * z[uint32(c)]
-		}
-		out[i] -= t * inverse[i]
-	}
 }
 
 func buildSSOR(ctx context.Context, sys linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
