@@ -83,7 +83,7 @@ type work struct {
 	symmetric bool
 	r, r0     []float64 // b−Ax and b−Ax₀, length n
 	size      []float64 // |A||x|+|b|, length n
-	tooLarge  bool      // to be factorised
+	tooLarge  bool      // to be factorised: whether A is regular is not known
 	out       *Answer
 }
 

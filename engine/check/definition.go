@@ -32,6 +32,8 @@ type Definition struct {
 	// the measure is no running one or never holds. Value is then that after
 	// the last step looked at.
 	From int
+
+	after func(k int) float64 // of a running measure, after k steps
 }
 
 // define lists every measure. Those that cannot be formed (no x₀, a diagonal
@@ -41,8 +43,7 @@ func (w *work) define() {
 	w.againstStart()
 	w.byDiagonal()
 	w.backward()
-	w.runningMeasure("running", "||r||2/(||A||run ||x||2)", w.out.Running.Norms)
-	w.runningMeasure("running-start", "||r||2/(||A||run,r0 ||x||2)", w.out.Running.WithStart)
+	w.runningMeasures()
 	w.normalEquations()
 	w.errors()
 }

@@ -69,6 +69,7 @@ func (w *work) factor() error {
 		w.out.NoFactor = "A cannot be factorised, it is singular to rounding: x is not determined by A and b"
 		return nil
 	case err != nil:
+		w.tooLarge = true
 		w.out.NoFactor = "A cannot be factorised: " + err.Error()
 		return nil
 	}

@@ -81,12 +81,21 @@ func (w *work) distance(y []float64, f float64) float64 {
 	return over(linear.Norm2(d), linear.Norm2(w.q.System.B))
 }
 
-// leastSquares says that no residual can be smaller.
+// leastSquares says what a small Aᵀr beside a large r means: no residual can
+// be smaller, or A is ill-conditioned.
 func (w *work) leastSquares() {
 	normal, ok := w.out.Definition("normal")
 	rhs, _ := w.out.Definition("rhs")
-	if ok && normal.Value <= w.q.Tol && rhs.Value > 100*w.q.Tol {
-		w.hint("A'r = 0 to %s: x is a least-squares solution, and b is out of A's range, or nearly so", num(normal.Value))
+	if !ok || !(normal.Value <= w.q.Tol) || !(rhs.Value > 100*w.q.Tol) {
+		return
+	}
+	switch {
+	case w.out.Factor != nil:
+		w.hint("%s = %s looks like a least-squares solution and is none: A is regular, only ill-conditioned, and the residual can come down", normal.Formula, num(normal.Value))
+	case w.tooLarge:
+		w.hint("%s = %s: either b is out of A's range and x a least-squares solution, or A is ill-conditioned", normal.Formula, num(normal.Value))
+	default:
+		w.hint("%s = %s: x is a least-squares solution; A is singular, to rounding at least, and b is out of its range", normal.Formula, num(normal.Value))
 	}
 }
 

@@ -20,7 +20,7 @@ func (a *Answer) Definition(name string) (Definition, bool) {
 func (w *work) judge() {
 	out, tol := w.out, w.q.Tol
 	d, ok := out.Definition(w.q.Rule) // definitions are named as the rules are
-	if !ok { // without x₀ the first residual is b
+	if !ok {                          // without x₀ the first residual is b
 		d, ok = out.Definition("rhs")
 	}
 	if !ok || !finite(out.Residual.Two) {

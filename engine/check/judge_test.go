@@ -103,6 +103,15 @@ func TestUnsolvedRowIsNamed(t *testing.T) {
 	}
 }
 
+// Aᵀr is small because A is ill-conditioned, not because b is out of reach.
+func TestSmallNormalResidualOfARegularMatrix(t *testing.T) {
+	m := dense([]float64{1, 0}, []float64{0, 1e-12}) // x misses b in the second row
+	a := asked(t, m, []float64{1, 1}, []float64{1, 0}, nil)
+	if text := strings.Join(a.Hints, "\n"); a.Solved || !strings.Contains(text, "A is regular") || strings.Contains(text, "x is a least-squares solution") {
+		t.Errorf("%s", text)
+	}
+}
+
 // What overflows is never called solved.
 func TestOverflowIsNotSolved(t *testing.T) {
 	for _, rule := range []string{"rhs", "initial", "backward", "absolute"} {

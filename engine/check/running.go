@@ -135,26 +135,35 @@ func (w *work) passes(k int) bool {
 	return two > 0 && math.Abs(w.out.Running.Residuals[k-1]-two) <= alike*two
 }
 
-// runningMeasure adds what the method tests, ‖r‖₂/(‖A‖‖x‖₂), where x passes as
-// one of its iterates: the value after the last step with which it does, and
-// the first after which the measure holds.
-func (w *work) runningMeasure(name, formula string, norms []float64) {
-	d := Definition{Name: name, Kind: Minimal, Formula: formula, Stops: true, Value: math.NaN()}
+// runningMeasures adds what the method tests with its running norm.
+func (w *work) runningMeasures() {
+	run, r, x := w.out.Running, w.out.Residual.Two, linear.Norm2(w.q.X)
+	w.runningMeasure("running", Minimal, "||r||2/(||A||run ||x||2)", run.Norms, r/x)
+	if run.Method == "minres" {
+		w.runningMeasure("running-start", Minimal, "||r||2/(||A||run,r0 ||x||2)", run.WithStart, r/x)
+		return
+	}
+	z := make([]float64, len(w.r))
+	w.at.Apply(z, w.r)
+	w.runningMeasure("running-normal", Normal, "||A'r||2/(||A||run ||r||2)", run.Norms, linear.Norm2(z)/r)
+}
+
+// runningMeasure adds a measure that is size over the running norm, where x
+// passes as one of the method's iterates: the value after the last step with
+// which it does, and the first after which the measure holds.
+func (w *work) runningMeasure(name string, kind Kind, formula string, norms []float64, size float64) {
+	d := Definition{Name: name, Kind: kind, Formula: formula, Stops: true, Value: math.NaN(),
+		after: func(k int) float64 { return size / norms[k-1] }}
 	for k := 1; k <= len(norms); k++ {
 		if !w.passes(k) {
 			continue
 		}
-		d.Value = w.running2(norms, k)
+		d.Value = d.after(k)
 		if d.Value <= w.q.Tol && d.From == 0 {
 			d.From, d.Holds = k, true
 		}
 	}
-	if !math.IsNaN(d.Value) {
+	if !math.IsNaN(d.Value) && !math.IsInf(size, 0) {
 		w.out.Definitions = append(w.out.Definitions, d)
 	}
-}
-
-// running2 is ‖r‖₂/(‖A‖‖x‖₂) with the running norm after k steps.
-func (w *work) running2(norms []float64, k int) float64 {
-	return over(w.out.Residual.Two, norms[k-1]*linear.Norm2(w.q.X))
 }

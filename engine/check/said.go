@@ -38,16 +38,20 @@ func ParseSaid(text string) (*Said, error) {
 	return &Said{Text: strings.TrimSpace(text), Value: v, Half: 0.5 * math.Pow(10, float64(exponent-len(decimals))), Log: v < 0}, nil
 }
 
-// leastShare is how far a measure may lie from a number with many digits: a
-// code's own arithmetic differs from ours.
-const leastShare = 0.01
+// How far a measure may lie from a number with many digits: a code's own
+// arithmetic differs from ours. Where one fits closely, those that fit loosely
+// are left out.
+const (
+	loosely = 0.01
+	closely = 0.001
+)
 
-// fits says whether a measure prints as the number.
-func (s *Said) fits(value float64) bool {
+// fits says whether a measure prints as the number, to a share of it.
+func (s *Said) fits(value, share float64) bool {
 	if s.Log {
-		return value > 0 && math.Abs(math.Log10(value)-s.Value) <= math.Max(s.Half, leastShare/math.Ln10)
+		return value > 0 && math.Abs(math.Log10(value)-s.Value) <= math.Max(s.Half, share/math.Ln10)
 	}
-	return math.Abs(value-s.Value) <= math.Max(s.Half, leastShare*math.Abs(s.Value))*(1+1e-12)
+	return math.Abs(value-s.Value) <= math.Max(s.Half, share*math.Abs(s.Value))*(1+1e-12)
 }
 
 // size is the number as a measure.
@@ -78,42 +82,57 @@ func (w *work) match() *Match {
 		return nil
 	}
 	m := &Match{Said: *w.q.Said}
-	least := math.Inf(1)
-	for _, d := range w.out.Definitions {
-		f := Fit{Definition: d}
-		switch {
-		case d.Name == "running":
-			f.First, f.Last = w.fittingSteps(w.out.Running.Norms)
-		case d.Name == "running-start":
-			f.First, f.Last = w.fittingSteps(w.out.Running.WithStart)
-		case m.Said.fits(d.Value):
-			m.Fitting = append(m.Fitting, f)
-		case d.Value > 0 && m.Said.size() > 0:
-			if away := math.Abs(math.Log(d.Value / m.Said.size())); away < least {
-				least, m.Nearest = away, &f
-			}
-		}
-		if f.First > 0 {
-			m.Fitting = append(m.Fitting, f)
-		}
+	if m.Fitting = sober(w.fitting(closely)); len(m.Fitting) == 0 {
+		m.Fitting = sober(w.fitting(loosely))
 	}
-	m.Fitting = sober(m.Fitting)
-	if len(m.Fitting) > 0 {
-		m.Nearest = nil
+	if len(m.Fitting) == 0 {
+		m.Nearest = w.nearest()
 	}
 	m.Claim = w.claim(m)
 	return m
 }
 
+// fitting lists the measures that print as the number, to a share of it.
+func (w *work) fitting(share float64) (fits []Fit) {
+	for _, d := range w.out.Definitions {
+		f := Fit{Definition: d}
+		if first, _ := w.fittingSteps(d, share); first > 0 { // rounding moves the steps by a few
+			f.First, f.Last = w.fittingSteps(d, loosely)
+		}
+		if f.First > 0 || d.after == nil && w.q.Said.fits(d.Value, share) {
+			fits = append(fits, f)
+		}
+	}
+	return fits
+}
+
+// nearest is the measure whose value is nearest the number as a factor.
+func (w *work) nearest() *Fit {
+	var best *Fit
+	least, size := math.Inf(1), w.q.Said.size()
+	for _, d := range w.out.Definitions {
+		if d.after != nil || !(d.Value > 0) || !(size > 0) {
+			continue
+		}
+		if away := math.Abs(math.Log(d.Value / size)); away < least {
+			least, best = away, &Fit{Definition: d}
+		}
+	}
+	return best
+}
+
 // fittingSteps returns the first and the last step after which the running
 // measure prints as the number; 0, 0 where it never does.
-func (w *work) fittingSteps(norms []float64) (first, last int) {
-	for k := range norms {
-		if w.passes(k+1) && w.q.Said.fits(w.running2(norms, k+1)) {
+func (w *work) fittingSteps(d Definition, share float64) (first, last int) {
+	if d.after == nil {
+		return 0, 0
+	}
+	for k := 1; k <= len(w.out.Running.Norms); k++ {
+		if w.passes(k) && w.q.Said.fits(d.after(k), share) {
 			if first == 0 {
-				first = k + 1
+				first = k
 			}
-			last = k + 1
+			last = k
 		}
 	}
 	return first, last
