@@ -35,15 +35,15 @@ var beaten = Rule{"today-beaten", func(c Case) []Finding {
 			number("iterations today", float64(today.Iterations), ""),
 			number("iterations of "+best.Pairing, float64(best.Iterations), "")}}
 	if !solved(*today) {
-		f.Claim = fmt.Sprintf("today's pairing ends %s at %s; %s reaches the target in %d iterations and %s",
-			today.Stop, num(today.TrueResidual), best.Pairing, best.Iterations, seconds(best.OwnTime.Seconds()))
+		f.Claim = fmt.Sprintf("today's pairing ends %s at %s; %s reaches the target in %s and %s",
+			today.Stop, num(today.TrueResidual), best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
 		return []Finding{f}
 	}
 	t, b := today.OwnTime.Seconds(), best.OwnTime.Seconds()
 	if t < beatFactor*b || t-b < beatLeast || !Apart(*best, *today, 0) {
 		return nil
 	}
-	f.Claim = fmt.Sprintf("today's pairing takes %d iterations and %s; %s takes %d and %s: %.1f times faster",
+	f.Claim = fmt.Sprintf("today's pairing takes %s and %s; %s takes %d and %s: %.1f times faster",
 		today.Iterations, seconds(t), best.Pairing, best.Iterations, seconds(b), t/b)
 	return []Finding{f}
 }}

@@ -64,8 +64,8 @@ var Catalogue = []Rule{
 
 // Judge applies every rule, drops what another finding explains, and returns
 // the findings, the most important first: by weight, then the system and
-// today's pairing before other trials, then what a rule says first before what it says again, then by certainty, then in the order of
-// the catalogue.
+// today's pairing before other trials, then what a rule says first before what it
+// says again, then in the order of the catalogue.
 func Judge(c Case) []Finding {
 	if c.Facts == nil {
 		return nil
@@ -88,8 +88,7 @@ func Judge(c Case) []Finding {
 		again[f.Rule]++
 	}
 	slices.SortStableFunc(order, func(a, b *Finding) int {
-		return cmp.Or(weightOrder(a.Weight)-weightOrder(b.Weight), concern(c, *a)-concern(c, *b), ranks[a]-ranks[b],
-			certaintyOrder(a.Certainty)-certaintyOrder(b.Certainty))
+		return cmp.Or(weightOrder(a.Weight)-weightOrder(b.Weight), concern(c, *a)-concern(c, *b), ranks[a]-ranks[b])
 	})
 	out := make([]Finding, len(order))
 	for i, f := range order {
