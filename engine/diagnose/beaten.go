@@ -44,6 +44,6 @@ var beaten = Rule{"today-beaten", func(c Case) []Finding {
 		return nil
 	}
 	f.Claim = fmt.Sprintf("today's pairing takes %s and %s; %s takes %d and %s: %.1f times faster",
-		today.Iterations, seconds(t), best.Pairing, best.Iterations, seconds(b), t/b)
+		steps(today.Iterations), seconds(t), best.Pairing, best.Iterations, seconds(b), t/b)
 	return []Finding{f}
 }}

@@ -91,28 +91,35 @@ func explainedBy(all []Finding, weak Finding) bool {
 }
 
 // advise holds the tries of a finding against what has already run: what
-// failed, or ran slower than the trial it is about, is no longer offered; and
-// where another trial has solved the system, the advice says so first.
+// failed, or ran slower than the trial it is about, is no longer offered, nor
+// on a system what ran slower than the quickest; and where another trial has
+// solved the system, the advice says so first.
 func advise(c Case, f *Finding) {
 	about, isTrial := find(c, f.Subject)
+	best, ok := quickest(c)
+	against := best // what a try must not be slower than
+	if isTrial {
+		against = about
+	}
 	f.Try = slices.DeleteFunc(slices.Clone(f.Try), func(p string) bool {
 		h, ran := find(c, p)
 		if !ran || !h.Stop.Ended() {
 			return false
 		}
-		return !solved(h) || f.Rule != "unsolved-rows" && isTrial && solved(about) && h.OwnTime > about.OwnTime
+		return !solved(h) || f.Rule != "unsolved-rows" && solved(against) && h.OwnTime > against.OwnTime
 	})
-	if !isTrial || solved(about) || !about.Stop.Ended() || f.Rule == "preconditioner-wrong-way" {
-		return // a file taken for what it is not is to be swapped, whatever else works
-	}
-	best, ok := quickest(c)
-	if !ok {
+	if !ok || !isTrial || solved(about) || !about.Stop.Ended() || slices.Contains(speakForThemselves, f.Rule) {
 		return
 	}
 	f.Advice = fmt.Sprintf("%s has solved the system in %s and %s; else %s", best.Pairing,
 		steps(best.Iterations), seconds(best.OwnTime.Seconds()), f.Advice)
 	f.Try = []string{best.Pairing}
 }
+
+// speakForThemselves are the rules whose advice stands whatever else works: a
+// file taken for what it is not is to be swapped, and who beats today's pairing
+// is named already.
+var speakForThemselves = []string{"preconditioner-wrong-way", "today-beaten"}
 
 // quickest is the trial that solved the system in the least time.
 func quickest(c Case) (best trace.History, ok bool) {
