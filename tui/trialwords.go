@@ -114,8 +114,15 @@ func lockWords(h *trace.History) string {
 			words[i] += fmt.Sprintf("_(%d_copies)", l.Copies)
 		}
 	}
+	if n := len(words) - lockedLow - lockedHigh; n > 1 {
+		words = slices.Concat(words[:lockedLow], []string{fmt.Sprintf("(%d_between)", n)}, words[lockedLow+n:])
+	}
 	return "locked: " + strings.Join(words, ", ")
 }
+
+// lockedLow and lockedHigh are how many locked values are told from either end:
+// the small ones are what holds convergence up.
+const lockedLow, lockedHigh = 6, 3
 
 func compareFloats(a, b float64) int {
 	switch {
