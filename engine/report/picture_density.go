@@ -2,6 +2,7 @@ package report
 
 import (
 	"math"
+	"slices"
 
 	"gonum.org/v1/plot"
 	"gonum.org/v1/plot/vg"
@@ -29,8 +30,7 @@ func densityPicture(bins []inspect.Bin, w, h vg.Length) (picture, bool) {
 		return picture{}, false
 	}
 	if even(bins) {
-		r = reach{low: r.low, high: r.high}
-		r.low, r.high = edges[0], edges[len(edges)-1]
+		r = reach{low: slices.Min(edges), high: slices.Max(edges)}
 	}
 	return picture{w, h, func(c draw.Canvas) {
 		p := newFrame(r.ticks(int(w/60)), roundTicks(0, top, 4))

@@ -162,7 +162,7 @@ func finish(c draw.Canvas, p *plot.Plot, a axis, i int, t trace.History) {
 // goalLine is the tolerance.
 func goalLine(c draw.Canvas, p *plot.Plot, tol float64) {
 	y := decades(tol)
-	if !(tol > 0) || y < p.Y.Min || y > p.Y.Max {
+	if !(tol > 0) || !finite(tol) || y < p.Y.Min || y > p.Y.Max {
 		return
 	}
 	at := c.Y(p.Y.Norm(y))

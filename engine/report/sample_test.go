@@ -96,6 +96,9 @@ func wild(r *rand.Rand) Document {
 		d.Choice.Ranked = []choose.Ranked{{Pairing: d.Choice.Pairing, Seconds: num(), Setup: num(), Memory: r.Int64(), Reached: true, BreakEven: num()}}
 	}
 	d.Choice.Gain, d.Choice.Reasons, d.Choice.Doubts = num(), []string{text(), text()}, []string{text()}
+	if r.IntN(2) == 0 {
+		wildDeep(r, &d)
+	}
 	return d
 }
 

@@ -36,7 +36,7 @@ func newReach(values []float64) (r reach, ok bool) {
 	switch {
 	case r.low > 0 && r.high >= 10*r.low:
 		r.log = true
-		r.low, r.high = r.low/1.3, r.high*1.3
+		r.low, r.high = max(r.low/1.3, math.SmallestNonzeroFloat64), r.high*1.3
 	case size > 0 && size >= 100*least:
 		r.bend = max(least, size*1e-14)
 		r.low, r.high = r.low-0.3*math.Abs(r.low), r.high+0.3*math.Abs(r.high)
@@ -60,9 +60,14 @@ func (r reach) of(x float64) float64 {
 	return x
 }
 
-// Normalize makes it the axis of a plot.
+// Normalize makes it the axis of a plot: values far outside end just outside.
 func (r reach) Normalize(_, _, x float64) float64 {
-	return (r.of(x) - r.of(r.low)) / (r.of(r.high) - r.of(r.low))
+	low, high := r.of(r.low), r.of(r.high)
+	share := (r.of(x) - low) / (high - low)
+	if math.IsNaN(share) {
+		return 0
+	}
+	return min(max(share, -1), 2)
 }
 
 // ticks are about most numbers on the axis.
