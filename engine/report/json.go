@@ -50,6 +50,7 @@ type choiceJSON struct {
 	Reasons []string     `json:"reasons"`
 	Doubts  []string     `json:"doubts"`
 	Gain    number       `json:"gain"`
+	Goal    string       `json:"goal"` // what ranked goes by
 
 	Settings []string      `json:"settings"`
 	RuledOut []ruledJSON   `json:"ruled_out"`
@@ -104,8 +105,11 @@ func JSON(w io.Writer, d Document) error {
 
 func toChoice(d Document) choiceJSON {
 	c := choiceJSON{Pairing: optional(d.Choice.Pairing), Ranked: []rankedJSON{},
-		Reasons: tameAll(d.Choice.Reasons), Doubts: tameAll(d.Choice.Doubts), Gain: unknown,
+		Reasons: tameAll(d.Choice.Reasons), Doubts: tameAll(d.Choice.Doubts), Gain: unknown, Goal: tame(d.Choice.Goal),
 		Settings: tameAll(d.Choice.Settings), RuledOut: all(d.Choice.RuledOut, toRuled), Outcomes: all(d.Choice.Outcomes, toOutcome)}
+	if c.Goal == "" {
+		c.Goal = choose.Seconds
+	}
 	if d.Choice.Gain > 0 {
 		c.Gain = number(d.Choice.Gain)
 	}

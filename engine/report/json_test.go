@@ -29,7 +29,7 @@ var keys = map[string]string{
 	"trials.#.condition":    "of estimate smallest largest settled bound",
 	"findings.#":            "rule weight certainty subject claim advice try evidence",
 	"findings.#.evidence.#": "quantity value unit iteration rows",
-	"choice":                "pairing ranked reasons doubts settings ruled_out outcomes",
+	"choice":                "pairing ranked reasons doubts settings ruled_out outcomes goal",
 	"choice.ranked.#":       "pairing seconds_to_tol memory_bytes seconds_low seconds_high for",
 	"choice.ranked.#.for.#": "right_hand_sides seconds",
 }

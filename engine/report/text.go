@@ -171,7 +171,7 @@ func choiceLines(d Document) []string {
 		lines = append(lines, hang(" - ", plain("not reached by "+missed), Width)...)
 	}
 	if len(lines) > 0 {
-		lines = append([]string{"ranking, by own time to the tolerance"}, lines...)
+		lines = append([]string{"ranking, " + orderWords(d.Choice.Goal)}, lines...)
 	}
 	for _, r := range d.Choice.Reasons {
 		lines = append(lines, hang("because: ", plain(r), Width)...)
@@ -201,6 +201,17 @@ func aheadWords(r choose.Ranked) []string {
 		}
 	}
 	return words
+}
+
+// orderWords say what a ranking goes by.
+func orderWords(goal string) string {
+	switch goal {
+	case choose.Memory:
+		return "by memory of those that reached the tolerance"
+	case choose.Robust:
+		return "first what is safe by theory, then by own time to the tolerance"
+	}
+	return "by own time to the tolerance"
 }
 
 // notReached lists the pairings that did not reach the tolerance, with the time
