@@ -84,6 +84,7 @@ func Judge(c Case) []Finding {
 		f := &all[i]
 		advise(c, f)
 		soften(c, f)
+		f.Claim += alsoOf(f.Also)
 		order[i], ranks[f] = f, again[f.Rule]
 		again[f.Rule]++
 	}

@@ -75,6 +75,21 @@ func resolve(all []Finding) []Finding {
 	return out
 }
 
+// mostNamed is how many pairings are named of which the same is said.
+const mostNamed = 3
+
+// alsoOf names the other pairings of which the same is said.
+func alsoOf(also []string) string {
+	if len(also) == 0 {
+		return ""
+	}
+	text := "; the same of " + strings.Join(also[:min(mostNamed, len(also))], ", ")
+	if more := len(also) - mostNamed; more > 0 {
+		text += fmt.Sprintf(" and %d more", more)
+	}
+	return text
+}
+
 // explainedBy says whether a finding yields to one of the others.
 func explainedBy(all []Finding, weak Finding) bool {
 	for _, y := range yields {

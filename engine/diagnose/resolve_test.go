@@ -63,6 +63,8 @@ func TestEqualCausesAreSaidOnce(t *testing.T) {
 	}
 	if len(told) != 1 || !slices.Equal(told[0].Also, []string{"bicgstab+ilu:0"}) {
 		t.Errorf("the same pivot of two pairings is told as %v", told)
+	} else if !strings.HasSuffix(told[0].Claim, "; the same of bicgstab+ilu:0") {
+		t.Errorf("the claim does not name the other one: %s", told[0].Claim)
 	}
 }
 
