@@ -2,6 +2,7 @@ package diagnose
 
 import (
 	"fmt"
+	"math"
 
 	"dwindle/engine/inspect"
 	"dwindle/engine/trace"
@@ -35,8 +36,12 @@ var beaten = Rule{"today-beaten", func(c Case) []Finding {
 			number("iterations today", float64(today.Iterations), ""),
 			number("iterations of "+best.Pairing, float64(best.Iterations), "")}}
 	if !solved(*today) {
-		f.Claim = fmt.Sprintf("today's pairing ends %s at %s; %s reaches the target in %s and %s",
-			today.Stop, num(today.TrueResidual), best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
+		at := ""
+		if !math.IsNaN(today.TrueResidual) { // a set-up that broke down has none
+			at = " at " + num(today.TrueResidual)
+		}
+		f.Claim = fmt.Sprintf("today's pairing ends %s%s; %s reaches the target in %s and %s",
+			today.Stop, at, best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
 		return []Finding{f}
 	}
 	t, b := today.OwnTime.Seconds(), best.OwnTime.Seconds()
