@@ -21,7 +21,7 @@ type plot struct {
 	y      decades // rows are set when drawn
 	tol    float64
 	floor  float64 // estimated accuracy floor of the picked trial; NaN if unknown
-	marks  bool    // where common stopping rules would have ended the picked trial
+	marks  marking // whose curves tell where common stopping rules would have ended them
 	bounds bool    // bounds of the picked trial's error in the energy norm
 	out    int     // curves left out
 	truth  bool    // audited true residuals instead of the methods' own

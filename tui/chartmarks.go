@@ -9,6 +9,22 @@ import (
 // stopLetters are the signs of common stopping rules on the picked curve.
 var stopLetters = map[string]string{"rhs": "r", "initial": "i", "preconditioned": "p", "backward": "b", "energy": "e"}
 
+// marking says whose curves are marked.
+type marking int
+
+const (
+	markPicked marking = iota
+	markAll
+	markNone
+)
+
+// markingWords is the one table of markings, in the order the key walks.
+var markingWords = [...]string{
+	markPicked: "marks on the picked curve: r by b, i by r0, p preconditioned, b backward, e energy",
+	markAll:    "marks on every curve: r by b, i by r0, p preconditioned, b backward, e energy",
+	markNone:   "marks of common stopping rules are left out",
+}
+
 // recordAt is the first record not before an iteration.
 func recordAt(h *trace.History, iter int) (trace.Record, bool) {
 	k := sort.Search(len(h.Records), func(i int) bool { return int(h.Records[i].Iter) >= iter })
@@ -18,11 +34,11 @@ func recordAt(h *trace.History, iter int) (trace.Record, bool) {
 	return h.Records[k], true
 }
 
-// stops marks on the picked curve where a code with each common rule would
+// stops marks on a curve where a code with each common rule would
 // have stopped; rules that stop in the same column share a tag. The rule that
 // ended the trial is told by its head.
 func (p plot) stops(t *tags, d drawn, c curve) {
-	if !p.marks || !d.picked {
+	if p.marks == markNone || p.marks == markPicked && !d.picked {
 		return
 	}
 	letters := map[int]string{} // by column
@@ -51,7 +67,7 @@ func (p plot) stops(t *tags, d drawn, c curve) {
 		rows[x] = y
 	}
 	for _, x := range order {
-		t.near(x, rows[x], letters[x], care)
+		t.within(x, rows[x], letters[x], care, 4, 2)
 	}
 }
 

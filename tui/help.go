@@ -41,7 +41,7 @@ var signsHelp = []string{
 	"(!) the method's own number met the target, the true residual had not",
 	"left out   among many trials: curves of those outpaced, refused or stopped",
 	"^ the curve goes on above the chart",
-	"r i p b e  on the picked curve: a code that stops relative to b, relative to",
+	"r i p b e  on a curve (key m): a code that stops relative to b, relative to",
 	"           r0, preconditioned, by backward error, by energy norm stops here",
 	"findings: ! blocker   = drag   . note",
 	"true res   ||b - Ax|| / ||b|| measured afresh, in no trial's clock",

@@ -22,7 +22,7 @@ type trialsView struct {
 
 	by     measure
 	log    bool
-	bare   bool    // no marks of common stopping rules
+	marks  marking // whose curves carry marks of common stopping rules
 	bounds bool    // bounds of the picked trial's error in the energy norm
 	truth  bool    // draw audited true residuals
 	spans  [3]span // for each measure; they only grow

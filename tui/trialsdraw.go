@@ -53,7 +53,7 @@ func cursorAt(line string, x int) string {
 // chart is what the chart shows.
 func (v *trialsView) chart(m *model) plot {
 	p := plot{x: v.axis(), y: v.y, tol: m.snap.Settings.Tol, floor: math.NaN(),
-		truth: v.truth, marks: !v.bare, bounds: v.bounds, out: v.leftOut(m), name: v.residualName(m), signs: m.signs, on: m.on}
+		truth: v.truth, marks: v.marks, bounds: v.bounds, out: v.leftOut(m), name: v.residualName(m), signs: m.signs, on: m.on}
 	lead := leader(m.snap)
 	for i := range m.snap.Trials {
 		t := &m.snap.Trials[i]

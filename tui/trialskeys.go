@@ -20,13 +20,11 @@ func (v *trialsView) turnTruth(m *model) tea.Cmd {
 	return nil
 }
 
-// turnMarks draws the marks of common stopping rules, or leaves them out.
+// turnMarks walks through whose curves carry the marks of common stopping
+// rules.
 func (v *trialsView) turnMarks(m *model) tea.Cmd {
-	v.bare = !v.bare
-	m.say("marks: r relative to b, i to r0, p preconditioned, b backward, e energy norm")
-	if v.bare {
-		m.say("marks of common stopping rules are left out")
-	}
+	v.marks = (v.marks + 1) % marking(len(markingWords))
+	m.say(markingWords[v.marks])
 	return nil
 }
 
