@@ -1,6 +1,8 @@
 package engine
 
 import (
+	"time"
+
 	"dwindle/engine/choose"
 	"dwindle/engine/run"
 	"dwindle/engine/trace"
@@ -23,7 +25,17 @@ func (s *Session) newRace(b *run.Bench) *race {
 // stands is the race as the policy sees it.
 func (s *Session) stands(r *race, trials []trace.History) choose.Race {
 	return choose.Race{Facts: s.facts, Candidates: r.list, Trials: trials, Tried: r.tried,
-		Today: canonical(s.opt.Today), Goal: s.opt.Goal, Limit: s.limits().Iterations}
+		Today: canonical(s.opt.Today), Goal: s.opt.Goal, Limit: s.limits().Iterations, Left: s.left()}
+}
+
+// left is the time that is left of the run, 0 where it has no limit.
+func (s *Session) left() time.Duration {
+	if s.opt.Seconds <= 0 {
+		return 0
+	}
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	return max(time.Millisecond, time.Duration(s.opt.Seconds*1e9)-s.elapsed())
 }
 
 // canonical is the pairing as the catalogues print it.

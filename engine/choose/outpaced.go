@@ -1,6 +1,7 @@
 package choose
 
 import (
+	"cmp"
 	"fmt"
 	"math"
 
@@ -16,7 +17,8 @@ const (
 
 // lost returns the trials that can no longer win. Before anything has
 // converged these are only the ones that are hopeless by their own predictions
-// and not gaining; afterwards those that have used more own time than the
+// and not gaining: far from the target at the limit of iterations, or too slow
+// for the time that is left while another is not; afterwards those that have used more own time than the
 // best, with a margin, and whose time for a further right-hand side is behind
 // too. Today's pairing never loses, and neither does the last live one.
 func (r Race) lost(best *trace.History, found bool) []End {
@@ -35,7 +37,7 @@ func (r Race) lost(best *trace.History, found bool) []End {
 		if found {
 			reason = r.outpaced(h, *best)
 		} else if live > 1 {
-			reason = r.hopeless(h)
+			reason = cmp.Or(r.hopeless(h), r.tooLate(i))
 		}
 		if reason != "" {
 			out = append(out, End{i, reason})
@@ -78,4 +80,37 @@ func (r Race) hopeless(h trace.History) string {
 		return ""
 	}
 	return fmt.Sprintf("at this rate it needs %.2g iterations, %d are allowed", last.Low, r.Limit)
+}
+
+// tooLate says why a trial cannot make it in the time that is left, were it
+// alone, while another one can; or nothing.
+func (r Race) tooLate(i int) string {
+	h := r.Trials[i]
+	n := len(h.Predictions)
+	if r.Left <= 0 || n < 4 || h.Predictions[n-1].Total < needsToFall*h.Predictions[n-3].Total {
+		return ""
+	}
+	need := remaining(h, h.Predictions[n-1].Low)
+	if !(need > r.Left.Seconds()) || !r.another(i) {
+		return ""
+	}
+	return fmt.Sprintf("it needs at least %s more, %s are left", took(need), took(r.Left.Seconds()))
+}
+
+// another says that a live trial beside i is expected to make it in the time
+// that is left, were it alone.
+func (r Race) another(i int) bool {
+	for k, h := range r.Trials {
+		n := len(h.Predictions)
+		if k != i && h.Stop == trace.Running && n > 0 && remaining(h, h.Predictions[n-1].Total) < r.Left.Seconds() {
+			return true
+		}
+	}
+	return false
+}
+
+// remaining is the seconds that h takes to come to so many iterations.
+func remaining(h trace.History, iterations float64) float64 {
+	each := (h.OwnTime - h.SetupTime).Seconds() / math.Max(1, float64(h.Iterations))
+	return each * (iterations - float64(h.Iterations))
 }

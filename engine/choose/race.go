@@ -17,6 +17,7 @@ type Race struct {
 	Today      string          // the pairing the user's code runs now; it is never ended
 	Goal       string          // Seconds, Memory or Robust
 	Limit      int             // iterations a trial may take
+	Left       time.Duration   // of the run; 0: no limit
 }
 
 // Orders are what a race asks for next. It is over when nothing is to be
@@ -36,10 +37,10 @@ type End struct {
 
 const (
 	width     = 3                      // trials that run at once when a first one has converged
-	mostInAll = 40                     // trials of a race
+	mostInAll = 56                     // trials of a race
 	brief     = 20 * time.Millisecond  // a best below this is not worth a long race:
 	mostBrief = 16                     // so many trials then
-	enough    = 45.0                   // own time of all trials over the best's time, from which nothing is added
+	enough    = 60.0                   // own time of all trials over the best's time, from which nothing is added
 	atLeast   = 3 * time.Second        // but so much is always spent
 	firstPace = 500 * time.Millisecond // own time of the slowest live trial from which help is added where nothing converges
 	pace      = 1.5                    // by which it grows with each trial added

@@ -187,3 +187,29 @@ func TestCostlyFactorisationsWait(t *testing.T) {
 		t.Error("a cheap factorisation is left out")
 	}
 }
+
+// In what time is left, a trial that cannot make it gives way to one that can.
+func TestTooLate(t *testing.T) {
+	slow := running("cg+none", 0, 10*second)
+	slow.Iterations = 100
+	quick := running("cg+jacobi", 0, 10*second)
+	quick.Iterations = 100
+	for i := range 5 {
+		slow.Predictions = append(slow.Predictions, trace.Prediction{Iter: 80 + 5*i, Total: 1000, Low: 500, High: 2000})
+		quick.Predictions = append(quick.Predictions, trace.Prediction{Iter: 80 + 5*i, Total: 150, Low: 130, High: 200})
+	}
+	r := race(slow, quick)
+	r.Left = 20 * second
+	if o := r.Next(); len(o.End) != 1 || o.End[0].Trial != 0 || !strings.Contains(o.End[0].Reason, "needs at least 40 s more, 20 s are left") {
+		t.Errorf("ended %+v", o.End)
+	}
+	r.Left = 50 * second
+	if o := r.Next(); len(o.End) != 0 {
+		t.Errorf("ended %+v although there is time", o.End)
+	}
+	r = race(slow, running("cg+jacobi", 0, second))
+	r.Left = 20 * second
+	if o := r.Next(); len(o.End) != 0 {
+		t.Errorf("ended %+v although no other is known to make it", o.End)
+	}
+}

@@ -72,7 +72,7 @@ func ranked(h trace.History) Ranked {
 }
 
 // order puts those that reached the target first, of these the ones without
-// unsolved rows, then what the goal asks for.
+// doubtful findings, then what the goal asks for.
 func order(a, b Ranked, findings []diagnose.Finding, goal string) int {
 	ka, kb := class(a, findings), class(b, findings)
 	switch {
@@ -109,12 +109,16 @@ func class(r Ranked, findings []diagnose.Finding) int {
 		return 2
 	}
 	for _, f := range findings {
-		if f.Subject == r.Pairing && f.Rule == "unsolved-rows" {
+		if f.Subject == r.Pairing && slices.Contains(doubtful, f.Rule) {
 			return 1
 		}
 	}
 	return 0
 }
+
+// doubtful are the rules that put a trial behind all that they do not speak
+// of, although it reached the target: next time it may not.
+var doubtful = []string{"unsolved-rows", "breakdown", "preconditioner-not-spd", "preconditioner-not-linear", "false-convergence"}
 
 // breakEven fills in from how many right-hand sides each pairing beats the
 // one with the cheapest set-up.

@@ -10,7 +10,7 @@ import (
 
 const (
 	leads   = 2.0 // times the best's time up to which a trial leads
-	leaders = 2   // so many preconditioners, and solvers, are looked at more closely
+	leaders = 3   // so many preconditioners, and solvers, are looked at more closely
 )
 
 // untried returns the next pairings of a race, at most so many: first every
@@ -52,6 +52,9 @@ func (r Race) kinds() []string {
 		}
 	}
 	base := r.base()
+	if base != "cg" {
+		out = append(out, r.underMinres()...)
+	}
 	for i, k := range kindsInOrder {
 		if i == 3 && couldBeRegular(r.Facts) {
 			add("richardson", r.factorisation())
@@ -69,12 +72,45 @@ func (r Race) prefix() string {
 	return ""
 }
 
-// base is the solver under which preconditioners are compared.
+// base is the solver under which preconditioners are compared: one that takes
+// any, and has reached the target where one has.
 func (r Race) base() string {
 	if symmetric(r.Facts) && couldBeDefinite(r.Facts) {
 		return "cg"
 	}
-	return "bicgstab"
+	const usual = "bicgstab"
+	other := ""
+	for _, h := range r.Trials {
+		s := bare(split(h.Pairing).solver)
+		switch {
+		case !reached(h) || h.Direct || h.SPDM:
+		case s == usual:
+			return usual
+		case other == "":
+			other = s
+		}
+	}
+	return cmp.Or(other, usual)
+}
+
+// underMinres are the definite preconditioners of a symmetric indefinite A.
+func (r Race) underMinres() []string {
+	if !symmetric(r.Facts) {
+		return nil
+	}
+	preconds := []string{"schur"}
+	if r.Facts.DiagNegative+r.Facts.DiagZero+r.Facts.DiagMissing == 0 {
+		preconds = append(preconds, "jacobi")
+	}
+	var out []string
+	for _, p := range preconds {
+		for _, c := range r.Candidates {
+			if c.Solver == "minres" && c.Precond == p && r.admissible(c) {
+				out = append(out, r.prefix()+c.Pairing)
+			}
+		}
+	}
+	return out
 }
 
 func (r Race) factorisation() string {

@@ -16,7 +16,7 @@ const near = 0.2
 func calibration(outcomes []choose.Outcome) string {
 	met, good := 0, 0
 	for _, o := range outcomes {
-		if !finite(o.Came) || !finite(o.Predicted) {
+		if !finite(o.Came) || math.IsNaN(o.Predicted) { // one that said never has failed
 			continue
 		}
 		met++
