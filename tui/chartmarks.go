@@ -20,8 +20,8 @@ const (
 
 // markingWords is the one table of markings, in the order the key walks.
 var markingWords = [...]string{
-	markPicked: "marks on the picked curve: r by b, i by r0, p preconditioned, b backward, e energy",
-	markAll:    "marks on every curve: r by b, i by r0, p preconditioned, b backward, e energy",
+	markPicked: "marks, picked curve: r by b, i by r0, p preconditioned, b backward, e energy",
+	markAll:    "marks, every curve: r by b, i by r0, p preconditioned, b backward, e energy",
 	markNone:   "marks of common stopping rules are left out",
 }
 
