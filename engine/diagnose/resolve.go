@@ -25,6 +25,8 @@ var yields = []yield{
 	{"zero-rhs", nil, anywhere, "b = 0: no iteration tells anything"},
 	{"unreachable-rhs", []string{"restart-stagnation", "accuracy-floor", "divergence", "false-convergence", "stopping-rules", "not-your-rhs"},
 		unprojected, "no residual can get below the part that is out of reach"},
+	{"mechanism", consequences, unsolvable, "what moves freely leaves no answer to converge to"},
+	{"near-null", consequences, unsolvable, "A is singular to rounding"},
 	{"outside-assumptions", []string{"negative-curvature", "accuracy-floor", "restart-stagnation", "divergence", "breakdown",
 		"false-convergence", "stopping-rules", "preconditioner-not-spd", "pivot"}, samePairing, "the method has no right to converge"},
 	{"outside-assumptions", []string{"not-definite"}, anywhere, "the same matrix, told once"},
@@ -46,7 +48,14 @@ var yields = []yield{
 	{"today-beaten", []string{"preconditioner-costs-more"}, samePairing, "the same times, told once"},
 }
 
+// consequences are what trials show on a system without a single answer.
+var consequences = []string{"restart-stagnation", "restart-length", "accuracy-floor", "divergence", "breakdown", "pivot",
+	"false-convergence", "stopping-rules", "unstable-factors"}
+
 func anywhere(_, _ Finding) bool { return true }
+
+// unsolvable: what is said of the system makes any answer worthless.
+func unsolvable(strong, _ Finding) bool { return strong.Weight == Blocker }
 
 func samePairing(strong, weak Finding) bool { return strong.Subject == weak.Subject }
 

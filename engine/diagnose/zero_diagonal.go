@@ -25,7 +25,11 @@ var zeroDiagonal = Rule{"zero-diagonal", func(c Case) []Finding {
 		g.Advice = "treat it as a saddle system by blocks (schur), or permute A to a diagonal without zeros (match)"
 		g.Try = []string{"gmres:30+schur", "match/gmres:30+ilu:0"}
 	}
+	_, answered := quickest(c)
 	for _, h := range c.Trials {
+		if c.Race && answered && !h.Today {
+			continue // nobody asked for it
+		}
 		if h.Stop == trace.BrokeDown && len(h.Notes.Broke) > 0 && h.Notes.Broke[0].Value == 0 {
 			g.Weight = Drag
 		}
