@@ -46,7 +46,7 @@ var (
 var (
 	samplesOf = []string{"sample:plate:500", "sample:plate:1000", "sample:seepage:400", "sample:seepage:800",
 		"sample:duct:300", "sample:duct:600", "sample:acoustics:150", "sample:acoustics:300"}
-	openOf = []string{"bcsstk16.mtx.gz", "bcsstk13.mtx.gz", "rajat19.mtx", "watt_2.mtx"}
+	openOf = []string{"bcsstk16.mtx.gz", "bcsstk13.mtx.gz", "hangGlider_2.mtx", "reorientation_1.mtx"}
 )
 
 func main() {
@@ -59,6 +59,7 @@ func main() {
 		}
 	}
 	fmt.Printf("Race against an exhaustive run, %s, %d threads, tolerance %g, medians of %d.\n\n", time.Now().Format(time.DateOnly), *threads, *tol, *rounds)
+	fmt.Print("Times are own times; race and all are the sums over their trials. The best of all leaves no row unsolved.\n\n")
 	fmt.Println("| system | b | best of all | its time | chosen | its time | ratio | race | all | share |")
 	fmt.Println("| --- | --- | --- | --: | --- | --: | --: | --: | --: | --: |")
 	for _, s := range sources {
@@ -107,8 +108,8 @@ func session(source, b string, bare bool) (*engine.Session, error) {
 	return s, s.Wait(context.Background())
 }
 
-// exhaustive runs every admissible pairing once; it returns the best and the
-// time of all.
+// exhaustive runs every admissible pairing once; it returns the best, of those
+// that leave no row unsolved, and the time of all.
 func exhaustive(source, b string) (best string, all float64, err error) {
 	s, err := session(source, b, true)
 	if err != nil {
@@ -123,7 +124,7 @@ func exhaustive(source, b string) (best string, all float64, err error) {
 		}
 		h := once(s, c.Pairing, cut*least)
 		all += h.OwnTime.Seconds()
-		if h.Stop == trace.Converged && (best == "" || h.OwnTime < least) {
+		if h.Stop == trace.Converged && h.UnsolvedRows == 0 && (best == "" || h.OwnTime < least) {
 			best, least = c.Pairing, h.OwnTime
 		}
 		fmt.Fprintf(os.Stderr, "%s %s %s: %s %.3f s\n", filepath.Base(source), b, c.Pairing, h.Stop, h.OwnTime.Seconds())
