@@ -2,6 +2,7 @@ package run
 
 import (
 	"math"
+	"slices"
 
 	"dwindle/engine/linear"
 	"dwindle/engine/trace"
@@ -13,25 +14,28 @@ type producer interface{ Product(dst, x []float64) }
 // probe looks at a preconditioner with two random vectors, off the clock and
 // uncounted: is M⁻¹ symmetric, linear and the same each time, positive, and
 // how far is M⁻¹A from a multiple of the identity? It takes five uses of M⁻¹
-// and two products, and changes no iterate.
+// and one product, and changes no iterate. Complete factors are looked at only
+// where the method supposes that they are definite.
 func (t *Trial) probe() {
-	if t.method.Precond.Name == "none" {
+	if t.method.Precond.Name == "none" || t.hist.Direct && !t.hist.SPDM {
 		return
 	}
-	n := t.sys.N()
-	buf := linear.Bulk[float64](5 * n)
-	p := prober{m: t.m.inner, u: buf[:n], v: buf[n : 2*n], mu: buf[2*n : 3*n], mv: buf[3*n : 4*n], w: buf[4*n:]}
+	s := t.scratch // nobody else works in it now
+	p := prober{m: t.m.inner, u: s.x, v: s.r, mu: s.w, mv: s.own, w: linear.Bulk[float64](t.sys.N())}
 	linear.Uniform(p.u, 1)
 	linear.Uniform(p.v, 2)
 	p.m.Apply(p.mu, p.u)
 	p.m.Apply(p.mv, p.v)
-	found := trace.MProbe{Asymmetry: p.asymmetry(), Nonlinear: p.nonlinear(), Unrepeatable: p.unrepeatable(),
-		Plain: math.NaN(), WrongWay: math.NaN()}
-	av := make([]float64, n)
+	found := trace.MProbe{Asymmetry: p.asymmetry(), Plain: math.NaN(), WrongWay: math.NaN()}
+	if e, ok := p.negative(); ok && t.hist.SPDM {
+		t.event(e)
+	}
+	found.Nonlinear, found.Unrepeatable = p.nonlinear(), p.unrepeatable()
+	av, d := p.u, p.mu // what they held has had its last use
 	t.a.inner.Apply(av, p.v)
 	p.m.Apply(p.w, av)
 	found.Distance = distance(p.v, p.w)
-	if d := t.diagonal(); d != nil {
+	if t.diagonal(d) {
 		for i := range p.w {
 			p.w[i] = av[i] / d[i]
 		}
@@ -46,9 +50,6 @@ func (t *Trial) probe() {
 		t.hist.PrecondAsymmetry = found.Asymmetry
 	}
 	t.mu.Unlock()
-	if e, ok := p.negative(); ok && t.hist.SPDM {
-		t.event(e)
-	}
 }
 
 // prober holds two random vectors, what M⁻¹ makes of them, and room.
@@ -63,11 +64,11 @@ func (p *prober) asymmetry() float64 {
 	return over(gap, linear.Norm2(p.u)*linear.Norm2(p.mv))
 }
 
-// nonlinear is ‖M⁻¹(u+v) − M⁻¹u − M⁻¹v‖ relative to ‖M⁻¹u‖ + ‖M⁻¹v‖.
+// nonlinear is ‖M⁻¹(u+v) − M⁻¹u − M⁻¹v‖ relative to ‖M⁻¹u‖ + ‖M⁻¹v‖. It
+// leaves u + v in u.
 func (p *prober) nonlinear() float64 {
-	sum := make([]float64, len(p.u))
-	linear.Lin(sum, 1, p.u, 1, p.v)
-	p.m.Apply(p.w, sum)
+	linear.Axpy(1, p.v, p.u)
+	p.m.Apply(p.w, p.u)
 	linear.Axpy(-1, p.mu, p.w)
 	linear.Axpy(-1, p.mv, p.w)
 	return over(linear.Norm2(p.w), linear.Norm2(p.mu)+linear.Norm2(p.mv))
@@ -98,21 +99,15 @@ func distance(v, w []float64) float64 {
 	return math.Sqrt(math.Max(0, 1-(vw/vv)*(vw/ww)))
 }
 
-// diagonal returns the diagonal of the prepared matrix, nil where it is not
-// known or an entry is zero.
-func (t *Trial) diagonal() []float64 {
+// diagonal writes the diagonal of the prepared matrix to d; false where it is
+// not known or an entry is zero.
+func (t *Trial) diagonal(d []float64) bool {
 	a := t.prepared.Matrix()
 	if a == nil {
-		return nil
+		return false
 	}
-	d := make([]float64, a.NRows)
 	a.Diagonal(d)
-	for _, x := range d {
-		if x == 0 {
-			return nil
-		}
-	}
-	return d
+	return !slices.Contains(d, 0)
 }
 
 // wrongWay is how far the user's own preconditioner is from A when it is taken
