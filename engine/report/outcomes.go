@@ -56,7 +56,14 @@ func trialItems(t trace.History) []labelled {
 	}
 	if n := len(t.Predictions); n > 0 {
 		p := t.Predictions[n-1]
-		add("prediction", "at it %d: %s its in all (%s to %s)", p.Iter, short(p.Total), short(p.Low), short(p.High))
+		switch {
+		case math.IsInf(p.Total, 1):
+			add("prediction", "at it %d: it will not reach the tolerance; its true residual stays near %s", p.Iter, sci(t.TrueResidual))
+		case math.IsInf(p.High, 1):
+			add("prediction", "at it %d: %s its in all (%s or more, or never)", p.Iter, short(p.Total), short(p.Low))
+		default:
+			add("prediction", "at it %d: %s its in all (%s to %s)", p.Iter, short(p.Total), short(p.Low), short(p.High))
+		}
 	}
 	for _, w := range t.Without {
 		add("without", "%s: about %s, computed from its own coefficients", withoutText(w), plural(w.Iterations, "it", "its"))

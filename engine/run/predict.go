@@ -61,6 +61,9 @@ func (t *Trial) predict(own float64) {
 	case ok:
 		p = around(k, total, steadyLow, steadyHigh)
 	}
+	if t.limits.Target.Rule == StopRHS && t.hist.Floor > t.limits.Target.Tol {
+		p.High = math.Inf(1) // rounding may end it above the target
+	}
 	t.mu.Lock()
 	t.hist.Predictions = append(t.hist.Predictions, p)
 	t.mu.Unlock()
