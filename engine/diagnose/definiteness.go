@@ -8,16 +8,12 @@ import (
 )
 
 // lostDefiniteness: a direction of negative curvature was met, and its
-// Rayleigh quotient lies below its rounding bound. Silent where the facts have
-// told the same before the trial.
+// Rayleigh quotient lies below its rounding bound.
 var lostDefiniteness = Rule{"negative-curvature", func(c Case) (out []Finding) {
 	if c.Facts.NegativeDefinite.Answer == inspect.Yes {
 		return nil
 	}
 	for _, h := range c.Trials {
-		if told, ok := assumption(c.Facts, h); ok && told.Certainty == inspect.Proved {
-			continue
-		}
 		for _, e := range events(h, trace.NegativeCurvature) {
 			if !e.Proved() {
 				continue
@@ -49,18 +45,13 @@ func curvature(f *inspect.Facts, h trace.History, e trace.Event) Finding {
 }
 
 // notDefinite: a symmetric A whose diagonal is positive is not positive
-// definite all the same. Silent where a trial was told so, or a mechanism says
+// definite all the same. Silent where a mechanism says
 // why.
 var notDefinite = Rule{"not-definite", func(c Case) []Finding {
 	f := c.Facts
 	if f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer != inspect.No || semidefinite(f) ||
 		f.DiagNegative+f.DiagZero+f.DiagMissing > 0 || mechanism.Judge(c) != nil {
 		return nil
-	}
-	for _, h := range c.Trials {
-		if _, ok := assumption(f, h); ok {
-			return nil
-		}
 	}
 	g := Finding{Weight: Drag, Certainty: f.PositiveDefinite.Certainty, Subject: OnSystem,
 		Claim:  "A has a positive diagonal, yet is not positive definite: " + f.PositiveDefinite.Why,

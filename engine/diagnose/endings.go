@@ -39,7 +39,7 @@ var stagnation = Rule{"restart-stagnation", func(c Case) (out []Finding) {
 		for run < len(cycles) && cycles[len(cycles)-1-run].Value > flat {
 			run++
 		}
-		if run < flatRun || !h.Stop.Ended() || solved(h) || h.FloorHits > 0 || outOfReach(c) {
+		if run < flatRun || !h.Stop.Ended() || solved(h) || h.FloorHits > 0 {
 			continue
 		}
 		last := cycles[len(cycles)-1]
@@ -102,9 +102,6 @@ func doubled(solver string) (string, bool) {
 var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		if h.FloorHits < 5 || solved(h) || missed(h) != nil && normMet(c, h) {
-			continue
-		}
-		if _, outside := assumption(c.Facts, h); outside {
 			continue
 		}
 		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,

@@ -15,9 +15,6 @@ const falseFactor = 10
 // falseConvergence: the method's own number met the target while b−Ax was far
 // from it, and not only as far as the accuracy floor holds it.
 var falseConvergence = Rule{"false-convergence", func(c Case) (out []Finding) {
-	if outOfReach(c) || c.Facts.ZeroRHS {
-		return nil
-	}
 	for _, h := range c.Trials {
 		for _, e := range events(h, trace.FalseStop) {
 			if !(e.Value > falseFactor*c.Tol) || h.FloorHits > 0 && !solved(h) && e.Value <= falseFactor*h.BestTrue {
