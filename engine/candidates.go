@@ -3,6 +3,7 @@ package engine
 import (
 	"fmt"
 	"sort"
+	"strings"
 
 	"dwindle/engine/choose"
 	"dwindle/engine/krylov"
@@ -75,6 +76,8 @@ func candidate(m run.Method, h run.Have, memory, precond int64) choose.Candidate
 		c.Preps = append(c.Preps, p.Entry.Name)
 	}
 	switch {
+	case c.Refused != "" && m.Solver.Needs&linear.NeedsTransposeM != 0 && !m.Precond.Transposes && strings.Contains(c.Refused, m.Precond.Name+" has none"):
+		c.Cause = "the solver needs products with the transpose of M, and this preconditioner has none"
 	case c.Refused != "":
 	case c.SPDM && !m.Precond.Symmetric:
 		c.Refused = fmt.Sprintf("%s needs a symmetric preconditioner; %s is not", c.Solver, c.Precond)
