@@ -44,6 +44,8 @@ const (
 	atLeast   = 3 * time.Second        // but so much is always spent
 	firstPace = 500 * time.Millisecond // own time of the slowest live trial from which help is added where nothing converges
 	pace      = 1.5                    // by which it grows with each trial added
+	someSteps = 20                     // no help is added before every live trial has taken so many steps
+	tooLong   = 20                     // or so many times the pace
 	setupRoom = 4.0                    // a set-up may take so many times the best's time
 	setupLow  = 200 * time.Millisecond // but at least this
 )
@@ -86,7 +88,7 @@ func (r Race) add(live int, best *trace.History, found bool) []string {
 		return nil
 	case !found && live > 0:
 		room = 0
-		if r.slowest() >= r.patience() {
+		if d := r.patience(); r.slowest() >= d && r.underWay(d) {
 			room = 1
 		}
 	}
@@ -125,6 +127,17 @@ func (r Race) slowest() time.Duration {
 		}
 	}
 	return least
+}
+
+// underWay says that every live trial has taken enough steps to show what it
+// can do, or has taken too long over fewer.
+func (r Race) underWay(patience time.Duration) bool {
+	for _, h := range r.Trials {
+		if !h.Stop.Ended() && h.Stop != trace.Held && h.Iterations < someSteps && h.OwnTime < tooLong*patience {
+			return false
+		}
+	}
+	return true
 }
 
 // patience is the own time that every live trial must have had before help is

@@ -155,7 +155,9 @@ func TestWavesFollowEachOtherAndEnd(t *testing.T) {
 func TestHelpIsAddedWhereNothingConverges(t *testing.T) {
 	r := race()
 	for _, p := range r.First() {
-		r.Trials = append(r.Trials, running(p, 0, 100*time.Millisecond))
+		h := running(p, 0, 100*time.Millisecond)
+		h.Iterations = 100
+		r.Trials = append(r.Trials, h)
 	}
 	if o := r.Next(); len(o.Add) != 0 {
 		t.Errorf("%v added after 0.1 s", o.Add)
@@ -163,6 +165,11 @@ func TestHelpIsAddedWhereNothingConverges(t *testing.T) {
 	for i := range r.Trials {
 		r.Trials[i].OwnTime = 600 * time.Millisecond
 	}
+	r.Trials[0].Iterations = 2
+	if o := r.Next(); len(o.Add) != 0 {
+		t.Errorf("%v added although %s has hardly begun", o.Add, r.Trials[0].Pairing)
+	}
+	r.Trials[0].Iterations = 100
 	o := r.Next()
 	if len(o.Add) != 1 {
 		t.Fatalf("%v added after 0.6 s, want one", o.Add)

@@ -174,8 +174,11 @@ func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
 }
 
 func took(s float64) string {
-	if s < 1 {
+	switch {
+	case s < 1:
 		return fmt.Sprintf("%.3g ms", 1000*s)
+	case s >= 100:
+		return fmt.Sprintf("%.0f s", s)
 	}
 	return fmt.Sprintf("%.3g s", s)
 }
