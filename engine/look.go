@@ -103,7 +103,11 @@ func (s *Session) judge(v *Snapshot) {
 	if key != s.judged.key || now-s.judged.at > judgeAgain && v.Phase == Running {
 		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule, Race: s.racing()}
 		f := diagnose.Judge(c)
-		s.judged = verdict{key: key, at: now, findings: f, choice: s.rank(histories, f)}
+		choice := s.rank(histories, f)
+		if c.Chosen = choice.Pairing; c.Chosen != "" {
+			f = diagnose.Judge(c) // what is found goes by what is recommended
+		}
+		s.judged = verdict{key: key, at: now, findings: f, choice: choice}
 	}
 	v.Findings, v.Choice = s.judged.findings, s.judged.choice
 }

@@ -16,17 +16,14 @@ const (
 // beaten: today's pairing is slower than another, or misses where another
 // reaches.
 var beaten = Rule{"today-beaten", func(c Case) []Finding {
-	var today, best *trace.History
+	var today *trace.History
 	for i := range c.Trials {
-		h := &c.Trials[i]
-		switch {
-		case h.Today:
-			today = h
-		case solved(*h) && (best == nil || h.OwnTime < best.OwnTime):
-			best = h
+		if c.Trials[i].Today {
+			today = &c.Trials[i]
 		}
 	}
-	if today == nil || best == nil || !today.Stop.Ended() {
+	best, ok := quickest(c)
+	if today == nil || !ok || best.Pairing == today.Pairing || !today.Stop.Ended() {
 		return nil
 	}
 	f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: today.Pairing, Try: []string{best.Pairing},
@@ -45,7 +42,7 @@ var beaten = Rule{"today-beaten", func(c Case) []Finding {
 		return []Finding{f}
 	}
 	t, b := today.OwnTime.Seconds(), best.OwnTime.Seconds()
-	if t < beatFactor*b || t-b < beatLeast || !Apart(*best, *today, 0) {
+	if t < beatFactor*b || t-b < beatLeast || !Apart(best, *today, 0) {
 		return nil
 	}
 	f.Claim = fmt.Sprintf("today's pairing takes %s and %s; %s takes %d and %s: %.1f times faster",

@@ -59,6 +59,7 @@ type Case struct {
 	Tol    float64
 	Race   bool   // the trials, today's aside, were entered by dwindle, not asked for
 	StopBy string // the stopping rule of the session
+	Chosen string // the pairing that is recommended; empty where that is not known
 }
 
 // Rule is one entry of the catalogue.
