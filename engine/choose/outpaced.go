@@ -13,6 +13,9 @@ const (
 	patient     = 5.0 // the same where the choice does not go by seconds
 	hopelessBy  = 3.0 // predicted iterations over the limit of a trial beyond hope
 	needsToFall = 0.9 // of the prediction before: falling by more, a trial is gaining
+	// shownNothing is the iterations after which a trial without a prediction
+	// has shown no fall.
+	shownNothing = 4
 )
 
 // lost returns the trials that can no longer win. Before anything has
@@ -61,11 +64,23 @@ func (r Race) outpaced(h, best trace.History) string {
 	if r.Goal == Memory && h.MemoryBytes < best.MemoryBytes && own <= 10*room*t {
 		return ""
 	}
-	s := fmt.Sprintf("%s has the answer after %s; this one is at %.2g after %s", best.Pairing, took(t), h.Residual, took(own))
-	if n := len(h.Predictions); n > 0 && !math.IsInf(h.Predictions[n-1].Total, 0) {
-		s += fmt.Sprintf(", about %.0f more iterations to go", math.Max(1, h.Predictions[n-1].Total-float64(h.Iterations)))
+	return fmt.Sprintf("%s has the answer after %s; this one, last measured at %.2g, has used %s%s",
+		best.Pairing, took(t), h.TrueResidual, took(own), r.toGo(h))
+}
+
+// toGo says what is foreseen of a trial that has not arrived, if it has
+// iterated long enough to say anything.
+func (r Race) toGo(h trace.History) string {
+	n := len(h.Predictions)
+	switch {
+	case n == 0 && h.Iterations < shownNothing:
+		return ""
+	case n == 0:
+		return " and has not begun to fall"
+	case math.IsInf(h.Predictions[n-1].Total, 1) || r.Limit > 0 && h.Predictions[n-1].Total > float64(r.Limit):
+		return " and will not get there in the iterations it has"
 	}
-	return s
+	return fmt.Sprintf(", about %.0f more iterations to go", math.Max(1, h.Predictions[n-1].Total-float64(h.Iterations)))
 }
 
 // hopeless says why a restarted method will not get there, or nothing. Other

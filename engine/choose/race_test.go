@@ -1,6 +1,7 @@
 package choose
 
 import (
+	"math"
 	"slices"
 	"strings"
 	"testing"
@@ -68,6 +69,30 @@ func TestWhoHasLost(t *testing.T) {
 		}
 		if c.lost && !strings.Contains(o.End[0].Reason, "cg+ic has the answer") {
 			t.Errorf("%s: reason %q", c.what, o.End[0].Reason)
+		}
+	}
+}
+
+// A trial that is cut is told by its true residual, and only what its curve
+// has shown is foreseen.
+func TestWhatIsToldOfWhoIsCut(t *testing.T) {
+	winner := trial("cg+ic", trace.Converged, second, 3*second)
+	for _, c := range []struct {
+		told   []trace.Prediction
+		want   string
+		unwant string
+	}{
+		{nil, "has not begun to fall", "to go"},
+		{[]trace.Prediction{{Iter: 50, Total: 140, Low: 120, High: 180}}, "about 40 more iterations to go", "will not"},
+		{[]trace.Prediction{{Iter: 50, Total: 5e15, Low: 4e15, High: 6e15}}, "will not get there", "to go"},
+		{[]trace.Prediction{{Iter: 50, Total: math.Inf(1)}}, "will not get there", "to go"},
+	} {
+		h := running("lsmr+none", 0, 4*second)
+		h.Iterations, h.Residual, h.TrueResidual, h.Predictions = 100, 1.4e-6, 0.35, c.told
+		o := race(winner, h).Next()
+		if len(o.End) != 1 || !strings.Contains(o.End[0].Reason, "last measured at 0.35") ||
+			!strings.Contains(o.End[0].Reason, c.want) || strings.Contains(o.End[0].Reason, c.unwant) {
+			t.Errorf("told %v: %+v", c.told, o.End)
 		}
 	}
 }

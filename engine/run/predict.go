@@ -12,7 +12,7 @@ const (
 	firstTold  = 3    // the iteration at which a prediction is first told
 	toldAgain  = 1.1  // and by which factor later ones lie apart
 	bend       = 0.6  // see forecast
-	leastFall  = 0.25 // decades below which a curve has shown nothing yet
+	leastFall  = 0.25 // decades below which a curve has shown nothing yet, and nothing is told
 	lowShare   = 0.5  // of the predicted way to go: nine in ten trials take more than lowShare
 	highShare  = 1.9  // and less than highShare of it
 	cyclesTold = 2    // cycles from which a restarted method is taken to go on as it does
@@ -31,9 +31,10 @@ const (
 // restarted method gets no faster from cycle to cycle: there a straight
 // line through the last half is used.
 type forecast struct {
-	next int     // the iteration to tell at
-	low  float64 // log10 of the smallest own number so far
-	gap  float64 // log10 of the true number over the own one at the last audit
+	next  int     // the iteration to tell at
+	first float64 // log10 of the own number at the start
+	low   float64 // log10 of the smallest own number so far
+	gap   float64 // log10 of the true number over the own one at the last audit
 }
 
 // seeAudit takes in how far the own number was from the true one.
@@ -43,41 +44,52 @@ func (f *forecast) seeAudit(own, truth float64) {
 	}
 }
 
+// see takes in the own number of one iteration.
+func (f *forecast) see(k int, own float64) {
+	if !(own > 0) || math.IsInf(own, 1) {
+		return
+	}
+	l := math.Log10(own)
+	if k == 0 {
+		f.first, f.low = l, l
+	}
+	f.low = math.Min(f.low, l)
+}
+
 // predict tells, at growing iterations, how many iterations the trial is
-// expected to take.
+// expected to take: nothing before its curve has begun to fall.
 func (t *Trial) predict(own float64) {
 	f, k := &t.forecast, t.hist.Iterations
-	if own > 0 {
-		f.low = math.Min(f.low, math.Log10(own))
-	}
+	f.see(k, own)
 	if k < max(f.next, firstTold) || t.hist.Direct {
 		return
 	}
 	f.next = int(math.Ceil(toldAgain * float64(k)))
-	p := f.tell(k, math.Log10(t.limits.Target.Tol))
-	switch total, ok := t.straight(own, math.Log10(t.limits.Target.Tol)-f.gap); {
-	case t.hist.FloorHits > 1:
-		p = trace.Prediction{Iter: k, Total: math.Inf(1), Low: math.Inf(1), High: math.Inf(1)}
-	case ok:
-		p = around(k, total, steadyLow, steadyHigh)
+	goal := math.Log10(t.limits.Target.Tol)
+	p, told := f.tell(k, goal)
+	if total, ok := t.straight(own, goal-f.gap); ok {
+		p, told = around(k, total, steadyLow, steadyHigh), true
 	}
-	if t.limits.Target.Rule == StopRHS && t.hist.Floor > t.limits.Target.Tol {
-		p.High = math.Inf(1) // rounding may end it above the target
+	if t.hist.FloorHits > 1 {
+		p, told = trace.Prediction{Iter: k, Total: math.Inf(1), Low: math.Inf(1), High: math.Inf(1)}, true
+	}
+	if !told {
+		return
 	}
 	t.mu.Lock()
 	t.hist.Predictions = append(t.hist.Predictions, p)
 	t.mu.Unlock()
 }
 
-// tell is the prediction at iteration k for a method that gets faster.
-func (f *forecast) tell(k int, tol float64) trace.Prediction {
-	fallen := math.Max(leastFall, -f.low)
-	togo := math.Max(fallen, f.gap-tol)
-	p := around(k, float64(k)*math.Exp(bend*math.Sqrt(math.Log(togo/fallen))), lowShare, highShare)
-	if -f.low < leastFall {
-		p.High = math.Inf(1)
+// tell is the prediction at iteration k for a method that gets faster; false
+// where the curve has not fallen far enough to tell anything.
+func (f *forecast) tell(k int, goal float64) (trace.Prediction, bool) {
+	fallen := f.first - f.low
+	if !(fallen >= leastFall) {
+		return trace.Prediction{}, false
 	}
-	return p
+	all := math.Max(fallen, f.first+f.gap-goal)
+	return around(k, float64(k)*math.Exp(bend*math.Sqrt(math.Log(all/fallen))), lowShare, highShare), true
 }
 
 // around is a prediction with its range, as shares of the way to go.

@@ -156,7 +156,7 @@ type History struct {
 	Without       []Counterfactual     // of an ended trial that converged; nil where nothing changes
 	Delay         int                  // iterations lost to lost orthogonality, estimated; 0 if none seen
 	Harmonic      []complex128         // harmonic Ritz values of the last whole cycle of an Arnoldi method
-	Predictions   []Prediction         // told at growing iterations
+	Predictions   []Prediction         // told at growing iterations, none before the curve has begun to fall
 	Fields        []Field              // residuals by field of unknowns, last full audit
 	Probe         *MProbe              // nil if not probed
 	Counts        []int                // iterations of reruns with each b_i changed by one unit in its last place
