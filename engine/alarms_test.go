@@ -25,7 +25,7 @@ var openSystems = map[string][]string{
 	"494_bus.mtx":         {"not-your-rhs", "row-scaling", "residual-rises", "superlinear", "few-digits"},
 	"LFAT5.mtx":           {"not-your-rhs", "pivot", "row-scaling", "residual-rises", "lost-orthogonality"},
 	"arc130.rua":          {"not-your-rhs", "false-convergence", "row-scaling", "non-normal"},
-	"bcsstk01.rsa":        {"not-your-rhs", "plateau", "residual-rises", "superlinear", "lost-orthogonality"},
+	"bcsstk01.rsa":        {"not-your-rhs", "row-scaling", "plateau", "residual-rises", "superlinear", "lost-orthogonality"},
 	"bcsstk13.mtx.gz":     {"not-your-rhs", "pivot", "row-scaling", "residual-rises", "superlinear"},
 	"bcsstk16.mtx.gz":     {"not-your-rhs", "singleton-rows", "mesh-growth", "condition", "plateau", "residual-rises", "lost-orthogonality"},
 	"bfwa62.mtx":          {"not-your-rhs"},

@@ -79,7 +79,7 @@ func TestEachRuleSpeaks(t *testing.T) {
 			h.Stop = trace.IterationLimit
 		}, Blocker, inspect.Proved, "0.125"},
 		{"preconditioner-not-spd", func(_ *inspect.Facts, h *trace.History) {
-			h.SPDM, h.PrecondAsymmetry, h.Stop = true, 1.9, trace.IterationLimit
+			h.Pairing, h.SPDM, h.PrecondAsymmetry, h.Stop = "cg+gs", true, 1.9, trace.IterationLimit
 		}, Blocker, inspect.Measured, "not symmetric"},
 		{"preconditioner-not-spd", func(_ *inspect.Facts, h *trace.History) {
 			h.SPDM, h.PrecondAsymmetry = true, 1e-15
@@ -120,7 +120,7 @@ func TestEachRuleSpeaks(t *testing.T) {
 			h.Notes.Broke, h.Notes.Shift = []trace.Pivot{{Row: 3, Value: -5}}, 0.178
 		}, Note, inspect.Measured, "row 4 with pivot -5"},
 		{"row-scaling", func(f *inspect.Facts, _ *trace.History) { f.RowNorm = inspect.Range{Min: 1e-3, Max: 1e4} },
-			Drag, inspect.Measured, "1e+07"},
+			Note, inspect.Measured, "1e+07"},
 		{"few-digits", func(f *inspect.Facts, _ *trace.History) { f.Digits, f.Delta = 6, 5e-6 },
 			Note, inspect.Measured, "6 digits"},
 		{"one-triangle", func(f *inspect.Facts, _ *trace.History) {

@@ -42,7 +42,7 @@ func smoothers(f *inspect.Facts) []string {
 	if f.PositiveDefinite.Answer != inspect.Yes {
 		return instead(f)
 	}
-	return []string{"cg+amg", "cg+ic:0"}
+	return []string{"cg+ic:0", "cg+amg:aggregation"}
 }
 
 // greatJump is the ratio of the diagonals of neighbours from which a jump of
@@ -71,6 +71,20 @@ const leastGrowth, mostGrowth = 0.7, 1.5
 // growsFrom is the order from which a multilevel method is worth its set-up.
 const growsFrom = 1000
 
+// sameSlope is how far the local exponents of a power law may lie apart.
+const sameSlope = 0.1
+
+// oneLaw says whether the counts follow one power of the size: each step from
+// one part to the next has the exponent of the others.
+func oneLaw(g *inspect.Growth) bool {
+	low, high := math.Inf(1), math.Inf(-1)
+	for i := 1; i < len(g.Unknowns); i++ {
+		p := math.Log(float64(g.Iterations[i])/float64(g.Iterations[i-1])) / math.Log(float64(g.Unknowns[i])/float64(g.Unknowns[i-1]))
+		low, high = math.Min(low, p), math.Max(high, p)
+	}
+	return high-low <= sameSlope
+}
+
 // growth: iterations of a one-level pairing grow with the mesh.
 var growth = Rule{"mesh-growth", func(c Case) []Finding {
 	f, k := c.Facts, onMesh(c.Facts)
@@ -82,22 +96,31 @@ var growth = Rule{"mesh-growth", func(c Case) []Finding {
 	if p := g.Exponent * k.Dimension; last < 2 || p < leastGrowth || p > mostGrowth {
 		return nil
 	}
-	ten := float64(g.Iterations[last]) * math.Pow(10*float64(f.N)/float64(g.Unknowns[last]), g.Exponent)
-	steps := ""
+	sizes := ""
 	for i, n := range g.Unknowns {
 		if i > 0 {
-			steps += ", "
+			sizes += ", "
 		}
-		steps += fmt.Sprintf("%d at %d", g.Iterations[i], n)
+		sizes += fmt.Sprintf("%d at %d", g.Iterations[i], n)
 	}
 	out := Finding{Weight: Note, Certainty: inspect.Measured, Subject: OnSystem,
-		Claim: fmt.Sprintf("iterations of %s grow as n^%.2f (%s, parts of this system): the condition of a mesh; ten times the unknowns would take about %.0f",
-			g.Pairing, g.Exponent, steps, ten),
-		Advice:   "no one-level preconditioner ends this growth: a multilevel one does",
-		Try:      []string{"cg+amg"},
+		Claim:    fmt.Sprintf("iterations of %s grow with the mesh (%s, parts of this system)", g.Pairing, sizes),
+		Advice:   "the growth is ended by a multilevel preconditioner, if by any",
+		Try:      []string{"cg+amg:aggregation"},
 		Evidence: []Evidence{number("exponent", g.Exponent, ""), number("dimension of the mesh", k.Dimension, "")}}
 	for i, n := range g.Unknowns {
 		out.Evidence = append(out.Evidence, number(fmt.Sprintf("iterations at %d unknowns", n), float64(g.Iterations[i]), ""))
+	}
+	if oneLaw(g) {
+		ten := float64(g.Iterations[last]) * math.Pow(10*float64(f.N)/float64(g.Unknowns[last]), g.Exponent)
+		out.Claim += fmt.Sprintf(" as n^%.2f: the condition of a mesh; by that law ten times the unknowns would take about %.0f (estimated)", g.Exponent, ten)
+	}
+	if best, ok := quickest(c); ok {
+		out.Try = []string{best.Pairing}
+		out.Advice = fmt.Sprintf("at this size %s is the quickest that ran (%s, %s)", best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
+		if _, _, m := cut(best.Pairing); kindOfM(m) != "amg" {
+			out.Advice += "; on larger ones hold it against a multilevel preconditioner"
+		}
 	}
 	if x := f.Study.Jacobi; x != nil && x.Condition > 0 {
 		out.Evidence = append(out.Evidence, number("condition of A scaled by its diagonal", x.Condition, ""))

@@ -24,7 +24,7 @@ var preconditioner = Rule{"preconditioner-not-spd", func(c Case) (out []Finding)
 		}
 		_, solver, m := cut(h.Pairing)
 		f := Finding{Weight: Blocker, Certainty: inspect.Measured, Subject: h.Pairing}
-		if h.PrecondAsymmetry > probeLimit(h) {
+		if h.PrecondAsymmetry > probeLimit(h) && !h.Notes.Symmetric && !symmetricFactors(kindOfM(m)) {
 			f.Claim = fmt.Sprintf("%s is not symmetric: u'inv(M)v and v'inv(M)u differ by %s of their size; %s needs a symmetric positive definite M",
 				m, num(h.PrecondAsymmetry), solver)
 			f.Evidence = []Evidence{number("asymmetry of inv(M)", h.PrecondAsymmetry, "relative")}

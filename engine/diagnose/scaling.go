@@ -14,8 +14,8 @@ const scaleLimit = 1e4
 // A condition is laid to scaling where it is large, and equilibration takes
 // most of its decimal digits away.
 const (
-	largeCondition = 1e6
-	greatGain      = 1e4
+	largeCondition = 1e5
+	greatGain      = 100
 	mostly         = 0.6
 	almostAll      = 0.35
 )
@@ -28,6 +28,7 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 		span, rows = f.RestDiag, []int{f.RestDiag.MinRow, f.RestDiag.MaxRow}
 	}
 	before, after, share := byScaling(f.Study)
+	helped, words, gains := scaledTrials(c)
 	wide := span.Min > 0 && span.Max/span.Min >= scaleLimit
 	if !wide && share == "" {
 		return nil
@@ -39,23 +40,75 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 	case f.Symmetric.Answer == inspect.Yes:
 		try = []string{"scale/minres+none"}
 	}
-	g := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: OnSystem,
-		Advice:   "scale the system, or use jacobi at the least",
+	g := Finding{Weight: Note, Certainty: inspect.Measured, Subject: OnSystem,
+		Advice:   scalingAdvice(c, try),
 		Try:      try,
 		Evidence: []Evidence{{Quantity: "largest over smallest row", Value: span.Max / span.Min, Iteration: none, Rows: rows}}}
+	g.Evidence = append(g.Evidence, gains...)
+	if helped || share != "" {
+		g.Weight = Drag
+	}
 	differ := fmt.Sprintf("rows differ in size by %s (%s to %s)", num(span.Max/span.Min), c.name(rows[0]), c.name(rows[1]))
 	if share == "" {
-		g.Claim = differ + ": a norm over all of them hides the small ones"
+		switch {
+		case helped:
+			g.Claim = differ + ": " + words
+		case before != nil && after != nil && before.Condition > 0 && after.Condition > 0:
+			g.Claim = fmt.Sprintf("%s; the condition of %s is %s, and %s once rows and columns are equilibrated",
+				differ, before.Of, num(before.Condition), num(after.Condition))
+		default:
+			g.Claim = differ + ": a norm over all of them hides the small ones"
+		}
 		foreseeScaled(c, &g)
 		return []Finding{g}
 	}
 	g.Claim = fmt.Sprintf("the condition %s of %s is %s scaling: %s once rows and columns are equilibrated; %s",
 		num(before.Condition), before.Of, share, num(after.Condition), differ)
+	if helped {
+		g.Claim += "; " + words
+	}
 	g.Certainty = lesser(before.Certainty, after.Certainty)
 	g.Evidence = append(g.Evidence, number("condition of "+before.Of, before.Condition, ""), number("condition after equilibration", after.Condition, ""))
 	foreseeScaled(c, &g)
 	return []Finding{g}
 }}
+
+// scalingGain is by how much scaling must cut a count to be called a help.
+const scalingGain = 1.5
+
+// scaledTrials holds a trial against the same one scaled, where both have run:
+// whether scaling has helped, and the words that say so.
+func scaledTrials(c Case) (helped bool, words string, evidence []Evidence) {
+	for _, h := range c.Trials {
+		prep, solver, m := cut(h.Pairing)
+		if prep != "" || m != "none" || !solved(h) && !failed(h) {
+			continue
+		}
+		for _, p := range []string{solver + "+jacobi", "scale/" + solver + "+none"} {
+			s, ok := find(c, p)
+			if !ok || !solved(s) || solved(h) && float64(h.Iterations) < scalingGain*float64(s.Iterations) {
+				continue
+			}
+			came := "took " + steps(h.Iterations)
+			if !solved(h) {
+				came = "ended " + h.Stop.String()
+			}
+			return true, fmt.Sprintf("%s %s, %s %d", h.Pairing, came, p, s.Iterations),
+				[]Evidence{number("iterations of "+h.Pairing, float64(h.Iterations), ""), number("iterations of "+p, float64(s.Iterations), "")}
+		}
+	}
+	return false, "", nil
+}
+
+// scalingAdvice names what has solved the system by other means, before scaling.
+func scalingAdvice(c Case, try []string) string {
+	const plain = "scale the system, or use jacobi at the least"
+	if best, ok := quickest(c); ok && !slices.Contains(try, best.Pairing) {
+		return fmt.Sprintf("%s has solved the system in %s and %s; else %s", best.Pairing,
+			steps(best.Iterations), seconds(best.OwnTime.Seconds()), plain)
+	}
+	return plain
+}
 
 // foreseeScaled adds what cg needs once A is scaled by its diagonal, where it
 // can be foreseen.

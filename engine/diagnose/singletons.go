@@ -10,6 +10,10 @@ import (
 // apart is how far outside the rest a decoupled row's eigenvalue must lie.
 const apart = 2
 
+// causeGain is how much smaller the condition must be without these rows before
+// they are called its cause.
+const causeGain = 1000
+
 // singletons: decoupled rows whose diagonal lies outside the spectrum of the
 // rest and makes the condition number.
 var singletons = Rule{"singleton-rows", func(c Case) []Finding {
@@ -60,7 +64,7 @@ func measuredSingletons(c Case) (out []Finding, ok bool) {
 		return nil, true
 	}
 	does := "raise"
-	if gain >= greatGain/10 {
+	if gain >= causeGain {
 		does = "are the cause of"
 	}
 	g := Finding{Weight: Drag, Subject: OnSystem, Certainty: lesser(raw.Certainty, rest.Certainty),

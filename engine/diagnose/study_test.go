@@ -88,7 +88,7 @@ func TestStudyRulesOnOpenMatrices(t *testing.T) {
 		t.Skip("DWINDLE_OPEN does not name the folder of open matrices")
 	}
 	want := map[string][]string{
-		"494_bus.mtx": {"row-scaling"}, "LFAT5.mtx": {"row-scaling"}, "arc130.rua": {"row-scaling", "non-normal"},
+		"494_bus.mtx": {"row-scaling"}, "bcsstk01.rsa": {"row-scaling"}, "bcsstk01.rb": {"row-scaling"}, "LFAT5.mtx": {"row-scaling"}, "arc130.rua": {"row-scaling", "non-normal"},
 		"bcsstk13.mtx.gz": {"row-scaling"}, "bcsstk16.mtx.gz": {"singleton-rows", "mesh-growth"},
 		"cryg2500.mtx": {"row-scaling", "near-null"}, "fs_183_1.mtx": {"row-scaling"}, "jgl009.mtx": {"near-null"}, "olm1000.mtx": {"row-scaling", "non-normal"},
 		"pores_1.mtx": {"row-scaling"}, "rajat19.mtx": {"row-scaling"}, "reorientation_1.mtx": {"row-scaling"},
@@ -96,6 +96,7 @@ func TestStudyRulesOnOpenMatrices(t *testing.T) {
 	}
 	phrases := map[string][]string{ // file, rule, words of its claim
 		"arc130.rua":          {"row-scaling", "condition 6.05e+10 of A is almost all scaling: 23"},
+		"bcsstk01.rsa":        {"row-scaling", "condition 8.82e+05 of A is mostly scaling: 1.36e+03", "foreseen to take about 49 its"},
 		"reorientation_1.mtx": {"row-scaling", "almost all scaling"},
 		"bcsstk16.mtx.gz":     {"singleton-rows", "74 decoupled rows (diagonal 1) are the cause of the condition 4.94e+09", "without them it is 3.11e+03"},
 		"cryg2500.mtx":        {"near-null", "one direction is nearly free", "about 4 correct digits"},
