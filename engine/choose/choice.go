@@ -29,6 +29,7 @@ type Ranked struct {
 	Runs       int     // Seconds is the median of so many runs
 	Iterations int
 	Memory     int64
+	Work       float64 // numbers touched, counted: what ranks where the clock cannot
 	Reached    bool    // it converged; otherwise Seconds is NaN
 	BreakEven  float64 // right-hand sides from which it beats the cheapest set-up; NaN if never or not needed
 	// For is the predicted seconds for each of Sides right-hand sides solved

@@ -17,7 +17,7 @@ func notToldApart(c Choice) []string {
 	for _, r := range c.Ranked[1:] {
 		if r.Reached && r.Low <= first.High && r.Seconds >= first.Low {
 			if len(names) == 0 {
-				closest = r.Seconds/first.Seconds - 1
+				closest = math.Abs(r.Seconds/first.Seconds - 1)
 			}
 			names = append(names, r.Pairing)
 		}

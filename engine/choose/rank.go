@@ -13,6 +13,7 @@ import (
 
 const (
 	busyShare = 0.9   // CPU time over own time below which the machine was busy
+	busyFrom  = 0.1   // own seconds from which CPU time is fine enough to tell
 	tooShort  = 0.005 // seconds below which the clock cannot rank
 	worth     = 0.1   // of a solve: gains below are taken for noise
 )
@@ -25,9 +26,12 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 		if h.Stop == trace.Refused {
 			continue
 		}
-		c.Ranked = append(c.Ranked, ranked(h))
+		r := ranked(h)
+		r.Work = work(f, h)
+		c.Ranked = append(c.Ranked, r)
 	}
 	slices.SortStableFunc(c.Ranked, func(a, b Ranked) int { return order(a, b, findings, goal) })
+	settle(c.Ranked, trials, findings, goal)
 	breakEven(c.Ranked)
 	if len(c.Ranked) == 0 || !c.Ranked[0].Reached {
 		c.Doubts = doubts(f, trials, c)
@@ -38,8 +42,9 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 	c.Reasons = reasons(f, trials, c)
 	for _, h := range trials {
 		if h.Today && reached(h) {
-			_, own := times(h)
-			c.Gain = own / first.Seconds
+			if _, own := times(h); math.Max(own, first.Seconds) >= tooShort {
+				c.Gain = own / first.Seconds
+			}
 		}
 	}
 	c.Doubts = doubts(f, trials, c)
@@ -149,8 +154,8 @@ func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
 		out = append(out, "counts on your own b may differ several-fold: give --rhs")
 	}
 	for _, h := range trials {
-		if h.CPUShare < busyShare && h.OwnTime.Seconds() > 0.1 {
-			out = append(out, "the machine was busy: rank by products")
+		if h.CPUShare < busyShare && h.OwnTime.Seconds() > busyFrom {
+			out = append(out, "the machine was busy: trust the counts rather than the times")
 			break
 		}
 	}
@@ -158,7 +163,7 @@ func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
 		return out
 	}
 	if c.Ranked[0].Seconds < tooShort {
-		out = append(out, "the times are too short for the clock: rank by products")
+		out = append(out, "the times are too short for the clock: ranked by counted work")
 	} else {
 		out = append(out, notToldApart(c)...)
 	}

@@ -1,0 +1,88 @@
+package choose
+
+import (
+	"cmp"
+	"slices"
+
+	"dwindle/engine/diagnose"
+	"dwindle/engine/trace"
+)
+
+const (
+	likeWork = 1.3 // ratio of counted work within which trials are taken for alike
+	roughly  = 4.0 // the clock is trusted with this factor, however short the times
+)
+
+// plainness are the names of methods from the plainest on, as one would
+// rather carry them into a code.
+var plainness = []string{"none", "jacobi", "cholesky", "ldl", "lu", "ssor", "sgs", "gs", "sor", "ic", "ilu", "mic", "milu",
+	"richardson", "cg", "cr", "minres", "gmres", "bicgstab"}
+
+// plainer compares two pairings by how plain they are: without a preparation
+// first, then by preconditioner, then by solver.
+func plainer(a, b string) int {
+	p, q := split(a), split(b)
+	return cmp.Or(len(p.preps)-len(q.preps), place(p.precond)-place(q.precond), place(p.solver)-place(q.solver))
+}
+
+// place is that of a method among the plain ones; its parameters do not count.
+func place(method string) int {
+	if i := slices.Index(plainness, bare(method)); i >= 0 {
+		return i
+	}
+	return len(plainness)
+}
+
+// settle puts the trials that the clock does not tell apart from the first in
+// an order of their own: those too short for the clock by counted work, others
+// by how plain they are, and trials of much the same work by that as well.
+func settle(list []Ranked, trials []trace.History, findings []diagnose.Finding, goal string) {
+	if len(list) == 0 || !list[0].Reached || goal == Memory {
+		return
+	}
+	first := list[0]
+	byWork := clockFails(first, trials)
+	end := 1
+	for end < len(list) && alike(first, list[end], byWork, findings, goal) {
+		end++
+	}
+	head := list[:end]
+	if !byWork {
+		slices.SortStableFunc(head, func(a, b Ranked) int { return plainer(a.Pairing, b.Pairing) })
+		return
+	}
+	slices.SortStableFunc(head, func(a, b Ranked) int { return cmp.Compare(a.Work, b.Work) })
+	same := 1
+	for same < len(head) && head[same].Work <= likeWork*head[0].Work {
+		same++
+	}
+	slices.SortStableFunc(head[:same], func(a, b Ranked) int { return plainer(a.Pairing, b.Pairing) })
+}
+
+// clockFails says that the clock cannot rank: the first is too short for it, or
+// the machine was busy.
+func clockFails(first Ranked, trials []trace.History) bool {
+	if first.Seconds < tooShort {
+		return true
+	}
+	for _, h := range trials {
+		if h.Pairing == first.Pairing {
+			return h.CPUShare < busyShare && h.OwnTime.Seconds() > busyFrom
+		}
+	}
+	return false
+}
+
+// alike says that the clock does not tell r from the first.
+func alike(first, r Ranked, byWork bool, findings []diagnose.Finding, goal string) bool {
+	if !r.Reached || class(r, findings) != class(first, findings) || goal == Robust && r.Safe != first.Safe {
+		return false
+	}
+	switch {
+	case first.Seconds < tooShort:
+		return r.Seconds < tooShort && r.Seconds <= roughly*first.Seconds
+	case byWork:
+		return r.Low <= first.High
+	}
+	return r.Seconds <= first.High
+}

@@ -1,0 +1,58 @@
+package choose
+
+import (
+	"math"
+	"testing"
+	"time"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+// brisk is a trial of some microseconds with counts.
+func brisk(pairing string, own time.Duration, iterations int, entries int64) trace.History {
+	h := trial(pairing, trace.Converged, 0, own)
+	h.Iterations, h.Products, h.PrecondUses, h.Notes.Entries = iterations, iterations, iterations, entries
+	return h
+}
+
+// Times too short for the clock: the same choice whatever the clock says.
+func TestShortTimesRankByWork(t *testing.T) {
+	const us = time.Microsecond
+	f := facts(inspect.Yes, inspect.Yes)
+	f.Entries = 500
+	for _, clock := range [][3]time.Duration{{90 * us, 60 * us, 50 * us}, {50 * us, 60 * us, 90 * us}} {
+		trials := []trace.History{brisk("cg+none", clock[0], 60, 0), brisk("cg+ic:0", clock[1], 12, 300), brisk("cg+milu:0", clock[2], 12, 320)}
+		trials[0].Today = true
+		c := Rank(f, trials, nil, "")
+		if c.Pairing != "cg+ic:0" {
+			t.Errorf("by clock %v: chose %s", clock, c.Pairing)
+		}
+		if !math.IsNaN(c.Gain) {
+			t.Errorf("a gain of %g from microseconds", c.Gain)
+		}
+	}
+	slow := brisk("cg+jacobi", 1000*us, 2, 100) // little work by count, much by the clock
+	if c := Rank(f, []trace.History{brisk("cg+ic:0", 60*us, 12, 300), slow}, nil, ""); c.Pairing != "cg+ic:0" {
+		t.Errorf("chose %s, which takes far longer", c.Pairing)
+	}
+}
+
+// A direct solve is no one-iteration bargain: making its factors counts.
+func TestWorkCountsFactors(t *testing.T) {
+	f := facts(inspect.Yes, inspect.Yes)
+	f.N, f.Entries = 900, 4380
+	complete := brisk("richardson:1+cholesky", time.Millisecond, 1, 90_000)
+	if w, v := work(f, complete), work(f, brisk("cg+ic:0", time.Millisecond, 20, 2640)); w < 5*v {
+		t.Errorf("complete factors %g, cg %g", w, v)
+	}
+}
+
+// Of those that the clock does not tell apart, the plainest is first.
+func TestPlainestOfEquals(t *testing.T) {
+	a, b := trial("symmlq+ilu:0", trace.Converged, 0, time.Second), trial("cg+ic:0", trace.Converged, 0, 1050*time.Millisecond)
+	far := trial("cg+none", trace.Converged, 0, 2*time.Second)
+	if c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{a, b, far}, nil, ""); c.Pairing != "cg+ic:0" {
+		t.Errorf("chose %s", c.Pairing)
+	}
+}
