@@ -14,6 +14,7 @@ const (
 	floorAudits = 5     // so many audits at the floor: stagnated
 	parted      = 0.1   // the own number is this far below its true value: they have parted
 	runaway     = 1e8   // true residual over the first one: diverged
+	falseBy     = 2     // the true number over the target from which a stop there would be false
 )
 
 // ending is what the ending rules remember between iterations.
@@ -73,17 +74,37 @@ func (t *Trial) judgeAudit(rec trace.Record, own float64, a *audit) {
 		t.end(trace.Converged, "")
 	case t.limits.Unreachable > tol && a.normal <= tol && rec.Audit > tol:
 		t.end(trace.LeastSquares, fmt.Sprintf("b is not in the range of A; the residual %.3g is the smallest there is", rec.Audit))
-	case t.method.Solver.NoGuarantee && a.true2 > runaway*e.firstTrue:
-		t.end(trace.Diverged, fmt.Sprintf("the true residual has grown by %.1g", a.true2/e.firstTrue))
+	case a.true2 > runaway*e.firstTrue && !t.bounded():
+		t.end(trace.Diverged, fmt.Sprintf("the true residual has grown by %.1g", a.true2/e.firstTrue)+t.unboundWords())
 	}
 	if t.ended() {
 		return
 	}
-	if own <= tol && passed > tol && !e.falseStop {
+	if own <= tol && passed > falseBy*tol && !e.falseStop {
 		e.falseStop, e.falseValue, e.falseIter = true, rec.Audit, int(rec.Iter)
 		t.event(trace.Event{Iter: rec.Iter, Kind: trace.FalseStop, Quantity: "true relative residual", Value: rec.Audit, Scale: rec.Residual})
 	}
 	t.judgeFloor(rec, a)
+}
+
+// bounded says that theory bounds the growth of the residual. Where b is out
+// of the range of A it does so for methods of minimal residual alone, and the
+// energy norm that conjugate gradients make small is a norm only for a
+// semi-definite A.
+func (t *Trial) bounded() bool {
+	e, l := t.method.Solver, t.limits
+	return !e.NoGuarantee && (t.hist.Monotone || !(l.Unreachable > l.Target.Tol) && !(e.Energy && l.NoNorm))
+}
+
+// unboundWords says why the residual could grow, where the system is to blame.
+func (t *Trial) unboundWords() string {
+	switch {
+	case t.limits.Unreachable > t.limits.Target.Tol:
+		return "; b is not in the range of A"
+	case t.method.Solver.Energy && t.limits.NoNorm:
+		return "; A is not symmetric and definite"
+	}
+	return ""
 }
 
 // judgeFloor counts audits at the accuracy floor: the own number has fallen
@@ -146,8 +167,9 @@ func (t *Trial) judgeDone(r trace.Reading) {
 	t.end(trace.Stagnated, "the Krylov space is exhausted and the target is not met")
 }
 
-// end closes the trial once; later calls change nothing. An unconverged
-// ending after a false stop is falsely-converged.
+// end closes the trial once; later calls change nothing. A trial that comes
+// to an end of its own, without an answer and after a false stop, is
+// falsely-converged; one that was cut might yet have got there.
 func (t *Trial) end(stop trace.Stop, reason string) {
 	if t.solver != nil && t.scratch != nil && len(t.hist.Records) > 0 && stop != trace.Failed {
 		t.finalAudit()
@@ -159,10 +181,15 @@ func (t *Trial) end(stop trace.Stop, reason string) {
 	if t.hist.Stop.Ended() {
 		return
 	}
-	if e := t.ending; e.falseStop && stop != trace.Converged && stop != trace.LeastSquares && stop != trace.Cancelled && stop != trace.Failed {
-		reason = fmt.Sprintf("its own number met the target at iteration %d, the true residual was %.2g; then %s: %s",
-			e.falseIter, e.falseValue, stop, reason)
-		stop = trace.FalselyConverged
+	if e := t.ending; e.falseStop {
+		before := fmt.Sprintf("its own number met the target at iteration %d, the true residual was %.3g; then ", e.falseIter, e.falseValue)
+		switch stop {
+		case trace.Converged, trace.LeastSquares, trace.Cancelled, trace.Failed:
+		case trace.Outpaced, trace.TimeLimit:
+			reason = before + reason
+		default:
+			stop, reason = trace.FalselyConverged, before+stop.String()+": "+reason
+		}
 	}
 	t.hist.Stop, t.hist.Reason = stop, reason
 }
