@@ -45,7 +45,10 @@ func (p *progress) update(s engine.Snapshot) {
 		if t.History.Stop.Ended() && !p.told[t.ID] {
 			p.told[t.ID] = true
 			p.wipe()
-			fmt.Fprintf(p.w, "%3d %s: %s\n", t.ID, printable(t.History.Pairing), report.Outcome(t.History))
+			text := t.History.Pairing + ": " + report.Outcome(t.History)
+			for _, line := range report.Paragraph(fmt.Sprintf("%3d ", t.ID), text) {
+				fmt.Fprintln(p.w, line)
+			}
 		}
 	}
 	if s.RecordErr != nil && !p.lost {

@@ -112,9 +112,14 @@ func (w *work) fewDigits() {
 	}
 }
 
+// atLevel is the part of what rounding could make of a residual at most from
+// which the residual passes as that: the bound is seldom reached, yet a residual
+// far below it shows that it says nothing here.
+const atLevel = 0.01
+
 // atBest says what the residual means for x, and what can be reached at all.
 func (w *work) atBest() {
-	if r := w.out.Residual; r.Two <= r.Plain && r.Two > 0 {
+	if r := w.out.Residual; r.Two <= r.Plain && r.Two >= atLevel*r.Plain && r.Two > 0 {
 		w.hint("the residual is at the rounding level of double precision (%s of ||b||): no method gets far below it",
 			num(over(r.Plain, linear.Norm2(w.q.System.B))))
 	}
@@ -125,10 +130,19 @@ func (w *work) atBest() {
 	if f == nil || !f.Sure || f.ErrorInf == 0 {
 		return
 	}
-	text := fmt.Sprintf("x is off by %s of its largest entry: about %s, of about %.0f that a stable solver can be expected to give",
-		num(f.ErrorInf), many(int(correct(f.ErrorInf)), "correct digit", "correct digits"), math.Floor(f.Digits))
+	text := fmt.Sprintf("x is off by %s of its largest entry, against a solution refined in twice the precision: about %s, %s",
+		num(f.ErrorInf), many(int(correct(f.ErrorInf)), "correct digit", "correct digits"), f.expected())
 	if math.Floor(f.Written) < math.Floor(f.Digits) {
-		text += fmt.Sprintf("; the %d digits the matrix is written with determine x to about %.0f", w.q.System.Digits, math.Floor(f.Written))
+		text += fmt.Sprintf("; the %d digits the matrix is written with determine x, at worst, to %s", w.q.System.Digits,
+			many(int(f.Written), "digit", "digits"))
 	}
 	w.hint("%s", text)
+}
+
+// expected sets the correct digits of x beside those to expect.
+func (f *Factor) expected() string {
+	if math.Floor(correct(f.ErrorInf)) >= math.Floor(f.Digits) {
+		return "as many as a stable solver can be expected to give"
+	}
+	return fmt.Sprintf("of about %.0f that a stable solver can be expected to give", math.Floor(f.Digits))
 }
