@@ -11,6 +11,7 @@ import (
 
 // setBench makes the bench and the line-up, and starts it or says why not.
 func (s *Session) setBench() *run.Bench {
+	s.set(func() { s.sys.Null = inspect.ZeroDirections(s.facts) })
 	b := run.NewBench(s.sys, s.limits(), s.opt.Memory, s.clock)
 	lineup := s.opt.Pairs
 	var r *race

@@ -9,6 +9,7 @@ import (
 	"slices"
 	"strings"
 
+	"dwindle/engine/inspect"
 	"dwindle/engine/linear"
 	"dwindle/engine/run"
 	"dwindle/samples"
@@ -154,6 +155,7 @@ func (s *Session) takeUp(sys linear.System) {
 	for _, t := range s.past {
 		last = max(last, t.ID)
 	}
+	sys.Null = inspect.ZeroDirections(s.facts)
 	s.bench = run.NewBench(sys, s.limits(), s.opt.Memory, s.clock)
 	s.bench.NumberFrom(last + 1)
 	s.phase, s.openAt = Running, s.clock()-s.pastElapsed

@@ -7,10 +7,6 @@ import (
 	"dwindle/engine/inspect"
 )
 
-// toRounding is the quotient ‖Av‖/(‖A‖‖v‖), after equilibration, below which a
-// direction is free as far as rounding lets it be seen.
-const toRounding = 1e-13
-
 // mechanism: motions of a symmetric system that cost no energy, where they are
 // not the constants that the facts know already.
 var mechanism = Rule{"mechanism", func(c Case) []Finding {
@@ -21,7 +17,7 @@ var mechanism = Rule{"mechanism", func(c Case) []Finding {
 	}
 	var free []inspect.NullDirection
 	for _, d := range f.Study.Null {
-		if d.Quotient <= toRounding {
+		if d.Quotient <= inspect.ZeroLimit {
 			free = append(free, d)
 		}
 	}
@@ -144,7 +140,7 @@ func heaviest(free []inspect.NullDirection) float64 {
 // nearNull: a few directions are mapped nearly to zero, far below all others.
 var nearNull = Rule{"near-null", func(c Case) []Finding {
 	f := c.Facts
-	if f.Study == nil || len(f.Study.Null) <= constants(f) || f.Singular.Answer == inspect.Yes && f.RowSumsZero.Answer != inspect.Yes ||
+	if f.Study == nil || len(f.Study.Null) <= constants(f) || f.SingularAtSight() && f.RowSumsZero.Answer != inspect.Yes ||
 		mechanism.Judge(c) != nil {
 		return nil
 	}
@@ -158,7 +154,7 @@ var nearNull = Rule{"near-null", func(c Case) []Finding {
 	if f.Symmetric.Answer == inspect.Yes {
 		g.Try = instead(f)
 	}
-	if last.Quotient <= toRounding && f.PositiveDefinite.Answer != inspect.Yes {
+	if last.Quotient <= inspect.ZeroLimit && f.PositiveDefinite.Answer != inspect.Yes {
 		g.Weight, g.Certainty = Blocker, inspect.Measured
 		g.Claim = "A is singular to rounding: " + g.Claim
 		g.Advice = "find out which equation repeats others, or which unknown nothing determines; b may be out of reach" + openDigits(f, last.Quotient)

@@ -35,6 +35,9 @@ type System struct {
 	// rigid motions, for multilevel methods; nil: the constant, one for each
 	// unknown of a node.
 	NearNull [][]float64
+	// Null are vectors of length n that a symmetric A was found to map to zero,
+	// to rounding, beyond the constants that its sums show; nil: none known.
+	Null [][]float64
 	// Second marks the unknowns of the second block of a saddle system (length
 	// n), such as pressures; nil: those with a zero on the diagonal.
 	Second []bool

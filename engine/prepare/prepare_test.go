@@ -138,6 +138,34 @@ func TestProject(t *testing.T) {
 	}
 }
 
+// A chain of springs with weights has a null vector that no sum shows: D L D
+// maps the inverse of D to zero (closed form). Given with a vector that is none,
+// it alone is taken out of b.
+func TestProjectOfFoundVectors(t *testing.T) {
+	n := 6
+	d, null, other := make([]float64, n), make([]float64, n), make([]float64, n)
+	for i := range n {
+		d[i] = float64(int(1) << i)
+		null[i], other[i] = 1/d[i], float64(i)
+	}
+	var e []linear.Entry
+	for i := range n - 1 {
+		e = append(e, linear.Entry{I: i, J: i, V: d[i] * d[i]}, linear.Entry{I: i + 1, J: i + 1, V: d[i+1] * d[i+1]},
+			linear.Entry{I: i, J: i + 1, V: -d[i] * d[i+1]}, linear.Entry{I: i + 1, J: i, V: -d[i] * d[i+1]})
+	}
+	s := linear.System{A: linear.FromEntries(n, n, e), B: []float64{1, 0, 0, 0, 0, 0}, Null: [][]float64{other, null, null}}
+	p, _, err := projectEntry.Apply(context.Background(), s, linear.Values{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	along := linear.Dot(s.B, null) / linear.Dot(null, null)
+	for i := range n {
+		if want := s.B[i] - along*null[i]; math.Abs(p.B[i]-want) > 1e-15 {
+			t.Errorf("projected b[%d] = %g, want %g", i, p.B[i], want)
+		}
+	}
+}
+
 func TestProjectRefusesRegular(t *testing.T) {
 	s := linear.System{A: linear.FromEntries(1, 1, []linear.Entry{{V: 4}}), B: []float64{1}}
 	if _, _, err := projectEntry.Apply(context.Background(), s, linear.Values{}); err == nil {

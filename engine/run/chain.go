@@ -17,6 +17,7 @@ func chain(ctx context.Context, preps []Prep, s linear.System) (linear.System, p
 			return s, nil, err
 		}
 		carryNearNull(&next, s, b)
+		next.Null = carried(s.Null, b)
 		carrySecond(&next, s, b)
 		if back == nil {
 			back = b
@@ -60,12 +61,17 @@ func carryNearNull(next *linear.System, s linear.System, back prepare.Back) {
 			vectors = append(vectors, v)
 		}
 	}
-	next.NearNull, next.Dofs = nil, 0
+	next.NearNull, next.Dofs = carried(vectors, back), 0
+}
+
+// carried turns vectors as a guess is turned.
+func carried(vectors [][]float64, back prepare.Back) (out [][]float64) {
 	for _, v := range vectors {
 		w := make([]float64, len(v))
 		back.Guess(w, v)
-		next.NearNull = append(next.NearNull, w)
+		out = append(out, w)
 	}
+	return out
 }
 
 // carrySecond takes the second block of a saddle system along.
