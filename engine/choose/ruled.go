@@ -22,7 +22,7 @@ func Against(f *inspect.Facts, c Candidate) string {
 		return "the solver assumes A positive definite, and it is not"
 	case c.DefiniteA && !couldBeDefinite(f):
 		return "the preconditioner assumes A positive definite, and it is not"
-	case c.Direct && f.Singular.Answer == inspect.Yes:
+	case c.Direct && f.SingularAtSight():
 		return "A is singular: it has no complete factorisation"
 	}
 	return ""

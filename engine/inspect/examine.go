@@ -35,9 +35,10 @@ const most = 0.4
 // Examine takes a second, costlier look at an inspected system, within the
 // budget: conditions of A and of what scaling makes of it, nearly free
 // directions, normality, couplings, rows that constrain, growth with size. It
-// returns f with Study filled in; f itself is not changed. After each part it
-// calls seen (if not nil) with a new value that it never changes again. A
-// system without entries has no study. It stops with the context's error.
+// returns f with Study filled in, and with answers to what it had left open; f
+// itself is not changed. After each part it calls seen (if not nil) with a new
+// value that it never changes again. A system without entries has no study. It
+// stops with the context's error.
 func Examine(ctx context.Context, s linear.System, f *Facts, b Budget, seen func(*Facts)) (*Facts, error) {
 	a := s.Matrix()
 	if a == nil || f.N < 2 || f.EmptyRowCount+f.EmptyColCount > 0 || !finite(f.NormFro) || !b.holds(a) {
@@ -88,6 +89,7 @@ type exam struct {
 func (e *exam) facts() *Facts {
 	f, s := *e.f, e.out
 	f.Study = &s
+	e.settle(&f)
 	return &f
 }
 

@@ -101,6 +101,7 @@ type Facts struct {
 	NegativeDefinite Fact // −A is positive definite: the opposite sign convention
 	NegativeCount    Fact // whether A has negative eigenvalues; Value is how many, by LDLᵀ
 	Semidefinite     Fact // xᵀA x ≥ 0 for every x; no: some x has negative curvature
+	SymmetricPart    Fact // of an A that is not symmetric: whether (A+Aᵀ)/2 is positive definite; Value is its smallest eigenvalue
 	RowSumsZero      Fact // constants (per component) are null vectors of A
 	ColSumsZero      Fact // and of Aᵀ
 	NullComponents   int  // components whose rows sum to zero

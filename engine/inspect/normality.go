@@ -70,7 +70,7 @@ func (e *exam) field(m *Normality, b, bt *linear.CSR) error {
 	if err != nil || len(out.Low) == 0 {
 		return err
 	}
-	m.FieldMin, m.FieldMax = out.Low[0].Value, out.High[0].Value
+	m.FieldMin, m.FieldMinBound, m.FieldMax, m.FieldSettled = out.Low[0].Value, out.Low[0].Bound, out.High[0].Value, out.Settled
 	m.FieldHoldsZero = m.FieldMin < 0 && m.FieldMax > 0
 	k, w := spectrum.Combined(b, bt, b.NRows, -1), make([]float64, b.NRows)
 	out, err = e.ends(b.NRows, func(dst, x []float64) {

@@ -115,7 +115,7 @@ func (l *look) singular(missing defect) Fact {
 		}
 		return l.doubt(fact(No, Proved, 0, nil, "diagonally dominant, and strictly so where it counts"), "yours may be less so")
 	}
-	return unknown("no null vector is seen in the pattern or in the sums; not factorised")
+	return unknown("no null vector is seen in the pattern or in the sums")
 }
 
 // unreachable measures the part of b that lies in the left null space seen.

@@ -37,6 +37,7 @@ type Spectrum struct {
 	Condition               float64
 	Condition1              float64      // in the 1-norm, by estimate: a lower bound; NaN without a factorisation
 	Negative                int          // eigenvalues below zero; −1 if not counted
+	Zeros                   int          // at the low end, proved to be zero: Smallest and as many of Low are 0
 	Low, High               []float64    // the outermost values, from the end inwards, at most 16 each
 	Values                  []complex128 // all eigenvalues where Exact, ordered by real part
 }
@@ -59,6 +60,8 @@ type Normality struct {
 	Exact               bool    // from all eigenvalues; else a lower bound, by balancing or from the commutator
 	Equilibrated        float64 // the same of A equilibrated, so that units are not taken for it
 	FieldMin, FieldMax  float64 // smallest and largest eigenvalue of (A+Aᵀ)/2
+	FieldMinBound       float64 // (A+Aᵀ)/2 has an eigenvalue within it of FieldMin
+	FieldSettled        bool    // both ends are
 	FieldHoldsZero      bool
 	SkewMax             float64 // largest |eigenvalue| of (A−Aᵀ)/2
 	LeftmostRe, RightRe float64 // extreme real parts of the eigenvalues where Exact, else of Ritz values; NaN

@@ -3,6 +3,7 @@ package inspect
 import (
 	"math"
 
+	"dwindle/engine/linear"
 	"dwindle/engine/spectrum"
 )
 
@@ -23,6 +24,9 @@ func (e *exam) symmetricSpectrum(v *view, x *Spectrum) (*Spectrum, error) {
 			return nil, nil
 		}
 	}
+	if v.index == nil {
+		x.zero(e.zeros())
+	}
 	if c := e.f.NegativeCount; v.index == nil && (c.Answer == No || c.Answer == Yes) {
 		x.Negative = int(c.Value) // scaling alters no sign
 	}
@@ -30,6 +34,35 @@ func (e *exam) symmetricSpectrum(v *view, x *Spectrum) (*Spectrum, error) {
 		return x, e.innerEnds(v, x)
 	}
 	return x, nil
+}
+
+// zeros is how many eigenvalues at the low end of a semi-definite A are proved
+// to be zero; no scaling alters that.
+func (e *exam) zeros() int {
+	f := e.f
+	if f.Semidefinite.Answer != Yes || f.Semidefinite.Certainty != Proved || f.RowSumsZero.Answer != Yes || f.RowSumsZero.Certainty != Proved {
+		return 0
+	}
+	k := 0
+	for _, z := range linear.FindComponents(e.a).RowSums(e.a, 0) {
+		if z == linear.ExactlyZero {
+			k++
+		}
+	}
+	return k
+}
+
+// zero puts k proved zeros in the place of what was measured at the low end.
+// What comes next is known where all values are.
+func (x *Spectrum) zero(k int) {
+	if k == 0 {
+		return
+	}
+	low := make([]float64, k)
+	if x.Exact && k < len(x.Low) {
+		low = append(low, x.Low[k:]...)
+	}
+	x.Zeros, x.Smallest, x.SmallestBound, x.Low = k, 0, 0, low[:min(len(low), endsKept)]
 }
 
 // fillDense takes all eigenvalues, rising. The smallest magnitude is known to
