@@ -69,8 +69,8 @@ func (m *model) infoLines(id int, h *trace.History, w int) []string {
 	if finite(h.Error) {
 		add("true error " + sci(h.Error) + " of the known solution")
 	}
-	if finite(h.Floor) && h.Floor > 0 {
-		add("accuracy floor of the true residual near " + sci(h.Floor) + ", estimated")
+	if floor := h.Attainable(); floor > 0 {
+		add("accuracy floor of the true residual near " + sci(floor) + ", estimated")
 	}
 	lines = append(lines, tied("would stop by: "+stopWords(h.WouldStop), w)...)
 	add(forecastWords(h), energyWords(h))

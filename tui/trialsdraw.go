@@ -62,7 +62,7 @@ func (v *trialsView) chart(m *model) plot {
 			continue
 		}
 		if picked {
-			p.floor = t.History.Floor
+			p.floor = t.History.Attainable()
 		}
 		p.curves = append(p.curves, drawn{t.ID, &t.History, picked, i == lead})
 	}

@@ -96,26 +96,32 @@ func doubled(solver string) (string, bool) {
 	return fmt.Sprintf("%s:%d", name, min(4*m, 500)), true
 }
 
-// floor: the trial has reached the accuracy that rounding allows it, and the
-// tolerance lies below. A method outside its assumptions parts from its
-// residual for another reason, and is told so.
+// ofRounding is how many times the level of rounding a residual may be for
+// rounding alone to account for it.
+const ofRounding = 10
+
+// floor: the true residual has stopped while the method's own number falls on.
+// Where it has come down to the level of rounding, that is the accuracy that
+// the method can have; far above it, the recurrence has lost the residual. A
+// method outside its assumptions parts from its residual for another reason,
+// and is told so.
 var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		if h.FloorHits < 5 || solved(h) || missed(h) != nil && normMet(c, h) {
 			continue
 		}
 		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("at its accuracy floor: the true residual stays at %s while its own number falls to %s; rounding allows it no %.0e",
-				num(h.BestTrue), num(h.Residual), c.Tol),
-			Advice: fmt.Sprintf("ask for no less than %.0e, or start again from this answer with a fresh residual", 2*h.BestTrue),
-			Evidence: []Evidence{{Quantity: "smallest true residual", Value: h.BestTrue, Iteration: h.Iterations},
-				{Quantity: "u ||A|| max||x|| / ||b||", Value: h.Floor, Iteration: none}}}
+			Evidence: []Evidence{{Quantity: "smallest true residual", Value: h.BestTrue, Iteration: h.Iterations}}}
+		f.Claim, f.Advice = stopped(c, h)
+		if level := h.Attainable(); level > 0 {
+			f.Evidence = append(f.Evidence, Evidence{Quantity: "u ||A|| max||x|| / ||b||", Value: level, Iteration: none})
+		}
 		if at, ok := parting(h); ok {
 			f.Claim += fmt.Sprintf("; the two part at it %d, and nothing below %s is real", at, num(h.BestTrue))
 			f.Evidence = append(f.Evidence, Evidence{Quantity: "true residual over own number", Value: parts, Iteration: at})
 		}
 		if at := bottom(h); at > 0 && h.Iterations-at > h.Iterations/10 {
-			f.Claim += fmt.Sprintf("; at the floor since it %d: the other %d its are noise", at, h.Iterations-at)
+			f.Claim += fmt.Sprintf("; so since it %d: the other %d its are noise", at, h.Iterations-at)
 		}
 		if deeper, ok := reached(c, h.BestTrue/2); ok {
 			f.Claim += fmt.Sprintf("; %s gets to %s", deeper.Pairing, num(deeper.BestTrue))
@@ -125,6 +131,17 @@ var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 	}
 	return out
 }}
+
+// stopped says where the true residual stopped, why, and what is to be done.
+func stopped(c Case, h trace.History) (claim, advice string) {
+	where := fmt.Sprintf("stays at %s while its own number falls to %s", num(h.BestTrue), num(h.Residual))
+	if h.BestTrue > ofRounding*h.Floor {
+		return fmt.Sprintf("its recurrence has lost the true residual, which %s; the level of rounding is %s", where, num(h.Floor)),
+			"start again from this answer with a fresh residual, or take another method"
+	}
+	return fmt.Sprintf("at its accuracy floor: the true residual %s; rounding allows it no %.0e", where, c.Tol),
+		fmt.Sprintf("ask for no less than %.0e, or start again from this answer with a fresh residual", 2*h.BestTrue)
+}
 
 // parts is the ratio of the true residual to the method's own number from which
 // the two curves have parted for good.

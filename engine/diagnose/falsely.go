@@ -23,7 +23,7 @@ var falseConvergence = Rule{"false-convergence", func(c Case) (out []Finding) {
 			f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
 				Claim: fmt.Sprintf("its own number (%s norm) meets the target at it %d with %s; the true relative residual there is %s, %.1f decades above the target",
 					h.Norm, e.Iter, num(e.Scale), num(e.Value), math.Log10(e.Value/c.Tol)),
-				Advice: fmt.Sprintf("test ||b-Ax||/||b||, or ask for %.0e in this norm", c.Tol*c.Tol/e.Value),
+				Advice: "test ||b-Ax||/||b|| itself" + askFor(c.Tol*c.Tol/e.Value),
 				Evidence: []Evidence{
 					{Quantity: "own number", Value: e.Scale, Unit: string(h.Norm), Iteration: int(e.Iter)},
 					{Quantity: "true relative residual", Value: e.Value, Iteration: int(e.Iter)}}}
@@ -37,6 +37,19 @@ var falseConvergence = Rule{"false-convergence", func(c Case) (out []Finding) {
 	}
 	return out
 }}
+
+// finest is the smallest tolerance that is worth asking for in any norm: a few
+// times the rounding unit.
+const finest = 1e-15
+
+// askFor says what tolerance of the method's own number would have done, if
+// there is one.
+func askFor(tol float64) string {
+	if !(tol >= finest) {
+		return ""
+	}
+	return fmt.Sprintf(", or ask for %.0e in this norm", tol)
+}
 
 // unsolvedRows: converged in the norm, but single rows are not.
 var unsolvedRows = Rule{"unsolved-rows", func(c Case) (out []Finding) {

@@ -114,7 +114,9 @@ func TestEachRuleSpeaks(t *testing.T) {
 				h.Events = append(h.Events, trace.Event{Kind: trace.Restart, Value: 0.9999})
 			}
 		}, Drag, inspect.Measured, "cycles"},
-		{"accuracy-floor", func(_ *inspect.Facts, h *trace.History) { h.Stop, h.FloorHits = trace.Stagnated, 5 },
+		{"accuracy-floor", func(_ *inspect.Facts, h *trace.History) {
+			h.Stop, h.FloorHits, h.BestTrue, h.Floor = trace.Stagnated, 5, 5e-14, 1e-14
+		},
 			Drag, inspect.Measured, "floor"},
 		{"pivot", func(_ *inspect.Facts, h *trace.History) {
 			h.Notes.Broke, h.Notes.Shift = []trace.Pivot{{Row: 3, Value: -5}}, 0.178

@@ -96,7 +96,7 @@ func toTrials(ts []trace.History) []trialJSON {
 			Storage: optional(t.Storage), Norm: optional(string(t.Norm)),
 			Residual: number(t.Residual), TrueResidual: number(t.TrueResidual), Backward: number(t.Backward),
 			Componentwise: number(t.Componentwise), Error: number(t.Error), BestTrue: number(t.BestTrue),
-			Floor: number(t.Floor), CPUShare: number(t.CPUShare), UnsolvedRows: t.UnsolvedRows,
+			Floor: number(t.Attainable()), CPUShare: number(t.CPUShare), UnsolvedRows: t.UnsolvedRows,
 			WouldStop: toWouldStop(t.WouldStop), Condition: toCondition(t.Condition), Reason: tame(t.Reason),
 			WorstRows: rowsOf(t.WorstRows), Build: toBuild(t.Notes), Events: toEvents(t.Events), deepJSON: toDeep(t),
 		}

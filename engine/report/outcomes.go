@@ -51,8 +51,8 @@ func trialItems(t trace.History) []labelled {
 	if t.Delay > 0 {
 		add("delay", "about %s lost to rounding, estimated", plural(t.Delay, "iteration", "iterations"))
 	}
-	if finite(t.Floor) && t.Floor > 0 {
-		add("floor", "rounding is estimated to end the true residual near %s", sci(t.Floor))
+	if floor := t.Attainable(); floor > 0 {
+		add("floor", "rounding is estimated to end the true residual near %s", sci(floor))
 	}
 	if n := len(t.Predictions); n > 0 {
 		p := t.Predictions[n-1]

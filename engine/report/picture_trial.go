@@ -26,8 +26,8 @@ func trialPicture(d Document, i int, w, h vg.Length) (picture, bool) {
 	}
 	low, high := bounds(curve, math.Inf(1), math.Inf(-1))
 	low, high = bounds(audits(t), low, high)
-	if t.Floor > 0 && finite(t.Floor) {
-		low = min(low, decades(t.Floor)-0.3)
+	if floor := t.Attainable(); floor > 0 {
+		low = min(low, decades(floor)-0.3)
 	}
 	for _, e := range t.EnergyErrors {
 		if y := decades(e.Lower); e.Lower > 0 {
@@ -75,13 +75,14 @@ func drawAudits(c draw.Canvas, p *plot.Plot, t trace.History) {
 
 // floorLine is the best true residual that rounding is expected to allow.
 func floorLine(c draw.Canvas, p *plot.Plot, t trace.History, role uint8) {
-	y := decades(t.Floor)
-	if !(t.Floor > 0) || y < p.Y.Min || y > p.Y.Max {
+	floor := t.Attainable()
+	y := decades(floor)
+	if !(floor > 0) || y < p.Y.Min || y > p.Y.Max {
 		return
 	}
 	at := c.Y(p.Y.Norm(y))
 	c.StrokeLine2(stroke(solid(role), 0.8, []vg.Length{1, 2}), c.Min.X, at, c.Max.X, at)
-	c.FillText(lettering(9.5, role, draw.XRight, draw.YBottom), vg.Point{X: c.Max.X - 3, Y: at + 1}, "floor "+sci(t.Floor))
+	c.FillText(lettering(9.5, role, draw.XRight, draw.YBottom), vg.Point{X: c.Max.X - 3, Y: at + 1}, "floor "+sci(floor))
 }
 
 // energyBand lies between the lower and the upper estimate of the energy norm

@@ -1,6 +1,9 @@
 package trace
 
-import "time"
+import (
+	"math"
+	"time"
+)
 
 // Norm names the norm a method watches.
 type Norm string
@@ -171,4 +174,13 @@ func (h *History) Last() (Record, bool) {
 		return Record{}, false
 	}
 	return h.Records[len(h.Records)-1], true
+}
+
+// Attainable returns Floor where nothing contradicts it: NaN where the true
+// residual came below it, and where it is so high that it says nothing.
+func (h *History) Attainable() float64 {
+	if h.Floor < 1 && !(h.BestTrue < h.Floor) {
+		return h.Floor
+	}
+	return math.NaN()
 }

@@ -1,0 +1,53 @@
+package diagnose
+
+import (
+	"math"
+	"strings"
+	"testing"
+	"time"
+
+	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
+)
+
+// Rounding is to blame only for a residual near its level; an estimate of the
+// level that the trial itself came below is no evidence.
+func TestRoundingIsBlamedAtItsLevelAlone(t *testing.T) {
+	for _, c := range []struct {
+		best, level float64
+		claim       string
+		shown       bool
+	}{
+		{3.4e-4, 1.3e-15, "its recurrence has lost the true residual", true},
+		{3e-12, 1e-12, "at its accuracy floor", true},
+		{3e-12, 6.6e-6, "at its accuracy floor", false},
+		{3e-12, math.NaN(), "at its accuracy floor", false},
+	} {
+		f, h := definite(), solvedTrial("cg+none", 50, time.Second)
+		h.Stop, h.FloorHits, h.BestTrue, h.Floor, h.Residual = trace.Stagnated, 5, c.best, c.level, 1e-18
+		got := said(caseOf(f, h))["accuracy-floor"]
+		if !strings.HasPrefix(got.Claim, c.claim) || strings.Contains(got.Claim, "rounding allows") != strings.HasPrefix(c.claim, "at its") {
+			t.Errorf("best %g, level %g: %q", c.best, c.level, got.Claim)
+		}
+		shown := false
+		for _, e := range got.Evidence {
+			shown = shown || e.Quantity == "u ||A|| max||x|| / ||b||"
+		}
+		if shown != c.shown {
+			t.Errorf("best %g, level %g: evidence %+v", c.best, c.level, got.Evidence)
+		}
+	}
+}
+
+// No tolerance is offered that double precision does not know.
+func TestNoToleranceBelowRoundingIsOffered(t *testing.T) {
+	for value, want := range map[float64]string{1e-6: "or ask for 1e-10 in this norm", 0.35: ""} {
+		h := solvedTrial("cg+none", 50, time.Second)
+		h.Stop = trace.FalselyConverged
+		h.Events = []trace.Event{{Iter: 40, Kind: trace.FalseStop, Value: value, Scale: 9e-9}}
+		f, ok := said(caseOf(definite(), h))["false-convergence"]
+		if !ok || f.Certainty != inspect.Measured || want != "" && !strings.Contains(f.Advice, want) || want == "" && strings.Contains(f.Advice, "ask for") {
+			t.Errorf("true residual %g: %q", value, f.Advice)
+		}
+	}
+}
