@@ -4,6 +4,7 @@ import (
 	"time"
 
 	"dwindle/engine/choose"
+	"dwindle/engine/diagnose"
 	"dwindle/engine/run"
 	"dwindle/engine/trace"
 )
@@ -13,18 +14,33 @@ func (s *Session) racing() bool { return len(s.opt.Pairs) == 0 }
 
 // race is how a race stands between two looks.
 type race struct {
-	list  []choose.Candidate
-	tried map[string]bool
+	list   []choose.Candidate
+	tried  map[string]bool
+	offers []string
 }
 
 // newRace begins a race; the candidates carry what they take.
 func (s *Session) newRace(b *run.Bench) *race {
-	return &race{list: candidates(b.Have(), s.opt.Memory), tried: map[string]bool{}}
+	return &race{list: candidates(b.Have(), s.opt.Memory), tried: map[string]bool{}, offers: s.offers(b.Have())}
+}
+
+// offers are the pairings that findings about the system, made before any
+// trial, offer to try, as far as they can run here.
+func (s *Session) offers(h run.Have) []string {
+	var out []string
+	for _, f := range diagnose.Judge(diagnose.Case{Facts: s.facts, Tol: s.opt.Tol, StopBy: s.opt.StopRule, Race: true}) {
+		for _, p := range f.Try {
+			if m, err := run.Parse(p); err == nil && f.Subject == diagnose.OnSystem && m.Refuse(h) == "" {
+				out = append(out, m.Name)
+			}
+		}
+	}
+	return out
 }
 
 // stands is the race as the policy sees it.
 func (s *Session) stands(r *race, trials []trace.History) choose.Race {
-	return choose.Race{Facts: s.facts, Candidates: r.list, Trials: trials, Tried: r.tried,
+	return choose.Race{Facts: s.facts, Candidates: r.list, Trials: trials, Tried: r.tried, Offers: r.offers,
 		Today: canonical(s.opt.Today), Goal: s.opt.Goal, Limit: s.limits().Iterations, Left: s.left()}
 }
 

@@ -2,6 +2,7 @@ package choose
 
 import (
 	"cmp"
+	"slices"
 
 	"dwindle/engine/inspect"
 )
@@ -9,7 +10,7 @@ import (
 // kindsInOrder is the order in which kinds of preconditioners are tried under
 // one solver: the ones that help most often first.
 var kindsInOrder = []string{"amg", "ict", "ilut", "mic", "fsai", "ilu", "ic", "schur", "poly", "ras", "ilutp", "milu",
-	"block-jacobi", "ssor", "jacobi", "sor", "gs", "spai", "none"}
+	"block-jacobi", "ssor", "jacobi", "sor", "spai", "none"}
 
 // kinds are all preconditioners under the solver that fits the matrix, and
 // direct solves.
@@ -18,7 +19,7 @@ func (r Race) kinds() []string {
 	add := func(solver, precond string) {
 		for _, c := range r.Candidates {
 			if c.Solver == solver && c.Precond == precond && r.admissible(c) {
-				out = append(out, r.prefix()+c.Pairing)
+				out = append(out, r.prepared(c)...)
 			}
 		}
 	}
@@ -26,13 +27,43 @@ func (r Race) kinds() []string {
 	if base != "cg" {
 		out = append(out, r.underMinres()...)
 	}
+	if !fullDiagonal(r.Facts) && !symmetric(r.Facts) && r.prefix() == "" {
+		for _, c := range r.Candidates {
+			if c.Solver == "gmres" && c.Precond == "ilutp" && r.admissible(c) {
+				out = append(out, "scale/"+c.Pairing) // pivots make up for the zeros
+			}
+		}
+	}
 	for i, k := range kindsInOrder {
 		if i == 3 && couldBeRegular(r.Facts) {
 			add("richardson", r.factorisation())
 		}
+		if base == "cg" && slices.Contains(twins, k) {
+			continue
+		}
 		add(base, k)
 	}
 	return out
+}
+
+// twins are what their symmetric counterparts do as well on a definite A.
+var twins = []string{"ilu", "milu"}
+
+// byPivots are the preconditioners that divide by pivots taken as they come.
+var byPivots = []string{"ilu", "ilut", "milu", "ras", "block-jacobi"}
+
+// prepared is the candidate with the preparation that it needs here: where the
+// diagonal holds zeros, what divides by pivots has A permuted first. It is
+// nothing where the preparation does not go with it.
+func (r Race) prepared(c Candidate) []string {
+	prefix := r.prefix()
+	if !fullDiagonal(r.Facts) && slices.Contains(byPivots, c.Precond) {
+		if prefix != "" || c.Symmetric {
+			return nil // a permutation of rows alone takes the symmetry
+		}
+		prefix = "match/"
+	}
+	return []string{prefix + c.Pairing}
 }
 
 // prefix is the preparation that every pairing of a race needs.
@@ -54,7 +85,7 @@ func (r Race) base() string {
 	for _, h := range r.Trials {
 		s := bare(split(h.Pairing).solver)
 		switch {
-		case !reached(h) || h.Direct || h.SPDM:
+		case !reached(h) || h.Direct || r.takesDefiniteM(s):
 		case s == usual:
 			return usual
 		case other == "":
@@ -64,13 +95,18 @@ func (r Race) base() string {
 	return cmp.Or(other, usual)
 }
 
+// takesDefiniteM says that a solver assumes M symmetric positive definite.
+func (r Race) takesDefiniteM(solver string) bool {
+	return slices.ContainsFunc(r.Candidates, func(c Candidate) bool { return c.Solver == solver && c.SPDM })
+}
+
 // underMinres are the definite preconditioners of a symmetric indefinite A.
 func (r Race) underMinres() []string {
 	if !symmetric(r.Facts) {
 		return nil
 	}
 	preconds := []string{"schur"}
-	if r.Facts.DiagNegative+r.Facts.DiagZero+r.Facts.DiagMissing == 0 {
+	if r.Facts.DiagNegative == 0 && fullDiagonal(r.Facts) {
 		preconds = append(preconds, "jacobi")
 	}
 	var out []string

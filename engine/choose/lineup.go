@@ -5,6 +5,11 @@ import "dwindle/engine/inspect"
 const (
 	// scaleLimit is the ratio of row norms from which a scaled variant joins.
 	scaleLimit = 1e4
+	// even is the ratio of norms up to which equilibration changes nothing.
+	even = 4
+	// shortCycleUpTo is the order up to which the usual restart length never
+	// restarts.
+	shortCycleUpTo = 30
 	// longCycleUpTo is the order up to which a restart length of 100 is cheap.
 	longCycleUpTo = 100_000
 	// directUpTo is the order up to which a direct solve joins.
@@ -68,9 +73,16 @@ func badlyScaled(f *inspect.Facts) bool {
 	return f.RowNorm.Min > 0 && f.RowNorm.Max/f.RowNorm.Min >= scaleLimit
 }
 
-func couldBeRegular(f *inspect.Facts) bool { return f.Singular.Answer != inspect.Yes }
+// uneven says that equilibration would change A at all.
+func uneven(f *inspect.Facts) bool {
+	return f.RowNorm.Max > even*f.RowNorm.Min || f.ColNorm.Max > even*f.ColNorm.Min
+}
 
-func (l *lineUp) fullDiagonal() bool { return l.facts.DiagZero+l.facts.DiagMissing == 0 }
+func fullDiagonal(f *inspect.Facts) bool { return f.DiagZero+f.DiagMissing == 0 }
+
+func couldBeRegular(f *inspect.Facts) bool { return !f.SingularAtSight() }
+
+func (l *lineUp) fullDiagonal() bool { return fullDiagonal(l.facts) }
 
 func (l *lineUp) definite() {
 	l.add("", "cg", "none")
@@ -103,7 +115,7 @@ func (l *lineUp) nonsymmetric() {
 		l.add("", "bicgstab", "ilu")
 		l.add("", "gmres", "ilu")
 	}
-	if l.badlyScaled() || !l.fullDiagonal() {
+	if l.badlyScaled() || !l.fullDiagonal() && uneven(l.facts) {
 		l.add("scale/", "gmres", "none")
 		l.add("scale/", "bicgstab", "none")
 	}
@@ -112,7 +124,7 @@ func (l *lineUp) nonsymmetric() {
 		l.add("scale/", "gmres", "ilu")
 	case !l.fullDiagonal():
 		l.add("match/", "gmres", "ilu")
-		if l.facts.N <= longCycleUpTo {
+		if l.facts.N > shortCycleUpTo && l.facts.N <= longCycleUpTo {
 			l.pairings = append(l.pairings, "gmres:100+none")
 		}
 	}

@@ -58,7 +58,7 @@ func (r Race) outpaced(h, best trace.History) string {
 	}
 	t, own := best.OwnTime.Seconds(), h.OwnTime.Seconds()
 	solve, solves := (h.OwnTime - h.SetupTime).Seconds(), (best.OwnTime - best.SetupTime).Seconds()
-	if own <= room*t || solve <= room*solves {
+	if own <= math.Max(tooShort, room*t) || solve <= room*solves {
 		return ""
 	}
 	if r.Goal == Memory && h.MemoryBytes < best.MemoryBytes && own <= 10*room*t {

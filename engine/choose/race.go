@@ -15,6 +15,7 @@ type Race struct {
 	Trials     []trace.History
 	Tried      map[string]bool // pairings that were ever started, and those the caller could not start
 	Today      string          // the pairing the user's code runs now; it is never ended
+	Offers     []string        // what findings about the system offer to try, runnable here
 	Goal       string          // Seconds, Memory or Robust
 	Limit      int             // iterations a trial may take
 	Left       time.Duration   // of the run; 0: no limit
@@ -25,7 +26,7 @@ type Race struct {
 type Orders struct {
 	Add []string // pairings, to be started in this order
 	End []End    // trials that have lost
-	// Setup is how much own time a set-up may take from now on; 0: any.
+	// Setup is how much own time a set-up may take from now on.
 	Setup time.Duration
 }
 
@@ -36,18 +37,20 @@ type End struct {
 }
 
 const (
-	width     = 3                      // trials that run at once when a first one has converged
-	mostInAll = 56                     // trials of a race
-	brief     = 20 * time.Millisecond  // a best below this is not worth a long race:
-	mostBrief = 16                     // so many trials then
-	enough    = 60.0                   // own time of all trials over the best's time, from which nothing is added
-	atLeast   = 3 * time.Second        // but so much is always spent
-	firstPace = 500 * time.Millisecond // own time of the slowest live trial from which help is added where nothing converges
-	pace      = 1.5                    // by which it grows with each trial added
-	someSteps = 20                     // no help is added before every live trial has taken so many steps
-	tooLong   = 20                     // or so many times the pace
-	setupRoom = 4.0                    // a set-up may take so many times the best's time
-	setupLow  = 200 * time.Millisecond // but at least this
+	width      = 3                      // trials that run at once when a first one has converged
+	mostInAll  = 56                     // trials of a race
+	brief      = 20 * time.Millisecond  // a best below this is not worth a long race:
+	mostBrief  = 16                     // so many trials then
+	enough     = 60.0                   // own time of all trials over the best's time, from which nothing is added
+	atLeast    = 3 * time.Second        // but so much is always spent
+	firstPace  = 500 * time.Millisecond // own time of the slowest live trial from which help is added where nothing converges
+	pace       = 1.5                    // by which it grows with each trial added
+	someSteps  = 20                     // no help is added before every live trial has taken so many steps
+	tooLong    = 20                     // or so many times the pace
+	setupRoom  = 4.0                    // a set-up may take so many times the best's time
+	setupLow   = 200 * time.Millisecond // but at least this
+	setupLong  = time.Second            // where nothing has converged, it may take this,
+	setupEntry = 20 * time.Microsecond  // or this an entry of A, or as much as all trials have taken
 )
 
 // Next decides which trials have lost and which pairings to start, from how
@@ -62,6 +65,7 @@ func (r Race) Next() Orders {
 		}
 	}
 	live -= len(o.End)
+	o.Setup = max(setupLong, r.spent(), setupEntry*time.Duration(r.Facts.Entries))
 	if found {
 		o.Setup = max(setupLow, time.Duration(setupRoom*float64(best.OwnTime)))
 	}

@@ -3,6 +3,8 @@ package choose
 import (
 	"cmp"
 	"slices"
+	"strconv"
+	"strings"
 
 	"dwindle/engine/trace"
 )
@@ -12,13 +14,13 @@ const (
 	leaders = 3   // so many preconditioners, and solvers, are looked at more closely
 )
 
-// untried returns the next pairings of a race, at most so many: first every
-// kind of preconditioner under one solver, then the other solvers with the
+// untried returns the next pairings of a race, at most so many: first what
+// findings about the system offer, then every kind of preconditioner under one solver, then the other solvers with the
 // preconditioners that lead, then parameters around the leaders, preparations
 // of them, and last what is unlike anything tried.
 func (r Race) untried(most int) []string {
 	var out []string
-	for _, wave := range []func() []string{r.kinds, r.solvers, r.parameters, r.preparations, r.unlike} {
+	for _, wave := range []func() []string{r.offers, r.kinds, r.solvers, r.parameters, r.preparations, r.unlike} {
 		for _, p := range wave() {
 			if len(out) == most {
 				return out
@@ -33,6 +35,9 @@ func (r Race) untried(most int) []string {
 	}
 	return out
 }
+
+// offers are what findings about the system offer to try.
+func (r Race) offers() []string { return r.Offers }
 
 // admissible says that nothing known speaks against the candidate.
 func (r Race) admissible(c Candidate) bool {
@@ -68,7 +73,7 @@ func (r Race) solvers() []string {
 		seen[bare(p.precond)] = true
 		for _, s := range solversInOrder {
 			for _, c := range r.Candidates {
-				if c.Solver == s && c.Precond == bare(p.precond) && r.admissible(c) {
+				if c.Solver == s && c.Precond == bare(p.precond) && r.admissible(c) && !r.sharesFate(s, p) {
 					q := split(c.Pairing)
 					out = append(out, parts{p.preps, q.solver, p.precond}.String())
 				}
@@ -76,6 +81,26 @@ func (r Race) solvers() []string {
 		}
 	}
 	return out
+}
+
+// kin are the solvers that rest on the same products with a shadow vector as
+// bicgstab, and break down where it does.
+var kin = []string{"cgs", "tfqmr", "bicgstabl"}
+
+// sharesFate says that a solver is kin of bicgstab, which has broken down with
+// these preparations and this preconditioner, or at its first steps with any.
+func (r Race) sharesFate(solver string, p parts) bool {
+	if !slices.Contains(kin, solver) {
+		return false
+	}
+	for _, h := range r.Trials {
+		q := split(h.Pairing)
+		if bare(q.solver) == "bicgstab" && h.Stop == trace.BrokeDown && len(h.Records) > 0 &&
+			(h.Iterations <= 2 || q.preps == p.preps && q.precond == p.precond) {
+			return true
+		}
+	}
+	return false
 }
 
 // solversInOrder is the order in which solvers are tried with what leads.
@@ -93,10 +118,23 @@ func (r Race) parameters() []string {
 			out = append(out, parts{p.preps, p.solver, q}.String())
 		}
 		for _, q := range neighbours(p.solver) {
+			if h.Iterations <= min(cycleOf(p.solver), cycleOf(q)) {
+				continue // neither restarts: the same iterates
+			}
 			out = append(out, parts{p.preps, q, p.precond}.String())
 		}
 	}
 	return out
+}
+
+// cycleOf is the restart length of a method; 0 of one that does not restart.
+func cycleOf(solver string) int {
+	name, arg, _ := strings.Cut(solver, ":")
+	if name != "gmres" && name != "gcr" {
+		return 0
+	}
+	m, _ := strconv.Atoi(arg)
+	return m
 }
 
 // preparations are orders and scalings for the best that is no direct solve.
@@ -110,10 +148,10 @@ func (r Race) preparations() []string {
 		if ordered(bare(p.precond)) {
 			out = append(out, "rcm/"+h.Pairing)
 		}
-		if badlyScaled(r.Facts) || !symmetric(r.Facts) {
+		if uneven(r.Facts) && (badlyScaled(r.Facts) || !symmetric(r.Facts)) {
 			out = append(out, "scale/"+h.Pairing)
 		}
-		if r.Facts.DiagZero+r.Facts.DiagMissing > 0 {
+		if !fullDiagonal(r.Facts) {
 			out = append(out, "match/"+h.Pairing)
 		}
 		return out
@@ -138,7 +176,7 @@ func (r Race) unlike() []string {
 	for _, p := range pairs {
 		for _, c := range r.Candidates {
 			if c.Solver == p[0] && c.Precond == p[1] && r.admissible(c) {
-				out = append(out, r.prefix()+c.Pairing)
+				out = append(out, r.prepared(c)...)
 			}
 		}
 	}
