@@ -7,17 +7,19 @@ import (
 	"dwindle/engine/linear"
 )
 
-// lookEvery is how many rows are built between two looks at the context.
-const lookEvery = 4096
+const (
+	lookEvery = 4096 // rows that are built between two words on progress
+	heedEvery = 16   // and between two looks at the context: a row may be dense
+)
 
 // look stops a build that was cancelled and reports the share done at row i
-// of n, every lookEvery rows.
+// of n, now and then.
 func look(ctx context.Context, progress func(float64), i, n int) error {
-	if i%lookEvery != 0 {
-		return nil
-	}
-	if progress != nil {
+	if progress != nil && i%lookEvery == 0 {
 		progress(float64(i) / float64(n))
+	}
+	if i%heedEvery != 0 {
+		return nil
 	}
 	return ctx.Err()
 }

@@ -1,15 +1,21 @@
 package precond
 
-import "math"
+import (
+	"context"
+	"math"
+)
 
 // leastSquares solves min ‖B x − c‖₂ by Householder's reflections (J. ACM 5
 // (1958) 339–342). b holds the columns of B, of cols columns and rows ≥ cols
 // rows, and is overwritten, as is c, of length rows, whose head is x on
 // return. Where a column depends on those before it to rounding, its unknown
-// is 0.
-func leastSquares(b []float64, rows, cols int, c []float64) {
+// is 0. It returns false where ctx has ended, with no answer.
+func leastSquares(ctx context.Context, b []float64, rows, cols int, c []float64) bool {
 	diag := make([]float64, cols)
 	for j := 0; j < cols; j++ {
+		if j%heedEvery == heedEvery-1 && ctx.Err() != nil {
+			return false
+		}
 		col := b[j*rows : (j+1)*rows]
 		whole, below := norm2(col), norm2(col[j:])
 		if below <= 1e-13*whole || below == 0 {
@@ -36,6 +42,7 @@ func leastSquares(b []float64, rows, cols int, c []float64) {
 		}
 		c[j] /= diag[j]
 	}
+	return true
 }
 
 // reflect computes y −= scale (vᵀy) v, with scale = 2/vᵀv.

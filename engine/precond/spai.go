@@ -33,13 +33,16 @@ func buildSPAI(ctx context.Context, s linear.System, _ linear.Values, progress f
 	}
 	n := a.NRows
 	m := &linear.CSR{NRows: n, NCols: n, Ptr: a.Ptr, Col: a.Col, Val: linear.Bulk[float64](a.Entries())}
-	w := &spaiWork{a: a, place: linear.Bulk[int32](n)}
+	w := &spaiWork{ctx: ctx, a: a, place: linear.Bulk[int32](n)}
 	for i := 0; i < n; i++ {
 		if err := look(ctx, progress, i, n); err != nil {
 			return nil, notes, err
 		}
 		_, dst := m.Row(i)
 		if !w.row(i, dst) {
+			if err := ctx.Err(); err != nil {
+				return nil, notes, err
+			}
 			return nil, notes, &Breakdown{Method: name, Row: i, Why: "the pattern of the row cannot reach its unit vector"}
 		}
 	}
@@ -50,13 +53,15 @@ func buildSPAI(ctx context.Context, s linear.System, _ linear.Values, progress f
 
 // spaiWork holds the least squares problem of one row.
 type spaiWork struct {
+	ctx   context.Context // of the set-up: one dense row may take long
 	a     *linear.CSR
 	place []int32 // where column c stands among those met, +1; length n
 	met   []int32
 	b, c  []float64
 }
 
-// row writes row i of M⁻¹ to dst; false where that row is zero.
+// row writes row i of M⁻¹ to dst; false where that row is zero, or the set-up
+// has been cancelled.
 func (w *spaiWork) row(i int, dst []float64) bool {
 	j, _ := w.a.Row(i)
 	w.met = w.met[:0]
@@ -71,7 +76,7 @@ func (w *spaiWork) row(i int, dst []float64) bool {
 	}
 	reached := w.place[i] > 0
 	if reached {
-		w.solve(i, j, dst)
+		reached = w.solve(i, j, dst)
 	}
 	for _, c := range w.met {
 		w.place[c] = 0
@@ -79,8 +84,8 @@ func (w *spaiWork) row(i int, dst []float64) bool {
 	return reached && norm2(dst) > 0
 }
 
-// solve solves min ‖A_Jᵀ x − e_i‖₂.
-func (w *spaiWork) solve(i int, j []int32, dst []float64) {
+// solve solves min ‖A_Jᵀ x − e_i‖₂; false where the set-up has been cancelled.
+func (w *spaiWork) solve(i int, j []int32, dst []float64) bool {
 	rows, cols := max(len(w.met), len(j)), len(j)
 	w.b, w.c = slices.Grow(w.b[:0], rows*cols)[:rows*cols], slices.Grow(w.c[:0], rows)[:rows]
 	clear(w.b)
@@ -92,6 +97,9 @@ func (w *spaiWork) solve(i int, j []int32, dst []float64) {
 		}
 	}
 	w.c[w.place[i]-1] = 1
-	leastSquares(w.b, rows, cols, w.c)
+	if !leastSquares(w.ctx, w.b, rows, cols, w.c) {
+		return false
+	}
 	copy(dst, w.c)
+	return true
 }

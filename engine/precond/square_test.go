@@ -1,6 +1,7 @@
 package precond
 
 import (
+	"context"
 	"math/rand/v2"
 	"slices"
 	"testing"
@@ -77,14 +78,14 @@ func TestLeastSquares(t *testing.T) {
 		if err := want.SolveVec(m, mat.NewVecDense(rows, slices.Clone(c))); err != nil {
 			t.Fatal(err)
 		}
-		leastSquares(b, rows, cols, c)
+		leastSquares(context.Background(), b, rows, cols, c)
 		for j := 0; j < cols; j++ {
 			near(t, "unknown", c[j], want.AtVec(j), 1e-12)
 		}
 	}
 	// The second column is twice the first: its unknown is 0.
 	c := []float64{2, 4, 1}
-	leastSquares([]float64{1, 2, 0, 2, 4, 0}, 3, 2, c)
+	leastSquares(context.Background(), []float64{1, 2, 0, 2, 4, 0}, 3, 2, c)
 	near(t, "first unknown", c[0], 2, 1e-14)
 	near(t, "second unknown", c[1], 0, 1e-14)
 }
