@@ -129,7 +129,7 @@ func (b *Bench) Run(ctx context.Context) {
 		b.wake.Broadcast()
 		b.mu.Unlock()
 	}()
-	for {
+	for cold := true; ; {
 		b.askSteersman()
 		live := b.await()
 		if live == nil {
@@ -139,6 +139,10 @@ func (b *Bench) Run(ctx context.Context) {
 		for _, t := range live {
 			if !b.enter() {
 				return
+			}
+			if cold {
+				b.warm(ctx)
+				cold = false
 			}
 			t.budget += q
 			t.advance(ctx)
