@@ -9,7 +9,7 @@ import (
 // penalties: large numbers on the diagonal that hold single unknowns.
 var penalties = Rule{"penalty-rows", func(c Case) []Finding {
 	f := c.Facts
-	if f.Study == nil || f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer == inspect.No {
+	if f.Study == nil || f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer == inspect.No && !semidefinite(f) {
 		return nil
 	}
 	for _, l := range f.Study.Lines {

@@ -27,16 +27,18 @@ var mechanism = Rule{"mechanism", func(c Case) []Finding {
 	claim, rows := c.motions(free)
 	g := Finding{Weight: Blocker, Certainty: inspect.Measured, Subject: OnSystem,
 		Claim:  claim,
-		Advice: "look there for a missing support or a hinge too many; until it is added, minres finds the part of the answer that is determined",
-		Try:    []string{"minres+none"},
+		Advice: "look there for a missing support or a hinge too many; b pushes along none of it, so that cg finds an answer all the same, up to this motion",
+		Try:    []string{"cg+ic:0"},
 		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: free[0].Quotient, Iteration: none, Rows: rows},
 			number("the next direction", free[len(free)-1].Next, ""), number("free directions", float64(len(free)), "")}}
-	if load := heaviest(free); load > 1e-10 {
+	if load := pushing(f, free); load > 1e-10 {
 		along := "it"
 		if len(free) > 1 {
 			along = "them"
 		}
 		g.Claim += fmt.Sprintf("; b pushes along %s with %s of its norm, and no x can answer that", along, num(load))
+		g.Advice = "look there for a missing support or a hinge too many; until it is added, project solves for the part of b that can be answered"
+		g.Try = []string{"project/cg+ic:0"}
 		g.Evidence = append(g.Evidence, number("part of b along it", load, ""))
 	}
 	g.Advice += openDigits(f, free[0].Quotient)
@@ -127,7 +129,11 @@ func localRows(d inspect.NullDirection) (rows []int, part float64) {
 	return rows, part
 }
 
-func heaviest(free []inspect.NullDirection) float64 {
+// pushing is the part of b along what is free, relative to b.
+func pushing(f *inspect.Facts, free []inspect.NullDirection) float64 {
+	if u := f.Unreachable; u.Answer == inspect.Yes {
+		return u.Value
+	}
 	sum := 0.0
 	for _, d := range free {
 		if d.Load > 0 {
@@ -147,26 +153,44 @@ var nearNull = Rule{"near-null", func(c Case) []Finding {
 	s := f.Study
 	d, last := s.Null[0], s.Null[len(s.Null)-1]
 	g := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: OnSystem, Claim: freeClaim(len(s.Null), last),
-		Advice: "if a mode of the model should be held, hold it; otherwise deflate it, or solve directly and trust only these digits",
-		Try:    []string{"scale/gmres:100+ilut:1e-3,10"},
+		Advice: "if a mode of the model should be held, hold it; otherwise solve directly, trust only these digits, and " + reachable(c),
+		Try:    []string{"richardson:1+lu"},
 		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: last.Quotient, Iteration: none, Rows: d.Rows},
 			number("the next direction", last.Next, "")}}
 	if f.Symmetric.Answer == inspect.Yes {
-		g.Try = instead(f)
+		g.Try = []string{"richardson:1+ldl"}
 	}
 	if last.Quotient <= inspect.ZeroLimit && f.PositiveDefinite.Answer != inspect.Yes {
 		g.Weight, g.Certainty = Blocker, inspect.Measured
 		g.Claim = "A is singular to rounding: " + g.Claim
 		g.Advice = "find out which equation repeats others, or which unknown nothing determines; b may be out of reach" + openDigits(f, last.Quotient)
+		g.Try = nil
+		if f.Symmetric.Answer == inspect.Yes {
+			g.Try = []string{"minres+none"}
+		}
 		return []Finding{g}
 	}
 	if x := s.Equilibrated; x != nil && x.Condition > 0 && s.Digits >= 0 {
 		g.Claim += fmt.Sprintf("; the condition %s leaves about %s of x", num(x.Condition), count(int(math.Round(s.Digits)), "correct digit"))
-		g.Evidence = append(g.Evidence, number("condition after equilibration", x.Condition, ""), number("digits to expect", s.Digits, ""))
+		g.Evidence = append(g.Evidence, number("condition after equilibration", x.Condition, ""), number("correct digits to expect of x", math.Round(s.Digits), "about"))
 	}
 	g.Advice += openDigits(f, last.Quotient)
 	return []Finding{g}
 }}
+
+// reachable says which tolerance the trials show to be in reach.
+func reachable(c Case) string {
+	best, pairing := math.Inf(1), ""
+	for _, h := range c.Trials {
+		if h.BestTrue < best {
+			best, pairing = h.BestTrue, h.Pairing
+		}
+	}
+	if best > c.Tol && best < 1 {
+		return fmt.Sprintf("ask for no more than ||b-Ax|| allows: the smallest of ||b|| so far is %s, by %s", num(best), pairing)
+	}
+	return "ask for no smaller a residual than a direct solve gives"
+}
 
 // freeClaim tells how many directions are nearly free, and how far the least
 // free of them lies below the next.

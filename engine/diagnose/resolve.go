@@ -25,6 +25,7 @@ var yields = []yield{
 	{"zero-rhs", nil, anywhere, "b = 0: no iteration tells anything"},
 	{"unreachable-rhs", []string{"restart-stagnation", "accuracy-floor", "divergence", "false-convergence", "stopping-rules", "not-your-rhs"},
 		unprojected, "no residual can get below the part that is out of reach"},
+	{"mechanism", []string{"unreachable-rhs"}, anywhere, "the same part of b, told with its cause"},
 	{"mechanism", consequences, unsolvable, "what moves freely leaves no answer to converge to"},
 	{"near-null", consequences, unsolvable, "A is singular to rounding"},
 	{"outside-assumptions", []string{"negative-curvature", "accuracy-floor", "restart-stagnation", "divergence", "breakdown",
@@ -128,7 +129,7 @@ func advise(c Case, f *Finding) {
 	f.Try = slices.DeleteFunc(slices.Clone(f.Try), func(p string) bool {
 		h, ran := find(c, p)
 		if !ran || !h.Stop.Ended() {
-			return false
+			return !ran && unbuilt(c, p)
 		}
 		return !solved(h) || f.Rule != "unsolved-rows" && solved(against) && h.OwnTime > against.OwnTime
 	})
@@ -138,6 +139,16 @@ func advise(c Case, f *Finding) {
 	f.Advice = fmt.Sprintf("%s has solved the system in %s and %s; else %s", best.Pairing,
 		steps(best.Iterations), seconds(best.OwnTime.Seconds()), f.Advice)
 	f.Try = []string{best.Pairing}
+}
+
+// unbuilt says whether the preconditioner of a pairing broke down at set-up in
+// another trial, on the system prepared alike.
+func unbuilt(c Case, pairing string) bool {
+	prep, _, m := cut(pairing)
+	return slices.ContainsFunc(c.Trials, func(h trace.History) bool {
+		p, _, q := cut(h.Pairing)
+		return p == prep && q == m && h.Stop == trace.BrokeDown && h.Iterations == 0 && len(h.Notes.Broke) > 0
+	})
 }
 
 // speakForThemselves are the rules whose advice stands whatever else works: a

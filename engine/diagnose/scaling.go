@@ -35,7 +35,7 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 	}
 	try := []string{"scale/gmres:30+none"}
 	switch {
-	case f.Symmetric.Answer == inspect.Yes && f.PositiveDefinite.Answer != inspect.No:
+	case f.Symmetric.Answer == inspect.Yes && (f.PositiveDefinite.Answer != inspect.No || semidefinite(f)):
 		try = []string{"cg+jacobi", "scale/cg+none"}
 	case f.Symmetric.Answer == inspect.Yes:
 		try = []string{"scale/minres+none"}
@@ -53,7 +53,7 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 		switch {
 		case helped:
 			g.Claim = differ + ": " + words
-		case before != nil && after != nil && before.Condition > 0 && after.Condition > 0:
+		case f.Singular.Answer != inspect.Yes && before != nil && before.Condition > 0 && after.Condition > 0:
 			g.Claim = fmt.Sprintf("%s; the condition of %s is %s, and %s once rows and columns are equilibrated",
 				differ, before.Of, num(before.Condition), num(after.Condition))
 		default:

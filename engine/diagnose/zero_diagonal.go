@@ -18,12 +18,12 @@ var zeroDiagonal = Rule{"zero-diagonal", func(c Case) []Finding {
 	g := Finding{Weight: Note, Certainty: inspect.Proved, Subject: OnSystem,
 		Claim: fmt.Sprintf("%d of %d diagonal entries are zero (%s): jacobi, ssor, ic and ilu:0 cannot be built as A stands",
 			zeros, f.N, c.list(f.DiagRows, 3)),
-		Advice:   "permute A to a diagonal without zeros first (match), or factorise with pivoting",
-		Try:      []string{"match/gmres:30+ilu:0", "gmres:30+ilutp"},
+		Advice:   "factorise with pivoting, incompletely after scaling (ilutp) or completely (lu)",
+		Try:      []string{"scale/gmres:30+ilutp:1e-3,10,0.1", "richardson:1+lu"},
 		Evidence: []Evidence{{Quantity: "zero diagonal entries", Value: float64(zeros), Unit: fmt.Sprintf("of %d", f.N), Iteration: none, Rows: f.DiagRows}}}
 	if f.Symmetric.Answer == inspect.Yes && f.DiagZero+f.DiagMissing < f.N {
-		g.Advice = "treat it as a saddle system by blocks (schur), or permute A to a diagonal without zeros (match)"
-		g.Try = []string{"gmres:30+schur", "match/gmres:30+ilu:0"}
+		g.Advice = "treat it as a saddle system by blocks (minres with schur), or factorise with pivots of order 1 and 2 (ldl)"
+		g.Try = []string{"minres+schur:diagonal,incomplete", "richardson:1+ldl"}
 	}
 	_, answered := quickest(c)
 	for _, h := range c.Trials {

@@ -3,11 +3,9 @@ package inspect
 import (
 	"fmt"
 	"math"
-)
 
-// toRounding is the quotient ‖Av‖/(‖A‖‖v‖), after equilibration, below which a
-// direction is free as far as rounding lets it be seen.
-const toRounding = 1e-13
+	"dwindle/engine/linear"
+)
 
 // pushes is the part of b along the free directions above which rounding does
 // not explain it.
@@ -26,11 +24,18 @@ func (e *exam) settle(f *Facts) {
 func (e *exam) freeToRounding() []NullDirection {
 	var out []NullDirection
 	for _, d := range e.out.Null {
-		if d.Quotient <= toRounding {
+		if d.Quotient <= ZeroLimit {
 			out = append(out, d)
 		}
 	}
 	return out
+}
+
+func sizes(n int) string {
+	if n == 1 {
+		return "its size"
+	}
+	return "their size or less"
 }
 
 func (e *exam) settleSingular(f *Facts) {
@@ -40,8 +45,8 @@ func (e *exam) settleSingular(f *Facts) {
 	free, x := e.freeToRounding(), e.out.Equilibrated
 	switch {
 	case len(free) > 0:
-		f.Singular = fact(Yes, Measured, float64(len(free)), free[0].Rows, "to rounding: A equilibrated maps %s to %.2g of its size%s",
-			count(len(free), "direction", "directions"), free[len(free)-1].Quotient, openDigits(f, f.Delta > free[0].Quotient, "yours may not be singular"))
+		f.Singular = fact(Yes, Measured, float64(len(free)), free[0].Rows, "to rounding: A equilibrated maps %s to %.2g of %s%s",
+			count(len(free), "direction", "directions"), free[len(free)-1].Quotient, sizes(len(free)), openDigits(f, f.Delta > free[0].Quotient, "yours may not be singular"))
 	case e.singular:
 		f.Singular = unknown("a pivot of A equilibrated vanishes to rounding: singular, or close to it")
 	case x == nil || e.solver == nil:
@@ -95,25 +100,34 @@ func (e *exam) settleUnreachable(f *Facts) {
 	free := e.freeToRounding()
 	switch {
 	case f.Singular.Answer == No:
-		f.Unreachable = fact(No, f.Singular.Certainty, 0, nil, "A is regular: %s", f.Singular.Why)
+		f.Unreachable = fact(No, f.Singular.Certainty, 0, nil, "A is regular")
 	case !e.symmetric || len(free) == 0 || len(free) == mostFree:
 	default:
-		f.Unreachable = unreachableBy(free)
+		f.Unreachable = unreachableBy(free, e.s.B)
 	}
 }
 
-// unreachableBy measures the part of b along the free directions of a symmetric
-// A.
-func unreachableBy(free []NullDirection) Fact {
-	sum := 0.0
+// unreachableBy measures the part of b in the span of the free directions of a
+// symmetric A.
+func (e *exam) unreachableBy(free []NullDirection) Fact {
+	b, what := e.s.B, count(len(free), "direction", "directions")
+	sum, basis := 0.0, [][]float64(nil)
 	for _, d := range free {
-		sum += d.Load * d.Load
+		v := append([]float64(nil), d.Vector...)
+		for range 2 {
+			for _, w := range basis {
+				linear.Axpy(-linear.Dot(w, v), w, v)
+			}
+		}
+		linear.Scale(v, 1/max(linear.Norm2(v), tinyDivide), v)
+		basis = append(basis, v)
+		sum += linear.Dot(v, b) * linear.Dot(v, b)
 	}
-	part := math.Sqrt(sum)
+	part := math.Sqrt(sum) / e.f.RHSNorm
 	if part > pushes {
-		return unknown("b pushes along %s, free to rounding, with %.2g of its norm", count(len(free), "direction", "directions"), part)
+		return fact(Yes, Measured, part, free[0].Rows, "%.6g of b lies along %s, free to rounding", part, what)
 	}
-	return fact(No, Measured, part, nil, "b pushes along %s, free to rounding, with %.1g of its norm only", count(len(free), "direction", "directions"), part)
+	return fact(No, Measured, part, nil, "%.1g of b lies along %s, free to rounding", part, what)
 }
 
 // settleSymmetricPart says whether (A+Aᵀ)/2 is positive definite, of an A that
@@ -124,7 +138,12 @@ func (e *exam) settleSymmetricPart(f *Facts) {
 		return
 	}
 	tiny := 0x1p-53 * f.NormFro * math.Sqrt(float64(f.N))
-	switch {
+	switch r := e.half; {
+	case r != nil && r.Definite:
+		f.SymmetricPart = fact(Yes, Proved, m.FieldMin, nil, "Cholesky of it completes beyond all rounding; x'Ax/x'x from %.3g to %.3g", m.FieldMin, m.FieldMax)
+		if f.Delta > 0 {
+			f.SymmetricPart.Certainty = Measured
+		}
 	case m.FieldMin < -tiny:
 		f.SymmetricPart = fact(No, Measured, m.FieldMin, nil, "some x has x'Ax/x'x = %.3g", m.FieldMin)
 	case m.FieldMin > tiny+m.FieldMinBound && m.FieldSettled:
