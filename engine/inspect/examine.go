@@ -4,6 +4,7 @@ import (
 	"context"
 	"math"
 
+	"dwindle/engine/direct"
 	"dwindle/engine/linear"
 	"dwindle/engine/prepare"
 )
@@ -47,7 +48,7 @@ func Examine(ctx context.Context, s linear.System, f *Facts, b Budget, seen func
 	e := &exam{ctx: ctx, s: s, f: f, a: a, left: b.Work, budget: b, symmetric: f.Symmetric.Answer == Yes}
 	e.out.Digits = math.NaN()
 	parts := []func(*exam) error{(*exam).pattern, (*exam).factor, (*exam).spectra, (*exam).freeDirections,
-		(*exam).restore, (*exam).normality, (*exam).growth, (*exam).density}
+		(*exam).restore, (*exam).normality, (*exam).symmetricPart, (*exam).growth, (*exam).density}
 	result := f
 	for _, part := range parts {
 		if err := ctx.Err(); err != nil {
@@ -76,13 +77,14 @@ type exam struct {
 	reserved  float64 // of them, for what comes after the spectra
 	out       Study
 
-	scaled   *linear.CSR // A equilibrated: B = R A C
-	row, col []float64   // R and C
-	solver   solver      // of B; nil where there is no factorisation
-	shift    float64     // solver is that of B + shift·I
-	singular bool        // B has no factorisation: a pivot vanishes to rounding
-	replaced []bool      // rows of the identity whose columns are not; nil: none
-	free     [][]float64 // nearly free directions of B, orthonormal
+	scaled   *linear.CSR          // A equilibrated: B = R A C
+	row, col []float64            // R and C
+	solver   solver               // of B; nil where there is no factorisation
+	shift    float64              // solver is that of B + shift·I
+	singular bool                 // B has no factorisation: a pivot vanishes to rounding
+	replaced []bool               // rows of the identity whose columns are not; nil: none
+	half     *direct.Definiteness // of (A+Aᵀ)/2; nil: not looked at
+	free     [][]float64          // nearly free directions of B, orthonormal
 }
 
 // facts returns the facts with a copy of the study so far.

@@ -103,7 +103,7 @@ func (e *exam) settleUnreachable(f *Facts) {
 		f.Unreachable = fact(No, f.Singular.Certainty, 0, nil, "A is regular")
 	case !e.symmetric || len(free) == 0 || len(free) == mostFree:
 	default:
-		f.Unreachable = unreachableBy(free, e.s.B)
+		f.Unreachable = e.unreachableBy(free)
 	}
 }
 

@@ -47,7 +47,7 @@ func (l *look) notSymmetric() error {
 	f := &l.f
 	for _, p := range []*Fact{&f.PositiveDefinite, &f.NegativeDefinite, &f.Semidefinite} {
 		if p.Answer == "" {
-			*p = unknown("A is not symmetric; what counts is (A+A')/2")
+			*p = unknown("A is not symmetric; what counts is (A+Aᵀ)/2")
 		}
 	}
 	return nil
