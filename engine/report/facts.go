@@ -23,6 +23,7 @@ func allFacts(f *inspect.Facts) []named {
 		{"symmetric", f.Symmetric},
 		{"pattern_symmetric", f.PatternSymmetric},
 		{"positive_definite", f.PositiveDefinite},
+		{"symmetric_part_definite", symmetricPart(f)},
 		{"semidefinite", f.Semidefinite},
 		{"negative_eigenvalues", f.NegativeCount},
 		{"negative_definite", f.NegativeDefinite},
@@ -38,6 +39,17 @@ func allFacts(f *inspect.Facts) []named {
 		{"empty_columns", empty(f, "column", f.EmptyColCount, f.EmptyCols)},
 		{"unreachable", f.Unreachable},
 	}
+}
+
+// symmetricPart: is (A+Aᵀ)/2 positive definite? Of a symmetric A it is A.
+func symmetricPart(f *inspect.Facts) inspect.Fact {
+	switch {
+	case f.Symmetric.Answer == inspect.Yes:
+		return f.PositiveDefinite
+	case f.SymmetricPart.Answer == "":
+		return notYet()
+	}
+	return f.SymmetricPart
 }
 
 // counted is a fact that rests on counting entries.

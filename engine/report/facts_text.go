@@ -21,15 +21,35 @@ func Facts(w io.Writer, d Document) error {
 	return writeLines(w, lines)
 }
 
+// shorter are the names of facts that are too long for their column.
+var shorter = map[string]string{
+	"negative_eigenvalues":    "eigenvalues < 0",
+	"symmetric_part_definite": "(A+A^T)/2 definite",
+}
+
+const factCols = 19 // of the name
+
+// factLines are the facts with their answer; that of the symmetric part is told
+// only where it is not A.
 func factLines(f *inspect.Facts) []string {
 	var lines []string
 	for _, n := range allFacts(f) {
+		if n.name == "symmetric_part_definite" && (f == nil || f.SymmetricPart.Answer == "") {
+			continue
+		}
 		answer := string(n.fact.Answer)
 		if answer == "" {
 			answer = string(inspect.Unknown)
 		}
-		label := fmt.Sprintf("%-18s%-8s%-10s", strings.ReplaceAll(n.name, "_", " "),
-			clip(plain(answer), 7), clip(plain(string(n.fact.Certainty)), 9))
+		sure := string(n.fact.Certainty)
+		if answer == string(inspect.Unknown) {
+			sure = "" // of nothing
+		}
+		name, long := shorter[n.name]
+		if !long {
+			name = strings.ReplaceAll(n.name, "_", " ")
+		}
+		label := fmt.Sprintf("%-*s%-8s%-10s", factCols, name, clip(plain(answer), 7), clip(plain(sure), 9))
 		lines = append(lines, hang(label, plain(n.fact.Why+rowText(n.fact.Rows, f)), Width)...)
 	}
 	return lines
@@ -66,7 +86,7 @@ func measureItems(f *inspect.Facts) []labelled {
 func itemLines(items []labelled) []string {
 	var out []string
 	for _, it := range items {
-		out = append(out, hang(fmt.Sprintf("%-18s", clip(plain(it.label), 17)), plain(it.text), Width)...)
+		out = append(out, hang(fmt.Sprintf("%-*s", factCols, clip(plain(it.label), factCols-1)), plain(it.text), Width)...)
 	}
 	return out
 }

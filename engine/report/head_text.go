@@ -60,17 +60,26 @@ func systemText(d Document) string {
 		case inspect.No:
 			words = append(words, "not symmetric")
 		}
-		switch f.PositiveDefinite.Answer {
-		case inspect.Yes:
-			words = append(words, "definite ("+orDash(string(f.PositiveDefinite.Certainty))+")")
-		case inspect.No:
-			words = append(words, "not definite ("+orDash(string(f.PositiveDefinite.Certainty))+")")
-		}
+		words = append(words, definiteWords(f)...)
 	}
 	if s.Digits > 0 && s.Digits < 17 {
 		words = append(words, fmt.Sprintf("written with %d digits", s.Digits))
 	}
 	return clip(orDash(plain(s.Name)), 44) + ": " + plain(strings.Join(words, ", ")) + "; " + rhsText(s.RHS)
+}
+
+// definiteWords tell what is known of the signs of A's eigenvalues.
+func definiteWords(f *inspect.Facts) []string {
+	sure := func(f inspect.Fact) string { return " (" + orDash(string(f.Certainty)) + ")" }
+	switch p, s := f.PositiveDefinite, f.Semidefinite; {
+	case p.Answer == inspect.Yes:
+		return []string{"definite" + sure(p)}
+	case p.Answer == inspect.No && s.Answer == inspect.Yes:
+		return []string{"semi-definite and singular" + sure(p)}
+	case p.Answer == inspect.No:
+		return []string{"not definite" + sure(p)}
+	}
+	return nil
 }
 
 // rhsText says where b is from, and that it is not the user's when it is not.

@@ -2,6 +2,7 @@ package report
 
 import (
 	"fmt"
+	"math"
 	"strings"
 
 	"dwindle/engine/inspect"
@@ -25,7 +26,7 @@ func studyItems(f *inspect.Facts) []labelled {
 	}
 	for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
 		if x != nil {
-			add(valuesOf(f), spectrumText(*x))
+			add(valuesOf(f), spectrumText(*x, f.Singular.Answer == inspect.Yes))
 		}
 	}
 	if finite(s.Digits) && (s.Digits != 0 || s.Raw != nil) {
@@ -60,9 +61,14 @@ func valuesOf(f *inspect.Facts) string {
 	return "singular values"
 }
 
-func spectrumText(x inspect.Spectrum) string {
-	s := fmt.Sprintf("of %s: %s to %s", x.Of, short(x.Smallest), short(x.Largest))
-	if finite(x.Condition) && x.Condition > 0 {
+// spectrumText tells a spectrum; of an A known to be singular, what is as good
+// as zero is told as that.
+func spectrumText(x inspect.Spectrum, singular bool) string {
+	s := fmt.Sprintf("of %s: %s to %s", x.Of, lowText(x, singular), short(x.Largest))
+	if next := nextLow(x); x.Zeros > 0 && next > 0 {
+		s += fmt.Sprintf(", condition beside the zero %s", short(x.Largest/next))
+	}
+	if finite(x.Condition) && x.Condition > 0 && x.Zeros == 0 {
 		least := ""
 		if x.Certainty == inspect.Estimated { // an end that is not settled lies inside
 			least = "at least "
@@ -81,7 +87,44 @@ func spectrumText(x inspect.Spectrum) string {
 	if x.Exact {
 		s += ", all values"
 	}
-	return s + fmt.Sprintf(" (%s, by %s)", orDash(string(x.Certainty)), orDash(x.How))
+	sure := x.Certainty
+	if x.Zeros > 0 && x.Exact {
+		sure = inspect.Measured // only the zeros could not be told from rounding
+	}
+	return s + fmt.Sprintf(" (%s, by %s)", orDash(string(sure)), orDash(x.How))
+}
+
+// lowText tells the low end of a spectrum: zero where it is known or as good as
+// that, and what comes next.
+func lowText(x inspect.Spectrum, singular bool) string {
+	low := ""
+	switch {
+	case x.Zeros == 1:
+		low = "0 (proved)"
+	case x.Zeros > 1:
+		low = fmt.Sprintf("%d times 0 (proved)", x.Zeros)
+	case singular && x.Exact && math.Abs(x.Smallest) <= x.SmallestBound:
+		low = "0 (to rounding)"
+	default:
+		return short(x.Smallest)
+	}
+	if next := nextLow(x); next > 0 {
+		low += ", next " + short(next)
+	}
+	return low + ","
+}
+
+// nextLow is the first value at the low end that is not zero to rounding; NaN
+// if it is not known.
+func nextLow(x inspect.Spectrum) float64 {
+	if x.Exact {
+		for _, v := range x.Low {
+			if v > 10*x.LargestBound {
+				return v
+			}
+		}
+	}
+	return math.NaN()
 }
 
 func nullText(v inspect.NullDirection, f *inspect.Facts) string {
