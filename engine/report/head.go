@@ -13,6 +13,7 @@ const (
 	labelCols = 12
 	maxWhy    = 3 // findings in the head
 	whole     = 2 // items up to this rank are not cut for the sake of others
+	wanted    = 3 // nor those up to this one for a finding after the first
 	mostLines = 6 // of one item
 )
 
@@ -50,11 +51,11 @@ func Head(d Document) []string {
 // further says whether an item is a finding after the first.
 func further(it item) bool { return it.label == "" }
 
-// least is how many lines items need, those of the lowest ranks whole.
+// least is how many lines items need, what is wanted whole.
 func least(items []item) int {
 	sum := 0
 	for _, it := range items {
-		if it.rank <= whole {
+		if it.rank <= wanted {
 			sum += needs(it)
 		} else {
 			sum++

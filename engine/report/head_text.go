@@ -14,7 +14,7 @@ import (
 // headItems are the entries of the head, in their order.
 func headItems(d Document) []item {
 	items := []item{
-		{"SYSTEM", systemText(d), 3},
+		{"SYSTEM", systemText(d), wanted},
 		{"TODAY", todayText(d), 6},
 	}
 	label := "WHY"
@@ -23,7 +23,11 @@ func headItems(d Document) []item {
 		if i == maxWhy {
 			break
 		}
-		items = append(items, item{label, findingText(f), whole + 2*min(i, 1)})
+		text := findingText(f)
+		if i > 0 {
+			text, _, _ = strings.Cut(text, "; ") // the first clause, whole or not at all
+		}
+		items = append(items, item{label, text, whole})
 		label = ""
 	}
 	if len(why) == 0 {
@@ -62,10 +66,11 @@ func systemText(d Document) string {
 		}
 		words = append(words, definiteWords(f)...)
 	}
+	text := clip(orDash(plain(s.Name)), 44) + ": " + plain(strings.Join(words, ", ")) + "; " + rhsText(s.RHS)
 	if s.Digits > 0 && s.Digits < 17 {
-		words = append(words, fmt.Sprintf("written with %d digits", s.Digits))
+		text += fmt.Sprintf("; written with %d digits", s.Digits)
 	}
-	return clip(orDash(plain(s.Name)), 44) + ": " + plain(strings.Join(words, ", ")) + "; " + rhsText(s.RHS)
+	return text
 }
 
 // definiteWords tell what is known of the signs of A's eigenvalues.
@@ -133,7 +138,7 @@ func useText(d Document) string {
 	c := d.Choice
 	if c.Pairing == "" {
 		if len(c.Reasons) > 0 {
-			return "nothing yet: " + plain(c.Reasons[0])
+			return plain(c.Reasons[0])
 		}
 		return "nothing yet: no pairing has reached the tolerance"
 	}

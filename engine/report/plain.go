@@ -65,15 +65,19 @@ func wrap(s string, w int) []string {
 	return append(lines, s)
 }
 
-// wrapTo wraps to at most n lines; the last ends in "..." where text is left.
+// wrapTo wraps to at most n lines; the last ends in "..." where text is left,
+// after a clause or at least a word.
 func wrapTo(s string, w, n int) []string {
 	lines := wrap(s, w)
 	if len(lines) <= n {
 		return lines
 	}
 	last := lines[n-1]
+	if i := strings.LastIndex(last, "; "); i > 0 {
+		last = last[:i]
+	}
 	if len(last)+4 > w {
-		last = strings.TrimRight(last[:w-4], " ")
+		last = wrap(last, w-4)[0]
 	}
 	return append(lines[:n-1], last+" ...")
 }
