@@ -58,7 +58,7 @@ type Outcome struct {
 type Choice struct {
 	Pairing string // empty: none
 	Ranked  []Ranked
-	Reasons []string
+	Reasons []string // where Pairing is empty: what can be had instead, if anything
 	Doubts  []string
 	Goal    string  // what Ranked goes by; empty: Seconds
 	Gain    float64 // today's seconds over the choice's; NaN without today's

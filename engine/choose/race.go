@@ -4,6 +4,7 @@ import (
 	"slices"
 	"time"
 
+	"dwindle/engine/diagnose"
 	"dwindle/engine/inspect"
 	"dwindle/engine/trace"
 )
@@ -102,13 +103,17 @@ func (r Race) add(live int, best *trace.History, found bool) []string {
 	return r.untried(room)
 }
 
-// best is the trial that reached the target in the least own time.
+// best is the trial that reached the target in the least own time, or went as
+// far as double precision goes where none did.
 func (r Race) best() (*trace.History, bool) {
 	var best *trace.History
 	for i := range r.Trials {
 		if h := &r.Trials[i]; reached(*h) && (best == nil || h.OwnTime < best.OwnTime) {
 			best = h
 		}
+	}
+	if u, ok := diagnose.Utmost(r.Facts, r.Trials); ok && best == nil {
+		best = &u // nothing can get further
 	}
 	return best, best != nil
 }

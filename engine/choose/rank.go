@@ -34,6 +34,7 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 	settle(c.Ranked, trials, findings, goal)
 	breakEven(c.Ranked)
 	if len(c.Ranked) == 0 || !c.Ranked[0].Reached {
+		c.Reasons = utmost(f, trials)
 		c.Doubts = doubts(f, trials, c)
 		return c
 	}

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strings"
 
+	"dwindle/engine/diagnose"
 	"dwindle/engine/inspect"
 	"dwindle/engine/trace"
 )
@@ -32,6 +33,15 @@ func reasons(f *inspect.Facts, trials []trace.History, c Choice) []string {
 		out = append(out, s)
 	}
 	return append(out, others(trials, c)...)
+}
+
+// utmost says where the tolerance asks for more than double precision gives.
+func utmost(f *inspect.Facts, trials []trace.History) []string {
+	h, ok := diagnose.Utmost(f, trials)
+	if !ok {
+		return nil
+	}
+	return []string{fmt.Sprintf("%s: %.2g is all that double precision gives here; ask for %.1g", h.Pairing, h.TrueResidual, diagnose.AskFor(h.TrueResidual))}
 }
 
 // others counts those that did not get there.

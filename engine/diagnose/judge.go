@@ -10,6 +10,7 @@ import (
 // Catalogue lists the rules in the order their findings are told, all else
 // equal: first what makes an answer worthless, then what costs, then notes.
 var Catalogue = []Rule{
+	precision,
 	outsideAssumptions,
 	lostDefiniteness,
 	unreachable,

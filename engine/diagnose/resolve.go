@@ -26,6 +26,7 @@ var yields = []yield{
 	{"unreachable-rhs", []string{"restart-stagnation", "accuracy-floor", "divergence", "false-convergence", "stopping-rules", "not-your-rhs"},
 		unprojected, "no residual can get below the part that is out of reach"},
 	{"mechanism", []string{"unreachable-rhs"}, anywhere, "the same part of b, told with its cause"},
+	{"double-precision", consequences, anywhere, "rounding x alone leaves what they show"},
 	{"mechanism", consequences, unsolvable, "what moves freely leaves no answer to converge to"},
 	{"near-null", consequences, unsolvable, "A is singular to rounding"},
 	{"outside-assumptions", []string{"negative-curvature", "accuracy-floor", "restart-stagnation", "divergence", "breakdown",
@@ -197,6 +198,9 @@ func superfluous(c Case, h trace.History) bool {
 func soften(c Case, f *Finding) {
 	h, isTrial := find(c, f.Subject)
 	best, ok := quickest(c)
+	if !ok {
+		best, ok = Utmost(c.Facts, c.Trials)
+	}
 	if c.Race && isTrial && !h.Today && ok && h.Pairing != best.Pairing {
 		f.Weight = Note
 	}
