@@ -94,6 +94,9 @@ func (r Race) hopeless(h trace.History) string {
 	if last.Low < hopelessBy*float64(r.Limit) || last.Total < needsToFall*before.Total {
 		return ""
 	}
+	if math.IsInf(last.Low, 1) {
+		return "its cycles no longer reduce the residual"
+	}
 	return fmt.Sprintf("at this rate it needs %.2g iterations, %d are allowed", last.Low, r.Limit)
 }
 

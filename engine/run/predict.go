@@ -18,6 +18,7 @@ const (
 	cyclesTold = 2    // cycles from which a restarted method is taken to go on as it does
 	steadyLow  = 0.9  // the same for restarted methods, which are steadier
 	steadyHigh = 1.2
+	leastSlope = 1e-3 // decades over half of a restarted curve: less is no way at all
 )
 
 // forecast is what predictions are made of: the method's own number by the
@@ -108,7 +109,7 @@ func (t *Trial) straight(own, target float64) (total float64, ok bool) {
 	k := t.hist.Iterations
 	half, last := t.recordAt(k/2), t.hist.Records[len(t.hist.Records)-1]
 	fall := math.Log10(half.Residual / last.Residual)
-	if !(fall > 0) {
+	if !(fall > leastSlope) {
 		return math.Inf(1), true
 	}
 	each := fall / float64(last.Iter-half.Iter)
