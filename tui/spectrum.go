@@ -180,7 +180,11 @@ func (m *model) normalityLines(f *inspect.Facts, w int) []string {
 		if n.Exact {
 			least = ""
 		}
-		text := fmt.Sprintf("departure from normality %s%s of ||A||_F; field of values: real parts %s .. %s", least, sci(n.Henrici), sci(n.FieldMin), sci(n.FieldMax))
+		text := fmt.Sprintf("departure from normality %s%s of ||A||_F", least, sci(n.Henrici))
+		if n.Normal() {
+			text = "normal to rounding"
+		}
+		text += fmt.Sprintf("; field of values: real parts %s .. %s", sci(n.FieldMin), sci(n.FieldMax))
 		if n.FieldHoldsZero {
 			text += ", zero inside"
 		}

@@ -13,6 +13,9 @@ import (
 var breakdown = Rule{"breakdown", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		for _, e := range events(h, trace.HalfStep) {
+			if !asked(c, h) {
+				break
+			}
 			out = append(out, Finding{Weight: Note, Certainty: inspect.Measured, Subject: h.Pairing,
 				Claim:    fmt.Sprintf("reached the answer in the half step of iteration %d (||s|| = %s of ||r0||): no breakdown, but a code that divides by t't stops with one", e.Iter, num(e.Value)),
 				Advice:   "test ||s|| before the second half step",
@@ -23,19 +26,25 @@ var breakdown = Rule{"breakdown", func(c Case) (out []Finding) {
 		}
 		for _, e := range events(h, trace.Breakdown) {
 			kind := kindOf(e.Quantity)
-			claim := fmt.Sprintf("broke down at iteration %d: %s = %s (normalised) vanished", e.Iter, e.Quantity, num(e.Value))
+			claim := fmt.Sprintf("broke down at iteration %d: %s vanished to rounding (%s, as a cosine)", e.Iter, e.Quantity, num(e.Value))
 			if kind.means != "" {
 				claim += ": " + kind.means
 			}
+			if kind.shadow && c.Facts.Singular.Answer == inspect.Yes {
+				claim += "; A is singular"
+			}
 			out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing, Claim: claim, Advice: kind.remedy,
-				Try: instead(c.Facts), Evidence: []Evidence{{Quantity: e.Quantity, Value: e.Value, Unit: "cosine", Iteration: int(e.Iter)}}})
+				Try: instead(c.Facts), Evidence: []Evidence{{Quantity: e.Quantity, Value: e.Value, Unit: "as a cosine", Iteration: int(e.Iter)}}})
 		}
 	}
 	return out
 }}
 
 // kind is what the loss of one quantity means and what helps.
-type kind struct{ means, remedy string }
+type kind struct {
+	means, remedy string
+	shadow        bool // of a shadow vector
+}
 
 // kindOf tells apart what can vanish: the shadow vector turns orthogonal to
 // the residual, the step meets a zero of the recurrence, or the stabiliser
@@ -43,13 +52,13 @@ type kind struct{ means, remedy string }
 func kindOf(quantity string) kind {
 	switch quantity {
 	case "rho":
-		return kind{"the shadow vector is orthogonal to the residual", "restart with a new shadow vector, or use gmres"}
+		return kind{"the shadow vector is orthogonal to the residual", "restart with a new shadow vector, or use gmres", true}
 	case "rhat'v", "rhat'u", "phat'Ap":
-		return kind{"the shadow vector is orthogonal to A p, so that no step length exists", "restart with a new shadow vector, or use gmres"}
+		return kind{"the shadow vector is orthogonal to A p, so that no step length exists", "restart with a new shadow vector, or use gmres", true}
 	case "omega":
-		return kind{"A s is orthogonal to s, as near an imaginary spectrum", "use gmres, or a stabiliser of more steps: bicgstabl or idr"}
+		return kind{"A s is orthogonal to s, as near an imaginary spectrum", "use gmres, or a stabiliser of more steps: bicgstabl or idr", false}
 	case "R(k,k)":
-		return kind{"A maps the space to itself without an answer: A is singular on it", "use a method of least squares, or fix the null space"}
+		return kind{"A maps the space to itself without an answer: A is singular on it", "use a method of least squares, or fix the null space", false}
 	}
-	return kind{"", "use a method that does not divide by it"}
+	return kind{"", "use a method that does not divide by it", false}
 }

@@ -17,7 +17,7 @@ const falseFactor = 10
 var falseConvergence = Rule{"false-convergence", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		for _, e := range events(h, trace.FalseStop) {
-			if !(e.Value > falseFactor*c.Tol) || h.FloorHits > 0 && !solved(h) && e.Value <= falseFactor*h.BestTrue {
+			if solved(h) && !asked(c, h) || !(e.Value > falseFactor*c.Tol) || h.FloorHits > 0 && !solved(h) && e.Value <= falseFactor*h.BestTrue {
 				continue
 			}
 			f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,

@@ -18,7 +18,7 @@ var noise = Rule{"iteration-noise", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
 		low, high, ok := Counts(h)
 		middle, half := float64(low+high)/2, float64(high-low)/2
-		if !ok || half < noisy*middle || high-low < 2 {
+		if !ok || !asked(c, h) || half < noisy*middle || high-low < 2 {
 			continue
 		}
 		out = append(out, Finding{Weight: Note, Certainty: inspect.Measured, Subject: h.Pairing,
@@ -30,6 +30,13 @@ var noise = Rule{"iteration-noise", func(c Case) (out []Finding) {
 	}
 	return out
 }}
+
+// asked says whether somebody wants to hear of a trial that solved the system:
+// it was asked for, or it is the one to be recommended.
+func asked(c Case, h trace.History) bool {
+	best, ok := quickest(c)
+	return !c.Race || h.Today || ok && h.Pairing == best.Pairing
+}
 
 // Counts returns the fewest and the most iterations that a trial takes when
 // each b_i is changed by one unit in its last place; ok is false where it was

@@ -65,7 +65,7 @@ var pivots = Rule{"pivot", func(c Case) (out []Finding) {
 			continue
 		}
 		b := h.Notes.Broke[0]
-		_, solver, m := cut(h.Pairing)
+		prep, solver, m := cut(h.Pairing)
 		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
 			Claim:    fmt.Sprintf("%s breaks down in %s with pivot %s", m, c.name(b.Row), num(b.Value)),
 			Evidence: []Evidence{{Quantity: "pivot", Value: b.Value, Iteration: none, Rows: []int{b.Row}}}}
@@ -78,19 +78,52 @@ var pivots = Rule{"pivot", func(c Case) (out []Finding) {
 			if solved(h) {
 				f.Claim += fmt.Sprintf(", and takes %s", steps(h.Iterations))
 			}
-			f.Advice = "a positive definite A can do this: keep the shift, or use jacobi or ssor"
+			f.Advice = repaired(c, h)
 			f.Evidence = append(f.Evidence, number("shift", h.Notes.Shift, "of the diagonal"))
 			f.Weight = Note
 		} else {
 			f.Advice = "permute A to a diagonal without zeros, or use a preconditioner without pivots"
 		}
-		if !strings.HasPrefix(m, "jacobi") && c.Facts.DiagZero+c.Facts.DiagMissing == 0 {
-			f.Try = []string{solver + "+jacobi"}
+		if better, ok := unrepaired(c, h); ok {
+			f.Try = []string{better.Pairing}
+		} else if !strings.HasPrefix(m, "jacobi") && c.Facts.DiagZero+c.Facts.DiagMissing == 0 {
+			f.Try = []string{prep + solver + "+jacobi"}
 		}
 		out = append(out, f)
 	}
 	return out
 }}
+
+// repaired is the advice where a shift has made the factors stand.
+func repaired(c Case, h trace.History) string {
+	if c.Facts.Singular.Answer == inspect.Yes {
+		return "A is singular, so that complete factors end in a zero pivot; a factor that is not modified keeps away from it"
+	}
+	if better, ok := unrepaired(c, h); ok {
+		return fmt.Sprintf("use %s, which needs no shift and took %s", better.Pairing, steps(better.Iterations))
+	}
+	prep, solver, _ := cut(h.Pairing)
+	if plain, ok := find(c, prep+solver+"+none"); ok && solved(plain) && !(solved(h) && h.Iterations < plain.Iterations) {
+		return fmt.Sprintf("leave it out: %s took %s", plain.Pairing, steps(plain.Iterations))
+	}
+	return "a positive definite A can do this: keep the shift, or use jacobi or ssor"
+}
+
+// unrepaired is the quickest trial of the same solver that solved the system
+// with factors that needed no repair, and in fewer steps.
+func unrepaired(c Case, h trace.History) (best trace.History, ok bool) {
+	prep, solver, _ := cut(h.Pairing)
+	for _, o := range c.Trials {
+		p, s, m := cut(o.Pairing)
+		if p != prep || s != solver || o.Direct || !solved(o) || len(o.Notes.Broke) > 0 || !factored(m) || solved(h) && o.Iterations >= h.Iterations {
+			continue
+		}
+		if !ok || o.Iterations < best.Iterations {
+			best, ok = o, true
+		}
+	}
+	return best, ok
+}
 
 func find(c Case, pairing string) (trace.History, bool) {
 	for _, h := range c.Trials {

@@ -9,6 +9,13 @@ import (
 	"dwindle/engine/spectrum"
 )
 
+// normalToRounding is the departure from normality, a root of the difference of
+// two sums that are equal for a normal matrix, that rounding alone makes.
+const normalToRounding = 1e-7
+
+// Normal says whether A is normal to rounding.
+func (n *Normality) Normal() bool { return n.Exact && n.Henrici <= normalToRounding }
+
 // balancingSweeps of the bound on the departure from normality, at about
 // balancingWork operations an entry.
 const balancingSweeps, balancingWork = 60, 40

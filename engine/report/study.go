@@ -42,8 +42,11 @@ func studyItems(f *inspect.Facts) []labelled {
 			s.Block.Size, 100*s.Block.Share, s.Block.Size))
 	}
 	for _, l := range s.Lines {
-		add("single rows", fmt.Sprintf("%s of kind %s, diagonal %s where others have %s%s", plural(l.Count, "row", "rows"), l.Kind,
-			short(l.Value), short(l.Other), rowText(l.Rows, f)))
+		others := ""
+		if finite(l.Other) {
+			others = " where others have " + short(l.Other)
+		}
+		add("single rows", fmt.Sprintf("%s of kind %s, diagonal %s%s%s", plural(l.Count, "row", "rows"), l.Kind, short(l.Value), others, rowText(l.Rows, f)))
 	}
 	add("asymmetry", lopsidedText(s.Lopsided, f))
 	add("growth", growthText(s.Growth))
@@ -149,10 +152,13 @@ func normalityText(n *inspect.Normality) string {
 		return ""
 	}
 	s := fmt.Sprintf("departure from normality %s", short(n.Henrici))
-	if !n.Exact {
+	switch {
+	case n.Normal():
+		s = "normal to rounding"
+	case !n.Exact:
 		s = fmt.Sprintf("departure from normality at least %s", short(n.Henrici))
 	}
-	if finite(n.Equilibrated) && n.Equilibrated > 0 {
+	if !n.Normal() && finite(n.Equilibrated) && n.Equilibrated > 0 {
 		least := "at least "
 		if n.Exact {
 			least = ""
@@ -171,7 +177,7 @@ func couplingsText(c *inspect.Couplings) string {
 		return ""
 	}
 	var words []string
-	if c.OneWay > 0 {
+	if c.OneWay >= 0.005 { // else it rounds to no row at all
 		words = append(words, fmt.Sprintf("%.0f %% of rows are coupled far stronger one way, by %s", 100*c.OneWay, short(c.Ratio)))
 	}
 	if c.Jump > 1 {
