@@ -23,7 +23,7 @@ func TestKilledRunReopens(t *testing.T) {
 		t.Fatalf("%v\n%s", err, out)
 	}
 	file := filepath.Join(t.TempDir(), "killed.dwindle")
-	const source = "sample:plate:80"
+	const source = "sample:plate:160" // steepest descent takes some 200 000 iterations: it is under way when it is killed
 	pairs := []string{"sd+none", "richardson+jacobi", "cg+none"} // two slow ones, and one that has ended by then
 	c := exec.Command(bin, "run", source, "--pair", pairs[0], "--pair", pairs[1], "--pair", pairs[2],
 		"--tol", "1e-13", "--iterations", "10000000", "--session", file)
