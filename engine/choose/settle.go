@@ -9,8 +9,10 @@ import (
 )
 
 const (
-	likeWork = 1.3 // ratio of counted work within which trials are taken for alike
-	roughly  = 4.0 // the clock is trusted with this factor, however short the times
+	likeWork = 1.3   // ratio of counted work within which trials are taken for alike
+	roughly  = 4.0   // the clock is trusted with this factor, however short the times,
+	hiccup   = 0.001 // but with no seconds below: a pause of the machine is as long
+	nearby   = 1.25  // times the first's seconds: those further off are not like it, however unsteady
 )
 
 // plainness are the names of methods from the plainest on, as one would
@@ -80,9 +82,9 @@ func alike(first, r Ranked, byWork bool, findings []diagnose.Finding, goal strin
 	}
 	switch {
 	case first.Seconds < tooShort:
-		return r.Seconds < tooShort && r.Seconds <= roughly*first.Seconds
+		return r.Seconds < tooShort && r.Seconds <= roughly*first.Seconds+hiccup
 	case byWork:
 		return r.Low <= first.High
 	}
-	return r.Seconds <= first.High
+	return r.Low <= first.High && r.Seconds <= nearby*first.Seconds
 }

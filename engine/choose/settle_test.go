@@ -32,7 +32,7 @@ func TestShortTimesRankByWork(t *testing.T) {
 			t.Errorf("a gain of %g from microseconds", c.Gain)
 		}
 	}
-	slow := brisk("cg+jacobi", 1000*us, 2, 100) // little work by count, much by the clock
+	slow := brisk("cg+jacobi", 3000*us, 2, 100) // little work by count, much by the clock
 	if c := Rank(f, []trace.History{brisk("cg+ic:0", 60*us, 12, 300), slow}, nil, ""); c.Pairing != "cg+ic:0" {
 		t.Errorf("chose %s, which takes far longer", c.Pairing)
 	}

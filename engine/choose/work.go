@@ -21,20 +21,26 @@ func work(f *inspect.Facts, h trace.History) float64 {
 	n, entries := float64(f.N), math.Max(float64(f.Entries), float64(f.N))
 	p := split(h.Pairing)
 	own := float64(h.Notes.Entries)
-	if bare(p.precond) == "none" {
-		own = 0
-	}
-	use := own
-	if bare(p.precond) == "amg" {
-		use = cycle * own
-	}
-	if degree := strings.TrimPrefix(p.precond, "poly:"); degree != p.precond {
-		d, _, _ := strings.Cut(degree, ",")
-		k, _ := strconv.Atoi(d)
-		use = float64(k) * entries
-	}
-	return float64(h.Products)*entries + float64(h.PrecondUses)*use + float64(h.Iterations)*vectors(p.solver, h.Iterations)*n +
+	return float64(h.Products)*(entries+vectors(p.solver, h.Iterations)*n) + float64(h.PrecondUses)*using(p.precond, own, entries) +
 		making(bare(p.precond), own, n)
+}
+
+// using is the work of one use of a preconditioner with own entries, where A
+// has so many. Of symmetric factors one is kept and two are solved with.
+func using(precond string, own, entries float64) float64 {
+	name, arg, _ := strings.Cut(precond, ":")
+	switch name {
+	case "none":
+		return 0
+	case "ic", "mic", "ict", "cholesky", "ldl", "fsai":
+		return 2 * own
+	case "amg":
+		return cycle * own
+	case "poly":
+		degree, _ := strconv.Atoi(strings.SplitN(arg, ",", 2)[0])
+		return float64(degree) * entries
+	}
+	return own
 }
 
 // making is the work of building a preconditioner with so many entries for
@@ -53,7 +59,7 @@ func making(precond string, entries, n float64) float64 {
 	return entries * row
 }
 
-// vectors is how many vectors an iteration of a method reads and writes.
+// vectors is how many vectors a method reads and writes beside each product.
 func vectors(solver string, iterations int) float64 {
 	name, arg, _ := strings.Cut(solver, ":")
 	switch name {
@@ -66,5 +72,5 @@ func vectors(solver string, iterations int) float64 {
 		}
 		return 4 + 2*math.Min(float64(m), float64(iterations)) // half a basis, read and subtracted twice
 	}
-	return 16
+	return 14
 }

@@ -2,6 +2,7 @@ package run
 
 import (
 	"math"
+	"slices"
 
 	"dwindle/engine/linear"
 	"dwindle/engine/trace"
@@ -108,13 +109,21 @@ func (t *Trial) look(done bool) {
 	t.lanczosAt = k
 	e := t.lanczos.Extremes()
 	c := trace.Condition{Of: "M⁻¹A", Smallest: e.Smallest, Largest: e.Largest,
-		Estimate: e.Condition(), Settled: e.Settled, Negative: e.Negative > 0}
+		Estimate: e.Condition(), Settled: e.Settled, Negative: e.Negative > 0 || t.spoiltM()}
 	if t.method.Precond.Name == "none" {
 		c.Of = "A"
 	}
 	t.mu.Lock()
 	t.hist.Condition = c
 	t.mu.Unlock()
+}
+
+// spoiltM says that M has been seen not to be positive definite: then no
+// coefficient tells of a spectrum.
+func (t *Trial) spoiltM() bool {
+	t.mu.Lock()
+	defer t.mu.Unlock()
+	return slices.ContainsFunc(t.hist.Events, func(e trace.Event) bool { return e.Kind == trace.PrecondIndefinite && e.Value < 0 })
 }
 
 // maxRecords bounds a history; beyond it every other pair of records gives

@@ -30,7 +30,7 @@ type Condition struct {
 	Smallest, Largest float64
 	Estimate          float64 // Largest/Smallest, a lower bound of κ
 	Settled           bool    // both ends have small Ritz residuals
-	Negative          bool    // a Ritz value is negative: no condition estimate
+	Negative          bool    // a Ritz value is negative, or M was seen not to be positive definite: no condition estimate
 }
 
 // Lock is a Ritz value that has settled on an eigenvalue: its residual bound
