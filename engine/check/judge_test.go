@@ -138,3 +138,32 @@ func TestFieldToleranceDecidesAsWell(t *testing.T) {
 		}
 	}
 }
+
+// What rounding could do at most says nothing of a residual far below it: with
+// x = (1, 1) the first row cancels, and the bound is u times 1+1, not b.
+func TestRoundingLevelIsToldAtItOnly(t *testing.T) {
+	m := dense([]float64{1, -1}, []float64{0, 1e-8})
+	level := 3 * unit / (1 - 3*unit) * 2 // of the first row, with |A||x|+|b| = 2 to 1e-8
+	for _, c := range []struct {
+		part float64 // of the level
+		told bool
+	}{{0.5, true}, {0.001, false}, {50, false}} {
+		r := math.Round(c.part*level/0x1p-60) * 0x1p-60
+		a := asked(t, m, []float64{r, 1e-8}, []float64{1, 1}, nil)
+		if text := strings.Join(a.Hints, "\n"); strings.Contains(text, "rounding level") != c.told {
+			t.Errorf("residual %g of the level %g (%g): %s", a.Residual.Two, a.Residual.Plain, c.part, text)
+		}
+	}
+}
+
+// Digits: as many as can be expected are not told as more than that.
+func TestExpectedDigits(t *testing.T) {
+	for _, c := range []struct {
+		error, digits float64
+		want          string
+	}{{1e-13, 12.4, "as many as"}, {1e-12, 12.9, "as many as"}, {1e-5, 7.5, "of about 7 "}} {
+		if text := (&Factor{ErrorInf: c.error, Digits: c.digits}).expected(); !strings.HasPrefix(text, c.want) {
+			t.Errorf("error %g, %g digits: %s", c.error, c.digits, text)
+		}
+	}
+}
