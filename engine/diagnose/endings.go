@@ -121,7 +121,7 @@ var floor = Rule{"accuracy-floor", func(c Case) (out []Finding) {
 			f.Evidence = append(f.Evidence, Evidence{Quantity: "true residual over own number", Value: parts, Iteration: at})
 		}
 		if at := bottom(h); at > 0 && h.Iterations-at > h.Iterations/10 {
-			f.Claim += fmt.Sprintf("; so since it %d: the other %d its are noise", at, h.Iterations-at)
+			f.Claim += fmt.Sprintf("; there since it %d: the other %d its are noise", at, h.Iterations-at)
 		}
 		if deeper, ok := reached(c, h.BestTrue/2); ok {
 			f.Claim += fmt.Sprintf("; %s gets to %s", deeper.Pairing, num(deeper.BestTrue))
