@@ -78,6 +78,8 @@ func candidate(m run.Method, h run.Have, memory, precond int64) choose.Candidate
 	switch {
 	case c.Refused != "" && m.Solver.Needs&linear.NeedsTransposeM != 0 && !m.Precond.Transposes && strings.Contains(c.Refused, m.Precond.Name+" has none"):
 		c.Cause = "the solver needs products with the transpose of M, and this preconditioner has none"
+	case strings.HasPrefix(c.Refused, m.Precond.Name+" needs "):
+		c.Cause = "the preconditioner" + strings.TrimPrefix(c.Refused, m.Precond.Name)
 	case c.Refused != "":
 	case c.SPDM && !m.Precond.Symmetric:
 		c.Refused = fmt.Sprintf("%s needs a symmetric preconditioner; %s is not", c.Solver, c.Precond)

@@ -70,16 +70,15 @@ func group(list []Candidate) string {
 	if len(list) == 1 {
 		return list[0].Pairing
 	}
-	s := fmt.Sprintf("%s + %s", some(solvers, "solvers"), some(preconds, "preconditioners"))
+	s := fmt.Sprintf("%s + %s", some(solvers, 6, "solvers"), some(preconds, 12, "preconditioners"))
 	if len(list) < len(solvers)*len(preconds) {
 		s = fmt.Sprintf("%d pairings of %s", len(list), s)
 	}
 	return s
 }
 
-// some names up to six.
-func some(names []string, what string) string {
-	const most = 6
+// some names up to most.
+func some(names []string, most int, what string) string {
 	if len(names) <= most {
 		return strings.Join(names, ", ")
 	}
