@@ -101,7 +101,9 @@ func (e *exam) settleUnreachable(f *Facts) {
 	switch {
 	case f.Singular.Answer == No:
 		f.Unreachable = fact(No, f.Singular.Certainty, 0, nil, "A is regular")
-	case !e.symmetric || len(free) == 0 || len(free) == mostFree:
+	case len(free) == 0 || len(free) == mostFree:
+	case !e.symmetric:
+		f.Unreachable = unknown("A is singular to rounding; its left null vectors were not looked for")
 	default:
 		f.Unreachable = e.unreachableBy(free)
 	}

@@ -112,9 +112,9 @@ func lowText(x inspect.Spectrum, singular bool) string {
 		return short(x.Smallest)
 	}
 	if next := nextLow(x); next > 0 {
-		low += ", next " + short(next)
+		low += ", next " + short(next) + ","
 	}
-	return low + ","
+	return low
 }
 
 // nextLow is the first value at the low end that is not zero to rounding; NaN
