@@ -20,7 +20,7 @@ var strut = Sample{
 	},
 	Size:   func(v linear.Values) (int, int) { return 2 * v.Int("n"), 12 * v.Int("n") },
 	Make:   makeStrut,
-	Expect: []string{"not-definite", "restoring-shift", "accuracy-floor", "restart-stagnation"},
+	Expect: []string{"not-definite", "restoring-shift", "ill-conditioned", "accuracy-floor", "restart-stagnation"},
 }
 
 // Buckling is the load at which the strut of length 1 and bending stiffness 1

@@ -3,6 +3,7 @@ package diagnose
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"dwindle/engine/inspect"
@@ -109,13 +110,18 @@ func repaired(c Case, h trace.History) string {
 	return "a positive definite A can do this: keep the shift, or use jacobi or ssor"
 }
 
+// incompleteFactors says whether these are factors that drop entries.
+func incompleteFactors(name string) bool {
+	return slices.Contains([]string{"ic", "mic", "ict", "ilu", "milu", "ilut", "ilutp"}, name)
+}
+
 // unrepaired is the quickest trial of the same solver that solved the system
 // with factors that needed no repair, and in fewer steps.
 func unrepaired(c Case, h trace.History) (best trace.History, ok bool) {
 	prep, solver, _ := cut(h.Pairing)
 	for _, o := range c.Trials {
 		p, s, m := cut(o.Pairing)
-		if p != prep || s != solver || o.Direct || !solved(o) || len(o.Notes.Broke) > 0 || !factored(m) || solved(h) && o.Iterations >= h.Iterations {
+		if p != prep || s != solver || o.Direct || !solved(o) || len(o.Notes.Broke) > 0 || !incompleteFactors(kindOfM(m)) || solved(h) && o.Iterations >= h.Iterations {
 			continue
 		}
 		if !ok || o.Iterations < best.Iterations {

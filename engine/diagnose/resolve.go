@@ -47,6 +47,8 @@ var yields = []yield{
 	{"restart-stagnation", []string{"restart-length"}, samePairing, "a cycle that stands still foretells nothing"},
 	{"mechanism", []string{"few-correct-digits"}, anywhere, "where A hardly holds x, digits mean nothing"},
 	{"near-null", []string{"few-correct-digits"}, anywhere, "the digits of the same condition, told once"},
+	{"row-scaling", []string{"ill-conditioned"}, anywhere, "it tells the condition after equilibration already"},
+	{"double-precision", []string{"ill-conditioned"}, anywhere, "the same condition, told by what it does"},
 	{"today-beaten", []string{"preconditioner-costs-more"}, samePairing, "the same times, told once"},
 }
 

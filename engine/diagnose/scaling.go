@@ -30,7 +30,7 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 	before, after, share := byScaling(f.Study)
 	helped, words, gains := scaledTrials(c)
 	wide := span.Min > 0 && span.Max/span.Min >= scaleLimit
-	if !wide && share == "" {
+	if share == "" && (!wide || !helped && gainsLittle(f, before, after)) {
 		return nil
 	}
 	try := []string{"scale/gmres:30+none"}
@@ -72,6 +72,17 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 	foreseeScaled(c, &g)
 	return []Finding{g}
 }}
+
+// littleGain is the part of the condition that equilibration must take away
+// before it can halve the count of cg, which goes with the root.
+const littleGain = 4
+
+// gainsLittle says whether A is known to be hardly better conditioned once it
+// is equilibrated.
+func gainsLittle(f *inspect.Facts, before, after *inspect.Spectrum) bool {
+	return f.Singular.Answer != inspect.Yes && before != nil && before.Condition > 0 && after.Condition > 0 &&
+		before.Condition < littleGain*after.Condition
+}
 
 // scalingGain is by how much scaling must cut a count to be called a help.
 const scalingGain = 1.5
@@ -121,7 +132,9 @@ func foreseeScaled(c Case, g *Finding) {
 	if !ok {
 		return
 	}
-	g.Claim += fmt.Sprintf("; %s is foreseen to take about %d its", scaled, its)
+	if h, ran := find(c, scaled); !ran || !solved(h) {
+		g.Claim += fmt.Sprintf("; %s is foreseen to take about %d its", scaled, its)
+	}
 	g.Evidence = append(g.Evidence, number("iterations of "+scaled, float64(its), "foreseen"))
 	g.Predicts = []Predicted{{Pairing: scaled, Quantity: "iterations", Value: float64(its)}}
 }
