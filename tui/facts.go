@@ -3,6 +3,7 @@ package tui
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"dwindle/engine/inspect"
@@ -73,16 +74,22 @@ func sizeRows(f *inspect.Facts) []factRow {
 	return append(rows, factRow{"bandwidth", count(f.Bandwidth), "", ""})
 }
 
+// labelledFact is a fact under its words.
+type labelledFact struct {
+	label string
+	fact  inspect.Fact
+}
+
 // answerRows are the facts with a yes or a no.
 func answerRows(f *inspect.Facts) []factRow {
-	list := []struct {
-		label string
-		fact  inspect.Fact
-	}{
+	list := []labelledFact{
 		{"symmetric", f.Symmetric}, {"pattern symmetric", f.PatternSymmetric},
 		{"positive definite", f.PositiveDefinite}, {"negative definite", f.NegativeDefinite},
 		{"singular", f.Singular}, {"row sums zero", f.RowSumsZero}, {"column sums zero", f.ColSumsZero},
 		{"b out of reach", f.Unreachable}, {"one triangle only", f.TriangleOnly},
+	}
+	if f.SymmetricPart.Answer != "" {
+		list = slices.Insert(list, 3, labelledFact{"(A+A^T)/2 definite", f.SymmetricPart})
 	}
 	var rows []factRow
 	for _, l := range list {
