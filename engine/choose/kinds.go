@@ -35,7 +35,7 @@ func (r Race) kinds() []string {
 		}
 	}
 	for i, k := range kindsInOrder {
-		if i == 3 && couldBeRegular(r.Facts) {
+		if i == 3 && couldBeRegular(r.Facts) && r.prefix() == "" {
 			add("richardson", r.factorisation())
 		}
 		if base == "cg" && slices.Contains(twins, k) {

@@ -27,7 +27,7 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 			continue
 		}
 		r := ranked(h)
-		r.Work = work(f, h)
+		r.Work, r.shaky = work(f, h), h.Direct && f.Singular.Answer == inspect.Yes
 		c.Ranked = append(c.Ranked, r)
 	}
 	slices.SortStableFunc(c.Ranked, func(a, b Ranked) int { return order(a, b, findings, goal) })
@@ -113,6 +113,9 @@ func lessFirst(a, b float64) int {
 func class(r Ranked, findings []diagnose.Finding) int {
 	if !r.Reached {
 		return 2
+	}
+	if r.shaky {
+		return 1
 	}
 	for _, f := range findings {
 		if f.Subject == r.Pairing && slices.Contains(doubtful, f.Rule) {

@@ -56,3 +56,19 @@ func TestPlainestOfEquals(t *testing.T) {
 		t.Errorf("chose %s", c.Pairing)
 	}
 }
+
+// Factors of a matrix that is singular to rounding are no recommendation,
+// however quick.
+func TestNoFactorsOfSingular(t *testing.T) {
+	f := facts(inspect.Yes, inspect.No)
+	direct := trial("richardson:1+cholesky", trace.Converged, 0, time.Second)
+	direct.Direct = true
+	trials := []trace.History{direct, trial("cg+ic:0", trace.Converged, 0, 2*time.Second)}
+	if c := Rank(f, trials, nil, ""); c.Pairing != "richardson:1+cholesky" {
+		t.Errorf("chose %s of a regular matrix", c.Pairing)
+	}
+	f.Singular.Answer = inspect.Yes
+	if c := Rank(f, trials, nil, ""); c.Pairing != "cg+ic:0" {
+		t.Errorf("chose %s of a singular matrix", c.Pairing)
+	}
+}
