@@ -66,7 +66,7 @@ func (t *Trial) judgeAudit(rec trace.Record, own float64, a *audit) {
 	}
 	passed := t.limits.Target.relative(a.true2, scales{b: t.sizes.b, r0: e.firstTrue,
 		a: t.sizes.aInf, x: a.xInf, bMax: t.sizes.bInf, r: a.rInf})
-	t.forecast.seeAudit(own, passed)
+	t.forecast.seeAudit(int(rec.Iter), own, passed)
 	switch {
 	case math.IsNaN(a.true2) || math.IsInf(a.true2, 0):
 		t.end(trace.Diverged, "the true residual is not a finite number")

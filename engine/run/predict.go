@@ -36,13 +36,20 @@ type forecast struct {
 	first float64 // log10 of the own number at the start
 	low   float64 // log10 of the smallest own number so far
 	gap   float64 // log10 of the true number over the own one at the last audit
+	truly float64 // decades that the true number has fallen at the best audit
+	begin float64 // log10 of the true number at the start
 }
 
 // seeAudit takes in how far the own number was from the true one.
-func (f *forecast) seeAudit(own, truth float64) {
-	if own > 0 && truth > 0 && !math.IsInf(own, 0) && !math.IsInf(truth, 0) {
-		f.gap = math.Log10(truth / own)
+func (f *forecast) seeAudit(k int, own, truth float64) {
+	if !(own > 0 && truth > 0) || math.IsInf(own, 0) || math.IsInf(truth, 0) {
+		return
 	}
+	f.gap = math.Log10(truth / own)
+	if k == 0 {
+		f.begin = math.Log10(truth)
+	}
+	f.truly = math.Max(f.truly, f.begin-math.Log10(truth))
 }
 
 // see takes in the own number of one iteration.
@@ -58,7 +65,8 @@ func (f *forecast) see(k int, own float64) {
 }
 
 // predict tells, at growing iterations, how many iterations the trial is
-// expected to take: nothing before its curve has begun to fall.
+// expected to take: nothing before its curve has begun to fall, by its own
+// number and by the true one.
 func (t *Trial) predict(own float64) {
 	f, k := &t.forecast, t.hist.Iterations
 	f.see(k, own)
@@ -68,6 +76,7 @@ func (t *Trial) predict(own float64) {
 	f.next = int(math.Ceil(toldAgain * float64(k)))
 	goal := math.Log10(t.limits.Target.Tol)
 	p, told := f.tell(k, goal)
+	told = told && f.truly >= leastFall
 	if total, ok := t.straight(own, goal-f.gap); ok {
 		p, told = around(k, total, steadyLow, steadyHigh), true
 	}

@@ -40,6 +40,16 @@ func TestNothingIsToldOfACurveThatHasNotFallen(t *testing.T) {
 			t.Errorf("%+v tells %+v", f, p)
 		}
 	}
+	// nor one whose own number, in another norm, has fallen alone
+	f := forecast{}
+	f.seeAudit(0, 1, 1)
+	f.seeAudit(500, 1e-3, 0.65)
+	if f.truly >= leastFall {
+		t.Errorf("from 1 to 0.65 is %g decades", f.truly)
+	}
+	if f.seeAudit(600, 1e-4, 0.05); !(f.truly >= 1.3) {
+		t.Errorf("from 1 to 0.05 is %g decades", f.truly)
+	}
 	// on a cyclic shift the residual of GMRES stays 1 for n-1 steps (Brown 1991)
 	h := finish(t, sample(t, "shift:40"), limits(1e-8, 30), ticking(time.Millisecond), "gmres:50+none")[0]
 	if h.Stop != trace.IterationLimit || len(h.Predictions) > 0 {
