@@ -51,13 +51,16 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 	differ := fmt.Sprintf("rows differ in size by %s (%s to %s)", num(span.Max/span.Min), c.name(rows[0]), c.name(rows[1]))
 	if share == "" {
 		switch {
-		case helped:
-			g.Claim = differ + ": " + words
 		case f.Singular.Answer != inspect.Yes && before != nil && before.Condition > 0 && after.Condition > 0:
 			g.Claim = fmt.Sprintf("%s; the condition of %s is %s, and %s once rows and columns are equilibrated",
 				differ, before.Of, num(before.Condition), num(after.Condition))
+		case helped:
+			g.Claim = differ
 		default:
 			g.Claim = differ + ": a norm over all of them hides the small ones"
+		}
+		if helped {
+			g.Claim += "; " + words
 		}
 		foreseeScaled(c, &g)
 		return []Finding{g}
