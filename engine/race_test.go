@@ -2,6 +2,7 @@ package engine
 
 import (
 	"slices"
+	"strings"
 	"testing"
 	"time"
 
@@ -96,4 +97,27 @@ func TestRaceLeavesIteratesAlone(t *testing.T) {
 			}
 		}
 	}
+}
+
+// What a finding about the system offers is raced: of an indefinite matrix
+// that a shift makes definite, the factors of the shifted one.
+func TestRaceTriesWhatFindingsOffer(t *testing.T) {
+	v := ended(t, "sample:acoustics", Options{})
+	if !slices.ContainsFunc(v.Trials, func(u Trial) bool { return strings.HasPrefix(u.History.Pairing, "shift:") }) {
+		t.Error("no pairing with a shift was raced")
+	}
+}
+
+// The findings name the winner that the choice names.
+func TestOneWinner(t *testing.T) {
+	v := ended(t, "sample:plate:40", Options{Today: "sd+none", Iterations: 300})
+	for _, f := range v.Findings {
+		if f.Rule == "today-beaten" {
+			if len(f.Try) != 1 || f.Try[0] != v.Choice.Pairing {
+				t.Errorf("%s, but the choice is %s", f.Claim, v.Choice.Pairing)
+			}
+			return
+		}
+	}
+	t.Errorf("nothing beats steepest descent: %+v", v.Findings)
 }
