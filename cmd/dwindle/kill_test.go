@@ -23,7 +23,7 @@ func TestKilledRunReopens(t *testing.T) {
 		t.Fatalf("%v\n%s", err, out)
 	}
 	file := filepath.Join(t.TempDir(), "killed.dwindle")
-	const source = "sample:plate:160" // steepest descent takes some 200 000 iterations: it is under way when it is killed
+	const source = "sample:plate:160"                            // steepest descent takes some 200 000 iterations: it is under way when it is killed
 	pairs := []string{"sd+none", "richardson+jacobi", "cg+none"} // two slow ones, and one that has ended by then
 	c := exec.Command(bin, "run", source, "--pair", pairs[0], "--pair", pairs[1], "--pair", pairs[2],
 		"--tol", "1e-13", "--iterations", "10000000", "--session", file)
@@ -33,7 +33,8 @@ func TestKilledRunReopens(t *testing.T) {
 	}
 	started := time.Now()
 	moving := func(s engine.Snapshot) bool {
-		return len(s.Trials) == 3 && s.Trials[0].History.Iterations > 20 && s.Trials[1].History.Iterations > 20 && s.Elapsed > 2*time.Second
+		return len(s.Trials) == 3 && s.Trials[0].History.Iterations > 20 && s.Trials[1].History.Iterations > 20 &&
+			s.Trials[2].History.Stop.Ended() && s.Elapsed > 2*time.Second
 	}
 	for !moving(reopen(t, file)) {
 		if time.Since(started) > 30*time.Second {
