@@ -26,7 +26,7 @@ var breakdown = Rule{"breakdown", func(c Case) (out []Finding) {
 		}
 		for _, e := range events(h, trace.Breakdown) {
 			kind := kindOf(e.Quantity)
-			claim := fmt.Sprintf("broke down at iteration %d: %s vanished to rounding (%s, as a cosine)", e.Iter, e.Quantity, num(e.Value))
+			claim := fmt.Sprintf("broke down at iteration %d: %s = %s as a cosine, zero to rounding", e.Iter, e.Quantity, num(e.Value))
 			if kind.means != "" {
 				claim += ": " + kind.means
 			}

@@ -3,8 +3,10 @@ package diagnose
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
 )
 
 // A pattern counts as a mesh for these rules from this dimension on: on lines
@@ -85,6 +87,14 @@ func oneLaw(g *inspect.Growth) bool {
 	return high-low <= sameSlope
 }
 
+// multilevelRan says whether a multilevel preconditioner has been measured.
+func multilevelRan(c Case) bool {
+	return slices.ContainsFunc(c.Trials, func(h trace.History) bool {
+		_, _, m := cut(h.Pairing)
+		return kindOfM(m) == "amg" && h.Stop.Ended()
+	})
+}
+
 // growth: iterations of a one-level pairing grow with the mesh.
 var growth = Rule{"mesh-growth", func(c Case) []Finding {
 	f, k := c.Facts, onMesh(c.Facts)
@@ -113,9 +123,10 @@ var growth = Rule{"mesh-growth", func(c Case) []Finding {
 	}
 	if oneLaw(g) {
 		ten := float64(g.Iterations[last]) * math.Pow(10*float64(f.N)/float64(g.Unknowns[last]), g.Exponent)
-		out.Claim += fmt.Sprintf(" as n^%.2f: the condition of a mesh; by that law ten times the unknowns would take about %.0f (estimated)", g.Exponent, ten)
+		out.Claim = fmt.Sprintf("iterations of %s grow as n^%.2f (%s, parts of this system): the condition of a mesh; by that law ten times the unknowns would take about %.0f (estimated)",
+			g.Pairing, g.Exponent, sizes, ten)
 	}
-	if best, ok := quickest(c); ok {
+	if best, ok := quickest(c); ok && multilevelRan(c) {
 		out.Try = []string{best.Pairing}
 		out.Advice = fmt.Sprintf("at this size %s is the quickest that ran (%s, %s)", best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
 		if _, _, m := cut(best.Pairing); kindOfM(m) != "amg" {

@@ -92,6 +92,102 @@ func TestAdviceKnowsWhatHasRun(t *testing.T) {
 	}
 }
 
+// No try is offered whose preconditioner could not be built in this run, on the
+// system prepared alike; prepared otherwise it is.
+func TestNoTryThatCannotBeBuilt(t *testing.T) {
+	f := definite()
+	f.Symmetric = inspect.Fact{Answer: inspect.No}
+	f.DiagZero = 3
+	const try = "scale/gmres:30+ilutp:1e-3,10,0.1"
+	for prep, want := range map[string]bool{"": true, "scale/": false} {
+		h := solvedTrial(prep+"bicgstab+ilutp:1e-3,10,0.1", 0, time.Millisecond)
+		h.Stop, h.Notes.Broke = trace.BrokeDown, []trace.Pivot{{Row: 4}}
+		if g := said(caseOf(f, h))["zero-diagonal"]; slices.Contains(g.Try, try) != want {
+			t.Errorf("after %s broke down at set-up it offers %v", h.Pairing, g.Try)
+		}
+	}
+}
+
+// Factors that a shift has made stand are advised of by what was measured: a
+// factor that needed none, or no preconditioner where that took fewer steps.
+func TestRepairedPivots(t *testing.T) {
+	shifted := solvedTrial("cg+mic:0", 261, time.Millisecond)
+	shifted.Notes.Broke, shifted.Notes.Shift = []trace.Pivot{{Row: 7}}, 1e-4
+	plain, whole := solvedTrial("cg+none", 36, time.Millisecond), solvedTrial("cg+ic:0", 19, time.Millisecond)
+	singular := definite()
+	singular.Singular = inspect.Fact{Answer: inspect.Yes}
+	for _, c := range []struct {
+		words string
+		said  Case
+	}{
+		{"keep the shift", caseOf(definite(), shifted)},
+		{"leave it out: cg+none took 36", caseOf(definite(), shifted, plain)},
+		{"use cg+ic:0, which needs no shift and took 19", caseOf(definite(), shifted, plain, whole)},
+		{"A is singular", caseOf(singular, shifted, plain, whole)},
+	} {
+		if f := said(c.said)["pivot"]; !strings.Contains(f.Advice, c.words) {
+			t.Errorf("advice %q, want %q", f.Advice, c.words)
+		}
+	}
+}
+
+// In a race nobody hears of the noise, the half step or the false norm of a
+// trial that solved the system and is not recommended.
+func TestNobodyAskedForIt(t *testing.T) {
+	best, other := solvedTrial("cg+ic:0", 20, time.Millisecond), solvedTrial("bicgstab+spai", 42, time.Second)
+	other.Counts = []int{30, 50, 44}
+	other.Events = []trace.Event{{Iter: 3, Kind: trace.HalfStep, Value: 1e-17}, {Iter: 40, Kind: trace.FalseStop, Value: 2.6e-6, Scale: 9e-9}}
+	c := caseOf(definite(), best, other)
+	rules := []string{"iteration-noise", "breakdown", "false-convergence"}
+	for _, r := range rules {
+		if said(c)[r].Claim == "" {
+			t.Errorf("%s is silent where the trial was asked for", r)
+		}
+	}
+	c.Race = true
+	for _, r := range rules {
+		if f := said(c)[r]; f.Claim != "" {
+			t.Errorf("%s speaks in a race: %s", r, f.Claim)
+		}
+	}
+	c.Chosen = other.Pairing
+	for _, r := range rules {
+		if said(c)[r].Claim == "" {
+			t.Errorf("%s is silent of the pairing that is recommended", r)
+		}
+	}
+}
+
+// Rounding in factors is no want of linearity or symmetry; in what is no factor
+// it is told.
+func TestFactorsAreLinear(t *testing.T) {
+	for m, want := range map[string]bool{"cholesky": false, "ilu:0": false, "from:a/b.mtx/ilu:0": false, "given:a/b.mtx": true} {
+		h := solvedTrial("cg+"+m, 20, time.Millisecond)
+		h.FixedM, h.Probe = true, &trace.MProbe{Nonlinear: 0.16}
+		if _, ok := said(caseOf(definite(), h))["preconditioner-not-linear"]; ok != want {
+			t.Errorf("%s called not linear: %v, want %v", m, ok, want)
+		}
+	}
+}
+
+// Rows of different size are a note where nothing shows that scaling helps, and
+// a drag where a trial does.
+func TestScalingIsBlamedWhereItHelps(t *testing.T) {
+	f := definite()
+	f.RowNorm = inspect.Range{Min: 1e-3, Max: 1e4}
+	plain, scaled := solvedTrial("cg+none", 773, time.Second), solvedTrial("cg+jacobi", 232, time.Second)
+	if g := said(caseOf(f, plain))["row-scaling"]; g.Weight != Note {
+		t.Errorf("unproved: %v", g)
+	}
+	if g := said(caseOf(f, plain, scaled))["row-scaling"]; g.Weight != Drag || !strings.Contains(g.Claim, "cg+none took 773 iterations, cg+jacobi 232") {
+		t.Errorf("shown: %v", g)
+	}
+	scaled.Iterations = 700
+	if g := said(caseOf(f, plain, scaled))["row-scaling"]; g.Weight != Note {
+		t.Errorf("no help: %v", g)
+	}
+}
+
 // In a race, what befalls a trial that another one has outdone is a note; today's
 // pairing keeps its weight, and so does every trial that was asked for.
 func TestRaceSoftensWhatNobodyAskedFor(t *testing.T) {
