@@ -52,6 +52,9 @@ func leftWords(h *trace.History) string {
 // forecastWords tells the prediction in full.
 func forecastWords(h *trace.History) string {
 	p, ok := forecast(h)
+	if !ok && h.Unfallen() && !h.Stop.Ended() {
+		return "nothing predicted: its curve has not begun to fall"
+	}
 	if !ok {
 		return ""
 	}

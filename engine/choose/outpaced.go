@@ -13,9 +13,6 @@ const (
 	patient     = 5.0 // the same where the choice does not go by seconds
 	hopelessBy  = 3.0 // predicted iterations over the limit of a trial beyond hope
 	needsToFall = 0.9 // of the prediction before: falling by more, a trial is gaining
-	// shownNothing is the iterations after which a trial without a prediction
-	// has shown no fall.
-	shownNothing = 4
 )
 
 // lost returns the trials that can no longer win. Before anything has
@@ -73,10 +70,10 @@ func (r Race) outpaced(h, best trace.History) string {
 func (r Race) toGo(h trace.History) string {
 	n := len(h.Predictions)
 	switch {
-	case n == 0 && h.Iterations < shownNothing:
-		return ""
-	case n == 0:
+	case h.Unfallen():
 		return " and has not begun to fall"
+	case n == 0:
+		return ""
 	case math.IsInf(h.Predictions[n-1].Total, 1) || r.Limit > 0 && h.Predictions[n-1].Total > float64(r.Limit):
 		return " and will not get there in the iterations it has"
 	}

@@ -176,6 +176,13 @@ func (h *History) Last() (Record, bool) {
 	return h.Records[len(h.Records)-1], true
 }
 
+// Unfallen says that the trial has iterated and its curve has shown no fall,
+// so that nothing is foretold of it.
+func (h *History) Unfallen() bool {
+	const few = 4 // the first iterations are too few to say so
+	return len(h.Predictions) == 0 && h.Iterations >= few && !h.Direct
+}
+
 // Attainable returns Floor where nothing contradicts it: NaN where the true
 // residual came below it, and where it is so high that it says nothing.
 func (h *History) Attainable() float64 {
