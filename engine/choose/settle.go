@@ -36,8 +36,8 @@ func place(method string) int {
 }
 
 // settle puts the trials that the clock does not tell apart from the first in
-// an order of their own: those too short for the clock by counted work, others
-// by how plain they are, and trials of much the same work by that as well.
+// an order of their own: by counted work, and those of much the same work by
+// how plain they are.
 func settle(list []Ranked, trials []trace.History, findings []diagnose.Finding, goal string) {
 	if len(list) == 0 || !list[0].Reached || goal == Memory {
 		return
@@ -49,10 +49,6 @@ func settle(list []Ranked, trials []trace.History, findings []diagnose.Finding, 
 		end++
 	}
 	head := list[:end]
-	if !byWork {
-		slices.SortStableFunc(head, func(a, b Ranked) int { return plainer(a.Pairing, b.Pairing) })
-		return
-	}
 	slices.SortStableFunc(head, func(a, b Ranked) int { return cmp.Compare(a.Work, b.Work) })
 	same := 1
 	for same < len(head) && head[same].Work <= likeWork*head[0].Work {

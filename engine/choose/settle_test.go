@@ -22,7 +22,7 @@ func TestShortTimesRankByWork(t *testing.T) {
 	f := facts(inspect.Yes, inspect.Yes)
 	f.Entries = 500
 	for _, clock := range [][3]time.Duration{{90 * us, 60 * us, 50 * us}, {50 * us, 60 * us, 90 * us}} {
-		trials := []trace.History{brisk("cg+none", clock[0], 60, 0), brisk("cg+ic:0", clock[1], 12, 300), brisk("cg+milu:0", clock[2], 12, 320)}
+		trials := []trace.History{brisk("cg+none", clock[0], 200, 0), brisk("cg+ic:0", clock[1], 12, 300), brisk("cg+milu:0", clock[2], 12, 320)}
 		trials[0].Today = true
 		c := Rank(f, trials, nil, "")
 		if c.Pairing != "cg+ic:0" {

@@ -10,8 +10,9 @@ import (
 )
 
 const (
-	cycle   = 5  // passes over every level of a cycle: smoothing, residual, transfer
-	coarsen = 60 // the same of making the levels
+	cycle     = 5   // passes over every level of a cycle: smoothing, residual, transfer
+	eachRow   = 200 // of what is built
+	eachEntry = 100
 )
 
 // work counts what a trial has done, in numbers touched: its products with A,
@@ -45,18 +46,23 @@ func using(precond string, own, entries float64) float64 {
 
 // making is the work of building a preconditioner with so many entries for
 // n rows: a factor's rows are each combined with others of its length, an
-// approximate inverse solves a small dense system a row.
+// approximate inverse solves a small dense system a row. What is done entry by
+// entry, with indices and memory, counts as much as many numbers of a product.
 func making(precond string, entries, n float64) float64 {
 	row := entries / math.Max(1, n)
 	switch precond {
-	case "none", "jacobi", "ssor", "sgs", "sor", "gs", "poly":
-		return entries
+	case "none":
+		return 0
+	case "jacobi", "ssor", "sgs", "sor", "gs", "poly":
+		return entries + eachRow*n/10
 	case "fsai", "spai":
-		return entries * row * row
+		return eachRow*n + eachEntry*entries + entries*row*row
+	case "ict", "ilut", "ilutp":
+		return eachRow*n + 2*eachEntry*entries + entries*row // and sorting
 	case "amg":
-		return coarsen * entries
+		return eachRow*n + 2*eachEntry*entries
 	}
-	return entries * row
+	return eachRow*n + eachEntry*entries + entries*row
 }
 
 // vectors is how many vectors a method reads and writes beside each product.
