@@ -12,7 +12,7 @@ import (
 const (
 	cycle     = 5   // passes over every level of a cycle: smoothing, residual, transfer
 	eachRow   = 200 // of what is built
-	eachEntry = 100
+	eachEntry = 50
 )
 
 // work counts what a trial has done, in numbers touched: its products with A,
