@@ -207,3 +207,17 @@ func TestOutcomes(t *testing.T) {
 		t.Errorf("got %+v", got)
 	}
 }
+
+// What is better by the clock from the first right-hand side on, and was not
+// told apart, overturns nothing.
+func TestNothingIsOverturnedFromTheStart(t *testing.T) {
+	first := Ranked{Pairing: "cg+jacobi", Reached: true, Setup: 1e-4, For: [3]float64{2e-4, 1.1e-3, 0.1001}}
+	other := Ranked{Pairing: "cg+mic", Reached: true, Setup: 5e-5, For: [3]float64{1e-4, 5.5e-4, 0.05005}}
+	if got := overturned(Choice{Ranked: []Ranked{first, other}}); len(got) != 0 {
+		t.Errorf("told: %q", got)
+	}
+	other.Setup, other.For = 1e-2, [3]float64{1.005e-2, 1.05e-2, 0.06}
+	if got := overturned(Choice{Ranked: []Ranked{first, other}}); len(got) != 1 {
+		t.Errorf("told: %q", got)
+	}
+}

@@ -52,6 +52,9 @@ func overturned(c Choice) []string {
 			continue
 		}
 		from := (best.Setup - first.Setup) / (first.For[i] - first.Setup - (best.For[i] - best.Setup)) * float64(Sides[i])
+		if from < 1 { // by the clock it is better from the first on, and was not told apart
+			continue
+		}
 		return []string{fmt.Sprintf("for %.0f right-hand sides and more, %s is better: %s for %d, against %s", math.Floor(from)+1, best.Pairing,
 			took(best.For[i]), Sides[i], took(first.For[i]))}
 	}
