@@ -94,6 +94,7 @@ func FuzzVector(f *testing.F) {
 	f.Add([]byte("1\n2\n3\n"), 3, 0)
 	f.Add([]byte("# c\n1 4\n2\t5\n3 6\n"), 3, 2)
 	f.Add([]byte(mmBanner("array real general")+"3 2\n1\n2\n3\n4\n5\n6\n"), 3, 2)
+	f.Add([]byte(mmBanner("array real general")+"3 0\n"), 3, 0)
 	f.Add([]byte(mmBanner("array real general")+"3 9999999\n1\n2\n3\n4\n5\n6\n"), 3, 2)
 	f.Fuzz(func(t *testing.T, data []byte, n, col int) {
 		if bytes.HasPrefix(data, []byte{0x1f, 0x8b}) || col < 0 || n < 1 {

@@ -104,6 +104,9 @@ type picker struct {
 
 // setColumns takes note of how many columns the file has.
 func (p *picker) setColumns(cols int) error {
+	if cols < 1 {
+		return p.l.fail("the file holds no column")
+	}
 	if p.cols = cols; p.col > cols {
 		return p.l.fail("column %d does not exist; the file has %d", p.col, cols)
 	}
