@@ -61,6 +61,7 @@ func TestVectorBad(t *testing.T) {
 		{"no such column", "1 2\n3 4\n5 6\n", ":3", 1, "column 3 does not exist; the file has 2"},
 		{"no such array column", mmBanner("array real general") + "3 1\n1\n2\n3\n", ":2", 2, "column 2 does not exist"},
 		{"column 0", "1\n2\n3\n", ":0", 0, "counted from 1"},
+		{"array without columns", mmBanner("array real general") + "3 0\n", "", 2, "holds no column"},
 		{"array of another length", mmBanner("array real general") + "2 1\n1\n2\n", "", 2, "has 2 rows; the matrix has 3"},
 		{"a matrix", mm + "3 3 1\n1 1 1\n", "", 2, "array format"},
 		{"short array", mmBanner("array real general") + "3 1\n1.0\n2.00\n", "", 4, "ends after 2"},
