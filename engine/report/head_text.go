@@ -3,6 +3,7 @@ package report
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"dwindle/engine/choose"
@@ -41,12 +42,16 @@ func headItems(d Document) []item {
 }
 
 // leading returns the findings with blockers first and notes last, otherwise
-// in the order given. That b is not the user's is told on other lines.
+// in the order given. That b is not the user's is told on other lines, and so
+// is by how much today's pairing is beaten, where there is a cause to tell.
 func leading(fs []diagnose.Finding) []diagnose.Finding {
+	cause := slices.ContainsFunc(fs, func(f diagnose.Finding) bool {
+		return f.Weight != diagnose.Note && f.Rule != "today-beaten"
+	})
 	var out []diagnose.Finding
 	for _, w := range []diagnose.Weight{diagnose.Blocker, diagnose.Drag, diagnose.Note} {
 		for _, f := range fs {
-			if f.Weight == w && f.Rule != "not-your-rhs" {
+			if f.Weight == w && f.Rule != "not-your-rhs" && !(cause && f.Rule == "today-beaten") {
 				out = append(out, f)
 			}
 		}
