@@ -2,7 +2,6 @@ package check
 
 import (
 	"math"
-	"sort"
 	"strconv"
 
 	"dwindle/engine/linear"
@@ -22,23 +21,9 @@ func (w *work) componentwise() {
 			out.Unsolved++
 		}
 		if e > 0 {
-			out.Worst = keepLargest(out.Worst, trace.RowShare{Row: i, Share: e})
+			out.Worst = trace.KeepLargest(out.Worst, trace.RowShare{Row: i, Share: e})
 		}
 	}
-}
-
-// keepLargest inserts s into rows, which stay the largest in falling order.
-func keepLargest(rows []trace.RowShare, s trace.RowShare) []trace.RowShare {
-	at := sort.Search(len(rows), func(k int) bool { return rows[k].Share < s.Share })
-	if at == trace.MaxRows {
-		return rows
-	}
-	if len(rows) < trace.MaxRows {
-		rows = append(rows, s)
-	}
-	copy(rows[at+1:], rows[at:])
-	rows[at] = s
-	return rows
 }
 
 // fields holds the residual against b field by field, where fields are known.

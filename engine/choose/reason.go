@@ -57,7 +57,7 @@ func others(trials []trace.History, c Choice) []string {
 	}
 	var out []string
 	if outpaced > 0 {
-		out = append(out, fmt.Sprintf("%d of %d pairings were behind for good and ended early", outpaced, len(c.Ranked)))
+		out = append(out, fmt.Sprintf("%d of %d pairings behind for good, ended early", outpaced, len(c.Ranked)))
 	}
 	if missed > 0 {
 		out = append(out, fmt.Sprintf("%d of %d pairings did not reach the target", missed, len(c.Ranked)))

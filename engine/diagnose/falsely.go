@@ -60,8 +60,8 @@ var unsolvedRows = Rule{"unsolved-rows", func(c Case) (out []Finding) {
 		rows, _ := rowsOf(h.WorstRows)
 		_, solver, precond := cut(h.Pairing)
 		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("converged in the norm, but %d rows are unsolved: componentwise error %s, worst in %s%s",
-				h.UnsolvedRows, num(h.Componentwise), c.list(rows, 4), c.inField(rows)),
+			Claim: fmt.Sprintf("converged in the norm, but %s %s unsolved: componentwise error %s, worst in %s%s",
+				count(h.UnsolvedRows, "row"), verb(h.UnsolvedRows, "is", "are"), num(h.Componentwise), c.list(rows, 4), c.inField(rows)),
 			Advice: "these rows are in small units: scale the rows, or ask per field (--fields, --tol-field)",
 			Try:    []string{"scale/" + solver + "+" + precond},
 			Evidence: []Evidence{{Quantity: "componentwise backward error", Value: h.Componentwise,

@@ -2,7 +2,6 @@ package run
 
 import (
 	"math"
-	"sort"
 
 	"dwindle/engine/linear"
 	"dwindle/engine/trace"
@@ -162,23 +161,8 @@ func (t *Trial) componentwise(limit float64, fields []trace.Field) (worst float6
 		}
 		if e > limit {
 			over++
-			rows = keepLargest(rows, trace.RowShare{Row: i, Share: e})
+			rows = trace.KeepLargest(rows, trace.RowShare{Row: i, Share: e})
 		}
 	}
 	return worst, over, rows
-}
-
-// keepLargest inserts s into rows, which stay the largest shares in falling
-// order, at most trace.MaxRows of them.
-func keepLargest(rows []trace.RowShare, s trace.RowShare) []trace.RowShare {
-	at := sort.Search(len(rows), func(k int) bool { return rows[k].Share < s.Share })
-	if at == trace.MaxRows {
-		return rows
-	}
-	if len(rows) < trace.MaxRows {
-		rows = append(rows, s)
-	}
-	copy(rows[at+1:], rows[at:])
-	rows[at] = s
-	return rows
 }

@@ -78,7 +78,7 @@ func (t *Trial) weigh(e *trace.Event, m *linear.CSR, v []float64) {
 	e.Rows = nil
 	for i, x := range v {
 		if share := x * x / size; share > 1e-6 {
-			e.Rows = keepLargest(e.Rows, trace.RowShare{Row: i, Share: share})
+			e.Rows = trace.KeepLargest(e.Rows, trace.RowShare{Row: i, Share: share})
 		}
 	}
 }
