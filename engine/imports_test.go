@@ -32,14 +32,15 @@ var mayImport = map[string][]string{
 	"engine/inspect": {"engine/linear", "engine/spectrum", "engine/direct", "engine/prepare"},
 	"engine/run": {"engine/linear", "engine/trace", "engine/krylov", "engine/precond", "engine/prepare",
 		"engine/spectrum"},
-	"engine/check":    {"engine/linear", "engine/trace", "engine/direct", "engine/spectrum"},
-	"engine/diagnose": {"engine/trace", "engine/inspect", "engine/spectrum"},
-	"engine/choose":   {"engine/trace", "engine/inspect", "engine/diagnose"},
-	"engine/report":   {"engine/trace", "engine/inspect", "engine/check", "engine/diagnose", "engine/choose", "engine/spectrum"},
+	"engine/check":     {"engine/linear", "engine/trace", "engine/direct", "engine/spectrum"},
+	"engine/diagnose":  {"engine/trace", "engine/inspect", "engine/spectrum"},
+	"engine/choose":    {"engine/trace", "engine/inspect", "engine/diagnose"},
+	"engine/report":    {"engine/trace", "engine/inspect", "engine/check", "engine/diagnose", "engine/choose", "engine/spectrum"},
+	"engine/recording": {"engine/trace", "engine/inspect", "engine/choose", "engine/report"},
 
 	"engine": {"engine/linear", "engine/trace", "engine/spectrum", "engine/direct", "engine/prepare",
 		"engine/krylov", "engine/precond", "samples", "engine/load", "engine/inspect", "engine/run", "engine/check",
-		"engine/diagnose", "engine/choose", "engine/report"},
+		"engine/diagnose", "engine/choose", "engine/report", "engine/recording"},
 	"tui": {"engine", "engine/trace", "engine/inspect", "engine/diagnose", "engine/choose", "engine/spectrum",
 		"tui/quiet"},
 	"tui/quiet":   {},
@@ -47,7 +48,8 @@ var mayImport = map[string][]string{
 }
 
 // verbs are the stages, in their order; a stage imports no later one.
-var verbs = []string{"engine/load", "engine/inspect", "engine/run", "engine/check", "engine/diagnose", "engine/choose", "engine/report"}
+var verbs = []string{"engine/load", "engine/inspect", "engine/run", "engine/check", "engine/diagnose", "engine/choose", "engine/report",
+	"engine/recording"}
 
 // nouns are the materials; they import no stage.
 var nouns = []string{"engine/linear", "engine/prepare", "engine/trace", "engine/krylov", "engine/precond",

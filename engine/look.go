@@ -8,8 +8,8 @@ import (
 	"dwindle/engine/choose"
 	"dwindle/engine/diagnose"
 	"dwindle/engine/inspect"
+	"dwindle/engine/recording"
 	"dwindle/engine/report"
-	"dwindle/engine/run"
 	"dwindle/engine/trace"
 )
 
@@ -49,7 +49,7 @@ func (s *Session) Trials() []Trial {
 // look makes a snapshot; s.mu is held.
 func (s *Session) look() Snapshot {
 	v := s.view()
-	if s.bench != nil || s.about != nil {
+	if s.bench != nil || s.past != nil {
 		s.judge(&v)
 	}
 	return v
@@ -142,12 +142,13 @@ func (s *Session) document() report.Document {
 	defer s.mu.Unlock()
 	v := s.look()
 	d := report.Document{Version: s.opt.Version, Command: s.opt.Command, Machine: v.Machine, Settings: v.Settings,
-		System: v.System, Facts: v.Facts, Toolchain: toolchain(), Findings: v.Findings, Choice: v.Choice, Elapsed: v.Elapsed}
+		System: v.System, Facts: v.Facts, Toolchain: toolchain(), Findings: v.Findings, Choice: v.Choice, Elapsed: v.Elapsed,
+		Recorded: v.Unchanged()}
 	for _, t := range v.Trials {
 		d.Trials = append(d.Trials, t.History)
 	}
-	if s.bench != nil {
-		d.Solution = solution(s.bench.Trials(), v.Choice.Pairing)
+	if a := s.answer(v.Choice.Pairing); a != nil {
+		d.Solution = a.X
 	}
 	if s.opt.Vectors {
 		d.Vectors = vectors(s.sys, d)
@@ -155,22 +156,28 @@ func (s *Session) document() report.Document {
 	return d
 }
 
-// solution returns the answer of the chosen trial, else of the ended one with
-// the smallest true residual.
-func solution(trials []*run.Trial, chosen string) []float64 {
-	var best []float64
+// answer is the solution of the chosen trial, else of the ended one with the
+// smallest true residual, else what a session file holds; s.mu is held.
+func (s *Session) answer(chosen string) *recording.Answer {
+	var best *recording.Answer
 	least := math.Inf(1)
-	for _, t := range trials {
+	if s.past != nil && s.past.Answer != nil {
+		best, least = s.past.Answer, s.past.Residual(s.past.Answer.Pairing)
+	}
+	if s.bench == nil || best != nil && best.Pairing == chosen {
+		return best
+	}
+	for _, t := range s.bench.Trials() {
 		h := t.History()
 		x := t.Answer()
 		if x == nil {
 			continue
 		}
 		if h.Pairing == chosen {
-			return x
+			return &recording.Answer{Pairing: chosen, X: x}
 		}
 		if h.TrueResidual < least {
-			best, least = x, h.TrueResidual
+			best, least = &recording.Answer{Pairing: h.Pairing, X: x}, h.TrueResidual
 		}
 	}
 	return best

@@ -3,7 +3,6 @@ package engine
 import (
 	"errors"
 	"fmt"
-	"io"
 	"os"
 	"path/filepath"
 	"slices"
@@ -11,6 +10,8 @@ import (
 
 	"dwindle/engine/inspect"
 	"dwindle/engine/linear"
+	"dwindle/engine/load"
+	"dwindle/engine/recording"
 	"dwindle/engine/run"
 	"dwindle/samples"
 )
@@ -33,40 +34,39 @@ func IsSessionFile(source string) bool {
 		return false
 	}
 	defer f.Close()
-	return isSessionFile(io.Reader(f)) || strings.HasSuffix(source, sessionExtension)
+	return recording.Begins(f) || strings.HasSuffix(source, sessionExtension)
 }
 
 // reopen takes up a recorded session where its file ends. Nothing is run: the
 // trials are as they were left, and findings and choice are judged anew.
-func (s *Session) reopen(recording string) (err error) {
+func (s *Session) reopen(to string) (err error) {
 	defer func() {
 		if p := recover(); p != nil {
-			err = &RecordError{s.source, fmt.Errorf("cannot be judged: %v", p)}
+			err = &recording.Error{Path: s.source, Err: fmt.Errorf("cannot be judged: %v", p)}
 		}
 	}()
-	r, err := replayFile(s.source)
+	past, err := recording.Open(s.source)
 	if err != nil {
-		return err
+		return &load.Error{File: s.source, Text: recording.Reason(err).Error()}
 	}
 	linear.SetThreads(s.opt.Threads)
-	asked := r.about.Asked
-	asked.Threads, asked.Memory, asked.Clock, asked.Version = s.opt.Threads, s.opt.Memory, s.opt.Clock, s.opt.Version
-	if r.about.Command != "" {
-		asked.Command = r.about.Command
+	opt := options(past.About.Asked, s.opt)
+	if past.About.Command != "" {
+		opt.Command = past.About.Command
 	}
 	s.set(func() {
-		s.opt, s.about, s.facts, s.print, s.past = asked, r.about, r.facts, r.about.System.Fingerprint, r.trials
-		s.pastElapsed, s.phase, s.progress, s.ruled = r.elapsed, Ended, -1, r.about.Ruled
+		s.opt, s.past, s.facts, s.print = opt, past, past.Facts, past.About.System.Fingerprint
+		s.phase, s.progress, s.ruled = Ended, -1, past.About.Ruled
 		s.lost = s.find()
 	})
 	s.Snapshot() // judged once here: a fault is one of the file
-	if recording == "" {
+	if to == "" {
 		return nil
 	}
-	if sameFile(recording, s.source) {
+	if sameFile(to, s.source) {
 		return badOption("--session names the session that is opened; name another file")
 	}
-	return s.Record(recording)
+	return s.Record(to)
 }
 
 func sameFile(a, b string) bool {
@@ -78,7 +78,7 @@ func sameFile(a, b string) bool {
 // find looks where the system of a reopened session can be read again, and
 // says why it cannot, or nothing; s.mu is held.
 func (s *Session) find() string {
-	name := s.about.Source
+	name := s.past.About.Source
 	if strings.HasPrefix(name, samples.Prefix) {
 		s.again = name
 		return ""
@@ -101,10 +101,10 @@ func (s *Session) revive() error {
 	s.reviving.Lock()
 	defer s.reviving.Unlock()
 	s.mu.Lock()
-	about, bench, again, lost, opt := s.about, s.bench, s.again, s.lost, s.opt
+	past, bench, again, lost, opt := s.past, s.bench, s.again, s.lost, s.opt
 	s.mu.Unlock()
 	switch {
-	case bench != nil || about == nil:
+	case bench != nil || past == nil:
 		return nil
 	case lost != "":
 		return errors.New("a recorded session is read-only: " + lost)
@@ -118,7 +118,7 @@ func (s *Session) revive() error {
 	if err != nil {
 		return s.lose(err.Error())
 	}
-	if fingerprint(sys) != about.System.Fingerprint {
+	if fingerprint(sys) != past.About.System.Fingerprint {
 		return s.lose(sys.Name + " is not the system of this session any more")
 	}
 	s.takeUp(sys)
@@ -136,7 +136,7 @@ func (s *Session) readAgain(source string, opt Options) (linear.System, error) {
 		err = setNearNull(&sys, opt)
 	}
 	sys.Open = s.open
-	sys.Name = s.about.System.Name
+	sys.Name = s.past.About.System.Name
 	return sys, err
 }
 
@@ -152,13 +152,13 @@ func (s *Session) takeUp(sys linear.System) {
 	defer s.mu.Unlock()
 	s.sys = sys
 	last := 0
-	for _, t := range s.past {
+	for _, t := range s.past.Trials {
 		last = max(last, t.ID)
 	}
 	sys.Null = inspect.ZeroDirections(s.facts)
 	s.bench = run.NewBench(sys, s.limits(), s.opt.Memory, s.clock)
 	s.bench.NumberFrom(last + 1)
-	s.phase, s.openAt = Running, s.clock()-s.pastElapsed
+	s.phase, s.openAt = Running, s.clock()-s.past.Elapsed
 	s.changes++
 	go s.bench.Run(s.ctx)
 }
@@ -168,26 +168,36 @@ func (s *Session) takeUp(sys linear.System) {
 func (s *Session) viewPast(v *Snapshot) {
 	v.RecordErr = s.recordErr
 	if s.recorder != nil {
-		v.Recording = s.recorder.path
+		v.Recording = s.recorder.Path
 	}
-	if s.about == nil {
+	if s.past == nil {
 		return
 	}
-	v.Recorded, v.ReadOnly, v.System, v.Trials = true, s.lost, s.about.System, slices.Clone(s.past)
+	v.Recorded, v.ReadOnly, v.System = true, s.lost, s.past.About.System
+	for _, t := range s.past.Trials {
+		v.Trials = append(v.Trials, Trial(t))
+	}
 	if v.revived = s.bench != nil; !v.revived {
-		v.Machine, v.Elapsed = s.about.Machine, s.pastElapsed
+		v.Machine, v.Elapsed = s.past.About.Machine, s.past.Elapsed
 	}
 }
 
 // dropPast takes a recorded trial off the list; markPast marks one as today's.
 func (s *Session) dropPast(id int) {
-	s.set(func() { s.past = slices.DeleteFunc(slices.Clone(s.past), func(t Trial) bool { return t.ID == id }) })
+	s.set(func() {
+		if s.past != nil {
+			s.past.Trials = slices.DeleteFunc(s.past.Trials, func(t recording.Trial) bool { return t.ID == id })
+		}
+	})
 }
 
 func (s *Session) markPast(id int) {
 	s.set(func() {
-		for i := range s.past {
-			s.past[i].History.Today = s.past[i].ID == id
+		if s.past == nil {
+			return
+		}
+		for i := range s.past.Trials {
+			s.past.Trials[i].History.Today = s.past.Trials[i].ID == id
 		}
 	})
 }

@@ -9,6 +9,7 @@ import (
 	"dwindle/engine/choose"
 	"dwindle/engine/inspect"
 	"dwindle/engine/linear"
+	"dwindle/engine/recording"
 	"dwindle/engine/report"
 	"dwindle/engine/run"
 	"dwindle/engine/trace"
@@ -45,16 +46,14 @@ type Session struct {
 	haltedAt  time.Duration // when the present suspension began; negative if none
 	judged    verdict
 	changes   int64
-	recorder  *recorder // nil: no file is written
-	recordErr error     // why the recording ended
+	recorder  *recording.Recorder // nil: no file is written
+	recordErr error               // why the recording ended
 
 	// of a session that was reopened from a file
-	reviving    sync.Mutex
-	about       *about // nil: this one is new
-	past        []Trial
-	pastElapsed time.Duration
-	again       string // where its system can be read again
-	lost        string // why it cannot
+	reviving sync.Mutex
+	past     *recording.State // nil: this one is new; its trials change only with Drop and MarkToday
+	again    string           // where its system can be read again
+	lost     string           // why it cannot
 }
 
 // Open starts a session on source (a file, "-", or sample:NAME[:ARGS]) in the
@@ -246,7 +245,7 @@ func (s *Session) Close() {
 	r := s.recorder
 	s.recorder = nil
 	s.mu.Unlock()
-	r.finish()
+	r.Finish()
 }
 
 // Document returns everything a report can say at this moment.

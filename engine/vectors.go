@@ -34,7 +34,7 @@ func vectors(sys linear.System, d report.Document) []report.Vector {
 	for _, t := range d.Trials {
 		if v := t.Vectors[run.CurvatureVector]; v != nil {
 			out = append(out, report.Vector{Name: report.VectorName(run.CurvatureVector, t.Pairing), Values: v,
-				Comment: "direction p of negative curvature that " + t.Pairing + " met: " + rayleigh(sys, v)})
+				Comment: "direction p of negative curvature that " + t.Pairing + " met" + rayleigh(sys, v)})
 		}
 	}
 	if t := shownTrial(d); t != nil {
@@ -67,6 +67,9 @@ func nullVector(k int, v inspect.NullDirection) report.Vector {
 // unreachable is the part of b in the left null space that pattern and sums
 // show; nil where it is no more than rounding.
 func unreachable(s linear.System) []float64 {
+	if s.A == nil {
+		return nil
+	}
 	m := s.Matrix()
 	if m == nil || len(s.B) != m.NRows {
 		return nil
@@ -147,14 +150,18 @@ func lastVectors(sys linear.System, t trace.History) []report.Vector {
 			what = "error that was left a fifth to a third of the run before its end: what it reduces slowest"
 		}
 		out = append(out, report.Vector{Name: report.VectorName(run.SlowestVector, t.Pairing), Values: v,
-			Comment: fmt.Sprintf("difference of the iterates of %s at the end and on the way, %s; %s", t.Pairing, what, rayleigh(sys, v))})
+			Comment: fmt.Sprintf("difference of the iterates of %s at the end and on the way, %s%s", t.Pairing, what, rayleigh(sys, v))})
 	}
 	return out
 }
 
-// rayleigh tells the Rayleigh quotient of A at v.
+// rayleigh adds the Rayleigh quotient of A at v to a comment, where A is at hand: of a
+// reopened session it is not, until a pairing is added.
 func rayleigh(sys linear.System, v []float64) string {
+	if sys.A == nil {
+		return ""
+	}
 	av := make([]float64, len(v))
 	sys.A.Apply(av, v)
-	return fmt.Sprintf("p'Ap/p'p = %.6g", linear.Dot(v, av)/linear.Dot(v, v))
+	return fmt.Sprintf("; p'Ap/p'p = %.6g", linear.Dot(v, av)/linear.Dot(v, v))
 }

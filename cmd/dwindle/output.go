@@ -68,7 +68,7 @@ func (f *flags) saveExtras(d report.Document) error {
 	}
 	switch {
 	case f.solution != "" && d.Solution == nil:
-		solution = unwritten(f.solution, report.ErrNoSolution)
+		solution = unwritten(f.solution, d.NoSolution())
 	case f.solution != "":
 		solution = toFile(f.solution, report.Solution, d)
 	}
@@ -81,6 +81,9 @@ func (f *flags) saveExtras(d report.Document) error {
 // saveVectors writes each vector into a file of its own in a folder, which is
 // made where it is missing.
 func saveVectors(dir string, d report.Document) error {
+	if len(d.Vectors) == 0 {
+		return unwritten(dir, d.NoVectors())
+	}
 	if err := os.MkdirAll(dir, 0o777); err != nil {
 		return unwritten(dir, reason(err))
 	}

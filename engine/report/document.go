@@ -25,6 +25,7 @@ type Document struct {
 	Elapsed   time.Duration
 	Vectors   []Vector  // behind findings and ends, where they were asked for
 	Toolchain string    // what built the program, such as "go1.26.8 linux/amd64"
+	Recorded  bool      // all of it was read from a session file
 	Solution  []float64 // of the chosen pairing, or of the best trial; nil if none
 }
 

@@ -6,14 +6,29 @@ import (
 	"io"
 )
 
-// ErrNoSolution says that no trial left an iterate to write.
-var ErrNoSolution = errors.New("there is no solution to write: no trial has begun")
+// NoSolution says why there is no solution to write.
+func (d Document) NoSolution() error {
+	return errors.New("there is no solution to write: " + d.nothing())
+}
+
+// NoVectors says why there are no vectors to write.
+func (d Document) NoVectors() error {
+	return errors.New("there are no vectors to write: " + d.nothing())
+}
+
+// nothing is the reason why a document holds no vector of any kind.
+func (d Document) nothing() string {
+	if d.Recorded {
+		return "the session was recorded without --vectors, which keeps them in its file"
+	}
+	return "no trial has begun"
+}
 
 // Solution writes the solution as a Matrix Market array of n rows and one
 // column, 17 significant digits each, in the row order of the system.
 func Solution(w io.Writer, d Document) error {
 	if d.Solution == nil {
-		return ErrNoSolution
+		return d.NoSolution()
 	}
 	return writeArray(w, d.Solution, fmt.Sprintf("solution of %s, dwindle %s", clip(plain(d.System.Name), 200), clip(plain(d.Version), 100)))
 }

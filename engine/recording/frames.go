@@ -1,4 +1,8 @@
-package engine
+// Package recording keeps a session in a file as it goes, and reads it back: a
+// line that says what the file is, and frames of what is new since the one
+// before. It knows nothing of how a session works; what it writes comes to it
+// as a State, and what it reads is one.
+package recording
 
 import (
 	"bufio"
@@ -17,15 +21,15 @@ import (
 // that a program killed at any moment leaves whole frames and at most one torn
 // one at the end, which readers leave out.
 const (
-	sessionMagic = "dwindle session "
-	sessionForm  = 1 // raised when a reader of the form before would misread
-	headBytes    = 12
+	magic     = "dwindle session "
+	form      = 1 // raised when a reader of the form before would misread
+	headBytes = 12
 )
 
 var castagnoli = crc32.MakeTable(crc32.Castagnoli)
 
 // magicLine is the first line of a session file.
-func magicLine() string { return fmt.Sprintf("%s%d\n", sessionMagic, sessionForm) }
+func magicLine() string { return fmt.Sprintf("%s%d\n", magic, form) }
 
 // framed puts a head before a payload.
 func framed(payload []byte) []byte {
@@ -50,13 +54,13 @@ func newFrames(r io.Reader) (*frames, error) {
 	f := &frames{r: bufio.NewReaderSize(r, 1<<16)}
 	line, err := f.r.ReadString('\n')
 	switch {
-	case !strings.HasPrefix(line, sessionMagic):
+	case !strings.HasPrefix(line, magic):
 		return nil, errors.New("is not a session file")
 	case err != nil:
 		return nil, errors.New("ends in its first line")
 	case line != magicLine():
 		return nil, fmt.Errorf("has form %q of session files; this program reads form %d",
-			strings.TrimSpace(line[len(sessionMagic):]), sessionForm)
+			strings.TrimSpace(line[len(magic):]), form)
 	}
 	return f, nil
 }

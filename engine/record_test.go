@@ -3,7 +3,6 @@ package engine
 import (
 	"bytes"
 	"context"
-	"encoding/gob"
 	"math"
 	"os"
 	"path/filepath"
@@ -13,6 +12,7 @@ import (
 	"time"
 
 	"dwindle/engine/linear"
+	"dwindle/engine/recording"
 	"dwindle/engine/trace"
 )
 
@@ -165,71 +165,81 @@ func written1(t *testing.T, n int) string {
 	return path
 }
 
-// What is no session file, or not one any more, is refused by name; only a
-// torn last frame is left out in silence.
-func TestDamagedSessionFiles(t *testing.T) {
-	whole := twoFrames(t)
-	middle := bytes.Clone(whole)
-	middle[len(magicLine())+headBytes+40] ^= 1
-	head := bytes.Clone(whole)
-	head[len(magicLine())] ^= 0x80 // the length lies
-	for _, c := range []struct {
-		name, says string
-		text       []byte
-	}{
-		{"empty.dwindle", "is not a session file", nil},
-		{"foreign.dwindle", "is not a session file", []byte("%%MatrixMarket matrix coordinate real general\n1 1 1\n1 1 1\n")},
-		{"magic.dwindle", "ends in its first line", []byte(sessionMagic)},
-		{"later.dwindle", "form \"9\"", []byte(sessionMagic + "9\n")},
-		{"first.dwindle", "ends before", []byte(magicLine())},
-		{"short.dwindle", "ends before", whole[:len(magicLine())+headBytes+20]},
-		{"middle.dwindle", "frame 1 fails its checksum", middle},
-		{"head.dwindle", "frame 1 fails its checksum", head},
-	} {
-		file := filepath.Join(t.TempDir(), c.name)
-		if err := os.WriteFile(file, c.text, 0o644); err != nil {
-			t.Fatal(err)
-		}
-		s := Open(context.Background(), file, Options{Threads: 1})
-		s.Wait(context.Background())
-		if err := s.Snapshot().Err; !IsInput(err) || !strings.HasPrefix(err.Error(), file+": ") || !strings.Contains(err.Error(), c.says) {
-			t.Errorf("%s: %v, want ... %s", c.name, err, c.says)
-		}
-		s.Close()
+// A damaged session file is an input that cannot be read, named in the error.
+func TestDamagedSessionFileIsNamed(t *testing.T) {
+	file := filepath.Join(t.TempDir(), "short.dwindle")
+	if err := os.WriteFile(file, []byte("dwindle session 1\n"), 0o644); err != nil {
+		t.Fatal(err)
 	}
-	for _, tail := range [][]byte{whole[:len(whole)-1], append(bytes.Clone(whole), make([]byte, 4096)...), append(bytes.Clone(whole), 7)} {
-		if r, err := replayed(bytes.NewReader(tail)); err != nil || r.facts == nil {
-			t.Errorf("a torn end is not left out: %v", err)
-		}
+	s := Open(context.Background(), file, Options{Threads: 1})
+	defer s.Close()
+	s.Wait(context.Background())
+	if err := s.Snapshot().Err; !IsInput(err) || !strings.HasPrefix(err.Error(), file+": ends before") {
+		t.Errorf("%v", err)
 	}
 }
 
-// twoFrames is a session file of two frames.
-func twoFrames(t *testing.T) []byte {
-	s := Open(context.Background(), "sample:plate:12", Options{Threads: 1, Pairs: []string{"cg+none", "cg+jacobi"}})
-	defer s.Close()
-	s.Wait(context.Background())
-	path := filepath.Join(t.TempDir(), "two.dwindle")
-	r, err := newRecorder(s, path)
-	for range 2 {
-		if err == nil {
-			err = r.look(true)
+// Every option that a file holds comes back as the option it was.
+func TestAskedComesBack(t *testing.T) {
+	a := recording.Asked{Identify: true}
+	v := reflect.ValueOf(&a).Elem()
+	for i := range v.NumField() {
+		switch f := v.Field(i); f.Kind() {
+		case reflect.String:
+			f.SetString(v.Type().Field(i).Name)
+		case reflect.Int:
+			f.SetInt(int64(i + 1))
+		case reflect.Float64:
+			f.SetFloat(float64(i) + 0.5)
+		case reflect.Bool:
+			f.SetBool(true)
+		case reflect.Slice:
+			f.Set(reflect.ValueOf([]string{v.Type().Field(i).Name}))
+		default:
+			t.Fatalf("%s is a %s", v.Type().Field(i).Name, f.Kind())
 		}
 	}
-	if err != nil {
-		t.Fatal(err)
+	if back := options(a, Options{}).asked(); !reflect.DeepEqual(a, back) {
+		t.Errorf("was %+v\nis  %+v", a, back)
 	}
-	r.file.Close()
-	whole, err := os.ReadFile(path)
-	if err != nil {
-		t.Fatal(err)
+}
+
+// Where the vectors behind the findings were asked for, the file holds them and
+// the solution, and both come back though the system is not at hand.
+func TestVectorsComeBack(t *testing.T) {
+	for _, asked := range []bool{true, false} {
+		opt := Options{Threads: 1, Pairs: []string{"cg+none", "cg+jacobi"}, Vectors: asked, Recording: filepath.Join(t.TempDir(), "s.dwindle")}
+		s := Open(context.Background(), written(t, diagonalOf(4, 9, 25, 1), 0), opt)
+		s.Wait(context.Background())
+		was := s.Document()
+		s.Close()
+		u := Open(context.Background(), opt.Recording, Options{Threads: 1, Vectors: true})
+		defer u.Close()
+		u.Wait(context.Background())
+		now := u.Document()
+		if !asked {
+			if now.Solution != nil || len(now.Vectors) > 0 || !strings.Contains(now.NoSolution().Error(), "without --vectors") {
+				t.Errorf("%d vectors, %v", len(now.Vectors), now.NoSolution())
+			}
+			continue
+		}
+		if was.Solution == nil || !reflect.DeepEqual(was.Solution, now.Solution) {
+			t.Errorf("solution %v, was %v", now.Solution, was.Solution)
+		}
+		if len(was.Vectors) == 0 || len(now.Vectors) != len(was.Vectors) {
+			t.Fatalf("%d vectors, were %d", len(now.Vectors), len(was.Vectors))
+		}
+		for i, v := range now.Vectors {
+			if v.Name != was.Vectors[i].Name || !reflect.DeepEqual(v.Values, was.Vectors[i].Values) {
+				t.Errorf("%s differs", v.Name)
+			}
+		}
 	}
-	return whole
 }
 
 // A slip on the command line must not cost a file.
 func TestRecordingReplacesOnlySessionFiles(t *testing.T) {
-	for _, c := range []struct{ text, says string }{{"5 6 7\n", "not a session file"}, {magicLine(), ""}} {
+	for _, c := range []struct{ text, says string }{{"5 6 7\n", "not a session file"}, {"dwindle session 1\n", ""}} {
 		path := filepath.Join(t.TempDir(), "x")
 		if err := os.WriteFile(path, []byte(c.text), 0o644); err != nil {
 			t.Fatal(err)
@@ -246,72 +256,17 @@ func TestRecordingReplacesOnlySessionFiles(t *testing.T) {
 
 // Writing that fails is told, and the run goes on.
 func TestFullDiskDoesNotEndTheRun(t *testing.T) {
-	if _, err := os.Stat("/dev/full"); err != nil {
+	full, err := os.OpenFile("/dev/full", os.O_WRONLY, 0)
+	if err != nil {
 		t.Skip("no /dev/full here")
 	}
 	s := Open(context.Background(), "sample:plate:16", Options{Threads: 1, Pairs: []string{"cg+none"}})
 	defer s.Close()
-	file, err := os.OpenFile("/dev/full", os.O_WRONLY, 0)
-	if err != nil {
-		t.Fatal(err)
-	}
-	r := &recorder{s: s, path: "full.dwindle", file: file, trials: map[int]*told{}, stop: make(chan struct{}), done: make(chan struct{})}
-	r.gob = gob.NewEncoder(&r.buf)
-	go r.run()
-	<-r.done
+	r := recording.Start("full.dwindle", full, recorded{s})
 	s.Wait(context.Background())
+	r.Finish()
 	v := s.Snapshot()
 	if v.RecordErr == nil || !strings.Contains(v.RecordErr.Error(), "no space left") || v.Trials[0].History.Stop != trace.Converged {
 		t.Errorf("%v, %s", v.RecordErr, v.Trials[0].History.Stop)
 	}
-}
-
-// A thinned history is written anew, and comes back as it is.
-func TestThinnedHistoryComesBack(t *testing.T) {
-	var h, back trace.History
-	var w told
-	id := uint32(0)
-	for round := range 6 {
-		for range 50 {
-			h.Records = append(h.Records, trace.Record{Iter: id, Residual: 1 / float64(id+1), Audit: math.NaN(), Alpha: math.Copysign(0, -1)})
-			id++
-		}
-		if round == 3 { // every second record gives way
-			var kept []trace.Record
-			for i := 0; i < len(h.Records); i += 2 {
-				kept = append(kept, h.Records[i])
-			}
-			h.Records = kept
-		}
-		h.Iterations = int(id)
-		c, moved := w.since(1, h)
-		if !moved {
-			t.Fatal("no change seen")
-		}
-		var err error
-		if back, err = c.after(back); err != nil {
-			t.Fatal(err)
-		}
-		if !sameRecords(h.Records, back.Records, true) {
-			t.Fatalf("round %d: %d records, want %d", round, len(back.Records), len(h.Records))
-		}
-	}
-}
-
-// FuzzSessionFile reads hostile payloads in whole frames, and hostile files:
-// an error, never a panic and never a hang.
-func FuzzSessionFile(f *testing.F) {
-	var buf bytes.Buffer
-	gob.NewEncoder(&buf).Encode(part{Order: []int{1}, About: &about{Source: "-"},
-		Trials: []change{{ID: 1, Records: columnsOf([]trace.Record{{Iter: 0}, {Iter: 1}}), Alphas: []float64{1}, Betas: []float64{1}}}})
-	f.Add(buf.Bytes(), true)
-	f.Add([]byte(magicLine()+"xxxxxxxxxxxx"), false)
-	f.Fuzz(func(t *testing.T, b []byte, whole bool) {
-		if whole {
-			b = append([]byte(magicLine()), framed(b)...)
-		}
-		if r, err := replayed(bytes.NewReader(b)); err == nil && (r.facts == nil || r.about == nil) {
-			t.Error("a session without facts was taken")
-		}
-	})
 }

@@ -1,40 +1,28 @@
-package engine
+package recording
 
 import (
 	"errors"
 	"reflect"
 	"time"
 
-	"dwindle/engine/choose"
 	"dwindle/engine/inspect"
-	"dwindle/engine/report"
 	"dwindle/engine/trace"
 )
 
-// part is what one frame of a session file adds to those before it: what has
-// changed, and of histories what is new. Findings and choice are not in it;
-// whoever reads it judges anew.
+// part is what one frame of a file adds to those before it: what has changed,
+// and of histories what is new.
 type part struct {
 	Elapsed time.Duration
-	Closed  bool           // the session was closed after this part
-	About   *about         // nil: as before
+	About   *About         // nil: as before
 	Facts   *inspect.Facts // nil: as before
 	Order   []int          // the numbers of all trials, in order
 	Trials  []change       // of trials in which something moved
+	Answer  *Answer        // nil: as before
 }
 
 // empty says that nothing is new but the time and the order of the trials.
-func (p part) empty() bool { return p.About == nil && p.Facts == nil && len(p.Trials) == 0 }
-
-// about is what is known of a session besides its facts and trials.
-type about struct {
-	Version, Command, Toolchain string
-	Machine                     report.Machine
-	Settings                    report.Settings
-	System                      report.System
-	Source                      string // a sample, or the file's name; its path where that may be told
-	Ruled                       []choose.Ruled
-	Asked                       Options // what decides the outcome; no path unless it may be told
+func (p part) empty() bool {
+	return p.About == nil && p.Facts == nil && len(p.Trials) == 0 && p.Answer == nil
 }
 
 // change is what happened to a trial since the part before.
