@@ -32,7 +32,7 @@ func (m *model) tryLeading() tea.Cmd {
 func (m *model) tryFor(id int) tea.Cmd {
 	if t := m.trial(id); t != nil {
 		for _, f := range m.snap.Findings {
-			if f.Subject == t.History.Pairing && len(f.Try) > 0 {
+			if f.Of(t.History.Pairing) && len(f.Try) > 0 {
 				return m.openTries(f)
 			}
 		}

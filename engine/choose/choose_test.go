@@ -105,9 +105,17 @@ func TestUnsolvedRowsRankBelow(t *testing.T) {
 		trial("cg+none", trace.Converged, 0, time.Second),
 		trial("scale/cg+none", trace.Converged, 0, 2*time.Second),
 	}
-	f := []diagnose.Finding{{Rule: "unsolved-rows", Subject: "cg+none"}}
-	if c := Rank(facts(inspect.Yes, inspect.Yes), trials, f, ""); c.Pairing != "scale/cg+none" {
-		t.Errorf("chose %s, which leaves rows unsolved", c.Pairing)
+	for _, f := range []diagnose.Finding{
+		{Rule: "unsolved-rows", Subject: "cg+none"},
+		{Rule: "unsolved-rows", Subject: "minres+none", Also: []string{"cr+none", "cg+none"}},
+	} {
+		if c := Rank(facts(inspect.Yes, inspect.Yes), trials, []diagnose.Finding{f}, ""); c.Pairing != "scale/cg+none" {
+			t.Errorf("chose %s, which leaves rows unsolved", c.Pairing)
+		}
+	}
+	trials[0].UnsolvedRows = 2499 // whether or not a finding speaks of it
+	if c := Rank(facts(inspect.Yes, inspect.Yes), trials, nil, ""); c.Pairing != "scale/cg+none" {
+		t.Errorf("chose %s, which leaves 2499 rows unsolved", c.Pairing)
 	}
 }
 

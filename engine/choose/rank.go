@@ -27,7 +27,7 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 			continue
 		}
 		r := ranked(h)
-		r.Work, r.shaky = work(f, h), h.Direct && f.Singular.Answer == inspect.Yes
+		r.Work, r.shaky = work(f, h), h.Direct && f.Singular.Answer == inspect.Yes || h.UnsolvedRows > 0
 		c.Ranked = append(c.Ranked, r)
 	}
 	slices.SortStableFunc(c.Ranked, func(a, b Ranked) int { return order(a, b, findings, goal) })
@@ -118,7 +118,7 @@ func class(r Ranked, findings []diagnose.Finding) int {
 		return 1
 	}
 	for _, f := range findings {
-		if f.Subject == r.Pairing && slices.Contains(doubtful, f.Rule) {
+		if f.Of(r.Pairing) && slices.Contains(doubtful, f.Rule) {
 			return 1
 		}
 	}

@@ -3,6 +3,8 @@
 package diagnose
 
 import (
+	"slices"
+
 	"dwindle/engine/inspect"
 	"dwindle/engine/trace"
 )
@@ -43,6 +45,11 @@ type Finding struct {
 	// Predicts are the counts that this finding foresees for its tries, to be
 	// held against what comes of them.
 	Predicts []Predicted
+}
+
+// Of says whether the finding is about this pairing, alone or among others.
+func (f Finding) Of(pairing string) bool {
+	return f.Subject == pairing || slices.Contains(f.Also, pairing)
 }
 
 // Predicted is one number foreseen for a pairing.
