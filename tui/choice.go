@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"dwindle/engine/choose"
+	"dwindle/engine/trace"
 )
 
 // choiceText is the recommendation in full: what, why, what could overturn it,
@@ -77,13 +78,13 @@ func (m *model) rankedRow(place int, r choose.Ranked, name int) string {
 		case !r.Reached && i == 0:
 			text = "not met"
 		case r.Reached && finite(r.For[i]) && r.For[i] > 0:
-			text = took(r.For[i])
+			text = trace.Took(r.For[i])
 		case r.Reached && i == 0:
-			text = took(r.Seconds)
+			text = trace.Took(r.Seconds)
 		}
 		line += right(text, 9)
 	}
-	return line + right(took(r.Setup), 9) + right(fmt.Sprint(r.Iterations), 8) + right(size(r.Memory), 10)
+	return line + right(trace.Took(r.Setup), 9) + right(fmt.Sprint(r.Iterations), 8) + right(size(r.Memory), 10)
 }
 
 // near is how far a prediction may be off to count as good.

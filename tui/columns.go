@@ -24,14 +24,14 @@ var columns = [...]struct {
 	place int
 }{
 	{column{"true res", 8, func(h *trace.History) string { return sci(h.TrueResidual) }}, 3},
-	{column{"iters", 7, func(h *trace.History) string { return strconv.Itoa(h.Iterations) }}, 0},
-	{column{"own s", 6, func(h *trace.History) string { return secs(h.OwnTime) }}, 8},
+	{column{"iters", 6, func(h *trace.History) string { return iterations(h.Iterations) }}, 0},
+	{column{"own", 7, func(h *trace.History) string { return trace.Took(h.OwnTime.Seconds()) }}, 8},
 	{column{"Ritz cond", 9, func(h *trace.History) string { return condition(h.Condition) }}, 6},
 	{column{"products", 8, func(h *trace.History) string { return strconv.Itoa(h.Products) }}, 1},
-	{column{"setup s", 7, func(h *trace.History) string { return secs(h.SetupTime) }}, 7},
+	{column{"set-up", 7, func(h *trace.History) string { return trace.Took(h.SetupTime.Seconds()) }}, 7},
 	{column{"own res", 8, func(h *trace.History) string { return sci(h.Residual) }}, 2},
 	{column{"best", 8, func(h *trace.History) string { return sci(h.BestTrue) }}, 4},
-	{column{"s/decade", 8, func(h *trace.History) string { return perDecade(h) }}, 9},
+	{column{"a decade", 8, func(h *trace.History) string { return perDecade(h) }}, 9},
 	{column{"backward", 8, func(h *trace.History) string { return sci(h.Backward) }}, 5},
 	{column{"memory", 9, func(h *trace.History) string { return size(h.MemoryBytes) }}, 10},
 }
@@ -220,5 +220,5 @@ func perDecade(h *trace.History) string {
 	if !ok || !fine || first-now < 0.05 {
 		return none
 	}
-	return seconds(h.OwnTime.Seconds() / math.Abs(first-now))
+	return trace.Took(h.OwnTime.Seconds() / math.Abs(first-now))
 }

@@ -8,6 +8,7 @@ import (
 
 	"dwindle/engine/diagnose"
 	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
 )
 
 // findingsView is the screen of the findings and of the choice: a list, and
@@ -152,9 +153,11 @@ func (m *model) findingText(f diagnose.Finding, w int) []string {
 
 // evidence is one number behind a finding, rows by the names that facts know.
 func evidence(e diagnose.Evidence, facts *inspect.Facts) string {
-	s := e.Quantity + "  " + value(e.Value)
-	if e.Unit != "" {
-		s += " " + e.Unit
+	s := e.Quantity + "  "
+	if e.Unit == "s" {
+		s += trace.Took(e.Value)
+	} else {
+		s += strings.TrimSpace(value(e.Value) + " " + e.Unit)
 	}
 	if e.Iteration >= 0 {
 		s += fmt.Sprintf("  at it %d", e.Iteration)

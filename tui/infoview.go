@@ -62,8 +62,8 @@ func (m *model) infoLines(id int, h *trace.History, w int) []string {
 			lines = append(lines, hanging(m.signs.clean(text), w)...)
 		}
 	}
-	add(m.endWords(h), fmt.Sprintf("%d its, %d products, %d uses of the preconditioner; own %s s, set-up %s s; %s", h.Iterations, h.Products,
-		h.PrecondUses, secs(h.OwnTime), secs(h.SetupTime), size(h.MemoryBytes)))
+	add(m.endWords(h), fmt.Sprintf("%d its, %d products, %d uses of the preconditioner; own %s, set-up %s; %s", h.Iterations, h.Products,
+		h.PrecondUses, trace.Took(h.OwnTime.Seconds()), trace.Took(h.SetupTime.Seconds()), size(h.MemoryBytes)))
 	add(m.numberWords(h))
 	add(fmt.Sprintf("backward error %s; by rows %s%s", sci(h.Backward), sci(h.Componentwise), worstRows(h, m)))
 	if finite(h.Error) {

@@ -3,7 +3,6 @@ package tui
 import (
 	"math"
 	"strconv"
-	"time"
 )
 
 // none stands for a number that is not known.
@@ -64,42 +63,12 @@ func compact(n int) string {
 	return strconv.FormatFloat(v, 'g', 3, 64) + unit
 }
 
-// secs writes a duration in seconds with four digits or so: 0.0123, 12.30,
-// 123.4, 1234.
-func secs(d time.Duration) string {
-	return seconds(d.Seconds())
-}
-
-// seconds is secs for a number of seconds; "-" if it is not known.
-func seconds(v float64) string {
-	switch {
-	case math.IsNaN(v) || math.IsInf(v, 0) || v < 0:
-		return none
-	case v < 0.99995:
-		return strconv.FormatFloat(v, 'f', 4, 64)
-	case v < 9.9995:
-		return strconv.FormatFloat(v, 'f', 3, 64)
-	case v < 99.995:
-		return strconv.FormatFloat(v, 'f', 2, 64)
-	case v < 999.95:
-		return strconv.FormatFloat(v, 'f', 1, 64)
+// iterations writes a count of them in at most six cells.
+func iterations(n int) string {
+	if n < 1e6 {
+		return strconv.Itoa(n)
 	}
-	return strconv.FormatFloat(v, 'f', 0, 64)
-}
-
-// took writes a number of seconds with its unit: 29.8 us, 1.24 ms, 35.2 s.
-func took(v float64) string {
-	switch {
-	case math.IsNaN(v) || math.IsInf(v, 0) || v < 0:
-		return none
-	case v < 0.9995e-3:
-		return strconv.FormatFloat(v*1e6, 'g', 3, 64) + " us"
-	case v < 0.9995:
-		return strconv.FormatFloat(v*1e3, 'g', 3, 64) + " ms"
-	case v < 999.5:
-		return strconv.FormatFloat(v, 'g', 3, 64) + " s"
-	}
-	return strconv.FormatFloat(v, 'f', 0, 64) + " s"
+	return compact(n)
 }
 
 // size writes a number of bytes: 12.3 MiB.

@@ -66,7 +66,7 @@ func forecastWords(h *trace.History) string {
 		s += fmt.Sprintf(" (%.0f to %.0f)", p.Low, p.High)
 	}
 	if left := secondsLeft(h, p); finite(left) {
-		s += ", " + seconds(left) + " s left"
+		s += ", " + trace.Took(left) + " left"
 	}
 	return s
 }
@@ -187,7 +187,7 @@ func columnWords(list []trace.Column) string {
 	}
 	words := make([]string, len(list))
 	for i, c := range list {
-		words[i] = fmt.Sprintf("%d:_%d_its_%s_s", c.Index, c.Iterations, seconds(c.Seconds))
+		words[i] = fmt.Sprintf("%d:_%d_its_%s", c.Index, c.Iterations, strings.ReplaceAll(trace.Took(c.Seconds), " ", "_"))
 		if !c.Reached {
 			words[i] += "_(not_reached)"
 		}

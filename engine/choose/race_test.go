@@ -232,7 +232,7 @@ func TestTooLate(t *testing.T) {
 	}
 	r := race(slow, quick)
 	r.Left = 20 * second
-	if o := r.Next(); len(o.End) != 1 || o.End[0].Trial != 0 || !strings.Contains(o.End[0].Reason, "needs at least 40 s more, 20 s are left") {
+	if o := r.Next(); len(o.End) != 1 || o.End[0].Trial != 0 || !strings.Contains(o.End[0].Reason, "needs at least 40.0 s more, 20.0 s are left") {
 		t.Errorf("ended %+v", o.End)
 	}
 	r.Left = 50 * second

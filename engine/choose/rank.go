@@ -182,15 +182,8 @@ func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
 	return out
 }
 
-func took(s float64) string {
-	switch {
-	case s < 1:
-		return fmt.Sprintf("%.3g ms", 1000*s)
-	case s >= 100:
-		return fmt.Sprintf("%.0f s", s)
-	}
-	return fmt.Sprintf("%.3g s", s)
-}
+// took prints a time.
+func took(s float64) string { return trace.Took(s) }
 
 // count prints a number of things.
 func count(n int, thing string) string {

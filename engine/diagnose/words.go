@@ -38,12 +38,7 @@ func number(quantity string, value float64, unit string) Evidence {
 }
 
 // seconds prints a time.
-func seconds(s float64) string {
-	if s < 1 {
-		return fmt.Sprintf("%.3g ms", 1000*s)
-	}
-	return fmt.Sprintf("%.3g s", s)
-}
+func seconds(s float64) string { return trace.Took(s) }
 
 // solved says whether a trial ended with an answer.
 func solved(h trace.History) bool {

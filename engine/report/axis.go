@@ -93,7 +93,7 @@ func (a axis) labels(cols int) (rule, text string) {
 
 func (a axis) label(x float64) string {
 	if a.seconds {
-		return seconds(x)
+		return trace.Took(x)
 	}
 	return fmt.Sprintf("%.0f", x)
 }

@@ -126,7 +126,7 @@ func Outcome(t trace.History) string {
 		return strings.TrimSuffix(t.Stop.String()+" before it began: "+plain(t.Reason), ": ")
 	}
 	return fmt.Sprintf("%s after %s, %s, true residual %s", t.Stop,
-		plural(t.Iterations, "it", "its"), seconds(t.OwnTime.Seconds()), sci(t.TrueResidual))
+		plural(t.Iterations, "it", "its"), trace.Took(t.OwnTime.Seconds()), sci(t.TrueResidual))
 }
 
 // findingText is a finding with its certainty, and its subject unless the
@@ -174,7 +174,7 @@ func useText(d Document) string {
 
 func rankedWords(r choose.Ranked) []string {
 	words := []string{
-		fmt.Sprintf("%s in %s (set-up %s)", plural(r.Iterations, "it", "its"), seconds(r.Seconds), seconds(r.Setup)),
+		fmt.Sprintf("%s in %s (set-up %s)", plural(r.Iterations, "it", "its"), trace.Took(r.Seconds), trace.Took(r.Setup)),
 		memory(r.Memory),
 	}
 	if finite(r.BreakEven) && r.BreakEven > 1 {

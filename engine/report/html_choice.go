@@ -7,6 +7,7 @@ import (
 	"gonum.org/v1/plot/vg"
 
 	"dwindle/engine/choose"
+	"dwindle/engine/trace"
 )
 
 // choicePart is the ranking with what it rests on, the settings of the choice
@@ -56,7 +57,7 @@ func rankingTable(c choose.Choice) markup {
 
 // rankedCells are the numbers of one that reached the tolerance.
 func rankedCells(r choose.Ranked) []string {
-	cells := []string{seconds(r.Seconds), likely(r), seconds(r.Setup), strconv.Itoa(r.Iterations), memory(r.Memory)}
+	cells := []string{trace.Took(r.Seconds), likely(r), trace.Took(r.Setup), strconv.Itoa(r.Iterations), memory(r.Memory)}
 	for _, x := range r.For {
 		cells = append(cells, forText(x))
 	}
@@ -68,14 +69,14 @@ func likely(r choose.Ranked) string {
 	if !(r.Low > 0) || !(r.High > 0) || !finite(r.High) {
 		return "-"
 	}
-	return seconds(r.Low) + " to " + seconds(r.High)
+	return trace.Took(r.Low) + " to " + trace.Took(r.High)
 }
 
 func forText(x float64) string {
 	if !(x > 0) {
 		return "-"
 	}
-	return seconds(x)
+	return trace.Took(x)
 }
 
 func breakEven(r choose.Ranked) string {

@@ -165,7 +165,7 @@ func auditsPart(d Document) markup {
 	for _, i := range list[:min(len(list), mostPictures)] {
 		var rows [][]markup
 		for _, r := range audited(d.Trials[i], 24) {
-			rows = append(rows, words(fmt.Sprint(r.Iter), seconds(r.Clock.Seconds()), fmt.Sprint(r.MatVecs), sci(r.Residual), sci(r.Audit)))
+			rows = append(rows, words(fmt.Sprint(r.Iter), trace.Took(r.Clock.Seconds()), fmt.Sprint(r.MatVecs), sci(r.Residual), sci(r.Audit)))
 		}
 		if len(rows) > 0 {
 			parts = append(parts, element("details", element("summary", safe("History of "+d.Trials[i].Pairing)), table(columns, rows)), "\n")

@@ -18,23 +18,6 @@ func sci(x float64) string {
 	return fmt.Sprintf("%.1e", x)
 }
 
-// seconds prints a time in at most 8 characters with its unit.
-func seconds(s float64) string {
-	switch {
-	case !finite(s) || s < 0:
-		return "-"
-	case s == 0:
-		return "0 s"
-	case s < 0.9995e-3:
-		return fmt.Sprintf("%.0f us", s*1e6)
-	case s < 0.9995:
-		return fmt.Sprintf("%.3g ms", s*1e3)
-	case s < 1e5:
-		return strconv.FormatFloat(s, 'f', max(0, 2-int(math.Log10(s))), 64) + " s"
-	}
-	return fmt.Sprintf("%.1e s", s)
-}
-
 // memory prints an amount of memory.
 func memory(n int64) string {
 	x, unit := float64(n), 0

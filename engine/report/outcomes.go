@@ -87,7 +87,7 @@ func trialItems(t trace.History) []labelled {
 		if !c.Reached {
 			end = "not reached"
 		}
-		add("column", "%d: %s, %s, true residual %s, %s", c.Index, plural(c.Iterations, "it", "its"), seconds(c.Seconds), sci(c.True), end)
+		add("column", "%d: %s, %s, true residual %s, %s", c.Index, plural(c.Iterations, "it", "its"), trace.Took(c.Seconds), sci(c.True), end)
 	}
 	return out
 }

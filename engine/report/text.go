@@ -85,7 +85,7 @@ func numbers(t trace.History) [6]string {
 		condition = sci(t.Condition.Estimate)
 	}
 	return [6]string{fmt.Sprint(t.Iterations), fmt.Sprint(t.Products), sci(t.TrueResidual), condition,
-		seconds(t.SetupTime.Seconds()), seconds(t.OwnTime.Seconds())}
+		trace.Took(t.SetupTime.Seconds()), trace.Took(t.OwnTime.Seconds())}
 }
 
 // findingLines tells every finding in full, rows by the names that facts know.
@@ -110,12 +110,14 @@ func findingLines(fs []diagnose.Finding, facts *inspect.Facts) []string {
 }
 
 func evidenceText(e diagnose.Evidence, facts *inspect.Facts) string {
-	s := e.Quantity + " = -"
-	if finite(e.Value) {
-		s = fmt.Sprintf("%s = %.6g", e.Quantity, e.Value)
-	}
-	if e.Unit != "" {
-		s += " " + e.Unit
+	s := e.Quantity + " = "
+	switch {
+	case e.Unit == "s":
+		s += trace.Took(e.Value)
+	case finite(e.Value):
+		s += strings.TrimSpace(fmt.Sprintf("%.6g %s", e.Value, e.Unit))
+	default:
+		s += strings.TrimSpace("- " + e.Unit)
 	}
 	if e.Iteration >= 0 {
 		s += fmt.Sprintf(", iteration %d", e.Iteration)
@@ -197,7 +199,7 @@ func aheadWords(r choose.Ranked) []string {
 	}
 	for i, n := range choose.Sides {
 		if n > 1 && r.For[i] > 0 {
-			words = append(words, fmt.Sprintf("for %d b %s", n, seconds(r.For[i])))
+			words = append(words, fmt.Sprintf("for %d b %s", n, trace.Took(r.For[i])))
 		}
 	}
 	return words
@@ -222,7 +224,7 @@ func notReached(c choose.Choice) string {
 		switch {
 		case r.Reached:
 		case r.Expected > 0 && finite(r.Expected):
-			list = append(list, r.Pairing+" (expected in "+seconds(r.Expected)+")")
+			list = append(list, r.Pairing+" (expected in "+trace.Took(r.Expected)+")")
 		default:
 			list = append(list, r.Pairing)
 		}
@@ -246,7 +248,7 @@ func settingItems(d Document) []labelled {
 		limits = fmt.Sprintf("at most %d iterations", s.Iterations)
 	}
 	if s.Seconds > 0 {
-		limits += ", " + seconds(s.Seconds)
+		limits += ", " + exact(s.Seconds) + " s"
 	}
 	machine := orDash(m.CPU) + ", " + plural(m.Threads, "thread", "threads")
 	if m.MemoryLimit > 0 {

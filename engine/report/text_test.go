@@ -90,8 +90,8 @@ func TestGolden(t *testing.T) {
 func TestHeadTells(t *testing.T) {
 	d := typical()
 	head := strings.Join(Head(d), "\n")
-	for _, want := range []string{"SYSTEM      sluice.mtx: 400 unknowns", "b = ones, not yours", "TODAY       cg+none: converged after 60 its, 60 ms, true",
-		"WHY         [measured] gmres:30+none: restarting", "USE         cg+ic:0, 20 its in 30 ms (set-up 2 ms), 39.1 KiB, 2.0 times", "DOUBT       counts on",
+	for _, want := range []string{"SYSTEM      sluice.mtx: 400 unknowns", "b = ones, not yours", "TODAY       cg+none: converged after 60 its, 60.0 ms, true",
+		"WHY         [measured] gmres:30+none: restarting", "USE         cg+ic:0, 20 its in 30.0 ms (set-up 2.00 ms), 39.1 KiB, 2.0 times", "DOUBT       counts on",
 		"REPEAT      dwindle run sluice.mtx --today cg+none (dwindle 0.1, go1, seed 1;", "FINGERPRINT 9f86"} {
 		if !strings.Contains(head, want) {
 			t.Errorf("no %q in\n%s", want, head)
