@@ -1,7 +1,11 @@
 package engine
 
 import (
+	"fmt"
 	"math"
+	"os"
+	"path/filepath"
+	"strings"
 	"testing"
 
 	"dwindle/engine/diagnose"
@@ -36,4 +40,62 @@ func TestProjectOntoWhatIsHeld(t *testing.T) {
 	if g, ok := finding(v, "unreachable-rhs", diagnose.OnSystem); ok {
 		t.Errorf("told twice: %s", g.Claim)
 	}
+}
+
+// An equation that repeats two others, and a right-hand side that does not: the
+// second look finds which, tells them by their names, and project solves for
+// what is in reach, whatever scales the system; no trial without it gets below.
+func TestProjectOfRepeatedEquations(t *testing.T) {
+	const n = 40
+	var out strings.Builder
+	entries := 0
+	entry := func(i, j int, v float64) {
+		if 0 <= j && j < n {
+			fmt.Fprintf(&out, "%d %d %.17g\n", i+1, j+1, v)
+			entries++
+		}
+	}
+	row := func(at, of int, by float64) {
+		entry(at, of, 3*by)
+		entry(at, of-1, -2*by)
+		entry(at, of+1, -0.9*by)
+	}
+	for i := range n {
+		if i != 20 {
+			row(i, i, 1)
+		}
+	}
+	row(20, 5, 0.7)
+	row(20, 31, 1.1)
+	folder := t.TempDir()
+	file := func(name, text string) string {
+		path := filepath.Join(folder, name)
+		if err := os.WriteFile(path, []byte(text), 0o600); err != nil {
+			t.Fatal(err)
+		}
+		return path
+	}
+	source := file("a.mtx", fmt.Sprintf("%%%%MatrixMarket matrix coordinate real general\n%d %d %d\n%s", n, n, entries, out.String()))
+	labels := file("labels.txt", strings.Repeat("joint\n", 20)+"hinge\n"+strings.Repeat("joint\n", n-21))
+	pairs := []string{"project/gmres:60+none", "project,scale/gmres:60+none", "scale,project/gmres:60+none", "gmres:60+none"}
+	v := ended(t, source, Options{Pairs: pairs, Labels: labels, RHS: "ones"})
+	// y = (0.7, 1.1, -1) on the rows 6, 32 and 21, b = 1 (closed form).
+	want := 0.8 / math.Sqrt(0.7*0.7+1.1*1.1+1) / math.Sqrt(n)
+	u := v.Facts.Unreachable
+	if u.Answer != inspect.Yes || math.Abs(u.Value-want) > 1e-12 {
+		t.Fatalf("unreachable: %+v, want %g", u, want)
+	}
+	for _, p := range pairs {
+		h := trial(t, v, p)
+		t.Logf("%s: %s after %d, true %g", p, h.Stop, h.Iterations, h.TrueResidual)
+		near := 1e-6
+		if strings.HasPrefix(p, "scale") {
+			near = 0.01 // the smallest residual is one in scaled units
+		}
+		if h.Stop == trace.Converged || near < 0.01 && h.Stop != trace.LeastSquares || math.Abs(h.TrueResidual-want) > near*want {
+			t.Errorf("%s ends %s (%s) at %g, want least-squares at %g", p, h.Stop, h.Reason, h.TrueResidual, want)
+		}
+	}
+	mustSay(t, v, "unreachable-rhs", diagnose.OnSystem, diagnose.Blocker, inspect.Measured, "21 = hinge", "depend on each other")
+	mustSay(t, v, "near-null", diagnose.OnSystem, diagnose.Blocker, inspect.Measured, "singular to rounding", "21 = hinge")
 }

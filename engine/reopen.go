@@ -155,7 +155,7 @@ func (s *Session) takeUp(sys linear.System) {
 	for _, t := range s.past.Trials {
 		last = max(last, t.ID)
 	}
-	sys.Null = inspect.ZeroDirections(s.facts)
+	sys.Null, sys.LeftNull = inspect.ZeroDirections(s.facts), inspect.LeftDirections(s.facts)
 	s.bench = run.NewBench(sys, s.limits(), s.opt.Memory, s.clock)
 	s.bench.NumberFrom(last + 1)
 	s.phase, s.openAt = Running, s.clock()-s.past.Elapsed

@@ -21,11 +21,21 @@ func vectors(sys linear.System, d report.Document) []report.Vector {
 				out = append(out, nullVector(i+1, v))
 			}
 		}
+		for i, v := range d.Facts.Study.Left {
+			if v.Vector != nil {
+				out = append(out, leftVector(i+1, v))
+			}
+		}
 	}
 	where := "left null space that pattern and sums show"
 	u := unreachable(sys)
-	if u == nil && d.Facts != nil && d.Facts.Study != nil && d.Facts.Symmetric.Answer == inspect.Yes {
-		u, where = along(sys.B, d.Facts.Study.Null), "span of the free directions"
+	if f := d.Facts; u == nil && f != nil && f.Study != nil {
+		switch {
+		case f.Symmetric.Answer == inspect.Yes:
+			u, where = along(sys.B, f.Study.Null), "span of the free directions"
+		case f.Unreachable.Answer == inspect.Yes:
+			u, where = along(sys.B, f.Study.Left), "span of the left directions"
+		}
 	}
 	if u != nil {
 		out = append(out, report.Vector{Name: "unreachable", Values: u, Comment: fmt.Sprintf(
@@ -62,6 +72,11 @@ func nullVector(k int, v inspect.NullDirection) report.Vector {
 		s += ", a " + v.Rigid
 	}
 	return report.Vector{Name: report.VectorName("null", fmt.Sprint(k)), Values: v.Vector, Comment: s}
+}
+
+func leftVector(k int, v inspect.NullDirection) report.Vector {
+	return report.Vector{Name: report.VectorName("left", fmt.Sprint(k)), Values: v.Vector, Comment: fmt.Sprintf(
+		"direction y %d that the transpose of A maps to zero: to %.3g of its size after equilibration; what b has along it no x can reach", k, v.Quotient)}
 }
 
 // unreachable is the part of b in the left null space that pattern and sums

@@ -45,6 +45,16 @@ var mechanism = Rule{"mechanism", func(c Case) []Finding {
 	return []Finding{g}
 }}
 
+// zeros is how many of the directions are free to rounding.
+func zeros(free []inspect.NullDirection) (k int) {
+	for _, d := range free {
+		if d.Quotient <= inspect.ZeroLimit {
+			k++
+		}
+	}
+	return k
+}
+
 // constants is how many free directions the row sums account for.
 func constants(f *inspect.Facts) int {
 	if f.RowSumsZero.Answer == inspect.Yes {
@@ -141,66 +151,4 @@ func pushing(f *inspect.Facts, free []inspect.NullDirection) float64 {
 		}
 	}
 	return math.Sqrt(sum)
-}
-
-// nearNull: a few directions are mapped nearly to zero, far below all others.
-var nearNull = Rule{"near-null", func(c Case) []Finding {
-	f := c.Facts
-	if f.Study == nil || len(f.Study.Null) <= constants(f) || f.SingularAtSight() && f.RowSumsZero.Answer != inspect.Yes ||
-		mechanism.Judge(c) != nil {
-		return nil
-	}
-	s := f.Study
-	d, last := s.Null[0], s.Null[len(s.Null)-1]
-	g := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: OnSystem, Claim: freeClaim(len(s.Null), last),
-		Advice: "if a mode of the model should be held, hold it; otherwise solve directly, trust only these digits, and " + reachable(c),
-		Try:    []string{"richardson:1+lu"},
-		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: last.Quotient, Iteration: none, Rows: d.Rows},
-			number("the next direction", last.Next, "")}}
-	if f.Symmetric.Answer == inspect.Yes {
-		g.Try = []string{"richardson:1+ldl"}
-	}
-	if last.Quotient <= inspect.ZeroLimit && f.PositiveDefinite.Answer != inspect.Yes {
-		g.Weight, g.Certainty = Blocker, inspect.Measured
-		g.Claim = "A is singular to rounding: " + g.Claim
-		g.Advice = "find out which equation repeats others, or which unknown nothing determines; b may be out of reach" + openDigits(f, last.Quotient)
-		g.Try = nil
-		if f.Symmetric.Answer == inspect.Yes {
-			g.Try = []string{"minres+none"}
-		}
-		return []Finding{g}
-	}
-	if x := s.Equilibrated; x != nil && x.Condition > 0 && s.Digits >= 0 {
-		g.Claim += fmt.Sprintf("; the condition %s leaves about %s of x", num(x.Condition), count(int(math.Round(s.Digits)), "correct digit"))
-		g.Evidence = append(g.Evidence, number("condition after equilibration", x.Condition, ""), number("correct digits to expect of x", math.Round(s.Digits), "about"))
-	}
-	g.Advice += openDigits(f, last.Quotient)
-	return []Finding{g}
-}}
-
-// reachable says which tolerance the trials show to be in reach.
-func reachable(c Case) string {
-	best, pairing := math.Inf(1), ""
-	for _, h := range c.Trials {
-		if h.BestTrue < best {
-			best, pairing = h.BestTrue, h.Pairing
-		}
-	}
-	if best > c.Tol && best < 1 {
-		return fmt.Sprintf("ask for no more than ||b-Ax|| allows: the smallest of ||b|| so far is %s, by %s", num(best), pairing)
-	}
-	return "ask for no smaller a residual than a direct solve gives"
-}
-
-// freeClaim tells how many directions are nearly free, and how far the least
-// free of them lies below the next.
-func freeClaim(n int, last inspect.NullDirection) string {
-	claim := "one direction is nearly free: after equilibration A maps it to " + num(last.Quotient) + " of its norm"
-	if n > 1 {
-		claim = fmt.Sprintf("%d directions are nearly free: after equilibration A maps them to %s of their norm or less", n, num(last.Quotient))
-	}
-	if last.Next > 0 {
-		claim += ", the next to " + num(last.Next)
-	}
-	return claim
 }

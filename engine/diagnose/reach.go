@@ -7,19 +7,65 @@ import (
 )
 
 // unreachable: a part of b is out of A's range, so that no x makes the
-// residual smaller than that part.
+// residual smaller than that part. Silent where it is not proved and a trial
+// has got clearly further.
 var unreachable = Rule{"unreachable-rhs", func(c Case) []Finding {
 	u := c.Facts.Unreachable
-	if u.Answer != inspect.Yes || !(u.Value > c.Tol) {
+	if u.Answer != inspect.Yes || !(u.Value > c.Tol) || u.Certainty != inspect.Proved && refuted(c, u.Value) {
 		return nil
 	}
-	return []Finding{{Weight: Blocker, Certainty: u.Certainty, Subject: OnSystem,
+	g := Finding{Weight: Blocker, Certainty: u.Certainty, Subject: OnSystem,
 		Claim: fmt.Sprintf("no x brings ||b-Ax||/||b|| below %s: that part of b is out of A's range (%s)",
 			fmt.Sprintf("%.6g", u.Value), u.Why),
 		Advice:   "fix one unknown, make b consistent, or solve for its reachable part",
 		Try:      []string{"minres+none", "project/cg+jacobi"},
-		Evidence: []Evidence{{Quantity: "unreachable part of b", Value: u.Value, Unit: "of ||b||", Iteration: none, Rows: u.Rows}}}}
+		Evidence: []Evidence{{Quantity: "unreachable part of b", Value: u.Value, Unit: "of ||b||", Iteration: none, Rows: u.Rows}}}
+	if c.Facts.Symmetric.Answer != inspect.Yes {
+		g.Try = []string{"project/gmres:30+none"}
+	}
+	if left := leftOf(c.Facts); len(left) > 0 && c.Facts.ColSumsZero.Answer != inspect.Yes {
+		where, rows := c.equations(left)
+		g.Claim += "; " + where
+		g.Advice = "these equations say the same of x and not of b: correct one of them, make b consistent, or solve for its reachable part"
+		g.Evidence[0].Rows = rows
+		g.Evidence = append(g.Evidence, number("||A'y||/(||A|| ||y||) after equilibration", left[0].Quotient, ""))
+	}
+	return []Finding{g}
 }}
+
+// refuted says whether a trial has left less than half of a residual.
+func refuted(c Case, residual float64) bool {
+	for _, h := range c.Trials {
+		if h.BestTrue > 0 && 2*h.BestTrue < residual {
+			return true
+		}
+	}
+	return false
+}
+
+// leftOf returns the left directions of a nonsymmetric A.
+func leftOf(f *inspect.Facts) []inspect.NullDirection {
+	if f.Study == nil {
+		return nil
+	}
+	return f.Study.Left
+}
+
+// equations names the rows of the most local left direction: which equations
+// repeat each other.
+func (c Case) equations(left []inspect.NullDirection) (claim string, rows []int) {
+	d := mostLocal(left)
+	rows, share := localRows(d)
+	switch {
+	case d.Support <= len(rows):
+		claim = fmt.Sprintf("the equations of %s depend on each other", c.list(rows, 6))
+	case share >= 0.5:
+		claim = fmt.Sprintf("%d equations depend on each other, %.0f %% of it in %s", d.Support, 100*share, c.list(rows, 6))
+	default:
+		claim = fmt.Sprintf("%d equations depend on each other", d.Support)
+	}
+	return claim, rows
+}
 
 // outOfReach says whether every trial without projection must fail.
 func outOfReach(c Case) bool {

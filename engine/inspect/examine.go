@@ -85,6 +85,7 @@ type exam struct {
 	replaced []bool               // rows of the identity whose columns are not; nil: none
 	half     *direct.Definiteness // of (A+Aᵀ)/2; nil: not looked at
 	free     [][]float64          // nearly free directions of B, orthonormal
+	fromLeft [][]float64          // those of Bᵀ to the same singular values, where they were found densely
 }
 
 // facts returns the facts with a copy of the study so far.

@@ -18,8 +18,8 @@ type both struct{ direct.Solver }
 
 func (s both) SolveT(dst, b []float64) { s.Solve(dst, b) }
 
-// tinyShift makes a singular symmetric matrix, equilibrated, one that can be
-// factorised: its free directions stand out all the more.
+// tinyShift makes a singular matrix, equilibrated, one that can be factorised:
+// its free directions stand out all the more.
 const tinyShift = 1e-9
 
 // equilibrateWork is the operations an entry that an equilibration takes.
@@ -99,6 +99,14 @@ func (e *exam) factorGeneral() error {
 		return nil
 	}
 	f, err := direct.FactorLU(e.ctx, e.scaled, plan, nil)
+	var pivot *direct.PivotError
+	if errors.As(err, &pivot) && e.spend(plan.Work) {
+		e.singular = true
+		b := plusIdentity(e.scaled, tinyShift)
+		if f, err = direct.FactorLU(e.ctx, b, direct.PredictLU(b, direct.Best), nil); err == nil {
+			e.shift = tinyShift
+		}
+	}
 	if err != nil {
 		return err
 	}

@@ -33,9 +33,13 @@ func (e *exam) freeDirections() error {
 		return err
 	}
 	k := apart(append(quotients, next), rigid)
-	e.free = localise(e.free[:k], rigid)
+	zero := rigid // those beyond are free, but not to rounding: one is not mixed with the other
+	for zero < k && quotients[zero] <= ZeroLimit {
+		zero++
+	}
+	e.free = append(localise(e.free[:zero], rigid), localise(e.free[zero:k], 0)...)
 	for j, v := range e.free {
-		d := e.direction(v, norm)
+		d := e.direction(v, e.col, e.quotient(v, norm))
 		d.Next = next
 		if k < len(quotients) {
 			d.Next = quotients[k]
@@ -43,9 +47,12 @@ func (e *exam) freeDirections() error {
 		if j < rigid {
 			d.Rigid = e.rigidKind(v)
 		}
+		if e.symmetric {
+			d.Load = e.load(d.Vector)
+		}
 		e.out.Null = append(e.out.Null, d)
 	}
-	return nil
+	return e.leftDirections(norm)
 }
 
 // scaledNorm is ‖B‖₂ as far as it is known, else its largest row sum.
@@ -85,8 +92,16 @@ func (e *exam) searchFree(norm float64, quotients *[]float64) (next float64, err
 			return math.NaN(), err
 		}
 		q := e.quotient(v, norm)
+		if q <= freeLimit && e.shift != 0 && !e.symmetric {
+			v = e.unshifted(v, e.free, e.solver.Solve)
+			q = e.quotient(v, norm)
+		}
 		if q > freeLimit {
 			return q, nil
+		}
+		if q > ZeroLimit && e.singular && !e.symmetric && len(e.free) == 0 && e.f.N <= e.budget.Dense {
+			e.solver = nil // a zero eigenvalue that is defective: the shift hides its direction
+			return e.denseFree(norm, quotients), nil
 		}
 		e.free = append(e.free, v)
 		*quotients = append(*quotients, q)
@@ -101,12 +116,13 @@ func (e *exam) denseFree(norm float64, quotients *[]float64) (next float64) {
 	if !e.singular || e.symmetric || !e.densely(e.f.N, 20) {
 		return next
 	}
-	for _, v := range spectrum.DenseNull(e.scaled, 1) {
+	left, right := spectrum.DenseNull(e.scaled, 1)
+	for k, v := range right {
 		q := e.quotient(v, norm)
 		if q > freeLimit || len(e.free) == mostFree {
 			return q
 		}
-		e.free, *quotients = append(e.free, v), append(*quotients, q)
+		e.free, e.fromLeft, *quotients = append(e.free, v), append(e.fromLeft, left[k]), append(*quotients, q)
 	}
 	return next
 }
@@ -205,9 +221,10 @@ func without(v [][]float64, w []float64, row int) [][]float64 {
 	return basis[1:]
 }
 
-// direction describes one, v of unit length in the equilibrated units.
-func (e *exam) direction(v []float64, norm float64) NullDirection {
-	d := NullDirection{Quotient: e.quotient(v, norm), Next: math.NaN(), Load: math.NaN(), Support: support(v)}
+// direction describes one, v of unit length in the equilibrated units; scale
+// takes it back to the user's.
+func (e *exam) direction(v, scale []float64, quotient float64) NullDirection {
+	d := NullDirection{Quotient: quotient, Next: math.NaN(), Load: math.NaN(), Support: support(v)}
 	var t top
 	for i, x := range v {
 		t.add(i, x*x)
@@ -220,11 +237,16 @@ func (e *exam) direction(v []float64, norm float64) NullDirection {
 	}
 	d.Vector = make([]float64, len(v))
 	for i, x := range v {
-		d.Vector[i] = e.col[i] * x
+		d.Vector[i] = scale[i] * x
 	}
 	linear.Scale(d.Vector, 1/max(linear.Norm2(d.Vector), tinyDivide), d.Vector)
-	if e.symmetric && len(e.s.B) == len(v) && e.f.RHSNorm > 0 {
-		d.Load = math.Abs(linear.Dot(d.Vector, e.s.B)) / e.f.RHSNorm
-	}
 	return d
+}
+
+// load is the part of b along a unit vector; NaN without b.
+func (e *exam) load(v []float64) float64 {
+	if len(e.s.B) != len(v) || !(e.f.RHSNorm > 0) {
+		return math.NaN()
+	}
+	return math.Abs(linear.Dot(v, e.s.B)) / e.f.RHSNorm
 }

@@ -3,13 +3,7 @@ package inspect
 import (
 	"fmt"
 	"math"
-
-	"dwindle/engine/linear"
 )
-
-// pushes is the part of b along the free directions above which rounding does
-// not explain it.
-const pushes = 1e-10
 
 // settle folds what the study has found into those facts that were left open:
 // nothing that was proved or measured before is changed.
@@ -89,47 +83,6 @@ func (e *exam) settleDefinite(f *Facts) {
 	if f.Semidefinite.Answer == Unknown {
 		f.Semidefinite = fact(Yes, Measured, 0, f.Singular.Rows, "%s", f.NegativeCount.Why)
 	}
-}
-
-// settleUnreachable: b is in A's range where A is regular, and of a symmetric A
-// where b is orthogonal to all that is free.
-func (e *exam) settleUnreachable(f *Facts) {
-	if f.Unreachable.Answer != Unknown || len(e.s.B) != f.N {
-		return
-	}
-	free := e.freeToRounding()
-	switch {
-	case f.Singular.Answer == No:
-		f.Unreachable = fact(No, f.Singular.Certainty, 0, nil, "A is regular")
-	case len(free) == 0 || len(free) == mostFree:
-	case !e.symmetric:
-		f.Unreachable = unknown("A is singular to rounding; its left null vectors were not looked for")
-	default:
-		f.Unreachable = e.unreachableBy(free)
-	}
-}
-
-// unreachableBy measures the part of b in the span of the free directions of a
-// symmetric A.
-func (e *exam) unreachableBy(free []NullDirection) Fact {
-	b, what := e.s.B, count(len(free), "direction", "directions")
-	sum, basis := 0.0, [][]float64(nil)
-	for _, d := range free {
-		v := append([]float64(nil), d.Vector...)
-		for range 2 {
-			for _, w := range basis {
-				linear.Axpy(-linear.Dot(w, v), w, v)
-			}
-		}
-		linear.Scale(v, 1/max(linear.Norm2(v), tinyDivide), v)
-		basis = append(basis, v)
-		sum += linear.Dot(v, b) * linear.Dot(v, b)
-	}
-	part := math.Sqrt(sum) / e.f.RHSNorm
-	if part > pushes {
-		return fact(Yes, Measured, part, free[0].Rows, "%.6g of b lies along %s, free to rounding", part, what)
-	}
-	return fact(No, Measured, part, nil, "%.1g of b lies along %s, free to rounding", part, what)
 }
 
 // settleSymmetricPart says whether (A+Aᵀ)/2 is positive definite, of an A that

@@ -11,6 +11,7 @@ type Study struct {
 	Raw, Equilibrated, Jacobi, Rest *Spectrum
 
 	Null      []NullDirection // nearly free directions, the freest first
+	Left      []NullDirection // of a nonsymmetric A: as many that Aᵀ maps to zero as A does, to rounding
 	Normality *Normality      // of a nonsymmetric A
 	Density   []Bin           // of the eigenvalues of a symmetric A
 	Couplings *Couplings
@@ -42,14 +43,16 @@ type Spectrum struct {
 	Values                  []complex128 // all eigenvalues where Exact, ordered by real part
 }
 
-// NullDirection is one direction that A nearly maps to zero.
+// NullDirection is one direction that A, or of the left ones Aᵀ, nearly maps to
+// zero.
 type NullDirection struct {
 	Quotient float64   // ‖Av‖/(‖A‖‖v‖), after equilibration
 	Next     float64   // the same of the next direction: how isolated it is; NaN
 	Rows     []int     // that carry it, the largest first, at most 16
 	Shares   []float64 // of ‖v‖², of these rows
 	Rigid    string    // "translation", "rotation" or "" : a motion of the coordinates
-	Load     float64   // |vᵀb|/(‖v‖‖b‖) of a symmetric A: the part of b that pushes along it; NaN
+	Load     float64   // |vᵀb|/(‖v‖‖b‖) of a left one, or of a symmetric A: the part of b that pushes along it; NaN
+	Rounding float64   // of a left one: ‖vᵀA‖ over 2⁻⁵³ ‖|v|ᵀ|A|‖, after equilibration: up to a few, rounding A's entries alone accounts for it
 	Support  int       // rows that carry 99 % of it
 	Vector   []float64 `json:"-"` // length n, in the user's units
 }

@@ -18,3 +18,17 @@ func ZeroDirections(f *Facts) (out [][]float64) {
 	}
 	return out
 }
+
+// LeftDirections are the vectors, in the user's units and of length n, that the
+// study found the transpose of a nonsymmetric A to map to zero, to rounding.
+func LeftDirections(f *Facts) (out [][]float64) {
+	if f == nil || f.Study == nil {
+		return nil
+	}
+	for _, d := range f.Study.Left {
+		if len(d.Vector) == f.N {
+			out = append(out, d.Vector)
+		}
+	}
+	return out
+}

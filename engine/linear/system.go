@@ -38,6 +38,9 @@ type System struct {
 	// Null are vectors of length n that a symmetric A was found to map to zero,
 	// to rounding, beyond the constants that its sums show; nil: none known.
 	Null [][]float64
+	// LeftNull are vectors y of length n with yᵀA = 0, to rounding, that were
+	// found of an A that is not symmetric; nil: none known.
+	LeftNull [][]float64
 	// Second marks the unknowns of the second block of a saddle system (length
 	// n), such as pressures; nil: those with a zero on the diagonal.
 	Second []bool

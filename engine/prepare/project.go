@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"math"
+	"slices"
 
 	"dwindle/engine/linear"
 )
@@ -44,7 +45,7 @@ func applyProject(ctx context.Context, s linear.System, _ linear.Values) (linear
 		at = a.Transpose()
 	}
 	null := linear.LeftNull(a, at, linear.FindComponents(a), s.Delta())
-	found := beside(null, at, s.Null)
+	found := beside(null, at, slices.Concat(s.Null, s.LeftNull))
 	if len(null.Size)+len(found) == 0 {
 		return s, nil, errors.New("project knows no null vector: no component of the matrix has columns that all sum to zero, no row is empty, and factorising has shown none")
 	}

@@ -7,6 +7,7 @@ import "dwindle/engine/inspect"
 type studyJSON struct {
 	Spectra   []spectrumJSON `json:"spectra"`
 	Null      []nullJSON     `json:"free_directions"`
+	Left      []nullJSON     `json:"left_directions"`
 	Normality *normalityJSON `json:"normality"`
 	Density   []binJSON      `json:"density"`
 	Couplings *couplingsJSON `json:"couplings"`
@@ -117,7 +118,7 @@ func toStudy(f *inspect.Facts) *studyJSON {
 		return nil
 	}
 	s := f.Study
-	j := &studyJSON{Spectra: []spectrumJSON{}, Null: all(s.Null, toNull), Density: all(s.Density, toBin), Lines: all(s.Lines, toLines), Digits: number(s.Digits)}
+	j := &studyJSON{Spectra: []spectrumJSON{}, Null: all(s.Null, toNull), Left: all(s.Left, toNull), Density: all(s.Density, toBin), Lines: all(s.Lines, toLines), Digits: number(s.Digits)}
 	for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
 		if x != nil {
 			j.Spectra = append(j.Spectra, toSpectrum(*x))

@@ -33,7 +33,10 @@ func studyItems(f *inspect.Facts) []labelled {
 		add("digits of x", fmt.Sprintf("about %.0f correct decimal digits to expect, from the condition after equilibration", max(s.Digits, 0)))
 	}
 	for _, v := range s.Null {
-		add("free direction", nullText(v, f))
+		add("free direction", "A maps it to "+nullText(v, f))
+	}
+	for _, v := range s.Left {
+		add("left direction", "A^T maps it to "+nullText(v, f))
 	}
 	add("normality", normalityText(s.Normality))
 	add("couplings", couplingsText(s.Couplings))
@@ -130,8 +133,9 @@ func nextLow(x inspect.Spectrum) float64 {
 	return math.NaN()
 }
 
+// nullText tells what comes of a direction, after "A maps it to".
 func nullText(v inspect.NullDirection, f *inspect.Facts) string {
-	s := fmt.Sprintf("A maps it to %s of its size", short(v.Quotient))
+	s := short(v.Quotient) + " of its size"
 	if finite(v.Next) && v.Next > 0 {
 		s += ", the next to " + short(v.Next)
 	}
@@ -139,7 +143,11 @@ func nullText(v inspect.NullDirection, f *inspect.Facts) string {
 		s += ", a " + v.Rigid
 	}
 	if v.Load > 0 && finite(v.Load) {
-		s += fmt.Sprintf(", b pushes along it with %s of its norm", short(v.Load))
+		push := ", b pushes along it with %s of its norm"
+		if f.Symmetric.Answer != inspect.Yes {
+			push = ", b has %s of its norm along it"
+		}
+		s += fmt.Sprintf(push, short(v.Load))
 	}
 	if v.Support > 0 {
 		s += fmt.Sprintf("; 99 %% of it lies in %s", plural(v.Support, "row", "rows"))

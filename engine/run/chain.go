@@ -17,7 +17,7 @@ func chain(ctx context.Context, preps []Prep, s linear.System) (linear.System, p
 			return s, nil, err
 		}
 		carryNearNull(&next, s, b)
-		next.Null = carried(s.Null, b)
+		next.Null, next.LeftNull = carried(s.Null, b), prepare.CarryLeft(s.LeftNull, b)
 		carrySecond(&next, s, b)
 		if back == nil {
 			back = b

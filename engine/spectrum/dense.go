@@ -42,22 +42,23 @@ func DenseSingular(a *linear.CSR) []float64 {
 	return s.Values(nil)
 }
 
-// DenseNull returns the right singular vectors of a square matrix whose singular
+// DenseNull returns the singular vectors of a square matrix whose singular
 // values are at most the limit times the largest one, the smallest first, each
-// of unit length. Nil where there are none, or the iteration fails.
-func DenseNull(a *linear.CSR, limit float64) [][]float64 {
+// of unit length: a maps right[k] to a multiple of left[k]. Nil where there are
+// none, or the iteration fails.
+func DenseNull(a *linear.CSR, limit float64) (left, right [][]float64) {
 	var s mat.SVD
-	if !s.Factorize(full(a), mat.SVDFullV) {
-		return nil
+	if !s.Factorize(full(a), mat.SVDFull) {
+		return nil, nil
 	}
 	values := s.Values(nil)
-	var v mat.Dense
+	var u, v mat.Dense
+	s.UTo(&u)
 	s.VTo(&v)
-	var out [][]float64
 	for k := len(values) - 1; k >= 0 && values[k] <= limit*values[0]; k-- {
-		out = append(out, mat.Col(nil, k, &v))
+		left, right = append(left, mat.Col(nil, k, &u)), append(right, mat.Col(nil, k, &v))
 	}
-	return out
+	return left, right
 }
 
 // DenseEigenvalues returns all eigenvalues of a square matrix by rising real

@@ -1,0 +1,96 @@
+package diagnose
+
+import (
+	"fmt"
+	"math"
+
+	"dwindle/engine/inspect"
+)
+
+// nearNull: a few directions are mapped nearly to zero, far below all others.
+var nearNull = Rule{"near-null", func(c Case) []Finding {
+	f := c.Facts
+	if f.Study == nil || len(f.Study.Null) <= constants(f) || f.SingularAtSight() && f.RowSumsZero.Answer != inspect.Yes ||
+		mechanism.Judge(c) != nil {
+		return nil
+	}
+	s := f.Study
+	d, last := s.Null[0], s.Null[len(s.Null)-1]
+	g := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: OnSystem, Claim: freeClaim(len(s.Null), last),
+		Advice: "if a mode of the model should be held, hold it; otherwise solve directly, trust only these digits, and " + reachable(c),
+		Try:    []string{"richardson:1+lu"},
+		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: last.Quotient, Iteration: none, Rows: d.Rows},
+			number("the next direction", last.Next, "")}}
+	if f.Symmetric.Answer == inspect.Yes {
+		g.Try = []string{"richardson:1+ldl"}
+	}
+	if zeros(s.Null) > constants(f) && f.PositiveDefinite.Answer != inspect.Yes {
+		c.singularToRounding(&g)
+		return []Finding{g}
+	}
+	if x := s.Equilibrated; x != nil && x.Condition > 0 && s.Digits >= 0 {
+		g.Claim += fmt.Sprintf("; the condition %s leaves about %s of x", num(x.Condition), count(int(math.Round(s.Digits)), "correct digit"))
+		g.Evidence = append(g.Evidence, number("condition after equilibration", x.Condition, ""), number("correct digits to expect of x", math.Round(s.Digits), "about"))
+	}
+	g.Advice += openDigits(f, last.Quotient)
+	return []Finding{g}
+}}
+
+// singularToRounding words a finding on directions that A maps to zero to
+// rounding: which unknowns carry them, which equations depend on each other,
+// and whether b is within reach.
+func (c Case) singularToRounding(g *Finding) {
+	f := c.Facts
+	free := f.Study.Null
+	g.Weight, g.Certainty = Blocker, inspect.Measured
+	g.Claim = "A is singular to rounding: " + g.Claim
+	if rows, share := localRows(mostLocal(free)); share >= 0.5 {
+		g.Claim += fmt.Sprintf("; %.0f %% of it in the unknowns of %s", 100*share, c.list(rows, 6))
+	}
+	g.Advice = "find out which equation repeats others, or which unknown nothing determines; b may be out of reach"
+	g.Try = nil
+	if left := leftOf(f); len(left) > 0 && !outOfReach(c) { // else told with b
+		where, rows := c.equations(left)
+		g.Claim += "; " + where
+		g.Evidence = append(g.Evidence, Evidence{Quantity: "||A'y||/(||A|| ||y||) after equilibration", Value: left[0].Quotient, Iteration: none, Rows: rows})
+	}
+	symmetric := f.Symmetric.Answer == inspect.Yes
+	switch u := f.Unreachable; {
+	case symmetric:
+		g.Try = []string{"minres+none"}
+	case u.Answer == inspect.Yes:
+		g.Advice = "find out which equation repeats others, or which unknown nothing determines; until then solve for the part of b that is in reach"
+		g.Try = []string{"project/gmres:30+none"}
+	case u.Answer == inspect.No:
+		g.Advice = "find out which equation repeats others, or which unknown nothing determines; b is consistent all the same, so that answers exist, up to this direction"
+		g.Try = []string{"gmres:30+none"}
+	}
+	g.Advice += openDigits(f, free[0].Quotient)
+}
+
+// reachable says which tolerance the trials show to be in reach.
+func reachable(c Case) string {
+	best, pairing := math.Inf(1), ""
+	for _, h := range c.Trials {
+		if h.BestTrue < best {
+			best, pairing = h.BestTrue, h.Pairing
+		}
+	}
+	if best > c.Tol && best < 1 {
+		return fmt.Sprintf("ask for no more than ||b-Ax|| allows: the smallest of ||b|| so far is %s, by %s", num(best), pairing)
+	}
+	return "ask for no smaller a residual than a direct solve gives"
+}
+
+// freeClaim tells how many directions are nearly free, and how far the least
+// free of them lies below the next.
+func freeClaim(n int, last inspect.NullDirection) string {
+	claim := "one direction is nearly free: after equilibration A maps it to " + num(last.Quotient) + " of its norm"
+	if n > 1 {
+		claim = fmt.Sprintf("%d directions are nearly free: after equilibration A maps them to %s of their norm or less", n, num(last.Quotient))
+	}
+	if last.Next > 0 {
+		claim += ", the next to " + num(last.Next)
+	}
+	return claim
+}
