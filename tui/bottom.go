@@ -84,8 +84,8 @@ func (m *model) lead() []string {
 	case f == nil:
 		return m.leadChoice()
 	}
-	head := fmt.Sprintf("%s %s: %s", m.findingMark(*f), m.subject(*f), m.signs.clean(f.Claim))
-	place := fmt.Sprintf("%d of %d", m.indexOf(f)+1, len(m.snap.Findings))
+	head := fmt.Sprintf("%s %s: %s", m.findingMark(*f), m.subject(*f), m.claim(*f))
+	place := fmt.Sprintf("1 of %d", len(m.findings()))
 	return []string{
 		m.on.paint(inkOfWeight(f.Weight), ends(head, place, m.w)),
 		ends("  "+m.signs.clean(f.Advice), m.leadKey(f), m.w),
@@ -125,22 +125,16 @@ func (m *model) leadChoice() []string {
 	return []string{clip("no finding; best so far: "+m.signs.clean(c.Pairing), m.w), clip("  "+why, m.w)}
 }
 
+// findings are those of the snapshot as a reader wants them.
+func (m *model) findings() []diagnose.Finding { return diagnose.Fold(m.snap.Findings) }
+
 // leading is the finding that matters most, nil if there is none.
 func (m *model) leading() *diagnose.Finding {
-	if len(m.snap.Findings) == 0 {
+	list := m.findings()
+	if len(list) == 0 {
 		return nil
 	}
-	return &m.snap.Findings[0]
-}
-
-// indexOf is the place of a finding of the snapshot.
-func (m *model) indexOf(f *diagnose.Finding) int {
-	for i := range m.snap.Findings {
-		if f == &m.snap.Findings[i] {
-			return i
-		}
-	}
-	return 0
+	return &list[0]
 }
 
 // subject names what a finding is about, with the trial's number.
@@ -149,6 +143,11 @@ func (m *model) subject(f diagnose.Finding) string {
 		return fmt.Sprintf("%d %s", id, m.signs.clean(f.Subject))
 	}
 	return m.signs.clean(f.Subject)
+}
+
+// claim is what a finding says, behind its subject.
+func (m *model) claim(f diagnose.Finding) string {
+	return m.signs.clean(strings.TrimPrefix(f.Claim, f.Subject+" "))
 }
 
 // findingMark is one sign for the weight of a finding.

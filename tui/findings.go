@@ -61,12 +61,12 @@ func (v *findingsView) move(m *model, step int) {
 }
 
 // items is the number of lines of the list: the findings and the choice.
-func (v *findingsView) items(m *model) int { return len(m.snap.Findings) + 1 }
+func (v *findingsView) items(m *model) int { return len(m.findings()) + 1 }
 
 // picked is the picked finding, nil for the choice.
 func (v *findingsView) picked(m *model) *diagnose.Finding {
-	if v.at < len(m.snap.Findings) {
-		return &m.snap.Findings[v.at]
+	if list := m.findings(); v.at < len(list) {
+		return &list[v.at]
 	}
 	return nil
 }
@@ -107,16 +107,17 @@ func (v *findingsView) row(m *model, i, w int) string {
 	if i == v.at {
 		mark = "> "
 	}
-	if i == len(m.snap.Findings) {
+	list := m.findings()
+	if i == len(list) {
 		pairing := m.snap.Choice.Pairing
 		if pairing == "" {
 			pairing = "none yet"
 		}
 		return clip(mark+"+ choice: "+m.signs.clean(pairing), w)
 	}
-	f := m.snap.Findings[i]
+	f := list[i]
 	front := mark + m.findingMark(f) + " " + left(m.subject(f), min(w/4, 30))
-	return m.on.paint(inkOfWeight(f.Weight), clip(front+" "+m.signs.clean(f.Claim), w))
+	return m.on.paint(inkOfWeight(f.Weight), clip(front+" "+m.claim(f), w))
 }
 
 // text is the picked finding, or the choice, in full.
@@ -135,6 +136,9 @@ func (m *model) findingText(f diagnose.Finding, w int) []string {
 		lines[i] = m.on.paint(strong, lines[i])
 	}
 	lines = append(lines, clip(fmt.Sprintf("%s, %s; about %s", f.Weight, f.Certainty, m.subject(f)), w))
+	if len(f.Also) > 0 {
+		lines = append(lines, paragraph("also of "+m.signs.clean(strings.Join(f.Also, ", ")), 2, w)...)
+	}
 	if len(f.Evidence) > 0 {
 		lines = append(lines, "", "rests on")
 		for _, e := range f.Evidence {

@@ -42,6 +42,7 @@ type Finding struct {
 	Try       []string // pairings this finding offers to start
 	Evidence  []Evidence
 	Also      []string // other pairings of which the same is said
+	Outdone   bool     // of a trial that nobody asked for and another one has outdone
 	// Predicts are the counts that this finding foresees for its tries, to be
 	// held against what comes of them.
 	Predicts []Predicted

@@ -204,6 +204,6 @@ func soften(c Case, f *Finding) {
 		best, ok = Utmost(c.Facts, c.Trials)
 	}
 	if c.Race && isTrial && !h.Today && ok && h.Pairing != best.Pairing {
-		f.Weight = Note
+		f.Weight, f.Outdone = Note, true
 	}
 }

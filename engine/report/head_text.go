@@ -48,6 +48,7 @@ func leading(fs []diagnose.Finding) []diagnose.Finding {
 	cause := slices.ContainsFunc(fs, func(f diagnose.Finding) bool {
 		return f.Weight != diagnose.Note && f.Rule != "today-beaten"
 	})
+	fs = diagnose.Fold(fs)
 	var out []diagnose.Finding
 	for _, w := range []diagnose.Weight{diagnose.Blocker, diagnose.Drag, diagnose.Note} {
 		for _, f := range fs {

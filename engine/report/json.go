@@ -93,7 +93,7 @@ func JSON(w io.Writer, d Document) error {
 			number(d.Settings.Seconds), d.Settings.Seed, optional(d.Settings.FieldTols)},
 		System:   toSystem(d),
 		Facts:    toFacts(d.Facts),
-		Trials:   toTrials(d.Trials),
+		Trials:   toTrials(d.Trials, d.Facts),
 		Findings: toFindings(d.Findings, d.Facts),
 		Choice:   toChoice(d),
 		Elapsed:  number(d.Elapsed.Seconds()),

@@ -14,6 +14,7 @@ type findingJSON struct {
 	Advice    string         `json:"advice"`
 	Try       []string       `json:"try"`
 	Evidence  []evidenceJSON `json:"evidence"`
+	Also      []string       `json:"also"` // other pairings of which the same is said
 }
 
 type evidenceJSON struct {
@@ -30,7 +31,7 @@ func toFindings(fs []diagnose.Finding, facts *inspect.Facts) []findingJSON {
 	for _, f := range fs {
 		j := findingJSON{Rule: tame(f.Rule), Weight: string(f.Weight), Certainty: string(f.Certainty),
 			Subject: tame(f.Subject), Claim: tame(f.Claim), Advice: tame(f.Advice), Try: tameAll(f.Try),
-			Evidence: []evidenceJSON{}}
+			Evidence: []evidenceJSON{}, Also: tameAll(f.Also)}
 		for _, e := range f.Evidence {
 			k := evidenceJSON{tame(e.Quantity), number(e.Value), tame(e.Unit), nil, fromOne(e.Rows), labels(e.Rows, facts)}
 			if e.Iteration >= 0 {
@@ -50,7 +51,15 @@ func labels(rows []int, facts *inspect.Facts) []string {
 		return out
 	}
 	for _, r := range rows {
-		out = append(out, tame(facts.Names.Label(r)))
+		out = append(out, labelOf(r, facts))
 	}
 	return out
+}
+
+// labelOf is the label of a row, empty where it has none.
+func labelOf(row int, facts *inspect.Facts) string {
+	if facts == nil {
+		return ""
+	}
+	return tame(facts.Names.Label(row))
 }

@@ -24,11 +24,11 @@ var keys = map[string]string{
 	"system":                "name unknowns entries rhs digits fingerprint",
 	"facts":                 "symmetric positive_definite singular components pattern_symmetric negative_definite diagonal singletons unreachable triangle_only dominant",
 	"facts.*":               "answer certainty value why rows",
-	"trials.#":              "pairing today stop iterations products precond_uses setup_seconds own_seconds memory_bytes norm residual true_residual backward_error componentwise_error error would_stop condition reason locks energy_errors delay_iterations harmonic_ritz predictions without fields preconditioner_probe rerun_iterations columns",
+	"trials.#":              "pairing today stop iterations products precond_uses setup_seconds own_seconds memory_bytes norm residual true_residual backward_error componentwise_error error would_stop condition reason locks energy_errors delay_iterations harmonic_ritz predictions without fields preconditioner_probe rerun_iterations columns worst_rows worst_row_labels build events",
 	"trials.#.would_stop":   "rhs initial preconditioned backward energy",
 	"trials.#.condition":    "of estimate smallest largest settled bound",
-	"findings.#":            "rule weight certainty subject claim advice try evidence",
-	"findings.#.evidence.#": "quantity value unit iteration rows",
+	"findings.#":            "rule weight certainty subject claim advice try evidence also",
+	"findings.#.evidence.#": "quantity value unit iteration rows labels",
 	"choice":                "pairing ranked reasons doubts settings ruled_out outcomes goal",
 	"choice.ranked.#":       "pairing seconds_to_tol memory_bytes seconds_low seconds_high for",
 	"choice.ranked.#.for.#": "right_hand_sides seconds",
@@ -108,6 +108,32 @@ func sorted(m map[string]any) []string {
 	}
 	sort.Strings(ks)
 	return ks
+}
+
+// TestJSONNames: wherever JSON counts rows it gives their labels, and a finding
+// lists the other pairings that it holds for.
+func TestJSONNames(t *testing.T) {
+	d := typical()
+	facts := *d.Facts
+	facts.Names.Labels = []string{"1:ux", "1:uy", "", "7:rz\x1b", "9:ux"}
+	d.Facts = &facts
+	d.Findings[1].Also = []string{"gmres:30+jacobi"}
+	d.Trials[1].WorstRows = []trace.RowShare{{Row: 4, Share: 0.9}, {Row: 2, Share: 0.1}}
+	d.Trials[2].Events = append(d.Trials[2].Events, trace.Event{Iter: 3, Kind: trace.NegativeCurvature, Rows: []trace.RowShare{{Row: 1}}})
+	root := decode(t, d)
+	for path, want := range map[string]string{
+		"trials.#.worst_rows":          "[[] [5 3] [] []]",
+		"trials.#.worst_row_labels":    "[[] [9:ux ] [] []]",
+		"trials.#.events.#.rows":       "[[2]]",
+		"trials.#.events.#.labels":     "[[1:uy]]",
+		"trials.#.build.broke.#.label": "[7:rz?]",
+		"findings.#.evidence.#.labels": "[[1:ux 9:ux]]",
+		"findings.#.also":              "[[] [gmres:30+jacobi]]",
+	} {
+		if got := fmt.Sprint(follow(root, path)); got != want {
+			t.Errorf("%s = %s, want %s", path, got, want)
+		}
+	}
 }
 
 // TestJSONValues: rows count from 1, unknown is null, the value is the value.

@@ -3,6 +3,7 @@ package report
 import (
 	"math"
 
+	"dwindle/engine/inspect"
 	"dwindle/engine/trace"
 )
 
@@ -31,6 +32,7 @@ type trialJSON struct {
 	CPUShare      number        `json:"cpu_share"`
 	UnsolvedRows  int           `json:"unsolved_rows"`
 	WorstRows     []int         `json:"worst_rows"`
+	WorstLabels   []string      `json:"worst_row_labels"` // empty if none were given
 	Build         buildJSON     `json:"build"`
 	Events        []eventJSON   `json:"events"`
 	deepJSON
@@ -71,22 +73,24 @@ type pivotJSON struct {
 	Row   int    `json:"row"`
 	Value number `json:"value"`
 	Shift number `json:"shift"`
+	Label string `json:"label"` // of the row; empty if it has none
 }
 
 type eventJSON struct {
-	Iteration int    `json:"iteration"`
-	Kind      string `json:"kind"`
-	Quantity  string `json:"quantity"`
-	Value     number `json:"value"`
-	Scale     number `json:"scale"`
-	Proved    bool   `json:"proved"`
-	Rows      []int  `json:"rows"`
+	Iteration int      `json:"iteration"`
+	Kind      string   `json:"kind"`
+	Quantity  string   `json:"quantity"`
+	Value     number   `json:"value"`
+	Scale     number   `json:"scale"`
+	Proved    bool     `json:"proved"`
+	Rows      []int    `json:"rows"`
+	Labels    []string `json:"labels"` // of the rows; empty if none were given
 }
 
 // maxEvents is how many events of a trial are told; restarts are left out.
 const maxEvents = 64
 
-func toTrials(ts []trace.History) []trialJSON {
+func toTrials(ts []trace.History, facts *inspect.Facts) []trialJSON {
 	out := make([]trialJSON, 0, len(ts))
 	for _, t := range ts {
 		j := trialJSON{
@@ -98,7 +102,8 @@ func toTrials(ts []trace.History) []trialJSON {
 			Componentwise: number(t.Componentwise), Error: number(t.Error), BestTrue: number(t.BestTrue),
 			Floor: number(t.Attainable()), CPUShare: number(t.CPUShare), UnsolvedRows: t.UnsolvedRows,
 			WouldStop: toWouldStop(t.WouldStop), Condition: toCondition(t.Condition), Reason: tame(t.Reason),
-			WorstRows: rowsOf(t.WorstRows), Build: toBuild(t.Notes), Events: toEvents(t.Events), deepJSON: toDeep(t),
+			WorstRows: fromOne(rowsOf(t.WorstRows)), WorstLabels: labels(rowsOf(t.WorstRows), facts),
+			Build: toBuild(t.Notes, facts), Events: toEvents(t.Events, facts), deepJSON: toDeep(t),
 		}
 		if len(t.Records) == 0 { // it never began: nothing was measured
 			for _, x := range []*number{&j.Residual, &j.TrueResidual, &j.Backward, &j.Componentwise, &j.Error,
@@ -135,12 +140,12 @@ func toCondition(c trace.Condition) conditionJSON {
 	return j
 }
 
-func toBuild(n trace.BuildNotes) buildJSON {
+func toBuild(n trace.BuildNotes, facts *inspect.Facts) buildJSON {
 	j := buildJSON{Entries: n.Entries, Fill: number(n.Fill), Bytes: n.Bytes, MinPivot: measured(n.MinPivot),
 		MaxPivot: measured(n.MaxPivot), Replaced: n.Replaced, Shift: number(n.Shift), Broke: []pivotJSON{},
 		Growth: measured(n.Growth)}
 	for _, p := range n.Broke {
-		j.Broke = append(j.Broke, pivotJSON{p.Row + 1, number(p.Value), number(p.Shift)})
+		j.Broke = append(j.Broke, pivotJSON{p.Row + 1, number(p.Value), number(p.Shift), labelOf(p.Row, facts)})
 	}
 	return j
 }
@@ -153,22 +158,22 @@ func measured(x float64) number {
 	return number(x)
 }
 
-func toEvents(es []trace.Event) []eventJSON {
+func toEvents(es []trace.Event, facts *inspect.Facts) []eventJSON {
 	out := []eventJSON{}
 	for _, e := range es {
 		if e.Kind != trace.Restart && len(out) < maxEvents {
 			out = append(out, eventJSON{int(e.Iter), string(e.Kind), tame(e.Quantity), number(e.Value),
-				number(e.Scale), e.Proved(), rowsOf(e.Rows)})
+				number(e.Scale), e.Proved(), fromOne(rowsOf(e.Rows)), labels(rowsOf(e.Rows), facts)})
 		}
 	}
 	return out
 }
 
-// rowsOf lists the rows of the shares, counted from 1.
+// rowsOf lists the rows of the shares.
 func rowsOf(shares []trace.RowShare) []int {
 	rows := make([]int, len(shares))
 	for i, s := range shares {
-		rows[i] = s.Row + 1
+		rows[i] = s.Row
 	}
 	return rows
 }
