@@ -15,6 +15,7 @@ import (
 // converged is so by audit.
 func TestSamplesGiveExactlyTheirFindings(t *testing.T) {
 	var told []choose.Outcome
+	within, ranges := 0, 0
 	for _, s := range samples.Catalogue {
 		t.Run(s.Name, func(t *testing.T) {
 			v := ended(t, samples.Prefix+s.Name, Options{Pairs: lineUp(t, samples.Prefix+s.Name)})
@@ -41,9 +42,35 @@ func TestSamplesGiveExactlyTheirFindings(t *testing.T) {
 				t.Error("the line-up is empty")
 			}
 			told = append(told, v.Choice.Outcomes...)
+			for _, u := range v.Trials {
+				in, of := heldRanges(u.History)
+				within, ranges = within+in, ranges+of
+			}
 		})
 	}
 	checkCalibration(t, told)
+	t.Logf("ranges of predictions: %d of %d held", within, ranges)
+	if ranges < 200 || float64(within) < 0.85*float64(ranges) {
+		t.Errorf("ranges of predictions: %d of %d held, want 85 %% of at least 200", within, ranges)
+	}
+}
+
+// heldRanges counts the predictions that a converged trial told after its first
+// tenth, and those in whose range the outcome lies.
+func heldRanges(h trace.History) (within, all int) {
+	if h.Stop != trace.Converged {
+		return 0, 0
+	}
+	for _, p := range h.Predictions {
+		if 10*p.Iter < h.Iterations {
+			continue
+		}
+		all++
+		if came := float64(h.Iterations); p.Low <= came && came <= p.High {
+			within++
+		}
+	}
+	return within, all
 }
 
 // checkCalibration holds what was predicted at half time against the outcome:

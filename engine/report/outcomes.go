@@ -54,7 +54,7 @@ func trialItems(t trace.History) []labelled {
 	if floor := t.Attainable(); floor > 0 {
 		add("floor", "rounding is estimated to end the true residual near %s", sci(floor))
 	}
-	if n := len(t.Predictions); n > 0 {
+	if n := len(t.Predictions); n > 0 && t.Stop != trace.Converged { // else the outcome is known
 		p := t.Predictions[n-1]
 		switch {
 		case math.IsInf(p.Total, 1):

@@ -11,13 +11,15 @@ import (
 const (
 	firstTold  = 3    // the iteration at which a prediction is first told
 	toldAgain  = 1.1  // and by which factor later ones lie apart
-	bend       = 0.6  // see forecast
 	leastFall  = 0.25 // decades below which a curve has shown nothing yet, and nothing is told
-	lowShare   = 0.5  // of the predicted way to go: nine in ten trials take more than lowShare
-	highShare  = 1.9  // and less than highShare of it
+	bend       = 0.6  // see forecast
+	late       = 0.62 // the same near the end
+	quickest   = 0.1  // nine in ten trials take more than k (t/d)^quickest
+	slowest    = 1.3  // and less than k (t/d)^slowest,
+	anyway     = 0.05 // e^anyway times as many
 	cyclesTold = 2    // cycles from which a restarted method is taken to go on as it does
-	steadyLow  = 0.9  // the same for restarted methods, which are steadier
-	steadyHigh = 1.2
+	steadyLow  = 0.6  // of the predicted way to go: the range of restarted methods, which are steadier
+	steadyHigh = 1.5
 	leastSlope = 1e-3 // decades over half of a restarted curve: less is no way at all
 )
 
@@ -26,11 +28,11 @@ const (
 //
 // A Krylov method gets faster as it goes, for it learns the outer eigenvalues.
 // With d decades gone of t to go at iteration k, the trials of this project's
-// samples end near k exp(bend √ln(t/d)) iterations; a straight line would say
-// k t/d, which is far too many in the first half. The constant is fitted to
-// the samples; on other matrices it holds less well, and the range says so. A
-// restarted method gets no faster from cycle to cycle: there a straight
-// line through the last half is used.
+// samples and open matrices end near k (t/d)^late iterations once a third of
+// the decades is gone, and halfway near k exp(bend √ln(t/d)); a straight line
+// would say k t/d, which is far too many. The constants are fitted; how much
+// single trials differ, the range says. A restarted method gets no faster from
+// cycle to cycle: there a straight line through the last half is used.
 type forecast struct {
 	next  int     // the iteration to tell at
 	first float64 // log10 of the own number at the start
@@ -98,8 +100,10 @@ func (f *forecast) tell(k int, goal float64) (trace.Prediction, bool) {
 	if !(fallen >= leastFall) {
 		return trace.Prediction{}, false
 	}
-	all := math.Max(fallen, f.first+f.gap-goal)
-	return around(k, float64(k)*math.Exp(bend*math.Sqrt(math.Log(all/fallen))), lowShare, highShare), true
+	s := math.Log(math.Max(1, (f.first+f.gap-goal)/fallen))
+	at := func(share float64) float64 { return math.Max(float64(k+1), float64(k)*math.Exp(share)) }
+	return trace.Prediction{Iter: k, Total: at(math.Min(bend*math.Sqrt(s), late*s)),
+		Low: at(quickest * s), High: at(anyway + slowest*s)}, true
 }
 
 // around is a prediction with its range, as shares of the way to go.
