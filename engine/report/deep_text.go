@@ -18,13 +18,17 @@ func headedLines(heading string, lines []string) []string {
 // deepLines tell what each trial left beyond the table.
 func deepLines(ts []trace.History) []string {
 	var lines []string
-	for i, t := range ts {
-		items := trialItems(t)
+	list, outpaced := singled(ts)
+	for _, i := range list {
+		items := trialItems(ts[i])
 		if len(items) == 0 {
 			continue
 		}
-		lines = append(lines, clip(fmt.Sprintf("%c %s", digit(i), plain(t.Pairing)), Width))
+		lines = append(lines, clip(fmt.Sprintf("%c %s", digit(i), plain(ts[i].Pairing)), Width))
 		lines = append(lines, itemLines(items)...)
+	}
+	if more := leftOut(outpaced); more != "" && len(lines) > 0 {
+		lines = append(lines, more)
 	}
 	return headedLines("trials in detail", lines)
 }

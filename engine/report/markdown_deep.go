@@ -52,15 +52,19 @@ func itemTable(items []labelled) []string {
 // deepTables tell what each trial left beyond the table.
 func deepTables(ts []trace.History) []string {
 	var lines []string
-	for _, t := range ts {
-		if items := trialItems(t); len(items) > 0 {
-			lines = appendPart(lines, titled(mark(t.Pairing), itemTable(items)))
+	list, outpaced := singled(ts)
+	for _, i := range list {
+		if items := trialItems(ts[i]); len(items) > 0 {
+			lines = appendPart(lines, headedLines("### "+mark(ts[i].Pairing), appendPart(nil, itemTable(items))))
 		}
 	}
-	if len(lines) > 0 {
-		lines = lines[1:] // appendPart parts the first from nothing
+	if len(lines) == 0 {
+		return nil
 	}
-	return lines
+	if more := leftOut(outpaced); more != "" {
+		lines = appendPart(lines, []string{mark(more) + "."})
+	}
+	return append([]string{"## Trials in detail"}, lines...)
 }
 
 func outcomeList(outcomes []choose.Outcome) []string {

@@ -30,6 +30,27 @@ func calibration(outcomes []choose.Outcome) string {
 	return fmt.Sprintf("%d of %s within %.0f %% of what came", good, plural(met, "prediction", "predictions"), 100*near)
 }
 
+// singled are the trials that are looked at one by one: those that were outpaced
+// are left to JSON and the page.
+func singled(ts []trace.History) (list []int, outpaced int) {
+	for i, t := range ts {
+		if t.Stop == trace.Outpaced && !t.Today {
+			outpaced++
+		} else {
+			list = append(list, i)
+		}
+	}
+	return list, outpaced
+}
+
+// leftOut says how many trials are not looked at one by one; empty for none.
+func leftOut(outpaced int) string {
+	if outpaced == 0 {
+		return ""
+	}
+	return fmt.Sprintf("%s: --as html or json tells theirs", plural(outpaced, "outpaced trial", "outpaced trials"))
+}
+
 // trialItems tells what a trial left beyond the table: error estimates,
 // fields, probes, reruns, further right-hand sides.
 func trialItems(t trace.History) []labelled {
@@ -43,7 +64,11 @@ func trialItems(t trace.History) []labelled {
 		if t.EnergyProved {
 			upper = "proved"
 		}
-		add("energy error", "at it %d between %s and %s (%s) of the first", e.Iter, sci(e.Lower), sci(e.Upper), upper)
+		if finite(e.Upper) {
+			add("energy error", "at it %d between %s and %s (%s) of the first", e.Iter, sci(e.Lower), sci(e.Upper), upper)
+		} else {
+			add("energy error", "at it %d at least %s of the first", e.Iter, sci(e.Lower))
+		}
 	}
 	if len(t.Locks) > 0 {
 		add("locked", "%s", lockText(t.Locks))

@@ -51,13 +51,14 @@ func trimmed(lines []string) []string {
 
 // trialLines is the table of trials: each has a line with its digit and
 // pairing, one with its state and numbers, and its reason where it ended
-// otherwise than converged.
+// otherwise than converged, less what a trial before has said in the same words.
 func trialLines(d Document) []string {
 	if len(d.Trials) == 0 {
 		return []string{"no trial has been run"}
 	}
 	const row = "%-24s%8s%9s%10s%9s%9s%9s"
 	lines := []string{fmt.Sprintf(row, "trial", "its", "products", "true res", "cond >=", "set-up", "own")}
+	said := map[string]bool{}
 	for i, t := range d.Trials {
 		name := fmt.Sprintf("%c %s", digit(i), orDash(plain(t.Pairing)))
 		if t.Today {
@@ -68,10 +69,20 @@ func trialLines(d Document) []string {
 		state := fmt.Sprintf("  %c %s", t.Stop.Mark(), t.Stop)
 		lines = append(lines, clip(fmt.Sprintf(row, state, n[0], n[1], n[2], n[3], n[4], n[5]), Width))
 		if t.Stop != trace.Converged && t.Reason != "" {
-			lines = append(lines, hang("    ", plain(t.Reason), Width)...)
+			lines = append(lines, hang("    ", plain(unsaid(t.Reason, said)), Width)...)
 		}
 	}
 	return lines
+}
+
+// unsaid is a reason without a first clause that has been said already.
+func unsaid(reason string, said map[string]bool) string {
+	first, rest, more := strings.Cut(reason, "; ")
+	if more && said[first] {
+		return rest
+	}
+	said[first] = true
+	return reason
 }
 
 // numbers are a trial's iterations, products, true residual, condition,

@@ -206,3 +206,35 @@ func TestVectorFiles(t *testing.T) {
 		t.Errorf("%q", end)
 	}
 }
+
+// Of trials that were outpaced by the same one, that is said once, and they are
+// not looked at one by one; what sets each apart stays.
+func TestOutpacedTrialsTakeLittleRoom(t *testing.T) {
+	d := told()
+	for i, own := range []string{"50 ms", "60 ms"} {
+		h := d.Trials[1]
+		h.Pairing, h.Stop = []string{"cg+jacobi", "cg+ssor:1"}[i], trace.Outpaced
+		h.Reason = "cg+ic:0 has the answer after 30.0 ms; this one has used " + own
+		d.Trials = append(d.Trials, h)
+	}
+	for _, write := range []writer{Text, Markdown} {
+		var b strings.Builder
+		if err := write(&b, d); err != nil {
+			t.Fatal(err)
+		}
+		for what, most := range map[string]int{"has the answer after": 1, "2 outpaced trials: --as": 1, "probe of M": 1} {
+			if n := strings.Count(b.String(), what); n > most {
+				t.Errorf("%q stands there %d times", what, n)
+			}
+		}
+		if !strings.Contains(b.String(), "2 outpaced trials: --as html or json tells theirs") {
+			t.Errorf("it is not said where the others are told:\n%s", b.String())
+		}
+	}
+	var b strings.Builder
+	if Text(&b, d); !strings.Contains(b.String(), "this one has used 60 ms") {
+		t.Errorf("what sets a trial apart is lost:\n%s", b.String())
+	}
+}
+
+type writer func(io.Writer, Document) error
