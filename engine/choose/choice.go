@@ -32,6 +32,7 @@ type Ranked struct {
 	Work       float64 // numbers touched, counted: what ranks where the clock cannot
 	Reached    bool    // it converged; otherwise Seconds is NaN
 	BreakEven  float64 // right-hand sides from which it beats the cheapest set-up; NaN if never or not needed
+	Cheapest   string  // the pairing with the cheapest set-up, which BreakEven is told against
 	// For is the predicted seconds for each of Sides right-hand sides solved
 	// one after the other with one set-up; NaN where not reached.
 	For       [len(Sides)]float64

@@ -4,6 +4,8 @@ import (
 	"fmt"
 	"math"
 	"strings"
+
+	"dwindle/engine/inspect"
 )
 
 // notToldApart names those whose range of times overlaps with the first's.
@@ -26,7 +28,7 @@ func notToldApart(c Choice) []string {
 	case len(names) == 0:
 		return nil
 	case len(names) == 1:
-		return []string{fmt.Sprintf("%s is within %.0f %%: the two are not told apart", names[0], 100*closest)}
+		return []string{fmt.Sprintf("%s is not told apart from it: within %.0f %%", names[0], 100*closest)}
 	}
 	const most = 3
 	more := ""
@@ -34,7 +36,7 @@ func notToldApart(c Choice) []string {
 		more = fmt.Sprintf(" and %d more", len(names)-most)
 		names = names[:most]
 	}
-	return []string{fmt.Sprintf("%s%s are within what a repetition may differ by: not told apart", strings.Join(names, ", "), more)}
+	return []string{fmt.Sprintf("%s%s are not told apart from it: within what a repetition may differ by", strings.Join(names, ", "), more)}
 }
 
 // overturned says at how many right-hand sides another pairing is the better
@@ -59,4 +61,12 @@ func overturned(c Choice) []string {
 			took(best.For[i]), Sides[i], took(first.For[i]))}
 	}
 	return nil
+}
+
+// notUnique says that a singular A leaves more than one answer.
+func notUnique(f *inspect.Facts) []string {
+	if f == nil || f.Singular.Answer != inspect.Yes {
+		return nil
+	}
+	return []string{fmt.Sprintf("x is not unique: A is singular (%s), and whatever it maps to zero may be added", f.Singular.Certainty)}
 }

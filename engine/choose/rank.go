@@ -146,7 +146,7 @@ func breakEven(list []Ranked) {
 		q := list[cheap]
 		gain := (q.Seconds - q.Setup) - (r.Seconds - r.Setup)
 		if gain > worth*(q.Seconds-q.Setup) {
-			r.BreakEven = math.Max(1, math.Ceil((r.Setup-q.Setup)/gain))
+			r.BreakEven, r.Cheapest = math.Max(1, math.Ceil((r.Setup-q.Setup)/gain)), q.Pairing
 		}
 	}
 }
@@ -166,6 +166,7 @@ func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
 	if c.Pairing == "" {
 		return out
 	}
+	out = append(out, notUnique(f)...)
 	if c.Ranked[0].Seconds < tooShort {
 		out = append(out, "the times are too short for the clock: ranked by counted work")
 	} else {

@@ -46,19 +46,19 @@ var restartLength = Rule{"restart-length", func(c Case) (out []Finding) {
 		prep, _, p := cut(h.Pairing)
 		try := fmt.Sprintf("%sgmres:%d+%s", prep, long, p)
 		f := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: h.Pairing,
-			Claim:  fmt.Sprintf("pays for its restarts: a cycle of %d leaves %s of the residual", m, num(factor)),
 			Advice: "a longer cycle takes more memory and fewer products",
 			Try:    []string{try},
 			Evidence: []Evidence{number("factor of a cycle", factor, ""),
 				number("smallest harmonic Ritz value", smallest, "")}}
 		if solved(h) {
-			f.Claim += fmt.Sprintf("; cycles of %d would need about %.0f its or fewer in place of %.0f", long, with, now)
+			f.Claim = fmt.Sprintf("pays for its restarts: cycles of %d would need about %.0f its or fewer in place of %.0f", long, with, now)
 			f.Evidence = append(f.Evidence, number("iterations with longer cycles, at most", with, "predicted"))
 			f.Predicts = []Predicted{{Pairing: try, Quantity: "iterations, at most", Value: with}}
 		} else {
-			f.Claim += fmt.Sprintf("; at this rate it would need about %.2g its", now)
+			f.Claim = fmt.Sprintf("pays for its restarts: at this rate it would need about %.2g its", now)
 			f.Evidence = append(f.Evidence, number("iterations at this rate", now, "predicted"))
 		}
+		f.Claim += fmt.Sprintf("; a cycle of %d leaves %s of the residual", m, num(factor))
 		if keep, advice, ok := deflatedRestart(h, m); ok {
 			f.Advice += "; or " + advice
 			f.Try = append(f.Try, keep)

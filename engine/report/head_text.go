@@ -3,7 +3,6 @@ package report
 import (
 	"fmt"
 	"math"
-	"slices"
 	"strings"
 
 	"dwindle/engine/choose"
@@ -14,81 +13,66 @@ import (
 
 // headItems are the entries of the head, in their order.
 func headItems(d Document) []item {
-	items := []item{
-		{"SYSTEM", systemText(d), wanted},
-		{"TODAY", todayText(d), 6},
+	items := []item{{"SYSTEM", []string{systemText(d)}, 0, 5}}
+	if forms := todayForms(d); forms != nil {
+		items = append(items, item{"TODAY", forms, 5, 3})
 	}
 	label := "WHY"
-	why := leading(d.Findings)
-	for i, f := range why {
+	for i, f := range why(d) {
 		if i == maxWhy {
 			break
 		}
-		text := findingText(f)
-		if i > 0 {
-			text, _, _ = strings.Cut(text, "; ") // the first clause, whole or not at all
-		}
-		items = append(items, item{label, text, whole})
+		items = append(items, item{label, clauses(findingText(f)), 1 + 2*i, 2})
 		label = ""
 	}
-	if len(why) == 0 {
-		items = append(items, item{label, "no finding: nothing was seen that slows or spoils a solve", 4})
+	if label != "" {
+		items = append(items, item{label, []string{"nothing was seen that slows or spoils a solve"}, 1, 2})
 	}
 	return append(items,
-		item{"USE", useText(d), 1},
-		item{"DOUBT", doubtText(d), 5},
-		item{"REPEAT", repeatText(d), 0},
-		item{"FINGERPRINT", orDash(plain(d.System.Fingerprint)), 7})
+		item{"USE", useForms(d), 6, 4},
+		item{"DOUBT", doubtForms(d), 2, 1},
+		item{"REPEAT", []string{orDash(plain(d.Command))}, 0, 6},
+		item{"FINGERPRINT", fingerprintForms(d), 4, 0})
 }
 
-// leading returns the findings with blockers first and notes last, otherwise
-// in the order given. That b is not the user's is told on other lines, and so
-// is by how much today's pairing is beaten, where there is a cause to tell.
-func leading(fs []diagnose.Finding) []diagnose.Finding {
-	cause := slices.ContainsFunc(fs, func(f diagnose.Finding) bool {
-		return f.Weight != diagnose.Note && f.Rule != "today-beaten"
-	})
-	fs = diagnose.Fold(fs)
-	var out []diagnose.Finding
-	for _, w := range []diagnose.Weight{diagnose.Blocker, diagnose.Drag, diagnose.Note} {
-		for _, f := range fs {
-			if f.Weight == w && f.Rule != "not-your-rhs" && !(cause && f.Rule == "today-beaten") {
-				out = append(out, f)
-			}
-		}
-	}
-	return out
-}
-
+// systemText names the system, with what decides which methods apply before
+// the counts.
 func systemText(d Document) string {
 	s := d.System
-	words := []string{plural(s.Unknowns, "unknown", "unknowns"), plural(s.Entries, "entry", "entries")}
+	var kind []string
 	if f := d.Facts; f != nil {
 		switch f.Symmetric.Answer {
 		case inspect.Yes:
-			words = append(words, "symmetric")
+			kind = append(kind, "symmetric")
 		case inspect.No:
-			words = append(words, "not symmetric")
+			kind = append(kind, "not symmetric")
 		}
-		words = append(words, definiteWords(f)...)
+		kind = append(kind, definiteWords(f)...)
 	}
-	text := clip(orDash(plain(s.Name)), 44) + ": " + plain(strings.Join(words, ", ")) + "; " + rhsText(s.RHS)
+	words := []string{plural(s.Unknowns, "unknown", "unknowns") + ", " + plural(s.Entries, "entry", "entries"), rhsText(s.RHS)}
+	if len(kind) > 0 {
+		words = append([]string{strings.Join(kind, ", ")}, words...)
+	}
 	if s.Digits > 0 && s.Digits < 17 {
-		text += fmt.Sprintf("; written with %d digits", s.Digits)
+		words = append(words, fmt.Sprintf("written with %d digits", s.Digits))
 	}
-	return text
+	return clip(orDash(plain(s.Name)), 44) + ": " + plain(strings.Join(words, "; "))
 }
 
 // definiteWords tell what is known of the signs of A's eigenvalues.
 func definiteWords(f *inspect.Facts) []string {
 	sure := func(f inspect.Fact) string { return " (" + orDash(string(f.Certainty)) + ")" }
-	switch p, s := f.PositiveDefinite, f.Semidefinite; {
+	switch p, n, s := f.PositiveDefinite, f.NegativeDefinite, f.Semidefinite; {
 	case p.Answer == inspect.Yes:
 		return []string{"definite" + sure(p)}
+	case n.Answer == inspect.Yes:
+		return []string{"negative definite" + sure(n)}
 	case p.Answer == inspect.No && s.Answer == inspect.Yes:
 		return []string{"semi-definite and singular" + sure(p)}
 	case p.Answer == inspect.No:
 		return []string{"not definite" + sure(p)}
+	case f.Symmetric.Answer == inspect.Yes:
+		return []string{"definite or not is unknown"}
 	}
 	return nil
 }
@@ -112,13 +96,14 @@ func rhsText(rhs string) string {
 	return "b: " + plain(rhs)
 }
 
-func todayText(d Document) string {
+// todayForms tell how today's pairing ended; nil where none was given.
+func todayForms(d Document) []string {
 	for _, t := range d.Trials {
 		if t.Today {
-			return plain(t.Pairing) + ": " + Outcome(t)
+			return []string{plain(t.Pairing) + ": " + strings.Replace(Outcome(t), ", true residual ", ", at ", 1), plain(t.Pairing) + ": " + Outcome(t)}
 		}
 	}
-	return "not given; --today PAIRING tells the gain over your code's"
+	return nil
 }
 
 // Outcome tells how a trial ended, in one phrase.
@@ -140,13 +125,12 @@ func findingText(f diagnose.Finding) string {
 	return "[" + orDash(plain(string(f.Certainty))) + "] " + claim
 }
 
-func useText(d Document) string {
+// useForms tell what is recommended and what it costs, then also the target
+// that this was measured at.
+func useForms(d Document) []string {
 	c := d.Choice
 	if c.Pairing == "" {
-		if len(c.Reasons) > 0 {
-			return plain(c.Reasons[0])
-		}
-		return "nothing yet: no pairing has reached the tolerance"
+		return []string{nothingText(d)}
 	}
 	words := []string{plain(c.Pairing)}
 	for _, t := range d.Trials {
@@ -170,7 +154,8 @@ func useText(d Document) string {
 	if gain := gainText(d); gain != "" {
 		words = append(words, gain)
 	}
-	return strings.Join(append(words, "tol "+exact(d.Settings.Tol)+" by rule "+orDash(plain(d.Settings.StopRule))), ", ")
+	text := strings.Join(words, ", ")
+	return []string{text, text + ", tol " + exact(d.Settings.Tol) + " by rule " + orDash(plain(d.Settings.StopRule))}
 }
 
 func rankedWords(r choose.Ranked) []string {
@@ -179,7 +164,11 @@ func rankedWords(r choose.Ranked) []string {
 		memory(r.Memory),
 	}
 	if finite(r.BreakEven) && r.BreakEven > 1 {
-		words = append(words, fmt.Sprintf("pays from %.0f right-hand sides on", math.Ceil(r.BreakEven)))
+		than := ""
+		if r.Cheapest != "" {
+			than = "beats " + plain(r.Cheapest) + " "
+		}
+		words = append(words, fmt.Sprintf("%sfrom %.0f right-hand sides on", than, math.Ceil(r.BreakEven)))
 	}
 	return words
 }
@@ -200,16 +189,34 @@ func gainText(d Document) string {
 	return times(g) + " times today's speed"
 }
 
-func doubtText(d Document) string {
+// doubtForms are the doubts in few words each, what stands before a colon, and
+// in full.
+func doubtForms(d Document) []string {
 	if len(d.Choice.Doubts) == 0 {
-		return "none"
+		return []string{"none"}
 	}
-	return plain(strings.Join(d.Choice.Doubts, "; "))
+	var short, full []string
+	for _, s := range d.Choice.Doubts {
+		s = plain(s)
+		full = append(full, s)
+		s, _, _ = strings.Cut(s, ": ")
+		short = append(short, s)
+	}
+	return []string{strings.Join(short, "; "), strings.Join(full, "; ")}
 }
 
-func repeatText(d Document) string {
-	return fmt.Sprintf("%s (dwindle %s, %s, seed %d; %s, %s)", orDash(plain(d.Command)), orDash(plain(d.Version)), orDash(plain(d.Toolchain)),
-		d.Settings.Seed, orDash(plain(d.Machine.CPU)), plural(d.Machine.Threads, "thread", "threads"))
+// printDigits is how much of the fingerprint stands in a head that has no room
+// for all of it.
+const printDigits = 16
+
+// fingerprintForms are the fingerprint, if need be its beginning, with what
+// made the numbers.
+func fingerprintForms(d Document) []string {
+	sum := plain(d.System.Fingerprint)
+	short := orDash(clip(sum, printDigits+3))
+	made := fmt.Sprintf(" dwindle %s, seed %d", orDash(plain(d.Version)), d.Settings.Seed)
+	on := ", " + orDash(plain(d.Toolchain)) + "; " + orDash(plain(d.Machine.CPU)) + ", " + plural(d.Machine.Threads, "thread", "threads")
+	return []string{short + made, short + made + on, orDash(sum) + made + on}
 }
 
 func orDash(s string) string {

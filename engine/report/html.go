@@ -35,7 +35,7 @@ func HTML(w io.Writer, d Document) error {
 func headPart(d Document) markup {
 	var parts []markup
 	for _, it := range headItems(d) {
-		parts = append(parts, element("dt", safe(it.label)), element("dd", safe(it.text)), "\n")
+		parts = append(parts, element("dt", safe(it.label)), element("dd", safe(it.forms[len(it.forms)-1])), "\n")
 	}
 	return element(`dl class="head"`, parts...)
 }

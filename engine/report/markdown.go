@@ -21,7 +21,7 @@ func Markdown(w io.Writer, d Document) error {
 	lines = appendPart(lines, titled("The system", itemTable(append(measureItems(d.Facts), studyItems(d.Facts)...))))
 	lines = appendPart(lines, deepTables(d.Trials))
 	lines = appendPart(lines, titled("Predictions", outcomeList(d.Choice.Outcomes)))
-	lines = appendPart(lines, titled("Measured with", itemTable(settingItems(d))))
+	lines = appendPart(lines, titled("Measured with", itemTable(append(settingItems(d), labelled{"fingerprint", orDash(d.System.Fingerprint)}))))
 	return writeLines(w, lines)
 }
 

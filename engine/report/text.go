@@ -247,7 +247,8 @@ func notReached(c choose.Choice) string {
 func settingLines(d Document) []string {
 	lines := []string{"measured with"}
 	lines = append(lines, itemLines(settingItems(d))...)
-	return append(lines, hang("repeat with ", plain(d.Command), Width)...)
+	lines = append(lines, hang("repeat with ", plain(d.Command), Width)...)
+	return append(lines, hang("fingerprint ", orDash(plain(d.System.Fingerprint)), Width)...)
 }
 
 // settingItems are the conditions of the measurement: settings, machine,

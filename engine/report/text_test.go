@@ -24,7 +24,7 @@ func TestPlainText(t *testing.T) {
 		docs = append(docs, wild(r))
 	}
 	for i, d := range docs {
-		if head := Head(d); len(head) > HeadLines || len(head) < 7 {
+		if head := Head(d); len(head) > HeadLines || len(head) < 6 {
 			t.Fatalf("document %d: head of %d lines", i, len(head))
 		}
 		for name, write := range map[string]func(io.Writer, Document) error{"text": Text, "facts": Facts, "ticket": Ticket} {
@@ -90,9 +90,9 @@ func TestGolden(t *testing.T) {
 func TestHeadTells(t *testing.T) {
 	d := typical()
 	head := strings.Join(Head(d), "\n")
-	for _, want := range []string{"SYSTEM      sluice.mtx: 400 unknowns", "b = ones, not yours", "TODAY       cg+none: converged after 60 its, 60.0 ms, true",
+	for _, want := range []string{"SYSTEM      sluice.mtx: symmetric, definite (proved); 400 unknowns", "b = ones, not yours", "TODAY       cg+none: converged after 60 its, 60.0 ms, true",
 		"WHY         [measured] gmres:30+none: restarting", "USE         cg+ic:0, 20 its in 30.0 ms (set-up 2.00 ms), 39.1 KiB, 2.0 times", "DOUBT       counts on",
-		"REPEAT      dwindle run sluice.mtx --today cg+none (dwindle 0.1, go1, seed 1;", "FINGERPRINT 9f86"} {
+		"REPEAT      dwindle run sluice.mtx --today cg+none\n", "FINGERPRINT 9f86", "dwindle 0.1, seed 1, go1; Example 3000, 2 threads"} {
 		if !strings.Contains(head, want) {
 			t.Errorf("no %q in\n%s", want, head)
 		}
@@ -103,10 +103,8 @@ func TestHeadTells(t *testing.T) {
 	}
 	d.Trials[0].Today, d.Choice.Pairing, d.Choice.Reasons = false, "", nil
 	head = strings.Join(Head(d), "\n")
-	for _, want := range []string{"TODAY       not given", "USE         nothing yet: no pairing"} {
-		if !strings.Contains(head, want) {
-			t.Errorf("no %q in\n%s", want, head)
-		}
+	if !strings.Contains(head, "USE         nothing yet: no pairing") || strings.Contains(head, "TODAY") {
+		t.Errorf("without today's pairing and a choice:\n%s", head)
 	}
 }
 
@@ -173,7 +171,7 @@ func TestTicket(t *testing.T) {
 		t.Errorf("%d lines", n)
 	}
 	joined := strings.Join(strings.Fields(text), " ")
-	for _, want := range []string{d.Command, leading(d.Findings)[0].Claim, "dwindle 0.1, go1, seed 1", "Example 3000, 2 threads", "FINGERPRINT " + d.System.Fingerprint} {
+	for _, want := range []string{d.Command, leading(d.Findings)[0].Claim, "dwindle 0.1, seed 1", "FINGERPRINT " + d.System.Fingerprint[:printDigits]} {
 		if !strings.Contains(joined, want) {
 			t.Errorf("no %q in\n%s", want, text)
 		}
