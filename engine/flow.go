@@ -40,11 +40,6 @@ func (s *Session) loadAndInspect() (err error) {
 	if err := s.opt.Check(); err != nil {
 		return err
 	}
-	if s.opt.Recording != "" {
-		if err := s.Record(s.opt.Recording); err != nil {
-			return err
-		}
-	}
 	linear.SetThreads(s.opt.Threads)
 	sys, err := read(s.ctx, s.source, s.opt.Stdin, s.opt.Memory, func(p float64) { s.set(func() { s.progress = p }) })
 	if err != nil {
@@ -64,6 +59,11 @@ func (s *Session) loadAndInspect() (err error) {
 	sys.Open = s.open
 	sys.Name = shown(s.source, sys, s.opt.Identify)
 	s.set(func() { s.sys, s.phase, s.progress = sys, Inspecting, -1 })
+	if s.opt.Recording != "" { // not before there is a system: what cannot be read leaves no file
+		if err := s.Record(s.opt.Recording); err != nil {
+			return err
+		}
+	}
 	facts, err := inspect.Inspect(s.ctx, sys, func(f *inspect.Facts) { s.set(func() { s.facts = f }) })
 	if err != nil {
 		return err

@@ -25,8 +25,11 @@ func version() string {
 }
 
 // fileFlags name files; their folders are left out of reports.
-var fileFlags = map[string]bool{"rhs": true, "guess": true, "out": true, "history": true, "solution": true, "session": true,
-	"labels": true, "fields": true, "null": true, "coordinates": true, "split": true, "x": true, "x0": true}
+var fileFlags = map[string]bool{"rhs": true, "guess": true, "labels": true, "fields": true, "null": true, "coordinates": true, "split": true, "x": true, "x0": true}
+
+// results name what a run writes. They are left out of the command that repeats
+// it, which must not write over them.
+var results = map[string]bool{"out": true, "history": true, "solution": true, "session": true, "vectors": true}
 
 // commandLine is the command that repeats this run, quoted for a shell. File
 // names lose their folder unless identify is set.
@@ -36,6 +39,9 @@ func commandLine(c *cobra.Command, args []string, identify bool) string {
 		words = append(words, quote(nameOnly(a, identify)))
 	}
 	c.Flags().Visit(func(f *pflag.Flag) {
+		if results[f.Name] {
+			return
+		}
 		for _, v := range valuesOf(f) {
 			if fileFlags[f.Name] {
 				v = nameOnly(v, identify)

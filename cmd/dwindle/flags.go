@@ -99,7 +99,10 @@ func (f *flags) finish(c *cobra.Command, args []string) error {
 			return err
 		}
 	}
-	return f.opt.Check()
+	if err := f.opt.Check(); err != nil {
+		return err
+	}
+	return f.writable()
 }
 
 // unmoved refuses options that would change what a recorded session is.

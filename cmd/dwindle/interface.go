@@ -34,6 +34,9 @@ func interfaceCommand() *cobra.Command {
 		Long:  interfaceHelp,
 		Args: func(c *cobra.Command, args []string) error {
 			if len(args) > 1 {
+				if err, is := noCommand(c, args); is {
+					return err
+				}
 				return usage("one SYSTEM at a time; see dwindle --help")
 			}
 			return nil

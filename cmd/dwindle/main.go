@@ -67,7 +67,8 @@ func rootCommand() *cobra.Command {
 	root.CompletionOptions.DisableDefaultCmd = true
 	root.SetHelpFunc(showHelp)
 	root.SetHelpCommand(helpCommand(root))
-	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error { return usage("%v; see %s --help", err, c.CommandPath()) })
+	root.SetFlagErrorFunc(flagError)
+	root.SuggestionsMinimumDistance = 2
 	root.AddCommand(runCommand(), factsCommand(), checkCommand(), sampleCommand(), methodsCommand())
 	return root
 }

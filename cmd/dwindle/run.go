@@ -52,7 +52,11 @@ func (f *flags) run(c *cobra.Command, args []string) error {
 	if d.System.Unknowns == 0 {
 		return &ending{interrupted, "interrupted before the system was read"}
 	}
-	if err := f.deliver(c, d, formOf(f.as).write); err != nil {
+	write := formOf(f.as).write
+	if f.as == "html" && (f.out != "" || terminal(c.OutOrStdout()) != nil) { // a page is for a browser
+		write = func(io.Writer, report.Document) error { return nil }
+	}
+	if err := f.deliver(c, d, write); err != nil {
 		return err
 	}
 	end(s)

@@ -69,12 +69,13 @@ func open(path string) (f *os.File, size int64, err error) {
 		return nil, 0, notOpened(path, err)
 	}
 	info, err := f.Stat()
-	if err == nil && info.IsDir() {
-		err = &Error{File: path, Text: "is a folder, not a file"}
-	}
-	if err != nil {
+	switch {
+	case err != nil:
 		f.Close()
 		return nil, 0, notOpened(path, err)
+	case info.IsDir():
+		f.Close()
+		return nil, 0, &Error{File: path, Text: "is a folder, not a file"}
 	}
 	if !info.Mode().IsRegular() {
 		return f, -1, nil

@@ -47,17 +47,13 @@ const (
 	lookEach = 200 * time.Millisecond
 )
 
-// Create makes the file that a session can be recorded to. An existing file is
-// replaced only if it is a session file itself: a slip must not cost a matrix.
+// Create makes the file that a session can be recorded to. A file that exists
+// is never written over: a slip must not cost a session, let alone a matrix.
 func Create(path string) (io.WriteCloser, error) {
-	if old, err := os.Open(path); err == nil {
-		is := Begins(old)
-		old.Close()
-		if !is {
-			return nil, &Error{path, errors.New("exists and is not a session file; name another")}
-		}
+	file, err := os.OpenFile(path, os.O_WRONLY|os.O_CREATE|os.O_EXCL, 0o600)
+	if errors.Is(err, os.ErrExist) {
+		return nil, &Error{path, errors.New("exists already; name another, or remove it first")}
 	}
-	file, err := os.OpenFile(path, os.O_WRONLY|os.O_CREATE|os.O_TRUNC, 0o600)
 	if err == nil {
 		_, err = io.WriteString(file, magicLine())
 	}
