@@ -34,7 +34,7 @@ func TestReopenedSessionSaysSo(t *testing.T) {
 		t.Errorf("did %v", f.calls)
 	}
 	m, f = recordedScreen("")
-	if !strings.Contains(m.View(), "a new pairing (n) reads its system again") {
+	if !strings.Contains(m.View(), "its race is over; a new pairing (n) reads its system again") {
 		t.Errorf("it does not say that it can go on:\n%s", m.View())
 	}
 	if press(m, "n", "enter", "enter"); !slices.Equal(f.calls, []string{"add cg+ic:0"}) {

@@ -83,7 +83,7 @@ func (m *model) tell(snap engine.Snapshot) {
 	case snap.Recorded && !m.snap.Recorded && snap.ReadOnly != "":
 		m.say("a recorded session, read-only: " + snap.ReadOnly)
 	case snap.Recorded && !m.snap.Recorded:
-		m.say("a recorded session; a new pairing (n) reads its system again")
+		m.say("a recorded session: its race is over; a new pairing (n) reads its system again")
 	}
 }
 

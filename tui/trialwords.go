@@ -169,6 +169,9 @@ func probeWords(p *trace.MProbe) string {
 	if finite(p.Plain) {
 		s += fmt.Sprintf(" (%s with the diagonal alone)", sci(p.Plain))
 	}
+	if p.Deviation > 0 {
+		s += fmt.Sprintf("; ||A - M|| %s of ||A||, Frobenius norms", sci(p.Deviation))
+	}
 	return s + fmt.Sprintf("; asymmetry %s, nonlinearity %s, from use to use %s", sci(p.Asymmetry), sci(p.Nonlinear), sci(p.Unrepeatable))
 }
 

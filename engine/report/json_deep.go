@@ -63,6 +63,7 @@ type probeJSON struct {
 	Distance     number `json:"distance"`
 	WrongWay     number `json:"distance_of_m"`
 	Plain        number `json:"distance_of_diagonal"`
+	Deviation    number `json:"deviation"` // ||A - M||_F over ||A||_F of incomplete factors
 }
 
 type columnJSON struct {
@@ -124,7 +125,8 @@ func toProbe(p *trace.MProbe) *probeJSON {
 	if p == nil {
 		return nil
 	}
-	return &probeJSON{number(p.Asymmetry), number(p.Nonlinear), number(p.Unrepeatable), number(p.Distance), number(p.WrongWay), number(p.Plain)}
+	return &probeJSON{number(p.Asymmetry), number(p.Nonlinear), number(p.Unrepeatable), number(p.Distance), number(p.WrongWay), number(p.Plain),
+		measured(p.Deviation)}
 }
 
 func toComplex(zs []complex128) [][2]number {

@@ -110,6 +110,18 @@ func sorted(m map[string]any) []string {
 	return ks
 }
 
+// TestJSONDeviation: how far factors are from A is a number, and null where it
+// is not known.
+func TestJSONDeviation(t *testing.T) {
+	d := told()
+	other := *d.Trials[1].Probe
+	other.Deviation = 0
+	d.Trials[2].Probe = &other
+	if got := fmt.Sprint(follow(decode(t, d), "trials.#.preconditioner_probe.deviation")); got != "[0.31 <nil>]" {
+		t.Errorf("deviations %s", got)
+	}
+}
+
 // TestJSONNames: wherever JSON counts rows it gives their labels, and a finding
 // lists the other pairings that it holds for.
 func TestJSONNames(t *testing.T) {

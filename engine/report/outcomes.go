@@ -104,6 +104,9 @@ func trialItems(t trace.History) []labelled {
 		add("probe of M", "asymmetry %s, nonlinearity %s, unrepeatable %s, distance of M^-1 A from a multiple of I %s (scaled by diag A alone %s)",
 			sci(p.Asymmetry), sci(p.Nonlinear), sci(p.Unrepeatable), sci(p.Distance), sci(p.Plain))
 	}
+	if p := t.Probe; p != nil && p.Deviation > 0 {
+		add("factors", "||A - M|| is %s of ||A||, Frobenius norms", sci(p.Deviation))
+	}
 	if len(t.Counts) > 0 {
 		add("noise", "%s with b changed in its last places: %s its", plural(len(t.Counts), "rerun", "reruns"), countText(t.Counts))
 	}

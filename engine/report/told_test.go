@@ -26,7 +26,7 @@ func told() Document {
 	}
 	ic.Predictions = []trace.Prediction{{Iter: 10, Total: 21, Low: 18, High: 26}}
 	ic.Fields = []trace.Field{{Name: "pressure", Rows: 100, Residual: 1e-7, Componentwise: 1e-6, Tol: 1e-6}}
-	ic.Probe = &trace.MProbe{Asymmetry: 1e-16, Distance: 0.4, WrongWay: math.NaN(), Plain: 0.9}
+	ic.Probe = &trace.MProbe{Asymmetry: 1e-16, Distance: 0.4, WrongWay: math.NaN(), Plain: 0.9, Deviation: 0.31}
 	ic.Counts, ic.Delay = []int{19, 20, 21}, 2
 	ic.Columns = []trace.Column{{Index: 2, Iterations: 21, Seconds: 0.03, True: 9e-9, Reached: true}}
 	d.Trials[2].Harmonic = []complex128{complex(0.1, 0.2), complex(0.1, -0.2)}

@@ -11,6 +11,12 @@ import (
 // producer is the ability of a preconditioner to apply M itself.
 type producer interface{ Product(dst, x []float64) }
 
+// deviator is the ability of factors to tell ‖A − M‖_F/‖A‖_F, false where that
+// is not cheap.
+type deviator interface {
+	Deviation(a *linear.CSR) (float64, bool)
+}
+
 // probe looks at a preconditioner with two random vectors, off the clock and
 // uncounted: is M⁻¹ symmetric, linear and the same each time, positive, and
 // how far is M⁻¹A from a multiple of the identity? It takes five uses of M⁻¹
@@ -40,6 +46,11 @@ func (t *Trial) probe() {
 			p.w[i] = av[i] / d[i]
 		}
 		found.Plain = distance(p.v, p.w)
+	}
+	if f, ok := t.m.inner.(deviator); ok && t.method.From == "" && t.prepared.Matrix() != nil {
+		if share, ok := f.Deviation(t.prepared.Matrix()); ok {
+			found.Deviation = share
+		}
 	}
 	if t.method.Precond.InUserUnits {
 		found.WrongWay = t.wrongWay(p.v, av, p.w)

@@ -89,6 +89,7 @@ type MProbe struct {
 	Distance     float64 // ‖v − γM⁻¹Av‖/‖v‖ with the best γ
 	WrongWay     float64 // the same of M in place of M⁻¹, where M can be had; NaN
 	Plain        float64 // the same of A scaled by its diagonal, without M
+	Deviation    float64 // ‖A − M‖_F/‖A‖_F of incomplete factors, computed from them; 0 if it was not, or M is A
 }
 
 // Run is how long one run of a trial took.
