@@ -132,7 +132,7 @@ func TestNeed9WorkIsCounted(t *testing.T) {
 // Row 25: b = 0 has the answer 0; b and 2^40 b give the same iterations.
 func TestNeed25ScaleOfTheRightHandSide(t *testing.T) {
 	zero := ended(t, "sample:plate:10", Options{Pairs: []string{"cg+none"}, RHS: vector(t, repeated(100, 0)...)})
-	mustSay(t, zero, "zero-rhs", diagnose.OnSystem, diagnose.Note, inspect.Proved, "x = 0")
+	mustSay(t, zero, "zero-rhs", diagnose.OnSystem, diagnose.Blocker, inspect.Proved, "x = 0")
 	if n := len(zero.Findings); n != 1 {
 		t.Errorf("%d findings on b = 0:%s", n, rules(zero))
 	}

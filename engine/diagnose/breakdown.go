@@ -25,7 +25,7 @@ var breakdown = Rule{"breakdown", func(c Case) (out []Finding) {
 			continue
 		}
 		for _, e := range events(h, trace.Breakdown) {
-			kind := kindOf(e.Quantity)
+			kind := kindOf(e.Quantity, regular(c.Facts) && !strings.HasSuffix(h.Pairing, "+none"))
 			claim := fmt.Sprintf("broke down at iteration %d: %s = %s as a cosine, zero to rounding", e.Iter, e.Quantity, num(e.Value))
 			if kind.means != "" {
 				claim += ": " + kind.means
@@ -48,8 +48,8 @@ type kind struct {
 
 // kindOf tells apart what can vanish: the shadow vector turns orthogonal to
 // the residual, the step meets a zero of the recurrence, or the stabiliser
-// cannot move.
-func kindOf(quantity string) kind {
+// cannot move. Where A is known not to be singular, M has made it so.
+func kindOf(quantity string, byM bool) kind {
 	switch quantity {
 	case "rho":
 		return kind{"the shadow vector is orthogonal to the residual", "restart with a new shadow vector, or use gmres", true}
@@ -58,7 +58,13 @@ func kindOf(quantity string) kind {
 	case "omega":
 		return kind{"A s is orthogonal to s, as near an imaginary spectrum", "use gmres, or a stabiliser of more steps: bicgstabl or idr", false}
 	case "R(k,k)":
+		if byM {
+			return kind{"A inv(M) maps the space to itself without an answer, though A is not singular: inv(M) over- or underflows", "use another preconditioner", false}
+		}
 		return kind{"A maps the space to itself without an answer: A is singular on it", "use a method of least squares, or fix the null space", false}
 	}
 	return kind{"", "use a method that does not divide by it", false}
 }
+
+// regular says that A is known not to be singular.
+func regular(f *inspect.Facts) bool { return f.Singular.Answer == inspect.No }

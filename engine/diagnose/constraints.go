@@ -51,6 +51,22 @@ var replaced = Rule{"row-replaced", func(c Case) []Finding {
 			number("rows that differ from their column", float64(l.Count), "")}}}
 }}
 
+// fewAsymmetric: all that is not symmetric lies in a few rows, that are not of
+// the identity form.
+var fewAsymmetric = Rule{"few-rows-asymmetric", func(c Case) []Finding {
+	f := c.Facts
+	if f.Study == nil || f.Study.Lopsided == nil || f.Study.Lopsided.OnlyThem || len(f.Study.Lopsided.Few) == 0 {
+		return nil
+	}
+	few := f.Study.Lopsided.Few
+	return []Finding{{Weight: Drag, Certainty: inspect.Measured, Subject: OnSystem,
+		Claim: fmt.Sprintf("A is symmetric but for %s (%s): without %s row and column every a_ij = a_ji",
+			count(len(few), "row"), c.list(few, 8), verb(len(few), "its", "their")),
+		Advice: "look at how these rows are assembled: symmetric, A could be solved by cg or minres",
+		Evidence: []Evidence{{Quantity: "rows that carry all asymmetry", Value: float64(len(few)), Iteration: none, Rows: few},
+			number("rows that differ from their column", float64(f.Study.Lopsided.Count), "")}}}
+}}
+
 // smallShift is the shift of the diagonal, relative to it, up to which A is
 // nearly definite.
 const smallShift = 0.1

@@ -36,7 +36,7 @@ var zeroRHS = Rule{"zero-rhs", func(c Case) []Finding {
 	if !c.Facts.ZeroRHS {
 		return nil
 	}
-	return []Finding{{Weight: Note, Certainty: inspect.Proved, Subject: OnSystem,
+	return []Finding{{Weight: Blocker, Certainty: inspect.Proved, Subject: OnSystem,
 		Claim:    "b = 0: x = 0 is an answer, and iterations tell nothing",
 		Advice:   "give the right-hand side of a real step: --rhs",
 		Evidence: []Evidence{number("||b||", 0, "")}}}

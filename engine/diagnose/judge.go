@@ -10,12 +10,14 @@ import (
 // Catalogue lists the rules in the order their findings are told, all else
 // equal: first what makes an answer worthless, then what costs, then notes.
 var Catalogue = []Rule{
+	zeroRHS,
 	precision,
 	outsideAssumptions,
 	lostDefiniteness,
 	unreachable,
 	mechanism,
 	wrongWay,
+	transposedM,
 	notLinear,
 	preconditioner,
 	falseConvergence,
@@ -30,6 +32,7 @@ var Catalogue = []Rule{
 	divergence,
 	stagnation,
 	floor,
+	empty,
 	zeroDiagonal,
 	pivots,
 	singletons,
@@ -37,6 +40,7 @@ var Catalogue = []Rule{
 	diagonal,
 	upToConstant,
 	replaced,
+	fewAsymmetric,
 	outliers,
 	restartLength,
 	answer,
@@ -45,6 +49,7 @@ var Catalogue = []Rule{
 	costly,
 	anisotropy,
 	convection,
+	skew,
 	jumps,
 	illConditioned,
 	growth,
@@ -63,7 +68,6 @@ var Catalogue = []Rule{
 	indefiniteSpectrum,
 	digits,
 	triangle,
-	zeroRHS,
 	defaultRHS,
 }
 

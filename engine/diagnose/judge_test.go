@@ -128,7 +128,7 @@ func TestEachRuleSpeaks(t *testing.T) {
 		{"one-triangle", func(f *inspect.Facts, _ *trace.History) {
 			f.TriangleOnly = inspect.Fact{Answer: inspect.Yes, Certainty: inspect.Proved}
 		}, Drag, inspect.Proved, "one triangle"},
-		{"zero-rhs", func(f *inspect.Facts, _ *trace.History) { f.ZeroRHS = true }, Note, inspect.Proved, "b = 0"},
+		{"zero-rhs", func(f *inspect.Facts, _ *trace.History) { f.ZeroRHS = true }, Blocker, inspect.Proved, "b = 0"},
 		{"not-your-rhs", func(f *inspect.Facts, _ *trace.History) { f.RHS = "made" }, Note, inspect.Proved, "made"},
 		{"singleton-rows", func(f *inspect.Facts, _ *trace.History) {
 			f.Singletons, f.SingletonDiag = 4, inspect.Range{Min: 1, Max: 1}

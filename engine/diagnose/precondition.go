@@ -41,6 +41,10 @@ var preconditioner = Rule{"preconditioner-not-spd", func(c Case) (out []Finding)
 		if solved(h) {
 			f.Weight = Drag
 		}
+		if h.Probe != nil && h.Probe.Opposite && c.Facts.NegativeDefinite.Answer != inspect.Yes {
+			f.Claim = fmt.Sprintf("%s has the wrong sign: v'inv(M)v is negative of every v tried; %s needs a positive definite M", m, solver)
+			f.Advice, f.Try = "change the sign of M", nil
+		}
 		out = append(out, f)
 	}
 	return out

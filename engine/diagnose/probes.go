@@ -12,6 +12,7 @@ import (
 
 const (
 	opposite    = 0.5   // of the distance: taken the other way round, M is that much nearer
+	turned      = 0.75  // the same for the transpose, whose effect on a random vector is less
 	repeatLimit = 1e-14 // a fixed M answers twice the same, bit for bit
 	alike       = 1e-6  // relative difference of two residuals that are the same
 	fewestAlike = 4     // iterations from which equal counts say something
@@ -30,7 +31,7 @@ var wrongWay = Rule{"preconditioner-wrong-way", func(c Case) (out []Finding) {
 				told(m), percent(p.Distance), percent(p.WrongWay)),
 			Advice: "the file holds M where inv(M) was asked for, or the reverse: swap given:FILE and solve:FILE",
 			Try:    []string{solver + "+none"},
-			Evidence: []Evidence{number("||v - g inv(M)A v||/||v||, best g", p.Distance, ""),
+			Evidence: []Evidence{number("least ||v - g inv(M)A v||/||v|| over all g", p.Distance, ""),
 				number("the same of M the other way", p.WrongWay, ""), number("the same of A scaled by its diagonal", p.Plain, "")}}
 		if swapped, ok := swap(m); ok {
 			f.Try = []string{solver + "+" + swapped}
@@ -38,6 +39,26 @@ var wrongWay = Rule{"preconditioner-wrong-way", func(c Case) (out []Finding) {
 		if solved(h) {
 			f.Weight = Drag
 		}
+		out = append(out, f)
+	}
+	return out
+}}
+
+// transposedM: the user's own M fits better with its transpose.
+var transposedM = Rule{"preconditioner-transposed", func(c Case) (out []Finding) {
+	for _, h := range c.Trials {
+		p := h.Probe
+		if p == nil || !(p.Transposed < turned*p.Distance) || p.WrongWay < p.Transposed {
+			continue
+		}
+		_, solver, m := cut(h.Pairing)
+		f := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: h.Pairing,
+			Claim: fmt.Sprintf("%s seems to be transposed: inv(M)A is %s away from the identity, with the transpose of M %s",
+				told(m), percent(p.Distance), percent(p.Transposed)),
+			Advice: "write the transpose of the file, or swap row and column where it is written",
+			Try:    []string{solver + "+none"},
+			Evidence: []Evidence{number("least ||v - g inv(M)A v||/||v|| over all g", p.Distance, ""),
+				number("the same of the transpose of M", p.Transposed, ""), number("the same of A scaled by its diagonal", p.Plain, "")}}
 		out = append(out, f)
 	}
 	return out

@@ -41,6 +41,7 @@ var yields = []yield{
 		samePairing, "the method supposes that M is positive definite"},
 	{"preconditioner-changes-nothing", []string{"preconditioner-costs-more"}, samePairing, "the same iterates: only the clock differs"},
 	{"unstable-factors", []string{"divergence", "restart-stagnation", "breakdown", "accuracy-floor"}, samePairing, "the factors spoil it"},
+	{"empty-row", []string{"zero-diagonal", "up-to-a-constant"}, allEmpty, "the same rows, told with their cause"},
 	{"zero-diagonal", []string{"pivot"}, zeroPivot, "the pivot is a zero of the diagonal"},
 	{"null-space-growth", []string{"divergence", "accuracy-floor", "false-convergence"}, samePairing, "what grows lies in the null space"},
 	{"false-convergence", []string{"stopping-rules"}, samePairing, "its own number is the stopping rule that fails"},

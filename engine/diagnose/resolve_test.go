@@ -32,7 +32,7 @@ func TestTableNamesRules(t *testing.T) {
 func TestContradictionsAreResolved(t *testing.T) {
 	for _, y := range yields {
 		for _, weaker := range y.weaker {
-			strong := Finding{Rule: y.stronger, Weight: Blocker, Subject: "cg+none", Certainty: inspect.Measured, Claim: "a"}
+			strong := Finding{Rule: y.stronger, Weight: Blocker, Subject: "cg+none", Certainty: inspect.Measured, Claim: "a", Evidence: []Evidence{{Value: 1}}}
 			weak := Finding{Rule: weaker, Subject: "cg+none", Certainty: inspect.Measured, Claim: "b", Evidence: []Evidence{{Value: 0}}}
 			if got := resolve([]Finding{weak, strong}); len(got) != 1 || got[0].Rule != y.stronger {
 				t.Errorf("%s beside %s leaves %v", weaker, y.stronger, got)

@@ -17,10 +17,10 @@ var zeroDiagonal = Rule{"zero-diagonal", func(c Case) []Finding {
 	}
 	g := Finding{Weight: Note, Certainty: inspect.Proved, Subject: OnSystem,
 		Claim: fmt.Sprintf("%d of %d diagonal entries are zero (%s): jacobi, ssor, ic and ilu:0 cannot be built as A stands",
-			zeros, f.N, c.list(f.DiagRows, 3)),
+			zeros, f.N, c.list(f.DiagZeroRows, 3)),
 		Advice:   "factorise with pivoting, incompletely after scaling (ilutp) or completely (lu)",
 		Try:      []string{"scale/gmres:30+ilutp:1e-3,10,0.1", "richardson:1+lu"},
-		Evidence: []Evidence{{Quantity: "zero diagonal entries", Value: float64(zeros), Unit: fmt.Sprintf("of %d", f.N), Iteration: none, Rows: f.DiagRows}}}
+		Evidence: []Evidence{{Quantity: "zero diagonal entries", Value: float64(zeros), Unit: fmt.Sprintf("of %d", f.N), Iteration: none, Rows: f.DiagZeroRows}}}
 	if f.Symmetric.Answer == inspect.Yes && f.DiagZero+f.DiagMissing < f.N {
 		g.Advice = "treat it as a saddle system by blocks (minres with schur), or factorise with pivots of order 1 and 2 (ldl)"
 		g.Try = []string{"minres+schur:diagonal,incomplete", "richardson:1+ldl"}

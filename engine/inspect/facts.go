@@ -78,6 +78,7 @@ type Facts struct {
 
 	DiagPositive, DiagNegative, DiagZero, DiagMissing int
 	DiagRows                                          []int // rows of the minority sign or missing/zero, the first 16
+	DiagZeroRows                                      []int // those missing or zero, the first 16
 	Diag                                              Range // of |a_ii| over nonzero ones
 
 	RowNorm, ColNorm          Range   // ‖·‖∞ of rows and columns, over nonempty ones

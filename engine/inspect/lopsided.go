@@ -1,6 +1,11 @@
 package inspect
 
-import "math"
+import (
+	"math"
+	"slices"
+
+	"dwindle/engine/linear"
+)
 
 // lopsided locates where a nonsymmetric A differs from its transpose: the rows
 // with an entry that has no equal across, and whether they are rows of the
@@ -25,6 +30,7 @@ func (e *exam) lopsided() *Lopsided {
 		}
 	}
 	e.replaced = identity
+	l.Few = e.fewest(at, uneven)
 	l.OnlyThem = l.Identity > 0
 	for i := range e.f.N {
 		if !uneven[i] || identity[i] || !l.OnlyThem {
@@ -72,4 +78,51 @@ func (e *exam) identityRow(i int) bool {
 		}
 	}
 	return held
+}
+
+// mostFew is how many rows may carry all asymmetry to be called few.
+const mostFew = 16
+
+// fewest looks for few rows with which every unequal pair has to do, each with
+// several: it takes the row of most pairs, again and again. Nil where that does
+// not end soon, or where so many rows are but single pairs.
+func (e *exam) fewest(at *linear.CSR, uneven []bool) []int {
+	left := map[int]map[int]bool{} // row -> rows it is unequal with
+	pairs := 0
+	for i, is := range uneven {
+		if !is {
+			continue
+		}
+		if len(left) > mostFew*64 {
+			return nil
+		}
+		left[i] = map[int]bool{}
+		cols, vals := at.Row(i)
+		for _, j := range differing(e, cols, vals, i) {
+			left[i][int(j)] = true
+			pairs++
+		}
+	}
+	pairs /= 2
+	var few []int
+	for len(left) > 0 && len(few) < mostFew {
+		worst := -1
+		for i, with := range left {
+			if worst < 0 || len(with) > len(left[worst]) || len(with) == len(left[worst]) && i < worst {
+				worst = i
+			}
+		}
+		few = append(few, worst)
+		for j := range left[worst] {
+			if delete(left[j], worst); len(left[j]) == 0 {
+				delete(left, j)
+			}
+		}
+		delete(left, worst)
+	}
+	if len(left) > 0 || pairs < 2*len(few) || 10*len(few) > e.f.N {
+		return nil
+	}
+	slices.Sort(few)
+	return few
 }

@@ -116,6 +116,7 @@ func (l *look) diagRows() {
 	}
 	for _, r := range l.zeroDiag.rows {
 		f.DiagRows = first16(f.DiagRows, r)
+		f.DiagZeroRows = first16(f.DiagZeroRows, r)
 	}
 }
 

@@ -110,6 +110,7 @@ type Lopsided struct {
 	Identity     int   // of them: rows of the form e_i whose column is not
 	IdentityRows []int // the first 16
 	OnlyThem     bool  // A without these rows and columns is symmetric
+	Few          []int // so few rows, at most 16, that A is symmetric without them and their columns; nil if none are known
 }
 
 // Growth is how iterations grow with size, from smaller parts cut out of the system.

@@ -62,6 +62,7 @@ type probeJSON struct {
 	Unrepeatable number `json:"unrepeatable"`
 	Distance     number `json:"distance"`
 	WrongWay     number `json:"distance_of_m"`
+	Transposed   number `json:"distance_of_transpose"`
 	Plain        number `json:"distance_of_diagonal"`
 	Deviation    number `json:"deviation"` // ||A - M||_F over ||A||_F of incomplete factors
 }
@@ -125,7 +126,7 @@ func toProbe(p *trace.MProbe) *probeJSON {
 	if p == nil {
 		return nil
 	}
-	return &probeJSON{number(p.Asymmetry), number(p.Nonlinear), number(p.Unrepeatable), number(p.Distance), number(p.WrongWay), number(p.Plain),
+	return &probeJSON{number(p.Asymmetry), number(p.Nonlinear), number(p.Unrepeatable), number(p.Distance), number(p.WrongWay), number(p.Transposed), number(p.Plain),
 		measured(p.Deviation)}
 }
 

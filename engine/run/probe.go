@@ -32,10 +32,11 @@ func (t *Trial) probe() {
 	linear.Uniform(p.v, 2)
 	p.m.Apply(p.mu, p.u)
 	p.m.Apply(p.mv, p.v)
-	found := trace.MProbe{Asymmetry: p.asymmetry(), Plain: math.NaN(), WrongWay: math.NaN()}
+	found := trace.MProbe{Asymmetry: p.asymmetry(), Plain: math.NaN(), WrongWay: math.NaN(), Transposed: math.NaN()}
 	if e, ok := p.negative(); ok && t.hist.SPDM {
 		t.event(e)
 	}
+	found.Opposite = linear.Dot(p.u, p.mu) < 0 && linear.Dot(p.v, p.mv) < 0
 	found.Nonlinear, found.Unrepeatable = p.nonlinear(), p.unrepeatable()
 	av, d := p.u, p.mu // what they held has had its last use
 	t.a.inner.Apply(av, p.v)
@@ -54,6 +55,10 @@ func (t *Trial) probe() {
 	}
 	if t.method.Precond.InUserUnits {
 		found.WrongWay = t.wrongWay(p.v, av, p.w)
+		if mt, ok := linear.As[linear.Transposer](t.m.inner); ok {
+			mt.ApplyT(p.w, av)
+			found.Transposed = distance(p.v, p.w)
+		}
 	}
 	t.mu.Lock()
 	t.hist.Probe = &found

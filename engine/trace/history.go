@@ -88,6 +88,8 @@ type MProbe struct {
 	Unrepeatable float64 // ‖M⁻¹v − M⁻¹v'‖ relative, the same v applied twice
 	Distance     float64 // ‖v − γM⁻¹Av‖/‖v‖ with the best γ
 	WrongWay     float64 // the same of M in place of M⁻¹, where M can be had; NaN
+	Transposed   float64 // the same of Mᵀ in place of M, for a matrix of the user's own; NaN
+	Opposite     bool    // vᵀM⁻¹v < 0 for every vector tried: −M may be what was meant
 	Plain        float64 // the same of A scaled by its diagonal, without M
 	Deviation    float64 // ‖A − M‖_F/‖A‖_F of incomplete factors, computed from them; 0 if it was not, or M is A
 }
