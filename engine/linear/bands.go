@@ -27,7 +27,7 @@ type band struct {
 // are better: where there are many diagonals, or some mostly empty, or some at
 // distances from 2 to 31.
 func BandsOf(t *CSR) *Bands {
-	if t.nearby(t.NRows / 2) {
+	if t.nearby() {
 		return nil // spares most others a look at every row
 	}
 	offs := t.offsets()
@@ -57,13 +57,15 @@ func BandsOf(t *CSR) *Bands {
 	return b
 }
 
-// nearby says whether row i has an entry neither next to the diagonal nor far
-// from it.
-func (a *CSR) nearby(i int) bool {
-	cols, _ := a.Row(i)
-	for _, c := range cols {
-		if d := max(i-int(c), int(c)-i); d > 1 && d < farFrom {
-			return true
+// nearby says whether one of some rows in the middle has an entry neither next
+// to the diagonal nor far from it.
+func (a *CSR) nearby() bool {
+	for i := a.NRows / 2; i < min(a.NRows/2+farFrom, a.NRows); i++ {
+		cols, _ := a.Row(i)
+		for _, c := range cols {
+			if d := max(i-int(c), int(c)-i); d > 1 && d < farFrom {
+				return true
+			}
 		}
 	}
 	return false

@@ -11,3 +11,11 @@ func Bulk[T any](n int) []T {
 	}
 	return s
 }
+
+// Touch has the system lay the pages of s, whose contents stay as they are,
+// where it can: whoever writes there next need not wait for them.
+func Touch[T any](s []T) {
+	if len(s) > 0 {
+		layPages(unsafe.Slice((*byte)(unsafe.Pointer(&s[0])), len(s)*int(unsafe.Sizeof(s[0]))))
+	}
+}

@@ -22,3 +22,31 @@ func TestBulk(t *testing.T) {
 		}
 	}
 }
+
+// Touched memory keeps what it holds, whatever part is touched and whoever
+// writes to it meanwhile.
+func TestTouch(t *testing.T) {
+	Touch[int32](nil)
+	for _, n := range []int{1, 1000, 1 << 20} {
+		s := Bulk[float64](n)
+		half := n / 2
+		for k := range half {
+			s[k] = float64(k)
+		}
+		done := make(chan bool)
+		go func() {
+			Touch(s)
+			Touch(s[n/3 : n/3+n/2])
+			close(done)
+		}()
+		for k := half; k < n; k++ {
+			s[k] = float64(k)
+		}
+		<-done
+		for k := range s {
+			if s[k] != float64(k) {
+				t.Fatalf("%d of %d is %v", k, n, s[k])
+			}
+		}
+	}
+}

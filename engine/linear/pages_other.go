@@ -4,3 +4,6 @@ package linear
 
 // largePages does nothing here.
 func largePages([]byte) {}
+
+// layPages does nothing here.
+func layPages([]byte) {}

@@ -67,6 +67,7 @@ func buildILUT(ctx context.Context, s linear.System, name string, v linear.Value
 		return nil, notes, err
 	}
 	w := newILUTWork(a, name, v.Real("tau"), v.Int("p"), permtol)
+	defer w.lower.stop()
 	for i := 0; i < a.NRows; i++ {
 		if err := look(ctx, progress, i, a.NRows); err != nil {
 			return nil, notes, err

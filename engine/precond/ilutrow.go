@@ -16,15 +16,22 @@ type ilutWork struct {
 	name    string
 	tau     float64
 	p       int
-	permtol float64   // 0: columns stay where they are
-	pos     []int32   // position of column j, length n
-	col     []int32   // column at position k, length n
-	w       []float64 // the row under work, by column; length n
-	at      []int32   // i+1 while column j belongs to row i; length n
-	low     intHeap   // positions left of the diagonal still to be eliminated
-	fresh   []int32   // columns that an elimination has filled in
-	ucol    []int32   // columns met right of the diagonal
+	permtol float64 // 0: columns stay where they are
+	pos     []int32 // position of column j, length n; nil where columns stay
+	col     []int32 // column at position k, length n; nil where columns stay
+	w       []cell  // the row under work, by column; length n
+	low     *places // positions left of the diagonal still to be eliminated
+	fresh   []int32 // columns that an elimination has filled in
+	lower   *lowerRows
+	ucol    []int32 // columns met right of the diagonal, then those that stay
+	uval    []float64
 	sizes   []float64
+}
+
+// cell is one entry of the row under work.
+type cell struct {
+	v   float64 // 0 while the column does not belong to the row
+	row int32   // i+1 once the column has been met in row i
 }
 
 // roomFor is how many entries of a factor room is taken for at once, for each
@@ -35,10 +42,14 @@ func newILUTWork(a *linear.CSR, name string, tau float64, p int, permtol float64
 	n := a.NRows
 	room := min(capped(n, p), roomFor*a.Entries())
 	k := &ilutWork{a: a, name: name, tau: tau, p: p, permtol: permtol,
-		f:   &factors{lower: triangle(n, room), upper: triangle(n, room), inverse: linear.Bulk[float64](n)},
-		pos: linear.Bulk[int32](n), col: linear.Bulk[int32](n), w: linear.Bulk[float64](n), at: linear.Bulk[int32](n)}
-	for i := range k.pos {
-		k.pos[i], k.col[i] = int32(i), int32(i)
+		f: &factors{lower: triangle(n, room), upper: triangle(n, room), inverse: linear.Bulk[float64](n)},
+		w: linear.Bulk[cell](n), low: newPlaces(n)}
+	k.lower = &lowerRows{k: k, p: p, batch: &batch{}}
+	if permtol > 0 {
+		k.pos, k.col = linear.Bulk[int32](n), linear.Bulk[int32](n)
+		for i := range k.pos {
+			k.pos[i], k.col[i] = int32(i), int32(i)
+		}
 	}
 	return k
 }
@@ -48,131 +59,154 @@ func newILUTWork(a *linear.CSR, name string, tau float64, p int, permtol float64
 func (k *ilutWork) row(i int) (float64, error) {
 	cols, vals := k.a.Row(i)
 	drop := k.tau * norm2(vals)
-	l := k.f.lower
-	start := len(l.Col)
-	k.low, k.ucol = k.low[:0], k.ucol[:0]
-	k.meet(i, k.col[i])
-	for p, c := range cols {
-		if k.at[c] != int32(i+1) {
-			k.meet(i, c)
-		}
-		k.w[c] = vals[p]
+	diag := int32(i)
+	if k.moved() {
+		diag = k.col[i]
 	}
-	for len(k.low) > 0 {
-		c := k.low.pop()
-		if t := k.w[k.col[c]]; math.Abs(t) > drop {
-			k.eliminate(i, c, t)
-			makeRoom(l, i, 1)
-			l.Col, l.Val = append(l.Col, c), append(l.Val, t*k.f.inverse[c])
-		}
+	k.meet(i, diag, cols, vals)
+	k.eliminate(i, drop)
+	d := k.w[diag].v
+	k.w[diag].v = 0
+	k.keep(drop)
+	if k.moved() {
+		d = k.exchange(i, d)
 	}
-	end := start + k.largest(l.Col[start:], l.Val[start:])
-	l.Col, l.Val, l.Ptr[i+1] = l.Col[:end], l.Val[:end], end
-	return k.finishUpper(i, drop)
-}
-
-// finishUpper stores row i of R and returns the pivot.
-func (k *ilutWork) finishUpper(i int, drop float64) (float64, error) {
-	cols, vals := k.keep(i, drop)
-	if k.permtol > 0 {
-		cols, vals = k.exchange(i, cols, vals)
-	}
-	d := k.w[k.col[i]]
 	if unusable(d) {
 		return d, &Breakdown{Method: k.name, Row: i, Pivot: d, Why: "the pivot has no inverse"}
 	}
-	sortRow(cols, vals)
-	k.f.inverse[i] = 1 / d
-	for p := range vals {
-		vals[p] *= k.f.inverse[i]
+	inverse := 1 / d
+	k.f.inverse[i] = inverse
+	for p := range k.uval {
+		k.uval[p] *= inverse
 	}
-	r := k.f.upper
-	end := r.Ptr[i] + len(cols)
-	r.Col, r.Val, r.Ptr[i+1] = r.Col[:end], r.Val[:end], end
+	sortRow(k.ucol, k.uval)
+	appendRow(k.f.upper, i, k.ucol, k.uval)
+	k.lower.endRow()
 	return d, nil
 }
 
-// meet takes column c into row i.
-func (k *ilutWork) meet(i int, c int32) {
-	k.at[c], k.w[c] = int32(i+1), 0
-	k.place(i, c)
-}
+// moved says whether columns may be exchanged.
+func (k *ilutWork) moved() bool { return k.col != nil }
 
-// place puts a column of row i among those to eliminate or to keep.
-func (k *ilutWork) place(i int, c int32) {
-	if q := k.pos[c]; int(q) < i {
-		k.low.push(q)
-	} else if int(q) > i {
-		k.ucol = append(k.ucol, c)
+// meet takes row i of A into the row under work.
+func (k *ilutWork) meet(i int, diag int32, cols []int32, vals []float64) {
+	k.ucol = k.ucol[:0]
+	k.w[diag].row = int32(i + 1)
+	for p, c := range cols {
+		k.w[c].v = vals[p]
+		if c != diag {
+			k.w[c].row = int32(i + 1)
+			k.ucol = k.place(i, c, k.ucol)
+		}
 	}
 }
 
-// eliminate subtracts t times row c of R; the columns that it fills in are
-// gone through afterwards, so that the loop calls nothing.
-func (k *ilutWork) eliminate(i int, c int32, t float64) {
-	rc, rv := k.f.upper.Row(int(c))
-	rv = rv[:len(rc)]
-	k.fresh = slices.Grow(k.fresh[:0], len(rc))
-	at, w, fresh, n := k.at, k.w, k.fresh[:len(rc)], 0
-	w = w[:len(at)]
-	for p, j := range rc {
-		v := t * rv[p]
-		if at[j] == int32(i+1) {
-			w[j] -= v
+// place puts a column of row i among those to eliminate or, at the end of
+// ucol, to keep.
+func (k *ilutWork) place(i int, c int32, ucol []int32) []int32 {
+	at := c
+	if k.moved() {
+		at = k.pos[c]
+	}
+	if int(at) > i {
+		return append(ucol, c)
+	}
+	k.low.add(at)
+	return ucol
+}
+
+// eliminate goes through the entries left of the diagonal, the least position
+// first: each that is not small becomes an entry of L, times its pivot, and
+// that many times its row of R is subtracted.
+func (k *ilutWork) eliminate(i int, drop float64) {
+	w, low, b, ucol := k.w, k.low, k.lower.batch, k.ucol
+	lcol, lval, r := b.cols, b.vals, k.f.upper
+	for c := low.pop(); c >= 0; c = low.pop() {
+		j := c
+		if k.moved() {
+			j = k.col[c]
+		}
+		t := w[j].v
+		w[j].v = 0
+		if !(t > drop || t < -drop) {
 			continue
 		}
-		at[j], w[j] = int32(i+1), -v
-		fresh[n] = j
-		n++
+		lcol, lval = append(lcol, c), append(lval, t*k.f.inverse[c])
+		start, end := r.Ptr[c], r.Ptr[c+1]
+		if end-start > len(k.fresh) {
+			k.fresh = make([]int32, 2*(end-start))
+		}
+		n := subtract(w, t, r.Col[start:end], r.Val[start:end], int32(i+1), k.fresh)
+		for _, j := range k.fresh[:n] {
+			ucol = k.place(i, j, ucol)
+		}
 	}
-	for _, j := range fresh[:n] {
-		k.place(i, j)
-	}
+	b.cols, b.vals, k.ucol = lcol, lval, ucol
 }
 
-// keep puts what is not small, and among the p largest, at the end of R and
-// returns it.
-func (k *ilutWork) keep(i int, drop float64) (cols []int32, vals []float64) {
-	r := k.f.upper
-	makeRoom(r, i, len(k.ucol))
-	start := len(r.Col)
-	cols, vals = r.Col[start:start+len(k.ucol)], r.Val[start:start+len(k.ucol)]
+// subtract takes t times a row of R off the row under work; the columns that
+// it fills in are put into fresh, and it returns how many they are. Inlined,
+// its loop would run out of registers.
+//
+//go:noinline
+func subtract(w []cell, t float64, cols []int32, vals []float64, row int32, fresh []int32) int {
+	vals = vals[:len(cols)]
 	n := 0
-	for _, j := range k.ucol {
-		if v := k.w[j]; math.Abs(v) > drop {
-			cols[n], vals[n] = j, v
+	for p, j := range cols {
+		e := &w[uint32(j)]
+		e.v -= float64(t * vals[p])
+		fresh[n] = j
+		if e.row != row {
+			n++
+		}
+		e.row = row
+	}
+	return n
+}
+
+// keep leaves what is not small, and among the p largest, of the columns right
+// of the diagonal.
+func (k *ilutWork) keep(drop float64) {
+	k.uval = slices.Grow(k.uval[:0], len(k.ucol))
+	cols, vals, n := k.ucol, k.uval[:len(k.ucol)], 0
+	for _, j := range cols {
+		v := k.w[j].v
+		k.w[j].v = 0
+		cols[n], vals[n] = j, v
+		if math.Abs(v) > drop {
 			n++
 		}
 	}
-	n = k.largest(cols[:n], vals[:n])
-	return cols[:n], vals[:n]
+	k.sizes, n = largest(cols[:n], vals[:n], k.p, k.sizes)
+	k.ucol, k.uval = cols[:n], vals[:n]
 }
 
 // exchange moves the column of the largest entry to the diagonal where it
-// outgrows the diagonal entry by more than 1/permtol, and returns the rest.
-func (k *ilutWork) exchange(i int, cols []int32, vals []float64) ([]int32, []float64) {
-	diag := k.col[i]
-	best, at := math.Abs(k.w[diag]), -1
-	for p, v := range vals {
+// outgrows the diagonal entry d by more than 1/permtol, and returns the entry
+// that is on the diagonal then.
+func (k *ilutWork) exchange(i int, d float64) float64 {
+	best, at := math.Abs(d), -1
+	for p, v := range k.uval {
 		if math.Abs(v)*k.permtol > best {
 			best, at = math.Abs(v)*k.permtol, p
 		}
 	}
 	if at < 0 {
-		return cols, vals
+		return d
 	}
-	j := cols[at]
+	diag, j, pivot := k.col[i], k.ucol[at], k.uval[at]
 	q := k.pos[j]
 	k.col[i], k.col[q], k.pos[j], k.pos[diag] = j, diag, int32(i), q
-	cols[at], vals[at] = diag, k.w[diag]
-	if k.w[diag] == 0 {
-		return slices.Delete(cols, at, at+1), slices.Delete(vals, at, at+1)
+	k.ucol[at], k.uval[at] = diag, d
+	if d == 0 {
+		k.ucol, k.uval = slices.Delete(k.ucol, at, at+1), slices.Delete(k.uval, at, at+1)
 	}
-	return cols, vals
+	return pivot
 }
 
 // finish puts positions for columns in R.
 func (k *ilutWork) finish() {
+	k.lower.finish()
 	if k.permtol == 0 {
 		return
 	}
@@ -184,14 +218,6 @@ func (k *ilutWork) finish() {
 		}
 		sortRow(cols, vals)
 	}
-}
-
-// largest moves the p entries of largest size to the front, in their present
-// order (the first of equals), and returns how many there are.
-func (k *ilutWork) largest(cols []int32, vals []float64) int {
-	var n int
-	k.sizes, n = largest(cols, vals, k.p, k.sizes)
-	return n
 }
 
 // sortRow sorts a row by column.

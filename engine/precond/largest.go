@@ -2,6 +2,10 @@ package precond
 
 import "math"
 
+// fewToDrop entries are dropped one after the other quicker than by looking for
+// the size that cuts them off.
+const fewToDrop = 3
+
 // largest moves the p entries of largest size to the front, in their present
 // order (the first of equals), and returns how many stay. sizes is work space,
 // returned for the next call.
@@ -11,6 +15,12 @@ func largest(cols []int32, vals []float64, p int, sizes []float64) ([]float64, i
 	}
 	if p == 0 {
 		return sizes, 0
+	}
+	if len(cols) <= p+fewToDrop {
+		for n := len(cols); n > p; n-- {
+			dropLeast(cols[:n], vals[:n])
+		}
+		return sizes, p
 	}
 	sizes = sizes[:0]
 	for _, v := range vals {
@@ -35,6 +45,19 @@ func largest(cols []int32, vals []float64, p int, sizes []float64) ([]float64, i
 		n++
 	}
 	return sizes, n
+}
+
+// dropLeast takes out the entry of least size, the last of equals; the place
+// at the end is left over.
+func dropLeast(cols []int32, vals []float64) {
+	at, least := 0, math.Inf(1)
+	for k, v := range vals {
+		if size := math.Abs(v); size <= least {
+			at, least = k, size
+		}
+	}
+	copy(cols[at:], cols[at+1:])
+	copy(vals[at:], vals[at+1:])
 }
 
 // nth returns the k-th largest of v, counted from 0, and reorders v (Hoare,
