@@ -61,7 +61,7 @@ func TestDefinitionsByHand(t *testing.T) {
 		"rhs": 4 / math.Sqrt(20), "rhs-1": 4. / 6, "rhs-inf": 1, "rhs-squared": 0.8,
 		"absolute": 4, "absolute-1": 4, "absolute-inf": 4, "squared": 16, "rms": 4 / math.Sqrt2, "mean-squared": 8, "mean": 2,
 		"initial": 4 / math.Sqrt(20), "initial-1": 4. / 6, "initial-inf": 1, "initial-squared": 0.8,
-		"jacobi-left": 1 / math.Sqrt2, "jacobi-left-absolute": 1, "jacobi-left-initial": 1 / math.Sqrt2,
+		"jacobi-left": 1 / math.Sqrt2, "jacobi-left-rhs": 1 / math.Sqrt(20), "jacobi-left-absolute": 1, "jacobi-left-initial": 1 / math.Sqrt2,
 		"jacobi": 2 / math.Sqrt(6), "jacobi-squared": 4. / 6, "jacobi-absolute": 2, "jacobi-absolute-squared": 4, "jacobi-initial": 2 / math.Sqrt(6),
 		"normal": 16 / (math.Sqrt(20) * 4), "normal-2": 1, "normal-absolute": 16, "normal-rhs": 16 / math.Hypot(4, 16),
 		"backward": 4. / 8, "backward-1": 4. / 10, "backward-2": 4 / (4 + math.Sqrt(20)), "backward-f": 4 / (2 * math.Sqrt(20)),
@@ -201,5 +201,17 @@ func TestTwoNorm(t *testing.T) {
 	want := 4 * math.Pow(math.Sin(n*math.Pi/(2*(n+1))), 2)
 	if got := a.Norms.Two; !(got <= want*(1+1e-12)) || got < 0.99*want {
 		t.Errorf("||A||2 = %g, want %g", got, want)
+	}
+}
+
+// diag(1, 0) with b = (1, 0): (1, 0) solves it, and so does (1, 5).
+func TestOneOfMany(t *testing.T) {
+	singular := asked(t, dense([]float64{1, 0}, []float64{0, 0}), []float64{1, 0}, []float64{1, 5}, nil)
+	if !singular.Solved || !strings.Contains(strings.Join(singular.Hints, "; "), "one of many") {
+		t.Errorf("solved %v: %v", singular.Solved, singular.Hints)
+	}
+	regular := asked(t, dense([]float64{1, 0}, []float64{0, 1}), []float64{1, 0}, []float64{1, 0}, nil)
+	if strings.Contains(strings.Join(regular.Hints, "; "), "one of many") {
+		t.Errorf("a regular A: %v", regular.Hints)
 	}
 }

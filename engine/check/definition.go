@@ -114,6 +114,7 @@ func (w *work) byDiagonal() {
 	}
 	r, b := left(w.r), left(w.q.System.B)
 	w.add("jacobi-left", Scaled, true, "||inv(D)r||2/||inv(D)b||2", over(r, b))
+	w.add("jacobi-left-rhs", Scaled, true, "||inv(D)r||2/||b||2", over(r, linear.Norm2(w.q.System.B)))
 	w.add("jacobi-left-absolute", Scaled, false, "||inv(D)r||2", r)
 	if w.q.System.Guess != nil {
 		w.add("jacobi-left-initial", Scaled, true, "||inv(D)r||2/||inv(D)r0||2", over(r, left(w.r0)))

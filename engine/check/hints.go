@@ -124,6 +124,9 @@ func (w *work) atBest() {
 			num(over(r.Plain, linear.Norm2(w.q.System.B))))
 	}
 	f := w.out.Factor
+	if w.out.NoFactor != "" && w.out.Solved && !w.tooLarge {
+		w.hint("x is one of many: A is singular, to rounding at least, and what it maps to zero may be added to x without being seen in the residual")
+	}
 	if k := w.out.Running.Condition; f == nil && w.tooLarge && k > 1 {
 		w.hint("the condition of A is at least %s by its Ritz values: the relative error of x can be so many times ||r||2/||b||2", num(k))
 	}
