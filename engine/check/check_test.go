@@ -3,6 +3,7 @@ package check
 import (
 	"context"
 	"math"
+	"strings"
 	"math/big"
 	"math/rand/v2"
 	"testing"
