@@ -3,9 +3,9 @@ package check
 import (
 	"context"
 	"math"
-	"strings"
 	"math/big"
 	"math/rand/v2"
+	"strings"
 	"testing"
 
 	"gonum.org/v1/gonum/mat"
