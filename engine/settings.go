@@ -26,6 +26,9 @@ func (s *Session) settingsOf(pairing string) []string {
 		solver += "; one step with a complete factorisation solves the system"
 	}
 	precond := "preconditioner: " + m.Precond.Title + terms(m.Precond.Params, m.PrecondValues)
+	if m.PrecondValues.Is("store", "single") {
+		precond += "; the factors are computed in double precision, their off-diagonal entries rounded to single and kept so, products and sums are in double"
+	}
 	if m.From != "" {
 		precond += "; built from " + m.From
 	}

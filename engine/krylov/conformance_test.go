@@ -30,6 +30,9 @@ func admissible(e krylov.Entry) []string {
 		transposes := e.Needs&linear.NeedsTransposeM == 0 || p.Transposes || p.Name == "none"
 		if transposes && (e.Assumes&linear.AssumesFixedM == 0 || p.Fixed) && (e.Assumes&linear.AssumesSymmetricM == 0 || p.Symmetric) {
 			names = append(names, p.Name)
+			if slices.ContainsFunc(p.Params, func(q linear.Param) bool { return q.Name == "store" }) {
+				names = append(names, p.Name+":store=single")
+			}
 		}
 	}
 	return names

@@ -14,7 +14,11 @@ func TestThreadsGiveSameBits(t *testing.T) {
 	a, b := plate(150), make([]float64, 22500)
 	linear.Uniform(b, 9)
 	compare := func(t *testing.T, e krylov.Entry, p string) {
-		m := build(t, a, linear.Part{Name: p})
+		part, err := linear.ParsePart(p)
+		if err != nil {
+			t.Fatal(err)
+		}
+		m := build(t, a, part)
 		linear.SetThreads(1)
 		one := begunWith(t, a, m, b, nil, linear.Part{Name: e.Name})
 		one.until(0, 12)

@@ -12,13 +12,28 @@ func tapsOffAVX2(dst, x *float64, n int, taps *tap, k int)
 //go:noescape
 func tapsOffUpAVX2(dst, s, x *float64, n int, taps *tap, k int)
 
+// tapsOffSingleAVX2 is tapsOffAVX2 for values stored in single precision.
+//
+//go:noescape
+func tapsOffSingleAVX2(dst, x *float64, n int, taps *tapOf[float32], k int)
+
+// tapsOffUpSingleAVX2 is tapsOffUpAVX2 for values stored in single precision.
+//
+//go:noescape
+func tapsOffUpSingleAVX2(dst, s, x *float64, n int, taps *tapOf[float32], k int)
+
 // tapsOff computes dst = x − Σ v∘x over the taps, one after the other in their
 // order; dst may be x. The taps are changed.
-func tapsOff(dst, x []float64, taps []tap) {
+func tapsOff[T Stored](dst, x []float64, taps []tapOf[T]) {
 	x = x[:len(dst)]
 	whole := len(dst) &^ 15
 	if vectored && whole > 0 && len(taps) > 0 {
-		tapsOffAVX2(&dst[0], &x[0], whole, &taps[0], len(taps))
+		switch first := any(&taps[0]).(type) {
+		case *tapOf[float64]:
+			tapsOffAVX2(&dst[0], &x[0], whole, first, len(taps))
+		case *tapOf[float32]:
+			tapsOffSingleAVX2(&dst[0], &x[0], whole, first, len(taps))
+		}
 		dst, x = dst[whole:], x[whole:]
 		skip(taps, whole)
 	}
@@ -27,7 +42,7 @@ func tapsOff(dst, x []float64, taps []tap) {
 
 // tapsOffUp computes dst = s∘x − Σ v∘x over the taps, one after the other in
 // their order; dst may be x. The taps are changed.
-func tapsOffUp(dst, s, x []float64, taps []tap) {
+func tapsOffUp[T Stored](dst, s, x []float64, taps []tapOf[T]) {
 	s, x = s[:len(dst)], x[:len(dst)]
 	rest := len(dst) & 15
 	if !vectored || rest == len(dst) || len(taps) == 0 {
@@ -38,13 +53,18 @@ func tapsOffUp(dst, s, x []float64, taps []tap) {
 	for k := range taps {
 		taps[k].v, taps[k].x = taps[k].v[:len(dst)], taps[k].x[:len(dst)]
 	}
-	tapsOffUpAVX2(&dst[0], &s[0], &x[0], start, &taps[0], len(taps))
+	switch first := any(&taps[0]).(type) {
+	case *tapOf[float64]:
+		tapsOffUpAVX2(&dst[0], &s[0], &x[0], start, first, len(taps))
+	case *tapOf[float32]:
+		tapsOffUpSingleAVX2(&dst[0], &s[0], &x[0], start, first, len(taps))
+	}
 	skip(taps, start)
 	tapsOffUpPlain(dst[start:], s[start:], x[start:], taps)
 }
 
 // skip leaves out the first rows of the taps.
-func skip(taps []tap, rows int) {
+func skip[T Stored](taps []tapOf[T], rows int) {
 	for k := range taps {
 		taps[k].v, taps[k].x = taps[k].v[rows:], taps[k].x[rows:]
 	}

@@ -58,28 +58,37 @@ var bandCases = []struct {
 }
 
 // Both solves give the bits of the rows, for the triangle and for the
-// transpose of its transpose.
+// transpose of its transpose, with values stored in either precision.
 func TestBandsSolve(t *testing.T) {
-	bandsSolve(t)
+	bandsSolve[float64](t)
+	bandsSolve[float32](t)
 	if vectored {
 		vectored = false
 		defer func() { vectored = true }()
-		bandsSolve(t)
+		bandsSolve[float64](t)
+		bandsSolve[float32](t)
 	}
 }
 
-func bandsSolve(t *testing.T) {
+func bandsSolve[T Stored](t *testing.T) {
 	for _, c := range bandCases {
 		l := triangleOf(c.n, 40, c.distances...)
+		full := l.Transpose()
+		for k, v := range l.Val {
+			l.Val[k] = float64(T(v))
+		}
 		r := l.Transpose()
 		x, s := make([]float64, c.n), make([]float64, c.n)
 		Uniform(x, 3)
 		Uniform(s, 4)
 		down, up := rowByRow(l, x), rowsUp(r, x, s)
-		for _, of := range []*CSR{l, r} {
-			b := BandsOf(of)
+		for _, of := range []*CSR{l, r, full} {
+			b := BandsOf[T](of)
 			if b == nil {
 				t.Fatalf("%v are not stored by diagonals", c.distances)
+			}
+			if want := sizeOf[T]() * int64(c.n*len(c.distances)); b.Bytes() != want {
+				t.Errorf("%d bytes told, %d taken", b.Bytes(), want)
 			}
 			y := slices.Clone(x)
 			b.Forward(y, y)
@@ -106,7 +115,7 @@ func TestBandsRefuse(t *testing.T) {
 		"a diagonal with one entry": FromEntries(400, 400, []Entry{{399, 0, 1}}),
 		"mostly empty diagonals":    triangleOf(500, 2, 40, 41, 42, 43, 44, 45),
 	} {
-		if BandsOf(of) != nil {
+		if BandsOf[float64](of) != nil {
 			t.Errorf("%s is stored by diagonals", name)
 		}
 	}
@@ -114,9 +123,15 @@ func TestBandsRefuse(t *testing.T) {
 
 // A sweep allocates nothing.
 func TestBandsDoNotAllocate(t *testing.T) {
-	b := BandsOf(triangleOf(3000, 40, 1, 999, 1000))
+	l := triangleOf(3000, 40, 1, 999, 1000)
+	b, single := BandsOf[float64](l), BandsOf[float32](l)
 	x, s := make([]float64, 3000), make([]float64, 3000)
-	if got := testing.AllocsPerRun(20, func() { b.Forward(x, x); b.Backward(x, x, s) }); got > 0 {
+	if got := testing.AllocsPerRun(20, func() {
+		b.Forward(x, x)
+		b.Backward(x, x, s)
+		single.Forward(x, x)
+		single.Backward(x, x, s)
+	}); got > 0 {
 		t.Errorf("%g allocations", got)
 	}
 }

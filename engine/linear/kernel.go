@@ -1,8 +1,16 @@
 package linear
 
-// tap is one term of a sum of elementwise products: v∘x, both of the same
-// length.
-type tap struct{ v, x []float64 }
+// Stored is how a value is stored; sums of products are always in double.
+type Stored interface{ float32 | float64 }
+
+// tapOf is one term of a sum of elementwise products: v∘x, both of the same
+// length, v stored as T.
+type tapOf[T Stored] struct {
+	v []T
+	x []float64
+}
+
+type tap = tapOf[float64]
 
 // dotPlain is xᵀ y in eight strands: strand s takes the elements s, s+8, …, the
 // strands are added by halving, and the last up to seven elements one by one

@@ -148,6 +148,11 @@ func (v Values) Choice(name string) string {
 	return v.params[i].Choices[int(v.vals[i])]
 }
 
+// Is says whether the method has the named parameter and its word was chosen.
+func (v Values) Is(name, word string) bool {
+	return slices.ContainsFunc(v.params, func(p Param) bool { return p.Name == name }) && v.Choice(name) == word
+}
+
 // Path returns the named file.
 func (v Values) Path(name string) string { return v.paths[v.index(name)] }
 

@@ -15,7 +15,24 @@ var twins = []struct {
 	{"less taps in place", func(o operands) float64 { tapsOff(o.w, o.w, []tap{{o.x, o.y}}); return 0 }},
 	{"less taps from the end", func(o operands) float64 { tapsOffUp(o.w, o.z, o.x, []tap{{o.x, o.y}, {o.y, o.z}}); return 0 }},
 	{"less taps in place from the end", func(o operands) float64 { tapsOffUp(o.w, o.z, o.w, []tap{{o.x, o.y}}); return 0 }},
+	{"less single taps", func(o operands) float64 {
+		tapsOff(o.w, o.x, []tapOf[float32]{{short32(o.x), o.y}, {short32(o.y), o.z}, {short32(o.z), o.x}})
+		return 0
+	}},
+	{"less single taps from the end", func(o operands) float64 {
+		tapsOffUp(o.w, o.z, o.x, []tapOf[float32]{{short32(o.x), o.y}, {short32(o.y), o.z}})
+		return 0
+	}},
 	{"one tap", func(o operands) float64 { sumTaps(o.w, []tap{{o.x, o.y}}); return 0 }},
+}
+
+// short32 rounds each value to single precision.
+func short32(v []float64) []float32 {
+	s := make([]float32, len(v))
+	for i := range v {
+		s[i] = float32(v[i])
+	}
+	return s
 }
 
 // The vector instructions give the bits of their portable twins.

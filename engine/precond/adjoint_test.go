@@ -17,19 +17,25 @@ func TestTransposes(t *testing.T) {
 			if name == "unsymmetric" && e.Assumes&linear.AssumesSymmetric != 0 {
 				continue
 			}
-			m, _ := made(t, a, e.Name)
-			mt, ok := linear.As[linear.Transposer](m)
-			if !ok {
-				t.Errorf("%s claims a transpose and has none", e.Name)
-				continue
+			for _, form := range forms(e) {
+				transposes(t, form, a)
 			}
-			n := a.NRows
-			u, v, mu, mv := make([]float64, n), make([]float64, n), make([]float64, n), make([]float64, n)
-			linear.Uniform(u, 1)
-			linear.Uniform(v, 2)
-			m.Apply(mu, u)
-			mt.ApplyT(mv, v)
-			near(t, e.Name+" on "+name+": ⟨M⁻¹u,v⟩", linear.Dot(mu, v), linear.Dot(u, mv), 1e-12)
 		}
 	}
+}
+
+func transposes(t *testing.T, form string, a *linear.CSR) {
+	t.Helper()
+	m, _ := made(t, a, form)
+	mt, ok := linear.As[linear.Transposer](m)
+	if !ok {
+		t.Fatalf("%s claims a transpose and has none", form)
+	}
+	n := a.NRows
+	u, v, mu, mv := make([]float64, n), make([]float64, n), make([]float64, n), make([]float64, n)
+	linear.Uniform(u, 1)
+	linear.Uniform(v, 2)
+	m.Apply(mu, u)
+	mt.ApplyT(mv, v)
+	near(t, form+": ⟨M⁻¹u,v⟩", linear.Dot(mu, v), linear.Dot(u, mv), 1e-12)
 }

@@ -11,7 +11,7 @@ import (
 var icEntry = Entry{
 	Name: "ic", Title: "incomplete Cholesky by levels of fill",
 	Source:  "Meijerink and van der Vorst, Math. Comp. 31 (1977) 148–162; shift: Manteuffel, Math. Comp. 34 (1980) 473–497",
-	Params:  []linear.Param{levelParam},
+	Params:  []linear.Param{levelParam, storeParam},
 	Needs:   linear.NeedsEntries | linear.NeedsDiagonal,
 	Assumes: linear.AssumesSymmetric | linear.AssumesDefinite,
 	Fixed:   true, Symmetric: true, Transposes: true,
@@ -20,17 +20,17 @@ var icEntry = Entry{
 			return 0, false
 		}
 		lower, _, exact := fillCounts(a, v.Int("level"))
-		return factorBytes(a.NRows, lower, lower), exact && a.NRows < bandsFrom
+		return factorBytes(a.NRows, lower, lower, v), exact && a.NRows < bandsFrom
 	},
 	Build: func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
-		return built(buildIC(ctx, s, v.Int("level"), progress))
+		return built(buildIC(ctx, s, v.Int("level"), v, progress))
 	},
 }
 
 // buildIC factors the lower triangle of A as L D Lᵀ on its own pattern, filled
 // in to the level asked for. Where a pivot is not positive it factors
 // A + α diag(A) instead, with the smallest workable α that leastShift finds.
-func buildIC(ctx context.Context, s linear.System, level int, progress func(float64)) (*factors, trace.BuildNotes, error) {
+func buildIC(ctx context.Context, s linear.System, level int, v linear.Values, progress func(float64)) (*factors, trace.BuildNotes, error) {
 	var notes trace.BuildNotes
 	name := fmt.Sprintf("ic:%d", level)
 	a, err := entriesOf(s, name)
@@ -51,7 +51,10 @@ func buildIC(ctx context.Context, s linear.System, level int, progress func(floa
 	for _, d := range w.pivots {
 		pivot(&notes, d)
 	}
-	f := w.finish()
+	f, err := w.finish(v, name)
+	if err != nil {
+		return nil, notes, err
+	}
 	factorNotes(&notes, f, a)
 	return f, notes, nil
 }

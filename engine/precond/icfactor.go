@@ -82,12 +82,12 @@ func (k *icWork) row(i int, alpha float64) bool {
 	return d > least*diag && !math.IsInf(d, 0)
 }
 
-// finish turns the last factorisation into a preconditioner.
-func (k *icWork) finish() *factors {
+// finish turns the last factorisation into a preconditioner, kept as the
+// parameters say.
+func (k *icWork) finish(v linear.Values, method string) (*factors, error) {
 	f := &factors{lower: k.l, inverse: k.w, self: true}
 	for i, d := range k.pivots {
 		f.inverse[i] = 1 / d
 	}
-	f.settle()
-	return f
+	return f, f.settleAs(v, method)
 }

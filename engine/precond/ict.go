@@ -15,6 +15,7 @@ var ictEntry = Entry{
 			Meaning: "drops entries up to tau times the 2-norm of their column of A"},
 		{Name: "p", Kind: linear.Int, Default: 10, Min: 0, Max: 1 << 30,
 			Meaning: "keeps at most p entries of a column of L more than A's lower triangle has there"},
+		storeParam,
 	},
 	Needs:   linear.NeedsEntries | linear.NeedsDiagonal,
 	Assumes: linear.AssumesSymmetric | linear.AssumesDefinite,
@@ -29,7 +30,7 @@ var ictEntry = Entry{
 		if p := v.Int("p"); p < n {
 			most = min(most, upper+n*p)
 		}
-		return factorBytes(n, most, most), false
+		return factorBytes(n, most, most, v), false
 	},
 	Build: buildICT,
 }
@@ -58,7 +59,9 @@ func buildICT(ctx context.Context, s linear.System, v linear.Values, progress fu
 	for i, d := range w.pivots {
 		f.inverse[i] = 1 / d
 	}
-	f.settle()
+	if err := f.settleAs(v, name); err != nil {
+		return nil, notes, err
+	}
 	factorNotes(&notes, f, a)
 	return built(f, notes, nil)
 }

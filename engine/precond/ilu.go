@@ -11,7 +11,7 @@ import (
 var iluEntry = Entry{
 	Name: "ilu", Title: "incomplete LU by levels of fill",
 	Source: "Saad, Iterative Methods for Sparse Linear Systems, 2nd ed. (2003), algorithm 10.4 and section 10.3.3",
-	Params: []linear.Param{levelParam},
+	Params: []linear.Param{levelParam, storeParam},
 	Needs:  linear.NeedsEntries,
 	Fixed:  true, Symmetric: true, Transposes: true,
 	Estimate: func(a *linear.CSR, v linear.Values) (int64, bool) {
@@ -19,11 +19,11 @@ var iluEntry = Entry{
 			return 0, false
 		}
 		lower, upper, exact := fillCounts(a, v.Int("level"))
-		return factorBytes(a.NRows, lower, upper), exact && a.NRows < bandsFrom
+		return factorBytes(a.NRows, lower, upper, v), exact && a.NRows < bandsFrom
 	},
 	Build: func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 		level := v.Int("level")
-		return built(buildILU(ctx, s, fmt.Sprintf("ilu:%d", level), level, false, progress))
+		return built(buildILU(ctx, s, fmt.Sprintf("ilu:%d", level), level, false, v, progress))
 	},
 }
 
@@ -34,12 +34,12 @@ var levelParam = linear.Param{Name: "level", Kind: linear.Int, Default: 0, Min: 
 var miluEntry = Entry{
 	Name: "milu", Title: "modified incomplete LU, no fill",
 	Source: "Dupont, Kendall and Rachford, SIAM J. Numer. Anal. 5 (1968) 559–573; Saad, Iterative Methods for Sparse Linear Systems, 2nd ed. (2003), section 10.3.5",
-	Params: []linear.Param{noFillParam},
+	Params: []linear.Param{noFillParam, storeParam},
 	Needs:  linear.NeedsEntries,
 	Fixed:  true, Symmetric: true, Transposes: true,
 	Estimate: iluEntry.Estimate,
-	Build: func(ctx context.Context, s linear.System, _ linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
-		return built(buildILU(ctx, s, "milu:0", 0, true, progress))
+	Build: func(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
+		return built(buildILU(ctx, s, "milu:0", 0, true, v, progress))
 	},
 }
 
@@ -50,7 +50,7 @@ var noFillParam = linear.Param{Name: "level", Kind: linear.Int, Default: 0, Min:
 // buildILU factors A on its pattern filled in to a level. The modified
 // factorisation takes what it drops to the diagonal, so that it keeps the row
 // sums of A.
-func buildILU(ctx context.Context, s linear.System, name string, level int, modified bool, progress func(float64)) (*factors, trace.BuildNotes, error) {
+func buildILU(ctx context.Context, s linear.System, name string, level int, modified bool, v linear.Values, progress func(float64)) (*factors, trace.BuildNotes, error) {
 	var notes trace.BuildNotes
 	a, err := entriesOf(s, name)
 	if err != nil {
@@ -72,7 +72,9 @@ func buildILU(ctx context.Context, s linear.System, name string, level int, modi
 		}
 		pivot(&notes, d)
 	}
-	work.f.settle()
+	if err := work.f.settleAs(v, name); err != nil {
+		return nil, notes, err
+	}
 	factorNotes(&notes, work.f, a)
 	return work.f, notes, nil
 }

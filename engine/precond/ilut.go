@@ -30,6 +30,7 @@ var thresholdParams = []linear.Param{
 		Meaning: "drops entries up to tau times the 2-norm of their row of A"},
 	{Name: "p", Kind: linear.Int, Default: 10, Min: 0, Max: 1 << 30,
 		Meaning: "keeps at most p entries of each row of L and of U, besides the diagonal"},
+	storeParam,
 }
 
 // estimateILUT is what full rows of both factors take.
@@ -38,7 +39,7 @@ func estimateILUT(a *linear.CSR, v linear.Values) (int64, bool) {
 		return 0, false
 	}
 	half := capped(a.NRows, v.Int("p"))
-	return factorBytes(a.NRows, half, half), false
+	return factorBytes(a.NRows, half, half, v), false
 }
 
 // capped returns the entries of a strict triangle of order n with at most p in
@@ -80,7 +81,9 @@ func buildILUT(ctx context.Context, s linear.System, name string, v linear.Value
 		pivot(&notes, d)
 	}
 	w.finish()
-	w.f.settle()
+	if err := w.f.settleAs(v, name); err != nil {
+		return nil, notes, err
+	}
 	factorNotes(&notes, w.f, a)
 	return w, notes, nil
 }

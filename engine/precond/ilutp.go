@@ -11,7 +11,7 @@ var ilutpEntry = Entry{
 	Name: "ilutp", Title: "incomplete LU by threshold, with column pivoting",
 	Source: "Saad, Iterative Methods for Sparse Linear Systems, 2nd ed. (2003), section 10.4.4",
 	Params: append(thresholdParams[:2:2], linear.Param{Name: "permtol", Kind: linear.Real, Default: 0.1, Min: 1e-6, Max: 1,
-		Meaning: "exchanges columns where the diagonal entry is less than permtol times the largest"}),
+		Meaning: "exchanges columns where the diagonal entry is less than permtol times the largest"}, storeParam),
 	Needs: linear.NeedsEntries,
 	Fixed: true, Transposes: true,
 	Estimate: func(a *linear.CSR, v linear.Values) (int64, bool) {

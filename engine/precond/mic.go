@@ -11,7 +11,7 @@ import (
 var micEntry = Entry{
 	Name: "mic", Title: "modified incomplete Cholesky, no fill",
 	Source:  "Gustafsson, BIT 18 (1978) 142–156; shift: Manteuffel, Math. Comp. 34 (1980) 473–497",
-	Params:  []linear.Param{noFillParam},
+	Params:  []linear.Param{noFillParam, storeParam},
 	Needs:   linear.NeedsEntries | linear.NeedsDiagonal,
 	Assumes: linear.AssumesSymmetric | linear.AssumesDefinite,
 	Fixed:   true, Symmetric: true, Transposes: true,
@@ -50,7 +50,7 @@ func (k *micWork) factor(ctx context.Context, alpha float64, progress func(float
 
 func (k *micWork) pivot(i int) float64 { return k.pivots[i] }
 
-func buildMIC(ctx context.Context, s linear.System, _ linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
+func buildMIC(ctx context.Context, s linear.System, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 	const name = "mic:0"
 	var notes trace.BuildNotes
 	a, err := entriesOf(s, name)
@@ -74,7 +74,9 @@ func buildMIC(ctx context.Context, s linear.System, _ linear.Values, progress fu
 	}
 	f := w.f
 	f.upper, f.self = nil, true
-	f.settle()
+	if err := f.settleAs(v, name); err != nil {
+		return nil, notes, err
+	}
 	factorNotes(&notes, f, a)
 	return built(f, notes, nil)
 }

@@ -33,7 +33,7 @@ func estimateRAS(a *linear.CSR, v linear.Values) (int64, bool) {
 		return 2*direct.PlanLU(a, direct.AMD).Bytes() + 48*int64(a.NRows), false
 	}
 	lower, upper := halves(a)
-	return 2*factorBytes(a.NRows, lower, upper) + 48*int64(a.NRows), false
+	return 2*factorBytes(a.NRows, lower, upper, v) + 48*int64(a.NRows), false
 }
 
 // ras applies M⁻¹ = Σ R̃_iᵀ A_i⁻¹ R_i: R_i restricts to part i with its
@@ -174,11 +174,11 @@ func solveLocally(ctx context.Context, a *linear.CSR, how string, notes *trace.B
 }
 
 func buildILU0(ctx context.Context, s linear.System) (*factors, trace.BuildNotes, error) {
-	return buildILU(ctx, s, "ilu:0", 0, false, nil)
+	return buildILU(ctx, s, "ilu:0", 0, false, linear.Values{}, nil)
 }
 
 func buildIC0(ctx context.Context, s linear.System) (*factors, trace.BuildNotes, error) {
-	return buildIC(ctx, s, 0, nil)
+	return buildIC(ctx, s, 0, linear.Values{}, nil)
 }
 
 // asPart names the row of A and the part in the error of a local factorisation.

@@ -119,7 +119,7 @@ func buildSchur(ctx context.Context, s linear.System, v linear.Values, progress 
 func innerSolve(ctx context.Context, a *linear.CSR, how string, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 	s := linear.System{A: a}
 	if how == "incomplete" {
-		return built(buildILU(ctx, s, "ilu:0", 0, false, progress))
+		return built(buildILU(ctx, s, "ilu:0", 0, false, linear.Values{}, progress))
 	}
 	v, err := linear.Resolve("lu", exactParams, nil)
 	if err != nil {

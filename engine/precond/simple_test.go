@@ -3,6 +3,7 @@ package precond
 import (
 	"context"
 	"errors"
+	"slices"
 	"strconv"
 	"testing"
 
@@ -69,31 +70,44 @@ func TestCatalogue(t *testing.T) {
 		if e.InUserUnits {
 			continue // needs files: see the session's tests
 		}
-		t.Run(e.Name, func(t *testing.T) {
-			_, v := lookup(t, e.Name)
-			m, notes := made(t, a, e.Name)
-			if bytes, exact := e.Estimate(a, v); exact && bytes != notes.Bytes {
-				t.Errorf("estimate %d bytes, notes %d", bytes, notes.Bytes)
-			}
-			checkDot(t, m, a.NRows)
-			checkSymmetry(t, m, a.NRows, notes.Symmetric, notes.Definite)
-			if e.Needs&linear.NeedsEntries == 0 {
-				return
-			}
-			ctx, cancel := context.WithCancel(context.Background())
-			cancel()
-			if _, _, err := e.Build(ctx, parted(a), v, nil); !errors.Is(err, context.Canceled) {
-				t.Errorf("a cancelled build gives %v", err)
-			}
-			seen := -1.0
-			_, _, err := e.Build(context.Background(), parted(a), v, func(f float64) { seen = max(seen, f) })
-			if err != nil || seen <= 0 || seen >= 1 {
-				t.Errorf("progress reached %g, error %v", seen, err)
-			}
-			if _, _, err := e.Build(context.Background(), linear.System{A: linear.Func{N: 3}}, v, nil); err == nil {
-				t.Error("a matrix-free operator is accepted")
-			}
-		})
+		for _, name := range forms(e) {
+			t.Run(name, func(t *testing.T) { conforms(t, e, name, a) })
+		}
+	}
+}
+
+// forms are an entry at its defaults and, where it has them, with factors in
+// single precision.
+func forms(e Entry) []string {
+	if slices.ContainsFunc(e.Params, func(p linear.Param) bool { return p.Name == storeParam.Name }) {
+		return []string{e.Name, e.Name + ":store=single"}
+	}
+	return []string{e.Name}
+}
+
+func conforms(t *testing.T, e Entry, name string, a *linear.CSR) {
+	_, v := lookup(t, name)
+	m, notes := made(t, a, name)
+	if bytes, exact := e.Estimate(a, v); exact && bytes != notes.Bytes {
+		t.Errorf("estimate %d bytes, notes %d", bytes, notes.Bytes)
+	}
+	checkDot(t, m, a.NRows)
+	checkSymmetry(t, m, a.NRows, notes.Symmetric, notes.Definite)
+	if e.Needs&linear.NeedsEntries == 0 {
+		return
+	}
+	ctx, cancel := context.WithCancel(context.Background())
+	cancel()
+	if _, _, err := e.Build(ctx, parted(a), v, nil); !errors.Is(err, context.Canceled) {
+		t.Errorf("a cancelled build gives %v", err)
+	}
+	seen := -1.0
+	_, _, err := e.Build(context.Background(), parted(a), v, func(f float64) { seen = max(seen, f) })
+	if err != nil || seen <= 0 || seen >= 1 {
+		t.Errorf("progress reached %g, error %v", seen, err)
+	}
+	if _, _, err := e.Build(context.Background(), linear.System{A: linear.Func{N: 3}}, v, nil); err == nil {
+		t.Error("a matrix-free operator is accepted")
 	}
 }
 

@@ -51,7 +51,8 @@ func (s *sor) ApplyT(dst, x []float64) {
 	copy(dst, x)
 	for i := len(dst) - 1; i >= 0; i-- {
 		dst[i] *= s.inverse[i]
-		scatter(dst, dst[i], s.a, s.a.Ptr[i], s.diag[i])
+		from, to := s.a.Ptr[i], s.diag[i]
+		scatter(dst, dst[i], s.a.Col[from:to], s.a.Val[from:to])
 	}
 }
 
