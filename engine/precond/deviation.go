@@ -15,7 +15,7 @@ const (
 
 // Deviation returns ‖A − M‖_F/‖A‖_F, what the factors M = L D R leave out of
 // the n×n matrix a, or put in its place; false where that would take long, or
-// the triangles are not stored by rows. It is exact but for rounding: row i of
+// the triangles are not stored by rows in double precision. It is exact but for rounding: row i of
 // M is Σ_k l_ik d_k (e_k + r_k) over the entries of row i of L and its
 // diagonal.
 func (f *factors) Deviation(a *linear.CSR) (float64, bool) { return f.deviation(a, nil) }
