@@ -123,7 +123,7 @@ func (w *work) errorsBy(f factors, out *Factor) []float64 {
 	e, d, rest := make([]float64, n), make([]float64, n), make([]float64, n)
 	f.solve(e, w.r)
 	for i := range n {
-		rest[i], _ = rowResidual(w.a, i, e, w.r[i])
+		rest[i], _ = w.a.RowResidual(i, e, nil, w.r[i])
 	}
 	f.solve(d, rest)
 	linear.Axpy(1, d, e)
@@ -145,7 +145,7 @@ func (w *work) reach(f factors, star []float64) float64 {
 	n := w.a.NRows
 	g, t := make([]float64, n), make([]float64, n)
 	for i := range n {
-		_, g[i] = rowResidual(w.a, i, star, w.q.System.B[i])
+		_, g[i] = w.a.RowResidual(i, star, nil, w.q.System.B[i])
 	}
 	apply := func(dst, x []float64) { // G A⁻ᵀ x
 		f.back(dst, x)

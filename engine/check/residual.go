@@ -24,7 +24,7 @@ func (w *work) residual() Residual {
 	w.r, w.size = make([]float64, n), make([]float64, n)
 	bound, plain := make([]float64, n), make([]float64, n)
 	for i := range n {
-		w.r[i], w.size[i] = rowResidual(w.a, i, w.q.X, w.q.System.B[i])
+		w.r[i], w.size[i] = w.a.RowResidual(i, w.q.X, nil, w.q.System.B[i])
 		g := gamma(w.a.Ptr[i+1] - w.a.Ptr[i] + 1)
 		bound[i] = unit*math.Abs(w.r[i]) + g*g*w.size[i]
 		plain[i] = g * w.size[i]
@@ -33,25 +33,11 @@ func (w *work) residual() Residual {
 	if x0 := w.q.System.Guess; x0 != nil {
 		w.r0 = make([]float64, n)
 		for i := range n {
-			w.r0[i], _ = rowResidual(w.a, i, x0, w.q.System.B[i])
+			w.r0[i], _ = w.a.RowResidual(i, x0, nil, w.q.System.B[i])
 		}
 	}
 	return Residual{One: norm1(w.r), Two: linear.Norm2(w.r), Inf: linear.NormInf(w.r),
 		Bound: linear.Norm2(bound), Plain: linear.Norm2(plain)}
-}
-
-// rowResidual returns b_i − (Ax)_i, compensated, and |b_i| + (|A||x|)_i.
-func rowResidual(a *linear.CSR, i int, x []float64, b float64) (r, size float64) {
-	cols, vals := a.Row(i)
-	sum, low := b, 0.0
-	size = math.Abs(b)
-	for k, c := range cols {
-		p, e1 := linear.TwoProduct(-vals[k], x[c])
-		s, e2 := linear.TwoSum(sum, p)
-		sum, low = s, low+(e1+e2)
-		size += math.Abs(p)
-	}
-	return sum + low, size
 }
 
 // gamma is γ_m = m u/(1−m u).
