@@ -41,7 +41,7 @@ func (s *Session) offers(h run.Have) []string {
 // stands is the race as the policy sees it.
 func (s *Session) stands(r *race, trials []trace.History) choose.Race {
 	return choose.Race{Facts: s.facts, Candidates: r.list, Trials: trials, Tried: r.tried, Offers: r.offers,
-		Today: canonical(s.opt.Today), Goal: s.opt.Goal, Limit: s.limits().Iterations, Left: s.left()}
+		Beyond: diagnose.Offered(diagnose.Case{Facts: s.facts, Trials: trials, Tol: s.opt.Tol}), Today: canonical(s.opt.Today), Goal: s.opt.Goal, Limit: s.limits().Iterations, Left: s.left()}
 }
 
 // left is the time that is left of the run, 0 where it has no limit.
@@ -84,7 +84,7 @@ func (s *Session) lead(b *run.Bench, r *race) bool {
 		}
 	}
 	for _, t := range b.Trials() {
-		if h := t.History(); h.Stop == trace.Waiting && !h.Today {
+		if h := t.History(); h.Stop == trace.Waiting && !h.Today && !h.TwoDoubles {
 			b.Bound(t, orders.Setup)
 		}
 	}

@@ -22,7 +22,10 @@ func (s *Session) settingsOf(pairing string) []string {
 		out = append(out, fmt.Sprintf("before, step %d: %s%s", i+1, p.Entry.Title, terms(p.Entry.Params, p.Values)))
 	}
 	solver := "solver: " + m.Solver.Title + terms(m.Solver.Params, m.SolverValues)
-	if m.Precond.Exact && m.From == "" {
+	switch {
+	case m.Solver.InTwoDoubles(m.SolverValues):
+		solver += "; x is the unevaluated sum of two doubles, and b - Ax is evaluated anew in twice the working precision at every step"
+	case m.Precond.Exact && m.From == "":
 		solver += "; one step with a complete factorisation solves the system"
 	}
 	precond := "preconditioner: " + m.Precond.Title + terms(m.Precond.Params, m.PrecondValues)
@@ -39,6 +42,9 @@ func (s *Session) settingsOf(pairing string) []string {
 func terms(params []linear.Param, v linear.Values) string {
 	var words []string
 	for _, p := range params {
+		if p.Quiet && p.Name == "parts" && v.Int(p.Name) == 1 {
+			continue // x in one double, as anywhere
+		}
 		words = append(words, p.Name+" "+value(p, v))
 	}
 	if len(words) == 0 {

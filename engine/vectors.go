@@ -156,9 +156,12 @@ func shownTrial(d report.Document) *trace.History {
 
 // lastVectors are the residual of a trial and what it reduced slowest.
 func lastVectors(sys linear.System, t trace.History) []report.Vector {
-	r := t.Vectors[run.ResidualVector]
+	r, how := t.Vectors[run.ResidualVector], t.Stop.String()
+	if t.TwoDoubles {
+		how += " with x in two doubles"
+	}
 	out := []report.Vector{{Name: report.VectorName(run.ResidualVector, t.Pairing), Values: r, Comment: fmt.Sprintf(
-		"b-Ax at the end of %s (%s after %d its), of 2-norm %.6g", t.Pairing, t.Stop, t.Iterations, linear.Norm2(r))}}
+		"b-Ax at the end of %s (%s after %d its), of 2-norm %.6g", t.Pairing, how, t.Iterations, linear.Norm2(r))}}
 	if v := t.Vectors[run.SlowestVector]; v != nil {
 		what := "what the last fifth to third of the run still changed in x"
 		if t.Stop == trace.Converged {

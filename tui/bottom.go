@@ -104,7 +104,7 @@ func (m *model) leadKey(f *diagnose.Finding) string {
 	case len(f.Try) > 0:
 		return fmt.Sprintf("trial %d runs %s", m.numberOf(f.Try[0]), m.signs.clean(f.Try[0]))
 	case m.snap.Choice.Pairing != "":
-		return "best so far: " + m.signs.clean(m.snap.Choice.Pairing)
+		return "best so far: " + m.choiceName()
 	}
 	return "tab: findings"
 }
@@ -122,7 +122,7 @@ func (m *model) leadChoice() []string {
 	if len(c.Reasons) > 0 {
 		why = m.signs.clean(c.Reasons[0])
 	}
-	return []string{clip("no finding; best so far: "+m.signs.clean(c.Pairing), m.w), clip("  "+why, m.w)}
+	return []string{clip("no finding; best so far: "+m.choiceName(), m.w), clip("  "+why, m.w)}
 }
 
 // findings are those of the snapshot as a reader wants them.

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"dwindle/engine"
 	"dwindle/engine/choose"
 	"dwindle/engine/trace"
 )
@@ -19,7 +20,7 @@ func (m *model) choiceText(w int) []string {
 		lines = append(lines, m.ranking(c.Ranked, w)...)
 		return append(lines, m.ruledOut(c.RuledOut, w)...)
 	}
-	head := "use " + m.signs.clean(c.Pairing)
+	head := "use " + m.choiceName()
 	if c.Gain > 0 {
 		head += fmt.Sprintf(": %s times as fast as today's", round2(c.Gain))
 	}
@@ -35,6 +36,26 @@ func (m *model) choiceText(w int) []string {
 	lines = append(lines, m.ranking(c.Ranked, w)...)
 	lines = append(lines, m.outcomes(c.Outcomes, w)...)
 	return append(lines, m.ruledOut(c.RuledOut, w)...)
+}
+
+// chosen is the trial that is recommended, nil where there is none.
+func (m *model) chosen() *engine.Trial {
+	for i := range m.snap.Trials {
+		if t := &m.snap.Trials[i]; t.History.Pairing == m.snap.Choice.Pairing {
+			return t
+		}
+	}
+	return nil
+}
+
+// choiceName is the pairing that is recommended, with what must be known of its
+// answer.
+func (m *model) choiceName() string {
+	name := m.signs.clean(m.snap.Choice.Pairing)
+	if t := m.chosen(); t != nil && t.History.TwoDoubles {
+		name += ", x in two doubles"
+	}
+	return name
 }
 
 // bullets lists sentences under a word.

@@ -161,7 +161,10 @@ func stateText(h *trace.History) string {
 	if _, ok := falseStop(h); ok && h.Stop != trace.FalselyConverged {
 		s += "(!)"
 	}
-	if h.Direct {
+	switch {
+	case h.TwoDoubles && h.Stop.Ended():
+		s += " 2-double" // x is kept in two doubles
+	case h.Direct:
 		s += " direct" // one step with an exact factorisation
 	}
 	if left := leftWords(h); left != "" && h.Stop == trace.Running {

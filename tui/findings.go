@@ -109,11 +109,11 @@ func (v *findingsView) row(m *model, i, w int) string {
 	}
 	list := m.findings()
 	if i == len(list) {
-		pairing := m.snap.Choice.Pairing
-		if pairing == "" {
-			pairing = "none yet"
+		name := "none yet"
+		if m.snap.Choice.Pairing != "" {
+			name = m.choiceName()
 		}
-		return clip(mark+"+ choice: "+m.signs.clean(pairing), w)
+		return clip(mark+"+ choice: "+name, w)
 	}
 	f := list[i]
 	front := mark + m.findingMark(f) + " " + left(m.subject(f), min(w/4, 30))

@@ -69,6 +69,7 @@ func (m *model) infoLines(id int, h *trace.History, w int) []string {
 	if finite(h.Error) {
 		add("true error " + sci(h.Error) + " of the known solution")
 	}
+	add(nearWords(h))
 	if floor := h.Attainable(); floor > 0 {
 		add("accuracy floor of the true residual near " + sci(floor) + ", estimated")
 	}

@@ -175,6 +175,15 @@ func probeWords(p *trace.MProbe) string {
 	return s + fmt.Sprintf("; asymmetry %s, nonlinearity %s, from use to use %s", sci(p.Asymmetry), sci(p.Nonlinear), sci(p.Unrepeatable))
 }
 
+// nearWords tells how far x was found to be from a solution in two doubles.
+func nearWords(h *trace.History) string {
+	n := h.Near
+	if n == nil || n.Of == h.Pairing {
+		return ""
+	}
+	return fmt.Sprintf("error of x %s, in its worst entry %s, against x in two doubles by %s", sci(n.Error), sci(n.Worst), n.Of)
+}
+
 // noiseWords tells how reruns with b changed in its last bits came out.
 func noiseWords(counts []int) string {
 	if len(counts) == 0 {

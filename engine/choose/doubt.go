@@ -17,7 +17,7 @@ func notToldApart(c Choice) []string {
 	var names []string
 	closest := 0.0
 	for _, r := range c.Ranked[1:] {
-		if r.Reached && r.Low <= first.High && r.Seconds >= first.Low {
+		if r.Reached && r.two == first.two && r.Low <= first.High && r.Seconds >= first.Low {
 			if len(names) == 0 {
 				closest = math.Abs(r.Seconds/first.Seconds - 1)
 			}
@@ -46,7 +46,7 @@ func overturned(c Choice) []string {
 	for i := len(Sides) - 1; i > 0; i-- {
 		best := first
 		for _, r := range c.Ranked[1:] {
-			if r.Reached && r.For[i] < best.For[i] {
+			if r.Reached && r.two == first.two && r.For[i] < best.For[i] {
 				best = r
 			}
 		}

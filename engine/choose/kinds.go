@@ -85,7 +85,7 @@ func (r Race) base() string {
 	for _, h := range r.Trials {
 		s := bare(split(h.Pairing).solver)
 		switch {
-		case !reached(h) || h.Direct || r.takesDefiniteM(s):
+		case !inDouble(h) || h.Direct || r.takesDefiniteM(s):
 		case s == usual:
 			return usual
 		case other == "":

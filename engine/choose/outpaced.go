@@ -30,7 +30,7 @@ func (r Race) lost(best *trace.History, found bool) []End {
 		}
 	}
 	for i, h := range r.Trials {
-		if h.Stop != trace.Running || h.Today || h.Pairing == r.Today {
+		if h.Stop != trace.Running || h.Today || h.Pairing == r.Today || h.TwoDoubles { // two doubles do not run for time
 			continue
 		}
 		reason := ""

@@ -17,6 +17,7 @@ type Race struct {
 	Tried      map[string]bool // pairings that were ever started, and those the caller could not start
 	Today      string          // the pairing the user's code runs now; it is never ended
 	Offers     []string        // what findings about the system offer to try, runnable here
+	Beyond     string          // what is offered where no double holds the tolerance, tried whatever the limits; empty: nothing
 	Goal       string          // Seconds, Memory or Robust
 	Limit      int             // iterations a trial may take
 	Left       time.Duration   // of the run; 0: no limit
@@ -85,6 +86,9 @@ func (r Race) add(live int, best *trace.History, found bool) []string {
 	if len(first) > 0 {
 		return first
 	}
+	if r.Beyond != "" && !r.Tried[r.Beyond] {
+		return []string{r.Beyond}
+	}
 	room := width - live
 	switch {
 	case len(r.Trials) >= mostInAll || found && best.OwnTime < brief && len(r.Trials) >= mostBrief:
@@ -103,12 +107,12 @@ func (r Race) add(live int, best *trace.History, found bool) []string {
 	return r.untried(room)
 }
 
-// best is the trial that reached the target in the least own time, or went as
-// far as double precision goes where none did.
+// best is the trial that reached the target in the least own time with x in one
+// double, or went as far as double precision goes where none did.
 func (r Race) best() (*trace.History, bool) {
 	var best *trace.History
 	for i := range r.Trials {
-		if h := &r.Trials[i]; reached(*h) && (best == nil || h.OwnTime < best.OwnTime) {
+		if h := &r.Trials[i]; inDouble(*h) && (best == nil || h.OwnTime < best.OwnTime) {
 			best = h
 		}
 	}

@@ -27,7 +27,8 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 			continue
 		}
 		r := ranked(h)
-		r.Work, r.shaky = work(f, h), h.Direct && f.Singular.Answer == inspect.Yes || h.UnsolvedRows > 0
+		r.Work, r.two = work(f, h), h.TwoDoubles
+		r.shaky = h.Direct && f.Singular.Answer == inspect.Yes || h.UnsolvedRows > 0
 		c.Ranked = append(c.Ranked, r)
 	}
 	slices.SortStableFunc(c.Ranked, func(a, b Ranked) int { return order(a, b, findings, goal) })
@@ -53,6 +54,9 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 }
 
 func reached(h trace.History) bool { return h.Stop == trace.Converged || h.Stop == trace.LeastSquares }
+
+// inDouble says that a trial reached the target with x in one double.
+func inDouble(h trace.History) bool { return reached(h) && !h.TwoDoubles }
 
 func ranked(h trace.History) Ranked {
 	nan := math.NaN()
@@ -84,7 +88,7 @@ func order(a, b Ranked, findings []diagnose.Finding, goal string) int {
 	switch {
 	case ka != kb:
 		return ka - kb
-	case ka == 2:
+	case ka == unreached:
 		return lessFirst(a.Expected, b.Expected)
 	case goal == Memory && a.Memory != b.Memory:
 		return cmp.Compare(a.Memory, b.Memory)
@@ -110,8 +114,16 @@ func lessFirst(a, b float64) int {
 	return cmp.Compare(a, b)
 }
 
+// unreached is the class of those that did not reach the target.
+const unreached = 3
+
+// class puts those first that nothing speaks against, then the doubtful ones,
+// then those that keep x in two doubles, which nobody needs where one does.
 func class(r Ranked, findings []diagnose.Finding) int {
 	if !r.Reached {
+		return unreached
+	}
+	if r.two {
 		return 2
 	}
 	if r.shaky {
@@ -134,13 +146,13 @@ var doubtful = []string{"unsolved-rows", "breakdown", "preconditioner-not-spd", 
 func breakEven(list []Ranked) {
 	cheap := -1
 	for i, r := range list {
-		if r.Reached && (cheap < 0 || r.Setup < list[cheap].Setup) {
+		if r.Reached && !r.two && (cheap < 0 || r.Setup < list[cheap].Setup) {
 			cheap = i
 		}
 	}
 	for i := range list {
 		r := &list[i]
-		if cheap < 0 || !r.Reached || i == cheap {
+		if cheap < 0 || !r.Reached || r.two || i == cheap {
 			continue
 		}
 		q := list[cheap]

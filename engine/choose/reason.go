@@ -12,6 +12,9 @@ import (
 // reasons say what the choice rests on.
 func reasons(f *inspect.Facts, trials []trace.History, c Choice) []string {
 	first := c.Ranked[0]
+	if first.two {
+		return append(append(utmost(f, trials), twoReasons(chosen(trials, c), first)...), others(trials, c)...)
+	}
 	s := fmt.Sprintf("%s, %s to the target, of which %s set-up", count(first.Iterations, "iteration"), took(first.Seconds), took(first.Setup))
 	if first.Runs > 1 {
 		s += fmt.Sprintf(" (median of %d runs)", first.Runs)
@@ -27,7 +30,11 @@ func reasons(f *inspect.Facts, trials []trace.History, c Choice) []string {
 	}
 	if len(c.Ranked) > 1 && c.Ranked[1].Reached {
 		second := c.Ranked[1]
-		out = append(out, fmt.Sprintf("next is %s with %s and %s", second.Pairing, count(second.Iterations, "iteration"), took(second.Seconds)))
+		words := ""
+		if second.two {
+			words = ", x kept in two doubles"
+		}
+		out = append(out, fmt.Sprintf("next is %s with %s and %s%s", second.Pairing, count(second.Iterations, "iteration"), took(second.Seconds), words))
 	}
 	if s := restsOn(f, trials, c); s != "" {
 		out = append(out, s)
@@ -41,7 +48,23 @@ func utmost(f *inspect.Facts, trials []trace.History) []string {
 	if !ok {
 		return nil
 	}
-	return []string{fmt.Sprintf("%s: %.2g is all that double precision gives here; ask for %.1g", h.Pairing, h.TrueResidual, diagnose.AskFor(h.TrueResidual))}
+	out := []string{fmt.Sprintf("%s: %.2g is all that double precision gives here; ask for %.1g", h.Pairing, h.TrueResidual, diagnose.AskFor(h.TrueResidual))}
+	if right := diagnose.Right(h); right != "" {
+		out = append(out, fmt.Sprintf("its x is %s, measured against %s", right, h.Near.Of))
+	}
+	return out
+}
+
+// twoReasons say what a solution in two doubles takes, and what is left of it in
+// one.
+func twoReasons(h *trace.History, r Ranked) []string {
+	out := []string{fmt.Sprintf("for the tolerance as it is, %s keeps x in two doubles: %s, %s to the target, of which %s set-up",
+		r.Pairing, count(r.Iterations, "iteration"), took(r.Seconds), took(r.Setup))}
+	rounded := fmt.Sprintf("its x rounded to one double leaves %.2g", h.Rounded)
+	if right := diagnose.Right(*h); right != "" {
+		rounded += ", and is " + right
+	}
+	return append(out, rounded)
 }
 
 // others counts those that did not get there.

@@ -53,7 +53,7 @@ func (r Race) leading() []*trace.History {
 	}
 	var out []*trace.History
 	for i := range r.Trials {
-		if h := &r.Trials[i]; reached(*h) && h.OwnTime.Seconds() <= leads*best.OwnTime.Seconds() {
+		if h := &r.Trials[i]; inDouble(*h) && h.OwnTime.Seconds() <= leads*best.OwnTime.Seconds() {
 			out = append(out, h)
 		}
 	}

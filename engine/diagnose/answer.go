@@ -50,7 +50,7 @@ func whole(digits float64) int { return max(0, int(digits+0.3)) }
 // bestSolved is the solved trial of the smallest backward error.
 func bestSolved(c Case) (best trace.History, ok bool) {
 	for _, h := range c.Trials {
-		if solved(h) && h.Backward >= 0 && (!ok || h.Backward < best.Backward) {
+		if inDouble(h) && h.Backward >= 0 && (!ok || h.Backward < best.Backward) {
 			best, ok = h, true
 		}
 	}

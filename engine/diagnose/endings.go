@@ -178,7 +178,7 @@ func bottom(h trace.History) int {
 // reached finds the trial with the smallest true residual below limit.
 func reached(c Case, limit float64) (best trace.History, ok bool) {
 	for _, h := range c.Trials {
-		if h.BestTrue < limit && (!ok || h.BestTrue < best.BestTrue) {
+		if h.BestTrue < limit && !h.TwoDoubles && (!ok || h.BestTrue < best.BestTrue) {
 			best, ok = h, true
 		}
 	}

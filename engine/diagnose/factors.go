@@ -82,7 +82,7 @@ func incomplete(m string) bool {
 // direct is a trial with complete factors.
 func direct(c Case) (trace.History, bool) {
 	for _, h := range c.Trials {
-		if h.Direct && h.Notes.Entries > 0 && solved(h) {
+		if h.Direct && h.Notes.Entries > 0 && inDouble(h) {
 			return h, true
 		}
 	}

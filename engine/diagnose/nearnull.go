@@ -17,7 +17,7 @@ var nearNull = Rule{"near-null", func(c Case) []Finding {
 	s := f.Study
 	d, last := s.Null[0], s.Null[len(s.Null)-1]
 	g := Finding{Weight: Drag, Certainty: inspect.Estimated, Subject: OnSystem, Claim: freeClaim(len(s.Null), last),
-		Advice: "if a mode of the model should be held, hold it; otherwise solve directly, trust only these digits, and " + reachable(c),
+		Advice: "if a mode of the model should be held, hold it; otherwise solve directly, trust only these digits" + measuredDigits(c) + ", and " + reachable(c),
 		Try:    []string{"richardson:1+lu"},
 		Evidence: []Evidence{{Quantity: "||Av||/(||A|| ||v||) after equilibration", Value: last.Quotient, Iteration: none, Rows: d.Rows},
 			number("the next direction", last.Next, "")}}
@@ -68,11 +68,20 @@ func (c Case) singularToRounding(g *Finding) {
 	g.Advice += openDigits(f, free[0].Quotient)
 }
 
+// measuredDigits tells what was measured of x for this b, which the condition
+// foretells for any b.
+func measuredDigits(c Case) string {
+	if h, ok := Utmost(c.Facts, c.Trials); ok && Right(h) != "" {
+		return fmt.Sprintf(" (for this b, x of %s was found %s)", h.Pairing, Right(h))
+	}
+	return ""
+}
+
 // reachable says which tolerance the trials show to be in reach.
 func reachable(c Case) string {
 	best, pairing := math.Inf(1), ""
 	for _, h := range c.Trials {
-		if h.BestTrue < best {
+		if h.BestTrue < best && !h.TwoDoubles {
 			best, pairing = h.BestTrue, h.Pairing
 		}
 	}

@@ -45,6 +45,10 @@ func solved(h trace.History) bool {
 	return h.Stop == trace.Converged || h.Stop == trace.LeastSquares
 }
 
+// inDouble says whether a trial ended with an answer that one double an unknown
+// holds.
+func inDouble(h trace.History) bool { return solved(h) && !h.TwoDoubles }
+
 // cut takes a canonical pairing apart: preparations with their slash, solver,
 // preconditioner. A file that the preconditioner names may hold either sign.
 func cut(pairing string) (prep, solver, precond string) {

@@ -49,6 +49,10 @@ func (e Entry) Watched(v linear.Values) trace.Norm {
 	return e.Norm
 }
 
+// InTwoDoubles says whether the solver keeps x in two doubles with those
+// parameters. It then has the ability Tailer and needs the entries of A.
+func (e Entry) InTwoDoubles(v linear.Values) bool { return e.TwoDoubles != nil && e.TwoDoubles(v) }
+
 // Entry is one solver of the catalogue.
 type Entry struct {
 	Name, Title string
@@ -62,6 +66,7 @@ type Entry struct {
 	Restarted   bool                               // works in cycles
 	Dense       bool                               // a restart solves a small dense eigenproblem, which allocates a little
 	Monotone    bool                               // ‖r‖ cannot grow
+	TwoDoubles  func(linear.Values) bool           // whether x is kept in two doubles; nil: never
 	Energy      bool                               // ‖e‖_A cannot grow when A is definite
 	Lanczos     bool                               // Alpha, Beta are those of CG and give the Lanczos matrix of M⁻¹A
 	Tridiagonal bool                               // Alpha, Beta are the entries of the Lanczos matrix themselves: α_k on its diagonal, β_{k+1} beside it

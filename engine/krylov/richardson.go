@@ -9,16 +9,34 @@ import (
 
 var richardsonEntry = Entry{
 	Name: "richardson", Title: "Richardson's stationary iteration",
-	Source: "Richardson, Phil. Trans. Roy. Soc. A 210 (1911) 307–357; Saad, Iterative Methods for Sparse Linear Systems, 2nd ed. (2003), section 4.2",
-	Params: []linear.Param{{Name: "omega", Kind: linear.Real, Default: 1,
-		Min: 1e-12, Max: 1e12, Meaning: "step length"}},
+	Source: "Richardson, Phil. Trans. Roy. Soc. A 210 (1911) 307–357; Saad, Iterative Methods for Sparse Linear Systems, 2nd ed. (2003), section 4.2; " +
+		"in two doubles: Demmel, Hida, Kahan, Li, Mukherjee and Riedy, ACM Trans. Math. Softw. 32 (2006) 325–351",
+	Params: []linear.Param{
+		{Name: "omega", Kind: linear.Real, Default: 1, Min: 1e-12, Max: 1e12, Meaning: "step length"},
+		{Name: "parts", Kind: linear.Int, Quiet: true, Default: 1, Min: 1, Max: 2,
+			Meaning: "doubles that each unknown is kept in; with 2, b-Ax is evaluated in twice the working precision"},
+	},
 	Assumes:     linear.AssumesFixedM,
 	Norm:        trace.TwoNorm,
 	Products:    "1",
 	NoGuarantee: true,
-	Memory:      func(n int, _ linear.Values) int64 { return vectors(4, n) },
-	New:         func(v linear.Values) Solver { return &richardson{omega: v.Real("omega")} },
+	TwoDoubles:  inTwo,
+	Memory: func(n int, v linear.Values) int64 {
+		if inTwo(v) {
+			return vectors(6, n)
+		}
+		return vectors(4, n)
+	},
+	New: func(v linear.Values) Solver {
+		if inTwo(v) {
+			return &refinement{omega: v.Real("omega")}
+		}
+		return &richardson{omega: v.Real("omega")}
+	},
 }
+
+// inTwo says whether x is to be kept in two doubles.
+func inTwo(v linear.Values) bool { return v.Int("parts") == 2 }
 
 // richardson is the stationary iteration
 //

@@ -28,6 +28,7 @@ type Entry struct {
 	Needs       linear.Has
 	Scales      bool // residuals of the prepared system are in other units
 	Projects    bool // the right-hand side is changed to its reachable part
+	Rounds      bool // A or b is rounded anew: the solution moves in its last places
 	// Estimate returns the memory the prepared system takes.
 	Estimate func(a *linear.CSR, v linear.Values) int64
 	Apply    func(ctx context.Context, s linear.System, v linear.Values) (linear.System, Back, error)

@@ -14,6 +14,7 @@ var matchEntry = Entry{
 	Source: "Duff and Koster, SIAM J. Matrix Anal. Appl. 22 (2001) 973–996",
 	Needs:  linear.NeedsEntries,
 	Scales: true,
+	Rounds: true,
 	Estimate: func(a *linear.CSR, _ linear.Values) int64 {
 		return 2*a.Bytes() + int64(len(a.Val))*8 + 120*int64(a.NRows)
 	},

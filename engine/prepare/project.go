@@ -15,6 +15,7 @@ var projectEntry = Entry{
 	Source:   "orthogonal projection onto the complement of the known left null vectors",
 	Needs:    linear.NeedsEntries,
 	Projects: true,
+	Rounds:   true,
 	Estimate: func(a *linear.CSR, _ linear.Values) int64 { return int64(a.NRows)*24 + a.Bytes() },
 	Apply:    applyProject,
 }

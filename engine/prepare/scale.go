@@ -13,6 +13,7 @@ var scaleEntry = Entry{
 	Source:   "D. Ruiz, A scaling algorithm to equilibrate both rows and columns norms in matrices, RAL-TR-2001-034 (2001)",
 	Needs:    linear.NeedsEntries,
 	Scales:   true,
+	Rounds:   true,
 	Estimate: func(a *linear.CSR, _ linear.Values) int64 { return int64(len(a.Val))*16 + int64(a.NRows)*48 },
 	Apply:    applyScale,
 }

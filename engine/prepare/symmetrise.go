@@ -14,6 +14,7 @@ var symmetriseEntry = Entry{
 	Title:    "take (A + Aᵀ)/2 where A is symmetric to rounding",
 	Source:   "the orthogonal projection onto the symmetric matrices",
 	Needs:    linear.NeedsEntries,
+	Rounds:   true,
 	Estimate: func(a *linear.CSR, _ linear.Values) int64 { return a.Bytes() },
 	Apply:    applySymmetrise,
 }

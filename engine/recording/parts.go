@@ -91,6 +91,7 @@ type state struct {
 	counts, columns, harmonic      int
 	reruns                         int
 	probe                          *trace.MProbe
+	near                           *trace.Nearness
 	vectors                        uintptr // of the map: a changed one is another
 }
 
@@ -98,7 +99,7 @@ func stateOf(h *trace.History) state {
 	return state{stop: h.Stop, today: h.Today, own: h.OwnTime, iterations: h.Iterations, records: len(h.Records),
 		events: len(h.Events), coeffs: len(h.Alphas), predictions: len(h.Predictions), errors: len(h.EnergyErrors),
 		locks: len(h.Locks), without: len(h.Without), copies: h.Delay, counts: len(h.Counts), columns: len(h.Columns), reruns: len(h.Reruns),
-		harmonic: len(h.Harmonic), probe: h.Probe, vectors: reflect.ValueOf(h.Vectors).Pointer()}
+		harmonic: len(h.Harmonic), probe: h.Probe, near: h.Near, vectors: reflect.ValueOf(h.Vectors).Pointer()}
 }
 
 // since is the change of a trial since t was told, and renews t.

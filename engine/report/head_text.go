@@ -111,7 +111,7 @@ func Outcome(t trace.History) string {
 	if len(t.Records) == 0 {
 		return strings.TrimSuffix(t.Stop.String()+" before it began: "+plain(t.Reason), ": ")
 	}
-	return fmt.Sprintf("%s after %s, %s, true residual %s", t.Stop,
+	return fmt.Sprintf("%s after %s, %s, true residual %s", ending(t),
 		plural(t.Iterations, "it", "its"), trace.Took(t.OwnTime.Seconds()), sci(t.TrueResidual))
 }
 
@@ -136,6 +136,9 @@ func useForms(d Document) []string {
 	for _, t := range d.Trials {
 		if t.Pairing != c.Pairing {
 			continue
+		}
+		if t.TwoDoubles {
+			return []string{useTwo(d, t)}
 		}
 		if t.Direct {
 			words[0] += " (direct)"

@@ -34,19 +34,19 @@ func hued(tag, class string, i int) string {
 	return fmt.Sprintf(`%s class="%s s%d"`, tag, class, i%hues)
 }
 
-// trialsPart is the table of trials, with the reason of each ending that is
-// not convergence.
+// trialsPart is the table of trials, with the reason of each ending where there
+// is one to tell.
 func trialsPart(d Document) markup {
 	columns := []column{{"", false}, {"pairing", false}, {"ending", false}, {"its", true}, {"own time", true}, {"set-up", true}, {"memory", true},
 		{"products", true}, {"true residual", true}, {"own residual", true}, {"backward error", true}, {"componentwise", true}, {"condition at least", true}}
 	var rows [][]markup
 	for i, t := range d.Trials {
-		row := []markup{element(hued("span", "key", i), safe(string(digit(i)))), pairingCell(d, t), safe(t.Stop.String())}
+		row := []markup{element(hued("span", "key", i), safe(string(digit(i)))), pairingCell(d, t), safe(ending(t))}
 		for _, s := range trialCells(t) {
 			row = append(row, safe(s))
 		}
 		rows = append(rows, row)
-		if t.Stop != trace.Converged && t.Reason != "" {
+		if t.Reason != "" {
 			rows = append(rows, []markup{safe(t.Reason)})
 		}
 	}

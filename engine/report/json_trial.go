@@ -36,6 +36,7 @@ type trialJSON struct {
 	Build         buildJSON     `json:"build"`
 	Events        []eventJSON   `json:"events"`
 	deepJSON
+	twoJSON
 }
 
 // wouldStopJSON is the iteration at which each common stopping rule first
@@ -103,7 +104,7 @@ func toTrials(ts []trace.History, facts *inspect.Facts) []trialJSON {
 			Floor: number(t.Attainable()), CPUShare: number(t.CPUShare), UnsolvedRows: t.UnsolvedRows,
 			WouldStop: toWouldStop(t.WouldStop), Condition: toCondition(t.Condition), Reason: tame(t.Reason),
 			WorstRows: fromOne(rowsOf(t.WorstRows)), WorstLabels: labels(rowsOf(t.WorstRows), facts),
-			Build: toBuild(t.Notes, facts), Events: toEvents(t.Events, facts), deepJSON: toDeep(t),
+			Build: toBuild(t.Notes, facts), Events: toEvents(t.Events, facts), deepJSON: toDeep(t), twoJSON: toTwo(t),
 		}
 		if len(t.Records) == 0 { // it never began: nothing was measured
 			for _, x := range []*number{&j.Residual, &j.TrueResidual, &j.Backward, &j.Componentwise, &j.Error,

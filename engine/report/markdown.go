@@ -42,7 +42,7 @@ func trialTable(d Document) []string {
 			name += " (today)"
 		}
 		n := numbers(t)
-		lines = append(lines, fmt.Sprintf("| %c | %s | %s | %s |", digit(i), name, t.Stop,
+		lines = append(lines, fmt.Sprintf("| %c | %s | %s | %s |", digit(i), name, ending(t),
 			strings.Join(n[:], " | ")))
 	}
 	return lines

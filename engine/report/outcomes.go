@@ -79,6 +79,12 @@ func trialItems(t trace.History) []labelled {
 	if floor := t.Attainable(); floor > 0 {
 		add("floor", "rounding is estimated to end the true residual near %s", sci(floor))
 	}
+	if n := t.Near; n != nil && n.Of != t.Pairing {
+		add("error of x", "%s, in its worst entry %s, against x in two doubles by %s", sci(n.Error), sci(n.Worst), n.Of)
+	}
+	if t.TwoDoubles {
+		add("in two doubles", "x rounded to one double leaves %s", sci(t.Rounded))
+	}
 	if n := len(t.Predictions); n > 0 && t.Stop != trace.Converged { // else the outcome is known
 		p := t.Predictions[n-1]
 		switch {

@@ -34,7 +34,7 @@ func timeBars(d Document) bars {
 		}
 		setup := t.SetupTime.Seconds()
 		own := t.OwnTime.Seconds()
-		b.rows = append(b.rows, barRow{fmt.Sprintf("%s  %s, set-up %s (%s)", barName(i, t), trace.Took(own), trace.Took(setup), t.Stop),
+		b.rows = append(b.rows, barRow{fmt.Sprintf("%s  %s, set-up %s (%s)", barName(i, t), trace.Took(own), trace.Took(setup), ending(t)),
 			setup, max(own-setup, 0), curveInk(i)})
 	}
 	return b.fit(6)

@@ -30,5 +30,11 @@ func Solution(w io.Writer, d Document) error {
 	if d.Solution == nil {
 		return d.NoSolution()
 	}
-	return writeArray(w, d.Solution, fmt.Sprintf("solution of %s, dwindle %s", clip(plain(d.System.Name), 200), clip(plain(d.Version), 100)))
+	text := fmt.Sprintf("solution of %s, dwindle %s", clip(plain(d.System.Name), 200), clip(plain(d.Version), 100))
+	for _, t := range d.Trials {
+		if t.TwoDoubles && t.Pairing == d.Choice.Pairing {
+			text += fmt.Sprintf("; found in two doubles and rounded here to one, which leaves ||b-Ax||/||b|| = %.3g", t.Rounded)
+		}
+	}
+	return writeArray(w, d.Solution, text)
 }

@@ -50,8 +50,8 @@ func trimmed(lines []string) []string {
 }
 
 // trialLines is the table of trials: each has a line with its digit and
-// pairing, one with its state and numbers, and its reason where it ended
-// otherwise than converged, less what a trial before has said in the same words.
+// pairing, one with its state and numbers, and the reason of its ending where
+// there is one, less what a trial before has said in the same words.
 func trialLines(d Document) []string {
 	if len(d.Trials) == 0 {
 		return []string{"no trial has been run"}
@@ -68,7 +68,7 @@ func trialLines(d Document) []string {
 		n := numbers(t)
 		state := fmt.Sprintf("  %c %s", t.Stop.Mark(), t.Stop)
 		lines = append(lines, clip(fmt.Sprintf(row, state, n[0], n[1], n[2], n[3], n[4], n[5]), Width))
-		if t.Stop != trace.Converged && t.Reason != "" {
+		if t.Reason != "" {
 			lines = append(lines, hang("    ", plain(unsaid(t.Reason, said)), Width)...)
 		}
 	}

@@ -50,6 +50,9 @@ func (m Method) Refuse(h Have) string {
 	if why := lacking(m.Solver.Name, m.Solver.Needs, h); why != "" {
 		return why
 	}
+	if why := m.refuseTwoDoubles(h); why != "" {
+		return why
+	}
 	if m.Solver.Needs&linear.NeedsTransposeM != 0 && m.Precond.Name != "none" && !m.Precond.Transposes {
 		return m.Solver.Name + " needs products with the transpose of M; " + m.Precond.Name + " has none"
 	}
@@ -63,6 +66,21 @@ func (m Method) Refuse(h Have) string {
 		return "" // what M needs, it needs of the other matrix
 	}
 	return lacking(m.Precond.Name, m.Precond.Needs, h)
+}
+
+// refuseTwoDoubles says why x cannot be kept in two doubles: the residual needs
+// the entries, and those that a preparation has rounded anew belong to another
+// solution. Reorderings carry both doubles back.
+func (m Method) refuseTwoDoubles(h Have) string {
+	if !m.inTwoDoubles() {
+		return ""
+	}
+	for _, p := range m.Preps {
+		if p.Entry.Rounds {
+			return p.Entry.Name + " rounds A or b anew: x in two doubles would solve another system"
+		}
+	}
+	return lacking(m.Solver.Name+" in two doubles", linear.NeedsEntries, h)
 }
 
 func lacking(name string, needs linear.Has, h Have) string {

@@ -39,16 +39,18 @@ func (s *schedule) due(iter int, own, tol float64) bool {
 // trial moves at a time.
 type scratch struct {
 	x, r, w, own []float64 // length n each
+	low          []float64 // length n; nil before the first trial that keeps x in two doubles
 }
 
 func newScratch(n int) *scratch {
 	v := linear.Bulk[float64](4 * n)
-	return &scratch{v[:n:n], v[n : 2*n : 2*n], v[2*n : 3*n : 3*n], v[3*n:]}
+	return &scratch{x: v[:n:n], r: v[n : 2*n : 2*n], w: v[2*n : 3*n : 3*n], own: v[3*n:]}
 }
 
 // audit is what one fresh look at b−Ax found.
 type audit struct {
 	true2    float64 // ‖b−Ax‖₂
+	rounded  float64 // the same of x rounded to one double, where it is kept in two; else NaN
 	ownTrue  float64 // the same in the method's own norm
 	xInf, x2 float64
 	rInf     float64
@@ -63,7 +65,7 @@ func (t *Trial) audit(normal bool) audit {
 	defer func() { t.m.uses = uses }()
 	t.iterate(s.x)
 	var a audit
-	a.true2 = linear.Residual(s.r, t.sys.A, s.x, t.sys.B)
+	a.true2, a.rounded = t.trueResidual(s.r, s.x)
 	a.rInf, a.xInf, a.x2 = linear.NormInf(s.r), linear.NormInf(s.x), linear.Norm2(s.x)
 	a.fields = t.fieldResiduals()
 	a.ownTrue = t.inOwnNorm(a.true2)
@@ -88,6 +90,9 @@ func (t *Trial) iterate(dst []float64) {
 // the method watches.
 func (t *Trial) inOwnNorm(true2 float64) float64 {
 	s := t.scratch
+	if t.hist.TwoDoubles {
+		return true2 // the method watches ‖r‖₂, and a reordering does not change it
+	}
 	r := s.r
 	if t.back != nil {
 		t.solver.Solution(s.w)

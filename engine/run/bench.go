@@ -97,6 +97,9 @@ func (b *Bench) used() int64 {
 			total += h.MemoryBytes - t.sharedBytes()
 		} else if h.Stop != trace.Refused {
 			total += 8 * int64(b.have.n) // the answer is kept
+			if h.TwoDoubles {
+				total += 8 * int64(b.have.n)
+			}
 		}
 	}
 	if b.formTaken() {
@@ -147,6 +150,7 @@ func (b *Bench) Run(ctx context.Context) {
 			t.budget += q
 			t.advance(ctx)
 			t.release()
+			b.compare()
 			b.leave()
 		}
 	}

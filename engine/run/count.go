@@ -49,12 +49,25 @@ func (c *counted) ApplyT(dst, x []float64) {
 	t.ApplyT(dst, x)
 }
 
+// PairResidual counts and passes on; As finds it only where inner has it.
+func (c *counted) PairResidual(dst, x, low, b []float64) float64 {
+	c.uses++
+	if c.cancelled() {
+		dst[0] = math.NaN()
+		return math.NaN()
+	}
+	r, _ := linear.As[linear.Refiner](c.inner)
+	return r.PairResidual(dst, x, low, b)
+}
+
 // Lacks answers linear.As for the abilities that count.
 func (c *counted) Lacks(want any) bool {
 	var has bool
 	switch want.(type) {
 	case *linear.DotApplier:
 		_, has = linear.As[linear.DotApplier](c.inner)
+	case *linear.Refiner:
+		_, has = linear.As[linear.Refiner](c.inner)
 	case *linear.Transposer:
 		_, has = linear.As[linear.Transposer](c.inner)
 	default:

@@ -12,6 +12,7 @@
 //	record.go   readings become records, with audits where due
 //	target.go   the stopping rule
 //	audit.go    b−Ax measured afresh: when and what
+//	twodoubles.go  x kept in two doubles: audits, its end, others measured against it
 //	marks.go    where common stopping rules would have stopped
 //	ending.go   how a trial ends
 //	direction.go  what a direction of negative curvature proves

@@ -26,6 +26,8 @@ type ending struct {
 	falseStop  bool    // the own number met the target, an audit did not
 	falseValue float64
 	falseIter  int
+	slow       int     // steps of refinement in a row that have not halved the residual
+	halved     float64 // the residual that was last a half of the one before it
 	firstTrue  float64
 }
 
@@ -39,6 +41,9 @@ func (t *Trial) judge(r trace.Reading, rec trace.Record, own float64, a *audit) 
 		return
 	}
 	if t.judgeRestarts(r.Events); t.ended() {
+		return
+	}
+	if t.judgeRefinement(rec); t.ended() {
 		return
 	}
 	iter := int(rec.Iter)
@@ -71,7 +76,7 @@ func (t *Trial) judgeAudit(rec trace.Record, own float64, a *audit) {
 	case math.IsNaN(a.true2) || math.IsInf(a.true2, 0):
 		t.end(trace.Diverged, "the true residual is not a finite number")
 	case passed <= tol && !(t.limits.Unreachable > tol) && a.unsolvedField() == nil:
-		t.end(trace.Converged, "")
+		t.end(trace.Converged, t.twoWords(a))
 	case t.limits.Unreachable > tol && a.normal <= tol && rec.Audit > tol:
 		t.end(trace.LeastSquares, fmt.Sprintf("b is not in the range of A; the residual %.3g is the smallest there is", rec.Audit))
 	case a.true2 > runaway*e.firstTrue && !t.bounded():
@@ -200,6 +205,7 @@ func (t *Trial) finalAudit() {
 	t.look(true)
 	a := t.audit(true)
 	worst, count, rows := t.componentwise(math.Sqrt(t.limits.Target.Tol), a.fields)
+	t.doubt = t.ownDoubt()
 	t.mu.Lock()
 	defer t.mu.Unlock()
 	h := &t.hist

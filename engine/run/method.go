@@ -82,6 +82,9 @@ func unknown(what, name string, known []string) error {
 	return fmt.Errorf("no %s is called %q; there are %s", what, name, strings.Join(known, ", "))
 }
 
+// inTwoDoubles says whether the method keeps x in two doubles.
+func (m Method) inTwoDoubles() bool { return m.Solver.InTwoDoubles(m.SolverValues) }
+
 // watched returns the norm the solver watches in the prepared system. Without
 // a preconditioner every norm of M⁻¹r is that of r.
 func (m Method) watched() trace.Norm {

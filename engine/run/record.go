@@ -81,10 +81,11 @@ func (t *Trial) noteAudit(a *audit, rec trace.Record, iter int) {
 	h := &t.hist
 	h.TrueResidual, h.SolutionNorm = rec.Audit, a.x2
 	h.BestTrue = math.Min(h.BestTrue, rec.Audit)
+	h.Rounded = over(a.rounded, t.sizes.b)
 	h.Backward = over(a.rInf, t.sizes.aInf*a.xInf+t.sizes.bInf)
 	h.WouldStop = t.marks.audited(iter, rec.Audit)
 	h.Normal, h.Fields = a.normal, a.fields
-	if floor := unit * t.sizes.a2 * a.x2 / t.sizes.b; !(floor <= h.Floor) {
+	if floor := unit * t.sizes.a2 * a.x2 / t.sizes.b; !h.TwoDoubles && !(floor <= h.Floor) {
 		h.Floor = floor // u‖A‖max‖x_j‖/‖b‖ (Greenbaum 1997), an upper estimate
 	}
 	if t.sys.Exact != nil {

@@ -36,6 +36,7 @@ func (b *Bench) Bound(t *Trial, setup time.Duration) {
 func (b *Bench) Retire(t *Trial, reason string) {
 	t.end(trace.Outpaced, reason)
 	t.release()
+	b.compare()
 }
 
 // askSteersman asks once, unless the bench pauses.

@@ -45,9 +45,9 @@ func (f *form) need() int64 {
 }
 
 // formFor returns the form that the method's products may take: none where an
-// exact M leaves one step to do.
+// exact M leaves one step to do, or x in two doubles needs the rows.
 func (b *Bench) formFor(m Method) *form {
-	if m.Precond.Exact && m.From == "" {
+	if m.Precond.Exact && m.From == "" || m.inTwoDoubles() {
 		return nil
 	}
 	return b.form

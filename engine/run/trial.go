@@ -56,6 +56,8 @@ type Trial struct {
 	cancel   context.CancelFunc
 	held     bool
 	answer   []float64 // the last iterate, once ended
+	low      []float64 // its lower doubles; nil where x is kept in one
+	doubt    doubt     // how far both may lie from the solution
 }
 
 // Limits bound a trial.
@@ -100,6 +102,7 @@ func newTrial(id int, m Method, s linear.System, z sizes, l Limits, clock Clock,
 		SPDM:      e.Assumes&linear.AssumesSymmetricM != 0 && p.Name != "none",
 		FixedM:    e.Assumes&linear.AssumesFixedM != 0 && p.Name != "none",
 		Restarted: e.Restarted, Monotone: e.Monotone && m.watched() != trace.LeftNorm, Energy: e.Energy, Direct: p.Exact && m.From == "",
+		TwoDoubles: m.inTwoDoubles(), Rounded: nan,
 		CPUShare: nan, Residual: nan, TrueResidual: nan, BestTrue: math.Inf(1), Backward: nan, Componentwise: nan,
 		Error: nan, Floor: nan, Normal: nan, PrecondAsymmetry: nan, WouldStop: t.marks.audited(-1, nan)}
 	return t
@@ -209,8 +212,9 @@ func (t *Trial) release() {
 	}
 	x := make([]float64, t.sys.N())
 	t.iterate(x)
+	low := append([]float64(nil), t.tail()...)
 	t.mu.Lock()
-	t.answer = x
+	t.answer, t.low = x, low
 	t.mu.Unlock()
 	t.solver, t.a, t.m, t.back, t.prepared, t.lanczos = nil, nil, nil, nil, linear.System{}, nil
 }

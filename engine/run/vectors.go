@@ -1,7 +1,5 @@
 package run
 
-import "dwindle/engine/linear"
-
 // The names of a trial's vectors in its history.
 const (
 	CurvatureVector = "curvature" // direction of negative curvature
@@ -52,7 +50,7 @@ func (t *Trial) lastVectors() {
 	n := t.sys.N()
 	x, r := make([]float64, n), make([]float64, n)
 	t.iterate(x)
-	linear.Residual(r, t.sys.A, x, t.sys.B)
+	t.trueResidual(r, x)
 	t.keep(ResidualVector, r)
 	if from := t.ways[0]; from != nil {
 		for i := range x {

@@ -94,6 +94,17 @@ type MProbe struct {
 	Deviation    float64 // ‖A − M‖_F/‖A‖_F of incomplete factors, computed from them; 0 if it was not, or M is A
 }
 
+// Nearness is how far the last iterate of a trial lies from a solution that a
+// trial has kept in two doubles.
+type Nearness struct {
+	Of    string  // that trial
+	Error float64 // ‖x−x̂‖₂/‖x̂‖₂; of that trial itself: what rounding x̂ to one double moves
+	Worst float64 // max |x_i−x̂_i|/|x̂_i| over the entries that are not zero
+	// Doubt and WorstDoubt are what x̂ itself may be off by in these two measures,
+	// estimated.
+	Doubt, WorstDoubt float64
+}
+
 // Run is how long one run of a trial took.
 type Run struct{ Setup, Own time.Duration }
 
@@ -126,6 +137,7 @@ type History struct {
 	Monotone   bool // the true residual cannot grow in exact arithmetic
 	Energy     bool // the energy norm of the error cannot grow (cg)
 	Direct     bool // one step with an exact factorisation
+	TwoDoubles bool // x is the unevaluated sum of two doubles, and so is what its residuals and its ending are of
 
 	Iterations, Products, PrecondUses int
 	SetupTime, OwnTime                time.Duration
@@ -138,6 +150,7 @@ type History struct {
 	Residual         float64    // own norm relative to b, last
 	TrueResidual     float64    // ‖b−Ax‖₂/‖b‖₂, last audit; NaN before the first
 	BestTrue         float64    // smallest audit so far
+	Rounded          float64    // with TwoDoubles: the true residual of x rounded to one double; else NaN
 	Backward         float64    // normwise backward error, last full audit; NaN before
 	Componentwise    float64    // Oettli–Prager backward error; NaN before
 	WorstRows        []RowShare // rows with the largest componentwise error (Share is it, capped at 1)
@@ -166,6 +179,7 @@ type History struct {
 	Fields        []Field              // residuals by field of unknowns, last full audit
 	Probe         *MProbe              // nil if not probed
 	Counts        []int                // iterations of reruns with each b_i changed by one unit in its last place
+	Near          *Nearness            // against a solution in two doubles; nil where there is none
 	Reruns        []Run                // times of the same trial run again, where times were close
 	Columns       []Column             // other right-hand sides solved with the same set-up
 	Vectors       map[string][]float64 // what stands behind an event or the end, in the user's rows: "curvature", "slowest", "residual"
