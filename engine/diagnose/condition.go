@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"dwindle/engine/inspect"
+	"dwindle/engine/trace"
 )
 
 // illFrom is the condition, after equilibration, from which a system is called
@@ -13,20 +14,32 @@ import (
 const illFrom = 1e5
 
 // illConditioned: A is ill-conditioned, and scaling does not help it. Silent
-// where a few nearly free directions are told to make the condition.
+// where a few nearly free directions are told to make the condition. Of a system
+// too large for the second look the trials tell a lower bound.
 var illConditioned = Rule{"ill-conditioned", func(c Case) []Finding {
 	f := c.Facts
-	if f.Study == nil || f.Study.Equilibrated == nil || f.Singular.Answer == inspect.Yes || len(f.Study.Null) > 0 {
+	if f.Study == nil || f.Singular.Answer == inspect.Yes || len(f.Study.Null) > 0 {
 		return nil
 	}
-	x := f.Study.Equilibrated
-	if !(x.Condition >= illFrom) || math.IsInf(x.Condition, 0) {
+	g := Finding{Weight: Note, Subject: OnSystem, Advice: "a strong preconditioner, or a direct solve"}
+	switch x := f.Study.Equilibrated; {
+	case x != nil && x.Condition >= illFrom && !math.IsInf(x.Condition, 0):
+		g.Certainty = x.Certainty
+		g.Claim = fmt.Sprintf("A is ill-conditioned, %s in the %s-norm once rows and columns are equilibrated, and scaling takes no more away", num(x.Condition), x.Norm)
+		g.Evidence = []Evidence{number("condition after equilibration", x.Condition, "")}
+	case x == nil || !(x.Condition > 0):
+		h, of := widest(c)
+		if !(h.Condition.Estimate >= illFrom) || explained.Judge(c) != nil {
+			return nil
+		}
+		k := h.Condition
+		g.Certainty = inspect.Measured
+		g.Claim = fmt.Sprintf("A is ill-conditioned: the condition of %s is at least %s, for %s has met Ritz values from %s to %s",
+			of, num(k.Estimate), h.Pairing, num(k.Smallest), num(k.Largest))
+		g.Evidence = []Evidence{{Quantity: "condition of " + of + ", at least", Value: k.Estimate, Iteration: h.Iterations}}
+	default:
 		return nil
 	}
-	g := Finding{Weight: Note, Certainty: x.Certainty, Subject: OnSystem,
-		Claim:    fmt.Sprintf("A is ill-conditioned, %s in the %s-norm once rows and columns are equilibrated, and scaling takes no more away", num(x.Condition), x.Norm),
-		Advice:   "a strong preconditioner, or a direct solve",
-		Evidence: []Evidence{number("condition after equilibration", x.Condition, "")}}
 	for _, h := range c.Trials {
 		if prep, _, m := cut(h.Pairing); prep == "" && m == "none" && failed(h) {
 			g.Claim += fmt.Sprintf("; %s ends %s at %s", h.Pairing, h.Stop, num(h.TrueResidual))
@@ -39,3 +52,32 @@ var illConditioned = Rule{"ill-conditioned", func(c Case) []Finding {
 	}
 	return []Finding{g}
 }}
+
+// widest is the ended trial whose Ritz values tell most of the condition of a
+// definite A scaled by its diagonal, and what they are of; a zero History where
+// none does. Ritz values lie within the spectrum, so that their ratio is never
+// above the condition, however early the trial ended.
+func widest(c Case) (best trace.History, of string) {
+	f := c.Facts
+	if f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer != inspect.Yes {
+		return best, of
+	}
+	for _, h := range c.Trials {
+		k, name := h.Condition, "A"
+		prep, _, m := cut(h.Pairing)
+		switch {
+		case prep != "" || !h.Stop.Ended() || k.Negative || !(k.Estimate > best.Condition.Estimate):
+			continue
+		case m == "jacobi":
+			name = "A scaled by its diagonal"
+		case m != "none" || k.Of != "A" || f.Diag.Max > evenDiagonal*f.Diag.Min:
+			continue // units may make it
+		}
+		best, of = h, name
+	}
+	return best, of
+}
+
+// evenDiagonal is the ratio of diagonal entries up to which scaling by them
+// changes next to nothing.
+const evenDiagonal = 1.1

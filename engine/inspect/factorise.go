@@ -53,6 +53,14 @@ func (e *exam) factor() error {
 	return err
 }
 
+// worthwhile says whether enough is left after a factorisation for a few steps
+// towards both ends of the spectrum, with factors of that many entries, used so
+// many times a step.
+func (e *exam) worthwhile(work, entries float64, uses int) bool {
+	const few = 12
+	return work+2*lanczosWork(e.f.N, float64(uses)*4*entries, few)+2*lanczosWork(e.f.N, e.product(), few) <= e.left
+}
+
 // within says whether a factorisation of that work and memory fits.
 func (e *exam) within(work float64, bytes int64) bool {
 	limit := int64(bytesOfFactor)
@@ -67,7 +75,7 @@ func (e *exam) factorSymmetric() error {
 		return nil
 	}
 	sym := direct.Predict(e.a, direct.Best)
-	if !e.within(sym.Work, sym.Bytes()+sym.Stack) {
+	if !e.worthwhile(sym.Work, float64(sym.Entries), 1) || !e.within(sym.Work, sym.Bytes()+sym.Stack) {
 		return nil
 	}
 	if e.f.PositiveDefinite.Answer == Yes {
@@ -76,11 +84,16 @@ func (e *exam) factorSymmetric() error {
 			return nil
 		}
 	}
-	f, err := direct.FactorLDL(e.ctx, e.scaled, sym, nil)
+	b := e.scaled
+	if e.f.SingularAtSight() { // no need to try
+		e.singular, e.shift = true, tinyShift
+		b = plusIdentity(e.scaled, e.shift)
+	}
+	f, err := direct.FactorLDL(e.ctx, b, sym, nil)
 	if err != nil {
 		return err
 	}
-	if f.Inertia.Zero > 0 {
+	if f.Inertia.Zero > 0 && e.shift == 0 {
 		e.singular, e.shift = true, tinyShift
 		if f, err = direct.FactorLDL(e.ctx, plusIdentity(e.scaled, e.shift), sym, nil); err != nil {
 			return err
@@ -95,7 +108,7 @@ func (e *exam) factorGeneral() error {
 		return nil
 	}
 	plan := direct.PredictLU(e.a, direct.Best)
-	if !e.within(plan.Work, plan.Bytes()) {
+	if !e.worthwhile(plan.Work, float64(plan.Entries), 2) || !e.within(plan.Work, plan.Bytes()) {
 		return nil
 	}
 	f, err := direct.FactorLU(e.ctx, e.scaled, plan, nil)

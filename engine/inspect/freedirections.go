@@ -22,7 +22,7 @@ const (
 // first the rigid motions of the coordinates, where they are known, then, with
 // the factorisation, those that the inverse stretches most.
 func (e *exam) freeDirections() error {
-	if e.scaled == nil {
+	if e.scaled == nil || e.noneFree() {
 		return nil
 	}
 	norm := e.scaledNorm()
@@ -53,6 +53,13 @@ func (e *exam) freeDirections() error {
 		e.out.Null = append(e.out.Null, d)
 	}
 	return e.leftDirections(norm)
+}
+
+// noneFree says that the spectrum of a definite A equilibrated has shown its
+// smallest eigenvalue already, and that no direction is nearly free.
+func (e *exam) noneFree() bool {
+	x := e.out.Equilibrated
+	return x != nil && e.f.PositiveDefinite.Answer == Yes && x.Certainty == Measured && x.Condition*freeLimit < 0.5
 }
 
 // scaledNorm is ‖B‖₂ as far as it is known, else its largest row sum.

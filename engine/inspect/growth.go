@@ -34,6 +34,9 @@ func (e *exam) growth() error {
 		return nil
 	}
 	for _, size := range sizes {
+		if e.foreseen(g, size) > e.left {
+			return nil
+		}
 		a := e.a
 		if size < e.f.N {
 			rows, _ := w.grow(centre, size)
@@ -52,6 +55,24 @@ func (e *exam) growth() error {
 	}
 	return nil
 }
+
+// foreseen is the work of the next size if iterations grow as they did last, by
+// a factor of two at first.
+func (e *exam) foreseen(g *Growth, size int) float64 {
+	k := len(g.Iterations)
+	if k == 0 {
+		return 0
+	}
+	factor := 2.0
+	if k > 1 {
+		factor = float64(g.Iterations[k-1]) / float64(g.Iterations[k-2])
+	}
+	share := float64(size) / float64(e.f.N)
+	return factor * float64(g.Iterations[k-1]) * share * iterationWork(e.a)
+}
+
+// iterationWork is the work of one iteration of conjugate gradients.
+func iterationWork(a *linear.CSR) float64 { return 2*float64(len(a.Val)) + 16*float64(a.NRows) }
 
 // middle is a row far from the rim of the mesh: half way between two rows that
 // are far apart, in a part that holds most of the system; -1 where there is no
@@ -99,7 +120,7 @@ func (e *exam) iterations(a *linear.CSR) (int, error) {
 	}
 	copy(p, z)
 	rho, target := linear.Dot(r, z), growthTol*math.Sqrt(float64(n))
-	work := 2*float64(len(a.Val)) + 16*float64(n)
+	work := iterationWork(a)
 	for its := 1; ; its++ {
 		if err := e.ctx.Err(); err != nil {
 			return 0, err

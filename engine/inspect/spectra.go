@@ -2,6 +2,7 @@ package inspect
 
 import (
 	"math"
+	"sort"
 
 	"dwindle/engine/spectrum"
 )
@@ -14,6 +15,9 @@ func (e *exam) spectra() error {
 	}
 	if e.solver != nil {
 		e.reserved = min(e.left/2, 2*e.searchWork()) // free directions matter more than another digit
+		if e.f.PositiveDefinite.Answer == Yes && e.reserved > e.left/4 {
+			e.reserved = 0 // the small end of the spectrum shows whether there are any
+		}
 	}
 	defer func() { e.reserved = 0 }()
 	var err error
@@ -24,23 +28,32 @@ func (e *exam) spectra() error {
 		}
 		return x
 	}
-	e.out.Raw = ask("A", nil, nil, nil)
+	d := byDiagonal(e.a)
+	if !e.symmetric {
+		d = nil
+	}
+	switch c, same := constant(d); {
+	case same:
+		if e.out.Raw = ask("A", nil, nil, nil); e.out.Raw != nil && e.shift == 0 {
+			e.out.Jacobi = e.out.Raw.times("A scaled by its diagonal", c*c)
+		}
+	case d != nil && e.shift == 0:
+		e.out.Jacobi = ask("A scaled by its diagonal", d, d, nil)
+	}
+	if e.out.Jacobi != nil && alike(e.row, d) {
+		x := *e.out.Jacobi
+		x.Of, e.out.Equilibrated = "equilibrated A", &x
+	} else {
+		e.out.Equilibrated = ask("equilibrated A", e.row, e.col, nil)
+	}
+	if e.out.Raw == nil {
+		e.out.Raw = ask("A", nil, nil, nil)
+	}
 	if e.symmetric && 0 < e.f.Singletons && e.f.Singletons < e.f.N-1 {
 		e.out.Rest = ask("A without singleton rows", nil, nil, e.coupled())
 	}
-	if d := byDiagonal(e.a); e.symmetric && d != nil {
-		if c, same := constant(d); same && e.out.Raw != nil {
-			e.out.Jacobi = e.out.Raw.times("A scaled by its diagonal", c*c)
-		} else {
-			e.out.Jacobi = ask("A scaled by its diagonal", d, d, nil)
-		}
-		if e.out.Jacobi != nil && alike(e.row, d) {
-			x := *e.out.Jacobi
-			x.Of, e.out.Equilibrated = "equilibrated A", &x
-		}
-	}
-	if e.out.Equilibrated == nil {
-		e.out.Equilibrated = ask("equilibrated A", e.row, e.col, nil)
+	if e.out.Jacobi == nil && d != nil {
+		e.out.Jacobi = ask("A scaled by its diagonal", d, d, nil)
 	}
 	e.doubtFactor()
 	if x := e.out.Equilibrated; x != nil && x.Condition > 0 && x.Certainty == Measured {
@@ -80,6 +93,9 @@ func alike(d, e []float64) bool {
 // constant says whether a positive diagonal is the same number throughout, to
 // rounding.
 func constant(d []float64) (float64, bool) {
+	if d == nil {
+		return 0, false
+	}
 	for _, v := range d {
 		if math.Abs(v-d[0]) > 1e-13*d[0] {
 			return 0, false
@@ -164,14 +180,26 @@ const (
 // ends finds the outermost eigenvalues of a symmetric operator, within the
 // budget; nothing where that is not enough for a few steps.
 func (e *exam) ends(n int, apply func(dst, x []float64), low, high int, product float64, products int) (spectrum.Outermost, error) {
-	step := product + 8*float64(n)*endBasis/2
-	can := int(min(float64(products), (e.left-e.reserved)/2/step))
+	can := affordable(n, product, (e.left-e.reserved)/2, products)
 	if can < 10 && can < n {
 		return spectrum.Outermost{}, nil
 	}
 	out, err := spectrum.Ends(e.ctx, n, apply, spectrum.Wanted{Low: low, High: high, Tol: endTolerance, Basis: endBasis, Products: can})
-	e.left -= step * float64(out.Products)
+	e.left -= lanczosWork(n, product, out.Products)
 	return out, err
+}
+
+// lanczosWork is the work of k Lanczos steps of order n: products, and the
+// orthogonalisation against a basis that grows up to endBasis vectors.
+func lanczosWork(n int, product float64, k int) float64 {
+	m := float64(min(k, endBasis))
+	return float64(k)*product + 4*float64(n)*(m*m+endBasis*(float64(k)-m))
+}
+
+// affordable is the largest number of Lanczos steps, at most most, within the
+// work.
+func affordable(n int, product, work float64, most int) int {
+	return sort.Search(most, func(k int) bool { return lanczosWork(n, product, k+1) > work })
 }
 
 // solveWork is the work of one solve with the factor, held to be that of some

@@ -16,8 +16,15 @@ func (e *exam) symmetricSpectrum(v *view, x *Spectrum) (*Spectrum, error) {
 			x.fillDense(values)
 		}
 	}
+	var near spectrum.Outermost // of the inverse: the small end matters more, and is first
+	var err error
+	if v.invertible() {
+		if near, err = e.inverseEnds(v); err != nil {
+			return nil, err
+		}
+	}
 	if !x.Exact {
-		if err := e.bareEnds(v, x); err != nil {
+		if err := e.bareEnds(v, x, len(near.High) > 0); err != nil {
 			return nil, err
 		}
 		if !finite(x.Largest) {
@@ -30,8 +37,8 @@ func (e *exam) symmetricSpectrum(v *view, x *Spectrum) (*Spectrum, error) {
 	if c := e.f.NegativeCount; v.index == nil && (c.Answer == No || c.Answer == Yes) {
 		x.Negative = int(c.Value) // scaling alters no sign
 	}
-	if v.invertible() {
-		return x, e.innerEnds(v, x)
+	if len(near.High) > 0 {
+		x.fillNear(near, e.f.PositiveDefinite.Answer == Yes, v.shift)
 	}
 	return x, nil
 }
@@ -92,11 +99,11 @@ func (x *Spectrum) fillDense(values []float64) {
 	}
 }
 
-// bareEnds measures both ends by products alone: the low one only where it
-// is not left to the inverse.
-func (e *exam) bareEnds(v *view, x *Spectrum) error {
+// bareEnds measures both ends by products alone: the low one only where the
+// inverse has not shown it.
+func (e *exam) bareEnds(v *view, x *Spectrum, shown bool) error {
 	definite, low, products := e.f.PositiveDefinite.Answer == Yes, 2, bareProducts
-	if definite && v.invertible() {
+	if definite && shown {
 		low, products = 0, endProducts
 	}
 	out, err := e.ends(v.order(), v.m.Apply, low, 2, e.product(), products)
@@ -106,7 +113,7 @@ func (e *exam) bareEnds(v *view, x *Spectrum) error {
 	x.How = "lanczos"
 	x.Largest, x.LargestBound = out.High[0].Value, out.High[0].Bound
 	x.High = pairValues(out.High)
-	if len(out.Low) > 0 {
+	if len(out.Low) > 0 && !(definite && out.Low[0].Bound >= out.Low[0].Value) { // else nothing is known of it
 		x.Smallest, x.SmallestBound = out.Low[0].Value, out.Low[0].Bound
 		x.Low = pairValues(out.Low)
 	}
@@ -119,24 +126,42 @@ func (e *exam) bareEnds(v *view, x *Spectrum) error {
 	return nil
 }
 
-// innerEnds measures the eigenvalues next to zero by the inverse, and the
-// condition with them.
-func (e *exam) innerEnds(v *view, x *Spectrum) error {
-	definite := e.f.PositiveDefinite.Answer == Yes
+// inverseEnds are the ends of the inverse: the eigenvalues next to zero.
+func (e *exam) inverseEnds(v *view) (spectrum.Outermost, error) {
 	low := 2
-	if definite {
+	if e.f.PositiveDefinite.Answer == Yes || e.f.Semidefinite.Answer == Yes {
 		low = 0
 	}
-	out, err := e.ends(v.order(), v.inverse, low, 4, e.solveWork(), endProducts)
-	if err != nil || len(out.High) == 0 {
-		return err
+	return e.ends(v.order(), v.inverse, low, 4, e.solveWork(), endProducts)
+}
+
+// besideZero adds to the zeros of a semi-definite A, which are proved, what
+// comes next: from the ends of the inverse of A + shift·I.
+func (x *Spectrum) besideZero(out spectrum.Outermost, shift float64) {
+	if x.Exact || x.Zeros == 0 {
+		return
+	}
+	for _, p := range out.High {
+		value, bound := inverted(p)
+		if value -= shift; value > 100*0x1p-53*x.Largest && bound <= 0.05*value && len(x.Low) < endsKept {
+			x.How, x.Low = "factor", append(x.Low, value)
+		}
+	}
+}
+
+// fillNear takes the eigenvalues next to zero from the ends of the inverse, and
+// the condition with them.
+func (x *Spectrum) fillNear(out spectrum.Outermost, definite bool, shift float64) {
+	if shift != 0 {
+		x.besideZero(out, shift)
+		return
 	}
 	nearest, bound := inverted(out.High[0])
 	if len(out.Low) > 0 && -out.Low[0].Value > out.High[0].Value {
 		nearest, bound = inverted(out.Low[0])
 	}
 	if !(math.Abs(nearest) > 0) {
-		return nil
+		return
 	}
 	if definite && !x.Exact {
 		x.Smallest, x.SmallestBound, x.Low = nearest, bound, nil
@@ -152,7 +177,6 @@ func (e *exam) innerEnds(v *view, x *Spectrum) error {
 	if !(bound > 0.05*math.Abs(nearest)) && !(x.LargestBound > 0.05*math.Abs(x.Largest)) {
 		x.Certainty = Measured
 	}
-	return nil
 }
 
 // inverted turns an eigenvalue of the inverse into one of the matrix, with its

@@ -94,7 +94,7 @@ func spectrumText(x inspect.Spectrum, singular bool) string {
 		s += ", all values"
 	}
 	sure := x.Certainty
-	if x.Zeros > 0 && x.Exact {
+	if x.Zeros > 0 && (x.Exact || nextLow(x) > 0) {
 		sure = inspect.Measured // only the zeros could not be told from rounding
 	}
 	return s + fmt.Sprintf(" (%s, by %s)", orDash(string(sure)), orDash(x.How))
@@ -123,11 +123,9 @@ func lowText(x inspect.Spectrum, singular bool) string {
 // nextLow is the first value at the low end that is not zero to rounding; NaN
 // if it is not known.
 func nextLow(x inspect.Spectrum) float64 {
-	if x.Exact {
-		for _, v := range x.Low {
-			if v > 10*x.LargestBound {
-				return v
-			}
+	for k, v := range x.Low {
+		if x.Exact && v > 10*x.LargestBound || !x.Exact && x.Zeros > 0 && k >= x.Zeros {
+			return v
 		}
 	}
 	return math.NaN()
