@@ -48,7 +48,11 @@ var illConditioned = Rule{"ill-conditioned", func(c Case) []Finding {
 	}
 	if best, ok := quickest(c); ok {
 		g.Try = []string{best.Pairing}
-		g.Advice += fmt.Sprintf(": %s has solved the system in %s and %s", best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
+		with := ": "
+		if _, _, m := cut(best.Pairing); m == "none" {
+			with = "; here without: "
+		}
+		g.Advice += fmt.Sprintf(with+"%s has solved the system in %s and %s", best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
 	}
 	return []Finding{g}
 }}
