@@ -85,7 +85,8 @@ const mostFew = 16
 
 // fewest looks for few rows with which every unequal pair has to do, each with
 // several: it takes the row of most pairs, again and again. Nil where that does
-// not end soon, or where so many rows are but single pairs.
+// not end soon, where so many rows are but single pairs, and where they are more
+// than one in fifty.
 func (e *exam) fewest(at *linear.CSR, uneven []bool) []int {
 	left := map[int]map[int]bool{} // row -> rows it is unequal with
 	pairs := 0
@@ -120,7 +121,7 @@ func (e *exam) fewest(at *linear.CSR, uneven []bool) []int {
 		}
 		delete(left, worst)
 	}
-	if len(left) > 0 || pairs < 2*len(few) || 10*len(few) > e.f.N {
+	if len(left) > 0 || pairs < 2*len(few) || 50*len(few) > e.f.N {
 		return nil
 	}
 	slices.Sort(few)
