@@ -7,6 +7,7 @@ import (
 	tea "github.com/charmbracelet/bubbletea"
 
 	"dwindle/engine/choose"
+	"dwindle/engine/inspect"
 )
 
 // addView lies over a screen and lists what could be added: first the solvers,
@@ -45,8 +46,9 @@ func (m *model) openAdd() tea.Cmd {
 
 // onOffered fills the list.
 func (m *model) onOffered(o offered) {
-	o.to.all, o.to.ready, m.stale = o.all, true, true
-	if m.look(); m.snap.ReadOnly != "" && m.over == view(o.to) { // the system could not be read again
+	m.look()
+	o.to.all, o.to.ready, m.stale = bestFirst(o.all, m.snap.Facts), true, true
+	if m.snap.ReadOnly != "" && m.over == view(o.to) { // the system could not be read again
 		m.over = nil
 		m.say("read-only: " + m.snap.ReadOnly)
 	}
@@ -96,13 +98,14 @@ func (v *addView) back(m *model) tea.Cmd {
 }
 
 // take adds what was typed when it reads as a pairing or nothing in the list
-// holds it; otherwise it stays as the filter.
+// holds it, and stays until that has worked, so that a slip can be mended;
+// otherwise the text becomes the filter.
 func (v *addView) take(m *model) tea.Cmd {
-	v.leave()
-	if strings.ContainsAny(v.text, "+/(") || (v.text != "" && len(v.shown()) == 0) {
-		m.over = nil
-		return m.add(v.text)
+	text := v.filter()
+	if strings.ContainsAny(text, "+/(") || (text != "" && len(v.shown()) == 0) {
+		return m.add(text)
 	}
+	v.leave()
 	return nil
 }
 
@@ -121,7 +124,7 @@ func (v *addView) filter() string {
 // says why.
 func (v *addView) enter(m *model) tea.Cmd {
 	if v.grouped() {
-		if list := v.solvers(); v.at < len(list) {
+		if list := v.solvers(m.snap.Facts); v.at < len(list) {
 			v.solver, v.was, v.at = list[v.at].name, v.at, 0
 		}
 		return nil
@@ -158,7 +161,7 @@ func (v *addView) candidate(m *model) (choose.Candidate, bool) {
 func (v *addView) move(m *model, step int) {
 	n := len(v.shown())
 	if v.grouped() {
-		n = len(v.solvers())
+		n = len(v.solvers(m.snap.Facts))
 	}
 	v.at = max(min(v.at+step, n-1), 0)
 }
@@ -169,17 +172,20 @@ type group struct {
 	fits, refused int
 	only          string // why every one of them is refused
 	naive         bool
+	fit           fitness // of what suits best
 }
 
-// solvers lists the solvers in the order of the candidates.
-func (v *addView) solvers() []group {
+// solvers lists the solvers in the order of the candidates, which are held
+// against the facts.
+func (v *addView) solvers(f *inspect.Facts) []group {
 	var list []group
 	for _, c := range v.all {
 		k := slices.IndexFunc(list, func(g group) bool { return g.name == c.Solver })
 		if k < 0 {
 			title, _, _ := strings.Cut(c.Summary, ", ")
-			list, k = append(list, group{name: c.Solver, title: title, naive: c.Baseline}), len(list)
+			list, k = append(list, group{name: c.Solver, title: title, naive: c.Baseline, fit: cannot}), len(list)
 		}
+		list[k].fit = min(list[k].fit, fitnessOf(c, f))
 		if c.Refused == "" {
 			list[k].fits++
 		} else {

@@ -9,10 +9,10 @@ import (
 
 // draw draws the list.
 func (v *addView) draw(m *model, w, h int) []string {
-	lines := []string{v.title(m, w)}
+	lines := []string{v.title(m, w), m.on.paint(faint, v.heading(w))}
 	var rows []string
 	if v.grouped() {
-		for i, g := range v.solvers() {
+		for i, g := range v.solvers(m.snap.Facts) {
 			rows = append(rows, v.groupRow(m, g, i == v.at, w))
 		}
 	} else {
@@ -27,9 +27,21 @@ func (v *addView) draw(m *model, w, h int) []string {
 		return append(lines, "  none in the list; enter adds what is typed")
 	}
 	v.at = min(v.at, len(rows)-1)
-	v.first = scroll(v.first, v.at, len(rows), h-1)
-	return append(lines, rows[v.first:min(v.first+h-1, len(rows))]...)
+	room := max(h-len(lines), 1)
+	v.first = scroll(v.first, v.at, len(rows), room)
+	return append(lines, rows[v.first:min(v.first+room, len(rows))]...)
 }
+
+// heading names the columns and says what the marks mean.
+func (v *addView) heading(w int) string {
+	if v.grouped() {
+		return clip("   "+left("solver", 12)+right("precond.", 9)+"  + suits this A   x refused", w)
+	}
+	return clip("   "+left("pairing", pairingCells(w))+right("memory", 10)+"  + suits this A   x refused   . in use", w)
+}
+
+// pairingCells is the width of the column of pairings.
+func pairingCells(w int) int { return max(min(w/3, 34), 12) }
 
 // title says what is listed, or what is being typed.
 func (v *addView) title(m *model, w int) string {
@@ -54,7 +66,7 @@ func (v *addView) groupRow(m *model, g group, picked bool, w int) string {
 	if g.naive {
 		note += "; for comparison only"
 	}
-	state := " "
+	state := signOf(g.fit)
 	if g.fits == 0 {
 		state, note, ink = "x", "refused: "+g.only, faint
 	}
@@ -73,14 +85,24 @@ func (v *addView) row(m *model, c choose.Candidate, picked bool, w int) string {
 	if v.solver != "" && v.filter() == "" {
 		_, note, _ = strings.Cut(c.Summary, ", ")
 	}
-	state := " "
+	state := signOf(fitnessOf(c, m.snap.Facts))
 	if c.Refused != "" {
 		state, note, ink = "x", "refused: "+c.Refused, faint
 	} else if id := m.numberOf(c.Pairing); id > 0 {
 		state = "."
 		note = "is a trial already"
 	}
-	name := max(min(w/3, 34), 12)
-	text := mark + state + " " + left(m.signs.clean(c.Pairing), name) + right(size(c.Memory), 10) + "  " + m.signs.clean(note)
+	text := mark + state + " " + left(m.signs.clean(c.Pairing), pairingCells(w)) + right(size(c.Memory), 10) + "  " + m.signs.clean(note)
 	return m.on.paint(ink, clip(text, w))
+}
+
+// signOf marks what suits, and what is refused.
+func signOf(f fitness) string {
+	switch f {
+	case suits:
+		return "+"
+	case cannot:
+		return "x"
+	}
+	return " "
 }

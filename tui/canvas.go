@@ -42,6 +42,25 @@ func (c *canvas) set(x, y int, sign rune, i ink) {
 	}
 }
 
+// blankRow is a row that is blank from column x on: the uppermost, else the
+// lowest, else the next one down; the uppermost where there is none.
+func (c *canvas) blankRow(x int) int {
+	rows := []int{0, c.h - 1}
+	for y := 1; y < c.h-1; y++ {
+		rows = append(rows, y)
+	}
+	for _, y := range rows {
+		blank := true
+		for k := x; k < c.w; k++ {
+			blank = blank && c.at(k, y) == ' '
+		}
+		if blank {
+			return y
+		}
+	}
+	return 0
+}
+
 // write puts text at (x, y), one cell a rune.
 func (c *canvas) write(x, y int, text string, i ink) {
 	for _, r := range text {

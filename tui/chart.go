@@ -4,9 +4,9 @@ import (
 	"fmt"
 	"math"
 	"slices"
-	"strconv"
 	"strings"
 
+	"dwindle/engine/report"
 	"dwindle/engine/trace"
 )
 
@@ -101,6 +101,9 @@ func (p plot) trials(c *canvas) {
 	}
 	p.energy(c)
 	t := newTags(c)
+	if name := p.caption(); len(name) < c.w {
+		t.put(c.w-len(name), c.blankRow(c.w-len(name)-1), name, plain)
+	}
 	for k := len(order) - 1; k >= 0; k-- { // the picked head gets its place first
 		p.head(t, order[k], curves[k])
 	}
@@ -161,12 +164,12 @@ func (p plot) head(t *tags, d drawn, c curve) {
 	if c.head < 0 && !c.lost {
 		return
 	}
-	text, x, y := strconv.Itoa(d.id)+d.mark(), max(c.head, 0), 0
+	text, x, y := report.Tag(d.id)+d.mark(), max(c.head, 0), 0
 	if c.head >= 0 {
 		y = int(math.Round(math.Min(math.Max(p.y.row(c.mid[c.head]), -1), float64(t.on.h-1))))
 	}
 	if c.lost || y < 0 {
-		text, y = strconv.Itoa(d.id)+"^"+d.mark(), 0
+		text, y = report.Tag(d.id)+"^"+d.mark(), 0
 	}
 	columns, rows := p.reach(d, t.on)
 	t.within(x, y, text, d.ink(), columns, rows)
@@ -211,7 +214,7 @@ func (p plot) falseStop(t *tags, d drawn) {
 
 // body tags the curve on its way.
 func (p plot) body(t *tags, d drawn, c curve) {
-	if p.signs == asciiGlyphs && d.id < 10 || aside(d.h) && !d.picked {
+	if p.signs == asciiGlyphs && len(report.Tag(d.id)) == 1 || aside(d.h) && !d.picked {
 		return
 	}
 	period := 24
@@ -226,12 +229,8 @@ func (p plot) body(t *tags, d drawn, c curve) {
 	})
 }
 
-// base draws the axis and the labels below it; the last words name what is
-// drawn, and along what.
-func (p plot) base(w int) []string {
-	f, margin := frames[p.signs], p.margin()
-	axis := []rune(strings.Repeat(string(f.base), max(w, 0)))
-	labels := newCanvas(w+margin, 1)
+// caption names what is drawn, and along what.
+func (p plot) caption() string {
 	name := p.name + " by " + p.x.fix.String()
 	if p.x.log {
 		name += ", log"
@@ -239,20 +238,25 @@ func (p plot) base(w int) []string {
 	if p.out > 0 {
 		name += fmt.Sprintf(", %d left out", p.out)
 	}
-	end := w + margin - len(name)
-	labels.write(max(end, 0), 0, name, plain)
+	return name
+}
+
+// base draws the axis and the numbers below it.
+func (p plot) base(w int) []string {
+	f, margin := frames[p.signs], p.margin()
+	axis := []rune(strings.Repeat(string(f.base), max(w, 0)))
+	labels := newCanvas(w+margin, 1)
 	free := 0
 	for _, v := range p.x.ticks(w) {
 		x := columnOf(p.x.place(v), w)
-		if x < len(axis) {
-			axis[x] = f.tick
-		}
 		text := short(v)
-		at := max(margin+x-len(text)/2, 0)
-		if at >= free && at+len(text) < end {
-			labels.write(at, 0, text, plain)
-			free = at + len(text) + 1
+		at := max(min(margin+x-len(text)/2, w+margin-len(text)), 0)
+		if at < free || x >= len(axis) {
+			continue // a tick without its number would tell nothing
 		}
+		axis[x] = f.tick
+		labels.write(at, 0, text, plain)
+		free = at + len(text) + 1
 	}
 	return []string{blanks(margin-1) + string(f.corner) + string(axis), labels.line(0, p.on)}
 }

@@ -6,8 +6,9 @@ import (
 	"dwindle/engine/trace"
 )
 
-// stopLetters are the signs of common stopping rules on the picked curve.
-var stopLetters = map[string]string{"rhs": "r", "initial": "i", "preconditioned": "p", "backward": "b", "energy": "e"}
+// stopLetters are the signs of common stopping rules on the picked curve,
+// capitals that are no tag of a trial.
+var stopLetters = map[string]string{"rhs": "R", "initial": "I", "preconditioned": "P", "backward": "B", "energy": "E"}
 
 // marking says whose curves are marked.
 type marking int
@@ -20,8 +21,8 @@ const (
 
 // markingWords is the one table of markings, in the order the key walks.
 var markingWords = [...]string{
-	markPicked: "marks, picked curve: r by b, i by r0, p preconditioned, b backward, e energy",
-	markAll:    "marks, every curve: r by b, i by r0, p preconditioned, b backward, e energy",
+	markPicked: "marks, picked curve: R by b, I by r0, P preconditioned, B backward, E energy",
+	markAll:    "marks, every curve: R by b, I by r0, P preconditioned, B backward, E energy",
 	markNone:   "marks of common stopping rules are left out",
 }
 

@@ -47,7 +47,7 @@ func TestMarksOfStoppingRules(t *testing.T) {
 	m := screenOf(marked(), 80, 24, "ascii")
 	m.trials.by = byIterations // 0 to 100
 	for _, want := range []int{1, 2, 0} {
-		e := places(m, "e")
+		e := places(m, "E")
 		if len(e) != want {
 			t.Fatalf("%d marks, want %d:\n%s", len(e), want, m.View())
 		}

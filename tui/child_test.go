@@ -44,7 +44,7 @@ func beChild(mode string) int {
 	if mode == "panic" {
 		f.bomb = start.Add(time.Second)
 	}
-	m, p, err := assemble(Config{Rate: 0, Glyphs: os.Getenv("TUI_CHILD_GLYPHS"), saveNow: func(session) { note("saved") }}, f)
+	m, p, err := assemble(Config{Rate: 0, Glyphs: os.Getenv("TUI_CHILD_GLYPHS"), saveNow: func(session) func() { note("saved"); return func() { fmt.Println("the result is told") } }}, f)
 	if err != nil {
 		return 8
 	}

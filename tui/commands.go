@@ -5,6 +5,8 @@ import (
 	"strconv"
 
 	tea "github.com/charmbracelet/bubbletea"
+
+	"dwindle/engine/report"
 )
 
 // slowest and fastest are the bounds of the refresh rate in Hz.
@@ -96,9 +98,9 @@ func (m *model) stopTrial() tea.Cmd {
 		m.say("the picked trial has ended already")
 		return nil
 	}
-	text := fmt.Sprintf("stop trial %d %s? its curve stays.", t.ID, t.History.Pairing)
+	text := fmt.Sprintf("stop trial %s %s? its curve stays.", report.Tag(t.ID), t.History.Pairing)
 	return m.ask(text, func(m *model) tea.Cmd {
-		return act(fmt.Sprintf("trial %d is stopped", t.ID), func() { m.s.Cancel(t.ID) })
+		return act(fmt.Sprintf("trial %s is stopped", report.Tag(t.ID)), func() { m.s.Cancel(t.ID) })
 	})
 }
 
@@ -108,10 +110,10 @@ func (m *model) dropTrial() tea.Cmd {
 	if t == nil {
 		return nil
 	}
-	text := fmt.Sprintf("drop trial %d %s? its curve and numbers go.", t.ID, t.History.Pairing)
+	text := fmt.Sprintf("drop trial %s %s? its curve and numbers go.", report.Tag(t.ID), t.History.Pairing)
 	return m.ask(text, func(m *model) tea.Cmd {
 		m.trials.reset()
-		return act(fmt.Sprintf("trial %d is dropped", t.ID), func() { m.s.Drop(t.ID) })
+		return act(fmt.Sprintf("trial %s is dropped", report.Tag(t.ID)), func() { m.s.Drop(t.ID) })
 	})
 }
 
@@ -123,9 +125,9 @@ func (m *model) holdTrial() tea.Cmd {
 		m.say("the picked trial has ended already")
 		return nil
 	case t.History.Stop.String() == "held":
-		return act(fmt.Sprintf("trial %d goes on", t.ID), func() { m.s.Resume(t.ID) })
+		return act(fmt.Sprintf("trial %s goes on", report.Tag(t.ID)), func() { m.s.Resume(t.ID) })
 	}
-	return act(fmt.Sprintf("trial %d is held; space lets it go on", t.ID), func() { m.s.Hold(t.ID) })
+	return act(fmt.Sprintf("trial %s is held; space lets it go on", report.Tag(t.ID)), func() { m.s.Hold(t.ID) })
 }
 
 // markToday says that the picked trial is what the user's code runs now, or
@@ -138,5 +140,5 @@ func (m *model) markToday() tea.Cmd {
 	if t.History.Today {
 		return act("no trial is marked as today's", func() { m.s.MarkToday(0) })
 	}
-	return act(fmt.Sprintf("trial %d is marked as what your code runs today", t.ID), func() { m.s.MarkToday(t.ID) })
+	return act(fmt.Sprintf("trial %s is marked as what your code runs today", report.Tag(t.ID)), func() { m.s.MarkToday(t.ID) })
 }

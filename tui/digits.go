@@ -1,11 +1,17 @@
 package tui
 
-import "math"
+import (
+	"math"
 
-// digits draws c, reduced to one column a cell, with the last digit of the
-// trial's number.
+	"dwindle/engine/report"
+)
+
+// digits draws c, reduced to one column a cell, with the tag of the trial.
 func digits(on *canvas, d decades, c curve, id int, i ink, full bool) {
-	sign := rune('0' + id%10)
+	sign := '*' // where there are more trials than signs
+	if tag := report.Tag(id); len(tag) == 1 {
+		sign = rune(tag[0])
+	}
 	if full {
 		spans(on, d, c, sign, i)
 	}

@@ -58,7 +58,7 @@ func TestOutpacedGiveWay(t *testing.T) {
 	s := race()
 	s.snap.Choice.Pairing = ""
 	m := screenOf(s, 80, 24, "ascii")
-	for _, name := range []string{" 3 gmres:c+none", "12 gmres:l+none", "18 gmres:r+none"} {
+	for _, name := range []string{" 3 gmres:c+none", " c gmres:l+none", " i gmres:r+none"} {
 		press(m, "3")
 		if frame := m.View(); !strings.Contains(frame, name) {
 			t.Errorf("%q is out of sight:\n%s", name, frame)

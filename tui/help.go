@@ -5,6 +5,8 @@ import (
 	"strings"
 
 	tea "github.com/charmbracelet/bubbletea"
+
+	"dwindle/engine"
 )
 
 // helpView lies over a screen and lists its keys, derived from the bindings,
@@ -38,10 +40,13 @@ var signsHelp = []string{
 	"> picked    t what your code runs today    (name) its curve is hidden",
 	"~ running   + converged   = stagnated   ! diverged or falsely converged",
 	"x broke down, refused or failed   . waiting   - held   # a limit or your stop",
+	"outpaced (#)  ended early: another trial has solved the system, and this one",
+	"           can no longer be as quick, neither for one b nor for many",
+	"1-9 a-z A-Z  the trials, a the 10th",
 	"(!) the method's own number met the target, the true residual had not",
 	"left out   among many trials: curves of those outpaced, refused or stopped",
 	"^ the curve goes on above the chart",
-	"r i p b e  on a curve (key m): a code that stops relative to b, relative to",
+	"R I P B E  on a curve (key m): a code that stops relative to b, relative to",
 	"           r0, preconditioned, by backward error, by energy norm stops here",
 	"findings: ! blocker   = drag   . note",
 	"true res   ||b - Ax|| / ||b|| measured afresh, in no trial's clock",
@@ -54,17 +59,21 @@ var signsHelp = []string{
 	"floor~     estimated accuracy below which nothing can be reached",
 }
 
-// draw draws the keys in two columns where there is room, then the signs.
+// draw draws the keys, then the signs, both in full: what does not fit in
+// height is scrolled to.
 func (v *helpView) draw(m *model, w, h int) []string {
 	list := v.of.keys(m)
-	if v.of != view(m.chooser) {
+	switch {
+	case m.s != nil && m.snap.Phase == engine.Broken:
+		list = m.brokenKeys()
+	case v.of != view(m.chooser):
 		list = slices.Concat(list, common)
 	}
 	list = slices.Concat(list, everywhere)
 	lines := []string{m.on.paint(faint, "keys of the "+v.of.(named).name()+" screen")}
 	lines = append(lines, keyTable(list, w)...)
 	for _, s := range signsHelp {
-		lines = append(lines, clip(s, w))
+		lines = append(lines, inTwo(s, w)...)
 	}
 	v.lines = len(lines)
 	v.first = max(min(v.first, len(lines)-h), 0)
@@ -76,16 +85,27 @@ func (v *helpView) draw(m *model, w, h int) []string {
 	return out
 }
 
-// keyTable lists bindings in as many columns as there is room for.
+// keyTable lists bindings, one below the other.
 func keyTable(list []action, w int) []string {
-	const cells = 40
-	across := max(w/cells, 1)
-	down := (len(list) + across - 1) / across
-	lines := make([]string, down)
-	for i, a := range list {
-		text := " " + left(allKeys(a), 11) + " " + strings.ReplaceAll(a.Help().Desc, ";", ",")
-		lines[i%down] += left(text, min(cells, w))
+	var lines []string
+	for _, a := range list {
+		lines = append(lines, inTwo(" "+left(allKeys(a), 11)+" "+strings.ReplaceAll(a.Help().Desc, ";", ","), w)...)
 	}
+	return lines
+}
+
+// inTwo is a line of two columns in lines of at most w cells: the second
+// column, behind the last run of two blanks or more, goes on below itself.
+func inTwo(s string, w int) []string {
+	if width(s) <= w {
+		return []string{s}
+	}
+	at := strings.LastIndex(s, "  ") + 2
+	if at < 2 || at > w/2 {
+		return paragraph(s, 0, w)
+	}
+	lines := paragraph(s[at:], at, w)
+	lines[0] = s[:at] + strings.TrimLeft(lines[0], " ")
 	return lines
 }
 

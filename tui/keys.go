@@ -6,6 +6,8 @@ import (
 
 	"github.com/charmbracelet/bubbles/key"
 	tea "github.com/charmbracelet/bubbletea"
+
+	"dwindle/engine"
 )
 
 // action is a binding with what it does. Bindings are data: the key line and
@@ -69,11 +71,23 @@ func (m *model) actions() []action {
 	if m.question != nil {
 		return slices.Concat(questionKeys, everywhere)
 	}
+	if m.over == nil && m.s != nil && m.snap.Phase == engine.Broken {
+		return slices.Concat(m.brokenKeys(), everywhere)
+	}
 	list := m.top().keys(m)
 	if m.over == nil && m.screen != view(m.chooser) {
 		list = slices.Concat(list, common)
 	}
 	return slices.Concat(list, everywhere)
+}
+
+// brokenKeys are what can be done about a system that could not be opened.
+func (m *model) brokenKeys() []action {
+	list := []action{bind("help", (*model).openHelp, "?"), bind("quit", (*model).quit, "q"), bind("glyphs", (*model).nextGlyphs, "u")}
+	if m.chooser != nil {
+		list = append([]action{bind("samples", (*model).back, "enter", "esc")}, list...)
+	}
+	return list
 }
 
 // onKey takes one message of the keyboard: several runes of one read are

@@ -35,6 +35,7 @@ type model struct {
 
 	question *question
 	message  string
+	saidAt   time.Time // when message came up
 
 	rate    float64 // snapshots a second
 	ticking int     // the id of the tick that counts

@@ -120,6 +120,9 @@ func TestPoint07Endings(t *testing.T) {
 			if len(x.entries("saved")) != 1 {
 				t.Error("nothing was saved")
 			}
+			if out := x.text(); e.name != "HUP" && !strings.HasSuffix(strings.TrimSpace(out[:strings.LastIndex(out, "the result is told")+1]), "\r\x1b[Kt") {
+				t.Errorf("the result is not told on a clean line after the screen: %q", out[max(len(out)-200, 0):])
+			}
 			if e.mode == "panic" {
 				out := x.text()
 				if strings.LastIndex(out, "\x1b[?1049l") > strings.Index(out, "the fake session is told to") {

@@ -23,21 +23,23 @@ type SampleInfo struct {
 
 // Config is what Run needs.
 type Config struct {
-	Session    *engine.Session // nil: the chooser of samples opens first
-	Samples    []SampleInfo
-	Open       func(source string) *engine.Session            // for the chooser; source is a file or sample:NAME[:ARGS]
-	Write      func(*engine.Session) (path string, err error) // writes the report
-	Record     func(*engine.Session) (path string, err error) // records the session to a file from now on
-	SaveOnExit func(*engine.Session)                          // called once after every ending, signals and panics included
-	In         *os.File                                       // nil: os.Stdin
-	Out        *os.File                                       // nil: os.Stdout
-	Glyphs     string                                         // dot, line, ascii; empty: by locale
-	Rate       float64                                        // snapshots a second; 0: 4, or 2 over ssh
+	Session *engine.Session // nil: the chooser of samples opens first
+	Samples []SampleInfo
+	Open    func(source string) *engine.Session            // for the chooser; source is a file or sample:NAME[:ARGS]
+	Write   func(*engine.Session) (path string, err error) // writes the report
+	Record  func(*engine.Session) (path string, err error) // records the session to a file from now on
+	// SaveOnExit is called once after every ending, signals and panics included.
+	// What it returns tells the result, when the terminal is as it was before.
+	SaveOnExit func(*engine.Session) (tell func())
+	In         *os.File // nil: os.Stdin
+	Out        *os.File // nil: os.Stdout
+	Glyphs     string   // dot, line, ascii; empty: by locale
+	Rate       float64  // snapshots a second; 0: 4, or 2 over ssh
 
 	gate     *gate
 	openNow  func(source string) session
 	writeNow func(session) (string, error)
-	saveNow  func(session)
+	saveNow  func(session) (tell func())
 	keepNow  func(session) (string, error)
 }
 
@@ -68,7 +70,7 @@ func Run(cfg Config) error {
 		cfg.keepNow = func(s session) (string, error) { return record(s.(*engine.Session)) }
 	}
 	if save := cfg.SaveOnExit; save != nil {
-		cfg.saveNow = func(s session) { save(s.(*engine.Session)) }
+		cfg.saveNow = func(s session) func() { return save(s.(*engine.Session)) }
 	}
 	return run(cfg, s)
 }
@@ -117,10 +119,13 @@ func conduct(m *model, p *tea.Program) error {
 
 	_, err := p.Run()
 	close(ended)
+	tell := func() {}
 	if m.cfg.saveNow != nil && m.s != nil {
-		m.cfg.saveNow(m.s)
+		tell = m.cfg.saveNow(m.s)
 	}
+	m.cfg.gate.Write([]byte("\r\x1b[K")) // a terminal without a second screen still shows the last line
 	m.cfg.gate.drain(lastWords)
+	tell()
 	if err == nil && m.interrupted {
 		return ErrInterrupted
 	}

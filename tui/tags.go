@@ -2,7 +2,8 @@ package tui
 
 import (
 	"math"
-	"strconv"
+
+	"dwindle/engine/report"
 )
 
 // tags places texts on a canvas so that two of them never touch: one free
@@ -64,7 +65,7 @@ func (t *tags) within(x, y int, text string, i ink, columns, rows int) bool {
 // trial starting elsewhere. rowAt gives the curve's row in a column, false
 // where it has none.
 func (t *tags) along(id, period int, i ink, rowAt func(x int) (int, bool)) {
-	text := strconv.Itoa(id)
+	text := report.Tag(id)
 	for x := 2 + id*7%period; x < t.on.w; x += period {
 		for _, dx := range []int{0, 1, -1, 2, -2, 3, -3} {
 			y, ok := rowAt(x + dx)

@@ -9,6 +9,7 @@ import (
 	tea "github.com/charmbracelet/bubbletea"
 
 	"dwindle/engine"
+	"dwindle/engine/report"
 )
 
 // named is a view with a name for the key line.
@@ -84,7 +85,7 @@ func (v *trialsView) widen(s engine.Snapshot) {
 	if !ok || s.Settings.Tol <= 0 {
 		goal = -8
 	}
-	start, high, low := 0.0, math.Inf(-1), goal
+	start, high, low, rest := 0.0, math.Inf(-1), goal, goal
 	for i := range s.Trials {
 		if v.hidden[s.Trials[i].ID] {
 			continue
@@ -98,8 +99,12 @@ func (v *trialsView) widen(s engine.Snapshot) {
 				start = math.Max(start, y)
 			}
 			high, low = math.Max(high, y), math.Min(low, y)
+			if !s.Trials[i].History.Direct {
+				rest = math.Min(rest, y)
+			}
 		}
 	}
+	low = math.Max(low, rest-1) // how deep a direct solve gets is no reason to squeeze the others
 	top := int(math.Ceil(math.Min(math.Max(high, start), math.Ceil(start)+headroom)))
 	end := int(math.Floor(math.Max(low, goal-depth) + 0.12)) // a hair below a decade is drawn on it
 	if v.y == (decades{}) {
@@ -111,7 +116,7 @@ func (v *trialsView) widen(s engine.Snapshot) {
 // keys are the bindings of the screen.
 func (v *trialsView) keys(m *model) []action {
 	list := []action{
-		bindKey("pick; a trial by its number", v.pickDigit, "1", "2", "3", "4", "5", "6", "7", "8", "9", "0").named("1-9"),
+		bindKey("pick; a trial by its number, those from a on by two digits: 10 is a, 11 is b", v.pickDigit, "1", "2", "3", "4", "5", "6", "7", "8", "9", "0").named("1-9"),
 		bind("hold; or resume the picked trial", (*model).holdTrial, " "),
 		bind("axis; iterations, products, seconds", v.nextMeasure, "x"),
 		bind("tries; for the picked trial", v.enter, "enter"),
@@ -231,7 +236,10 @@ func (v *trialsView) readOut(m *model) string {
 	if !math.IsNaN(y) {
 		text = "residual " + sci(math.Pow(10, y))
 	}
-	return fmt.Sprintf("trial %d at %s %s: %s", t.ID, short(round3(at)), v.by, text)
+	if v.by != bySeconds {
+		at = math.Round(at) // a count
+	}
+	return fmt.Sprintf("trial %s at %s %s: %s", report.Tag(t.ID), short(round3(at)), v.by, text)
 }
 
 // round3 keeps three digits.

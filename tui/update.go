@@ -61,6 +61,9 @@ func (m *model) onTick(t ticked) tea.Cmd {
 	if !m.busy() {
 		m.look()
 	}
+	if m.message != "" && m.now().Sub(m.saidAt) >= readable(m.message) {
+		m.message, m.stale = "", true
+	}
 	return m.nextTick()
 }
 
@@ -73,14 +76,23 @@ func (m *model) onActed(a acted) {
 	}
 	m.say(a.said)
 	m.look()
+	if a.pick > 0 {
+		m.over = nil // the list or the form that asked for it
+	}
 	if a.pick > 0 && m.trial(a.pick) != nil {
 		m.trials.picked = a.pick
 		m.show(m.trials)
 	}
 }
 
-// say puts a message into the bottom line until the next key.
-func (m *model) say(text string) { m.message, m.stale = text, true }
+// say puts a message into the bottom line until the next key, or until there
+// was time to read it.
+func (m *model) say(text string) { m.message, m.saidAt, m.stale = text, m.now(), true }
+
+// readable is how long a message stays: the longer, the longer.
+func readable(text string) time.Duration {
+	return 4*time.Second + time.Duration(len(text))*50*time.Millisecond
+}
 
 // onResume lets the trials move again after a suspension.
 func (m *model) onResume() tea.Cmd {

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"bytes"
 	"context"
 	"errors"
 	"io"
@@ -9,6 +10,7 @@ import (
 	"github.com/spf13/cobra"
 
 	"dwindle/engine"
+	"dwindle/engine/report"
 	"dwindle/samples"
 	"dwindle/tui"
 )
@@ -81,10 +83,17 @@ func (f *flags) show(c *cobra.Command, args []string) error {
 		return path, err
 	}
 	var saved error
-	cfg.SaveOnExit = func(s *engine.Session) {
+	cfg.SaveOnExit = func(s *engine.Session) func() {
 		end(s)
-		if d := s.Document(); len(d.Trials) > 0 && !s.Snapshot().Unchanged() {
-			saved = f.saveAndTell(c.ErrOrStderr(), d, nil)
+		d := s.Document()
+		if len(d.Trials) == 0 || s.Snapshot().Unchanged() {
+			return func() {}
+		}
+		var where bytes.Buffer
+		saved = f.saveAndTell(&where, d, nil)
+		return func() {
+			report.Ticket(c.OutOrStdout(), d) // a terminal that is gone hears nothing; the file has it all
+			c.ErrOrStderr().Write(where.Bytes())
 		}
 	}
 	if len(args) == 1 {

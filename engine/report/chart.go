@@ -117,15 +117,6 @@ func (c canvas) finish(v curve, s scale, t trace.History) {
 	c[k][v.first+len(v.vals)] = t.Stop.Mark()
 }
 
-// digit is the sign of trial i, counted from 0: 1 to 9, then letters.
-func digit(i int) byte {
-	const signs = "123456789abcdefghijklmnopqrstuvwyz"
-	if i < len(signs) {
-		return signs[i]
-	}
-	return '*'
-}
-
 // rowLabel is the scale beside row k: whole decades with a free row between,
 // and always the tolerance.
 func rowLabel(s scale, k int, tol float64) string {

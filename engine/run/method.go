@@ -78,7 +78,12 @@ func names[E any](list []E, name func(E) string) []string {
 	return out
 }
 
+// unknown says that there is no such method, with the name that was probably
+// meant, or else with all there are.
 func unknown(what, name string, known []string) error {
+	if near := nearest(name, known); near != "" {
+		return fmt.Errorf("no %s is called %q; did you mean %s?", what, name, near)
+	}
 	return fmt.Errorf("no %s is called %q; there are %s", what, name, strings.Join(known, ", "))
 }
 
