@@ -12,7 +12,7 @@ import (
 // setBench makes the bench and the line-up, and starts it or says why not.
 func (s *Session) setBench() *run.Bench {
 	s.set(func() { s.sys.Null, s.sys.LeftNull = inspect.ZeroDirections(s.facts), inspect.LeftDirections(s.facts) })
-	b := run.NewBench(s.sys, s.limits(), s.opt.Memory, s.clock)
+	b := run.NewBench(s.sys, s.limits(), s.opt.Memory, s.opt.Clock)
 	lineup := s.opt.Pairs
 	var r *race
 	if s.racing() {

@@ -156,7 +156,7 @@ func (s *Session) takeUp(sys linear.System) {
 		last = max(last, t.ID)
 	}
 	sys.Null, sys.LeftNull = inspect.ZeroDirections(s.facts), inspect.LeftDirections(s.facts)
-	s.bench = run.NewBench(sys, s.limits(), s.opt.Memory, s.clock)
+	s.bench = run.NewBench(sys, s.limits(), s.opt.Memory, s.opt.Clock)
 	s.bench.NumberFrom(last + 1)
 	s.phase, s.openAt = Running, s.clock()-s.past.Elapsed
 	s.changes++

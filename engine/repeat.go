@@ -2,45 +2,36 @@ package engine
 
 import (
 	"slices"
-	"time"
 
+	"dwindle/engine/choose"
 	"dwindle/engine/run"
 	"dwindle/engine/trace"
 )
 
-const (
-	repeatTimes  = 2   // repetitions of a trial
-	repeatMost   = 5   // trials that are repeated
-	repeatWithin = 1.5 // times the best's time: those further off are not
-)
+const repeatTimes = 2 // repetitions of a trial
 
 // repeat runs the quickest trials of a race again, where their times are too
 // close for one run to tell them apart and there is time.
 func (s *Session) repeat(b *run.Bench) {
-	left := s.rerunBudget()
-	list := nearBest(b.Trials())
-	if len(list) < 2 {
-		return
-	}
-	for _, t := range list {
-		h := t.History()
-		if cost := repeatTimes * h.OwnTime; cost <= left && h.Reruns == nil {
-			left -= cost
-			b.Repeat(s.ctx, t, repeatTimes)
+	trials := b.Trials()
+	for left := s.rerunBudget(); ; {
+		histories := make([]trace.History, len(trials))
+		for i, t := range trials {
+			histories[i] = t.History()
+		}
+		i := choose.Again(histories)
+		if i < 0 {
+			return
+		}
+		cost := repeatTimes * histories[i].OwnTime
+		if cost > left {
+			trials = slices.Delete(trials, i, i+1) // another may still fit
+			continue
+		}
+		left -= cost
+		b.Repeat(s.ctx, trials[i], repeatTimes)
+		if trials[i].History().Reruns == nil {
+			return // something else is wanted of the bench
 		}
 	}
-}
-
-// nearBest picks the trials that reached the target in about the best's time, the
-// quickest first.
-func nearBest(trials []*run.Trial) []*run.Trial {
-	own := func(t *run.Trial) time.Duration { h := t.History(); return h.OwnTime }
-	list := slices.DeleteFunc(slices.Clone(trials), func(t *run.Trial) bool { return t.History().Stop != trace.Converged })
-	slices.SortStableFunc(list, func(a, b *run.Trial) int { return int(own(a) - own(b)) })
-	for i, t := range list {
-		if i == repeatMost || float64(own(t)) > repeatWithin*float64(own(list[0])) {
-			return list[:i]
-		}
-	}
-	return list
 }

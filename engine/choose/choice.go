@@ -23,10 +23,13 @@ type Candidate struct {
 
 // Ranked is one trial in the ranking.
 type Ranked struct {
-	Pairing    string
-	Seconds    float64 // own seconds to tolerance, set-up included
+	Pairing string
+	// Seconds are the own seconds to tolerance, set-up included, as trials are
+	// compared by (costs); what this one took is in its history.
+	Seconds    float64
 	Setup      float64 // of which set-up
-	Runs       int     // Seconds is the median of so many runs
+	Runs       int     // the iterations are those of the median of so many runs
+	Setups     int     // and what solvers share of the set-up is the median of so many builds; 0: this run's
 	Iterations int
 	Memory     int64
 	Work       float64 // numbers touched, counted: what ranks where the clock cannot

@@ -9,7 +9,7 @@ import (
 )
 
 const (
-	margin      = 1.2 // over the best's time: beyond, a trial has lost
+	margin      = 1.2 // over the best's time: beyond, a trial has lost; on a busy machine more
 	patient     = 5.0 // the same where the choice does not go by seconds
 	hopelessBy  = 3.0 // predicted iterations over the limit of a trial beyond hope
 	needsToFall = 0.9 // of the prediction before: falling by more, a trial is gaining
@@ -49,7 +49,7 @@ func (r Race) lost(best *trace.History, found bool) []End {
 
 // outpaced says why h cannot win against the best, or nothing.
 func (r Race) outpaced(h, best trace.History) string {
-	room := margin
+	room := margin + coldCaches*(1-r.given)
 	if r.Goal == Memory || r.Goal == Robust {
 		room = patient
 	}
@@ -62,7 +62,15 @@ func (r Race) outpaced(h, best trace.History) string {
 		return ""
 	}
 	return fmt.Sprintf("%s has the answer after %s; this one, last measured at %.2g, has used %s%s",
-		best.Pairing, took(t), h.TrueResidual, took(own), r.toGo(h))
+		best.Pairing, took(r.byClock(best)), h.TrueResidual, took(r.byClock(h)), r.toGo(h))
+}
+
+// byClock is the own time of a trial by the clock, in seconds, as it is told.
+func (r Race) byClock(h trace.History) float64 {
+	if d, ok := r.clock[h.Pairing]; ok {
+		return d.Seconds()
+	}
+	return h.OwnTime.Seconds()
 }
 
 // toGo says what is foreseen of a trial that has not arrived, if it has
@@ -105,7 +113,7 @@ func (r Race) tooLate(i int) string {
 	if r.Left <= 0 || n < 4 || h.Predictions[n-1].Total < needsToFall*h.Predictions[n-3].Total {
 		return ""
 	}
-	need := remaining(h, h.Predictions[n-1].Low)
+	need := remaining(h, h.Predictions[n-1].Low) / r.given
 	if !(need > r.Left.Seconds()) || !r.another(i) {
 		return ""
 	}
@@ -117,7 +125,7 @@ func (r Race) tooLate(i int) string {
 func (r Race) another(i int) bool {
 	for k, h := range r.Trials {
 		n := len(h.Predictions)
-		if k != i && h.Stop == trace.Running && n > 0 && remaining(h, h.Predictions[n-1].Total) < r.Left.Seconds() {
+		if k != i && h.Stop == trace.Running && n > 0 && remaining(h, h.Predictions[n-1].Total)/r.given < r.Left.Seconds() {
 			return true
 		}
 	}

@@ -21,6 +21,11 @@ type Race struct {
 	Goal       string          // Seconds, Memory or Robust
 	Limit      int             // iterations a trial may take
 	Left       time.Duration   // of the run; 0: no limit
+
+	// Where Trials hold what they are compared by: their own times by the clock,
+	// and what the machine gave of it.
+	clock map[string]time.Duration
+	given float64
 }
 
 // Orders are what a race asks for next. It is over when nothing is to be
@@ -41,8 +46,9 @@ type End struct {
 const (
 	width      = 3                      // trials that run at once when a first one has converged
 	mostInAll  = 56                     // trials of a race
-	brief      = 20 * time.Millisecond  // a best below this is not worth a long race:
-	mostBrief  = 16                     // so many trials then
+	brief      = 10 * time.Millisecond  // a best below this is not worth a long race:
+	mostBrief  = 16                     // so many trials then,
+	long       = 100 * time.Millisecond // and in proportion more up to this
 	enough     = 60.0                   // own time of all trials over the best's time, from which nothing is added
 	atLeast    = 3 * time.Second        // but so much is always spent
 	firstPace  = 500 * time.Millisecond // own time of the slowest live trial from which help is added where nothing converges
@@ -58,6 +64,7 @@ const (
 // Next decides which trials have lost and which pairings to start, from how
 // the trials stand now.
 func (r Race) Next() Orders {
+	r = r.compared()
 	best, found := r.best()
 	o := Orders{End: r.lost(best, found)}
 	live := 0
@@ -71,8 +78,38 @@ func (r Race) Next() Orders {
 	if found {
 		o.Setup = max(setupLow, time.Duration(setupRoom*float64(best.OwnTime)))
 	}
+	o.Setup = time.Duration(float64(o.Setup) / r.given) // it is held against the clock
 	o.Add = r.add(live, best, found)
 	return o
+}
+
+// compared is the race with the times of its trials replaced by what they are
+// compared by.
+func (r Race) compared() Race {
+	r.clock, r.given, r.Trials = map[string]time.Duration{}, r.share(), slices.Clone(r.Trials)
+	for i, c := range costs(r.Trials) {
+		h := &r.Trials[i]
+		r.clock[h.Pairing] = h.OwnTime
+		h.SetupTime, h.OwnTime = seconds(c.setup), seconds(c.own)
+	}
+	return r
+}
+
+func seconds(s float64) time.Duration { return time.Duration(s * float64(time.Second)) }
+
+// share is the CPU time over the own time of all trials so far; 1 where it was
+// not measured.
+func (r Race) share() float64 {
+	cpu, own := time.Duration(0), time.Duration(0)
+	for _, h := range r.Trials {
+		if h.OwnCPU > 0 {
+			cpu, own = cpu+h.OwnCPU, own+h.OwnTime
+		}
+	}
+	if cpu <= 0 || own <= 0 {
+		return 1
+	}
+	return float64(cpu) / float64(own)
 }
 
 // add returns what to start beside so many live trials.
@@ -91,7 +128,7 @@ func (r Race) add(live int, best *trace.History, found bool) []string {
 	}
 	room := width - live
 	switch {
-	case len(r.Trials) >= mostInAll || found && best.OwnTime < brief && len(r.Trials) >= mostBrief:
+	case len(r.Trials) >= mostInAll || found && len(r.Trials) >= worthTrying(best.OwnTime):
 		return nil
 	case found && r.spent() > max(atLeast, time.Duration(enough*float64(best.OwnTime))):
 		return nil
@@ -105,6 +142,12 @@ func (r Race) add(live int, best *trace.History, found bool) []string {
 		return nil
 	}
 	return r.untried(room)
+}
+
+// worthTrying is how many trials a race is worth with a best like this.
+func worthTrying(best time.Duration) int {
+	way := float64(best-brief) / float64(long-brief)
+	return mostBrief + int((mostInAll-mostBrief)*min(1, max(0, way)))
 }
 
 // best is the trial that reached the target in the least own time with x in one

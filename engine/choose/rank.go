@@ -22,17 +22,18 @@ const (
 // first, with what it rests on and what could overturn it.
 func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding, goal string) Choice {
 	c := Choice{Gain: math.NaN(), Goal: goal, Outcomes: outcomes(trials, findings)}
-	for _, h := range trials {
+	all := costs(trials)
+	for i, h := range trials {
 		if h.Stop == trace.Refused {
 			continue
 		}
-		r := ranked(h)
+		r := ranked(h, all[i])
 		r.Work, r.two = work(f, h), h.TwoDoubles
 		r.shaky = h.Direct && f.Singular.Answer == inspect.Yes || h.UnsolvedRows > 0
 		c.Ranked = append(c.Ranked, r)
 	}
 	slices.SortStableFunc(c.Ranked, func(a, b Ranked) int { return order(a, b, findings, goal) })
-	settle(c.Ranked, trials, findings, goal)
+	settle(c.Ranked, findings, goal)
 	breakEven(c.Ranked)
 	if len(c.Ranked) == 0 || !c.Ranked[0].Reached {
 		c.Reasons = utmost(f, trials)
@@ -42,11 +43,9 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 	first := c.Ranked[0]
 	c.Pairing = first.Pairing
 	c.Reasons = reasons(f, trials, c)
-	for _, h := range trials {
-		if h.Today && reached(h) {
-			if _, own := times(h); math.Max(own, first.Seconds) >= tooShort {
-				c.Gain = own / first.Seconds
-			}
+	for i, h := range trials {
+		if h.Today && reached(h) && math.Max(all[i].own, first.Seconds) >= tooShort {
+			c.Gain = all[i].own / first.Seconds
 		}
 	}
 	c.Doubts = doubts(f, trials, c)
@@ -58,20 +57,19 @@ func reached(h trace.History) bool { return h.Stop == trace.Converged || h.Stop 
 // inDouble says that a trial reached the target with x in one double.
 func inDouble(h trace.History) bool { return reached(h) && !h.TwoDoubles }
 
-func ranked(h trace.History) Ranked {
+func ranked(h trace.History, c cost) Ranked {
 	nan := math.NaN()
-	setup, own := times(h)
-	r := Ranked{Pairing: h.Pairing, Seconds: nan, Setup: setup, Runs: 1 + len(h.Reruns), Iterations: h.Iterations,
+	r := Ranked{Pairing: h.Pairing, Seconds: nan, Setup: c.setup, Runs: len(c.runs), Setups: c.setups, Iterations: h.Iterations,
 		Memory: h.MemoryBytes, Reached: reached(h), BreakEven: nan, Low: nan, High: nan, Expected: nan, Safe: safe(h)}
 	for i := range r.For {
 		r.For[i] = nan
 	}
 	if !r.Reached {
-		r.Expected = expected(h)
+		r.Expected = expected(h, c)
 		return r
 	}
-	r.Seconds = own
-	off := spread(h)
+	r.Seconds = c.own
+	off := spread(h, c)
 	solve := r.Seconds - r.Setup
 	for i, k := range Sides {
 		r.For[i] = r.Setup + float64(k)*further(h, solve)
@@ -171,7 +169,7 @@ func doubts(f *inspect.Facts, trials []trace.History, c Choice) []string {
 	}
 	for _, h := range trials {
 		if h.CPUShare < busyShare && h.OwnTime.Seconds() > busyFrom {
-			out = append(out, "the machine was busy: trust the counts rather than the times")
+			out = append(out, "the machine was busy: pairings are compared by CPU time; trust the counts rather than the times")
 			break
 		}
 	}

@@ -16,10 +16,7 @@ func reasons(f *inspect.Facts, trials []trace.History, c Choice) []string {
 		return append(append(utmost(f, trials), twoReasons(chosen(trials, c), first)...), others(trials, c)...)
 	}
 	s := fmt.Sprintf("%s, %s to the target, of which %s set-up", count(first.Iterations, "iteration"), took(first.Seconds), took(first.Setup))
-	if first.Runs > 1 {
-		s += fmt.Sprintf(" (median of %d runs)", first.Runs)
-	}
-	out := []string{s}
+	out := []string{s + rests(first)}
 	switch {
 	case c.Goal == Memory:
 		out = append(out, "it takes the least memory of those that reached the target")

@@ -5,14 +5,13 @@ import (
 	"slices"
 
 	"dwindle/engine/diagnose"
-	"dwindle/engine/trace"
 )
 
 const (
 	likeWork = 1.3   // ratio of counted work within which trials are taken for alike
 	roughly  = 4.0   // the clock is trusted with this factor, however short the times,
 	hiccup   = 0.001 // but with no seconds below: a pause of the machine is as long
-	nearby   = 1.25  // times the first's seconds: those further off are not like it, however unsteady
+	nearby   = 1.15  // times the first's seconds: those further off are not like it, however unsteady
 )
 
 // plainness are the names of methods from the plainest on, as one would
@@ -38,49 +37,35 @@ func place(method string) int {
 // settle puts the trials that the clock does not tell apart from the first in
 // an order of their own: by counted work, and those of much the same work by
 // how plain they are.
-func settle(list []Ranked, trials []trace.History, findings []diagnose.Finding, goal string) {
+func settle(list []Ranked, findings []diagnose.Finding, goal string) {
 	if len(list) == 0 || !list[0].Reached || goal == Memory {
 		return
 	}
 	first := list[0]
-	byWork := clockFails(first, trials)
-	end := 1
-	for end < len(list) && alike(first, list[end], byWork, findings, goal) {
-		end++
+	var head, rest []Ranked
+	for i, r := range list {
+		if i == 0 || alike(first, r, findings, goal) {
+			head = append(head, r)
+		} else {
+			rest = append(rest, r)
+		}
 	}
-	head := list[:end]
 	slices.SortStableFunc(head, func(a, b Ranked) int { return cmp.Compare(a.Work, b.Work) })
 	same := 1
 	for same < len(head) && head[same].Work <= likeWork*head[0].Work {
 		same++
 	}
 	slices.SortStableFunc(head[:same], func(a, b Ranked) int { return plainer(a.Pairing, b.Pairing) })
-}
-
-// clockFails says that the clock cannot rank: the first is too short for it, or
-// the machine was busy.
-func clockFails(first Ranked, trials []trace.History) bool {
-	if first.Seconds < tooShort {
-		return true
-	}
-	for _, h := range trials {
-		if h.Pairing == first.Pairing {
-			return h.CPUShare < busyShare && h.OwnTime.Seconds() > busyFrom
-		}
-	}
-	return false
+	copy(list, append(head, rest...))
 }
 
 // alike says that the clock does not tell r from the first.
-func alike(first, r Ranked, byWork bool, findings []diagnose.Finding, goal string) bool {
+func alike(first, r Ranked, findings []diagnose.Finding, goal string) bool {
 	if !r.Reached || class(r, findings) != class(first, findings) || goal == Robust && r.Safe != first.Safe {
 		return false
 	}
-	switch {
-	case first.Seconds < tooShort:
+	if first.Seconds < tooShort {
 		return r.Seconds < tooShort && r.Seconds <= roughly*first.Seconds+hiccup
-	case byWork:
-		return r.Low <= first.High
 	}
 	return r.Low <= first.High && r.Seconds <= nearby*first.Seconds
 }

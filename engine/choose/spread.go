@@ -1,7 +1,6 @@
 package choose
 
 import (
-	"cmp"
 	"math"
 	"slices"
 
@@ -9,26 +8,26 @@ import (
 )
 
 const (
-	blocks   = 8    // parts of a trial whose speeds are compared
-	fewest   = 32   // iterations from which they are
-	leastOff = 0.05 // of the time: what a repetition differs by, at least
-	briefOff = 0.15 // the same of a trial too short to be taken apart
+	blocks     = 8    // parts of a trial whose speeds are compared
+	fewest     = 32   // iterations from which they are
+	leastOff   = 0.05 // of the time: what a repetition differs by, at least
+	briefOff   = 0.15 // the same of a trial too short to be taken apart
+	coldCaches = 0.5  // of its own time that a trial loses for all that others took
 )
 
-// spread is by how many seconds the time of a trial may be off: what its runs
+// spread is by how many seconds the cost of a trial may be off: what its runs
 // differ by where it was run again, else twice the standard error of its mean
-// iteration, from the speeds of its parts; what
-// rounding does to its number of iterations, where it was rerun; and what the
-// machine took away.
-func spread(h trace.History) float64 {
-	setup, own := times(h)
-	solve := own - setup
+// iteration, from the speeds of its parts; what rounding does to its number of
+// iterations, where it was rerun; and a share of what the machine took away,
+// for who works in between leaves the caches cold.
+func spread(h trace.History, c cost) float64 {
+	own, solve := c.own, c.solve()
 	off := leastOff * own
 	rel, ok := unsteady(h)
 	switch {
 	case len(h.Reruns) > 0:
-		off = math.Max(off, farthest(h, own))
-	case ok:
+		off = math.Max(off, (slices.Max(c.runs)-slices.Min(c.runs))/2) // half of it: the slowest of few may be the machine's doing
+	case ok && !c.cpu: // speeds are by the clock
 		off = math.Hypot(off, 2*rel*solve)
 	default:
 		off = briefOff * own
@@ -38,28 +37,9 @@ func spread(h trace.History) float64 {
 		off = math.Max(off, solve*math.Max(float64(h.Iterations-low), float64(high-h.Iterations))/float64(h.Iterations))
 	}
 	if h.CPUShare < 1 && h.CPUShare > 0 && len(h.Reruns) == 0 {
-		off += own * (1 - h.CPUShare)
+		off += coldCaches * own * (1 - h.CPUShare)
 	}
 	return off
-}
-
-// times are the seconds of set-up and of all of a trial: of the median run
-// where it was run again.
-func times(h trace.History) (setup, own float64) {
-	runs := append([]trace.Run{{Setup: h.SetupTime, Own: h.OwnTime}}, h.Reruns...)
-	slices.SortFunc(runs, func(a, b trace.Run) int { return cmp.Compare(a.Own, b.Own) })
-	middle := runs[(len(runs)-1)/2]
-	return middle.Setup.Seconds(), middle.Own.Seconds()
-}
-
-// farthest is by how much the runs of a trial differ from own: half of the
-// range that they span, for the slowest of few may be the machine's doing.
-func farthest(h trace.History, own float64) float64 {
-	low, high := own, own
-	for _, r := range append([]trace.Run{{Own: h.OwnTime}}, h.Reruns...) {
-		low, high = math.Min(low, r.Own.Seconds()), math.Max(high, r.Own.Seconds())
-	}
-	return (high - low) / 2
 }
 
 // unsteady is the standard error of the mean time of an iteration, relative
@@ -101,13 +81,13 @@ func further(h trace.History, solve float64) float64 {
 
 // expected is the seconds to the target of a trial that has not reached it,
 // by its last prediction; NaN where there is none or it never will.
-func expected(h trace.History) float64 {
+func expected(h trace.History, c cost) float64 {
 	n := len(h.Predictions)
 	if n == 0 || h.Iterations == 0 || math.IsInf(h.Predictions[n-1].Total, 1) || hasFailed(h.Stop) {
 		return math.NaN()
 	}
-	each := (h.OwnTime - h.SetupTime).Seconds() / float64(h.Iterations)
-	return h.OwnTime.Seconds() + each*math.Max(1, h.Predictions[n-1].Total-float64(h.Iterations))
+	each := c.solve() / float64(h.Iterations)
+	return c.own + each*math.Max(1, h.Predictions[n-1].Total-float64(h.Iterations))
 }
 
 func hasFailed(s trace.Stop) bool {

@@ -39,7 +39,7 @@ func (b *Bench) nudged(t *Trial, seed uint64) *Trial {
 			s.B[i] = math.Nextafter(s.B[i], math.Inf(sideOf(sign)))
 		}
 	}
-	u := newTrial(0, t.method, s, b.sizes, b.limits, b.clock, b.scratch, 0)
+	u := newTrial(0, t.method, s, b.sizes, b.limits, b.watch, b.scratch, 0)
 	u.form, u.quiet, u.turned, u.limits.Seconds = t.form, true, true, 0
 	return u
 }

@@ -45,7 +45,7 @@ func TestBeginCanBeCancelled(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		tr := newTrial(1, m, s, measure(s), Limits{Target: Target{Rule: StopRHS, Tol: 1e-8}, Iterations: 10}, MachineClock(), newScratch(n), 0)
+		tr := newTrial(1, m, s, measure(s), Limits{Target: Target{Rule: StopRHS, Tol: 1e-8}, Iterations: 10}, watch{clock: MachineClock()}, newScratch(n), 0)
 		tr.setUp(ctx)
 		if h := tr.History(); h.Stop != trace.Cancelled || a.left < -1 {
 			t.Errorf("%s ends %s, %d products after it was cancelled", pairing, h.Stop, -a.left)

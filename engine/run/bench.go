@@ -25,7 +25,7 @@ type Bench struct {
 	sys     linear.System
 	limits  Limits
 	memory  int64 // for all live trials together
-	clock   Clock
+	watch   watch
 	have    Have
 	sizes   sizes
 	form    *form // nil: products run on the rows
@@ -43,13 +43,15 @@ type Bench struct {
 }
 
 // NewBench makes a bench for a system. memory bounds all live trials
-// together, in bytes.
+// together, in bytes. Without a clock the bench goes by the machine's, and
+// measures CPU time beside it.
 func NewBench(s linear.System, l Limits, memory int64, clock Clock) *Bench {
+	w := watch{clock: clock}
 	if clock == nil {
-		clock = MachineClock()
+		w = watch{MachineClock(), threadCPU}
 	}
-	b := &Bench{sys: s, limits: l, memory: memory, clock: clock, have: Offers(s), sizes: measure(s), nextID: 1}
-	b.form = foresee(b.have, memory, clock)
+	b := &Bench{sys: s, limits: l, memory: memory, watch: w, have: Offers(s), sizes: measure(s), nextID: 1}
+	b.form = foresee(b.have, memory, w.clock)
 	b.wake = sync.NewCond(&b.mu)
 	return b
 }
@@ -74,7 +76,7 @@ func (b *Bench) Add(m Method) *Trial {
 	if b.scratch == nil {
 		b.scratch = newScratch(b.sys.N())
 	}
-	t := newTrial(b.nextID, m, b.sys, b.sizes, b.limits, b.clock, b.scratch, need)
+	t := newTrial(b.nextID, m, b.sys, b.sizes, b.limits, b.watch, b.scratch, need)
 	t.form = form
 	b.nextID++
 	if why := m.Refuse(b.have); why != "" {

@@ -51,7 +51,7 @@ func (c *Columns) begin(rhs []float64) *Trial {
 	b := c.bench
 	s := b.sys
 	s.B, s.Exact, s.Guess = rhs, nil, nil
-	t := newTrial(0, c.method, s, measure(s), b.limits, b.clock, b.scratch, 0)
+	t := newTrial(0, c.method, s, measure(s), b.limits, b.watch, b.scratch, 0)
 	t.form, t.ready = b.formFor(c.method), c.ready
 	return t
 }

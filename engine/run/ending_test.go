@@ -59,7 +59,7 @@ func TestRunawayIsJudgedWhereNothingBoundsIt(t *testing.T) {
 			t.Fatal(err)
 		}
 		c.limits.Target = Target{Rule: StopRHS, Tol: 1e-8}
-		u := newTrial(1, m, sample(t, "line:5"), sizes{b: 1}, c.limits, nil, nil, 0)
+		u := newTrial(1, m, sample(t, "line:5"), sizes{b: 1}, c.limits, watch{}, nil, 0)
 		u.ending.firstTrue = 1
 		u.judgeAudit(trace.Record{Iter: 9, Audit: 1e9, Residual: 1e9}, 1e9, &audit{true2: 1e9, normal: 1})
 		if u.hist.Stop != c.want {

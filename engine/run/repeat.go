@@ -14,12 +14,14 @@ import (
 func (b *Bench) Repeat(ctx context.Context, t *Trial, times int) {
 	var runs []trace.Run
 	for range times {
-		u := newTrial(0, t.method, b.sys, b.sizes, b.limits, b.clock, b.scratch, 0)
+		u := newTrial(0, t.method, b.sys, b.sizes, b.limits, b.watch, b.scratch, 0)
 		u.form, u.quiet, u.turned, u.limits.Seconds = t.form, true, true, 0
 		if !b.runOut(ctx, u) {
 			return
 		}
-		runs = append(runs, trace.Run{Setup: u.hist.SetupTime, Own: u.hist.OwnTime})
+		h := &u.hist
+		runs = append(runs, trace.Run{Build: h.BuildTime, Setup: h.SetupTime, Own: h.OwnTime,
+			BuildCPU: h.BuildCPU, SetupCPU: h.SetupCPU, OwnCPU: h.OwnCPU})
 	}
 	t.mu.Lock()
 	t.hist.Reruns = runs

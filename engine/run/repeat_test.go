@@ -38,7 +38,7 @@ func steered(t *testing.T, pairing string, f func(*Bench, *Trial)) trace.History
 // A repetition takes the same steps, so that by a clock that counts them it
 // takes the same time; the trial itself is charged nothing.
 func TestRepeatTakesTheSameSteps(t *testing.T) {
-	for _, p := range []string{"cg+none", "bicgstab+ilu", "scale/gmres:10+jacobi"} {
+	for _, p := range []string{"cg+none", "minres+none", "bicgstab+ilu", "scale/gmres:10+jacobi"} {
 		once := finish(t, sample(t, "plate:12"), limits(1e-8, 1000), ticking(time.Millisecond), p)[0]
 		h := steered(t, p, func(b *Bench, u *Trial) { b.Repeat(context.Background(), u, 2) })
 		if len(h.Reruns) != 2 || h.OwnTime != once.OwnTime || h.Iterations != once.Iterations {

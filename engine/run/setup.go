@@ -25,11 +25,12 @@ func (t *Trial) setUp(parent context.Context) {
 		defer cancel()
 	}
 	shared := t.readyForm()
-	start := t.clock() - shared
+	start := t.watch.now()
+	start.at, start.cpu = start.at-shared, start.cpu-shared
 	reading, err := t.build(ctx)
 	t.charge(start)
 	t.mu.Lock()
-	t.hist.SetupTime, t.progress = t.hist.OwnTime, 1
+	t.hist.SetupTime, t.hist.SetupCPU, t.progress = t.hist.OwnTime, t.hist.OwnCPU, 1
 	live := !t.hist.Stop.Ended()
 	t.mu.Unlock()
 	switch {
@@ -54,6 +55,7 @@ var errPatience = errors.New("the set-up takes too long")
 // build makes the prepared system, the preconditioner and the solver.
 func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 	var err error
+	start := t.watch.now()
 	if t.prepared, t.back, err = chain(ctx, t.method.Preps, t.sys); err != nil {
 		return trace.Reading{}, err
 	}
@@ -61,6 +63,10 @@ func (t *Trial) build(ctx context.Context) (trace.Reading, error) {
 	if err != nil {
 		return trace.Reading{}, err
 	}
+	built := t.watch.since(start)
+	t.mu.Lock()
+	t.hist.BuildTime, t.hist.BuildCPU = built.at, built.cpu
+	t.mu.Unlock()
 	n := t.sys.N()
 	t.a, t.m = &counted{inner: t.products(), n: n, ctx: ctx}, &counted{inner: m, n: n, ctx: ctx}
 	guess := t.prepared.Guess

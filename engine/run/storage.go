@@ -90,9 +90,9 @@ func (t *Trial) readyForm() time.Duration {
 	}
 	f := t.form
 	if f.op == nil {
-		start := t.clock()
+		start := t.watch.clock()
 		f.op = f.plan.Build()
-		f.cost += t.clock() - start
+		f.cost += t.watch.clock() - start
 	}
 	return f.cost
 }

@@ -1,6 +1,7 @@
 package run
 
 import (
+	"math"
 	"slices"
 	"testing"
 	"time"
@@ -31,11 +32,14 @@ func TestTrialsShareASecondForm(t *testing.T) {
 	if got, want := hs[0].MemoryBytes, m.Memory(Offers(s))+3*8*n; got != want {
 		t.Errorf("memory %d, want %d", got, want)
 	}
-	// Each reading of the clock is a tick: choosing, building and the set-up
-	// itself take one each.
+	// Each reading of the clock is a tick: choosing and building the form take
+	// one each, the set-up itself three, of which one is the making of M.
 	for _, h := range hs[:3] {
-		if h.SetupTime != 3*time.Millisecond {
-			t.Errorf("%s: set-up %v, want 3 ms", h.Pairing, h.SetupTime)
+		if h.SetupTime != 5*time.Millisecond || h.BuildTime != time.Millisecond {
+			t.Errorf("%s: set-up %v, of which M %v, want 5 and 1 ms", h.Pairing, h.SetupTime, h.BuildTime)
+		}
+		if h.OwnCPU != 0 || !math.IsNaN(h.CPUShare) {
+			t.Errorf("%s: CPU time %v, share %g beside a clock of our own", h.Pairing, h.OwnCPU, h.CPUShare)
 		}
 	}
 }

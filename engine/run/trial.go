@@ -22,7 +22,7 @@ type Trial struct {
 	sys    linear.System // the user's
 	limits Limits
 	sizes  sizes
-	clock  Clock
+	watch  watch
 
 	prepared linear.System
 	back     prepare.Back // nil without preparations
@@ -48,7 +48,6 @@ type Trial struct {
 
 	budget time.Duration // own time it may still use; negative is debt
 	wait   time.Duration // longest set-up; 0: no bound
-	cpu    time.Duration
 
 	mu       sync.Mutex
 	hist     trace.History
@@ -92,8 +91,8 @@ func (t *Trial) Progress() float64 {
 // Method returns the resolved pairing.
 func (t *Trial) Method() Method { return t.method }
 
-func newTrial(id int, m Method, s linear.System, z sizes, l Limits, clock Clock, sc *scratch, memory int64) *Trial {
-	t := &Trial{ID: id, method: m, sys: s, sizes: z, limits: l, clock: clock, scratch: sc,
+func newTrial(id int, m Method, s linear.System, z sizes, l Limits, w watch, sc *scratch, memory int64) *Trial {
+	t := &Trial{ID: id, method: m, sys: s, sizes: z, limits: l, watch: w, scratch: sc,
 		sched: newSchedule(), marks: newMarks(m.Solver.Lanczos)}
 	nan := math.NaN()
 	e, p := m.Solver, m.Precond
@@ -118,18 +117,11 @@ func (t *Trial) guard() {
 // advance moves the trial until its budget is used up, it ends, or ctx does.
 func (t *Trial) advance(ctx context.Context) {
 	defer t.guard()
-	cpu, own := threadCPU(), t.hist.OwnTime
 	if t.solver == nil {
 		t.setUp(ctx)
 	}
 	for t.budget > 0 && ctx.Err() == nil && t.canMove() {
 		t.step()
-	}
-	t.cpu += threadCPU() - cpu
-	if spent := t.hist.OwnTime - own; spent > 0 {
-		t.mu.Lock()
-		t.hist.CPUShare = math.Min(1, float64(t.cpu)/float64(t.hist.OwnTime))
-		t.mu.Unlock()
 	}
 }
 
@@ -148,17 +140,21 @@ func (t *Trial) canMove() bool {
 }
 
 // charge adds to the trial's own time what has passed since start.
-func (t *Trial) charge(start time.Duration) {
-	d := t.clock() - start
-	t.budget -= d
+func (t *Trial) charge(start moment) {
+	d := t.watch.since(start)
+	t.budget -= d.at
 	t.mu.Lock()
-	t.hist.OwnTime += d
+	t.hist.OwnTime += d.at
+	t.hist.OwnCPU += d.cpu
+	if t.hist.OwnCPU > 0 {
+		t.hist.CPUShare = float64(t.hist.OwnCPU) / float64(t.hist.OwnTime)
+	}
 	t.mu.Unlock()
 }
 
 // step makes one iteration on the clock and judges it off the clock.
 func (t *Trial) step() {
-	start := t.clock()
+	start := t.watch.now()
 	r, err := t.solver.Step()
 	t.charge(start)
 	if err == nil {
@@ -172,9 +168,10 @@ func (t *Trial) step() {
 	t.hist.Iterations++
 	t.mu.Unlock()
 	switch {
+	case t.lanczos == nil: // of a trial that nobody sees as well
 	case t.method.Solver.Tridiagonal:
 		t.lanczos.AddLanczos(r.Alpha, r.Beta)
-	case t.lanczos != nil:
+	default:
 		if before := t.lanczos.Order(); t.lanczos.AddCG(r.Alpha, r.Beta) || t.lanczos.Order() > before {
 			t.coefficients(r.Alpha, r.Beta)
 		}

@@ -14,7 +14,7 @@ func (b *Bench) warm(ctx context.Context) {
 	if err != nil || m.Refuse(b.have) != "" {
 		return
 	}
-	t := newTrial(0, m, b.sys, b.sizes, b.limits, MachineClock(), b.scratch, 0)
+	t := newTrial(0, m, b.sys, b.sizes, b.limits, watch{clock: MachineClock()}, b.scratch, 0)
 	t.quiet, t.turned = true, true
 	defer t.guard()
 	t.setUp(ctx)

@@ -105,8 +105,12 @@ type Nearness struct {
 	Doubt, WorstDoubt float64
 }
 
-// Run is how long one run of a trial took.
-type Run struct{ Setup, Own time.Duration }
+// Run is how long one run of a trial took: preparations and M, all of the
+// set-up, and all; by the clock, and the CPU time of the thread that drives.
+type Run struct {
+	Build, Setup, Own          time.Duration
+	BuildCPU, SetupCPU, OwnCPU time.Duration
+}
 
 // Column is one of several right-hand sides solved with one set-up.
 type Column struct {
@@ -140,9 +144,10 @@ type History struct {
 	TwoDoubles bool // x is the unevaluated sum of two doubles, and so is what its residuals and its ending are of
 
 	Iterations, Products, PrecondUses int
-	SetupTime, OwnTime                time.Duration
-	CPUShare                          float64 // driver CPU time over own time; NaN if not measured
-	MemoryBytes                       int64   // a second form of A included
+	BuildTime, SetupTime, OwnTime     time.Duration // preparations and M; all of the set-up; all
+	BuildCPU, SetupCPU, OwnCPU        time.Duration // of these, the CPU time of the thread that drives; 0 if not measured
+	CPUShare                          float64       // OwnCPU over OwnTime; NaN if not measured
+	MemoryBytes                       int64         // a second form of A included
 	// Storage is the form of A that products run on, such as "rows" or "3x3
 	// blocks"; empty before set-up and where A is matrix-free.
 	Storage string
