@@ -47,12 +47,17 @@ func estimate(f *inspect.Facts, pairings int) time.Duration {
 	return time.Duration(pairings) * 1000 * time.Duration(4*f.Entries+10*f.N)
 }
 
+// mostIterations is how many iterations a trial may take.
+func (s *Session) mostIterations() int {
+	if s.opt.Iterations > 0 {
+		return s.opt.Iterations
+	}
+	return min(10*s.facts.N, 100_000)
+}
+
 func (s *Session) limits() run.Limits {
 	l := run.Limits{Target: run.Target{Rule: run.StopRule(s.opt.StopRule), Tol: s.opt.Tol},
-		Iterations: s.opt.Iterations, Seconds: s.opt.TrialSeconds, Delta: s.sys.Delta(), Vectors: s.opt.Vectors}
-	if l.Iterations == 0 {
-		l.Iterations = min(10*s.sys.N(), 100_000)
-	}
+		Iterations: s.mostIterations(), Seconds: s.opt.TrialSeconds, Delta: s.sys.Delta(), Vectors: s.opt.Vectors}
 	l.FieldTol, _ = fieldTols(s.sys, s.opt) // checked when the system was completed
 	if f := s.facts; f.Symmetric.Answer == inspect.Yes && f.Symmetric.Certainty == inspect.Proved && f.Gershgorin.Min > 0 {
 		l.Smallest = f.Gershgorin.Min * (1 - 1e-12) // what summing a row rounds away is less

@@ -114,7 +114,7 @@ func (s *Session) judge(v *Snapshot) {
 
 // rank makes the choice, with its settings and what was ruled out.
 func (s *Session) rank(histories []trace.History, f []diagnose.Finding) choose.Choice {
-	c := choose.Rank(s.facts, histories, f, s.opt.Goal)
+	c := choose.Rank(s.facts, histories, f, s.opt.Goal, s.mostIterations())
 	if c.Pairing != "" {
 		c.Settings = s.settingsOf(c.Pairing)
 	}

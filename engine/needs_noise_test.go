@@ -35,7 +35,7 @@ func TestNeed30CountsMoveWithRounding(t *testing.T) {
 			t.Errorf("5 %% is called a win: %s", f.Claim)
 		}
 	}
-	doubts := strings.Join(choose.Rank(v.Facts, c.Trials, found, "").Doubts, "; ")
+	doubts := strings.Join(choose.Rank(v.Facts, c.Trials, found, "", 0).Doubts, "; ")
 	if !strings.Contains(doubts, "not told apart") {
 		t.Errorf("the choice does not doubt a difference of 5 %%: %s", doubts)
 	}

@@ -41,6 +41,7 @@ type Ranked struct {
 	For       [len(Sides)]float64
 	Low, High float64 // range of Seconds thought likely; NaN where not reached
 	Expected  float64 // where not reached: the seconds it takes by its last prediction; NaN if none
+	Beyond    float64 // where not reached: the iterations it would take by it, more than it may; NaN
 	two       bool    // it keeps x in two doubles
 	shaky     bool    // it factorised a matrix that is singular to rounding: its x holds what rounding made of it
 	Safe      bool    // it cannot fail on a matrix of this kind, and nothing went wrong on the way

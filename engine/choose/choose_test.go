@@ -80,7 +80,7 @@ func TestRankByOwnTime(t *testing.T) {
 		trial("cg+jacobi", trace.Converged, 0, 3*time.Second),
 	}
 	trials[0].Today = true
-	c := Rank(facts(inspect.Yes, inspect.Yes), trials, nil, "")
+	c := Rank(facts(inspect.Yes, inspect.Yes), trials, nil, "", 0)
 	var order []string
 	for _, r := range c.Ranked {
 		order = append(order, r.Pairing)
@@ -109,12 +109,12 @@ func TestUnsolvedRowsRankBelow(t *testing.T) {
 		{Rule: "unsolved-rows", Subject: "cg+none"},
 		{Rule: "unsolved-rows", Subject: "minres+none", Also: []string{"cr+none", "cg+none"}},
 	} {
-		if c := Rank(facts(inspect.Yes, inspect.Yes), trials, []diagnose.Finding{f}, ""); c.Pairing != "scale/cg+none" {
+		if c := Rank(facts(inspect.Yes, inspect.Yes), trials, []diagnose.Finding{f}, "", 0); c.Pairing != "scale/cg+none" {
 			t.Errorf("chose %s, which leaves rows unsolved", c.Pairing)
 		}
 	}
 	trials[0].UnsolvedRows = 2499 // whether or not a finding speaks of it
-	if c := Rank(facts(inspect.Yes, inspect.Yes), trials, nil, ""); c.Pairing != "scale/cg+none" {
+	if c := Rank(facts(inspect.Yes, inspect.Yes), trials, nil, "", 0); c.Pairing != "scale/cg+none" {
 		t.Errorf("chose %s, which leaves 2499 rows unsolved", c.Pairing)
 	}
 }
@@ -125,7 +125,7 @@ func TestDoubts(t *testing.T) {
 	busy := trial("cg+none", trace.Converged, 0, time.Second)
 	busy.CPUShare = 0.5
 	near := trial("cg+jacobi", trace.Converged, 0, 1050*time.Millisecond)
-	all := strings.Join(Rank(f, []trace.History{busy, near}, nil, "").Doubts, "; ")
+	all := strings.Join(Rank(f, []trace.History{busy, near}, nil, "", 0).Doubts, "; ")
 	for _, want := range []string{"--rhs", "busy", "not told apart"} {
 		if !strings.Contains(all, want) {
 			t.Errorf("doubts %q lack %q", all, want)
@@ -134,7 +134,7 @@ func TestDoubts(t *testing.T) {
 }
 
 func TestNothingReachedIsNoChoice(t *testing.T) {
-	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{trial("cg+none", trace.TimeLimit, 0, time.Second)}, nil, "")
+	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{trial("cg+none", trace.TimeLimit, 0, time.Second)}, nil, "", 0)
 	if c.Pairing != "" {
 		t.Errorf("chose %s although nothing converged", c.Pairing)
 	}
@@ -146,7 +146,7 @@ func TestMedianOfRuns(t *testing.T) {
 	lucky.Reruns = []trace.Run{{Own: 4 * time.Second}, {Own: 3 * time.Second}}
 	steady := trial("cg+jacobi", trace.Converged, 0, 2*time.Second)
 	steady.Reruns = []trace.Run{{Own: 2 * time.Second}, {Own: 2 * time.Second}}
-	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{lucky, steady}, nil, "")
+	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{lucky, steady}, nil, "", 0)
 	if c.Pairing != "cg+jacobi" || c.Ranked[1].Seconds != 3 || c.Ranked[0].Runs != 3 {
 		t.Errorf("chose %s; %+v", c.Pairing, c.Ranked)
 	}
@@ -163,7 +163,7 @@ func TestGoals(t *testing.T) {
 	safe := trial("minres+none", trace.Converged, 0, 2*time.Second)
 	safe.MemoryBytes, safe.Monotone = 20, true
 	for goal, want := range map[string]string{"": "gmres+ilu", Seconds: "gmres+ilu", Memory: "bicgstab+none", Robust: "minres+none"} {
-		if c := Rank(facts(inspect.Yes, inspect.No), []trace.History{quick, small, safe}, nil, goal); c.Pairing != want {
+		if c := Rank(facts(inspect.Yes, inspect.No), []trace.History{quick, small, safe}, nil, goal, 0); c.Pairing != want {
 			t.Errorf("goal %q: chose %s, want %s", goal, c.Pairing, want)
 		}
 	}
@@ -174,7 +174,7 @@ func TestGoals(t *testing.T) {
 func TestManyRightHandSides(t *testing.T) {
 	a := trial("cg+none", trace.Converged, 0, 2*time.Second)
 	b := trial("cg+ic", trace.Converged, 10*time.Second, 11*time.Second)
-	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{a, b}, nil, "")
+	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{a, b}, nil, "", 0)
 	if c.Pairing != "cg+none" || c.Ranked[0].For != [3]float64{2, 20, 2000} || c.Ranked[1].For != [3]float64{11, 20, 1010} {
 		t.Errorf("chose %s; %v, %v", c.Pairing, c.Ranked[0].For, c.Ranked[1].For)
 	}
@@ -182,7 +182,7 @@ func TestManyRightHandSides(t *testing.T) {
 		t.Errorf("doubts %q", got)
 	}
 	a.Columns = []trace.Column{{Seconds: 0.5}, {Seconds: 1.5}}
-	if c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{a}, nil, ""); c.Ranked[0].For[1] != 10 {
+	if c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{a}, nil, "", 0); c.Ranked[0].For[1] != 10 {
 		t.Errorf("for 10: %g s, measured 1 s a column", c.Ranked[0].For[1])
 	}
 }
@@ -227,5 +227,19 @@ func TestNothingIsOverturnedFromTheStart(t *testing.T) {
 	other.Setup, other.For = 1e-2, [3]float64{1.005e-2, 1.05e-2, 0.06}
 	if got := overturned(Choice{Ranked: []Ranked{first, other}}); len(got) != 1 {
 		t.Errorf("told: %q", got)
+	}
+}
+
+// What needs more iterations than it may take is not expected at any time.
+func TestBeyondTheLimitOfIterations(t *testing.T) {
+	h := trial("cgs+none", trace.IterationLimit, 0, time.Second)
+	h.Iterations, h.Predictions = 90, []trace.Prediction{{Iter: 85, Total: 125, Low: 105, High: 161}}
+	f := facts(inspect.No, inspect.Unknown)
+	if r := Rank(f, []trace.History{h}, nil, "", 90).Ranked[0]; !math.IsNaN(r.Expected) || r.Beyond != 125 {
+		t.Errorf("expected %g, beyond %g", r.Expected, r.Beyond)
+	}
+	h.Stop, h.Iterations = trace.Outpaced, 50
+	if r := Rank(f, []trace.History{h}, nil, "", 1000).Ranked[0]; r.Expected != 2.5 || !math.IsNaN(r.Beyond) {
+		t.Errorf("expected %g, beyond %g", r.Expected, r.Beyond)
 	}
 }

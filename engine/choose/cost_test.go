@@ -30,7 +30,7 @@ func TestSetUpIsSharedByThoseWithTheSameM(t *testing.T) {
 		made("scale/cg+amg", 900*ms, 10*ms, 500*ms), // another A, another M
 		made("cg+none", ms, 10*ms, 2*second),
 	}
-	c := Rank(facts(inspect.Yes, inspect.Yes), trials, nil, "")
+	c := Rank(facts(inspect.Yes, inspect.Yes), trials, nil, "", 0)
 	if c.Pairing != "cg+amg" || !about(c.Ranked[0].Setup, 0.33) || !about(c.Ranked[0].Seconds, 0.83) || c.Ranked[0].Setups != 3 {
 		t.Errorf("chose %s: %+v", c.Pairing, c.Ranked[0])
 	}
@@ -68,7 +68,7 @@ func TestBusyMachineCountsCPUTime(t *testing.T) {
 	if c[0].own != 0.05 || c[0].setup != 0.01 || !c[0].cpu || c[1].own != 0.1 || c[1].setup != 0.01 || c[1].cpu {
 		t.Errorf("%+v", c)
 	}
-	if all := strings.Join(Rank(facts(inspect.Yes, inspect.Yes), []trace.History{busy, quiet}, nil, "").Doubts, "; "); !strings.Contains(all, "compared by CPU time") {
+	if all := strings.Join(Rank(facts(inspect.Yes, inspect.Yes), []trace.History{busy, quiet}, nil, "", 0).Doubts, "; "); !strings.Contains(all, "compared by CPU time") {
 		t.Errorf("doubts %q", all)
 	}
 }

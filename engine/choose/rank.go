@@ -19,15 +19,16 @@ const (
 )
 
 // Rank orders the trials by the goal (empty: Seconds) and recommends the
-// first, with what it rests on and what could overturn it.
-func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding, goal string) Choice {
+// first, with what it rests on and what could overturn it. A trial may take
+// limit iterations; 0: not known.
+func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding, goal string, limit int) Choice {
 	c := Choice{Gain: math.NaN(), Goal: goal, Outcomes: outcomes(trials, findings)}
 	all := costs(trials)
 	for i, h := range trials {
 		if h.Stop == trace.Refused {
 			continue
 		}
-		r := ranked(h, all[i])
+		r := ranked(h, all[i], limit)
 		r.Work, r.two = work(f, h), h.TwoDoubles
 		r.shaky = h.Direct && f.Singular.Answer == inspect.Yes || h.UnsolvedRows > 0
 		c.Ranked = append(c.Ranked, r)
@@ -57,15 +58,15 @@ func reached(h trace.History) bool { return h.Stop == trace.Converged || h.Stop 
 // inDouble says that a trial reached the target with x in one double.
 func inDouble(h trace.History) bool { return reached(h) && !h.TwoDoubles }
 
-func ranked(h trace.History, c cost) Ranked {
+func ranked(h trace.History, c cost, limit int) Ranked {
 	nan := math.NaN()
 	r := Ranked{Pairing: h.Pairing, Seconds: nan, Setup: c.setup, Runs: len(c.runs), Setups: c.setups, Iterations: h.Iterations,
-		Memory: h.MemoryBytes, Reached: reached(h), BreakEven: nan, Low: nan, High: nan, Expected: nan, Safe: safe(h)}
+		Memory: h.MemoryBytes, Reached: reached(h), BreakEven: nan, Low: nan, High: nan, Expected: nan, Beyond: nan, Safe: safe(h)}
 	for i := range r.For {
 		r.For[i] = nan
 	}
 	if !r.Reached {
-		r.Expected = expected(h, c)
+		r.Expected, r.Beyond = expected(h, c, limit)
 		return r
 	}
 	r.Seconds = c.own

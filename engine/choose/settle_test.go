@@ -24,7 +24,7 @@ func TestShortTimesRankByWork(t *testing.T) {
 	for _, clock := range [][3]time.Duration{{90 * us, 60 * us, 50 * us}, {50 * us, 60 * us, 90 * us}} {
 		trials := []trace.History{brisk("cg+none", clock[0], 200, 0), brisk("cg+ic:0", clock[1], 12, 300), brisk("cg+milu:0", clock[2], 12, 320)}
 		trials[0].Today = true
-		c := Rank(f, trials, nil, "")
+		c := Rank(f, trials, nil, "", 0)
 		if c.Pairing != "cg+ic:0" {
 			t.Errorf("by clock %v: chose %s", clock, c.Pairing)
 		}
@@ -33,7 +33,7 @@ func TestShortTimesRankByWork(t *testing.T) {
 		}
 	}
 	slow := brisk("cg+jacobi", 3000*us, 2, 100) // little work by count, much by the clock
-	if c := Rank(f, []trace.History{brisk("cg+ic:0", 60*us, 12, 300), slow}, nil, ""); c.Pairing != "cg+ic:0" {
+	if c := Rank(f, []trace.History{brisk("cg+ic:0", 60*us, 12, 300), slow}, nil, "", 0); c.Pairing != "cg+ic:0" {
 		t.Errorf("chose %s, which takes far longer", c.Pairing)
 	}
 }
@@ -52,7 +52,7 @@ func TestWorkCountsFactors(t *testing.T) {
 func TestPlainestOfEquals(t *testing.T) {
 	a, b := trial("symmlq+ilu:0", trace.Converged, 0, time.Second), trial("cg+ic:0", trace.Converged, 0, 1050*time.Millisecond)
 	far := trial("cg+none", trace.Converged, 0, 2*time.Second)
-	if c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{a, b, far}, nil, ""); c.Pairing != "cg+ic:0" {
+	if c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{a, b, far}, nil, "", 0); c.Pairing != "cg+ic:0" {
 		t.Errorf("chose %s", c.Pairing)
 	}
 }
@@ -64,11 +64,11 @@ func TestNoFactorsOfSingular(t *testing.T) {
 	direct := trial("richardson:1+cholesky", trace.Converged, 0, time.Second)
 	direct.Direct = true
 	trials := []trace.History{direct, trial("cg+ic:0", trace.Converged, 0, 2*time.Second)}
-	if c := Rank(f, trials, nil, ""); c.Pairing != "richardson:1+cholesky" {
+	if c := Rank(f, trials, nil, "", 0); c.Pairing != "richardson:1+cholesky" {
 		t.Errorf("chose %s of a regular matrix", c.Pairing)
 	}
 	f.Singular.Answer = inspect.Yes
-	if c := Rank(f, trials, nil, ""); c.Pairing != "cg+ic:0" {
+	if c := Rank(f, trials, nil, "", 0); c.Pairing != "cg+ic:0" {
 		t.Errorf("chose %s of a singular matrix", c.Pairing)
 	}
 }

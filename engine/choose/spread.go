@@ -80,14 +80,18 @@ func further(h trace.History, solve float64) float64 {
 }
 
 // expected is the seconds to the target of a trial that has not reached it,
-// by its last prediction; NaN where there is none or it never will.
-func expected(h trace.History, c cost) float64 {
-	n := len(h.Predictions)
+// by its last prediction, or the iterations it would take where these are more
+// than it may, limit (0: not known); NaN where there is none, or it never will.
+func expected(h trace.History, c cost, limit int) (seconds, beyond float64) {
+	nan, n := math.NaN(), len(h.Predictions)
 	if n == 0 || h.Iterations == 0 || math.IsInf(h.Predictions[n-1].Total, 1) || hasFailed(h.Stop) {
-		return math.NaN()
+		return nan, nan
 	}
-	each := c.solve() / float64(h.Iterations)
-	return c.own + each*math.Max(1, h.Predictions[n-1].Total-float64(h.Iterations))
+	total := math.Max(h.Predictions[n-1].Total, float64(h.Iterations+1))
+	if limit > 0 && total > float64(limit) {
+		return nan, total
+	}
+	return c.own + c.solve()/float64(h.Iterations)*(total-float64(h.Iterations)), nan
 }
 
 func hasFailed(s trace.Stop) bool {

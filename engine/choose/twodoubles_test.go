@@ -26,7 +26,7 @@ func TestTwoDoublesRankBehindOne(t *testing.T) {
 	sound := trial("minres+none", trace.Converged, 0, 10*second)
 	sound.MemoryBytes = 2000
 	for _, goal := range append([]string{""}, Goals...) {
-		c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{inTwo(second), doubtful, sound}, nil, goal)
+		c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{inTwo(second), doubtful, sound}, nil, goal, 0)
 		if c.Pairing == "richardson:1,2+lu" || c.Ranked[2].Pairing != "richardson:1,2+lu" {
 			t.Errorf("goal %q: chose %s of %+v", goal, c.Pairing, c.Ranked)
 		}
@@ -34,7 +34,7 @@ func TestTwoDoublesRankBehindOne(t *testing.T) {
 			t.Errorf("goal %q: told beside what is chosen: %s", goal, all)
 		}
 	}
-	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{inTwo(second), sound}, nil, "")
+	c := Rank(facts(inspect.Yes, inspect.Yes), []trace.History{inTwo(second), sound}, nil, "", 0)
 	if len(c.Reasons) < 2 || !strings.Contains(c.Reasons[1], "x kept in two doubles") {
 		t.Errorf("the second is not told for what it is: %v", c.Reasons)
 	}
@@ -46,7 +46,7 @@ func TestTwoDoublesWhereOneDoesNot(t *testing.T) {
 	one := trial("richardson:1+lu", trace.FalselyConverged, second, second)
 	one.TrueResidual, one.Componentwise, one.Direct = 1.24e-7, 2e-16, true
 	one.Near = &trace.Nearness{Of: "richardson:1,2+lu", Error: 3e-10, Worst: 3e-10, Doubt: 1e-20}
-	c := Rank(facts(inspect.No, inspect.No), []trace.History{one, inTwo(2 * second)}, nil, "")
+	c := Rank(facts(inspect.No, inspect.No), []trace.History{one, inTwo(2 * second)}, nil, "", 0)
 	if c.Pairing != "richardson:1,2+lu" {
 		t.Fatalf("chose %q", c.Pairing)
 	}

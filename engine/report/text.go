@@ -236,6 +236,8 @@ func notReached(c choose.Choice) string {
 		case r.Reached:
 		case r.Expected > 0 && finite(r.Expected):
 			list = append(list, r.Pairing+" (expected in "+trace.Took(r.Expected)+")")
+		case r.Beyond > 0:
+			list = append(list, fmt.Sprintf("%s (not within its iterations: about %.0f are foreseen)", r.Pairing, r.Beyond))
 		default:
 			list = append(list, r.Pairing)
 		}
