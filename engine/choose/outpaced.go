@@ -50,7 +50,7 @@ func (r Race) lost(best *trace.History, found bool) []End {
 // outpaced says why h cannot win against the best, or nothing.
 func (r Race) outpaced(h, best trace.History) string {
 	room := margin + coldCaches*(1-r.given)
-	if r.Goal == Memory || r.Goal == Robust {
+	if r.Goal == Memory || r.Goal == Robust || best.UnsolvedRows > 0 {
 		room = patient
 	}
 	t, own := best.OwnTime.Seconds(), h.OwnTime.Seconds()

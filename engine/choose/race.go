@@ -55,8 +55,10 @@ const (
 	pace       = 1.5                    // by which it grows with each trial added
 	someSteps  = 20                     // no help is added before every live trial has taken so many steps
 	tooLong    = 20                     // or so many times the pace
-	setupRoom  = 4.0                    // a set-up may take so many times the best's time
-	setupLow   = 200 * time.Millisecond // but at least this
+	setupTimes = 4.0                    // a set-up may take so many times the best's time
+	setupShare = 0.25                   // but beyond it no more of what is left of the run,
+	setupLow   = 200 * time.Millisecond // and at least this
+	repeats    = 4                      // runs of the best's time that a race leaves time for
 	setupLong  = time.Second            // where nothing has converged, it may take this,
 	setupEntry = 20 * time.Microsecond  // or this an entry of A, or as much as all trials have taken
 )
@@ -76,11 +78,22 @@ func (r Race) Next() Orders {
 	live -= len(o.End)
 	o.Setup = max(setupLong, r.spent(), setupEntry*time.Duration(r.Facts.Entries))
 	if found {
-		o.Setup = max(setupLow, time.Duration(setupRoom*float64(best.OwnTime)))
+		o.Setup = r.setupRoom(best.OwnTime)
 	}
 	o.Setup = time.Duration(float64(o.Setup) / r.given) // it is held against the clock
 	o.Add = r.add(live, best, found)
 	return o
+}
+
+// setupRoom is the time that a set-up may take where the best took so much: a
+// few times that, for it may pay for many right-hand sides, but beyond the best's
+// own no more than a share of the time that is left.
+func (r Race) setupRoom(best time.Duration) time.Duration {
+	room := time.Duration(setupTimes * float64(best))
+	if r.Left > 0 {
+		room = min(room, max(best, time.Duration(setupShare*r.given*float64(r.Left))))
+	}
+	return max(setupLow, room)
 }
 
 // compared is the race with the times of its trials replaced by what they are
@@ -130,6 +143,8 @@ func (r Race) add(live int, best *trace.History, found bool) []string {
 	switch {
 	case len(r.Trials) >= mostInAll || found && len(r.Trials) >= worthTrying(best.OwnTime):
 		return nil
+	case found && !r.timeFor(live, best):
+		return nil
 	case found && r.spent() > max(atLeast, time.Duration(enough*float64(best.OwnTime))):
 		return nil
 	case !found && live > 0:
@@ -144,6 +159,14 @@ func (r Race) add(live int, best *trace.History, found bool) []string {
 	return r.untried(room)
 }
 
+// timeFor says that the time left is enough for one more trial beside so many
+// live ones, each up to where it has lost, and for running the best again
+// afterwards, which tells more than a trial that is cut by time.
+func (r Race) timeFor(live int, best *trace.History) bool {
+	need := (margin*float64(live+1) + repeats) * best.OwnTime.Seconds()
+	return r.Left <= 0 || r.Left.Seconds()*r.given >= need
+}
+
 // worthTrying is how many trials a race is worth with a best like this.
 func worthTrying(best time.Duration) int {
 	way := float64(best-brief) / float64(long-brief)
@@ -155,7 +178,8 @@ func worthTrying(best time.Duration) int {
 func (r Race) best() (*trace.History, bool) {
 	var best *trace.History
 	for i := range r.Trials {
-		if h := &r.Trials[i]; inDouble(*h) && (best == nil || h.OwnTime < best.OwnTime) {
+		h := &r.Trials[i]
+		if inDouble(*h) && (best == nil || better(h, best)) {
 			best = h
 		}
 	}
@@ -163,6 +187,15 @@ func (r Race) best() (*trace.History, bool) {
 		best = &u // nothing can get further
 	}
 	return best, best != nil
+}
+
+// better says that h is a better end of a race than g: no row is left unsolved
+// where g leaves some, else it took less.
+func better(h, g *trace.History) bool {
+	if (h.UnsolvedRows > 0) != (g.UnsolvedRows > 0) {
+		return g.UnsolvedRows > 0
+	}
+	return h.OwnTime < g.OwnTime
 }
 
 // spent is the own time of all trials.
