@@ -8,10 +8,9 @@ import (
 	"dwindle/engine/trace"
 )
 
-const repeatTimes = 2 // repetitions of a trial
-
 // repeat runs the quickest trials of a race again, where their times are too
-// close for one run to tell them apart and there is time.
+// close for one run to tell them apart and there is time, one run each in turn,
+// so that what slows the machine for a while is shared by all.
 func (s *Session) repeat(b *run.Bench) {
 	trials := b.Trials()
 	for left := s.rerunBudget(); ; {
@@ -23,14 +22,12 @@ func (s *Session) repeat(b *run.Bench) {
 		if i < 0 {
 			return
 		}
-		cost := repeatTimes * histories[i].OwnTime
-		if cost > left {
+		if histories[i].OwnTime > left {
 			trials = slices.Delete(trials, i, i+1) // another may still fit
 			continue
 		}
-		left -= cost
-		b.Repeat(s.ctx, trials[i], repeatTimes)
-		if trials[i].History().Reruns == nil {
+		left -= histories[i].OwnTime
+		if !b.Repeat(s.ctx, trials[i], 1) {
 			return // something else is wanted of the bench
 		}
 	}

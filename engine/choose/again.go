@@ -5,34 +5,43 @@ import "dwindle/engine/trace"
 const (
 	againMost   = 8   // trials of a race that are run again
 	againWithin = 1.5 // times the best's cost: those further off are not
+	againTimes  = 2   // repetitions of each,
+	againBusy   = 4   // on a busy machine
 )
 
-// Again is the place of the trial that is to be run again next: the quickest of
-// those in about the best's time that has not been; -1 where there is none, or
-// nothing comes near the best. What repetitions show counts at once, so that no
-// trial is ahead for good by one lucky run.
+// Again is the place of the trial that is to be run again next: of those in
+// about the best's time the one with the fewest runs, of these the quickest; -1
+// where all have enough, or nothing comes near the best. What repetitions show
+// counts at once, so that no trial is ahead for good by one lucky run.
 func Again(trials []trace.History) int {
 	all := costs(trials)
-	best := -1
+	best, repeated, times := -1, 0, againTimes
 	for i, h := range trials {
-		if reached(h) && (best < 0 || all[i].own < all[best].own) {
+		if inDouble(h) && (best < 0 || all[i].own < all[best].own) {
 			best = i
 		}
+		if len(h.Reruns) > 0 {
+			repeated++
+		}
+		if all[i].cpu {
+			times = againBusy
+		}
 	}
-	next, near, done := -1, 0, 0
+	next, near := -1, 0
 	for i, h := range trials {
-		if !reached(h) || all[i].own > againWithin*all[best].own {
+		if !inDouble(h) || all[i].own > againWithin*all[best].own {
 			continue
 		}
 		near++
-		switch {
-		case h.Reruns != nil:
-			done++
-		case next < 0 || all[i].own < all[next].own:
+		n := len(h.Reruns)
+		if n >= times || n == 0 && repeated >= againMost {
+			continue
+		}
+		if next < 0 || n < len(trials[next].Reruns) || n == len(trials[next].Reruns) && all[i].own < all[next].own {
 			next = i
 		}
 	}
-	if near < 2 || done >= againMost {
+	if near < 2 {
 		return -1
 	}
 	return next

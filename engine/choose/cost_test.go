@@ -2,6 +2,7 @@ package choose
 
 import (
 	"math"
+	"slices"
 	"strings"
 	"testing"
 	"time"
@@ -73,29 +74,55 @@ func TestBusyMachineCountsCPUTime(t *testing.T) {
 	}
 }
 
-// What is run again next is the quickest that has not been, of those near the
-// best; a lucky run is no longer the best once it was repeated.
+// What is run again next has the fewest runs of those near the best, the
+// quickest first; a lucky run is no longer the best once it was repeated.
 func TestWhatIsRunAgain(t *testing.T) {
 	const ms = time.Millisecond
-	lucky, steady, near := trial("cg+none", trace.Converged, 0, 100*ms), trial("cr+none", trace.Converged, 0, 120*ms), trial("minres+none", trace.Converged, 0, 160*ms)
-	trials := []trace.History{steady, lucky, near, trial("gmres:30+none", trace.Outpaced, 0, 50*ms)}
-	if got := Again(trials); got != 1 {
-		t.Fatalf("first %d, want 1", got)
+	own := []time.Duration{120 * ms, 100 * ms, 160 * ms, 50 * ms}
+	again := []time.Duration{120 * ms, 150 * ms, 160 * ms}
+	trials := []trace.History{trial("cr+none", trace.Converged, 0, own[0]), trial("cg+none", trace.Converged, 0, own[1]),
+		trial("minres+none", trace.Converged, 0, own[2]), trial("gmres:30+none", trace.Outpaced, 0, own[3])}
+	var order []int
+	for range 20 {
+		i := Again(trials)
+		if i < 0 {
+			break
+		}
+		order = append(order, i)
+		trials[i].Reruns = append(trials[i].Reruns, trace.Run{Own: again[i]})
 	}
-	trials[1].Reruns = []trace.Run{{Own: 150 * ms}, {Own: 155 * ms}}
-	if got := Again(trials); got != 0 {
-		t.Fatalf("then %d, want 0", got)
-	}
-	trials[0].Reruns = []trace.Run{{Own: 120 * ms}, {Own: 121 * ms}}
-	if got := Again(trials); got != 2 { // 160 ms are not 1.5 times 120 ms
-		t.Fatalf("then %d, want 2", got)
-	}
-	trials[2].Reruns = []trace.Run{{Own: 160 * ms}, {Own: 161 * ms}}
-	if got := Again(trials); got != -1 {
-		t.Errorf("last %d, want none", got)
+	// 160 ms are more than 1.5 times 100 ms, not 120 ms; the lucky one's
+	// lower median is 100 ms until it has run three times.
+	if want := []int{1, 0, 1, 2, 0, 2}; !slices.Equal(order, want) {
+		t.Errorf("run again in the order %v, want %v", order, want)
 	}
 	if got := Again(trials[:1]); got != -1 {
 		t.Errorf("one that nothing comes near is run again: %d", got)
+	}
+}
+
+// No more than some are run again however many are near, and on a busy machine
+// each more often.
+func TestHowOftenIsRunAgain(t *testing.T) {
+	const ms = time.Millisecond
+	for _, c := range []struct {
+		cpu  time.Duration
+		want int
+	}{{0, againMost * againTimes}, {40 * ms, againMost * againBusy}} {
+		var trials []trace.History
+		for range 2 * againMost {
+			h := trial("cg+none", trace.Converged, 0, 100*ms)
+			h.OwnCPU = c.cpu
+			trials = append(trials, h)
+		}
+		n := 0
+		for i := Again(trials); i >= 0; i = Again(trials) {
+			trials[i].Reruns = append(trials[i].Reruns, trace.Run{Own: 100 * ms, OwnCPU: c.cpu})
+			n++
+		}
+		if n != c.want {
+			t.Errorf("%v of the processor: %d repetitions, want %d", c.cpu, n, c.want)
+		}
 	}
 }
 

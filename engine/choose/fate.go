@@ -11,9 +11,10 @@ const fruitless = 3 // preconditioners of a kind that broke down: no more are tr
 
 var (
 	// asTheyCome divide by pivots as they come, each by its own.
-	asTheyCome = []string{"ilu", "ilut", "milu", "ras", "block-jacobi", "schur"}
-	// pivoting exchange columns or rows first.
-	pivoting = []string{"ilutp", "lu", "ldl"}
+	asTheyCome = []string{"ilu", "ilut", "ras", "block-jacobi", "schur"}
+	// otherPivots exchange columns or rows first, or add to the pivots what is
+	// dropped.
+	otherPivots = []string{"ilutp", "lu", "ldl", "milu"}
 )
 
 // fated says that a pairing would break down in its set-up as others have: its
@@ -25,7 +26,7 @@ func (r Race) fated(pairing string) bool {
 	p := split(pairing)
 	kind := asTheyCome
 	if r.Facts.Singular.Answer == inspect.Yes {
-		kind = slices.Concat(asTheyCome, pivoting)
+		kind = slices.Concat(asTheyCome, otherPivots)
 	}
 	broken, any := map[string]bool{}, false
 	explained := r.Facts.Singular.Answer == inspect.Yes || !fullDiagonal(r.Facts)
