@@ -40,7 +40,7 @@ func TestBeyondOneDouble(t *testing.T) {
 		t.Errorf("a race is offered %q", got)
 	}
 	f := said(beyondCase(one, two))["double-precision"]
-	for _, want := range []string{"double precision allows no 1e-08 here: richardson:1+lu solves A to the last bit of its entries, and 1.2e-07 is left",
+	for _, want := range []string{"double precision cannot be counted on for 1e-08 here: richardson:1+lu solves A to the last bit of its entries, and 1.2e-07 is left",
 		"x in two doubles leaves 4e-12, 7.6e-08 once rounded to one"} {
 		if !strings.Contains(f.Claim, want) {
 			t.Errorf("claim %q lacks %q", f.Claim, want)

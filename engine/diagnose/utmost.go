@@ -72,7 +72,7 @@ var precision = Rule{"double-precision", func(c Case) []Finding {
 // double gives; p is what x in two doubles gives, where that is known.
 func beyond(c Case, h, p trace.History, paired bool) Finding {
 	f := Finding{Weight: Blocker, Certainty: inspect.Measured, Subject: OnSystem,
-		Claim: fmt.Sprintf("double precision allows no %.0e here: %s solves A to the last bit of its entries, and %.2g is left",
+		Claim: fmt.Sprintf("double precision cannot be counted on for %.0e here: %s solves A to the last bit of its entries, and %.2g is left",
 			c.Tol, h.Pairing, h.TrueResidual),
 		Advice: fmt.Sprintf("ask for %.1g, or stop by the backward error (--stop backward)", AskFor(h.TrueResidual)),
 		Evidence: []Evidence{{Quantity: "componentwise backward error of " + h.Pairing, Value: h.Componentwise, Iteration: h.Iterations},
@@ -108,7 +108,7 @@ func beyondRounded(c Case, p trace.History) []Finding {
 		return nil
 	}
 	return []Finding{{Weight: Blocker, Certainty: inspect.Measured, Subject: OnSystem,
-		Claim: fmt.Sprintf("double precision allows no %.0e here: %s keeps x in two doubles and leaves %.2g, %.2g once rounded to one",
+		Claim: fmt.Sprintf("double precision cannot be counted on for %.0e here: %s keeps x in two doubles and leaves %.2g, %.2g once rounded to one",
 			c.Tol, p.Pairing, p.TrueResidual, p.Rounded),
 		Advice: fmt.Sprintf("ask for %.1g, or stop by the backward error (--stop backward); for %.0e itself keep x in two doubles",
 			AskFor(byLuck*p.Rounded), c.Tol),
