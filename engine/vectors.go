@@ -5,6 +5,7 @@ import (
 
 	"dwindle/engine/inspect"
 	"dwindle/engine/linear"
+	"dwindle/engine/prepare"
 	"dwindle/engine/report"
 	"dwindle/engine/run"
 	"dwindle/engine/trace"
@@ -27,19 +28,12 @@ func vectors(sys linear.System, d report.Document) []report.Vector {
 			}
 		}
 	}
-	where := "left null space that pattern and sums show"
-	u := unreachable(sys)
-	if f := d.Facts; u == nil && f != nil && f.Study != nil {
-		switch {
-		case f.Symmetric.Answer == inspect.Yes:
-			u, where = along(sys.B, f.Study.Null), "span of the free directions"
-		case f.Unreachable.Answer == inspect.Yes:
-			u, where = along(sys.B, f.Study.Left), "span of the left directions"
+	if f := d.Facts; f != nil && f.Unreachable.Answer == inspect.Yes {
+		sys.Null, sys.LeftNull = inspect.ZeroDirections(f), inspect.LeftDirections(f)
+		if u := unreachable(sys); u != nil {
+			out = append(out, report.Vector{Name: "unreachable", Values: u, Comment: fmt.Sprintf(
+				"part of b that no x can reach, in the left null space as far as it is known: %.6g of the norm of b", linear.Norm2(u)/linear.Norm2(sys.B))})
 		}
-	}
-	if u != nil {
-		out = append(out, report.Vector{Name: "unreachable", Values: u, Comment: fmt.Sprintf(
-			"part of b that no x can reach, in the %s: %.6g of the norm of b", where, linear.Norm2(u)/linear.Norm2(sys.B))})
 	}
 	for _, t := range d.Trials {
 		if v := t.Vectors[run.CurvatureVector]; v != nil {
@@ -79,61 +73,11 @@ func leftVector(k int, v inspect.NullDirection) report.Vector {
 		"direction y %d that the transpose of A maps to zero: to %.3g of its size after equilibration; what b has along it no x can reach", k, v.Quotient)}
 }
 
-// unreachable is the part of b in the left null space that pattern and sums
-// show; nil where it is no more than rounding.
+// unreachable is the part of b in the left null space that the sums of A and
+// the vectors of the system show; nil where it is no more than rounding.
 func unreachable(s linear.System) []float64 {
-	if s.A == nil {
-		return nil
-	}
-	m := s.Matrix()
-	if m == nil || len(s.B) != m.NRows {
-		return nil
-	}
-	at := m
-	if !m.ExactlySymmetric() {
-		at = m.Transpose()
-	}
-	null := linear.LeftNull(m, at, linear.FindComponents(m), s.Delta())
-	if len(null.Size) == 0 {
-		return nil
-	}
-	p := make([]float64, len(s.B))
-	null.Project(p, s.B)
-	linear.Lin(p, 1, s.B, -1, p)
-	if linear.Norm2(p) <= 1e-12*linear.Norm2(s.B) {
-		return nil
-	}
-	return p
-}
-
-// freeToRounding is the quotient of a free direction up to which rounding
-// hides any answer of A.
-const freeToRounding = 1e-13
-
-// along projects b onto the free directions of a symmetric A; nil where there
-// is none or it is no more than rounding.
-func along(b []float64, free []inspect.NullDirection) []float64 {
-	var basis [][]float64 // orthonormal
-	part := make([]float64, len(b))
-	for _, d := range free {
-		if d.Quotient > freeToRounding || len(d.Vector) != len(b) {
-			continue
-		}
-		v := append([]float64{}, d.Vector...)
-		for range 2 { // twice is enough (Kahan, in Parlett 1980)
-			for _, q := range basis {
-				linear.Lin(v, 1, v, -linear.Dot(q, v), q)
-			}
-		}
-		size := linear.Norm2(v)
-		if size <= 1e-8*linear.Norm2(d.Vector) {
-			continue // within the others
-		}
-		linear.Lin(v, 1/size, v, 0, v)
-		basis = append(basis, v)
-		linear.Lin(part, 1, part, linear.Dot(v, b), v)
-	}
-	if linear.Norm2(part) <= 1e-10*linear.Norm2(b) {
+	part, _ := prepare.OutOfReach(s)
+	if part == nil || linear.Norm2(part) <= 1e-12*linear.Norm2(s.B) {
 		return nil
 	}
 	return part

@@ -67,7 +67,7 @@ func (m *model) conditionLines(f *inspect.Facts, w int) []string {
 	s := f.Study
 	for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
 		if x != nil {
-			lines = append(lines, clip(m.conditionRow(x), w))
+			lines = append(lines, clip(m.conditionRow(x, f), w))
 		}
 	}
 	if len(lines) == 1 {
@@ -89,7 +89,7 @@ func valuesWord(f *inspect.Facts) string {
 }
 
 // conditionRow is one operator of the table.
-func (m *model) conditionRow(x *inspect.Spectrum) string {
+func (m *model) conditionRow(x *inspect.Spectrum, f *inspect.Facts) string {
 	how := fmt.Sprintf("%s, %s", x.Certainty, x.How)
 	if x.Norm == "1" {
 		how += ", 1-norm"
@@ -100,7 +100,8 @@ func (m *model) conditionRow(x *inspect.Spectrum) string {
 	if x.Negative > 0 {
 		how += fmt.Sprintf(", %d < 0", x.Negative)
 	}
-	return left(m.signs.clean(x.Of), 25) + right(sci(x.Smallest), 10) + right(sci(x.Largest), 10) + right(sci(x.Condition), 11) + "  " + m.signs.clean(how)
+	low, _ := f.LowEnd(*x)
+	return left(m.signs.clean(x.Of), 25) + right(sci(low), 10) + right(sci(x.Largest), 10) + right(sci(x.Condition), 11) + "  " + m.signs.clean(how)
 }
 
 // picture is the picture of the picked trial's Ritz values, or of A's
@@ -169,6 +170,9 @@ func deepWords(h *trace.History) string {
 	return fmt.Sprintf("about %d its lost to rounding (lost orthogonality), estimated", h.Delay)
 }
 
+// mostFree is how many free directions are shown.
+const mostFree = 8
+
 // normalityLines tells how far the eigenvalues of a nonsymmetric A can be
 // trusted, and which directions are nearly free.
 func (m *model) normalityLines(f *inspect.Facts, w int) []string {
@@ -191,7 +195,7 @@ func (m *model) normalityLines(f *inspect.Facts, w int) []string {
 		}
 		texts = append(texts, text)
 	}
-	for _, d := range f.Study.Null {
+	for _, d := range f.Study.Null[:min(mostFree, len(f.Study.Null))] {
 		text := fmt.Sprintf("a nearly free direction: ||Av|| is %s of ||A|| ||v|| (next %s), 99 %% of it in %d rows", sci(d.Quotient), sci(d.Next), d.Support)
 		texts = append(texts, withRows(text, d.Rows, f))
 	}

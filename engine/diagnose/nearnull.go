@@ -44,7 +44,11 @@ func (c Case) singularToRounding(g *Finding) {
 	free := f.Study.Null
 	g.Weight, g.Certainty = Blocker, inspect.Measured
 	g.Claim = "A is singular to rounding: " + g.Claim
-	if rows, share := localRows(mostLocal(free)); share >= 0.5 {
+	there := "this direction"
+	if where := c.level(free); where != "" {
+		g.Claim, there = g.Claim+"; "+where, "a constant there"
+		g.Evidence[0].Rows = nil
+	} else if rows, share := localRows(mostLocal(free)); share >= 0.5 {
 		g.Claim += fmt.Sprintf("; %.0f %% of it in the unknowns of %s", 100*share, c.list(rows, 6))
 	}
 	g.Advice = "find out which equation repeats others, or which unknown nothing determines; b may be out of reach"
@@ -56,14 +60,22 @@ func (c Case) singularToRounding(g *Finding) {
 	}
 	symmetric := f.Symmetric.Answer == inspect.Yes
 	switch u := f.Unreachable; {
-	case symmetric:
-		g.Try = []string{"minres+none"}
 	case u.Answer == inspect.Yes:
 		g.Advice = "find out which equation repeats others, or which unknown nothing determines; until then solve for the part of b that is in reach"
 		g.Try = []string{"project/gmres:30+none"}
+		if symmetric {
+			g.Try = []string{"minres+none"}
+		}
+	case u.Answer == inspect.No && symmetric:
+		g.Weight = Note
+		g.Claim += "; b is consistent, so that x is known up to " + there
+		g.Advice = "methods of Krylov spaces find one answer as A stands; fix x in one row of it to name it"
+		g.Try = []string{"minres+none"}
 	case u.Answer == inspect.No:
 		g.Advice = "find out which equation repeats others, or which unknown nothing determines; b is consistent all the same, so that answers exist, up to this direction"
 		g.Try = []string{"gmres:30+none"}
+	case symmetric:
+		g.Try = []string{"minres+none"}
 	}
 	g.Advice += openDigits(f, free[0].Quotient)
 }
@@ -73,6 +85,14 @@ func (c Case) singularToRounding(g *Finding) {
 func measuredDigits(c Case) string {
 	if h, ok := Utmost(c.Facts, c.Trials); ok && Right(h) != "" {
 		return fmt.Sprintf(" (for this b, x of %s was found %s)", h.Pairing, Right(h))
+	}
+	return ""
+}
+
+// level tells where the one direction that is free to rounding is one number.
+func (c Case) level(free []inspect.NullDirection) string {
+	if l := free[0].Level; zeros(free) == 1 && l != nil {
+		return "constant on " + l.Text(c.Facts.Names)
 	}
 	return ""
 }

@@ -20,8 +20,11 @@ var unreachable = Rule{"unreachable-rhs", func(c Case) []Finding {
 		Advice:   "fix one unknown, make b consistent, or solve for its reachable part",
 		Try:      []string{"minres+none", "project/cg+jacobi"},
 		Evidence: []Evidence{{Quantity: "unreachable part of b", Value: u.Value, Unit: "of ||b||", Iteration: none, Rows: u.Rows}}}
-	if c.Facts.Symmetric.Answer != inspect.Yes {
+	switch f := c.Facts; {
+	case f.Symmetric.Answer != inspect.Yes:
 		g.Try = []string{"project/gmres:30+none"}
+	case f.NegativeCount.Answer == inspect.Yes || f.DiagNegative+f.DiagZero+f.DiagMissing > 0 || f.Study != nil && f.Study.More:
+		g.Try = []string{"minres+none"} // cg is none for it, or would run off along what project does not know
 	}
 	if left := leftOf(c.Facts); len(left) > 0 && c.Facts.ColSumsZero.Answer != inspect.Yes {
 		where, rows := c.equations(left)

@@ -23,26 +23,49 @@ var studyRules = []string{"mechanism", "near-null", "singleton-rows", "row-repla
 // told returns what these rules say of a system, with b = 1 where it has none.
 func told(t *testing.T, s linear.System) map[string]diagnose.Finding {
 	t.Helper()
-	if s.B == nil {
-		s.B = make([]float64, s.N())
-		for i := range s.B {
-			s.B[i] = 1
-		}
-	}
-	f, err := inspect.Inspect(context.Background(), s, nil)
-	if err != nil {
-		t.Fatal(err)
-	}
-	if f, err = inspect.Examine(context.Background(), s, f, inspect.Quick, nil); err != nil {
-		t.Fatal(err)
-	}
 	out := map[string]diagnose.Finding{}
-	for _, g := range diagnose.Judge(diagnose.Case{Facts: f, Tol: 1e-8}) {
+	for _, g := range judged(t, s) {
 		if slices.Contains(studyRules, g.Rule) {
 			out[g.Rule] = g
 		}
 	}
 	return out
+}
+
+// judged returns what all rules say of it after the second look.
+func judged(t *testing.T, s linear.System) []diagnose.Finding {
+	t.Helper()
+	f := first(t, s)
+	if s.B == nil {
+		s.B = unit(s.N())
+	}
+	f, err := inspect.Examine(context.Background(), s, f, inspect.Quick, nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return diagnose.Judge(diagnose.Case{Facts: f, Tol: 1e-8})
+}
+
+// first returns the facts of the first look.
+func first(t *testing.T, s linear.System) *inspect.Facts {
+	t.Helper()
+	if s.B == nil {
+		s.B = unit(s.N())
+	}
+	f, err := inspect.Inspect(context.Background(), s, nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return f
+}
+
+// unit is b = 1.
+func unit(n int) []float64 {
+	b := make([]float64, n)
+	for i := range b {
+		b[i] = 1
+	}
+	return b
 }
 
 // only fails unless exactly the rules listed have spoken.

@@ -18,13 +18,8 @@ var zeroDiagonal = Rule{"zero-diagonal", func(c Case) []Finding {
 	g := Finding{Weight: Note, Certainty: inspect.Proved, Subject: OnSystem,
 		Claim: fmt.Sprintf("%d of %d diagonal entries are zero (%s): jacobi, ssor, ic and ilu:0 cannot be built as A stands",
 			zeros, f.N, c.list(f.DiagZeroRows, 3)),
-		Advice:   "factorise with pivoting, incompletely after scaling (ilutp) or completely (lu)",
-		Try:      []string{"scale/gmres:30+ilutp:1e-3,10,0.1", "richardson:1+lu"},
 		Evidence: []Evidence{{Quantity: "zero diagonal entries", Value: float64(zeros), Unit: fmt.Sprintf("of %d", f.N), Iteration: none, Rows: f.DiagZeroRows}}}
-	if f.Symmetric.Answer == inspect.Yes && f.DiagZero+f.DiagMissing < f.N {
-		g.Advice = "treat it as a saddle system by blocks (minres with schur), or factorise with pivots of order 1 and 2 (ldl)"
-		g.Try = []string{"minres+schur:diagonal,incomplete", "richardson:1+ldl"}
-	}
+	c.aroundZeros(&g, f.Symmetric.Answer == inspect.Yes && zeros < f.N)
 	_, answered := quickest(c)
 	for _, h := range c.Trials {
 		if c.Race && answered && !h.Today {
@@ -36,3 +31,20 @@ var zeroDiagonal = Rule{"zero-diagonal", func(c Case) []Finding {
 	}
 	return []Finding{g}
 }}
+
+// aroundZeros tells what goes without a full diagonal: of a saddle system its
+// blocks, of another one pivoting. A complete factorisation is not offered of a
+// singular A, nor where it has broken down.
+func (c Case) aroundZeros(g *Finding, saddle bool) {
+	part, whole, direct := "factorise with pivoting, incompletely after scaling (ilutp)", " or completely (lu)", "richardson:1+lu"
+	g.Try = []string{"scale/gmres:30+ilutp:1e-3,10,0.1"}
+	if saddle {
+		part, whole, direct = "treat it as a saddle system by blocks (minres with schur)", ", or factorise with pivots of order 1 and 2 (ldl)", "richardson:1+ldl"
+		g.Try = []string{"minres+schur:diagonal,incomplete"}
+	}
+	g.Advice = part
+	if c.Facts.Singular.Answer != inspect.Yes && !unbuilt(c, direct) {
+		g.Advice += whole
+		g.Try = append(g.Try, direct)
+	}
+}

@@ -52,6 +52,7 @@ func (l *look) countSigns() error {
 	case err != nil:
 		return err
 	default:
+		f.ZeroPivots = n.Zero
 		f.NegativeCount = fact(No, Measured, float64(n.Negative), nil, "LDL' has %d negative, %d positive pivots, %d zero to rounding",
 			n.Negative, n.Positive, n.Zero)
 		if n.Negative > 0 {

@@ -86,6 +86,8 @@ type exam struct {
 	replaced []bool               // rows of the identity whose columns are not; nil: none
 	half     *direct.Definiteness // of (A+Aᵀ)/2; nil: not looked at
 	free     [][]float64          // nearly free directions of B, orthonormal
+	parts    *linear.Components   // of A; nil: not yet asked for
+	reach    *reach               // of a symmetric A; nil: not looked for
 	fromLeft [][]float64          // those of Bᵀ to the same singular values, where they were found densely
 }
 

@@ -85,6 +85,7 @@ func (e *exam) factorSymmetric() error {
 		}
 	}
 	b := e.scaled
+	e.out.ZeroPivots = e.f.ZeroPivots
 	if e.f.SingularAtSight() { // no need to try
 		e.singular, e.shift = true, tinyShift
 		b = plusIdentity(e.scaled, e.shift)
@@ -94,6 +95,7 @@ func (e *exam) factorSymmetric() error {
 		return err
 	}
 	if f.Inertia.Zero > 0 && e.shift == 0 {
+		e.out.ZeroPivots = f.Inertia.Zero
 		e.singular, e.shift = true, tinyShift
 		if f, err = direct.FactorLDL(e.ctx, plusIdentity(e.scaled, e.shift), sym, nil); err != nil {
 			return err

@@ -101,6 +101,7 @@ type Facts struct {
 	PositiveDefinite Fact
 	NegativeDefinite Fact // −A is positive definite: the opposite sign convention
 	NegativeCount    Fact // whether A has negative eigenvalues; Value is how many, by LDLᵀ
+	ZeroPivots       int  // pivots of LDLᵀ that vanish to rounding; 0 too where it was not computed
 	Semidefinite     Fact // xᵀA x ≥ 0 for every x; no: some x has negative curvature
 	SymmetricPart    Fact // of an A that is not symmetric: whether (A+Aᵀ)/2 is positive definite; Value is its smallest eigenvalue
 	RowSumsZero      Fact // constants (per component) are null vectors of A

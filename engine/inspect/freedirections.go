@@ -28,11 +28,13 @@ func (e *exam) freeDirections() error {
 	norm := e.scaledNorm()
 	quotients := e.rigidMotions(norm)
 	rigid := len(quotients)
+	e.searchZero(norm, &quotients)
+	sure := len(quotients)
 	next, err := e.searchFree(norm, &quotients)
 	if err != nil {
 		return err
 	}
-	k := apart(append(quotients, next), rigid)
+	k := apart(append(quotients, next), sure)
 	zero := rigid // those beyond are free, but not to rounding: one is not mixed with the other
 	for zero < k && quotients[zero] <= ZeroLimit {
 		zero++
@@ -52,6 +54,7 @@ func (e *exam) freeDirections() error {
 		}
 		e.out.Null = append(e.out.Null, d)
 	}
+	e.measureReach(finite(next))
 	return e.leftDirections(norm)
 }
 
@@ -93,18 +96,25 @@ func (e *exam) searchFree(norm float64, quotients *[]float64) (next float64, err
 	if e.solver == nil {
 		return e.denseFree(norm, quotients), nil
 	}
-	for len(e.free) < mostFree {
+	sure := len(e.free)
+	if mostZero <= sure && sure < e.out.ZeroPivots {
+		return math.NaN(), nil // the next is free as well
+	}
+	for len(e.free) < sure+mostFree {
 		v, err := e.mostStretched()
 		if err != nil || v == nil {
 			return math.NaN(), err
 		}
 		q := e.quotient(v, norm)
-		if q <= freeLimit && e.shift != 0 && !e.symmetric {
+		if q <= freeLimit && e.shift != 0 {
 			v = e.unshifted(v, e.free, e.solver.Solve)
 			q = e.quotient(v, norm)
 		}
 		if q > freeLimit {
 			return q, nil
+		}
+		if q <= ZeroLimit && sure >= mostZero {
+			return math.NaN(), nil
 		}
 		if q > ZeroLimit && e.singular && !e.symmetric && len(e.free) == 0 && e.f.N <= e.budget.Dense {
 			e.solver = nil // a zero eigenvalue that is defective: the shift hides its direction
@@ -164,68 +174,15 @@ func (e *exam) mostStretched() ([]float64, error) {
 func (e *exam) searchWork() float64 { return freeSteps * (2*e.solveWork() + 100*float64(e.f.N)) }
 
 // apart returns how many of the directions stand apart: up to the last at
-// which the quotients grow at least isolated-fold, and of those found as rigid
-// motions all.
-func apart(quotients []float64, rigid int) int {
-	for k := len(quotients) - 1; k > rigid; k-- {
+// which the quotients grow at least isolated-fold, and of those found first, as
+// rigid motions or as mapped to zero, all.
+func apart(quotients []float64, sure int) int {
+	for k := len(quotients) - 1; k > sure; k-- {
 		if quotients[k]/max(quotients[k-1], 1e-16) >= isolated {
 			return k
 		}
 	}
-	return rigid
-}
-
-// localise turns an orthonormal basis, from its member start on, into one whose
-// members each take all that the span has in one row, the largest first: what
-// is free at one place is told apart from what is free at another.
-func localise(v [][]float64, start int) [][]float64 {
-	out := append([][]float64(nil), v[:start]...)
-	rest := append([][]float64(nil), v[start:]...)
-	for len(rest) > 1 {
-		row, most := 0, -1.0
-		for i := range rest[0] {
-			s := 0.0
-			for _, x := range rest {
-				s += x[i] * x[i]
-			}
-			if s > most*(1+1e-9) {
-				row, most = i, s
-			}
-		}
-		w := make([]float64, len(rest[0]))
-		for _, x := range rest {
-			linear.Axpy(x[row]/math.Sqrt(most), x, w)
-		}
-		out = append(out, w)
-		rest = without(rest, w, row)
-	}
-	return append(out, rest...)
-}
-
-// without returns a basis of the span of v beside w, a member of it: all but
-// the vector nearest to w, made orthogonal to it.
-func without(v [][]float64, w []float64, row int) [][]float64 {
-	nearest := 0
-	for k := range v {
-		if math.Abs(v[k][row]) > math.Abs(v[nearest][row]) {
-			nearest = k
-		}
-	}
-	basis := [][]float64{w}
-	for k, x := range v {
-		if k == nearest {
-			continue
-		}
-		y := append([]float64(nil), x...)
-		for range 2 {
-			for _, b := range basis {
-				linear.Axpy(-linear.Dot(b, y), b, y)
-			}
-		}
-		linear.Scale(y, 1/max(linear.Norm2(y), tinyDivide), y)
-		basis = append(basis, y)
-	}
-	return basis[1:]
+	return sure
 }
 
 // direction describes one, v of unit length in the equilibrated units; scale
@@ -247,6 +204,14 @@ func (e *exam) direction(v, scale []float64, quotient float64) NullDirection {
 		d.Vector[i] = scale[i] * x
 	}
 	linear.Scale(d.Vector, 1/max(linear.Norm2(d.Vector), tinyDivide), d.Vector)
+	d.Level = e.levelOf(d.Vector)
+	if e.parts == nil {
+		e.parts = linear.FindComponents(e.a)
+	}
+	if len(d.Rows) > 0 {
+		d.Part = int(e.parts.Of[d.Rows[0]])
+		d.PartRows = int(e.parts.Size[d.Part])
+	}
 	return d
 }
 

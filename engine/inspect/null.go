@@ -2,6 +2,7 @@ package inspect
 
 import (
 	"math"
+	"slices"
 
 	"dwindle/engine/linear"
 )
@@ -118,7 +119,9 @@ func (l *look) singular(missing defect) Fact {
 	return unknown("no null vector is seen in the pattern or in the sums")
 }
 
-// unreachable measures the part of b that lies in the left null space seen.
+// unreachable measures the part of b that lies in the left null space seen. It
+// is left open, with that part as its value, where b has none and A may have
+// null vectors that are not seen.
 func (l *look) unreachable() Fact {
 	f, b := &l.f, l.s.B
 	switch {
@@ -157,7 +160,36 @@ func (l *look) part(null *linear.NullSpace, b []float64) Fact {
 	case all > tiny:
 		return fact(Yes, Measured, all, rows, "%.6g of b lies in the left null space, which is known to rounding or to the digits of the file", all)
 	}
+	if !l.noOther() {
+		f := unknown("b is consistent to rounding with the null vectors seen; whether A has others is open")
+		f.Value = all
+		return f
+	}
 	return fact(No, Measured, all, nil, "b is consistent to rounding with the null vectors seen")
+}
+
+// noOther says whether a symmetric A can have no null vector beside those that
+// its sums show: each row is dominant to rounding, so that an irreducible part
+// lacks one rank at most, and none where a row of it is strictly dominant
+// (Taussky, Amer. Math. Monthly 56, 1949). An A that is not symmetric is left
+// to the second look.
+func (l *look) noOther() bool {
+	if l.f.Symmetric.Answer != Yes {
+		return true
+	}
+	held := make([]bool, l.parts.Count)
+	for k, z := range l.parts.RowSums(l.a, l.delta) {
+		held[k] = z != linear.NotZero
+	}
+	for i, g := range l.flags {
+		if g&near == 0 {
+			return false
+		}
+		if g&strict != 0 {
+			held[l.parts.Of[i]] = true
+		}
+	}
+	return !slices.Contains(held, false)
 }
 
 // outside names rows of the null vectors with the largest share.

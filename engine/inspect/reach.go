@@ -1,9 +1,11 @@
 package inspect
 
 import (
+	"fmt"
 	"math"
 
 	"dwindle/engine/linear"
+	"dwindle/engine/prepare"
 )
 
 const (
@@ -22,6 +24,33 @@ const (
 	blurred = 1e-6
 )
 
+// measureReach measures the part of b in all that is known of the null space
+// of a symmetric A: what its sums show, and the directions that are free to
+// rounding. ended says that the search for these came to its end.
+func (e *exam) measureReach(ended bool) {
+	if !e.symmetric {
+		return
+	}
+	s := e.s
+	s.Null = nil
+	for _, d := range e.freeToRounding() {
+		s.Null = append(s.Null, d.Vector)
+	}
+	part, dimension := prepare.OutOfReach(s)
+	e.reach = &reach{all: ended || e.out.ZeroPivots > 0 && dimension >= e.out.ZeroPivots}
+	if part != nil {
+		e.reach.part = linear.Norm2(part) / max(e.f.RHSNorm, tinyDivide)
+	}
+	e.out.Nullity, e.out.More = dimension, len(s.Null) > 0 && !e.reach.all
+}
+
+// reach is the part of b, relative to it, in the null space of a symmetric A as
+// far as that is known, and whether all of it is.
+type reach struct {
+	part float64
+	all  bool
+}
+
 // settleUnreachable: b is in A's range where A is regular, of a symmetric A
 // where b is orthogonal to all that is free, and of another one where it is
 // orthogonal to the left directions.
@@ -29,8 +58,10 @@ func (e *exam) settleUnreachable(f *Facts) {
 	if len(e.s.B) != f.N || !(f.RHSNorm > 0) {
 		return
 	}
-	u, free := &f.Unreachable, e.freeToRounding()
+	u := &f.Unreachable
 	switch {
+	case e.symmetric:
+		e.settleBySymmetry(f)
 	case u.Answer == No && u.Certainty == Measured && len(e.out.Left) > int(max(0, f.ColSumsZero.Value)):
 		if more := e.unreachableByLeft(); more.Answer == Yes { // the sums do not show all of them
 			*u = more
@@ -38,22 +69,41 @@ func (e *exam) settleUnreachable(f *Facts) {
 	case u.Answer != Unknown:
 	case f.Singular.Answer == No:
 		*u = fact(No, f.Singular.Certainty, 0, nil, "A is regular")
-	case !e.symmetric && f.Singular.Answer == Yes:
+	case f.Singular.Answer == Yes:
 		*u = e.unreachableByLeft()
-	case !e.symmetric || len(free) == 0 || len(free) == mostFree:
-	default:
-		*u = e.unreachableBy(free)
 	}
 }
 
-// unreachableBy measures the part of b in the span of the free directions of a
-// symmetric A.
-func (e *exam) unreachableBy(free []NullDirection) Fact {
-	part, what := e.along(free), count(len(free), "direction", "directions")
-	if part > pushes {
-		return fact(Yes, Measured, part, free[0].Rows, "%.6g of b lies along %s, free to rounding", part, what)
+// settleBySymmetry does so where A is symmetric. What the sums alone have shown
+// to be out of reach is enlarged by what the free directions add.
+func (e *exam) settleBySymmetry(f *Facts) {
+	u, r, free := &f.Unreachable, e.reach, e.freeToRounding()
+	if u.Answer == Unknown && f.Singular.Answer == No {
+		*u = fact(No, f.Singular.Certainty, 0, nil, "A is regular")
 	}
-	return fact(No, Measured, part, nil, "%.1g of b lies along %s, free to rounding", part, what)
+	if r == nil || len(free) == 0 || u.Answer == No {
+		return
+	}
+	what := count(e.out.Nullity, "direction", "directions") + ", free to rounding"
+	if !r.all {
+		what += fmt.Sprintf("; %s", e.others())
+	}
+	switch {
+	case r.part > max(pushes, clearly*e.slackOf(free)) && !(u.Answer == Yes && r.part <= u.Value*(1+1e-6)):
+		*u = fact(Yes, Measured, r.part, free[0].Rows, "%.6g of b lies along %s", r.part, what)
+	case u.Answer == Unknown && r.all:
+		*u = fact(No, Measured, r.part, nil, "%.1g of b lies along %s", r.part, what)
+	case u.Answer == Unknown:
+		u.Why = fmt.Sprintf("%.1g of b lies along %s", r.part, what)
+	}
+}
+
+// others says that more is free than was found.
+func (e *exam) others() string {
+	if n := e.out.ZeroPivots; n > 0 {
+		return fmt.Sprintf("there are more: LDL' leaves %d pivots zero to rounding", n)
+	}
+	return "there may be more"
 }
 
 // along is the norm of the part of b in the span of directions, relative to
@@ -101,7 +151,8 @@ func (e *exam) unreachableByLeft() Fact {
 // slackOf bounds the error in the part of b along left directions: they are
 // known, in equilibrated units, to their residual over the gap (Davis and Kahan,
 // SIAM J. Numer. Anal. 7, 1970), and scaling back may enlarge that by as much as
-// it enlarges b over the direction itself. NaN where the gap is not known.
+// it enlarges b over the direction itself. Where the gap is not known it is NaN,
+// and of a symmetric A held to be no less than what is nearly free.
 func (e *exam) slackOf(left []NullDirection) float64 {
 	scaled := make([]float64, e.f.N)
 	for i, x := range e.s.B {
@@ -112,7 +163,11 @@ func (e *exam) slackOf(left []NullDirection) float64 {
 		for i, x := range d.Vector {
 			scaled[i] = x / e.row[i]
 		}
-		angle := max(d.Quotient, ownRounding*0x1p-53) / d.Next
+		gap := d.Next
+		if e.symmetric && !finite(gap) {
+			gap = freeLimit
+		}
+		angle := max(d.Quotient, ownRounding*0x1p-53) / gap
 		sum += angle * size * linear.Norm2(scaled)
 	}
 	return sum

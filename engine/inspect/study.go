@@ -10,10 +10,18 @@ type Study struct {
 	// rows ("A without singleton rows").
 	Raw, Equilibrated, Jacobi, Rest *Spectrum
 
-	Null      []NullDirection // nearly free directions, the freest first
-	Left      []NullDirection // of a nonsymmetric A: as many that Aᵀ maps to zero as A does, to rounding
-	Normality *Normality      // of a nonsymmetric A
-	Density   []Bin           // of the eigenvalues of a symmetric A
+	Null []NullDirection // nearly free directions, the freest first
+	Left []NullDirection // of a nonsymmetric A: as many that Aᵀ maps to zero as A does, to rounding
+	// Of a symmetric A. More: the search for what it maps to zero ended before
+	// all was found: Null and the sums show a part of it, of the dimension
+	// Nullity. ZeroPivots are those of LDLᵀ that vanish to rounding; 0 too where
+	// A was not factorised without a shift.
+	More       bool
+	Nullity    int
+	ZeroPivots int
+
+	Normality *Normality // of a nonsymmetric A
+	Density   []Bin      // of the eigenvalues of a symmetric A
 	Couplings *Couplings
 	Block     *Block // a repeating block proposed from the pattern
 	Lines     []LineRows
@@ -54,7 +62,18 @@ type NullDirection struct {
 	Load     float64   // |vᵀb|/(‖v‖‖b‖) of a left one, or of a symmetric A: the part of b that pushes along it; NaN
 	Rounding float64   // of a left one: ‖vᵀA‖ over 2⁻⁵³ ‖|v|ᵀ|A|‖, after equilibration: up to a few, rounding A's entries alone accounts for it
 	Support  int       // rows that carry 99 % of it
+	Part     int       // the connected part of A, from 0, that most of it lies in
+	PartRows int       // rows of that part
+	Level    *Level    // where it is one number; nil if it is none such
 	Vector   []float64 `json:"-"` // length n, in the user's units
+}
+
+// Level says that a direction, in the user's units, is one number on some rows
+// and zero on all others.
+type Level struct {
+	Count        int
+	First, Last  int  // row; all between belong to it where Last−First+1 is Count
+	ZeroDiagonal bool // they are the rows with a zero on the diagonal
 }
 
 // Normality says how far the eigenvalues of A can be trusted.

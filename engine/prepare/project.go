@@ -4,7 +4,6 @@ import (
 	"context"
 	"errors"
 	"math"
-	"slices"
 
 	"dwindle/engine/linear"
 )
@@ -41,18 +40,12 @@ func applyProject(ctx context.Context, s linear.System, _ linear.Values) (linear
 	if a == nil {
 		return s, nil, errors.New("project needs the entries of the matrix")
 	}
-	at := a
-	if !a.ExactlySymmetric() {
-		at = a.Transpose()
-	}
-	null := linear.LeftNull(a, at, linear.FindComponents(a), s.Delta())
-	found := beside(null, at, slices.Concat(s.Null, s.LeftNull))
-	if len(null.Size)+len(found) == 0 {
+	null := knownNullOf(s, a)
+	if null.order() == 0 {
 		return s, nil, errors.New("project knows no null vector: no component of the matrix has columns that all sum to zero, no row is empty, and factorising has shown none")
 	}
 	b := make([]float64, len(s.B))
-	null.Project(b, s.B)
-	remove(b, found)
+	null.project(b, s.B)
 	s.B = b
 	return s, same{}, ctx.Err()
 }

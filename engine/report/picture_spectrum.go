@@ -27,7 +27,7 @@ func strips(d Document) []strip {
 		s := d.Facts.Study
 		for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
 			if x != nil && finite(x.Smallest) && finite(x.Largest) {
-				out = append(out, strip{valuesOf(d.Facts) + " of " + spectrumLabel(*x), x.Smallest, x.Largest, knownValues(*x, d.Facts), inkText})
+				out = append(out, strip{valuesOf(d.Facts) + " of " + spectrumLabel(*x, d.Facts), x.Smallest, x.Largest, knownValues(*x, d.Facts), inkText})
 			}
 		}
 	}
@@ -55,8 +55,9 @@ func harmonicStrip(i int, t trace.History) (strip, bool) {
 	return s, len(s.ticks) > 0 && !offAxis(t.Harmonic)
 }
 
-func spectrumLabel(x inspect.Spectrum) string {
-	s := fmt.Sprintf("%s: %s to %s", plain(x.Of), short(x.Smallest), short(x.Largest))
+func spectrumLabel(x inspect.Spectrum, f *inspect.Facts) string {
+	low, _ := f.LowEnd(x)
+	s := fmt.Sprintf("%s: %s to %s", plain(x.Of), short(low), short(x.Largest))
 	if finite(x.Condition) && x.Condition > 0 {
 		s += ", condition " + short(x.Condition)
 	}

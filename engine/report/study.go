@@ -26,15 +26,16 @@ func studyItems(f *inspect.Facts) []labelled {
 	}
 	for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
 		if x != nil {
-			add(valuesOf(f), spectrumText(*x, f.Singular.Answer == inspect.Yes))
+			add(valuesOf(f), spectrumText(*x, f))
 		}
 	}
 	if finite(s.Digits) && (s.Digits != 0 || s.Raw != nil) {
 		add("digits of x", fmt.Sprintf("about %.0f correct decimal digits to expect, from the condition after equilibration", max(s.Digits, 0)))
 	}
-	for _, v := range s.Null {
+	for _, v := range s.Null[:min(mostTold, len(s.Null))] {
 		add("free direction", "A maps it to "+nullText(v, f))
 	}
+	add("free directions", moreText(s))
 	for _, v := range s.Left {
 		add("left direction", "A^T maps it to "+nullText(v, f))
 	}
@@ -69,8 +70,8 @@ func valuesOf(f *inspect.Facts) string {
 
 // spectrumText tells a spectrum; of an A known to be singular, what is as good
 // as zero is told as that.
-func spectrumText(x inspect.Spectrum, singular bool) string {
-	s := fmt.Sprintf("of %s: %s to %s", x.Of, lowText(x, singular), short(x.Largest))
+func spectrumText(x inspect.Spectrum, f *inspect.Facts) string {
+	s := fmt.Sprintf("of %s: %s to %s", x.Of, lowText(x, f), short(x.Largest))
 	if next := nextLow(x); x.Zeros > 0 && next > 0 {
 		s += fmt.Sprintf(", condition beside the zero %s", short(x.Largest/next))
 	}
@@ -102,14 +103,14 @@ func spectrumText(x inspect.Spectrum, singular bool) string {
 
 // lowText tells the low end of a spectrum: zero where it is known or as good as
 // that, and what comes next.
-func lowText(x inspect.Spectrum, singular bool) string {
+func lowText(x inspect.Spectrum, f *inspect.Facts) string {
 	low := ""
-	switch {
+	switch _, rounded := f.LowEnd(x); {
 	case x.Zeros == 1:
 		low = "0 (proved)"
 	case x.Zeros > 1:
 		low = fmt.Sprintf("%d times 0 (proved)", x.Zeros)
-	case singular && x.Exact && math.Abs(x.Smallest) <= x.SmallestBound:
+	case rounded:
 		low = "0 (to rounding)"
 	default:
 		return short(x.Smallest)
@@ -131,6 +132,22 @@ func nextLow(x inspect.Spectrum) float64 {
 	return math.NaN()
 }
 
+// mostTold is how many free directions are told one by one.
+const mostTold = 8
+
+// moreText counts the free directions where not each is told.
+func moreText(s *inspect.Study) string {
+	switch k := s.Nullity; {
+	case s.More && s.ZeroPivots > k:
+		return fmt.Sprintf("%d found, and more are there: LDL' leaves %d pivots zero to rounding", k, s.ZeroPivots)
+	case s.More:
+		return fmt.Sprintf("%d found, and more may be there", k)
+	case k > mostTold && len(s.Null) > mostTold:
+		return fmt.Sprintf("%d in all, %d of them told", k, mostTold)
+	}
+	return ""
+}
+
 // nullText tells what comes of a direction, after "A maps it to".
 func nullText(v inspect.NullDirection, f *inspect.Facts) string {
 	s := short(v.Quotient) + " of its size"
@@ -146,6 +163,9 @@ func nullText(v inspect.NullDirection, f *inspect.Facts) string {
 			push = ", b has %s of its norm along it"
 		}
 		s += fmt.Sprintf(push, short(v.Load))
+	}
+	if l := v.Level; l != nil {
+		return s + "; constant on " + l.Text(f.Names)
 	}
 	if v.Support > 0 {
 		s += fmt.Sprintf("; 99 %% of it lies in %s", plural(v.Support, "row", "rows"))
