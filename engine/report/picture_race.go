@@ -36,8 +36,9 @@ func racePicture(d Document, w, h vg.Length) (picture, bool) {
 			for i, t := range d.Trials {
 				drawOwn(c, p, a, i, t, int(w/2), t.Pairing == d.Choice.Pairing)
 			}
+			spots := tagSpots{within: c.Rectangle}
 			for i, t := range d.Trials {
-				finish(c, p, a, i, t)
+				finish(c, p, a, i, t, &spots)
 			}
 		}))
 		p.Draw(room(c))
@@ -143,7 +144,7 @@ func drawOwn(c draw.Canvas, p *plot.Plot, a axis, i int, t trace.History, cols i
 
 // finish puts the trial's digit at the end of its curve, on the page's ground
 // so that it can be read, and a ring at its last true residual.
-func finish(c draw.Canvas, p *plot.Plot, a axis, i int, t trace.History) {
+func finish(c draw.Canvas, p *plot.Plot, a axis, i int, t trace.History, spots *tagSpots) {
 	curve := ownCurve(t, a, 10)
 	if len(curve) == 0 {
 		return
@@ -155,8 +156,9 @@ func finish(c draw.Canvas, p *plot.Plot, a axis, i int, t trace.History) {
 		ring(c, place(c, p, point{end.x, y}), 2.6, curveInk(i))
 	}
 	label := string(digit(i))
-	c.FillPolygon(ink{inkGround, 200}, box(at.X+7, at.Y, 4, 6))
-	c.FillText(lettering(11, curveInk(i), draw.XCenter, draw.YCenter), vg.Point{X: at.X + 7, Y: at.Y}, label)
+	tag := spots.place(vg.Point{X: at.X + 7, Y: at.Y})
+	c.FillPolygon(ink{inkGround, 200}, box(tag.X, tag.Y, 4, 6))
+	c.FillText(lettering(11, curveInk(i), draw.XCenter, draw.YCenter), tag, label)
 }
 
 // goalLine is the tolerance.
