@@ -104,7 +104,7 @@ func (v *trialsView) widen(s engine.Snapshot) {
 			}
 		}
 	}
-	low = math.Max(low, rest-1) // how deep a direct solve gets is no reason to squeeze the others
+	low = math.Max(low, math.Ceil(rest-1)) // how deep a direct solve gets is no reason to squeeze the others
 	top := int(math.Ceil(math.Min(math.Max(high, start), math.Ceil(start)+headroom)))
 	end := int(math.Floor(math.Max(low, goal-depth) + 0.12)) // a hair below a decade is drawn on it
 	if v.y == (decades{}) {

@@ -106,7 +106,7 @@ func reachable(c Case) string {
 		}
 	}
 	if best > c.Tol && best < 1 {
-		return fmt.Sprintf("ask for no more than ||b-Ax|| allows: the smallest of ||b|| so far is %s, by %s", num(best), pairing)
+		return fmt.Sprintf("ask for no smaller a residual than can be had: the smallest ||b-Ax||/||b|| so far is %s, by %s", num(best), pairing)
 	}
 	return "ask for no smaller a residual than a direct solve gives"
 }
