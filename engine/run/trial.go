@@ -117,6 +117,9 @@ func (t *Trial) guard() {
 // advance moves the trial until its budget is used up, it ends, or ctx does.
 func (t *Trial) advance(ctx context.Context) {
 	defer t.guard()
+	if !t.canMove() {
+		return // it was ended or held while others of the round moved
+	}
 	if t.solver == nil {
 		t.setUp(ctx)
 	}
