@@ -55,6 +55,9 @@ type Trial struct {
 	History trace.History
 }
 
+// Tag is the sign by which the trial goes on screens, in reports and on stderr.
+func (t Trial) Tag() string { return trace.Tag(t.ID) }
+
 // Unchanged says that nothing was added to what a session file told.
 func (s Snapshot) Unchanged() bool { return s.Recorded && !s.revived }
 

@@ -6,7 +6,7 @@ import (
 
 	"dwindle/engine"
 	"dwindle/engine/diagnose"
-	"dwindle/engine/report"
+	"dwindle/engine/trace"
 )
 
 // bottom is the last lines: on a session's screens the leading finding and
@@ -103,7 +103,7 @@ func (m *model) leadKey(f *diagnose.Finding) string {
 	}
 	switch {
 	case len(f.Try) > 0:
-		return fmt.Sprintf("trial %s runs %s", report.Tag(m.numberOf(f.Try[0])), m.signs.clean(f.Try[0]))
+		return fmt.Sprintf("trial %s runs %s", trace.Tag(m.numberOf(f.Try[0])), m.signs.clean(f.Try[0]))
 	case m.snap.Choice.Pairing != "":
 		return "best so far: " + m.choiceName()
 	}
@@ -141,7 +141,7 @@ func (m *model) leading() *diagnose.Finding {
 // subject names what a finding is about, with the trial's number.
 func (m *model) subject(f diagnose.Finding) string {
 	if id := m.numberOf(f.Subject); id > 0 {
-		return fmt.Sprintf("%s %s", report.Tag(id), m.signs.clean(f.Subject))
+		return fmt.Sprintf("%s %s", trace.Tag(id), m.signs.clean(f.Subject))
 	}
 	return m.signs.clean(f.Subject)
 }

@@ -6,7 +6,6 @@ import (
 	"slices"
 	"strings"
 
-	"dwindle/engine/report"
 	"dwindle/engine/trace"
 )
 
@@ -164,12 +163,12 @@ func (p plot) head(t *tags, d drawn, c curve) {
 	if c.head < 0 && !c.lost {
 		return
 	}
-	text, x, y := report.Tag(d.id)+d.mark(), max(c.head, 0), 0
+	text, x, y := trace.Tag(d.id)+d.mark(), max(c.head, 0), 0
 	if c.head >= 0 {
 		y = int(math.Round(math.Min(math.Max(p.y.row(c.mid[c.head]), -1), float64(t.on.h-1))))
 	}
 	if c.lost || y < 0 {
-		text, y = report.Tag(d.id)+"^"+d.mark(), 0
+		text, y = trace.Tag(d.id)+"^"+d.mark(), 0
 	}
 	columns, rows := p.reach(d, t.on)
 	t.within(x, y, text, d.ink(), columns, rows)
@@ -214,7 +213,7 @@ func (p plot) falseStop(t *tags, d drawn) {
 
 // body tags the curve on its way.
 func (p plot) body(t *tags, d drawn, c curve) {
-	if p.signs == asciiGlyphs && len(report.Tag(d.id)) == 1 || aside(d.h) && !d.picked {
+	if p.signs == asciiGlyphs && len(trace.Tag(d.id)) == 1 || aside(d.h) && !d.picked {
 		return
 	}
 	period := 24

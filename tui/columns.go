@@ -7,7 +7,6 @@ import (
 	"strings"
 
 	"dwindle/engine"
-	"dwindle/engine/report"
 	"dwindle/engine/trace"
 )
 
@@ -130,7 +129,7 @@ func (m *model) row(l listing, t *engine.Trial, w int) string {
 	if m.trials.hidden[t.ID] {
 		name = "(" + clip(name, l.name-2) + ")"
 	}
-	front := picked + today + right(report.Tag(t.ID), 2) + " " + left(name, l.name)
+	front := picked + today + right(trace.Tag(t.ID), 2) + " " + left(name, l.name)
 	for _, c := range l.columns {
 		front += " " + right(c.text(h), c.w)
 	}

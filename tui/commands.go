@@ -6,7 +6,7 @@ import (
 
 	tea "github.com/charmbracelet/bubbletea"
 
-	"dwindle/engine/report"
+	"dwindle/engine/trace"
 )
 
 // slowest and fastest are the bounds of the refresh rate in Hz.
@@ -98,9 +98,9 @@ func (m *model) stopTrial() tea.Cmd {
 		m.say("the picked trial has ended already")
 		return nil
 	}
-	text := fmt.Sprintf("stop trial %s %s? its curve stays.", report.Tag(t.ID), t.History.Pairing)
+	text := fmt.Sprintf("stop trial %s %s? its curve stays.", trace.Tag(t.ID), t.History.Pairing)
 	return m.ask(text, func(m *model) tea.Cmd {
-		return act(fmt.Sprintf("trial %s is stopped", report.Tag(t.ID)), func() { m.s.Cancel(t.ID) })
+		return act(fmt.Sprintf("trial %s is stopped", trace.Tag(t.ID)), func() { m.s.Cancel(t.ID) })
 	})
 }
 
@@ -110,10 +110,10 @@ func (m *model) dropTrial() tea.Cmd {
 	if t == nil {
 		return nil
 	}
-	text := fmt.Sprintf("drop trial %s %s? its curve and numbers go.", report.Tag(t.ID), t.History.Pairing)
+	text := fmt.Sprintf("drop trial %s %s? its curve and numbers go.", trace.Tag(t.ID), t.History.Pairing)
 	return m.ask(text, func(m *model) tea.Cmd {
 		m.trials.reset()
-		return act(fmt.Sprintf("trial %s is dropped", report.Tag(t.ID)), func() { m.s.Drop(t.ID) })
+		return act(fmt.Sprintf("trial %s is dropped", trace.Tag(t.ID)), func() { m.s.Drop(t.ID) })
 	})
 }
 
@@ -125,9 +125,9 @@ func (m *model) holdTrial() tea.Cmd {
 		m.say("the picked trial has ended already")
 		return nil
 	case t.History.Stop.String() == "held":
-		return act(fmt.Sprintf("trial %s goes on", report.Tag(t.ID)), func() { m.s.Resume(t.ID) })
+		return act(fmt.Sprintf("trial %s goes on", trace.Tag(t.ID)), func() { m.s.Resume(t.ID) })
 	}
-	return act(fmt.Sprintf("trial %s is held; space lets it go on", report.Tag(t.ID)), func() { m.s.Hold(t.ID) })
+	return act(fmt.Sprintf("trial %s is held; space lets it go on", trace.Tag(t.ID)), func() { m.s.Hold(t.ID) })
 }
 
 // markToday says that the picked trial is what the user's code runs now, or
@@ -140,5 +140,5 @@ func (m *model) markToday() tea.Cmd {
 	if t.History.Today {
 		return act("no trial is marked as today's", func() { m.s.MarkToday(0) })
 	}
-	return act(fmt.Sprintf("trial %s is marked as what your code runs today", report.Tag(t.ID)), func() { m.s.MarkToday(t.ID) })
+	return act(fmt.Sprintf("trial %s is marked as what your code runs today", trace.Tag(t.ID)), func() { m.s.MarkToday(t.ID) })
 }

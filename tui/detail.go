@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"strings"
 
-	"dwindle/engine/report"
 	"dwindle/engine/trace"
 )
 
@@ -22,7 +21,7 @@ func (m *model) detail(w, h int) []string {
 	}
 	hist := &t.History
 	out := []string{
-		clip(fmt.Sprintf("%s %s: ", report.Tag(t.ID), m.signs.clean(hist.Pairing))+m.numberWords(hist), w),
+		clip(fmt.Sprintf("%s %s: ", trace.Tag(t.ID), m.signs.clean(hist.Pairing))+m.numberWords(hist), w),
 		clip("  "+m.endWords(hist), w),
 	}
 	stops := wrap("would stop by: "+stopWords(hist.WouldStop), w-2)

@@ -3,13 +3,13 @@ package tui
 import (
 	"math"
 
-	"dwindle/engine/report"
+	"dwindle/engine/trace"
 )
 
 // digits draws c, reduced to one column a cell, with the tag of the trial.
 func digits(on *canvas, d decades, c curve, id int, i ink, full bool) {
 	sign := '*' // where there are more trials than signs
-	if tag := report.Tag(id); len(tag) == 1 {
+	if tag := trace.Tag(id); len(tag) == 1 {
 		sign = rune(tag[0])
 	}
 	if full {

@@ -7,7 +7,6 @@ import (
 
 	tea "github.com/charmbracelet/bubbletea"
 
-	"dwindle/engine/report"
 	"dwindle/engine/trace"
 )
 
@@ -57,7 +56,7 @@ func (v *infoView) draw(m *model, w, h int) []string {
 
 // infoLines is everything about a trial.
 func (m *model) infoLines(id int, h *trace.History, w int) []string {
-	lines := []string{m.on.paint(strong, clip(fmt.Sprintf("trial %s %s", report.Tag(id), m.signs.clean(h.Pairing)), w))}
+	lines := []string{m.on.paint(strong, clip(fmt.Sprintf("trial %s %s", trace.Tag(id), m.signs.clean(h.Pairing)), w))}
 	add := func(texts ...string) {
 		for _, text := range texts {
 			lines = append(lines, hanging(m.signs.clean(text), w)...)

@@ -7,7 +7,7 @@ import (
 
 	"dwindle/engine"
 	"dwindle/engine/choose"
-	"dwindle/engine/report"
+	"dwindle/engine/trace"
 )
 
 // session is what the interface asks of an engine.Session.
@@ -50,7 +50,7 @@ func (m *model) add(pairing string) tea.Cmd {
 		if err != nil {
 			return acted{err: err}
 		}
-		return acted{said: fmt.Sprintf("%s is trial %s", pairing, report.Tag(id)), pick: id}
+		return acted{said: fmt.Sprintf("%s is trial %s", pairing, trace.Tag(id)), pick: id}
 	}
 }
 

@@ -7,7 +7,6 @@ import (
 	tea "github.com/charmbracelet/bubbletea"
 
 	"dwindle/engine/inspect"
-	"dwindle/engine/report"
 	"dwindle/engine/trace"
 )
 
@@ -113,7 +112,7 @@ func (v *spectrumView) picture(m *model, w, h int) []string {
 			return m.lockPicture(t.ID, &t.History, w, h)
 		}
 		if len(t.History.Harmonic) > 0 {
-			title := fmt.Sprintf("harmonic Ritz values of trial %s %s in the plane, last cycle", report.Tag(t.ID), m.signs.clean(t.History.Pairing))
+			title := fmt.Sprintf("harmonic Ritz values of trial %s %s in the plane, last cycle", trace.Tag(t.ID), m.signs.clean(t.History.Pairing))
 			return append([]string{m.on.paint(faint, clip(title, w))}, planePicture(t.History.Harmonic, w, h, m.signs)...)
 		}
 	}
@@ -153,7 +152,7 @@ func (m *model) spectralWords(w int) []string {
 		return nil
 	}
 	h := &t.History
-	lines := []string{m.on.paint(faint, clip(fmt.Sprintf("trial %s %s", report.Tag(t.ID), m.signs.clean(h.Pairing)), w))}
+	lines := []string{m.on.paint(faint, clip(fmt.Sprintf("trial %s %s", trace.Tag(t.ID), m.signs.clean(h.Pairing)), w))}
 	lines = append(lines, hanging(m.signs.clean(m.conditionWords(h)), w)...)
 	lines = append(lines, tied(lockWords(h), w)...)
 	for _, text := range append([]string{energyWords(h), deepWords(h)}, withoutWords(h)...) {

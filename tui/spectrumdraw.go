@@ -6,7 +6,6 @@ import (
 	"slices"
 
 	"dwindle/engine/inspect"
-	"dwindle/engine/report"
 	"dwindle/engine/trace"
 )
 
@@ -154,7 +153,7 @@ func (m *model) lockPicture(id int, h *trace.History, w, tall int) []string {
 		}
 		c.set(columnOf(r.place(l.Value), c.w), y, sign, plain)
 	}
-	title := fmt.Sprintf("Ritz values of trial %s %s, when each locked (digit: copies)", report.Tag(id), m.signs.clean(h.Pairing))
+	title := fmt.Sprintf("Ritz values of trial %s %s, when each locked (digit: copies)", trace.Tag(id), m.signs.clean(h.Pairing))
 	lines := []string{m.on.paint(faint, clip(title, w))}
 	return append(lines, framedPicture(c, m.signs, "it 0", fmt.Sprintf("%d", h.Iterations), r)...)
 }

@@ -3,7 +3,7 @@ package tui
 import (
 	"math"
 
-	"dwindle/engine/report"
+	"dwindle/engine/trace"
 )
 
 // tags places texts on a canvas so that two of them never touch: one free
@@ -65,7 +65,7 @@ func (t *tags) within(x, y int, text string, i ink, columns, rows int) bool {
 // trial starting elsewhere. rowAt gives the curve's row in a column, false
 // where it has none.
 func (t *tags) along(id, period int, i ink, rowAt func(x int) (int, bool)) {
-	text := report.Tag(id)
+	text := trace.Tag(id)
 	for x := 2 + id*7%period; x < t.on.w; x += period {
 		for _, dx := range []int{0, 1, -1, 2, -2, 3, -3} {
 			y, ok := rowAt(x + dx)

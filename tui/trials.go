@@ -9,7 +9,7 @@ import (
 	tea "github.com/charmbracelet/bubbletea"
 
 	"dwindle/engine"
-	"dwindle/engine/report"
+	"dwindle/engine/trace"
 )
 
 // named is a view with a name for the key line.
@@ -239,7 +239,7 @@ func (v *trialsView) readOut(m *model) string {
 	if v.by != bySeconds {
 		at = math.Round(at) // a count
 	}
-	return fmt.Sprintf("trial %s at %s %s: %s", report.Tag(t.ID), short(round3(at)), v.by, text)
+	return fmt.Sprintf("trial %s at %s %s: %s", trace.Tag(t.ID), short(round3(at)), v.by, text)
 }
 
 // round3 keeps three digits.

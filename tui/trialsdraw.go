@@ -6,7 +6,6 @@ import (
 	"math"
 
 	"dwindle/engine"
-	"dwindle/engine/report"
 	"dwindle/engine/trace"
 )
 
@@ -83,7 +82,7 @@ func (v *trialsView) residualName(m *model) string {
 	if t == nil || t.History.Norm == "" || t.History.Norm == trace.TwoNorm {
 		return "own residual"
 	}
-	return fmt.Sprintf("own residual (%s: %s norm)", report.Tag(t.ID), m.signs.clean(string(t.History.Norm)))
+	return fmt.Sprintf("own residual (%s: %s norm)", trace.Tag(t.ID), m.signs.clean(string(t.History.Norm)))
 }
 
 // leftOut counts the curves that are not drawn since there are too many.

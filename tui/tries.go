@@ -6,7 +6,7 @@ import (
 	tea "github.com/charmbracelet/bubbletea"
 
 	"dwindle/engine/diagnose"
-	"dwindle/engine/report"
+	"dwindle/engine/trace"
 )
 
 // triesView lies over a screen and offers what a finding would try. Nothing
@@ -85,7 +85,7 @@ func (v *triesView) enter(m *model) tea.Cmd {
 	if id := m.numberOf(pairing); id > 0 {
 		m.trials.picked = id
 		m.show(m.trials)
-		m.say(fmt.Sprintf("trial %s runs it already", report.Tag(id)))
+		m.say(fmt.Sprintf("trial %s runs it already", trace.Tag(id)))
 		return nil
 	}
 	return m.add(pairing)
@@ -101,7 +101,7 @@ func (v *triesView) draw(m *model, w, h int) []string {
 		}
 		note := ""
 		if id := m.numberOf(pairing); id > 0 {
-			note = fmt.Sprintf("  trial %s runs it already", report.Tag(id))
+			note = fmt.Sprintf("  trial %s runs it already", trace.Tag(id))
 		}
 		list = append(list, clip(fmt.Sprintf("%s%d  %s%s", mark, i+1, m.signs.clean(pairing), note), w))
 	}

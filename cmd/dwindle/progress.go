@@ -46,7 +46,7 @@ func (p *progress) update(s engine.Snapshot) {
 			p.told[t.ID] = true
 			p.wipe()
 			text := t.History.Pairing + ": " + report.Outcome(t.History)
-			for _, line := range report.Paragraph(fmt.Sprintf("%3s ", report.Tag(t.ID)), text) {
+			for _, line := range report.Paragraph(fmt.Sprintf("%3s ", t.Tag()), text) {
 				fmt.Fprintln(p.w, line)
 			}
 		}
@@ -67,7 +67,7 @@ func (p *progress) renew(s engine.Snapshot) {
 	text := fmt.Sprintf("%4.0f s  %s", s.Elapsed.Seconds(), s.Phase)
 	for _, t := range s.Trials {
 		if r, ok := t.History.Last(); ok && !t.History.Stop.Ended() {
-			text += fmt.Sprintf("  %s: it %d %.0e", report.Tag(t.ID), r.Iter, r.Residual)
+			text += fmt.Sprintf("  %s: it %d %.0e", t.Tag(), r.Iter, r.Residual)
 		}
 	}
 	p.wipe()
