@@ -104,7 +104,7 @@ func (s *Session) judge(v *Snapshot) {
 		c := diagnose.Case{Facts: s.facts, Trials: histories, Tol: s.opt.Tol, StopBy: s.opt.StopRule, Race: s.racing()}
 		f := diagnose.Judge(c)
 		choice := s.rank(histories, f)
-		if c.Chosen = choice.Pairing; c.Chosen != "" {
+		if c.Chosen, c.Gain = choice.Pairing, choice.Gain; c.Chosen != "" {
 			f = diagnose.Judge(c) // what is found goes by what is recommended
 		}
 		s.judged = verdict{key: key, at: now, findings: f, choice: choice}

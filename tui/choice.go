@@ -21,8 +21,12 @@ func (m *model) choiceText(w int) []string {
 		return append(lines, m.ruledOut(c.RuledOut, w)...)
 	}
 	head := "use " + m.choiceName()
-	if c.Gain > 0 {
-		head += fmt.Sprintf(": %s times as fast as today's", round2(c.Gain))
+	switch g := c.Gain; {
+	case g.Times == 0:
+	case g.ByWork:
+		head += fmt.Sprintf(": %s times less counted work than today's", round2(g.Times))
+	default:
+		head += fmt.Sprintf(": %s times as fast as today's", round2(g.Times))
 	}
 	lines := []string{m.on.paint(strong, clip(head, w))}
 	lines = append(lines, m.bullets("because", c.Reasons, w)...)

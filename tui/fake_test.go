@@ -159,7 +159,7 @@ func (f *fake) Snapshot() engine.Snapshot {
 	s := engine.Snapshot{Phase: engine.Running, Progress: -1, Elapsed: span1(t), Facts: someFacts(),
 		System:   report.System{Name: "sluice4.mtx", Unknowns: 20000, Entries: 1390112, RHS: "ones"},
 		Settings: report.Settings{Tol: 1e-8}, Findings: f.findings,
-		Choice: choose.Choice{Pairing: "cg+ic:0", Reasons: []string{"least own time to the tolerance"}, Gain: math.NaN(),
+		Choice: choose.Choice{Pairing: "cg+ic:0", Reasons: []string{"least own time to the tolerance"}, Gain: diagnose.Gain{},
 			Ranked: []choose.Ranked{{Pairing: "cg+ic:0", Seconds: 4.6, Setup: 1.2, Iterations: 410, Memory: 12 << 20, Reached: true, For: [3]float64{4.6, 35.2, 3401.2}, BreakEven: math.NaN()},
 				{Pairing: "cg+jacobi", Seconds: 7.4, Setup: 0.06, Iterations: 6165, Memory: 1 << 20, Reached: true, For: [3]float64{7.4, 73.5, 7340}, BreakEven: 3},
 				{Pairing: "bicgstab+none", Seconds: math.NaN(), Iterations: 5305, Memory: 1 << 20}},

@@ -2,6 +2,8 @@
 // It is pure: candidates come to it as values.
 package choose
 
+import "dwindle/engine/diagnose"
+
 // Candidate is a pairing that could be run, as the catalogues describe it.
 type Candidate struct {
 	Pairing   string // canonical
@@ -27,6 +29,7 @@ type Ranked struct {
 	// Seconds are the own seconds to tolerance, set-up included, as trials are
 	// compared by (costs); what this one took is in its history.
 	Seconds    float64
+	Today      bool    // the user's code runs this one now
 	Setup      float64 // of which set-up
 	Runs       int     // the iterations are those of the median of so many runs
 	Setups     int     // and what solvers share of the set-up is the median of so many builds; 0: this run's
@@ -67,8 +70,8 @@ type Choice struct {
 	Ranked  []Ranked
 	Reasons []string // where Pairing is empty: what can be had instead, if anything
 	Doubts  []string
-	Goal    string  // what Ranked goes by; empty: Seconds
-	Gain    float64 // today's seconds over the choice's; NaN without today's
+	Goal    string        // what Ranked goes by; empty: Seconds
+	Gain    diagnose.Gain // over today's pairing
 	// Settings says the choice in the terms of its methods, a line each, ready
 	// to be carried into any code.
 	Settings []string

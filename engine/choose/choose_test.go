@@ -88,8 +88,8 @@ func TestRankByOwnTime(t *testing.T) {
 	if c.Pairing != "cg+ic:0" || strings.Join(order, " ") != "cg+ic:0 cg+jacobi cg+none sd+none" {
 		t.Fatalf("choice %s, order %v", c.Pairing, order)
 	}
-	if c.Gain != 2 {
-		t.Errorf("gain over today %g, want 2", c.Gain)
+	if c.Gain.Times != 2 {
+		t.Errorf("gain over today %g, want 2", c.Gain.Times)
 	}
 	// set-up 1 s, then 1 s a solve instead of 4 s: it pays from the first one on
 	if c.Ranked[0].BreakEven != 1 {

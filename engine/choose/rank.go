@@ -22,14 +22,14 @@ const (
 // first, with what it rests on and what could overturn it. A trial may take
 // limit iterations; 0: not known.
 func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding, goal string, limit int) Choice {
-	c := Choice{Gain: math.NaN(), Goal: goal, Outcomes: outcomes(trials, findings)}
+	c := Choice{Goal: goal, Outcomes: outcomes(trials, findings)}
 	all := costs(trials)
 	for i, h := range trials {
 		if h.Stop == trace.Refused {
 			continue
 		}
 		r := ranked(h, all[i], limit)
-		r.Work, r.two = work(f, h), h.TwoDoubles
+		r.Work, r.two, r.Today = work(f, h), h.TwoDoubles, h.Today
 		r.shaky = h.Direct && f.Singular.Answer == inspect.Yes || h.UnsolvedRows > 0
 		c.Ranked = append(c.Ranked, r)
 	}
@@ -44,11 +44,7 @@ func Rank(f *inspect.Facts, trials []trace.History, findings []diagnose.Finding,
 	first := c.Ranked[0]
 	c.Pairing = first.Pairing
 	c.Reasons = reasons(f, trials, c)
-	for i, h := range trials {
-		if h.Today && reached(h) && math.Max(all[i].own, first.Seconds) >= tooShort {
-			c.Gain = all[i].own / first.Seconds
-		}
-	}
+	c.Gain = gain(c.Ranked)
 	c.Doubts = doubts(f, trials, c)
 	return c
 }

@@ -35,8 +35,8 @@ func place(method string) int {
 }
 
 // settle puts the trials that the clock does not tell apart from the first in
-// an order of their own: by counted work, and those of much the same work by
-// how plain they are.
+// an order of their own: by counted work, and of those of much the same work
+// today's first, since nothing speaks for a change, then by how plain they are.
 func settle(list []Ranked, findings []diagnose.Finding, goal string) {
 	if len(list) == 0 || !list[0].Reached || goal == Memory {
 		return
@@ -55,8 +55,18 @@ func settle(list []Ranked, findings []diagnose.Finding, goal string) {
 	for same < len(head) && head[same].Work <= likeWork*head[0].Work {
 		same++
 	}
-	slices.SortStableFunc(head[:same], func(a, b Ranked) int { return plainer(a.Pairing, b.Pairing) })
+	slices.SortStableFunc(head[:same], func(a, b Ranked) int {
+		return cmp.Or(today(a)-today(b), plainer(a.Pairing, b.Pairing))
+	})
 	copy(list, append(head, rest...))
+}
+
+// today puts the pairing that the user's code runs first.
+func today(r Ranked) int {
+	if r.Today {
+		return 0
+	}
+	return 1
 }
 
 // alike says that the clock does not tell r from the first.

@@ -1,7 +1,6 @@
 package choose
 
 import (
-	"math"
 	"testing"
 	"time"
 
@@ -28,8 +27,8 @@ func TestShortTimesRankByWork(t *testing.T) {
 		if c.Pairing != "cg+ic:0" {
 			t.Errorf("by clock %v: chose %s", clock, c.Pairing)
 		}
-		if !math.IsNaN(c.Gain) {
-			t.Errorf("a gain of %g from microseconds", c.Gain)
+		if !(c.Gain.Times == 0 || c.Gain.ByWork) {
+			t.Errorf("a gain of %g from microseconds", c.Gain.Times)
 		}
 	}
 	slow := brisk("cg+jacobi", 3000*us, 2, 100) // little work by count, much by the clock

@@ -8,10 +8,8 @@ import (
 	"dwindle/engine/trace"
 )
 
-const (
-	beatFactor = 1.25  // faster by this factor
-	beatLeast  = 0.005 // and by so many seconds: below, the clock decides nothing
-)
+// beatFactor is the gain from which today's pairing is called beaten.
+const beatFactor = 1.25
 
 // beaten: today's pairing is slower than another, or misses where another
 // reaches.
@@ -26,10 +24,14 @@ var beaten = Rule{"today-beaten", func(c Case) []Finding {
 	if today == nil || !ok || best.Pairing == today.Pairing || !today.Stop.Ended() {
 		return nil
 	}
+	t, b := today.OwnTime.Seconds(), best.OwnTime.Seconds()
+	if g := c.Gain; g.Times > 0 {
+		t, b = g.Today, g.Best
+	}
 	f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: today.Pairing, Try: []string{best.Pairing},
 		Advice: "use " + best.Pairing,
-		Evidence: []Evidence{number("own time today", today.OwnTime.Seconds(), "s"),
-			number("own time of "+best.Pairing, best.OwnTime.Seconds(), "s"),
+		Evidence: []Evidence{number("time today", t, "s"),
+			number("time of "+best.Pairing, b, "s"),
 			number("iterations today", float64(today.Iterations), ""),
 			number("iterations of "+best.Pairing, float64(best.Iterations), "")}}
 	if !solved(*today) {
@@ -38,14 +40,19 @@ var beaten = Rule{"today-beaten", func(c Case) []Finding {
 			at = " at " + num(today.TrueResidual)
 		}
 		f.Claim = fmt.Sprintf("today's pairing ends %s%s; %s reaches the target in %s and %s",
-			today.Stop, at, best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
+			today.Stop, at, best.Pairing, steps(best.Iterations), seconds(b))
 		return []Finding{f}
 	}
-	t, b := today.OwnTime.Seconds(), best.OwnTime.Seconds()
-	if t < beatFactor*b || t-b < beatLeast || !Apart(best, *today, 0) {
+	g := c.Gain
+	if !(g.Times >= beatFactor) || !Apart(best, *today, 0) {
 		return nil
 	}
-	f.Claim = fmt.Sprintf("today's pairing takes %s and %s; %s takes %d and %s: %.1f times faster",
-		steps(today.Iterations), seconds(t), best.Pairing, best.Iterations, seconds(b), t/b)
+	what := fmt.Sprintf("today's pairing takes %s and %s; %s takes %d and %s", steps(today.Iterations), seconds(t), best.Pairing, best.Iterations, seconds(b))
+	if g.ByWork {
+		f.Weight, f.Certainty = Note, inspect.Estimated
+		f.Claim = fmt.Sprintf("%s: %.1f times less work by count, which the clock does not tell", what, g.Times)
+	} else {
+		f.Claim = fmt.Sprintf("%s: %.2g times faster", what, g.Times)
+	}
 	return []Finding{f}
 }}

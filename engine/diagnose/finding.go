@@ -67,6 +67,9 @@ type Case struct {
 	Tol    float64
 	Race   bool   // the trials, today's aside, were entered by dwindle, not asked for
 	StopBy string // the stopping rule of the session
+	// Gain is what the recommended pairing gains over today's; zero where that is
+	// not known.
+	Gain   Gain
 	Chosen string // the pairing that is recommended; empty where that is not known
 }
 
@@ -74,4 +77,11 @@ type Case struct {
 type Rule struct {
 	Name  string
 	Judge func(Case) []Finding
+}
+
+// Gain is what a pairing gains over today's.
+type Gain struct {
+	Times       float64 // today's cost over that of the pairing; 0 where nothing is told
+	ByWork      bool    // by counted work, for the clock does not tell them apart
+	Today, Best float64 // seconds that the two cost
 }

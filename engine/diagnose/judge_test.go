@@ -197,14 +197,20 @@ func TestCostAndToday(t *testing.T) {
 		t.Errorf("a preconditioner that costs a second more: %v", got)
 	}
 	dear.Today = true
-	got = said(caseOf(definite(), plain, dear))
-	if f, ok := got["today-beaten"]; !ok || !strings.Contains(f.Claim, "2.0 times faster") {
-		t.Errorf("today's pairing at twice the time: %v", got)
+	c := caseOf(definite(), plain, dear)
+	c.Gain = Gain{Times: 2, Today: 2, Best: 1}
+	if f, ok := said(c)["today-beaten"]; !ok || !strings.Contains(f.Claim, "2 times faster") || f.Certainty != inspect.Measured {
+		t.Errorf("today's pairing at twice the time: %v", f)
 	}
-	near := solvedTrial("cg+jacobi", 299, 1050*time.Millisecond)
-	near.Today = true
-	if f, ok := said(caseOf(definite(), plain, near))["today-beaten"]; ok {
-		t.Errorf("five per cent is called a win: %s", f.Claim)
+	c.Gain.ByWork = true
+	if f, ok := said(c)["today-beaten"]; !ok || strings.Contains(f.Claim, "faster") || f.Certainty != inspect.Estimated || f.Weight != Note {
+		t.Errorf("by counted work: %v", f)
+	}
+	for _, g := range []Gain{{}, {Times: 1.05, Today: 1.05, Best: 1}} { // nothing known, and five per cent
+		c.Gain = g
+		if f, ok := said(c)["today-beaten"]; ok {
+			t.Errorf("%v is called a win: %s", g, f.Claim)
+		}
 	}
 }
 

@@ -128,7 +128,7 @@ var growth = Rule{"mesh-growth", func(c Case) []Finding {
 	}
 	if best, ok := quickest(c); ok && multilevelRan(c) {
 		out.Try = []string{best.Pairing}
-		out.Advice = fmt.Sprintf("at this size %s is the quickest that ran (%s, %s)", best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
+		out.Advice = fmt.Sprintf("at this size %s serves best of what ran (%s, %s)", best.Pairing, steps(best.Iterations), seconds(best.OwnTime.Seconds()))
 		if _, _, m := cut(best.Pairing); kindOfM(m) != "amg" {
 			out.Advice += "; on larger ones hold it against a multilevel preconditioner"
 		}

@@ -184,13 +184,18 @@ func gainText(d Document) string {
 		}
 	}
 	switch {
-	case !finite(g) || g <= 0:
+	case g.Times == 0:
 		return ""
-	case g > 0.95 && g < 1.05:
-		return "as fast as today"
+	case g.Times < leastGain:
+		return "no gain over today's is measured"
+	case g.ByWork:
+		return times(g.Times) + " times less counted work than today's"
 	}
-	return times(g) + " times today's speed"
+	return times(g.Times) + " times today's speed"
 }
+
+// leastGain is the gain from which a change is worth a word.
+const leastGain = 1.05
 
 // doubtForms are the doubts in few words each, what stands before a colon, and
 // in full.

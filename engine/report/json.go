@@ -50,7 +50,8 @@ type choiceJSON struct {
 	Reasons []string     `json:"reasons"`
 	Doubts  []string     `json:"doubts"`
 	Gain    number       `json:"gain"`
-	Goal    string       `json:"goal"` // what ranked goes by
+	ByWork  bool         `json:"gain_by_work"` // counted, not by the clock
+	Goal    string       `json:"goal"`         // what ranked goes by
 
 	Settings []string      `json:"settings"`
 	RuledOut []ruledJSON   `json:"ruled_out"`
@@ -110,8 +111,8 @@ func toChoice(d Document) choiceJSON {
 	if c.Goal == "" {
 		c.Goal = choose.Seconds
 	}
-	if d.Choice.Gain > 0 {
-		c.Gain = number(d.Choice.Gain)
+	if g := d.Choice.Gain; g.Times > 0 {
+		c.Gain, c.ByWork = number(g.Times), g.ByWork
 	}
 	for _, r := range d.Choice.Ranked {
 		s := number(r.Seconds)

@@ -48,7 +48,7 @@ func typical() Document {
 				Claim: "restarting loses what was learned: 20 cycles of 30 cut the residual by a factor > 0.999 each", Advice: "Use a longer cycle, or cg: A is symmetric and definite.",
 				Try: []string{"gmres:60+none", "cg+ic:0"}, Evidence: []diagnose.Evidence{{Quantity: "cycle factor", Value: 0.9995, Iteration: 800, Rows: []int{0, 4}}}},
 		},
-		Choice: choose.Choice{Pairing: "cg+ic:0", Gain: 2, Reasons: []string{"it needs a third of the iterations"},
+		Choice: choose.Choice{Pairing: "cg+ic:0", Gain: diagnose.Gain{Times: 2, Today: 0.06, Best: 0.03}, Reasons: []string{"it needs a third of the iterations"},
 			Doubts: []string{"counts on your own b may differ several-fold: give --rhs"},
 			Ranked: []choose.Ranked{{Pairing: "cg+ic:0", Seconds: 0.03, Setup: 0.002, Iterations: 20, Memory: 40000, Reached: true, BreakEven: nan},
 				{Pairing: "cg+none", Seconds: 0.06, Iterations: 60, Reached: true, BreakEven: nan},
@@ -95,7 +95,7 @@ func wild(r *rand.Rand) Document {
 		d.Choice.Pairing = d.Trials[0].Pairing
 		d.Choice.Ranked = []choose.Ranked{{Pairing: d.Choice.Pairing, Seconds: num(), Setup: num(), Memory: r.Int64(), Reached: true, BreakEven: num()}}
 	}
-	d.Choice.Gain, d.Choice.Reasons, d.Choice.Doubts = num(), []string{text(), text()}, []string{text()}
+	d.Choice.Gain.Times, d.Choice.Reasons, d.Choice.Doubts = num(), []string{text(), text()}, []string{text()}
 	if r.IntN(2) == 0 {
 		wildDeep(r, &d)
 	}

@@ -25,7 +25,7 @@ func beyond() Document {
 	d.Trials, d.Facts.Symmetric.Answer = []trace.History{one, two}, inspect.No
 	d.Findings = []diagnose.Finding{{Rule: "double-precision", Weight: diagnose.Blocker, Certainty: inspect.Measured, Subject: diagnose.OnSystem,
 		Claim: "double precision cannot be counted on for 1e-08 here: richardson:1+lu solves A to the last bit of its entries, and 0.019 is left"}}
-	d.Choice = choose.Choice{Pairing: two.Pairing, Gain: math.NaN(), Ranked: []choose.Ranked{{Pairing: two.Pairing, Seconds: 0.03, Setup: 0.02,
+	d.Choice = choose.Choice{Pairing: two.Pairing, Ranked: []choose.Ranked{{Pairing: two.Pairing, Seconds: 0.03, Setup: 0.02,
 		Iterations: 2, Memory: 40000, Reached: true, BreakEven: math.NaN()}, {Pairing: one.Pairing, Seconds: math.NaN(), BreakEven: math.NaN()}}}
 	return d
 }
