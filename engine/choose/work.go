@@ -10,6 +10,7 @@ import (
 )
 
 const (
+	eachUse   = 5   // numbers of a product that an entry of M counts as, for its index, and its wait for the row before
 	cycle     = 5   // passes over every level of a cycle: smoothing, residual, transfer
 	eachRow   = 200 // of what is built
 	eachEntry = 50
@@ -22,7 +23,7 @@ func work(f *inspect.Facts, h trace.History) float64 {
 	n, entries := float64(f.N), math.Max(float64(f.Entries), float64(f.N))
 	p := split(h.Pairing)
 	own := float64(h.Notes.Entries)
-	return float64(h.Products)*(entries+vectors(p.solver, h.Iterations)*n) + float64(h.PrecondUses)*using(p.precond, own, entries) +
+	return float64(h.Products)*(entries+vectors(p.solver, h.Iterations)*n) + eachUse*float64(h.PrecondUses)*using(p.precond, own, entries) +
 		making(bare(p.precond), own, n)
 }
 
