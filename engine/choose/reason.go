@@ -45,7 +45,7 @@ func utmost(f *inspect.Facts, trials []trace.History) []string {
 	if !ok {
 		return nil
 	}
-	out := []string{fmt.Sprintf("%s: %.2g is all that double precision gives here; ask for %.1g", h.Pairing, h.TrueResidual, diagnose.AskFor(h.TrueResidual))}
+	out := []string{fmt.Sprintf("%s: %.2g is about all that double precision gives here; ask for %.1g", h.Pairing, h.TrueResidual, diagnose.AskFor(h.TrueResidual))}
 	if right := diagnose.Right(h); right != "" {
 		out = append(out, fmt.Sprintf("its x is %s, measured against %s", right, h.Near.Of))
 	}
