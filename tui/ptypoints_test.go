@@ -174,11 +174,14 @@ func TestPoint09TornArrow(t *testing.T) {
 // Point 16: a change of size draws a new frame at once.
 func TestPoint16Resize(t *testing.T) {
 	x := openTerminal(t, 80, 24, 0, "done")
-	x.await("own residual by seconds")
+	x.await("trials | ") // the last line of a frame
 	from := x.bytes()
 	x.resize(120, 40)
-	time.Sleep(500 * time.Millisecond)
-	if got := x.text()[from:]; !strings.Contains(got, "products") || !strings.Contains(got, "would stop by") {
-		t.Errorf("no new frame: %q", clip(got, 300))
+	got := ""
+	for end := time.Now().Add(2 * time.Second); time.Now().Before(end); time.Sleep(50 * time.Millisecond) {
+		if got = x.text()[from:]; strings.Contains(got, "products") && strings.Contains(got, "would stop by") {
+			return
+		}
 	}
+	t.Errorf("no new frame: %q", clip(got, 300))
 }
