@@ -50,7 +50,7 @@ func measureKernels(w io.Writer, threads int) error {
 		return err
 	}
 	var b strings.Builder
-	b.WriteString("kernels on 10^6 unknowns, 5-point (blocks: fewer); bytes counted once each way\n")
+	b.WriteString("kernels on 10^6 unknowns, 5-point (blocks: fewer); bytes counted once each way;\nabove 100%: what a cache still holds\n")
 	fmt.Fprintf(&b, "%-32s %9s %11s %9s %9s\n", "kernel", "MB a call", "ms a call", "GB/s", "share")
 	for _, k := range list {
 		fmt.Fprintf(&b, "%-32s %9.1f %11.3f %9.2f %8.0f%%\n", k.Name, float64(k.Bytes)/1e6, 1e3*k.Time, k.Rate/1e9, 100*k.Share)
