@@ -133,7 +133,7 @@ func TestHide(t *testing.T) {
 func TestFalseStopShows(t *testing.T) {
 	h := historyOf(trace.Running, 1, 1e-3, 1e-9, 1e-10)
 	h.Events = []trace.Event{{Iter: 2, Kind: trace.FalseStop, Value: 2.6e-6, Scale: 9e-9}}
-	h.Floor = 3e-7
+	h.Floor, h.BestTrue = 3e-7, 2.6e-6
 	m := screenOf(sessionOf(h, historyOf(trace.Running, 1, 0.1)), 120, 40, "dot")
 	v := m.View()
 	for _, want := range []string{"~ running(!)", "met own test at i", "floor~3.0e-07"} {

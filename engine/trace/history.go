@@ -206,9 +206,10 @@ func (h *History) Unfallen() bool {
 }
 
 // Attainable returns Floor where nothing contradicts it: NaN where the true
-// residual came below it, and where it is so high that it says nothing.
+// residual came below it, and before that has fallen to a tenth.
 func (h *History) Attainable() float64 {
-	if h.Floor < 1 && !(h.BestTrue < h.Floor) {
+	const nearAnswer = 0.1 // before, x has not grown to its size, which the floor goes by
+	if h.Floor < 1 && h.BestTrue <= nearAnswer && !(h.BestTrue < h.Floor) {
 		return h.Floor
 	}
 	return math.NaN()
