@@ -16,8 +16,8 @@ var zeroDiagonal = Rule{"zero-diagonal", func(c Case) []Finding {
 		return nil
 	}
 	g := Finding{Weight: Note, Certainty: inspect.Proved, Subject: OnSystem,
-		Claim: fmt.Sprintf("%d of %d diagonal entries are zero (%s): jacobi, ssor, ic and ilu:0 cannot be built as A stands",
-			zeros, f.N, c.list(f.DiagZeroRows, 3)),
+		Claim: fmt.Sprintf("%d of %d diagonal entries %s zero (%s): jacobi, ssor, ic and ilu:0 cannot be built as A stands",
+			zeros, f.N, verb(zeros, "is", "are"), c.list(f.DiagZeroRows, 3)),
 		Evidence: []Evidence{{Quantity: "zero diagonal entries", Value: float64(zeros), Unit: fmt.Sprintf("of %d", f.N), Iteration: none, Rows: f.DiagZeroRows}}}
 	c.aroundZeros(&g, f.Symmetric.Answer == inspect.Yes && zeros < f.N)
 	_, answered := quickest(c)

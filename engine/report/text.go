@@ -224,7 +224,7 @@ func orderWords(goal string) string {
 	case choose.Robust:
 		return "first what is safe by theory, then by own time to the tolerance"
 	}
-	return "by own time to the tolerance"
+	return "by own time to the tolerance, near the first by counted work"
 }
 
 // notReached lists the pairings that did not reach the tolerance, with the time
