@@ -14,7 +14,7 @@ func TestForecastComesDownToThePresent(t *testing.T) {
 	last := math.Inf(1)
 	for _, fallen := range []float64{0.3, 0.5, 1, 2, 4, 6, 7, 7.9, 8} {
 		f := forecast{low: -fallen}
-		p, ok := f.tell(100, -8)
+		p, ok := f.tell(100, -fallen/2, -8)
 		if !ok || p.Iter != 100 || !(p.Total >= 101) || p.Total > last || !(p.Low <= p.Total && p.Total <= p.High) || !(p.Low >= 100) {
 			t.Errorf("%g decades gone: %+v after %g", fallen, p, last)
 		}
@@ -25,9 +25,9 @@ func TestForecastComesDownToThePresent(t *testing.T) {
 	}
 	// The own number is a decade below the truth: a decade more to go. A start
 	// from a guess has the less to go.
-	far, _ := (&forecast{low: -4, gap: 1}).tell(100, -8)
-	near, _ := (&forecast{low: -4}).tell(100, -9)
-	guessed, _ := (&forecast{first: -3, low: -7}).tell(100, -12)
+	far, _ := (&forecast{low: -4, gap: 1}).tell(100, -2, -8)
+	near, _ := (&forecast{low: -4}).tell(100, -2, -9)
+	guessed, _ := (&forecast{first: -3, low: -7}).tell(100, -5, -12)
 	if far != near || guessed != near {
 		t.Errorf("with a gap of a decade %v, without to a decade less %v, from a guess %v", far, near, guessed)
 	}
@@ -36,7 +36,7 @@ func TestForecastComesDownToThePresent(t *testing.T) {
 // A curve that has not begun to fall promises nothing, wherever it starts.
 func TestNothingIsToldOfACurveThatHasNotFallen(t *testing.T) {
 	for _, f := range []forecast{{}, {low: -0.2}, {first: -5, low: -5.2}, {first: 2, low: 1.8}} {
-		if p, ok := f.tell(1000, -8); ok {
+		if p, ok := f.tell(1000, f.first, -8); ok {
 			t.Errorf("%+v tells %+v", f, p)
 		}
 	}
