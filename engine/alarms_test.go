@@ -15,8 +15,8 @@ import (
 // openSystems lists the open matrices with the rules that must speak when
 // their line-up runs at default settings; no other may. What holds of them is
 // in the tables of the collections they come from: LFAT5, arc130, cryg2500,
-// fs_183_1, reorientation_1, watt_2 and west0479 in very different units;
-// rajat19, hangGlider_2, reorientation_1, jgl009 and the west matrices with
+// ex14, fs_183_1, reorientation_1, watt_2 and west0479 in very different units;
+// ex14, rajat19, hangGlider_2, reorientation_1, jgl009 and the west matrices with
 // zeros on the diagonal; olm1000, arc130 and west0479 far from normal; can_24
 // and jagmesh7 indefinite; cryg2500 and jgl009 singular to rounding; bcsstk16
 // with 74 rows of the identity; 494_bus, watt_2 and west0479 printed with 6 or
@@ -28,9 +28,11 @@ var openSystems = map[string][]string{
 	"bcsstk01.rsa":        {"not-your-rhs", "row-scaling", "plateau", "residual-rises", "superlinear", "lost-orthogonality"},
 	"bcsstk13.mtx.gz":     {"not-your-rhs", "pivot", "row-scaling", "residual-rises", "superlinear"},
 	"bcsstk16.mtx.gz":     {"not-your-rhs", "singleton-rows", "mesh-growth", "condition", "plateau", "residual-rises", "lost-orthogonality"},
+	"bcsstk24.rsa":        {"not-your-rhs", "pivot", "accuracy-floor", "row-scaling", "residual-rises"},
 	"bfwa62.mtx":          {"not-your-rhs"},
 	"can_24.psa":          {"not-your-rhs", "not-definite", "pivot"},
 	"cryg2500.mtx":        {"not-your-rhs", "double-precision", "near-null", "row-scaling"},
+	"ex14.rua":            {"not-your-rhs", "double-precision", "zero-diagonal", "row-scaling"},
 	"fs_183_1.mtx":        {"not-your-rhs", "false-convergence", "restart-stagnation", "row-scaling"},
 	"g20.rua":             {"not-your-rhs", "preconditioner-changes-nothing"},
 	"hangGlider_2.mtx":    {"not-your-rhs", "ill-conditioned", "restart-stagnation", "zero-diagonal"},

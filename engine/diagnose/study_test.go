@@ -113,7 +113,7 @@ func TestStudyRulesOnOpenMatrices(t *testing.T) {
 	}
 	want := map[string][]string{
 		"494_bus.mtx": {"row-scaling"}, "bcsstk01.rsa": {"row-scaling"}, "bcsstk01.rb": {"row-scaling"}, "LFAT5.mtx": {"row-scaling"}, "arc130.rua": {"row-scaling", "non-normal"},
-		"bcsstk13.mtx.gz": {"row-scaling"}, "bcsstk16.mtx.gz": {"singleton-rows", "mesh-growth"},
+		"bcsstk13.mtx.gz": {"row-scaling"}, "bcsstk24.rsa": {"row-scaling"}, "ex14.rua": {"row-scaling"}, "bcsstk16.mtx.gz": {"singleton-rows", "mesh-growth"},
 		"cryg2500.mtx": {"row-scaling", "near-null"}, "fs_183_1.mtx": {"row-scaling"}, "jgl009.mtx": {"near-null"}, "olm1000.mtx": {"row-scaling", "non-normal"}, "utm300.rua": {"ill-conditioned"}, "hangGlider_2.mtx": {"ill-conditioned"},
 		"pores_1.mtx": {"row-scaling"}, "rajat19.mtx": {"row-scaling"}, "reorientation_1.mtx": {"row-scaling"},
 		"watt_2.mtx": {"row-scaling"}, "west0479.mtx": {"row-scaling", "non-normal"}, "west0479.rb": {"row-scaling", "non-normal"},
@@ -122,6 +122,8 @@ func TestStudyRulesOnOpenMatrices(t *testing.T) {
 		"arc130.rua":          {"row-scaling", "condition 6.05e+10 of A is almost all scaling: 23"},
 		"bcsstk01.rsa":        {"row-scaling", "condition 8.82e+05 of A is mostly scaling: 1.36e+03", "foreseen to take about 49 its"},
 		"reorientation_1.mtx": {"row-scaling", "almost all scaling"},
+		"bcsstk24.rsa":        {"row-scaling", "the condition of A is 1.95e+11, and 1.34e+07 once rows and columns"},
+		"ex14.rua":            {"row-scaling", "of A is almost all scaling: 1.56e+05"},
 		"bcsstk16.mtx.gz":     {"singleton-rows", "74 decoupled rows (diagonal 1) are the cause of the condition 4.94e+09", "without them it is 3.11e+03"},
 		"cryg2500.mtx":        {"near-null", "one direction is nearly free", "about 4 correct digits"},
 		"jgl009.mtx":          {"near-null", "A is singular to rounding: 4 directions"},

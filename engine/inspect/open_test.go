@@ -47,8 +47,10 @@ func TestOpenMatrices(t *testing.T) {
 		{"bcsstk01.rsa", 48, 400, 0, 0, 0, inspect.Yes, inspect.Yes, inspect.No},
 		{"bcsstk13.mtx.gz", 2003, 83883, 0, 0, 0, inspect.Yes, inspect.Yes, inspect.No},
 		{"bcsstk16.mtx.gz", 4884, 290378, 0, 74, 0, inspect.Yes, inspect.Yes, inspect.No},
+		{"bcsstk24.rsa", 3562, 159910, 0, 0, 0, inspect.Yes, inspect.Yes, inspect.No},
 		{"pts5ldd03.mtx", 161, 745, 0, 0, 0, inspect.Yes, inspect.Yes, inspect.No},
 		{"hangGlider_2.mtx", 1647, 14754, 733, 0, 0, inspect.Yes, inspect.No, inspect.Unknown},
+		{"ex14.rua", 3251, 66775, 900, 0, 900, inspect.Yes, inspect.No, inspect.Unknown},
 		{"can_24.psa", 24, 160, 0, 0, 0, inspect.Yes, inspect.No, inspect.Unknown},
 		{"jagmesh7.mtx", 1138, 7450, 0, 0, 0, inspect.Yes, inspect.No, inspect.Unknown},
 		{"reorientation_1.mtx", 677, 7326, 281, 0, 0, inspect.Yes, inspect.No, inspect.Unknown},
@@ -171,7 +173,7 @@ func TestLarge(t *testing.T) {
 // Negative eigenvalues of open matrices, counted densely in NumPy (check
 // values of the project).
 func TestNegativeCountsOnOpenMatrices(t *testing.T) {
-	for name, want := range map[string]float64{"hangGlider_2.mtx": 733, "can_24.psa": 10, "bcsstk01.rsa": 0} {
+	for name, want := range map[string]float64{"hangGlider_2.mtx": 733, "ex14.rua": 900, "can_24.psa": 10, "bcsstk01.rsa": 0} {
 		f := inspected(t, open(t, name))
 		if f.NegativeCount.Value != want || (f.NegativeCount.Answer == inspect.Yes) != (want > 0) {
 			t.Errorf("%s: %s, %g negative eigenvalues (%s), want %g", name, f.NegativeCount.Answer, f.NegativeCount.Value, f.NegativeCount.Why, want)

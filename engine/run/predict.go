@@ -18,7 +18,7 @@ const (
 	ownPart    = 0.25 // and counts for so much of the logarithm
 	bend       = 0.68
 	quickest   = 0.2 // most trials take more than k e^(quickest y)
-	slowest    = 2    // and less than k e^(anyway + slowest y)
+	slowest    = 2   // and less than k e^(anyway + slowest y)
 	anyway     = 0.1
 	cyclesTold = 2   // cycles from which a restarted method is taken to go on as it does
 	steadyLow  = 0.6 // of the predicted way to go: the range of restarted methods, which are steadier
