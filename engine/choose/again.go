@@ -10,7 +10,7 @@ const (
 )
 
 // Again is the place of the trial that is to be run again next: of those in
-// about the best's time the one with the fewest runs, of these the quickest; -1
+// about the best's time, or too short to be told from it, the one with the fewest runs, of these the quickest; -1
 // where all have enough, or nothing comes near the best. What repetitions show
 // counts at once, so that no trial is ahead for good by one lucky run.
 func Again(trials []trace.History) int {
@@ -29,7 +29,7 @@ func Again(trials []trace.History) int {
 	}
 	next, near := -1, 0
 	for i, h := range trials {
-		if !inDouble(h) || all[i].own > againWithin*all[best].own {
+		if !inDouble(h) || all[i].own > againWithin*all[best].own && !like(all[i].own, all[best].own) {
 			continue
 		}
 		near++

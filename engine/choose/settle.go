@@ -69,13 +69,19 @@ func today(r Ranked) int {
 	return 1
 }
 
-// alike says that the clock does not tell r from the first.
+// like says that times too short for the clock may be much the same.
+func like(seconds, best float64) bool {
+	return seconds < tooShort && seconds <= roughly*best+hiccup
+}
+
+// alike says that the clock does not tell r from the first. Of short times it
+// does where both were repeated and their ranges lie apart.
 func alike(first, r Ranked, findings []diagnose.Finding, goal string) bool {
 	if !r.Reached || class(r, findings) != class(first, findings) || goal == Robust && r.Safe != first.Safe {
 		return false
 	}
 	if first.Seconds < tooShort {
-		return r.Seconds < tooShort && r.Seconds <= roughly*first.Seconds+hiccup
+		return like(r.Seconds, first.Seconds) && (min(first.Runs, r.Runs) <= againTimes || r.Low <= first.High || r.Seconds <= nearby*first.Seconds)
 	}
 	return r.Low <= first.High && r.Seconds <= nearby*first.Seconds
 }

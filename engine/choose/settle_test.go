@@ -37,6 +37,26 @@ func TestShortTimesRankByWork(t *testing.T) {
 	}
 }
 
+// Where short trials were repeated and their ranges lie apart, the clock does
+// tell them from each other, whatever is counted.
+func TestRepeatedShortTimesRankByTheClock(t *testing.T) {
+	const us = time.Microsecond
+	f := facts(inspect.Yes, inspect.Yes)
+	f.Entries = 500
+	less, more := brisk("cg+ic:0", 900*us, 12, 300), brisk("cg+none", 400*us, 200, 0)
+	for _, r := range [][2]time.Duration{{910 * us, 410 * us}, {800 * us, 390 * us}} {
+		less.Reruns = append(less.Reruns, trace.Run{Own: r[0]})
+		more.Reruns = append(more.Reruns, trace.Run{Own: r[1]})
+	}
+	if c := Rank(f, []trace.History{less, more}, nil, "", 0); c.Pairing != "cg+none" {
+		t.Errorf("chose %s, whose runs all take half as long again", c.Pairing)
+	}
+	less.Reruns[0].Own, less.Reruns[1].Own = 420*us, 390*us
+	if c := Rank(f, []trace.History{less, more}, nil, "", 0); c.Pairing != "cg+ic:0" {
+		t.Errorf("chose %s, though the other was once as quick", c.Pairing)
+	}
+}
+
 // A direct solve is no one-iteration bargain: making its factors counts.
 func TestWorkCountsFactors(t *testing.T) {
 	f := facts(inspect.Yes, inspect.Yes)
