@@ -87,6 +87,14 @@ func valuesWord(f *inspect.Facts) string {
 	return "singular values"
 }
 
+// doubted marks a value that is not settled.
+func doubted(settled bool) string {
+	if settled {
+		return ""
+	}
+	return "?"
+}
+
 // conditionRow is one operator of the table.
 func (m *model) conditionRow(x *inspect.Spectrum, f *inspect.Facts) string {
 	how := fmt.Sprintf("%s, %s", x.Certainty, x.How)
@@ -99,8 +107,9 @@ func (m *model) conditionRow(x *inspect.Spectrum, f *inspect.Facts) string {
 	if x.Negative > 0 {
 		how += fmt.Sprintf(", %d < 0", x.Negative)
 	}
-	low, _ := f.LowEnd(*x)
-	return left(m.signs.clean(x.Of), 25) + right(sci(low), 10) + right(sci(x.Largest), 10) + right(sci(x.Condition), 11) + "  " + m.signs.clean(how)
+	low, rounded := f.LowEnd(*x)
+	lowSettled, highSettled := x.Settled()
+	return left(m.signs.clean(x.Of), 25) + right(sci(low)+doubted(lowSettled || rounded), 10) + right(sci(x.Largest)+doubted(highSettled), 10) + right(sci(x.Condition), 11) + "  " + m.signs.clean(how)
 }
 
 // picture is the picture of the picked trial's Ritz values, or of A's

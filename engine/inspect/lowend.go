@@ -12,3 +12,10 @@ func (f *Facts) LowEnd(x Spectrum) (value float64, rounded bool) {
 	}
 	return x.Smallest, false
 }
+
+// Settled says of both ends whether they are known to a twentieth; one that is
+// not is what a subspace reached, and the end itself may lie further out.
+func (x Spectrum) Settled() (low, high bool) {
+	settled := func(value, bound float64) bool { return !(bound > 0.05*math.Abs(value)) }
+	return settled(x.Smallest, x.SmallestBound), settled(x.Largest, x.LargestBound)
+}

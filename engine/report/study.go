@@ -71,7 +71,8 @@ func valuesOf(f *inspect.Facts) string {
 // spectrumText tells a spectrum; of an A known to be singular, what is as good
 // as zero is told as that.
 func spectrumText(x inspect.Spectrum, f *inspect.Facts) string {
-	s := fmt.Sprintf("of %s: %s to %s%s", x.Of, lowText(x, f), unless(settledEnd(x.Largest, x.LargestBound), "at least "), short(x.Largest))
+	_, high := x.Settled()
+	s := fmt.Sprintf("of %s: %s to %s%s", x.Of, lowText(x, f), unless(high, "at least "), short(x.Largest))
 	if next := nextLow(x); x.Zeros > 0 && next > 0 {
 		s += fmt.Sprintf(", condition beside the zero %s", short(x.Largest/next))
 	}
@@ -113,17 +114,14 @@ func lowText(x inspect.Spectrum, f *inspect.Facts) string {
 	case rounded:
 		low = "0 (to rounding)"
 	default:
-		return unless(settledEnd(x.Smallest, x.SmallestBound), "at most ") + short(x.Smallest)
+		settled, _ := x.Settled()
+		return unless(settled, "at most ") + short(x.Smallest)
 	}
 	if next := nextLow(x); next > 0 {
 		low += ", next " + short(next) + ","
 	}
 	return low
 }
-
-// settledEnd says whether an end is known to a twentieth of it; else it is what
-// a subspace reached, and the end itself lies outside.
-func settledEnd(value, bound float64) bool { return !(bound > 0.05*math.Abs(value)) }
 
 func unless(settled bool, words string) string {
 	if settled {
