@@ -166,7 +166,7 @@ func nullText(v inspect.NullDirection, f *inspect.Facts) string {
 	if v.Rigid != "" {
 		s += ", a " + v.Rigid
 	}
-	if v.Load > 0 && finite(v.Load) {
+	if v.Load > 0x1p-53 && finite(v.Load) {
 		push := ", b pushes along it with %s of its norm"
 		if f.Symmetric.Answer != inspect.Yes {
 			push = ", b has %s of its norm along it"
