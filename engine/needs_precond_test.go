@@ -147,6 +147,28 @@ func TestNeed36UnstableFactors(t *testing.T) {
 	silent(t, v, "restart-stagnation", "divergence")
 }
 
+// What the file stores is mostly zero, as where the blocks of an element
+// are written whole. Left out, each product is of the entries that count.
+func TestNeedStoredZeros(t *testing.T) {
+	a := matrixOf(t, "sample:plate:20")
+	padded := entriesOf(a)
+	for i := range a.NRows {
+		for j := i - 4; j <= i+4; j++ {
+			if j >= 0 && j < a.NRows && a.At(i, j) == 0 {
+				padded = append(padded, linear.Entry{I: i, J: j})
+			}
+		}
+	}
+	p := fromEntries(a.NRows, padded)
+	v := ended(t, saved(t, "padded.mtx", p), Options{Pairs: []string{"cg+none", "prune/cg+none"}})
+	mustSay(t, v, "stored-zeros", diagnose.OnSystem, diagnose.Drag, inspect.Proved, "stored entries are zero", "carry them along")
+	all, pruned := trialOf(t, v, "cg+none"), trialOf(t, v, "prune/cg+none")
+	if pruned.Stop != trace.Converged || pruned.Iterations != all.Iterations {
+		t.Errorf("pruned %s after %d its, as it stands %s after %d", pruned.Stop, pruned.Iterations, all.Stop, all.Iterations)
+	}
+	silent(t, ended(t, saved(t, "a.mtx", a), Options{Pairs: []string{"cg+none"}}), "stored-zeros")
+}
+
 // Row 38: one triangle of a symmetric matrix, declared general.
 func TestNeed38OneTriangle(t *testing.T) {
 	a := matrixOf(t, "sample:plate:5")

@@ -3,6 +3,7 @@ package choose
 import (
 	"cmp"
 	"slices"
+	"strings"
 
 	"dwindle/engine/inspect"
 )
@@ -27,7 +28,7 @@ func (r Race) kinds() []string {
 	if base != "cg" {
 		out = append(out, r.underMinres()...)
 	}
-	if !fullDiagonal(r.Facts) && !symmetric(r.Facts) && r.prefix() == "" {
+	if !fullDiagonal(r.Facts) && !symmetric(r.Facts) && r.prefix() != projected {
 		for _, c := range r.Candidates {
 			if c.Solver == "gmres" && c.Precond == "ilutp" && r.admissible(c) {
 				out = append(out, "scale/"+c.Pairing) // pivots make up for the zeros
@@ -35,7 +36,7 @@ func (r Race) kinds() []string {
 		}
 	}
 	for i, k := range kindsInOrder {
-		if i == 3 && couldBeRegular(r.Facts) && r.prefix() == "" {
+		if i == 3 && couldBeRegular(r.Facts) && r.prefix() != projected {
 			add("richardson", r.factorisation())
 		}
 		if base == "cg" && slices.Contains(twins, k) {
@@ -58,18 +59,27 @@ var byPivots = []string{"ilu", "ilut", "milu", "ras", "block-jacobi"}
 func (r Race) prepared(c Candidate) []string {
 	prefix := r.prefix()
 	if !fullDiagonal(r.Facts) && slices.Contains(byPivots, c.Precond) {
-		if prefix != "" || c.Symmetric {
+		if prefix == projected || c.Symmetric {
 			return nil // a permutation of rows alone takes the symmetry
 		}
-		prefix = "match/"
+		prefix = strings.Replace(prefix, "/", ",", 1) + "match/"
 	}
 	return []string{prefix + c.Pairing}
 }
 
+// Preparations that all pairings of a race are given.
+const (
+	projected = "project/"
+	pruned    = "prune/"
+)
+
 // prefix is the preparation that every pairing of a race needs.
 func (r Race) prefix() string {
-	if r.Facts.Unreachable.Answer == inspect.Yes {
-		return "project/"
+	switch {
+	case r.Facts.Unreachable.Answer == inspect.Yes:
+		return projected
+	case r.Facts.MostlyZeros():
+		return pruned
 	}
 	return ""
 }

@@ -19,6 +19,27 @@ var digits = Rule{"few-digits", func(c Case) []Finding {
 		Evidence: []Evidence{number("digits", float64(f.Digits), ""), number("open in an entry", f.Delta, "relative")}}}
 }}
 
+// storedZeros: much of what the file stores is zero.
+var storedZeros = Rule{"stored-zeros", func(c Case) []Finding {
+	f := c.Facts
+	if !f.MostlyZeros() {
+		return nil
+	}
+	try := "prune/bicgstab+none"
+	switch {
+	case f.Symmetric.Answer == inspect.Yes && (f.PositiveDefinite.Answer != inspect.No || semidefinite(f)):
+		try = "prune/cg+none"
+	case f.Symmetric.Answer == inspect.Yes:
+		try = "prune/minres+none"
+	}
+	return []Finding{{Weight: Drag, Certainty: inspect.Proved, Subject: OnSystem,
+		Claim: fmt.Sprintf("%d of %d stored entries are zero (%.0f %%): products and incomplete factors carry them along",
+			f.ExplicitZeros, f.Stored, 100*float64(f.ExplicitZeros)/float64(f.Stored)),
+		Advice:   "leave them out where A is assembled or written",
+		Try:      []string{try},
+		Evidence: []Evidence{number("stored entries that are zero", float64(f.ExplicitZeros), fmt.Sprintf("of %d", f.Stored))}}}
+}}
+
 // triangle: a general file that holds one triangle only.
 var triangle = Rule{"one-triangle", func(c Case) []Finding {
 	t := c.Facts.TriangleOnly

@@ -44,6 +44,7 @@ var Catalogue = []Rule{
 	outliers,
 	restartLength,
 	answer,
+	storedZeros,
 	scaling,
 	penalties,
 	costly,

@@ -125,6 +125,9 @@ func TestEachRuleSpeaks(t *testing.T) {
 			Note, inspect.Measured, "1e+07"},
 		{"few-digits", func(f *inspect.Facts, _ *trace.History) { f.Digits, f.Delta = 6, 5e-6 },
 			Note, inspect.Measured, "6 digits"},
+		{"stored-zeros", func(f *inspect.Facts, _ *trace.History) {
+			f.Stored, f.ExplicitZeros = 1000, 500
+		}, Drag, inspect.Proved, "500 of 1000 stored entries are zero (50 %)"},
 		{"one-triangle", func(f *inspect.Facts, _ *trace.History) {
 			f.TriangleOnly = inspect.Fact{Answer: inspect.Yes, Certainty: inspect.Proved}
 		}, Drag, inspect.Proved, "one triangle"},

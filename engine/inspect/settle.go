@@ -113,3 +113,9 @@ func (e *exam) settleSymmetricPart(f *Facts) {
 func (f *Facts) SingularAtSight() bool {
 	return f.Singular.Answer == Yes && (f.Singular.Certainty == Proved || f.RowSumsZero.Answer == Yes || f.ColSumsZero.Answer == Yes)
 }
+
+// MostlyZeros says that at least half of what the file stores is zero, so that
+// products take twice the time they need.
+func (f *Facts) MostlyZeros() bool {
+	return f.ExplicitZeros < f.Stored && 2*f.ExplicitZeros >= f.Stored && f.Stored > 0
+}

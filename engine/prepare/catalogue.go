@@ -8,6 +8,7 @@ var Catalogue = []Entry{
 	projectEntry,
 	matchEntry,
 	symmetriseEntry,
+	pruneEntry,
 	rcmEntry,
 	amdEntry,
 	ndEntry,

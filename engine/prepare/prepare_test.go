@@ -173,6 +173,26 @@ func TestProjectRefusesRegular(t *testing.T) {
 	}
 }
 
+// What is left of a matrix without its stored zeros is the same matrix.
+func TestPrune(t *testing.T) {
+	a := linear.FromEntries(3, 3, []linear.Entry{{I: 0, J: 0, V: 2}, {I: 0, J: 2}, {I: 1, J: 1}, {I: 1, J: 2, V: 3}, {I: 2, J: 0, V: -1}})
+	p, _, err := pruneEntry.Apply(context.Background(), linear.System{A: a, B: make([]float64, 3)}, linear.Values{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	m := p.Matrix()
+	if m.Entries() != 3 || len(m.Ptr) != 4 {
+		t.Errorf("%d entries are left of 5 with two zeros", m.Entries())
+	}
+	for i := range 3 {
+		for j := range 3 {
+			if m.At(i, j) != a.At(i, j) {
+				t.Errorf("entry (%d,%d) is %g, was %g", i, j, m.At(i, j), a.At(i, j))
+			}
+		}
+	}
+}
+
 func TestCatalogue(t *testing.T) {
 	for _, e := range Catalogue {
 		if got, ok := Lookup(e.Name); !ok || got.Title != e.Title || e.Source == "" || e.Apply == nil || e.Estimate == nil {
