@@ -70,7 +70,12 @@ type rankedJSON struct {
 	Low      number    `json:"seconds_low"`
 	High     number    `json:"seconds_high"`
 	For      []forJSON `json:"for"`
-	Expected number    `json:"seconds_expected"` // of one that did not reach it
+	Expected number    `json:"seconds_expected"`    // of one that did not reach it
+	Beyond   number    `json:"iterations_expected"` // where they are more than it may take
+
+	Runs   int    `json:"runs"`   // that the seconds are the median of
+	Setups int    `json:"setups"` // and the set-up; 0: this run's own
+	Work   number `json:"work"`   // numbers touched, counted
 }
 
 // forJSON is the time predicted for a number of right-hand sides.
@@ -120,7 +125,7 @@ func toChoice(d Document) choiceJSON {
 			s = unknown
 		}
 		c.Ranked = append(c.Ranked, rankedJSON{tame(r.Pairing), s, r.Memory, number(r.Setup), r.Iterations,
-			r.Reached, number(r.BreakEven), measured(r.Low), measured(r.High), toFor(r), expected(r)})
+			r.Reached, number(r.BreakEven), measured(r.Low), measured(r.High), toFor(r), expected(r), number(r.Beyond), r.Runs, r.Setups, number(r.Work)})
 	}
 	return c
 }

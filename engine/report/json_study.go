@@ -8,6 +8,8 @@ type studyJSON struct {
 	Spectra   []spectrumJSON `json:"spectra"`
 	Null      []nullJSON     `json:"free_directions"`
 	Left      []nullJSON     `json:"left_directions"`
+	Nullity   int            `json:"nullity"`      // free directions found
+	More      bool           `json:"nullity_more"` // and more may be there
 	Normality *normalityJSON `json:"normality"`
 	Density   []binJSON      `json:"density"`
 	Couplings *couplingsJSON `json:"couplings"`
@@ -38,13 +40,21 @@ type spectrumJSON struct {
 }
 
 type nullJSON struct {
-	Quotient number   `json:"quotient"`
-	Next     number   `json:"next"`
-	Rows     []int    `json:"rows"`
-	Shares   []number `json:"shares"`
-	Rigid    *string  `json:"rigid"`
-	Support  int      `json:"support"`
-	Load     number   `json:"load"`
+	Quotient number     `json:"quotient"`
+	Next     number     `json:"next"`
+	Rows     []int      `json:"rows"`
+	Shares   []number   `json:"shares"`
+	Rigid    *string    `json:"rigid"`
+	Support  int        `json:"support"`
+	Load     number     `json:"load"`
+	Rounding number     `json:"rounding"` // of a left direction
+	Level    *levelJSON `json:"level"`    // where the direction is one number on some rows
+}
+
+type levelJSON struct {
+	Count int `json:"count"`
+	First int `json:"first"`
+	Last  int `json:"last"`
 }
 
 type normalityJSON struct {
@@ -118,7 +128,7 @@ func toStudy(f *inspect.Facts) *studyJSON {
 		return nil
 	}
 	s := f.Study
-	j := &studyJSON{Spectra: []spectrumJSON{}, Null: all(s.Null, toNull), Left: all(s.Left, toNull), Density: all(s.Density, toBin), Lines: all(s.Lines, toLines), Digits: number(s.Digits)}
+	j := &studyJSON{Spectra: []spectrumJSON{}, Null: all(s.Null, toNull), Left: all(s.Left, toNull), Nullity: s.Nullity, More: s.More, Density: all(s.Density, toBin), Lines: all(s.Lines, toLines), Digits: number(s.Digits)}
 	for _, x := range []*inspect.Spectrum{s.Raw, s.Equilibrated, s.Jacobi, s.Rest} {
 		if x != nil {
 			j.Spectra = append(j.Spectra, toSpectrum(*x))
@@ -161,7 +171,11 @@ func numbersOf(xs []float64) []number {
 }
 
 func toNull(v inspect.NullDirection) nullJSON {
-	return nullJSON{number(v.Quotient), number(v.Next), fromOne(v.Rows), numbersOf(v.Shares), optional(v.Rigid), v.Support, number(v.Load)}
+	j := nullJSON{number(v.Quotient), number(v.Next), fromOne(v.Rows), numbersOf(v.Shares), optional(v.Rigid), v.Support, number(v.Load), measured(v.Rounding), nil}
+	if l := v.Level; l != nil {
+		j.Level = &levelJSON{l.Count, l.First + 1, l.Last + 1}
+	}
+	return j
 }
 
 func toBin(b inspect.Bin) binJSON {
