@@ -48,14 +48,20 @@ func racePicture(d Document, w, h vg.Length) (picture, bool) {
 // room leaves a margin for the last label of an axis.
 func room(c draw.Canvas) draw.Canvas { return draw.Crop(c, 2, -14, 2, -8) }
 
-// startOf is the highest first residual, in decades.
+// startOf is what a plot must show the top of, in decades: the highest first
+// residual, or last one of a trial that has not come to grief.
 func startOf(ts []trace.History) float64 {
 	start := 0.0
 	for _, t := range ts {
-		if len(t.Records) > 0 {
-			if y := decades(t.Records[0].Residual); !math.IsNaN(y) {
-				start = max(start, y)
-			}
+		n := len(t.Records)
+		if n == 0 {
+			continue
+		}
+		if y := decades(t.Records[0].Residual); !math.IsNaN(y) {
+			start = max(start, y)
+		}
+		if y := decades(t.Records[n-1].Residual); !math.IsNaN(y) && t.Stop != trace.Diverged && t.Stop != trace.BrokeDown {
+			start = max(start, min(y-1, start+2))
 		}
 	}
 	return start
