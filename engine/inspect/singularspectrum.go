@@ -25,8 +25,8 @@ func (e *exam) singularSpectrum(v *view, x *Spectrum) (*Spectrum, error) {
 			return nil, err
 		}
 	}
-	if !v.invertible() {
-		return x, nil
+	if !v.invertible() || x.How == "dense" && x.Certainty == Estimated {
+		return x, nil // the inverse of factors that are singular to rounding tells no more
 	}
 	return x, e.smallestSingular(v, x)
 }
@@ -65,6 +65,10 @@ func (e *exam) largestSingular(v *view, x *Spectrum) error {
 	return nil
 }
 
+// lostBelow is the share of the largest value of (AᵀA)⁻¹ below which rounding
+// leaves nothing of the others.
+const lostBelow = 1e-12
+
 // smallestSingular measures the small end by Lanczos on (AᵀA)⁻¹.
 func (e *exam) smallestSingular(v *view, x *Spectrum) error {
 	w := make([]float64, v.order())
@@ -81,7 +85,9 @@ func (e *exam) smallestSingular(v *view, x *Spectrum) error {
 	}
 	x.Smallest, x.SmallestBound, x.Low = math.Sqrt(square), bound/(2*math.Sqrt(square)), nil
 	for _, p := range out.High {
-		x.Low = append(x.Low, 1/math.Sqrt(p.Value))
+		if p.Value > lostBelow*out.High[0].Value {
+			x.Low = append(x.Low, 1/math.Sqrt(p.Value))
+		}
 	}
 	if x.How != "dense" {
 		x.How = "factor"
