@@ -25,8 +25,8 @@ func (e *exam) singularSpectrum(v *view, x *Spectrum) (*Spectrum, error) {
 			return nil, err
 		}
 	}
-	if !v.invertible() || x.How == "dense" && x.Certainty == Estimated {
-		return x, nil // the inverse of factors that are singular to rounding tells no more
+	if !v.invertible() {
+		return x, nil
 	}
 	return x, e.smallestSingular(v, x)
 }
@@ -83,12 +83,14 @@ func (e *exam) smallestSingular(v *view, x *Spectrum) error {
 	if !(square > 0) {
 		return nil
 	}
-	x.Smallest, x.SmallestBound, x.Low = math.Sqrt(square), bound/(2*math.Sqrt(square)), nil
+	x.Smallest, x.SmallestBound = math.Sqrt(square), bound/(2*math.Sqrt(square))
+	var low []float64
 	for _, p := range out.High {
 		if p.Value > lostBelow*out.High[0].Value {
-			x.Low = append(x.Low, 1/math.Sqrt(p.Value))
+			low = append(low, 1/math.Sqrt(p.Value))
 		}
 	}
+	x.Low = append(low, x.Low[min(len(low), len(x.Low)):]...)
 	if x.How != "dense" {
 		x.How = "factor"
 	}
