@@ -65,8 +65,8 @@ func (e *exam) largestSingular(v *view, x *Spectrum) error {
 	return nil
 }
 
-// lostBelow is the share of the largest value of (AᵀA)⁻¹ below which rounding
-// leaves nothing of the others.
+// lostBelow is the share of the largest value of an inverse, or of (AᵀA)⁻¹,
+// below which rounding leaves nothing of the others.
 const lostBelow = 1e-12
 
 // smallestSingular measures the small end by Lanczos on (AᵀA)⁻¹.

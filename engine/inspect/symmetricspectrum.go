@@ -166,7 +166,9 @@ func (x *Spectrum) fillNear(out spectrum.Outermost, definite bool, shift float64
 	if definite && !x.Exact {
 		x.Smallest, x.SmallestBound, x.Low = nearest, bound, nil
 		for _, p := range out.High {
-			x.Low = append(x.Low, 1/p.Value)
+			if p.Value > lostBelow*out.High[0].Value {
+				x.Low = append(x.Low, 1/p.Value)
+			}
 		}
 	}
 	if !x.Exact {
