@@ -81,6 +81,10 @@ func (w *work) distance(y []float64, f float64) float64 {
 	return over(linear.Norm2(d), linear.Norm2(w.q.System.B))
 }
 
+// toZero is Aᵀr over ‖A‖‖r‖ that is zero to rounding. Above it a smooth r, or one
+// stiff entry of A, may make it small where the residual can still come down.
+const toZero = 1e-14
+
 // leastSquares says what a small Aᵀr beside a large r means: no residual can
 // be smaller, or A is ill-conditioned.
 func (w *work) leastSquares() {
@@ -92,8 +96,8 @@ func (w *work) leastSquares() {
 	switch {
 	case w.out.Factor != nil:
 		w.hint("%s = %s looks like a least-squares solution and is none: A is regular, only ill-conditioned, and the residual can come down", normal.Formula, num(normal.Value))
-	case w.tooLarge:
-		w.hint("%s = %s: either b is out of A's range and x a least-squares solution, or A is ill-conditioned", normal.Formula, num(normal.Value))
+	case w.tooLarge || normal.Value > toZero:
+		w.hint("%s = %s: either b is out of A's range and x near a least-squares solution, or A is ill-conditioned and the residual can come down", normal.Formula, num(normal.Value))
 	default:
 		w.hint("%s = %s: x is a least-squares solution; A is singular, to rounding at least, and b is out of its range", normal.Formula, num(normal.Value))
 	}

@@ -72,14 +72,15 @@ func (t *Trial) judgeAudit(rec trace.Record, own float64, a *audit) {
 	passed := t.limits.Target.relative(a.true2, scales{b: t.sizes.b, r0: e.firstTrue,
 		a: t.sizes.aInf, x: a.xInf, bMax: t.sizes.bInf, r: a.rInf})
 	t.forecast.seeAudit(int(rec.Iter), own, passed)
+	least, isLeast := t.leastSquares(rec.Audit, a)
 	switch {
 	case math.IsNaN(a.true2) || math.IsInf(a.true2, 0):
 		t.end(trace.Diverged, "the true residual is not a finite number")
 	case passed <= tol && !(t.limits.Unreachable > tol) && a.unsolvedField() == nil:
 		t.end(trace.Converged, t.twoWords(a))
-	case t.limits.Unreachable > tol && a.normal <= tol && rec.Audit > tol:
-		t.end(trace.LeastSquares, fmt.Sprintf("b is not in the range of A; the residual %.3g is the smallest there is", rec.Audit))
-	case a.true2 > runaway*e.firstTrue && !t.bounded():
+	case isLeast:
+		t.end(trace.LeastSquares, least)
+	case a.true2 > runaway*e.firstTrue && !t.bounded(), a.true2 > runaway*runaway*e.firstTrue: // the latter no theory allows
 		t.end(trace.Diverged, fmt.Sprintf("the true residual has grown by %.1g", a.true2/e.firstTrue)+t.unboundWords())
 	}
 	if t.ended() {
