@@ -80,7 +80,7 @@ func (t *Trial) judgeAudit(rec trace.Record, own float64, a *audit) {
 		t.end(trace.Converged, t.twoWords(a))
 	case isLeast:
 		t.end(trace.LeastSquares, least)
-	case a.true2 > runaway*e.firstTrue && !t.bounded(), a.true2 > runaway*runaway*e.firstTrue: // the latter no theory allows
+	case a.true2 > runaway*e.firstTrue && !t.bounded(), e.firstTrue > 0 && a.true2 > runaway*runaway*e.firstTrue: // the latter no theory allows
 		t.end(trace.Diverged, fmt.Sprintf("the true residual has grown by %.1g", a.true2/e.firstTrue)+t.unboundWords())
 	}
 	if t.ended() {
