@@ -124,7 +124,7 @@ const atLevel = 0.01
 // atBest says what the residual means for x, and what can be reached at all.
 func (w *work) atBest() {
 	if r := w.out.Residual; r.Two <= r.Plain && r.Two >= atLevel*r.Plain && r.Two > 0 {
-		w.hint("the residual is at the rounding level of double precision (%s of ||b||): no method gets far below it",
+		w.hint("the residual is within the rounding of double precision (up to %s of ||b||): no method is sure to get below it",
 			num(over(r.Plain, linear.Norm2(w.q.System.B))))
 	}
 	f := w.out.Factor

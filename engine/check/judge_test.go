@@ -150,7 +150,7 @@ func TestRoundingLevelIsToldAtItOnly(t *testing.T) {
 	}{{0.5, true}, {0.001, false}, {50, false}} {
 		r := math.Round(c.part*level/0x1p-60) * 0x1p-60
 		a := asked(t, m, []float64{r, 1e-8}, []float64{1, 1}, nil)
-		if text := strings.Join(a.Hints, "\n"); strings.Contains(text, "rounding level") != c.told {
+		if text := strings.Join(a.Hints, "\n"); strings.Contains(text, "rounding of double precision") != c.told {
 			t.Errorf("residual %g of the level %g (%g): %s", a.Residual.Two, a.Residual.Plain, c.part, text)
 		}
 	}
