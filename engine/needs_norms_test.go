@@ -7,6 +7,7 @@ import (
 
 	"dwindle/engine/diagnose"
 	"dwindle/engine/inspect"
+	"dwindle/engine/linear"
 )
 
 // Row 1: it says converged, and b−Ax is not small: minres watches the norm of
@@ -155,4 +156,25 @@ func TestNeed40UnsolvedRows(t *testing.T) {
 	if e := f.Evidence[0]; !(e.Value > 1e-4) || len(e.Rows) == 0 {
 		t.Errorf("componentwise error %g, rows %v", e.Value, e.Rows)
 	}
+}
+
+// x that dies away from where b acts is no unsolved row: the error of
+// each row beyond the front of the Krylov space is 1 of its own terms, and all
+// rows are alike. x of tridiag(-1,4,-1) x = e_1 falls as (2-sqrt 3)^i.
+func TestDecayingSolutionIsNoUnsolvedRow(t *testing.T) {
+	const n = 400
+	var e []linear.Entry
+	for i := range n {
+		e = append(e, linear.Entry{I: i, J: i, V: 4})
+		if i > 0 {
+			e = append(e, linear.Entry{I: i, J: i - 1, V: -1}, linear.Entry{I: i - 1, J: i, V: -1})
+		}
+	}
+	b := make([]float64, n)
+	b[0] = 1
+	v := ended(t, saved(t, "decay.mtx", fromEntries(n, e)), Options{Pairs: []string{"cg+none"}, RHS: vector(t, b...)})
+	if h := only(t, v); h.Componentwise < 0.5 || h.UnsolvedRows != 0 {
+		t.Errorf("componentwise error %g, %d rows unsolved", h.Componentwise, h.UnsolvedRows)
+	}
+	silent(t, v, "unsolved-rows")
 }

@@ -38,7 +38,7 @@ type Answer struct {
 	Printing float64 // what these digits leave open of ‖b−Ax‖₂/‖b‖₂; 0 for 17 digits
 
 	Componentwise float64          // largest |r_i|/(|A||x|+|b|)_i (Oettli and Prager 1964)
-	Unsolved      int              // rows in which it exceeds √tol
+	Unsolved      int              // rows in which it exceeds √tol, and not for a small x alone
 	Worst         []trace.RowShare // the rows with the largest, at most trace.MaxRows
 	Fields        []trace.Field    // nil where no fields are known
 
@@ -81,9 +81,10 @@ type work struct {
 	a         *linear.CSR
 	at        *linear.CSR // Aᵀ; a itself where A is symmetric
 	symmetric bool
-	r, r0     []float64 // b−Ax and b−Ax₀, length n
-	size      []float64 // |A||x|+|b|, length n
-	tooLarge  bool      // to be factorised: whether A is regular is not known
+	r, r0     []float64      // b−Ax and b−Ax₀, length n
+	size      []float64      // |A||x|+|b|, length n
+	unsolved  trace.RowShare // the worst unsolved row
+	tooLarge  bool           // to be factorised: whether A is regular is not known
 	out       *Answer
 }
 

@@ -40,9 +40,9 @@ func (w *work) judge() {
 	}
 	out.Solved = true
 	out.Verdict = fmt.Sprintf("solved: %s = %s, the rule asks for %.3g", d.Formula, num(d.Value), tol)
-	if out.Componentwise > math.Sqrt(tol) {
+	if out.Unsolved > 0 {
 		out.Verdict += fmt.Sprintf("; but %s unsolved, worst %s with %s of |A||x|+|b|", many(out.Unsolved, "row is", "rows are"),
-			out.Names.Row(out.Worst[0].Row), num(out.Worst[0].Share))
+			out.Names.Row(w.unsolved.Row), num(w.unsolved.Share))
 	}
 }
 

@@ -103,6 +103,28 @@ func TestUnsolvedRowIsNamed(t *testing.T) {
 	}
 }
 
+// Where x has died away a row may be off by all of its own terms and is solved
+// all the same: tridiag(-1,4,-1) x = e_1, cut off after 30 rows.
+func TestRowsBeyondTheSolutionAreSolved(t *testing.T) {
+	const n = 60
+	var e []linear.Entry
+	b, x := make([]float64, n), make([]float64, n)
+	b[0] = 1
+	for i := range n {
+		e = append(e, linear.Entry{I: i, J: i, V: 4})
+		if i > 0 {
+			e = append(e, linear.Entry{I: i, J: i - 1, V: -1}, linear.Entry{I: i - 1, J: i, V: -1})
+		}
+		if i < 30 { // x_i = (2-sqrt 3)^(i+1), the infinite system's
+			x[i] = math.Pow(2-math.Sqrt(3), float64(i+1))
+		}
+	}
+	a := asked(t, linear.FromEntries(n, n, e), b, x, nil)
+	if !a.Solved || a.Componentwise < 0.5 || a.Unsolved != 0 || strings.Contains(a.Verdict, "unsolved") {
+		t.Errorf("componentwise error %g: %s", a.Componentwise, a.Verdict)
+	}
+}
+
 // Aᵀr is small because A is ill-conditioned, not because b is out of reach.
 func TestSmallNormalResidualOfARegularMatrix(t *testing.T) {
 	m := dense([]float64{1, 0}, []float64{0, 1e-12}) // x misses b in the second row

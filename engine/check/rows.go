@@ -8,22 +8,26 @@ import (
 	"dwindle/engine/trace"
 )
 
-// componentwise finds the componentwise backward error and its rows.
+// componentwise finds the componentwise backward error, its rows, and those
+// that are unsolved (linear.Unsolved).
 func (w *work) componentwise() {
-	out, limit := w.out, math.Sqrt(w.q.Tol)
+	out := w.out
+	u := linear.NewUnsolved(w.a, w.q.X, math.Sqrt(w.q.Tol))
+	worst := trace.RowShare{}
 	for i, r := range w.r {
-		e := 0.0
-		if r != 0 {
-			e = math.Min(math.Abs(r)/w.size[i], 1)
-		}
+		e, unsolved, _ := u.Row(i, r, w.q.System.B[i])
 		out.Componentwise = math.Max(out.Componentwise, e)
-		if e > limit {
+		if unsolved {
 			out.Unsolved++
+			if e > worst.Share {
+				worst = trace.RowShare{Row: i, Share: e}
+			}
 		}
 		if e > 0 {
 			out.Worst = trace.KeepLargest(out.Worst, trace.RowShare{Row: i, Share: e})
 		}
 	}
+	w.unsolved = worst
 }
 
 // fields holds the residual against b field by field, where fields are known.

@@ -51,3 +51,16 @@ func TestNoToleranceBelowRoundingIsOffered(t *testing.T) {
 		}
 	}
 }
+
+// To scale is advised of unsolved rows in small units alone.
+func TestScalingIsForSmallUnits(t *testing.T) {
+	for small, words := range map[int]string{2: "scale the rows", 0: "smaller tolerance"} {
+		h := solvedTrial("cg+none", 50, time.Second)
+		h.Componentwise, h.UnsolvedRows, h.SmallRows = 0.9, 2, small
+		h.WorstRows = []trace.RowShare{{Row: 1, Share: 0.9}, {Row: 2, Share: 0.5}}
+		f := said(caseOf(definite(), h))["unsolved-rows"]
+		if !strings.Contains(f.Advice, words) || (len(f.Try) > 0) != (small > 0) {
+			t.Errorf("%d in small units: %q, tries %v", small, f.Advice, f.Try)
+		}
+	}
+}

@@ -51,21 +51,27 @@ func askFor(tol float64) string {
 	return fmt.Sprintf(", or ask for %.0e in this norm", tol)
 }
 
-// unsolvedRows: converged in the norm, but single rows are not.
+// unsolvedRows: converged in the norm, but single rows are not. To scale is of
+// use where a row is in small units; else the target of the whole is too large
+// for it.
 var unsolvedRows = Rule{"unsolved-rows", func(c Case) (out []Finding) {
 	for _, h := range c.Trials {
-		if h.Stop != trace.Converged || !(h.Componentwise > math.Sqrt(c.Tol)) || h.UnsolvedRows == 0 {
+		if h.Stop != trace.Converged || h.UnsolvedRows == 0 {
 			continue
 		}
-		rows, _ := rowsOf(h.WorstRows)
+		rows, worst := rowsOf(h.WorstRows)
 		_, solver, precond := cut(h.Pairing)
-		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
+		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
 			Claim: fmt.Sprintf("converged in the norm, but %s %s unsolved: componentwise error %s, worst in %s%s",
-				count(h.UnsolvedRows, "row"), verb(h.UnsolvedRows, "is", "are"), num(h.Componentwise), c.list(rows, 4), c.inField(rows)),
-			Advice: "these rows are in small units: scale the rows, or ask per field (--fields, --tol-field)",
-			Try:    []string{"scale/" + solver + "+" + precond},
-			Evidence: []Evidence{{Quantity: "componentwise backward error", Value: h.Componentwise,
-				Iteration: h.Iterations, Rows: rows}}})
+				count(h.UnsolvedRows, "row"), verb(h.UnsolvedRows, "is", "are"), num(worst), c.list(rows, 4), c.inField(rows)),
+			Advice: "the norm of b hides what is missing in these rows: ask for a smaller tolerance, or per field (--fields, --tol-field)",
+			Evidence: []Evidence{{Quantity: "componentwise backward error", Value: worst,
+				Iteration: h.Iterations, Rows: rows}}}
+		if h.SmallRows > 0 {
+			f.Advice = "these rows are in small units: scale the rows, or ask per field (--fields, --tol-field)"
+			f.Try = []string{"scale/" + solver + "+" + precond}
+		}
+		out = append(out, f)
 	}
 	return out
 }}

@@ -99,7 +99,7 @@ func TestEachRuleSpeaks(t *testing.T) {
 			f.DiagPositive, f.DiagNegative = 0, 100
 		}, Drag, inspect.Proved, "opposite sign"},
 		{"unsolved-rows", func(_ *inspect.Facts, h *trace.History) {
-			h.Componentwise, h.UnsolvedRows, h.WorstRows = 1, 36, []trace.RowShare{{Row: 210, Share: 1}}
+			h.Componentwise, h.UnsolvedRows, h.SmallRows, h.WorstRows = 1, 36, 36, []trace.RowShare{{Row: 210, Share: 1}}
 		}, Drag, inspect.Measured, "36 rows"},
 		{"breakdown", func(_ *inspect.Facts, h *trace.History) {
 			h.Stop = trace.BrokeDown

@@ -106,7 +106,7 @@ func worstTable(a *check.Answer) []string {
 	if len(a.Worst) == 0 {
 		return nil
 	}
-	lines := []string{fmt.Sprintf("worst rows, by |r|i/(|A||x|+|b|)i; %s above sqrt tol", plural(a.Unsolved, "row", "rows"))}
+	lines := []string{fmt.Sprintf("worst rows, by |r|i/(|A||x|+|b|)i; %s unsolved", plural(a.Unsolved, "row", "rows"))}
 	for k, r := range a.Worst {
 		if k == mostWorst {
 			break

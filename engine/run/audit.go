@@ -138,36 +138,33 @@ func (t *Trial) normalResidual(true2 float64) float64 {
 }
 
 // componentwise returns max |r_i|/(|A||x|+|b|)_i (Oettli and Prager 1964) for
-// the residual and iterate in the scratch, with the rows that exceed limit:
-// how many, and the worst. The largest of each field goes into fields.
-func (t *Trial) componentwise(limit float64, fields []trace.Field) (worst float64, over int, rows []trace.RowShare) {
+// the residual and iterate in the scratch, and the rows that are unsolved by
+// more than limit (linear.Unsolved): how many, how many of them are in small
+// units, and the worst. The largest of each field goes into fields.
+func (t *Trial) componentwise(limit float64, fields []trace.Field) (worst float64, over, small int, rows []trace.RowShare) {
 	m := t.sys.Matrix()
 	if m == nil {
-		return math.NaN(), 0, nil
+		return math.NaN(), 0, 0, nil
 	}
 	s := t.scratch
 	for f := range fields {
 		fields[f].Componentwise = 0
 	}
-	for i := range s.r {
-		cols, vals := m.Row(i)
-		size := math.Abs(t.sys.B[i])
-		for k, c := range cols {
-			size += math.Abs(vals[k] * s.x[c])
-		}
-		e := 0.0
-		if r := math.Abs(s.r[i]); r != 0 {
-			e = math.Min(r/size, 1)
-		}
+	u := linear.NewUnsolved(m, s.x, limit)
+	for i, r := range s.r {
+		e, unsolved, inSmall := u.Row(i, r, t.sys.B[i])
 		worst = math.Max(worst, e)
 		if fields != nil {
 			f := &fields[t.sys.FieldOf[i]]
 			f.Componentwise = math.Max(f.Componentwise, e)
 		}
-		if e > limit {
+		if unsolved {
 			over++
 			rows = trace.KeepLargest(rows, trace.RowShare{Row: i, Share: e})
 		}
+		if inSmall {
+			small++
+		}
 	}
-	return worst, over, rows
+	return worst, over, small, rows
 }

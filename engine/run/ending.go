@@ -205,7 +205,7 @@ func (t *Trial) end(stop trace.Stop, reason string) {
 func (t *Trial) finalAudit() {
 	t.look(true)
 	a := t.audit(true)
-	worst, count, rows := t.componentwise(math.Sqrt(t.limits.Target.Tol), a.fields)
+	worst, count, small, rows := t.componentwise(math.Sqrt(t.limits.Target.Tol), a.fields)
 	t.doubt = t.ownDoubt()
 	t.mu.Lock()
 	defer t.mu.Unlock()
@@ -216,7 +216,7 @@ func (t *Trial) finalAudit() {
 		h.Records = append(h.Records[:len(h.Records)-1:len(h.Records)-1], last)
 	}
 	t.noteAudit(&a, last, int(last.Iter))
-	h.Componentwise, h.UnsolvedRows, h.WorstRows = worst, count, rows
+	h.Componentwise, h.UnsolvedRows, h.SmallRows, h.WorstRows = worst, count, small, rows
 }
 
 // event appends one event of the driver's own.

@@ -158,8 +158,9 @@ type History struct {
 	Rounded          float64    // with TwoDoubles: the true residual of x rounded to one double; else NaN
 	Backward         float64    // normwise backward error, last full audit; NaN before
 	Componentwise    float64    // Oettli–Prager backward error; NaN before
-	WorstRows        []RowShare // rows with the largest componentwise error (Share is it, capped at 1)
-	UnsolvedRows     int        // rows whose componentwise error exceeds √tol
+	WorstRows        []RowShare // unsolved rows with the largest componentwise error (Share is it, capped at 1)
+	UnsolvedRows     int        // rows whose componentwise error exceeds √tol, and not for a small x alone
+	SmallRows        int        // of these, rows whose norm is far below those of the others
 	Error            float64    // relative true error where the solution is known; NaN
 	Floor            float64    // estimated accuracy floor of the true residual; NaN before known
 	FloorHits        int        // audits at the floor
