@@ -64,3 +64,25 @@ func TestScalingIsForSmallUnits(t *testing.T) {
 		}
 	}
 }
+
+// Factors are held against complete ones as L+U each, whichever of them are
+// kept as one triangle: of 100 rows, 1000 entries of one triangle are 1900.
+func TestFactorsAreCountedAlike(t *testing.T) {
+	for _, c := range []struct {
+		kept, whole   string
+		entries, full int64
+		want          bool
+	}{
+		{"gmres:30+ilut:1e-3,10", "richardson:1+ldl", 1200, 1000, false},
+		{"gmres:30+ilut:1e-3,10", "richardson:1+cholesky", 1600, 1000, true},
+		{"gmres:30+ilut:1e-3,10", "richardson:1+lu", 1600, 1900, true},
+		{"cg+ict:1e-3,10", "richardson:1+lu", 1000, 1900, true},
+		{"cg+ict:1e-3,10", "richardson:1+ldl", 1000, 1500, false},
+	} {
+		h, d := solvedTrial(c.kept, 10, time.Second), solvedTrial(c.whole, 1, time.Second)
+		h.Notes.Entries, d.Notes.Entries, d.Direct = c.entries, c.full, true
+		if f, ok := said(caseOf(definite(), h, d))["nothing-dropped"]; ok != c.want {
+			t.Errorf("%d entries of %s beside %d of %s: %v %s", c.entries, c.kept, c.full, c.whole, ok, f.Claim)
+		}
+	}
+}

@@ -57,21 +57,32 @@ var nearComplete = Rule{"nothing-dropped", func(c Case) (out []Finding) {
 	if !ok {
 		return nil
 	}
+	whole := bothFactors(complete, c.Facts.N)
 	for _, h := range c.Trials {
 		_, _, m := cut(h.Pairing)
-		if !incomplete(m) || h.Direct || h.Notes.Entries < worthwhile || float64(h.Notes.Entries) < nearlyAll*float64(complete.Notes.Entries) {
+		kept := bothFactors(h, c.Facts.N)
+		if !incomplete(m) || h.Direct || h.Notes.Entries < worthwhile || float64(kept) < nearlyAll*float64(whole) {
 			continue
 		}
 		out = append(out, Finding{Weight: Note, Certainty: inspect.Measured, Subject: h.Pairing,
-			Claim: fmt.Sprintf("%s keeps %d entries, complete factors in a good ordering have %d (%.0f %%): there is next to no fill to drop",
-				m, h.Notes.Entries, complete.Notes.Entries, 100*float64(h.Notes.Entries)/float64(complete.Notes.Entries)),
+			Claim: fmt.Sprintf("%s keeps %d entries of L+U, complete factors in a good ordering have %d (%.0f %%): there is next to no fill to drop",
+				m, kept, whole, 100*float64(kept)/float64(whole)),
 			Advice: "factorise completely: " + complete.Pairing,
 			Try:    []string{complete.Pairing},
-			Evidence: []Evidence{number("entries kept", float64(h.Notes.Entries), ""),
-				number("entries of the complete factors", float64(complete.Notes.Entries), ""), number("fill", h.Notes.Fill, "entries of A")}})
+			Evidence: []Evidence{number("entries kept", float64(kept), "of L+U"),
+				number("entries of the complete factors", float64(whole), "of L+U"), number("fill", h.Notes.Fill, "entries of A")}})
 	}
 	return out
 }}
+
+// bothFactors counts the entries of L+U for n rows. Of factors that are one and
+// its transpose the notes count one, its diagonal included.
+func bothFactors(h trace.History, n int) int64 {
+	if _, _, m := cut(h.Pairing); symmetricFactors(kindOfM(m)) {
+		return 2*h.Notes.Entries - int64(n)
+	}
+	return h.Notes.Entries
+}
 
 // incomplete says whether a preconditioner drops by a tolerance or a level.
 func incomplete(m string) bool {
