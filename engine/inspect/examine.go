@@ -78,17 +78,18 @@ type exam struct {
 	reserved  float64 // of them, for what comes after the spectra
 	out       Study
 
-	scaled   *linear.CSR          // A equilibrated: B = R A C
-	row, col []float64            // R and C
-	solver   solver               // of B; nil where there is no factorisation
-	shift    float64              // solver is that of B + shift·I
-	singular bool                 // B has no factorisation: a pivot vanishes to rounding
-	replaced []bool               // rows of the identity whose columns are not; nil: none
-	half     *direct.Definiteness // of (A+Aᵀ)/2; nil: not looked at
-	free     [][]float64          // nearly free directions of B, orthonormal
-	parts    *linear.Components   // of A; nil: not yet asked for
-	reach    *reach               // of a symmetric A; nil: not looked for
-	fromLeft [][]float64          // those of Bᵀ to the same singular values, where they were found densely
+	scaled    *linear.CSR          // A equilibrated: B = R A C
+	row, col  []float64            // R and C
+	solver    solver               // of B; nil where there is no factorisation
+	shift     float64              // solver is that of B + shift·I
+	singular  bool                 // B has no factorisation: a pivot vanishes to rounding
+	replaced  []bool               // rows of the identity whose columns are not; nil: none
+	penalised map[int]bool         // rows with a penalty on the diagonal; nil: none
+	half      *direct.Definiteness // of (A+Aᵀ)/2; nil: not looked at
+	free      [][]float64          // nearly free directions of B, orthonormal
+	parts     *linear.Components   // of A; nil: not yet asked for
+	reach     *reach               // of a symmetric A; nil: not looked for
+	fromLeft  [][]float64          // those of Bᵀ to the same singular values, where they were found densely
 }
 
 // facts returns the facts with a copy of the study so far.

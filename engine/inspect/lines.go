@@ -23,7 +23,7 @@ func (e *exam) lines() []LineRows {
 		sizes[i] = math.Abs(v)
 	}
 	usual := median(sizes)
-	kinds := map[string]*LineRows{}
+	kinds, penalised := map[string]*LineRows{}, map[int]bool{}
 	values := map[string][]float64{}
 	var others []float64
 	for i, v := range d {
@@ -40,6 +40,9 @@ func (e *exam) lines() []LineRows {
 		l := kinds[kind]
 		l.Count++
 		l.Rows = first16(l.Rows, i)
+		if kind == "penalty" {
+			penalised[i] = true
+		}
 		values[kind] = append(values[kind], v)
 	}
 	var out []LineRows
@@ -50,6 +53,9 @@ func (e *exam) lines() []LineRows {
 			continue
 		}
 		slices.Sort(values[kind])
+		if kind == "penalty" {
+			e.penalised = penalised
+		}
 		l.Value, l.Other = values[kind][len(values[kind])/2], typical
 		out = append(out, *l)
 	}

@@ -11,16 +11,16 @@ func (e *exam) pattern() error {
 	if !e.spend(60 * float64(len(e.a.Val)+e.f.N)) {
 		return nil
 	}
-	e.out.Couplings = e.couplings()
 	e.out.Block = e.block()
 	e.out.Lopsided = e.lopsided()
 	e.out.Lines = e.lines()
+	e.out.Couplings = e.couplings()
 	return e.ctx.Err()
 }
 
 // couplings tells how the strength of neighbours differs: of rows whose
 // couplings all have one sign, opposite to the diagonal, as a scalar law of
-// balance gives them.
+// balance gives them. A penalty on the diagonal is no jump of the coefficients.
 func (e *exam) couplings() *Couplings {
 	c := &Couplings{Jump: 1, Dimension: math.NaN()}
 	d := make([]float64, e.f.N)
@@ -70,7 +70,7 @@ func (e *exam) rowCouplings(i int, d []float64) (ratio float64, neighbour int, j
 		}
 		count++
 		strongest = max(strongest, math.Abs(vals[k]))
-		if r := math.Abs(d[i] / d[j]); d[j] != 0 && r > jump {
+		if r := math.Abs(d[i] / d[j]); d[j] != 0 && r > jump && !e.penalised[i] && !e.penalised[int(j)] {
 			jump, neighbour = r, int(j)
 		}
 	}
