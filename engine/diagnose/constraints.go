@@ -2,6 +2,7 @@ package diagnose
 
 import (
 	"fmt"
+	"strings"
 
 	"dwindle/engine/inspect"
 )
@@ -52,10 +53,16 @@ var replaced = Rule{"row-replaced", func(c Case) []Finding {
 }}
 
 // fewAsymmetric: all that is not symmetric lies in a few rows, that are not of
-// the identity form.
+// the identity form, or in a few single entries.
 var fewAsymmetric = Rule{"few-rows-asymmetric", func(c Case) []Finding {
 	f := c.Facts
-	if f.Study == nil || f.Study.Lopsided == nil || f.Study.Lopsided.OnlyThem || len(f.Study.Lopsided.Few) == 0 {
+	if f.Study == nil || f.Study.Lopsided == nil || f.Study.Lopsided.OnlyThem {
+		return nil
+	}
+	if pairs := f.Study.Lopsided.Pairs; len(pairs) > 0 {
+		return unequal(pairs)
+	}
+	if len(f.Study.Lopsided.Few) == 0 {
 		return nil
 	}
 	few := f.Study.Lopsided.Few
@@ -66,6 +73,21 @@ var fewAsymmetric = Rule{"few-rows-asymmetric", func(c Case) []Finding {
 		Evidence: []Evidence{{Quantity: "rows that carry all asymmetry", Value: float64(len(few)), Iteration: none, Rows: few},
 			number("rows that differ from their column", float64(f.Study.Lopsided.Count), "")}}}
 }}
+
+// unequal tells of single entries that have no equal across.
+func unequal(pairs [][2]int) []Finding {
+	var names []string
+	var rows []int
+	for _, p := range pairs {
+		i, j := p[0]+1, p[1]+1
+		names = append(names, fmt.Sprintf("a_%d,%d and a_%d,%d differ", i, j, j, i))
+		rows = append(rows, p[0], p[1])
+	}
+	return []Finding{{Weight: Drag, Certainty: inspect.Measured, Subject: OnSystem,
+		Claim:    fmt.Sprintf("A is symmetric but for %s: %s", count(len(pairs), "pair")+" of entries", strings.Join(names, ", ")),
+		Advice:   "look at how these entries are assembled: symmetric, A could be solved by cg or minres",
+		Evidence: []Evidence{{Quantity: "unequal pairs", Value: float64(len(pairs)), Iteration: none, Rows: rows}}}}
+}
 
 // smallShift is the shift of the diagonal, relative to it, up to which A is
 // nearly definite.

@@ -45,3 +45,21 @@ func TestPenaltyIsNoJump(t *testing.T) {
 		t.Errorf("%+v", c)
 	}
 }
+
+// Single entries without their equal across are named, up to three pairs.
+func TestUnequalPairsAreNamed(t *testing.T) {
+	for k, want := range [][][2]int{nil, {{50, 51}}, {{50, 51}, {120, 121}}, {{50, 51}, {120, 121}, {180, 195}}, nil} {
+		changed := [][2]int{{50, 51}, {121, 120}, {195, 180}, {199, 198}}[:k]
+		l := changedPlate(t, "plate:15", func(i, j int, v float64) float64 {
+			for c, p := range changed {
+				if i == p[0] && j == p[1] {
+					return float64(c) * v / 5 // 0: the entry is missing
+				}
+			}
+			return v
+		}).Lopsided
+		if k == 0 && l != nil || k > 0 && (l == nil || l.Count != 2*k || !reflect.DeepEqual(l.Pairs, want)) {
+			t.Errorf("%d entries changed: %+v", k, l)
+		}
+	}
+}

@@ -31,6 +31,7 @@ func (e *exam) lopsided() *Lopsided {
 	}
 	e.replaced = identity
 	l.Few = e.fewest(at, uneven)
+	l.Pairs = e.pairs(at, uneven, l.Count)
 	l.OnlyThem = l.Identity > 0
 	for i := range e.f.N {
 		if !uneven[i] || identity[i] || !l.OnlyThem {
@@ -78,6 +79,33 @@ func (e *exam) identityRow(i int) bool {
 		}
 	}
 	return held
+}
+
+// mostPairs is how many unequal pairs are told one by one, where A has fiftyfold
+// as many rows.
+const mostPairs = 3
+
+// pairs lists the unequal pairs a_ij and a_ji, i < j, of which count rows hold
+// one; nil where they are not few.
+func (e *exam) pairs(at *linear.CSR, uneven []bool, count int) (out [][2]int) {
+	if count > 2*mostPairs {
+		return nil
+	}
+	for i, is := range uneven {
+		if !is {
+			continue
+		}
+		cols, vals := at.Row(i)
+		for _, j := range differing(e, cols, vals, i) {
+			if i < int(j) {
+				out = append(out, [2]int{i, int(j)})
+			}
+		}
+	}
+	if len(out) > mostPairs || 50*len(out) > e.f.N {
+		return nil
+	}
+	return out
 }
 
 // mostFew is how many rows may carry all asymmetry to be called few.

@@ -126,10 +126,11 @@ type LineRows struct {
 type Lopsided struct {
 	Rows         []int // rows with an asymmetric entry, the first 16
 	Count        int
-	Identity     int   // of them: rows of the form e_i whose column is not
-	IdentityRows []int // the first 16
-	OnlyThem     bool  // A without these rows and columns is symmetric
-	Few          []int // so few rows, at most 16, that A is symmetric without them and their columns; nil if none are known
+	Identity     int      // of them: rows of the form e_i whose column is not
+	IdentityRows []int    // the first 16
+	OnlyThem     bool     // A without these rows and columns is symmetric
+	Few          []int    // so few rows, at most 16, that A is symmetric without them and their columns; nil if none are known
+	Pairs        [][2]int // the rows i < j of all unequal a_ij and a_ji, where they are no more than three; else nil
 }
 
 // Growth is how iterations grow with size, from smaller parts cut out of the system.
