@@ -44,14 +44,17 @@ func curvature(f *inspect.Facts, h trace.History, e trace.Event) Finding {
 	return g
 }
 
-// notDefinite: a symmetric A whose diagonal is positive is not positive
-// definite all the same. Silent where a mechanism says
+// notDefinite: a symmetric A whose diagonal is positive, or all but a few entries
+// of it, is not positive definite all the same. Silent where a mechanism says
 // why.
 var notDefinite = Rule{"not-definite", func(c Case) []Finding {
 	f := c.Facts
 	if f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer != inspect.No || semidefinite(f) ||
-		f.DiagNegative+f.DiagZero+f.DiagMissing > 0 || mechanism.Judge(c) != nil {
+		f.DiagZero+f.DiagMissing > 0 || mechanism.Judge(c) != nil {
 		return nil
+	}
+	if f.DiagNegative > 0 {
+		return c.oddSigns()
 	}
 	g := Finding{Weight: Drag, Certainty: f.PositiveDefinite.Certainty, Subject: OnSystem,
 		Claim:  "A has a positive diagonal, yet is not positive definite: " + f.PositiveDefinite.Why,
@@ -64,6 +67,29 @@ var notDefinite = Rule{"not-definite", func(c Case) []Finding {
 	}
 	return []Finding{g}
 }}
+
+// fewSigns is the part of the rows up to which those whose diagonal has another
+// sign than that of all others are few.
+const fewSigns = 0.02
+
+// oddSigns tells of few diagonal entries of another sign than all others: a
+// quadratic form of both signs, proved by two unit vectors.
+func (c Case) oddSigns() []Finding {
+	f, is, others := c.Facts, "negative", "positive"
+	few := f.DiagNegative
+	if few > f.DiagPositive {
+		few, is, others = f.DiagPositive, others, is
+	}
+	if few == 0 || float64(few) > fewSigns*float64(f.N) {
+		return nil
+	}
+	return []Finding{{Weight: Drag, Certainty: inspect.Proved, Subject: OnSystem,
+		Claim: fmt.Sprintf("%d of %d diagonal entries %s %s (%s), all others are %s: A is not definite",
+			few, f.N, verb(few, "is", "are"), is, c.list(f.DiagRows, 6), others),
+		Advice:   fmt.Sprintf("look at %s for a wrong sign; if it is meant so, use minres, and no ic or ssor", verb(few, "this row", "these rows")),
+		Try:      instead(f),
+		Evidence: []Evidence{{Quantity: is + " diagonal entries", Value: float64(few), Unit: fmt.Sprintf("of %d", f.N), Iteration: none, Rows: f.DiagRows}}}}
+}
 
 // oppositeSign: −A is positive definite.
 var oppositeSign = Rule{"opposite-sign", func(c Case) []Finding {
