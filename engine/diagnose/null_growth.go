@@ -24,13 +24,20 @@ var nullGrowth = Rule{"null-space-growth", func(c Case) (out []Finding) {
 		if prep == "project/" || !h.Stop.Ended() || solved(h) || !(last.Audit > regrown*low.Audit) {
 			continue
 		}
-		out = append(out, Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
+		f := Finding{Weight: Drag, Certainty: inspect.Measured, Subject: h.Pairing,
 			Claim: fmt.Sprintf("||b-Ax|| falls to %s of ||b|| at it %d, then grows to %s along the null space of A",
 				num(low.Audit), low.Iter, num(last.Audit)),
 			Advice: "take the unreachable part out of b, or use a method of minimal residuals and stop it there",
 			Try:    []string{"project/cg+none", "minres+none"},
 			Evidence: []Evidence{{Quantity: "smallest true residual", Value: low.Audit, Unit: "of ||b||", Iteration: int(low.Iter)},
-				{Quantity: "last true residual", Value: last.Audit, Unit: "of ||b||", Iteration: int(last.Iter)}}})
+				{Quantity: "last true residual", Value: last.Audit, Unit: "of ||b||", Iteration: int(last.Iter)}}}
+		if h.Monotone {
+			f.Claim = fmt.Sprintf("||b-Ax|| falls to %s of ||b|| at it %d and grows to %s, which it cannot do in exact arithmetic: x runs off along the null space of A, and what grows is rounding times its size",
+				num(low.Audit), low.Iter, num(last.Audit))
+			f.Advice = "take the unreachable part out of b, or stop where the residual no longer falls"
+			f.Try = projected(c.Facts)
+		}
+		out = append(out, f)
 	}
 	return out
 }}

@@ -74,3 +74,17 @@ func (c Case) equations(left []inspect.NullDirection) (claim string, rows []int)
 func outOfReach(c Case) bool {
 	return c.Facts.Unreachable.Answer == inspect.Yes && c.Facts.Unreachable.Value > c.Tol
 }
+
+// projected are pairings that take what is out of reach out of b; none where
+// not all of it is known.
+func projected(f *inspect.Facts) []string {
+	switch {
+	case f.Study != nil && f.Study.More:
+		return nil
+	case f.Symmetric.Answer != inspect.Yes:
+		return []string{"project/gmres:30+none"}
+	case f.NegativeCount.Answer == inspect.Yes || f.DiagNegative+f.DiagZero+f.DiagMissing > 0:
+		return []string{"project/minres+none"}
+	}
+	return []string{"project/cg+jacobi"}
+}

@@ -35,6 +35,8 @@ var scaling = Rule{"row-scaling", func(c Case) []Finding {
 	}
 	try := []string{"scale/gmres:30+none"}
 	switch {
+	case outOfReach(c): // scaled or not, what is out of reach spoils them
+		try = projected(f)
 	case f.Symmetric.Answer == inspect.Yes && (f.PositiveDefinite.Answer != inspect.No || semidefinite(f)):
 		try = []string{"cg+jacobi", "scale/cg+none"}
 	case f.Symmetric.Answer == inspect.Yes:
@@ -125,10 +127,11 @@ func scalingAdvice(c Case, try []string) string {
 }
 
 // foreseeScaled adds what cg needs once A is scaled by its diagonal, where it
-// can be foreseen.
+// can be foreseen. Of a singular A the steps on its eigenvalues would count the
+// one at zero, by what rounding has made of it.
 func foreseeScaled(c Case, g *Finding) {
 	const scaled = "cg+jacobi"
-	if c.Facts.Study == nil || !slices.Contains(g.Try, scaled) {
+	if c.Facts.Study == nil || c.Facts.Singular.Answer == inspect.Yes || !slices.Contains(g.Try, scaled) {
 		return
 	}
 	its, ok := foresee(c.Facts.Study.Jacobi, c.Tol)
