@@ -26,6 +26,9 @@ var breakdown = Rule{"breakdown", func(c Case) (out []Finding) {
 		}
 		for _, e := range events(h, trace.Breakdown) {
 			kind := kindOf(e.Quantity, regular(c.Facts) && !strings.HasSuffix(h.Pairing, "+none"))
+			if kind.shadow && e.Iter == 1 {
+				kind = atOnce(c, h, e.Quantity)
+			}
 			claim := fmt.Sprintf("broke down at iteration %d: %s = %s as a cosine, zero to rounding", e.Iter, e.Quantity, num(e.Value))
 			if kind.means != "" {
 				claim += ": " + kind.means
@@ -39,6 +42,25 @@ var breakdown = Rule{"breakdown", func(c Case) (out []Finding) {
 	}
 	return out
 }}
+
+// atOnce is the loss of a shadow vector in the first step, where it is r0 itself:
+// a number of the quadratic form of A, which may vanish for a regular A as well.
+func atOnce(c Case, h trace.History, quantity string) kind {
+	prep, _, m := cut(h.Pairing)
+	r := "r0"
+	if prep == "" && c.Facts.Guess == nil {
+		r = "b"
+	}
+	form := r + "'A " + r
+	switch {
+	case m != "none" && quantity == "phat'Ap":
+		form = r + "'inv(M) A inv(M) " + r
+	case m != "none":
+		form = r + "'A inv(M) " + r
+	}
+	return kind{fmt.Sprintf("the shadow vector is %s there, and %s = 0, so that no step length exists", r, form),
+		"take another shadow vector or another starting guess, or use gmres", false}
+}
 
 // kind is what the loss of one quantity means and what helps.
 type kind struct {

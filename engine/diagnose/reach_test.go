@@ -48,6 +48,33 @@ func TestScalingOfASingularSystem(t *testing.T) {
 	}
 }
 
+// A shadow vector lost in the first step is r0, and says nothing of whether A is
+// singular; lost later it may.
+func TestBreakdownInTheFirstStep(t *testing.T) {
+	for _, c := range []struct {
+		pairing, quantity string
+		iter              uint32
+		words             string
+		singular          bool
+	}{
+		{"bicgstab+none", "rhat'v", 1, "b'A b = 0", false},
+		{"cgs+ilu:0", "rhat'v", 1, "b'A inv(M) b = 0", false},
+		{"bicg+jacobi", "phat'Ap", 1, "b'inv(M) A inv(M) b = 0", false},
+		{"scale/bicgstab+none", "rhat'v", 1, "r0'A r0 = 0", false},
+		{"bicgstab+none", "rhat'v", 7, "orthogonal to A p", true},
+	} {
+		h := solvedTrial(c.pairing, int(c.iter), time.Second)
+		h.Stop, h.DefiniteA, h.SymmetricA = trace.BrokeDown, false, false
+		h.Events = []trace.Event{{Iter: c.iter, Kind: trace.Breakdown, Quantity: c.quantity}}
+		f := beyondReach()
+		f.Unreachable.Answer = inspect.No
+		g := said(caseOf(f, h))["breakdown"]
+		if !strings.Contains(g.Claim, c.words) || strings.Contains(g.Claim, "A is singular") != c.singular {
+			t.Errorf("%s at it %d: %q", c.pairing, c.iter, g.Claim)
+		}
+	}
+}
+
 // A method whose residual cannot grow is not told to be replaced by one.
 func TestGrowthOfMinimalResiduals(t *testing.T) {
 	for _, monotone := range []bool{false, true} {
