@@ -3,6 +3,8 @@ package diagnose
 import (
 	"fmt"
 	"math"
+	"slices"
+	"strings"
 
 	"dwindle/engine/inspect"
 )
@@ -28,6 +30,9 @@ var nearNull = Rule{"near-null", func(c Case) []Finding {
 		c.singularToRounding(&g)
 		return []Finding{g}
 	}
+	if c.tied(&g) {
+		g.Evidence[0].Rows = nil
+	}
 	if x := s.Equilibrated; x != nil && x.Condition > 0 && s.Digits >= 0 {
 		g.Claim += fmt.Sprintf("; the condition %s leaves about %s of x", num(x.Condition), count(int(math.Round(s.Digits)), "correct digit"))
 		g.Evidence = append(g.Evidence, number("condition after equilibration", x.Condition, ""), number("correct digits to expect of x", math.Round(s.Digits), "about"))
@@ -35,6 +40,36 @@ var nearNull = Rule{"near-null", func(c Case) []Finding {
 	g.Advice += openDigits(f, last.Quotient)
 	return []Finding{g}
 }}
+
+// tied words a finding anew where all that is nearly free are pairs of unknowns
+// tied to each other: beside such a tie what they do together is small, and
+// there is nothing to hold.
+func (c Case) tied(g *Finding) bool {
+	var pairs []string
+	least := math.Inf(1)
+	for _, d := range c.Facts.Study.Null {
+		switch {
+		case d.Tied > 0:
+			rows := slices.Sorted(slices.Values(d.Rows[:2]))
+			pairs, least = append(pairs, c.list(rows, 2)), math.Min(least, d.Tied)
+			g.Evidence = append(g.Evidence, Evidence{Quantity: "their coupling over their others", Value: d.Tied, Iteration: none, Rows: rows})
+		case d.Quotient > inspect.ZeroLimit:
+			return false
+		}
+	}
+	if len(pairs) == 0 || len(pairs) < len(c.Facts.Study.Null)-constants(c.Facts) {
+		return false
+	}
+	d := c.Facts.Study.Null[len(c.Facts.Study.Null)-1]
+	g.Claim = fmt.Sprintf("the unknowns of %s are tied to each other %s times as stiffly as to all else: beside that, after equilibration, A maps what they do together to %s of its norm, the next to %s",
+		strings.Join(pairs[:min(len(pairs), mostNamed)], ", "), num(least), num(d.Quotient), num(d.Next))
+	if len(pairs) > mostNamed {
+		g.Claim = strings.Replace(g.Claim, " are tied", fmt.Sprintf(" and %d more pairs are tied", len(pairs)-mostNamed), 1)
+	}
+	g.Advice = "make one unknown of such a pair, or scale the tie down: some 1e4 times the rest holds as well and costs fewer digits; otherwise solve directly, trust only these digits" +
+		measuredDigits(c) + ", and " + reachable(c)
+	return true
+}
 
 // singularToRounding words a finding on directions that A maps to zero to
 // rounding: which unknowns carry them, which equations depend on each other,

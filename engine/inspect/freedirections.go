@@ -52,6 +52,7 @@ func (e *exam) freeDirections() error {
 		if e.symmetric {
 			d.Load = e.load(d.Vector)
 		}
+		d.Tied = e.tie(d)
 		e.out.Null = append(e.out.Null, d)
 	}
 	e.measureReach(finite(next))

@@ -64,6 +64,7 @@ type NullDirection struct {
 	Support  int       // rows that carry 99 % of it
 	Part     int       // the connected part of A, from 0, that most of it lies in
 	PartRows int       // rows of that part
+	Tied     float64   // how many times as stiff as all else the two unknowns that carry it are tied to each other; 0 if they are not
 	Level    *Level    // where it is one number; nil if it is none such
 	Vector   []float64 `json:"-"` // length n, in the user's units
 }
