@@ -91,3 +91,17 @@ func TestNoFactorsOfSingular(t *testing.T) {
 		t.Errorf("chose %s of a singular matrix", c.Pairing)
 	}
 }
+
+// Without its stored zeros A has fewer entries to multiply with: 1000 of 2000,
+// half of 800 stored ones being zero. Products of cg read 10 vectors beside.
+func TestPrunedProductsAreCountedWithoutZeros(t *testing.T) {
+	f := facts(inspect.Yes, inspect.Yes)
+	f.N, f.Entries, f.Stored, f.ExplicitZeros = 100, 2000, 800, 400
+	for pairing, want := range map[string]float64{"cg+none": 3000, "prune/cg+none": 2000, "prune,scale/cg+none": 2000,
+		"scale/cg+none": 3000, "prune/cg+poly:4": 2000 + eachUse*4*1000} {
+		h := brisk(pairing, time.Millisecond, 1, 0)
+		if got := work(f, h) - making(bare(split(pairing).precond), 0, 100); got != want {
+			t.Errorf("%s: %g, want %g", pairing, got, want)
+		}
+	}
+}

@@ -20,11 +20,25 @@ const (
 // uses of M, vectors of its method, and the making of M. Of trials too short
 // for the clock it ranks better than their times, and the same on every run.
 func work(f *inspect.Facts, h trace.History) float64 {
-	n, entries := float64(f.N), math.Max(float64(f.Entries), float64(f.N))
+	n := float64(f.N)
 	p := split(h.Pairing)
+	entries := math.Max(worked(f, p.preps), n)
 	own := float64(h.Notes.Entries)
 	return float64(h.Products)*(entries+vectors(p.solver, h.Iterations)*n) + eachUse*float64(h.PrecondUses)*using(p.precond, own, entries) +
 		making(bare(p.precond), own, n)
+}
+
+// worked is how many entries of A a product runs over behind these preparations:
+// prune leaves the stored zeros out. The share of those of the file is taken for
+// that of A, which may have more entries than the file.
+func worked(f *inspect.Facts, preps string) float64 {
+	entries := float64(f.Entries)
+	for _, name := range strings.Split(strings.TrimSuffix(preps, "/"), ",") {
+		if bare(name)+"/" == pruned && f.Stored > 0 {
+			return entries * (1 - float64(f.ExplicitZeros)/float64(f.Stored))
+		}
+	}
+	return entries
 }
 
 // using is the work of one use of a preconditioner with own entries, where A
