@@ -39,3 +39,29 @@ func TestUnequalPairsAreTold(t *testing.T) {
 		t.Errorf("%q, want %q", g.Claim, want)
 	}
 }
+
+// Replaced rows are to be moved to the right-hand side: no pairing does that.
+func TestReplacedRowsOfferNoTry(t *testing.T) {
+	f := definite()
+	f.Symmetric = inspect.Fact{Answer: inspect.No, Certainty: inspect.Proved}
+	f.Study = &inspect.Study{Lopsided: &inspect.Lopsided{Count: 2, Identity: 1, IdentityRows: []int{3}, OnlyThem: true}}
+	if g, ok := said(caseOf(f))["row-replaced"]; !ok || len(g.Try) > 0 {
+		t.Errorf("%v, tries %v", ok, g.Try)
+	}
+}
+
+// A bad guess under a rule relative to its residual: how much of b that leaves
+// is told, and a multiple of the guess, which changes the rule too, is not
+// advised.
+func TestBadGuessUnderItsOwnRule(t *testing.T) {
+	f := definite()
+	f.Guess = &inspect.Guess{Residual: 3800, Scale: 0.001, Scaled: 0.01}
+	for rule, words := range map[string]string{"initial": "1e-08 of it is 3.8e-05 of b", "rhs": "scaled by 0.001 it has 0.01"} {
+		c := caseOf(f, solvedTrial("cg+none", 50, 1))
+		c.StopBy = rule
+		g := said(c)["starting-guess"]
+		if !strings.Contains(g.Claim, words) || strings.Contains(g.Advice, "--stop rhs") != (rule == "initial") || (len(g.Try) > 0) != (rule == "rhs") {
+			t.Errorf("--stop %s: %q, advice %q, tries %v", rule, g.Claim, g.Advice, g.Try)
+		}
+	}
+}

@@ -47,7 +47,6 @@ var replaced = Rule{"row-replaced", func(c Case) []Finding {
 		Claim: fmt.Sprintf("A is symmetric to rounding except for %s of the identity form, whose columns still hold entries (%s): values fixed by replacing rows",
 			count(l.Identity, "row"), c.list(l.IdentityRows, 6)),
 		Advice: "move these columns, times the fixed values, to the right-hand side: then A is symmetric, and methods for symmetric systems apply",
-		Try:    instead(f),
 		Evidence: []Evidence{{Quantity: "rows replaced", Value: float64(l.Identity), Iteration: none, Rows: l.IdentityRows},
 			number("rows that differ from their column", float64(l.Count), "")}}}
 }}

@@ -11,7 +11,8 @@ const (
 	betterGuess = 0.9 // of ||b||: what a multiple of the guess must come down to
 )
 
-// guess: the starting guess is worse than zero; or good, while the rule is
+// guess: the starting guess is worse than zero, and makes a rule relative to the
+// first residual ask for less; or good, while the rule is
 // relative to the first residual and asks for the same gain all the same.
 var guess = Rule{"starting-guess", func(c Case) []Finding {
 	g := c.Facts.Guess
@@ -25,7 +26,10 @@ var guess = Rule{"starting-guess", func(c Case) []Finding {
 		f.Weight = Drag
 		f.Claim = fmt.Sprintf("the starting guess is worse than none: ||b-Ax0||/||b|| = %s, zero has 1", num(g.Residual))
 		f.Advice = "start from zero"
-		if g.Scaled < betterGuess {
+		if c.StopBy == "initial" {
+			f.Claim += fmt.Sprintf("; and the rule is relative to it, so that %.0e of it is %s of b", c.Tol, num(c.Tol*g.Residual))
+			f.Advice = "start from zero, and stop relative to b (--stop rhs): what meets the rule from here need not be near an answer"
+		} else if g.Scaled < betterGuess {
 			f.Claim += fmt.Sprintf("; scaled by %s it has %s", num(g.Scale), num(g.Scaled))
 			f.Advice = fmt.Sprintf("start from %s x0, or from zero", num(g.Scale))
 			f.Evidence = append(f.Evidence, number("best multiple of x0: b'Ax0/||Ax0||^2", g.Scale, ""),
