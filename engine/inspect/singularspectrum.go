@@ -80,8 +80,8 @@ func (e *exam) smallestSingular(v *view, x *Spectrum) error {
 		return err
 	}
 	square, bound := inverted(out.High[0])
-	if !(square > 0) {
-		return nil
+	if !(square > 0) || !finite(square) || !finite(bound) {
+		return nil // it over- or underflows; what is known stays
 	}
 	x.Smallest, x.SmallestBound = math.Sqrt(square), bound/(2*math.Sqrt(square))
 	var low []float64

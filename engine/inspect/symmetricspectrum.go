@@ -14,6 +14,9 @@ func (e *exam) symmetricSpectrum(v *view, x *Spectrum) (*Spectrum, error) {
 	if e.densely(v.order(), 0.6) {
 		if values := spectrum.DenseSymmetric(v.m); values != nil {
 			x.fillDense(values)
+			if e.f.PositiveDefinite.Answer == Yes {
+				x.positive()
+			}
 		}
 	}
 	var near spectrum.Outermost // of the inverse: the small end matters more, and is first
@@ -163,13 +166,8 @@ func (x *Spectrum) fillNear(out spectrum.Outermost, definite bool, shift float64
 	if !(math.Abs(nearest) > 0) {
 		return
 	}
-	if definite && !x.Exact {
-		x.Smallest, x.SmallestBound, x.Low = nearest, bound, nil
-		for _, p := range out.High {
-			if p.Value > lostBelow*out.High[0].Value {
-				x.Low = append(x.Low, 1/p.Value)
-			}
-		}
+	if definite && finite(nearest) && !(x.Exact && bound >= x.SmallestBound) {
+		x.resolve(out, nearest, bound)
 	}
 	if !x.Exact {
 		x.How = "factor"
@@ -181,6 +179,44 @@ func (x *Spectrum) fillNear(out spectrum.Outermost, definite bool, shift float64
 	}
 }
 
+// resolve takes the low end of a definite operator as its inverse resolves it;
+// of the dense values beyond, those that stand above their rounding. No value
+// is less than the last one resolved.
+func (x *Spectrum) resolve(out spectrum.Outermost, smallest, bound float64) {
+	dense, round := x.Low, x.SmallestBound
+	x.Smallest, x.SmallestBound, x.Low = smallest, bound, nil
+	for _, p := range out.High {
+		if p.Value > lostBelow*out.High[0].Value {
+			x.Low = append(x.Low, 1/p.Value)
+		}
+	}
+	if !x.Exact {
+		return
+	}
+	k := len(x.Low)
+	for i, v := range x.Values {
+		x.Values[i] = complex(max(real(v), x.Low[k-1]), 0)
+		if i < k {
+			x.Values[i] = complex(x.Low[i], 0)
+		}
+	}
+	if k < len(dense) && dense[k] > 10*round {
+		x.Low = append(x.Low, dense[k:]...)
+	}
+}
+
+// positive keeps the dense values of a definite operator from being told as
+// negative: where rounding hides the smallest it is at most that.
+func (x *Spectrum) positive() {
+	if round := x.SmallestBound; !(x.Smallest > 0) {
+		x.Smallest, x.Low = round, nil
+		for i, v := range x.Values {
+			x.Values[i] = complex(max(real(v), 0), 0)
+		}
+	}
+	x.Negative = 0
+}
+
 // inverted turns an eigenvalue of the inverse into one of the matrix, with its
 // bound.
 func inverted(p spectrum.Pair) (value, bound float64) {
@@ -188,7 +224,7 @@ func inverted(p spectrum.Pair) (value, bound float64) {
 	if !(p.Bound < m) {
 		return 1 / p.Value, math.Inf(1)
 	}
-	return 1 / p.Value, p.Bound / (m * (m - p.Bound))
+	return 1 / p.Value, p.Bound / m / (m - p.Bound) // the square of m may not be a number
 }
 
 func pairValues(list []spectrum.Pair) []float64 {
