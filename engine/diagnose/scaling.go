@@ -155,6 +155,9 @@ func byScaling(s *inspect.Study) (before, after *inspect.Spectrum, share string)
 	if s.Rest != nil {
 		before = s.Rest
 	}
+	if math.IsInf(before.Condition, 0) || math.IsInf(after.Condition, 0) { // beyond all numbers: nothing is known
+		return nil, nil, ""
+	}
 	if !(before.Condition >= largeCondition) || !(before.Condition >= greatGain*after.Condition) {
 		return before, after, ""
 	}

@@ -50,17 +50,28 @@ func (e *exam) settleSingular(f *Facts) {
 	}
 }
 
-// regularBy judges by the condition of A equilibrated, by its factorisation.
+// regularBy judges by the condition of A equilibrated, by its factorisation: the
+// larger one of that in the 2-norm and the estimate in the 1-norm, which is a
+// lower bound.
 func regularBy(f *Facts, x *Spectrum) Fact {
-	k, norm := x.Condition, "2"
-	if finite(x.Condition1) {
-		k, norm = max(k, x.Condition1), "1"
+	k, least, norm := x.Condition, unlessMeasured(x), "2"
+	if finite(x.Condition1) && x.Condition1 > k {
+		k, least, norm = x.Condition1, "at least ", "1"
 	}
 	if !(k < shaky) {
 		return unknown("the condition of A equilibrated is %.2g or more: singular, or close to it", k)
 	}
-	return fact(No, Measured, k, nil, "the condition of A equilibrated is %.2g in the %s-norm, by its factorisation%s", k, norm,
+	return fact(No, Measured, k, nil, "the condition of A equilibrated is %s%.2g in the %s-norm, by its factorisation%s", least, k, norm,
 		openDigits(f, f.Delta*k >= 1, "yours may be singular"))
+}
+
+// unlessMeasured says of a condition whose ends are not settled that it is a
+// lower bound.
+func unlessMeasured(x *Spectrum) string {
+	if x.Certainty == Measured {
+		return ""
+	}
+	return "at least "
 }
 
 // openDigits says which digits could overturn a measurement, where they could.
