@@ -89,7 +89,7 @@ type exam struct {
 	free      [][]float64          // nearly free directions of B, orthonormal
 	parts     *linear.Components   // of A; nil: not yet asked for
 	reach     *reach               // of a symmetric A; nil: not looked for
-	fromLeft  [][]float64          // those of Bᵀ to the same singular values, where they were found densely
+	dense     *pairs               // of B, where its free directions were found densely
 }
 
 // facts returns the facts with a copy of the study so far.

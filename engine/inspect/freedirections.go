@@ -34,6 +34,9 @@ func (e *exam) freeDirections() error {
 	if err != nil {
 		return err
 	}
+	for !finite(next) && sure < len(quotients) && quotients[sure] <= ZeroLimit {
+		sure++ // the search was cut before the first that is not
+	}
 	k := apart(append(quotients, next), sure)
 	zero := rigid // those beyond are free, but not to rounding: one is not mixed with the other
 	for zero < k && quotients[zero] <= ZeroLimit {
@@ -56,6 +59,10 @@ func (e *exam) freeDirections() error {
 		e.out.Null = append(e.out.Null, d)
 	}
 	e.measureReach(finite(next))
+	if !e.symmetric {
+		e.out.Nullity = len(e.freeToRounding())
+		e.out.More = e.out.Nullity > 0 && !finite(e.out.Null[0].Next)
+	}
 	return e.leftDirections(norm)
 }
 
@@ -69,7 +76,10 @@ func (e *exam) noneFree() bool {
 // scaledNorm is ‖B‖₂ as far as it is known, else its largest row sum.
 func (e *exam) scaledNorm() float64 {
 	if x := e.out.Equilibrated; x != nil && finite(x.Largest) {
-		return max(math.Abs(x.Largest), math.Abs(x.Smallest))
+		if finite(x.Smallest) { // of a symmetric A the other end may lie further out
+			return max(math.Abs(x.Largest), math.Abs(x.Smallest))
+		}
+		return math.Abs(x.Largest)
 	}
 	norm := 0.0
 	for i := range e.f.N {
@@ -92,16 +102,17 @@ func (e *exam) quotient(v []float64, norm float64) float64 {
 
 // searchFree adds the directions that the inverse stretches most, one after
 // the other, and returns the quotient of the first that is not nearly free;
-// NaN where that is not known.
+// NaN where that is not known. At most mostZero that are mapped to zero are
+// held, and mostFree others.
 func (e *exam) searchFree(norm float64, quotients *[]float64) (next float64, err error) {
-	if e.solver == nil {
-		return e.denseFree(norm, quotients), nil
+	if next, ok := e.denseFree(norm, quotients); ok || e.solver == nil {
+		return next, nil
 	}
 	sure := len(e.free)
 	if mostZero <= sure && sure < e.out.ZeroPivots {
 		return math.NaN(), nil // the next is free as well
 	}
-	for len(e.free) < sure+mostFree {
+	for others := 0; others < mostFree; {
 		v, err := e.mostStretched()
 		if err != nil || v == nil {
 			return math.NaN(), err
@@ -111,38 +122,27 @@ func (e *exam) searchFree(norm float64, quotients *[]float64) (next float64, err
 			v = e.unshifted(v, e.free, e.solver.Solve)
 			q = e.quotient(v, norm)
 		}
-		if q > freeLimit {
+		if e.shift != 0 && !e.symmetric && q > ZeroLimit { // squared, the values may spread over more digits than there are
+			w := make([]float64, e.f.N)
+			linear.Uniform(w, uint64(len(e.free)+1))
+			w = e.unshifted(w, e.free, e.solver.Solve)
+			if p := e.quotient(w, norm); p <= ZeroLimit {
+				v, q = w, p
+			}
+		}
+		if !(q <= freeLimit) {
 			return q, nil
 		}
-		if q <= ZeroLimit && sure >= mostZero {
+		if q <= ZeroLimit && len(e.free) >= mostZero {
 			return math.NaN(), nil
-		}
-		if q > ZeroLimit && e.singular && !e.symmetric && len(e.free) == 0 && e.f.N <= e.budget.Dense {
-			e.solver = nil // a zero eigenvalue that is defective: the shift hides its direction
-			return e.denseFree(norm, quotients), nil
 		}
 		e.free = append(e.free, v)
 		*quotients = append(*quotients, q)
+		if q > ZeroLimit {
+			others++
+		}
 	}
 	return math.NaN(), nil
-}
-
-// denseFree finds them densely, where A is singular, not symmetric, and
-// small: the last vector is the first that is not nearly free.
-func (e *exam) denseFree(norm float64, quotients *[]float64) (next float64) {
-	next = math.NaN()
-	if !e.singular || e.symmetric || !e.densely(e.f.N, 20) {
-		return next
-	}
-	left, right := spectrum.DenseNull(e.scaled, 1)
-	for k, v := range right {
-		q := e.quotient(v, norm)
-		if q > freeLimit || len(e.free) == mostFree {
-			return q
-		}
-		e.free, e.fromLeft, *quotients = append(e.free, v), append(e.fromLeft, left[k]), append(*quotients, q)
-	}
-	return next
 }
 
 // mostStretched is the unit vector beside the free ones that the inverse of B

@@ -22,8 +22,10 @@ func (e *exam) leftDirections(norm float64) error {
 		return nil
 	}
 	bt := e.scaled.Transpose()
-	candidates := e.fromLeft
-	if e.solver != nil {
+	var candidates [][]float64
+	if e.dense != nil {
+		candidates = e.dense.left
+	} else if e.solver != nil {
 		candidates = e.leftOf(e.free[:len(right)])
 	}
 	var found [][]float64
@@ -33,6 +35,9 @@ func (e *exam) leftDirections(norm float64) error {
 		}
 	}
 	for _, y := range localise(found, 0) {
+		if e.dense != nil {
+			e.dense.sharpen(y, bt, norm)
+		}
 		d := e.direction(y, e.row, imageOf(bt, y)/norm)
 		d.Next, d.Load, d.Rounding = right[len(right)-1].Next, e.load(d.Vector), roundings(bt, y)
 		e.out.Left = append(e.out.Left, d)

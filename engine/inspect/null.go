@@ -171,11 +171,11 @@ func (l *look) part(null *linear.NullSpace, b []float64) Fact {
 // noOther says whether a symmetric A can have no null vector beside those that
 // its sums show: each row is dominant to rounding, so that an irreducible part
 // lacks one rank at most, and none where a row of it is strictly dominant
-// (Taussky, Amer. Math. Monthly 56, 1949). An A that is not symmetric is left
-// to the second look.
+// (Taussky, Amer. Math. Monthly 56, 1949). Of an A that is not symmetric nothing
+// is said: that is left to the second look.
 func (l *look) noOther() bool {
 	if l.f.Symmetric.Answer != Yes {
-		return true
+		return false
 	}
 	held := make([]bool, l.parts.Count)
 	for k, z := range l.parts.RowSums(l.a, l.delta) {

@@ -62,15 +62,13 @@ func (e *exam) settleUnreachable(f *Facts) {
 	switch {
 	case e.symmetric:
 		e.settleBySymmetry(f)
-	case u.Answer == No && u.Certainty == Measured && len(e.out.Left) > int(max(0, f.ColSumsZero.Value)):
-		if more := e.unreachableByLeft(); more.Answer == Yes { // the sums do not show all of them
-			*u = more
-		}
 	case u.Answer != Unknown:
 	case f.Singular.Answer == No:
 		*u = fact(No, f.Singular.Certainty, 0, nil, "A is regular")
 	case f.Singular.Answer == Yes:
-		*u = e.unreachableByLeft()
+		if found := e.unreachableByLeft(); found.Answer != Unknown || math.IsNaN(u.Value) { // else what the sums say stands
+			*u = found
+		}
 	}
 }
 
@@ -136,13 +134,14 @@ func (e *exam) unreachableByLeft() Fact {
 		}
 	}
 	all, part, slack := e.along(left), e.along(sure), clearly*e.slackOf(left)
-	what := count(len(left), "direction", "directions") + " y with y'A = 0 to rounding"
+	y := func(k int) string { return count(k, "direction", "directions") + " y with y'A = 0 to rounding" }
+	what := y(len(left))
 	switch {
 	case part > max(pushes, slack):
-		return fact(Yes, Measured, part, left[0].Rows, "%.6g of b lies along %s", part, what)
+		return fact(Yes, Measured, part, sure[0].Rows, "%.6g of b lies along %s", part, y(len(sure)))
 	case all > max(pushes, slack):
 		return unknown("%.2g of b lies along %s, but to more than that of A's own entries: an x of enormous size might answer it", all, what)
-	case len(left) < len(e.freeToRounding()) || len(left) == mostFree || !(slack <= blurred):
+	case len(left) < len(e.freeToRounding()) || !(slack <= blurred): // no number where the search was cut
 		return unknown("%.1g of b lies along %s; there may be others, or they are not sharp enough to tell", all, what)
 	}
 	return fact(No, Measured, all, nil, "%.1g of b lies along %s", all, what)

@@ -12,10 +12,10 @@ type Study struct {
 
 	Null []NullDirection // nearly free directions, the freest first
 	Left []NullDirection // of a nonsymmetric A: as many that Aᵀ maps to zero as A does, to rounding
-	// Of a symmetric A. More: the search for what it maps to zero ended before
-	// all was found: Null and the sums show a part of it, of the dimension
-	// Nullity. ZeroPivots are those of LDLᵀ that vanish to rounding; 0 too where
-	// A was not factorised without a shift.
+	// More: the search for what A maps to zero ended before all was found: Null,
+	// and of a symmetric A the sums, show a part of it, of the dimension Nullity.
+	// ZeroPivots are those of LDLᵀ of a symmetric A that vanish to rounding; 0 too
+	// where A was not factorised without a shift.
 	More       bool
 	Nullity    int
 	ZeroPivots int

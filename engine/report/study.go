@@ -36,8 +36,11 @@ func studyItems(f *inspect.Facts) []labelled {
 		add("free direction", "A maps it to "+nullText(v, f))
 	}
 	add("free directions", moreText(s))
-	for _, v := range s.Left {
+	for _, v := range s.Left[:min(mostTold, len(s.Left))] {
 		add("left direction", "A^T maps it to "+nullText(v, f))
+	}
+	if k := len(s.Left); k > mostTold {
+		add("left directions", fmt.Sprintf("%d found, %d of them told", k, mostTold))
 	}
 	add("normality", normalityText(s.Normality))
 	add("couplings", couplingsText(s.Couplings))
