@@ -87,6 +87,7 @@ type exam struct {
 	penalised map[int]bool         // rows with a penalty on the diagonal; nil: none
 	half      *direct.Definiteness // of (A+Aᵀ)/2; nil: not looked at
 	free      [][]float64          // nearly free directions of B, orthonormal
+	fixed     int                  // of free: motions of coordinates and constants, which are told as they are
 	parts     *linear.Components   // of A; nil: not yet asked for
 	reach     *reach               // of a symmetric A; nil: not looked for
 	dense     *pairs               // of B, where its free directions were found densely

@@ -28,6 +28,7 @@ func (e *exam) freeDirections() error {
 	norm := e.scaledNorm()
 	quotients := e.rigidMotions(norm)
 	rigid := len(quotients)
+	e.fixed = rigid
 	e.searchZero(norm, &quotients)
 	sure := len(quotients)
 	next, err := e.searchFree(norm, &quotients)
@@ -38,11 +39,11 @@ func (e *exam) freeDirections() error {
 		sure++ // the search was cut before the first that is not
 	}
 	k := apart(append(quotients, next), sure)
-	zero := rigid // those beyond are free, but not to rounding: one is not mixed with the other
+	zero := e.fixed // those beyond are free, but not to rounding: one is not mixed with the other
 	for zero < k && quotients[zero] <= ZeroLimit {
 		zero++
 	}
-	e.free = append(localise(e.free[:zero], rigid), localise(e.free[zero:k], 0)...)
+	e.free = append(localise(e.free[:zero], e.fixed), localise(e.free[zero:k], 0)...)
 	for j, v := range e.free {
 		d := e.direction(v, e.col, e.quotient(v, norm))
 		d.Next = next

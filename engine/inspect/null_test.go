@@ -189,3 +189,31 @@ func assignable(used [][]bool, i int, taken []bool) bool {
 	}
 	return false
 }
+
+// A path whose weights spread over many powers of two is one part with constants:
+// one direction is free, whatever else is nearly so in other units.
+func TestConstantsAreCountedOnce(t *testing.T) {
+	for _, powers := range [][]float64{{-40, 30, -10, 0, 20, -30, 5}, {-20, 25, -5, 10}, {-40, 12}, {-10, 25, -10, 25, -10}} {
+		n := len(powers) + 1
+		var out []linear.Entry
+		for i, p := range powers {
+			w := math.Exp2(p)
+			out = append(out, e(i, i, w), e(i+1, i+1, w), e(i, i+1, -w), e(i+1, i, -w))
+		}
+		s := ones(linear.FromEntries(n, n, out), 17)
+		s.B[0] = 1 - float64(n)
+		d := studied(t, s, inspect.Quick).Study
+		zero := 0
+		for _, v := range d.Null {
+			if v.Quotient <= inspect.ZeroLimit {
+				zero++
+			}
+		}
+		if d.Nullity != 1 || zero != 1 || d.More {
+			t.Errorf("2^%v: %d free, %d to rounding, more %v; the kernel of a connected graph is the constants", powers, d.Nullity, zero, d.More)
+		}
+		if f := studied(t, s, inspect.Quick); f.Unreachable.Answer == inspect.Yes {
+			t.Errorf("2^%v: b sums to zero, and is called out of reach: %s", powers, f.Unreachable.Why)
+		}
+	}
+}

@@ -3,7 +3,8 @@ package inspect
 import "dwindle/engine/linear"
 
 const (
-	// mostZero is how many directions that A maps to zero are held.
+	// mostZero is how many directions that A maps to zero are held, beside as many
+	// constants at most.
 	mostZero = 24
 	// zeroSteps is how many steps of inverse iteration find one: each takes off
 	// tinyShift over the quotient of the next.
@@ -19,7 +20,10 @@ func (e *exam) searchZero(norm float64, quotients *[]float64) {
 	if !e.symmetric || e.solver == nil || e.shift == 0 {
 		return
 	}
-	most := mostZero
+	rigid := len(e.free)
+	e.constants(norm, quotients)
+	e.fixed = len(e.free)
+	most := mostZero + e.fixed - rigid
 	if p := e.out.ZeroPivots; p > 0 {
 		most = min(most, p)
 	}
@@ -40,6 +44,30 @@ func (e *exam) searchZero(norm float64, quotients *[]float64) {
 			return
 		}
 		e.free, *quotients = append(e.free, v), append(*quotients, q)
+	}
+}
+
+// constants adds what the sums of rows show: one number on a connected part, in
+// the user's units, and zero on all others. In wild units a vector found by
+// factors may hold enough of what is only nearly free to be taken for another.
+func (e *exam) constants(norm float64, quotients *[]float64) {
+	parts, most := linear.FindComponents(e.a), len(e.free)+mostZero
+	for k, z := range parts.RowSums(e.a, 0) {
+		if z == linear.NotZero || len(e.free) >= most {
+			continue
+		}
+		v := make([]float64, e.f.N)
+		for i, of := range parts.Of {
+			if int(of) == k {
+				v[i] = 1 / e.col[i]
+			}
+		}
+		if !orthonormal(v, e.free) {
+			continue
+		}
+		if q := e.quotient(v, norm); q <= ZeroLimit {
+			e.free, *quotients = append(e.free, v), append(*quotients, q)
+		}
 	}
 }
 
