@@ -89,6 +89,15 @@ func TestSingularValuesBeyondTheSquares(t *testing.T) {
 	}
 }
 
+// So are dense eigenvalues: [2 1; 1 2] has 1 and 3.
+func TestEigenvaluesBeyondTheSquares(t *testing.T) {
+	for _, c := range []float64{1e200, 1e-200} {
+		x := studied(t, ones(dense([]float64{2 * c, c}, []float64{c, 2 * c}), 17), inspect.Quick).Study.Raw
+		within(t, "smallest", x.Smallest, c, 1e-12)
+		within(t, "largest", x.Largest, 3*c, 1e-12)
+	}
+}
+
 // The same without a factorisation: the dense value is rounding alone, and what
 // is told is that the smallest eigenvalue is at most that.
 func TestSmallestEigenvalueLostToRounding(t *testing.T) {

@@ -13,15 +13,19 @@ import (
 
 // DenseSymmetric returns all eigenvalues of a symmetric matrix, rising, by
 // reduction to tridiagonal form: 4n³/3 operations, 8n² bytes. Entries above
-// the diagonal are read. Nil where the iteration fails.
+// the diagonal are read. Nil where the iteration fails. Entries whose squares
+// are no numbers are scaled by a power of two first.
 func DenseSymmetric(a *linear.CSR) []float64 {
-	n := a.NRows
+	n, power := a.NRows, 0
+	if most := linear.NormInf(a.Val); most > 0 && (most < 1e-100 || most > 1e100) {
+		_, power = math.Frexp(most)
+	}
 	s := mat.NewSymDense(n, nil)
 	for i := range n {
 		cols, vals := a.Row(i)
 		for k, j := range cols {
 			if int(j) >= i {
-				s.SetSym(i, int(j), vals[k])
+				s.SetSym(i, int(j), math.Ldexp(vals[k], -power))
 			}
 		}
 	}
@@ -29,7 +33,11 @@ func DenseSymmetric(a *linear.CSR) []float64 {
 	if !e.Factorize(s, false) {
 		return nil
 	}
-	return e.Values(nil)
+	values := e.Values(nil)
+	for k, v := range values {
+		values[k] = math.Ldexp(v, power)
+	}
+	return values
 }
 
 // DenseSingular returns all singular values of a square matrix, falling:
