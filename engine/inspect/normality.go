@@ -35,11 +35,11 @@ func (e *exam) normality() error {
 	}
 	if x := e.out.Raw; x != nil && x.Exact {
 		m.LeftmostRe, m.RightRe = real(x.Values[0]), real(x.Values[len(x.Values)-1])
-		m.Henrici, m.Exact = spectrum.Henrici(x.Values, e.f.NormFro), true
+		m.Henrici, m.Exact = max(m.Henrici, spectrum.Henrici(x.Values, e.f.NormFro)), true
 	}
 	if m.Exact && e.densely(e.f.N, 10) {
 		if values := spectrum.DenseEigenvalues(e.scaled); values != nil {
-			m.Equilibrated = spectrum.Henrici(values, linear.Norm2(e.scaled.Val))
+			m.Equilibrated = max(m.Equilibrated, spectrum.Henrici(values, linear.Norm2(e.scaled.Val)))
 		}
 	}
 	e.out.Normality = m
@@ -71,18 +71,20 @@ func (e *exam) outermost(m *Normality) error {
 	return err
 }
 
-// field measures the field of values: the ends of the symmetric part, and the
-// largest magnitude of the skew one.
+// field measures the field of values: the ends of the symmetric part, densely
+// where that is affordable, and the largest magnitude of the skew one.
 func (e *exam) field(m *Normality, b, bt *linear.CSR) error {
-	h := spectrum.Combined(b, bt, b.NRows, 1)
-	out, err := e.ends(b.NRows, h, 1, 1, 2*e.product(), endProducts)
-	if err != nil || len(out.Low) == 0 {
-		return err
+	if !e.denseField(m, b) {
+		h := spectrum.Combined(b, bt, b.NRows, 1)
+		out, err := e.ends(b.NRows, h, 1, 1, 2*e.product(), endProducts)
+		if err != nil || len(out.Low) == 0 {
+			return err
+		}
+		m.FieldMin, m.FieldMinBound, m.FieldMax, m.FieldSettled = out.Low[0].Value, out.Low[0].Bound, out.High[0].Value, out.Settled
 	}
-	m.FieldMin, m.FieldMinBound, m.FieldMax, m.FieldSettled = out.Low[0].Value, out.Low[0].Bound, out.High[0].Value, out.Settled
 	m.FieldHoldsZero = m.FieldMin < 0 && m.FieldMax > 0
 	k, w := spectrum.Combined(b, bt, b.NRows, -1), make([]float64, b.NRows)
-	out, err = e.ends(b.NRows, func(dst, x []float64) {
+	out, err := e.ends(b.NRows, func(dst, x []float64) {
 		k(w, x)
 		k(dst, w)
 		linear.Scale(dst, -1, dst)
@@ -91,6 +93,31 @@ func (e *exam) field(m *Normality, b, bt *linear.CSR) error {
 		m.SkewMax = math.Sqrt(max(0, out.High[0].Value))
 	}
 	return err
+}
+
+// denseField takes the ends of the symmetric part from all its eigenvalues: to
+// the rounding of the largest, and below a few times that they are not settled.
+func (e *exam) denseField(m *Normality, b *linear.CSR) bool {
+	if !e.densely(b.NRows, 1.4) {
+		return false
+	}
+	values := spectrum.DenseSymmetric(symmetricHalf(b))
+	if values == nil {
+		return false
+	}
+	m.FieldMin, m.FieldMax = values[0], values[len(values)-1]
+	m.FieldMinBound = float64(len(values)) * 0x1p-53 * max(-m.FieldMin, m.FieldMax)
+	m.FieldSettled = m.FieldMinBound <= endTolerance*min(math.Abs(m.FieldMin), math.Abs(m.FieldMax))
+	return true
+}
+
+// FieldText tells the ends of the field of values, a from and a to; ends that
+// are not settled lie inside.
+func (m *Normality) FieldText(number func(float64) string) string {
+	if m.FieldSettled {
+		return "from " + number(m.FieldMin) + " to " + number(m.FieldMax)
+	}
+	return "from at most " + number(m.FieldMin) + " to at least " + number(m.FieldMax)
 }
 
 // symmetricPart proves (A+Aᵀ)/2 definite where no field of values was found on

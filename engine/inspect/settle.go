@@ -103,21 +103,23 @@ func (e *exam) settleSymmetricPart(f *Facts) {
 	if m == nil || !finite(m.FieldMin) || !finite(m.FieldMax) {
 		return
 	}
-	tiny := 0x1p-53 * f.NormFro * math.Sqrt(float64(f.N))
+	tiny := 0x1p-53 * max(f.NormFro*math.Sqrt(float64(f.N)), float64(f.N)*max(-m.FieldMin, m.FieldMax))
 	switch r := e.half; {
 	case r != nil && r.Definite:
-		f.SymmetricPart = fact(Yes, Proved, m.FieldMin, nil, "Cholesky of it completes beyond all rounding; x'Ax/x'x from %.3g to %.3g", m.FieldMin, m.FieldMax)
+		f.SymmetricPart = fact(Yes, Proved, m.FieldMin, nil, "Cholesky of it completes beyond all rounding; x'Ax/x'x %s", m.FieldText(short))
 		if f.Delta > 0 {
 			f.SymmetricPart.Certainty = Measured
 		}
 	case m.FieldMin < -tiny:
 		f.SymmetricPart = fact(No, Measured, m.FieldMin, nil, "some x has x'Ax/x'x = %.3g", m.FieldMin)
 	case m.FieldMin > tiny+m.FieldMinBound && m.FieldSettled:
-		f.SymmetricPart = fact(Yes, Measured, m.FieldMin, nil, "x'Ax/x'x from %.3g to %.3g", m.FieldMin, m.FieldMax)
+		f.SymmetricPart = fact(Yes, Measured, m.FieldMin, nil, "x'Ax/x'x %s", m.FieldText(short))
 	default:
 		f.SymmetricPart = unknown("no x with x'Ax/x'x below %.3g was found", m.FieldMin)
 	}
 }
+
+func short(x float64) string { return fmt.Sprintf("%.3g", x) }
 
 // SingularAtSight says that the pattern or the sums of rows or columns make A
 // singular, without any factorisation.

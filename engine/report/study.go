@@ -203,7 +203,7 @@ func normalityText(n *inspect.Normality) string {
 		}
 		s += fmt.Sprintf(" (A equilibrated: %s%s)", least, short(n.Equilibrated))
 	}
-	s += fmt.Sprintf("; (A+A^T)/2 from %s to %s", short(n.FieldMin), short(n.FieldMax))
+	s += "; (A+A^T)/2 " + n.FieldText(short)
 	if n.FieldHoldsZero {
 		s += ": the field of values holds zero"
 	}
