@@ -76,7 +76,7 @@ func valuesOf(f *inspect.Facts) string {
 func spectrumText(x inspect.Spectrum, f *inspect.Facts) string {
 	_, high := x.Settled()
 	s := fmt.Sprintf("of %s: %s to %s%s", x.Of, lowText(x, f), unless(high, "at least "), short(x.Largest))
-	if next := nextLow(x); x.Zeros > 0 && next > 0 {
+	if next := nextLow(x, f); x.Zeros > 0 && next > 0 {
 		s += fmt.Sprintf(", condition beside the zero %s", short(x.Largest/next))
 	}
 	if finite(x.Condition) && x.Condition > 0 && x.Zeros == 0 {
@@ -99,7 +99,7 @@ func spectrumText(x inspect.Spectrum, f *inspect.Facts) string {
 		s += ", all values"
 	}
 	sure := x.Certainty
-	if x.Zeros > 0 && (x.Exact || nextLow(x) > 0) {
+	if x.Zeros > 0 && (x.Exact || nextLow(x, f) > 0) {
 		sure = inspect.Measured // only the zeros could not be told from rounding
 	}
 	return s + fmt.Sprintf(" (%s, by %s)", orDash(string(sure)), orDash(x.How))
@@ -120,7 +120,7 @@ func lowText(x inspect.Spectrum, f *inspect.Facts) string {
 		settled, _ := x.Settled()
 		return unless(settled, "at most ") + short(x.Smallest)
 	}
-	if next := nextLow(x); next > 0 {
+	if next := nextLow(x, f); next > 0 {
 		low += ", next " + short(next) + ","
 	}
 	return low
@@ -134,14 +134,24 @@ func unless(settled bool, words string) string {
 }
 
 // nextLow is the first value at the low end that is not zero to rounding; NaN
-// if it is not known.
-func nextLow(x inspect.Spectrum) float64 {
-	for k, v := range x.Low {
-		if x.Exact && v > 10*x.LargestBound || !x.Exact && x.Zeros > 0 && k >= x.Zeros {
-			return v
-		}
+// if it is not known, or if more values are lost to rounding than are known to
+// be zero: what comes next is then among those.
+func nextLow(x inspect.Spectrum, f *inspect.Facts) float64 {
+	nullity, lost := x.Zeros, 0
+	if f.Study != nil && nullity == 0 && !f.Study.More {
+		nullity = f.Study.Nullity
 	}
-	return math.NaN()
+	if x.Exact {
+		for lost < len(x.Low) && !(x.Low[lost] > 10*x.LargestBound) {
+			lost++
+		}
+	} else if lost = x.Zeros; f.Study != nil {
+		lost = max(lost, f.Study.Nullity)
+	}
+	if lost != nullity || lost == 0 || lost >= len(x.Low) {
+		return math.NaN()
+	}
+	return x.Low[lost]
 }
 
 // mostTold is how many free directions are told one by one.
