@@ -35,11 +35,11 @@ func (e *exam) normality() error {
 	}
 	if x := e.out.Raw; x != nil && x.Exact {
 		m.LeftmostRe, m.RightRe = real(x.Values[0]), real(x.Values[len(x.Values)-1])
-		m.Henrici, m.Exact = max(m.Henrici, spectrum.Henrici(x.Values, e.f.NormFro)), true
+		m.Henrici, m.Exact = orMore(spectrum.Henrici(x.Values, e.f.NormFro), m.Henrici), true
 	}
 	if m.Exact && e.densely(e.f.N, 10) {
 		if values := spectrum.DenseEigenvalues(e.scaled); values != nil {
-			m.Equilibrated = max(m.Equilibrated, spectrum.Henrici(values, linear.Norm2(e.scaled.Val)))
+			m.Equilibrated = orMore(spectrum.Henrici(values, linear.Norm2(e.scaled.Val)), m.Equilibrated)
 		}
 	}
 	e.out.Normality = m
@@ -47,6 +47,14 @@ func (e *exam) normality() error {
 		return err
 	}
 	return e.outermost(m)
+}
+
+// orMore is the value, or its lower bound where that is a number and more.
+func orMore(value, bound float64) float64 {
+	if bound > value {
+		return bound
+	}
+	return value
 }
 
 // ritzSteps is how many steps of the Arnoldi process look for the outermost

@@ -70,6 +70,7 @@ func TestSmallestEigenvalueInWildUnits(t *testing.T) {
 // The squares of 1e200 are no numbers: what the dense singular values are is
 // told, by gonum, and the condition.
 func TestSingularValuesBeyondTheSquares(t *testing.T) {
+	one := studied(t, ones(dense([]float64{5, 1, -0.5}, []float64{0.25, 4, 1}, []float64{-1, 0.5, 3}), 17), inspect.Quick).Study.Normality
 	for _, c := range []float64{1e200, 1e-200} {
 		a := dense([]float64{5, 1, -0.5}, []float64{0.25, 4, 1}, []float64{-1, 0.5, 3})
 		for k := range a.Val {
@@ -79,7 +80,9 @@ func TestSingularValuesBeyondTheSquares(t *testing.T) {
 		var svd mat.SVD
 		svd.Factorize(m, mat.SVDNone)
 		want := svd.Values(nil)
-		x := studied(t, ones(a, 17), inspect.Quick).Study.Raw
+		d := studied(t, ones(a, 17), inspect.Quick).Study
+		x := d.Raw
+		within(t, "departure from normality, the same of any multiple", d.Normality.Henrici, one.Henrici, 1e-6)
 		within(t, "smallest", x.Smallest, c*want[2], 1e-12)
 		within(t, "largest", x.Largest, c*want[0], 1e-12)
 		within(t, "condition", x.Condition, want[0]/want[2], 1e-12)
