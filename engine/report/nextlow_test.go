@@ -29,6 +29,23 @@ func loosePath(c float64) linear.System {
 	return linear.System{Name: "path", A: a, B: []float64{1, -1, 0, 0, 0, 1, 1, 1, 1}, Digits: 17}
 }
 
+// A value of a subspace that is not proved to stand beside zeros is not called
+// next to them: it need not have settled.
+func TestNextIsNotTakenFromASubspace(t *testing.T) {
+	f := &inspect.Facts{N: 1000, Singular: inspect.Fact{Answer: inspect.Yes}, Study: &inspect.Study{Nullity: 1}}
+	x := inspect.Spectrum{Of: "A", How: "lanczos", Certainty: inspect.Estimated, Smallest: 1e-18, Largest: 4, Low: []float64{1e-18, 0.3}}
+	if s := spectrumText(x, f); strings.Contains(s, "next") {
+		t.Error(s)
+	}
+	x.Zeros = 1
+	if s := spectrumText(x, f); !strings.Contains(s, "0 (proved), next 0.3,") {
+		t.Error(s)
+	}
+	if f.Study.Nullity = 2; strings.Contains(spectrumText(x, f), "next") {
+		t.Error(spectrumText(x, f))
+	}
+}
+
 // Beside the zero of the constants the path has 4 sin²(π/10) = 0.382 next, and
 // the other part the eigenvalues c (3 − 2cos(kπ/5)), from 1.38 c on. Where c is
 // below all rounding these are lost, and 0.382 is not next.

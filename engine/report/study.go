@@ -141,11 +141,11 @@ func nextLow(x inspect.Spectrum, f *inspect.Facts) float64 {
 	if f.Study != nil && nullity == 0 && !f.Study.More {
 		nullity = f.Study.Nullity
 	}
-	if x.Exact {
+	if x.Exact || x.How == "dense" {
 		for lost < len(x.Low) && !(x.Low[lost] > 10*x.LargestBound) {
 			lost++
 		}
-	} else if lost = x.Zeros; f.Study != nil {
+	} else if nullity, lost = x.Zeros, x.Zeros; f.Study != nil && nullity > 0 { // a subspace finds a multiple value once
 		lost = max(lost, f.Study.Nullity)
 	}
 	if lost != nullity || lost == 0 || lost >= len(x.Low) {
