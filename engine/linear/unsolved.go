@@ -9,12 +9,14 @@ import (
 // against its own terms (Oettli and Prager 1964) may be one where x merely
 // dies away, as beyond the front of a Krylov space: there |A||x| is small,
 // and so is what is missing. It is unsolved where the residual is also large
-// against what the row would have with the largest x, or where the row's norm
-// lies far below those of the others, so that a norm over all does not see it.
+// against what the row would have with the largest x of its component, or where
+// the row's norm lies far below those of the others, so that a norm over all does
+// not see it.
 type Unsolved struct {
 	a     *CSR
 	x     []float64
-	xMax  float64 // ‖x‖∞
+	parts *Components
+	xMax  []float64 // the largest |x| of each component; nil before it is asked for
 	limit float64
 	usual float64 // see norm; NaN before it is asked for
 }
@@ -23,7 +25,7 @@ type Unsolved struct {
 // large, and a row whose norm is below that part of the others' is in small
 // units.
 func NewUnsolved(a *CSR, x []float64, limit float64) *Unsolved {
-	return &Unsolved{a: a, x: x, xMax: NormInf(x), limit: limit, usual: math.NaN()}
+	return &Unsolved{a: a, x: x, limit: limit, usual: math.NaN()}
 }
 
 // Row returns |r|/(|A||x|+|b|) of row i, at most 1, whether the row is unsolved,
@@ -45,7 +47,20 @@ func (u *Unsolved) Row(i int, r, b float64) (share float64, unsolved, small bool
 		return share, false, false
 	}
 	small = largest > 0 && largest < u.limit*u.norm()
-	return share, small || r > u.limit*(sum*u.xMax+b), small
+	return share, small || r > u.limit*(sum*u.largestNear(i)+b), small
+}
+
+// largestNear is the largest |x| in the component of row i: an island of small x
+// is not judged by another's.
+func (u *Unsolved) largestNear(i int) float64 {
+	if u.xMax == nil {
+		u.parts = FindComponents(u.a)
+		u.xMax = make([]float64, u.parts.Count)
+		for j, k := range u.parts.Of {
+			u.xMax[k] = max(u.xMax[k], math.Abs(u.x[j]))
+		}
+	}
+	return u.xMax[u.parts.Of[i]]
 }
 
 // norm is the norm that a quarter of the rows reach: few rows in large units,
