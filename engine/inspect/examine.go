@@ -83,6 +83,7 @@ type exam struct {
 	solver    solver               // of B; nil where there is no factorisation
 	shift     float64              // solver is that of B + shift·I
 	singular  bool                 // B has no factorisation: a pivot vanishes to rounding
+	mirror    *linear.Mirror       // of a nonsymmetric A
 	replaced  []bool               // rows of the identity whose columns are not; nil: none
 	penalised map[int]bool         // rows with a penalty on the diagonal; nil: none
 	half      *direct.Definiteness // of (A+Aᵀ)/2; nil: not looked at

@@ -68,6 +68,8 @@ func TestSymmetry(t *testing.T) {
 	}{
 		{"exact", dense([]float64{4, 1}, []float64{1, 4}), 17, inspect.Yes, inspect.Proved, 0, nil},
 		{"to rounding", dense([]float64{4, 1}, []float64{next, 4}), 17, inspect.Yes, inspect.Measured, 0x1p-52 / 4, []int{0, 1}},
+		{"a sum that cancels", dense([]float64{4, 4e-16}, []float64{0, 9}), 17, inspect.Yes, inspect.Measured, 4e-16 / 6, []int{0, 1}},
+		{"a small entry", dense([]float64{4, 4e-13}, []float64{0, 9}), 17, inspect.No, inspect.Proved, 4e-13 / 6, []int{0, 1}},
 		{"within digits", dense([]float64{4, 1.00001}, []float64{1, 4}), 6, inspect.Yes, inspect.Measured, 1.00001 - 1, []int{0, 1}},
 		{"beyond digits", dense([]float64{4, 1.0001}, []float64{1, 9}), 6, inspect.No, inspect.Proved, (1.0001 - 1) / 6, []int{0, 1}},
 		{"no", dense([]float64{4, 0, 1}, []float64{0, 4, 0}, []float64{2, 0, 4}), 17, inspect.No, inspect.Proved, 0.25, []int{0, 2}},

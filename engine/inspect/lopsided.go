@@ -1,7 +1,6 @@
 package inspect
 
 import (
-	"math"
 	"slices"
 
 	"dwindle/engine/linear"
@@ -15,10 +14,11 @@ func (e *exam) lopsided() *Lopsided {
 		return nil
 	}
 	at := e.a.Transpose()
+	e.mirror = linear.NewMirror(e.a)
 	l := &Lopsided{}
 	uneven, identity := make([]bool, e.f.N), make([]bool, e.f.N)
 	for i := range e.f.N {
-		uneven[i] = len(differing(e, at.Col[at.Ptr[i]:at.Ptr[i+1]], at.Val[at.Ptr[i]:at.Ptr[i+1]], i)) > 0
+		uneven[i] = len(e.differing(at, i)) > 0
 		identity[i] = uneven[i] && e.identityRow(i)
 		if uneven[i] {
 			l.Count++
@@ -37,32 +37,21 @@ func (e *exam) lopsided() *Lopsided {
 		if !uneven[i] || identity[i] || !l.OnlyThem {
 			continue
 		}
-		for _, j := range differing(e, at.Col[at.Ptr[i]:at.Ptr[i+1]], at.Val[at.Ptr[i]:at.Ptr[i+1]], i) {
+		for _, j := range e.differing(at, i) {
 			l.OnlyThem = l.OnlyThem && identity[j]
 		}
 	}
 	return l
 }
 
-// differing lists the columns where row i of A and row i of Aᵀ (cols, vals)
+// differing lists the columns where row i of A and row i of Aᵀ, which is at,
 // differ beyond rounding.
-func differing(e *exam, cols []int32, vals []float64, i int) []int32 {
-	var out []int32
-	rc, rv := e.a.Row(i)
-	for p, q := 0, 0; p < len(rc) || q < len(cols); {
-		v, w, j := 0.0, 0.0, int32(0)
-		switch {
-		case q == len(cols) || p < len(rc) && rc[p] < cols[q]:
-			v, j, p = rv[p], rc[p], p+1
-		case p == len(rc) || cols[q] < rc[p]:
-			w, j, q = vals[q], cols[q], q+1
-		default:
-			v, w, j, p, q = rv[p], vals[q], rc[p], p+1, q+1
+func (e *exam) differing(at *linear.CSR, i int) (out []int32) {
+	linear.Pairs(e.a, at, i, func(j int, v, w float64) {
+		if !e.mirror.Same(i, j, v, w) {
+			out = append(out, int32(j))
 		}
-		if !(math.Abs(v-w) <= 16*0x1p-53*max(math.Abs(v), math.Abs(w))) {
-			out = append(out, j)
-		}
-	}
+	})
 	return out
 }
 
@@ -95,8 +84,7 @@ func (e *exam) pairs(at *linear.CSR, uneven []bool, count int) (out [][2]int) {
 		if !is {
 			continue
 		}
-		cols, vals := at.Row(i)
-		for _, j := range differing(e, cols, vals, i) {
+		for _, j := range e.differing(at, i) {
 			if i < int(j) {
 				out = append(out, [2]int{i, int(j)})
 			}
@@ -126,8 +114,7 @@ func (e *exam) fewest(at *linear.CSR, uneven []bool) []int {
 			return nil
 		}
 		left[i] = map[int]bool{}
-		cols, vals := at.Row(i)
-		for _, j := range differing(e, cols, vals, i) {
+		for _, j := range e.differing(at, i) {
 			left[i][int(j)] = true
 			pairs++
 		}

@@ -1,10 +1,15 @@
 package inspect
 
-import "math"
+import (
+	"math"
+	"slices"
 
-// roundingAsymmetry is the relative difference of a_ij and a_ji that counts as
-// rounding: 16 units of 2⁻⁵³.
-const roundingAsymmetry = 16 * 0x1p-53
+	"dwindle/engine/linear"
+)
+
+// printing is what the printing of two equal numbers may leave between them
+// beyond their digits.
+const printing = 16 * 0x1p-53
 
 // transpose makes the transpose where A needs one and fills in what it tells:
 // symmetry and the columns.
@@ -52,21 +57,23 @@ func (l *look) columns() error {
 
 // mirror collects how A differs from its transpose.
 type mirror struct {
-	pattern  int     // nonzeros without a mirror image
-	lone     top     // their rows
-	rounding bool    // some pair differs by rounding
-	digits   bool    // some pair differs by what the digits leave open
-	broken   bool    // some pair differs by more
-	relative float64 // largest |a_ij−a_ji|/max(|a_ij|,|a_ji|) of unbroken pairs
-	worst    float64 // largest |a_ij−a_ji|/√|a_ii a_jj|
-	places   top     // rows of the worst pairs
-	i, j     int     // the worst pair
-	square   float64 // Σ ((a_ij−a_ji)/‖A‖∞)²
+	same     *linear.Mirror
+	pattern  int       // nonzeros without a mirror image
+	lone     top       // their rows
+	rounding bool      // some pair differs by rounding
+	digits   bool      // some pair differs by what the digits leave open
+	broken   bool      // some pair differs by more
+	relative float64   // largest |a_ij−a_ji|/max(|a_ij|,|a_ji|) of pairs within the digits
+	rounded  []float64 // by row, Σ_j |a_ij−a_ji|/min(√|a_ii a_jj|, |a_ii|) of pairs that differ by rounding
+	worst    float64   // largest |a_ij−a_ji|/√|a_ii a_jj|
+	places   top       // rows of the worst pairs
+	i, j     int       // the worst pair
+	square   float64   // Σ ((a_ij−a_ji)/‖A‖∞)²
 }
 
 // symmetry compares A with its transpose, row by row.
 func (l *look) symmetry() error {
-	var m mirror
+	m := mirror{same: linear.NewMirror(l.a), rounded: make([]float64, l.f.N)}
 	d := make([]float64, l.f.N)
 	l.a.Diagonal(d)
 	for i := range d {
@@ -79,7 +86,7 @@ func (l *look) symmetry() error {
 	if m.square > 0 {
 		f.Asymmetry = math.Sqrt(m.square) / (f.NormFro / f.NormInf)
 	}
-	l.slack = l.delta + 2*m.relative
+	l.slack = l.delta + 2*m.relative + 4*slices.Max(m.rounded)
 	if m.pattern == 0 {
 		f.PatternSymmetric = fact(Yes, Proved, math.NaN(), nil, "every nonzero has its mirror image")
 	} else {
@@ -93,28 +100,12 @@ func (l *look) symmetry() error {
 // mirrorRow merges row i of A with row i of Aᵀ and compares the pairs right
 // of the diagonal.
 func (l *look) mirrorRow(m *mirror, d []float64, i int) {
-	ci, vi := l.a.Row(i)
-	cj, vj := l.at.Row(i)
 	lone, worst := m.pattern, 0.0
-	for p, q := 0, 0; p < len(ci) || q < len(cj); {
-		var v, w float64
-		var j int
-		switch {
-		case q == len(cj) || p < len(ci) && ci[p] < cj[q]:
-			j, v = int(ci[p]), vi[p]
-			p++
-		case p == len(ci) || cj[q] < ci[p]:
-			j, w = int(cj[q]), vj[q]
-			q++
-		default:
-			j, v, w = int(ci[p]), vi[p], vj[q]
-			p++
-			q++
-		}
+	linear.Pairs(l.a, l.at, i, func(j int, v, w float64) {
 		if j > i && v != w {
 			worst = max(worst, l.compare(m, d, i, j, v, w))
 		}
-	}
+	})
 	if m.pattern > lone {
 		m.lone.add(i, 0)
 	}
@@ -130,17 +121,21 @@ func (l *look) compare(m *mirror, d []float64, i, j int, v, w float64) float64 {
 	if v == 0 || w == 0 {
 		m.pattern++
 	}
+	di, dj := math.Abs(d[i]), math.Abs(d[j])
+	scale := math.Sqrt(di) * math.Sqrt(dj)
 	switch {
-	case diff <= roundingAsymmetry*size:
+	case m.same.Same(i, j, v, w):
 		m.rounding = true
-		m.relative = max(m.relative, diff/size)
-	case diff <= l.delta*(math.Abs(v)+math.Abs(w))+roundingAsymmetry*size:
+		if scale > 0 {
+			m.rounded[i] += diff / min(scale, di)
+			m.rounded[j] += diff / min(scale, dj)
+		}
+	case diff <= l.delta*(math.Abs(v)+math.Abs(w))+printing*size:
 		m.digits = true
 		m.relative = max(m.relative, diff/size)
 	default:
 		m.broken = true
 	}
-	scale := math.Sqrt(math.Abs(d[i])) * math.Sqrt(math.Abs(d[j]))
 	if scale == 0 {
 		scale = size
 	}
@@ -162,7 +157,7 @@ func (l *look) symmetric(m *mirror) Fact {
 	case m.digits:
 		return fact(Yes, Measured, m.worst, m.rows(), "a_ij and a_ji agree within the %d digits of the file, not exactly", l.s.Digits)
 	case m.rounding:
-		return fact(Yes, Measured, m.worst, m.rows(), "a_ij and a_ji agree to rounding: they differ by up to %.2g of their size", m.relative)
+		return fact(Yes, Measured, m.worst, m.rows(), "a_ij and a_ji agree to rounding: they differ by up to %.2g of sqrt|a_ii a_jj|", m.worst)
 	}
 	return fact(Yes, Proved, 0, nil, "a_ij = a_ji for every entry, explicit zeros aside")
 }

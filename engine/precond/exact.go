@@ -93,11 +93,12 @@ func symmetricOf(ctx context.Context, s linear.System, method string) (*linear.C
 	if err := ctx.Err(); err != nil || a.ExactlySymmetric() {
 		return a, err
 	}
+	same := linear.NewMirror(a)
 	for i := range a.NRows {
 		cols, vals := a.Row(i)
 		for k, j := range cols {
 			v, w := vals[k], a.At(int(j), i)
-			if !(math.Abs(v-w) <= 16*0x1p-53*max(math.Abs(v), math.Abs(w))) {
+			if !same.Same(i, int(j), v, w) {
 				return nil, fmt.Errorf("%s needs a symmetric matrix: entries (%d,%d) and (%d,%d) are %.6g and %.6g",
 					method, i+1, j+1, j+1, i+1, v, w)
 			}

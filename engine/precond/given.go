@@ -26,7 +26,7 @@ func buildGiven(_ context.Context, s linear.System, v linear.Values, _ func(floa
 		return nil, trace.BuildNotes{}, err
 	}
 	return m, trace.BuildNotes{Entries: int64(m.Entries()), Fill: fillOf(s, m.Entries()), Bytes: m.Bytes(),
-		Symmetric: m.ExactlySymmetric()}, nil
+		Symmetric: m.Symmetric()}, nil
 }
 
 // own reads a matrix of the user's own, of the system's order.

@@ -32,7 +32,7 @@ func buildOwnSolve(ctx context.Context, s linear.System, v linear.Values, progre
 // symmetric and that goes through, else as LU.
 func buildDirect(ctx context.Context, a *linear.CSR, v linear.Values, progress func(float64)) (linear.Applier, trace.BuildNotes, error) {
 	s := linear.System{A: a}
-	if a.ExactlySymmetric() {
+	if a.Symmetric() {
 		f, notes, err := buildCholesky(ctx, s, v, progress)
 		var broke *Breakdown
 		if !errors.As(err, &broke) {

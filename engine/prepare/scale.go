@@ -39,7 +39,7 @@ func (s scaling) Guess(dst, x []float64) {
 func (s scaling) Row(i int) int { return i }
 
 // applyScale makes Dr A Dc y = Dr b with row and column norms near 1. A matrix
-// that equals its transpose gets Dr = Dc and equals it still. Each entry takes
+// that equals its transpose, but for rounding, gets Dr = Dc and does so still. Each entry takes
 // two roundings; rounding the factors to powers of two instead would keep
 // every digit, but leaves norms up to a factor 2 apart and was measured to cost
 // 1.7 to 2.6 times the condition number on real matrices. What is proved of A
@@ -49,7 +49,7 @@ func applyScale(ctx context.Context, s linear.System, _ linear.Values) (linear.S
 	if a == nil {
 		return s, nil, errors.New("scale needs the entries of the matrix")
 	}
-	r, c, err := equilibrate(ctx, a, a.ExactlySymmetric())
+	r, c, err := equilibrate(ctx, a, a.Symmetric())
 	if err != nil {
 		return s, nil, err
 	}

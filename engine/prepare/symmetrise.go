@@ -4,7 +4,6 @@ import (
 	"context"
 	"errors"
 	"fmt"
-	"math"
 
 	"dwindle/engine/linear"
 )
@@ -19,10 +18,6 @@ var symmetriseEntry = Entry{
 	Apply:    applySymmetrise,
 }
 
-// roundings is how far two entries a_ij and a_ji may differ, relative to the
-// larger, to count as one entry rounded twice.
-const roundings = 16 * 0x1p-53
-
 // applySymmetrise replaces A by (A + Aᵀ)/2, which is another matrix and so
 // another system. It is refused unless each entry moves by rounding only; the
 // residual is audited with the original A in any case.
@@ -34,16 +29,21 @@ func applySymmetrise(ctx context.Context, s linear.System, _ linear.Values) (lin
 	if err := ctx.Err(); err != nil {
 		return s, nil, err
 	}
-	m := &linear.CSR{NRows: a.NRows, NCols: a.NCols, Ptr: a.Ptr, Col: a.Col, Val: make([]float64, len(a.Val))}
+	mirror, at := linear.NewMirror(a), a.Transpose()
+	m := &linear.CSR{NRows: a.NRows, NCols: a.NCols, Ptr: make([]int, 1, a.NRows+1),
+		Col: make([]int32, 0, len(a.Col)), Val: make([]float64, 0, len(a.Val))}
+	var refused error
 	for i := range a.NRows {
-		for k := a.Ptr[i]; k < a.Ptr[i+1]; k++ {
-			j := int(a.Col[k])
-			v, w := a.Val[k], a.At(j, i)
-			if !(math.Abs(v-w) <= roundings*max(math.Abs(v), math.Abs(w))) {
-				return s, nil, fmt.Errorf("symmetrise would change the system: entries (%d,%d) and (%d,%d) are %.6g and %.6g",
+		linear.Pairs(a, at, i, func(j int, v, w float64) {
+			if refused == nil && !mirror.Same(i, j, v, w) {
+				refused = fmt.Errorf("symmetrise would change the system: entries (%d,%d) and (%d,%d) are %.6g and %.6g",
 					i+1, j+1, j+1, i+1, v, w)
 			}
-			m.Val[k] = v/2 + w/2
+			m.Col, m.Val = append(m.Col, int32(j)), append(m.Val, v/2+w/2)
+		})
+		m.Ptr = append(m.Ptr, len(m.Col))
+		if refused != nil {
+			return s, nil, refused
 		}
 	}
 	s.A = m
