@@ -246,6 +246,48 @@ func TestTooLate(t *testing.T) {
 	}
 }
 
+// A direct solve waits while a live trial is expected sooner, but no longer than
+// it takes itself, and not where the other will not arrive.
+func TestDirectSolveWaits(t *testing.T) {
+	const pairing = "richardson:1+cholesky"
+	direct := Candidate{Pairing: pairing, Solver: "richardson", Precond: "cholesky", Direct: true, Memory: 12 << 20}
+	for _, c := range []struct {
+		name  string
+		own   time.Duration
+		total float64
+		left  time.Duration
+		bytes int64
+		waits bool
+	}{
+		{"5 s more", 5 * second, 200, 0, 12 << 20, true},
+		{"not in time", 5 * second, 1000, 0, 12 << 20, false},
+		{"never", 5 * second, math.Inf(1), 0, 12 << 20, false},
+		{"it has had its time", 15 * second, 110, 0, 12 << 20, false},
+		{"not predicted", 5 * second, 200, 0, -1, true},
+		{"not predicted, 40 s left", 5 * second, 200, 40 * second, -1, true},
+		{"12 s left", 5 * second, 200, 12 * second, 12 << 20, false},
+	} {
+		h := running("cg+none", 0, c.own)
+		h.Iterations, h.Predictions = 100, []trace.Prediction{{Iter: 90, Total: c.total}}
+		r := race(h)
+		r.Left, r.given = c.left, 1
+		r.Facts.N, r.Facts.Entries = 100_000, 500_000 // 20 us an entry: 10 s
+		direct.Memory = c.bytes
+		if c.bytes > 0 {
+			r.Facts.N = 100 // a factor of 2^20 entries: 11 s
+		}
+		r.Candidates = append(r.Candidates, direct)
+		if got := r.waits(pairing); got != c.waits || slices.Contains(r.untried(20), pairing) == c.waits {
+			t.Errorf("%s: waits %v", c.name, got)
+		}
+	}
+	r := race(running("cg+none", 0, 5*second))
+	r.Candidates = append(r.Candidates, direct)
+	if r.waits(pairing) {
+		t.Error("waits for a trial of which nothing is foreseen")
+	}
+}
+
 // Where the diagonal holds zeros, what divides by pivots is tried on the
 // permuted matrix only, and never under a method for symmetric matrices; the
 // kin of a method that broke down is left out.

@@ -18,7 +18,8 @@ const (
 // findings about the system offer, then every kind of preconditioner under one solver, then the other solvers with the
 // preconditioners that lead, then parameters around the leaders, preparations
 // of them, and last what is unlike anything tried. What would break down in its
-// set-up as others have is left out.
+// set-up as others have is left out, and a direct solve while others are expected
+// sooner.
 func (r Race) untried(most int) []string {
 	var out []string
 	for _, wave := range []func() []string{r.offers, r.kinds, r.solvers, r.parameters, r.preparations, r.unlike} {
@@ -26,7 +27,7 @@ func (r Race) untried(most int) []string {
 			if len(out) == most {
 				return out
 			}
-			if !r.Tried[p] && p != r.Today && !slices.Contains(out, p) && !r.fated(p) {
+			if !r.Tried[p] && p != r.Today && !slices.Contains(out, p) && !r.fated(p) && !r.waits(p) {
 				out = append(out, p)
 			}
 		}
