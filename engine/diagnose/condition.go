@@ -36,6 +36,10 @@ var illConditioned = Rule{"ill-conditioned", func(c Case) []Finding {
 		g.Certainty = inspect.Measured
 		g.Claim = fmt.Sprintf("A is ill-conditioned: the condition of %s is at least %s, for %s has met Ritz values from %s to %s",
 			of, num(k.Estimate), h.Pairing, num(k.Smallest), num(k.Largest))
+		if f.PositiveDefinite.Answer != inspect.Yes {
+			g.Certainty = inspect.Estimated
+			g.Claim += ", if A is definite, which is not proved and which nothing so far speaks against"
+		}
 		g.Evidence = []Evidence{{Quantity: "condition of " + of + ", at least", Value: k.Estimate, Iteration: h.Iterations}}
 	default:
 		return nil
@@ -63,7 +67,7 @@ var illConditioned = Rule{"ill-conditioned", func(c Case) []Finding {
 // above the condition, however early the trial ended.
 func widest(c Case) (best trace.History, of string) {
 	f := c.Facts
-	if f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer != inspect.Yes {
+	if !definiteSoFar(c) {
 		return best, of
 	}
 	for _, h := range c.Trials {
@@ -85,3 +89,25 @@ func widest(c Case) (best trace.History, of string) {
 // evenDiagonal is the ratio of diagonal entries up to which scaling by them
 // changes next to nothing.
 const evenDiagonal = 1.1
+
+// definiteSoFar says that A is positive definite, or, where that is too large to
+// be proved, that conjugate gradients have converged on it and that no trial has
+// met a negative Ritz value.
+func definiteSoFar(c Case) bool {
+	f := c.Facts
+	switch {
+	case f.Symmetric.Answer != inspect.Yes || f.PositiveDefinite.Answer == inspect.No:
+		return false
+	case f.PositiveDefinite.Answer == inspect.Yes:
+		return true
+	}
+	converged := false
+	for _, h := range c.Trials {
+		if h.Condition.Negative {
+			return false
+		}
+		_, s, _ := cut(h.Pairing)
+		converged = converged || kindOfM(s) == "cg" && h.Stop == trace.Converged
+	}
+	return converged
+}

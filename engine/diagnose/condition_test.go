@@ -32,6 +32,8 @@ func TestConditionOfALargeSystemByItsTrials(t *testing.T) {
 	known.Study.Equilibrated = &inspect.Spectrum{Condition: 1e3, Norm: "2", Certainty: inspect.Measured}
 	negative := met("cg+none", "A", 1e-6, 8)
 	negative.Condition.Negative = true
+	arrived := met("cg+none", "A", 1e-5, 8)
+	arrived.Stop = trace.Converged
 	none, jacobi := met("cg+none", "A", 1e-5, 8), met("cg+jacobi", "M⁻¹A", 5e-6, 2)
 	for _, c := range []struct {
 		what  string
@@ -45,6 +47,7 @@ func TestConditionOfALargeSystemByItsTrials(t *testing.T) {
 		{"preconditioned", large(), met("cg+ic:0", "M⁻¹A", 1e-6, 2), ""},
 		{"prepared", large(), met("scale/cg+none", "A", 1e-6, 2), ""},
 		{"not known to be definite", open, none, ""},
+		{"cg has converged", open, arrived, "from 1e-05 to 8, if A is definite, which is not proved and which nothing so far speaks against"},
 		{"negative", large(), negative, ""},
 		{"well conditioned so far", large(), met("cg+none", "A", 1e-3, 8), ""},
 		{"known by the study", known, none, ""},
@@ -61,9 +64,44 @@ func TestConditionOfALargeSystemByItsTrials(t *testing.T) {
 			}
 			continue
 		}
-		if got.Certainty != inspect.Measured || got.Weight != diagnose.Note {
+		sure := inspect.Measured
+		if c.facts == open {
+			sure = inspect.Estimated
+		}
+		if got.Certainty != sure || got.Weight != diagnose.Note {
 			t.Errorf("%s: %s %s", c.what, got.Weight, got.Certainty)
 		}
 		says(t, got, c.says)
+	}
+}
+
+// The growth of the parts of a system that is too large to be proved definite is
+// told of it where the whole was one of them, or conjugate gradients have
+// converged, and no Ritz value was negative.
+func TestGrowthOfASystemThatMayBeDefinite(t *testing.T) {
+	f := large()
+	f.PositiveDefinite.Answer = inspect.Unknown
+	f.Study.Couplings = &inspect.Couplings{Mesh: true, Dimension: 2}
+	arrived, negative := met("cg+none", "A", 1e-3, 8), met("minres+none", "A", 1e-3, 8)
+	arrived.Stop, negative.Condition.Negative = trace.Converged, true
+	for _, c := range []struct {
+		what   string
+		sizes  []int
+		trials []trace.History
+		says   bool
+	}{
+		{"parts", []int{2500, 10000, 40000}, nil, false},
+		{"cg has converged", []int{2500, 10000, 40000}, []trace.History{arrived}, true},
+		{"but minres has met a negative value", []int{2500, 10000, 40000}, []trace.History{arrived, negative}, false},
+		{"the whole", []int{62500, 250000, 1000000}, nil, true},
+	} {
+		f.Study.Growth = &inspect.Growth{Pairing: "cg+jacobi", Unknowns: c.sizes, Iterations: []int{50, 100, 200}, Exponent: 0.5}
+		got := false
+		for _, g := range diagnose.Judge(diagnose.Case{Facts: f, Trials: c.trials, Tol: 1e-8}) {
+			got = got || g.Rule == "mesh-growth"
+		}
+		if got != c.says {
+			t.Errorf("%s: told %v", c.what, got)
+		}
 	}
 }

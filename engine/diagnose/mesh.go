@@ -103,6 +103,9 @@ var growth = Rule{"mesh-growth", func(c Case) []Finding {
 	}
 	g := f.Study.Growth
 	last := len(g.Unknowns) - 1
+	if g.Unknowns[last] < f.N && !definiteSoFar(c) {
+		return nil // parts of an indefinite A may be definite
+	}
 	if p := g.Exponent * k.Dimension; last < 2 || p < leastGrowth || p > mostGrowth {
 		return nil
 	}

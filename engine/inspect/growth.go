@@ -17,10 +17,10 @@ const (
 // as preconditioner, grow with size: on breadth-first balls of the system of a
 // quarter of its rows, a quarter of that, and so on, with b = 1, and on the
 // whole where the budget allows. The iterations are those of a principal part,
-// whose rim is held.
+// whose rim is held. It ends where a part turns out not to be definite.
 func (e *exam) growth() error {
 	c := e.out.Couplings
-	if !e.symmetric || c == nil || !c.Mesh || e.f.PositiveDefinite.Answer != Yes {
+	if !e.symmetric || c == nil || !c.Mesh || e.f.PositiveDefinite.Answer == No {
 		return nil
 	}
 	g := &Growth{Pairing: "cg+jacobi", Exponent: math.NaN()}
