@@ -28,9 +28,12 @@ var nullGrowth = Rule{"null-space-growth", func(c Case) (out []Finding) {
 			Claim: fmt.Sprintf("||b-Ax|| falls to %s of ||b|| at it %d, then grows to %s along the null space of A",
 				num(low.Audit), low.Iter, num(last.Audit)),
 			Advice: "take the unreachable part out of b, or use a method of minimal residuals and stop it there",
-			Try:    []string{"project/cg+none", "minres+none"},
+			Try:    projected(c.Facts),
 			Evidence: []Evidence{{Quantity: "smallest true residual", Value: low.Audit, Unit: "of ||b||", Iteration: int(low.Iter)},
 				{Quantity: "last true residual", Value: last.Audit, Unit: "of ||b||", Iteration: int(last.Iter)}}}
+		if c.Facts.Symmetric.Answer == inspect.Yes {
+			f.Try = append(f.Try, "minres+none")
+		}
 		if h.Monotone {
 			f.Claim = fmt.Sprintf("||b-Ax|| falls to %s of ||b|| at it %d and grows to %s, which it cannot do in exact arithmetic: x runs off along the null space of A, and what grows is rounding times its size",
 				num(low.Audit), low.Iter, num(last.Audit))

@@ -60,6 +60,8 @@ func (c Case) equations(left []inspect.NullDirection) (claim string, rows []int)
 	d := mostLocal(left)
 	rows, share := localRows(d)
 	switch {
+	case d.Level != nil && len(left) == 1 && d.Support > len(rows):
+		claim = "the left sides add up to zero: y is constant on " + d.Level.Text(c.Facts.Names)
 	case d.Support <= len(rows):
 		claim = fmt.Sprintf("the equations of %s depend on each other", c.list(rows, 6))
 	case share >= 0.5:
