@@ -9,7 +9,8 @@
 //	go run ./.ci/peers/racing -stage race -file FILE [-rounds 5] [-rhs ones,made] SYSTEM...
 //
 // SYSTEM is a sample, or a file; without one, the cases are four samples in
-// two sizes and four open matrices from the folder -open. Times are own times:
+// two sizes, four systems from the folder -assembled, which assemble.py fills,
+// and four open matrices from the folder -open. Times are own times:
 // set-up, first residual and iterations; those of a race and of all are the
 // sums over their trials. The first stage takes the processor's time, so that it
 // may share the machine; the table tells how much longer its trials took than
@@ -39,17 +40,20 @@ var (
 	rounds  = flag.Int("rounds", 5, "races of each case")
 	rhs     = flag.String("rhs", "ones,made", "right-hand sides")
 	dir     = flag.String("open", os.Getenv("DWINDLE_OPEN"), "folder of open matrices")
+	built   = flag.String("assembled", os.Getenv("DWINDLE_ASSEMBLED"), "folder of assembled systems")
 	threads = flag.Int("threads", 1, "threads")
 	tol     = flag.Float64("tol", 1e-8, "tolerance")
 )
 
-// samplesOf and openOf are the cases of the table. The best pairings of the
-// samples take 0.2 s and more. No open matrix has such a one; these four take the
-// longest of those that can be solved.
+// samplesOf, assembledOf and openOf are the cases of the table. The best pairings
+// of the samples and of the assembled systems take 0.2 s and more. No open matrix
+// within reach has such a one; these four take the longest of those that can be
+// solved.
 var (
-	samplesOf = []string{"sample:duct:450", "sample:plate:500", "sample:acoustics:340", "sample:drains:230",
-		"sample:duct:500", "sample:plate:560", "sample:acoustics:380", "sample:drains:280"}
-	openOf = []string{"bcsstk16.mtx.gz", "bcsstk13.mtx.gz", "bcsstk24.rsa", "hangGlider_2.mtx"}
+	samplesOf = []string{"sample:duct:450", "sample:plate:500", "sample:acoustics:340", "sample:drains:280",
+		"sample:duct:500", "sample:plate:560", "sample:acoustics:380", "sample:drains:320"}
+	assembledOf = []string{"pipe.mtx", "creep.mtx", "rod.mtx", "porous.mtx"}
+	openOf      = []string{"bcsstk16.mtx.gz", "bcsstk13.mtx.gz", "bcsstk24.rsa", "hangGlider_2.mtx"}
 )
 
 func main() {
@@ -58,6 +62,9 @@ func main() {
 	if len(sources) == 0 {
 		for _, name := range openOf {
 			sources = append(sources, filepath.Join(*dir, name))
+		}
+		for _, name := range assembledOf {
+			sources = append(sources, filepath.Join(*built, name))
 		}
 		sources = append(sources, samplesOf...)
 	}
