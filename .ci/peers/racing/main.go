@@ -14,7 +14,7 @@
 // set-up, first residual and iterations; those of a race and of all are the
 // sums over their trials. The first stage takes the processor's time, so that it
 // may share the machine; the table tells how much longer its trials took than
-// the same ones by themselves.
+// the same ones when they are run again, and the share of the race allows for it.
 package main
 
 import (

@@ -8,7 +8,8 @@ import (
 	"slices"
 )
 
-// measure prints the row of one case.
+// measure prints the row of one case. The share of the race is taken of all runs
+// as long as they would have taken now.
 func measure(source, b string) error {
 	runs, err := found(source, b)
 	if err != nil {
@@ -59,7 +60,7 @@ func measure(source, b string) error {
 		}
 	}
 	fmt.Printf("| %s | %s | %s | %.4f s | %s | %.4f s | %.2f | %.1f s | %.1f s | %.0f %% | %.2f |\n", filepath.Base(source), b, leaders[best].pairing, median(times[best]),
-		often(count), median(chosens), median(chosens)/median(times[best]), median(races), all, 100*median(races)/all, median(slower))
+		often(count), median(chosens), median(chosens)/median(times[best]), median(races), all, 100*median(races)*median(slower)/all, median(slower))
 	return nil
 }
 
