@@ -54,15 +54,20 @@ var twins = []string{"ilu", "milu"}
 var byPivots = []string{"ilu", "ilut", "milu", "ras", "block-jacobi"}
 
 // prepared is the candidate with the preparation that it needs here: where the
-// diagonal holds zeros, what divides by pivots has A permuted first. It is
-// nothing where the preparation does not go with it.
+// diagonal holds zeros, what divides by pivots has A permuted first, and one that
+// fills in is tried as A stands as well. It is nothing where the preparation does
+// not go with it.
 func (r Race) prepared(c Candidate) []string {
 	prefix := r.prefix()
 	if !fullDiagonal(r.Facts) && slices.Contains(byPivots, c.Precond) {
 		if prefix == projected || c.Symmetric {
 			return nil // a permutation of rows alone takes the symmetry
 		}
-		prefix = strings.Replace(prefix, "/", ",", 1) + "match/"
+		matched := strings.Replace(prefix, "/", ",", 1) + "match/" + c.Pairing
+		if c.Precond == "ilut" { // what fills in may make the pivots
+			return []string{matched, prefix + c.Pairing}
+		}
+		return []string{matched}
 	}
 	return []string{prefix + c.Pairing}
 }
