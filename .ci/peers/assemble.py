@@ -44,7 +44,7 @@ def write(folder, name, path, refine=0, solve=False, zeros=False):
     problem = Problem.from_conf(conf)
     problem.time_update()
     problem.update_materials()
-    state = problem.get_initial_state() if hasattr(problem, "get_initial_state") else problem.create_state()
+    state = problem.get_initial_state()
     state.apply_ebc()
     if solve:
         state = problem.solve(save_results=False, verbose=False)

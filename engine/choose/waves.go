@@ -15,11 +15,11 @@ const (
 )
 
 // untried returns the next pairings of a race, at most so many: first what
-// findings about the system offer, then every kind of preconditioner under one solver, then the other solvers with the
-// preconditioners that lead, then parameters around the leaders, preparations
-// of them, and last what is unlike anything tried. What would break down in its
-// set-up as others have is left out, and a direct solve while others are expected
-// sooner.
+// findings about the system offer, then every kind of preconditioner under one
+// solver, then the other solvers with the preconditioners that lead, then
+// parameters around the leaders, preparations of them, and last what is unlike
+// anything tried. What would break down in its set-up as others have is left out,
+// and a direct solve while others are expected sooner.
 func (r Race) untried(most int) []string {
 	var out []string
 	for _, wave := range []func() []string{r.offers, r.kinds, r.solvers, r.parameters, r.preparations, r.unlike} {

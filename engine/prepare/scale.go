@@ -39,11 +39,11 @@ func (s scaling) Guess(dst, x []float64) {
 func (s scaling) Row(i int) int { return i }
 
 // applyScale makes Dr A Dc y = Dr b with row and column norms near 1. A matrix
-// that equals its transpose, but for rounding, gets Dr = Dc and does so still. Each entry takes
-// two roundings; rounding the factors to powers of two instead would keep
-// every digit, but leaves norms up to a factor 2 apart and was measured to cost
-// 1.7 to 2.6 times the condition number on real matrices. What is proved of A
-// is evaluated on A itself.
+// that equals its transpose, but for rounding, gets Dr = Dc and does so still.
+// Each entry takes two roundings; rounding the factors to powers of two instead
+// would keep every digit, but leaves norms up to a factor 2 apart and was measured
+// to cost 1.7 to 2.6 times the condition number on real matrices. What is proved
+// of A is evaluated on A itself.
 func applyScale(ctx context.Context, s linear.System, _ linear.Values) (linear.System, Back, error) {
 	a := s.Matrix()
 	if a == nil {
